@@ -1,0 +1,17 @@
+import next from "@next/eslint-plugin-next";
+import hooks from "eslint-plugin-react-hooks";
+import tseslint from "typescript-eslint";
+
+export default tseslint.config(
+  { ignores: [".next/**", ".data/**", "next-env.d.ts", "test-results/**"] },
+  ...tseslint.configs.recommended,
+  {
+    plugins: { "@next/next": next, "react-hooks": hooks },
+    rules: {
+      ...next.configs.recommended.rules,
+      ...next.configs["core-web-vitals"].rules,
+      ...hooks.configs.recommended.rules,
+      "@typescript-eslint/no-unused-vars": ["error", { argsIgnorePattern: "^_", ignoreRestSiblings: true }],
+    },
+  },
+);

@@ -1,0 +1,54 @@
+import type { Actor } from "./words";
+
+/**
+ * Who may do what: the one list (PRODUCT.md, "Who uses it"). Asked in the command or query right after loading,
+ * and by the pages to hide a button. Rules that need facts of the thing (the two-person rule, "own" reads)
+ * take them as `thing`.
+ */
+const STAFF = ["technician", "lead", "auditor", "admin"] as const;
+const BENCH = ["technician", "lead"] as const;
+
+const RULES = {
+  "case.read": STAFF,
+  "case.create": BENCH,
+  "case.close": ["lead"],
+  "drive.record": BENCH,
+  "board.record": BENCH,
+  "board.allow-other-number": ["lead"],
+  "chip.record": BENCH,
+  "fact.correct": BENCH,
+  "read.store": BENCH,
+  "read.bytes": STAFF,
+  "read.set-aside": BENCH,
+  "read.hand-out-approved": ["technician", "lead", "auditor"],
+  "read.hand-out-any": ["lead", "auditor"],
+  "approval.ask": BENCH,
+  "approval.give": ["lead"],
+  "approval.send-back": ["lead"],
+  "approval.revoke": ["lead"],
+  "transfer.record": BENCH,
+  "custody.read": STAFF,
+  "bundle.make": ["auditor", "lead"],
+  "summary.send": ["lead"],
+  "share.withdraw": ["lead"],
+  "find.ask": STAFF,
+  "policy.read": STAFF,
+  "policy.change": ["admin"],
+  "user.manage": ["admin"],
+  "outbox.read": ["admin"],
+  "assessment.record": ["auditor"],
+} as const satisfies Record<string, readonly string[]>;
+
+export type Verb = keyof typeof RULES;
+export const VERBS = Object.keys(RULES) as Verb[];
+
+export interface Thing {
+  /** for read.set-aside: who took the read */
+  operatorId?: string;
+}
+
+export function may(actor: Pick<Actor, "id" | "role">, verb: Verb, thing: Thing = {}): boolean {
+  if (!(RULES[verb] as readonly string[]).includes(actor.role)) return false;
+  if (verb === "read.set-aside" && actor.role === "technician") return thing.operatorId === actor.id;
+  return true;
+}

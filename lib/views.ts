@@ -1,0 +1,389 @@
+/**
+ * What leaves the house: plain, minimal objects for pages and API. Sizes in bytes, digests lower-case hex,
+ * times RFC 3339 UTC text, ids UUIDs. Rows never leave; queries build these.
+ */
+import type {
+  BoardRole, Bus, ChipStateCode, Finding, Format, Method, Policy, Range, Role, SizeSource, Stage, TransferKind,
+} from "./core/words";
+
+export interface PersonView {
+  id: string;
+  name: string;
+  role: Role | "system";
+}
+
+export interface ReadView {
+  id: string;
+  chipId: string;
+  number: number;
+  stage: Stage;
+  seating: number;
+  sizeBytes: number;
+  /** 8 lower-case hex digits; the screen shows them in upper case */
+  crc32: string;
+  sha256: string;
+  counted: boolean;
+  findings: Finding[];
+  format: Format;
+  fileName: string;
+  reader: string;
+  method: Method | null;
+  toolVersion: string | null;
+  adapter: string | null;
+  supplyMillivolts: number | "unknown" | null;
+  clockKilohertz: number | null;
+  controllerHeld: boolean | null;
+  note: string | null;
+  operator: PersonView;
+  /** claimed by the uploader */
+  takenAt: string | null;
+  modifiedAt: string | null;
+  storedAt: string;
+  /** for `after` reads: the transfer they belong to */
+  transferId: string | null;
+  setAside: { reason: string; by: PersonView; at: string } | null;
+  /** false when the stored image is damaged or missing */
+  imageSound: boolean;
+}
+
+export interface GroupView {
+  sha256: string;
+  stage: Stage;
+  reads: number[];
+  seatings: number;
+}
+
+export interface StateView {
+  state: ChipStateCode;
+  label: string;
+  sentence: string;
+}
+
+/** One line of the approval section: met or not, with the rule and its value in words. */
+export interface ConditionView {
+  key: string;
+  rule: string;
+  value: string;
+  state: "met" | "open" | "against";
+}
+
+export interface ApprovalView {
+  id: string;
+  sha256: string;
+  donorChipId: string;
+  approvedBy: PersonView;
+  givenAt: string;
+  statement: string;
+  reasons: Record<string, string>;
+  twoPersonRule: boolean;
+  revoked: { at: string; by: PersonView; cause: string; reason: string } | null;
+}
+
+export interface TransferView {
+  id: string;
+  approvalId: string;
+  kind: TransferKind;
+  donorChipId: string;
+  programmer: string | null;
+  toolVersion: string | null;
+  adapter: string | null;
+  note: string | null;
+  by: PersonView;
+  at: string;
+}
+
+export interface ApprovalRequestView {
+  id: string;
+  askedBy: PersonView;
+  askedAt: string;
+  message: string | null;
+  sentBack: { by: PersonView; at: string; reason: string } | null;
+}
+
+export interface ChipSummary {
+  id: string;
+  designator: string;
+  boardRole: BoardRole;
+  bus: Bus;
+  sizeBytes: number;
+  supplyMillivolts: number | null;
+  package: string | null;
+  holds: string | null;
+  needsTransfer: boolean;
+  state: StateView;
+  /** the paired chip, if any */
+  pair: { id: string; designator: string; boardId: string; boardNumber: string; sizeBytes: number } | null;
+  /** counted reads: of the original's `before`, of a donor's `donor` */
+  countedReads: number;
+  agreeingReads: number;
+  donorSaved: boolean;
+  /** strip thumbnails: at most two distinct images, 64 cells, and the lane between them */
+  thumbnail: { images: string[]; lane: number[] | null };
+}
+
+export interface ChipView extends ChipSummary {
+  marking: string | null;
+  sizeSource: SizeSource;
+  drive: { id: string; letter: string; partNumber: string | null; model: string | null; serial: string | null };
+  board: { id: string; role: BoardRole; boardNumber: string; revision: string | null };
+  case: { id: string; ref: string; dueOn: string | null; customerName: string };
+  policy: Policy;
+  /** the chip's own reads and, for an original, also the paired donor chip's reads */
+  reads: ReadView[];
+  groups: GroupView[];
+  matrix: MatrixView;
+  stack: StripStackView;
+  conditions: ConditionView[];
+  /** people who may approve by the two-person rule */
+  approvers: PersonView[];
+  approval: ApprovalView | null;
+  approvals: ApprovalView[];
+  request: ApprovalRequestView | null;
+  transfers: TransferView[];
+  /** what stands on the page as verdict: the sentence and the paragraph that says why */
+  why: string;
+  nextSeating: Record<Stage, number>;
+  receivedAt: string;
+}
+
+/** Differing bytes between each two counted reads of one stage. `null` on the diagonal. */
+export interface MatrixView {
+  reads: { number: number; name: string }[];
+  cells: (number | "other-size" | null)[][];
+}
+
+/** One letter a cell: see lib/core/strip.ts. b blank, z zeros, t text-like, o ordinary, d dense, n not read. */
+export type CellString = string;
+
+export interface StripRow {
+  readId: string;
+  name: string;
+  note: string;
+  cells: CellString;
+}
+
+export interface StripLane {
+  differingBytes: number;
+  /** differing bytes a cell; null when all is equal */
+  cells: number[] | null;
+}
+
+export interface StripView {
+  offset: number;
+  cellBytes: number;
+  rows: StripRow[];
+  /** lanes[i] lies between rows[i] and rows[i+1] */
+  lanes: StripLane[];
+}
+
+export interface StripStackView extends StripView {
+  sizeBytes: number;
+  loupe: StripView | null;
+}
+
+export interface DiagnosisView {
+  code: string;
+  message: string;
+  advice: string;
+  confidence: "certain" | "likely" | "unsure";
+}
+
+export interface ComparisonView {
+  equal: boolean;
+  differingBytes: number;
+  differingBits: { zeroToOne: number; oneToZero: number };
+  ranges: Range[];
+  truncated?: true;
+  diagnosis: DiagnosisView;
+}
+
+export interface BoardView {
+  id: string;
+  role: BoardRole;
+  boardNumber: string;
+  revision: string | null;
+  controllerMarking: string | null;
+  motorDriverMarking: string | null;
+  condition: string | null;
+  fit: { verdict: "fits" | "caution" | "other-number"; differences: string[]; reason: string | null } | null;
+  chips: ChipSummary[];
+}
+
+export interface DriveView {
+  id: string;
+  letter: string;
+  partNumber: string | null;
+  model: string | null;
+  serial: string | null;
+  interface: string | null;
+  boards: BoardView[];
+  custodyEntries: number;
+}
+
+export interface CaseView {
+  id: string;
+  ref: string;
+  /** with the ISO 7064 MOD 37,36 check character: 26-0183.4 */
+  refChecked: string;
+  state: "open" | "closed";
+  closedReason: string | null;
+  customer: { name: string; email: string; phone: string | null; contact: string | null };
+  damage: string;
+  note: string | null;
+  dueOn: string | null;
+  receivedAt: string;
+  createdBy: PersonView;
+  drives: DriveView[];
+  shares: ShareView[];
+}
+
+export interface ShareView {
+  id: string;
+  createdAt: string;
+  createdBy: PersonView;
+  expiresAt: string;
+  openedAt: string | null;
+  withdrawnAt: string | null;
+  email: string;
+}
+
+export interface CaseRow {
+  id: string;
+  ref: string;
+  customerName: string;
+  partNumbers: string;
+  damage: string;
+  dueOn: string | null;
+  receivedAt: string;
+  state: "open" | "closed";
+  chips: { state: ChipStateCode; label: string; designator: string }[];
+}
+
+export interface BenchRow {
+  chip: ChipSummary;
+  caseId: string;
+  caseRef: string;
+  customerName: string;
+  partNumber: string;
+  dueOn: string | null;
+  late: "late" | "today" | null;
+  lateDays: number;
+  next: string;
+  nextWhy: string | null;
+  with: string;
+  mine: boolean;
+}
+
+export interface ListView<T> {
+  items: T[];
+  total: number;
+  page: number;
+  pageSize: number;
+}
+
+export interface CustodyEntryView {
+  seq: number;
+  at: string;
+  actor: PersonView;
+  action: string;
+  sentence: string;
+  where: string;
+  kind: "entry" | "differs" | "signed" | "set-aside";
+  hash: string;
+  body: string;
+  signature: string;
+  keyId: string;
+}
+
+export interface CustodyCheckView {
+  ok: boolean;
+  entries: number;
+  head: { seq: number; hash: string };
+  findings: { seq: number | null; problem: string; expected?: string; found?: string }[];
+}
+
+export interface UserView {
+  id: string;
+  email: string;
+  name: string;
+  role: Role;
+  disabled: boolean;
+  mustChangePassword: boolean;
+  lastSeenAt: string | null;
+}
+
+export interface BenchTokenView {
+  id: string;
+  name: string;
+  createdAt: string;
+  lastUsedAt: string | null;
+  withdrawnAt: string | null;
+}
+
+export interface MailView {
+  id: string;
+  to: string;
+  subject: string;
+  /** secret links masked */
+  text: string;
+  state: "queued" | "sending" | "sent" | "dead";
+  attempts: number;
+  queuedAt: string;
+  sentAt: string | null;
+  lastError: string | null;
+}
+
+export interface FindHit {
+  readId: string;
+  readName: string;
+  chipId: string;
+  designator: string;
+  boardRole: BoardRole;
+  caseId: string;
+  caseRef: string;
+  driveLetter: string;
+  crc32: string;
+  sha256: string;
+  counted: boolean;
+}
+
+/** The customer's page: no jargon, nothing of the workshop's inside. */
+export interface SummaryView {
+  workshop: string;
+  caseRef: string;
+  customerName: string;
+  madeAt: string;
+  expiresAt: string;
+  drives: {
+    letter: string;
+    label: string;
+    chips: {
+      designator: string;
+      holds: string | null;
+      sizeBytes: number;
+      verified: boolean;
+      stateLabel: string;
+      sha256: string | null;
+      crc32: string | null;
+      agreeingReads: number;
+      seatings: number;
+      readBacks: number;
+      approvedBy: string | null;
+      approvedAt: string | null;
+      transferredAt: string | null;
+      transferKind: TransferKind | null;
+      verifiedAt: string | null;
+      cells: CellString | null;
+    }[];
+    head: { seq: number; hash: string };
+  }[];
+  twoPersonRule: boolean;
+}
+
+export interface SessionView {
+  user: { id: string; name: string; email: string; role: Role };
+  demo: boolean;
+  workshop: string;
+  timeZone: string;
+  benchCount: number;
+}
