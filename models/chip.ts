@@ -1,0 +1,37 @@
+import { type CreationOptional, type InferAttributes, type InferCreationAttributes, Model, type Sequelize } from "sequelize";
+import type { Bus, SizeSource } from "@/lib/core/words";
+import { id, reference, text, time, whole, yes } from "./columns";
+
+export class Chip extends Model<InferAttributes<Chip>, InferCreationAttributes<Chip>> {
+  declare id: string;
+  declare boardId: string;
+  declare designator: string;
+  declare bus: Bus;
+  declare sizeBytes: number;
+  declare sizeSource: SizeSource;
+  declare supplyMillivolts: CreationOptional<number | null>;
+  declare package: CreationOptional<string | null>;
+  declare marking: CreationOptional<string | null>;
+  declare holds: CreationOptional<string | null>;
+  declare needsTransfer: boolean;
+  declare pairedWithId: CreationOptional<string | null>;
+  declare createdAt: Date;
+}
+
+export function initChip(sequelize: Sequelize): void {
+  Chip.init({
+    id: id(),
+    boardId: reference(),
+    designator: text(16),
+    bus: text(12),
+    sizeBytes: whole(),
+    sizeSource: text(12),
+    supplyMillivolts: whole(true),
+    package: text(60, true),
+    marking: text(120, true),
+    holds: text(120, true),
+    needsTransfer: yes(true),
+    pairedWithId: reference(true),
+    createdAt: time(),
+  }, { sequelize, modelName: "Chip", tableName: "chips" });
+}

@@ -1,0 +1,23 @@
+import { type CreationOptional, DataTypes, type InferAttributes, type InferCreationAttributes, Model, type Sequelize } from "sequelize";
+import type { ImageFacts } from "@/lib/core/inspect";
+import { text, time, whole, bytes } from "./columns";
+
+export class Image extends Model<InferAttributes<Image>, InferCreationAttributes<Image>> {
+  declare sha256: Buffer;
+  declare sizeBytes: number;
+  declare crc32: number;
+  declare facts: ImageFacts;
+  declare state: CreationOptional<"sound" | "damaged" | "missing">;
+  declare storedAt: Date;
+}
+
+export function initImage(sequelize: Sequelize): void {
+  Image.init({
+    sha256: { ...bytes(32), primaryKey: true },
+    sizeBytes: whole(),
+    crc32: whole(),
+    facts: { type: DataTypes.JSON, allowNull: false },
+    state: { ...text(10), defaultValue: "sound" },
+    storedAt: time(),
+  }, { sequelize, modelName: "Image", tableName: "images" });
+}

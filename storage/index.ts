@@ -1,0 +1,19 @@
+import "server-only";
+import type { Readable } from "node:stream";
+import { env } from "@/lib/env";
+import * as local from "./local";
+import * as writeOnce from "./write-once";
+
+export type { Arrived } from "./write-once";
+export type { ImageState } from "./local";
+export { discard } from "./write-once";
+
+/** The byte store of this data folder. Images are named by their SHA-256 in lower-case hex and never change. */
+export const receive = (stream: Readable) => writeOnce.receive(env().dataDir, stream);
+export const keep = (arrived: writeOnce.Arrived) => writeOnce.keep(env().dataDir, arrived);
+export const imageChunks = (sha256: string) => local.imageChunks(env().dataDir, sha256);
+export const imageWindow = (sha256: string, offset: number, length: number) => local.imageWindow(env().dataDir, sha256, offset, length);
+export const checkImage = (sha256: string, sizeBytes: number) => local.checkImage(env().dataDir, sha256, sizeBytes);
+export const verifiedStream = (sha256: string) => local.verifiedStream(env().dataDir, sha256);
+export const freeBytes = () => local.freeBytes(env().dataDir);
+export const clearIncoming = (olderThanMs: number) => local.clearIncoming(env().dataDir, olderThanMs);
