@@ -1,3 +1,4 @@
+import { AsyncLocalStorage } from "node:async_hooks";
 import * as mariadb from "mariadb";
 import { type ConnectionError, Sequelize, Transaction } from "sequelize";
 import { AppError } from "@/lib/errors";
@@ -44,6 +45,15 @@ export function isDatabaseAway(error: unknown): boolean {
     || code === "ER_GET_CONNECTION_TIMEOUT" || code === "ER_CMD_CONNECTION_CLOSED" || code === "ER_CONNECTION_KILLED";
 }
 
+/** Saves what a transaction returned, inside that transaction: a repeated request can then be answered without a second change. */
+export type Receipt = (tx: Transaction, result: unknown) => Promise<void>;
+const receipts = new AsyncLocalStorage<{ save: Receipt | null }>();
+
+/** The first transaction that `run` commits leaves its receipt with itself. */
+export function withReceipt<T>(save: Receipt, run: () => Promise<T>): Promise<T> {
+  return receipts.run({ save }, run);
+}
+
 /**
  * The one place where a transaction begins: READ COMMITTED, retried on deadlock and lock wait.
  * `run` may therefore be called again and must not keep state between calls.
@@ -51,7 +61,14 @@ export function isDatabaseAway(error: unknown): boolean {
 export async function inTransaction<T>(run: (tx: Transaction) => Promise<T>): Promise<T> {
   for (let attempt = 1; ; attempt += 1) {
     try {
-      return await connection().transaction({ isolationLevel: Transaction.ISOLATION_LEVELS.READ_COMMITTED }, run);
+      const receipt = receipts.getStore();
+      const result = await connection().transaction({ isolationLevel: Transaction.ISOLATION_LEVELS.READ_COMMITTED }, async (tx) => {
+        const made = await run(tx);
+        await receipt?.save?.(tx, made);
+        return made;
+      });
+      if (receipt) receipt.save = null;
+      return result;
     } catch (error) {
       if (attempt < TRIES && retryable(error)) {
         await new Promise((done) => setTimeout(done, 10 * attempt + Math.random() * 20 * attempt));

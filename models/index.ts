@@ -61,7 +61,7 @@ Chip.hasMany(Read, { foreignKey: "chipId", as: "reads" });
 Read.belongsTo(Chip, { foreignKey: "chipId", as: "chip" });
 Read.belongsTo(Image, { foreignKey: "sha256", as: "image" });
 
-export { connection, inTransaction, isDatabaseAway, type Transaction } from "./connection";
+export { connection, inTransaction, isDatabaseAway, type Transaction, withReceipt } from "./connection";
 export {
   User,
   Session,

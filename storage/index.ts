@@ -17,3 +17,4 @@ export const checkImage = (sha256: string, sizeBytes: number) => local.checkImag
 export const verifiedStream = (sha256: string) => local.verifiedStream(env().dataDir, sha256);
 export const freeBytes = () => local.freeBytes(env().dataDir);
 export const clearIncoming = (olderThanMs: number) => local.clearIncoming(env().dataDir, olderThanMs);
+export { keyIdOf, logKey, verifySignature } from "./keys";

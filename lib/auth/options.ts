@@ -1,0 +1,73 @@
+import { randomUUID } from "node:crypto";
+import type { NextAuthOptions } from "next-auth";
+import CredentialsProvider from "next-auth/providers/credentials";
+import { SESSION_ABSOLUTE_SECONDS } from "@/lib/limits";
+import { Session, User } from "@/models";
+import { clearAttempts, mayTry, noteAttempt } from "./attempts";
+import { passwordFits } from "./password";
+
+declare module "next-auth" {
+  interface Session {
+    sid?: string;
+  }
+  interface User {
+    sid: string;
+  }
+}
+declare module "next-auth/jwt" {
+  interface JWT {
+    sid?: string;
+  }
+}
+
+const printable = (text: string) => text.replace(/[^\x20-\x7e]/g, "").slice(0, 64);
+
+/** Next puts the peer's address here; a proxy in front appends the one it saw, so the last one is the nearest. */
+function addressOf(headers: Record<string, unknown> | undefined): string {
+  const forwarded = String(headers?.["x-forwarded-for"] ?? "");
+  return printable(forwarded.split(",").at(-1)!.trim()) || "unknown";
+}
+
+/**
+ * next-auth, behind this one file. The JWT carries nothing but the id of a session row: role, disabling and idle time
+ * are read from the database at each request (see actor.ts).
+ */
+export const authOptions: NextAuthOptions = {
+  session: { strategy: "jwt", maxAge: SESSION_ABSOLUTE_SECONDS },
+  pages: { signIn: "/sign-in", error: "/sign-in" },
+  providers: [
+    CredentialsProvider({
+      name: "password",
+      credentials: { email: { type: "text" }, password: { type: "password" } },
+      async authorize(credentials, request) {
+        const email = String(credentials?.email ?? "").trim().slice(0, 254);
+        const password = String(credentials?.password ?? "").slice(0, 1024);
+        const address = addressOf(request?.headers as Record<string, unknown> | undefined);
+        if (!(await mayTry(email, address))) throw new Error("limited");
+        const user = email ? await User.findOne({ where: { email } }) : null;
+        const fits = await passwordFits(user?.passwordHash ?? null, password);
+        if (!user || !fits || user.disabledAt) {
+          await noteAttempt(email, address);
+          return null;
+        }
+        await clearAttempts(email, address);
+        const now = new Date();
+        const session = await Session.create({ id: randomUUID(), userId: user.id, createdAt: now, lastSeenAt: now });
+        return { id: user.id, sid: session.id };
+      },
+    }),
+  ],
+  callbacks: {
+    jwt({ token, user }) {
+      return user ? { sub: user.id, sid: user.sid } : token;
+    },
+    session({ session, token }) {
+      return { expires: session.expires, sid: token.sid };
+    },
+  },
+  events: {
+    async signOut({ token }) {
+      if (token?.sid) await Session.update({ endedAt: new Date() }, { where: { id: token.sid } });
+    },
+  },
+};

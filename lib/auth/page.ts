@@ -1,0 +1,16 @@
+import { headers } from "next/headers";
+import { redirect } from "next/navigation";
+import type { Actor } from "@/lib/core/words";
+import { sessionView } from "@/lib/queries/session";
+import type { SessionView } from "@/lib/views";
+import { signedInUser } from "./actor";
+
+/** For pages: the actor and what the shell shows, or a way to the sign-in page and back. */
+export async function signedIn(): Promise<{ actor: Actor; session: SessionView }> {
+  const user = await signedInUser();
+  const here = (await headers()).get("x-twinread-path") ?? "/bench";
+  if (!user) redirect(`/sign-in?callbackUrl=${encodeURIComponent(here)}`);
+  if (user.mustChangePassword && !here.startsWith("/account")) redirect("/account?choose=password");
+  const actor: Actor = { id: user.id, name: user.name, role: user.role };
+  return { actor, session: await sessionView(actor, user.email) };
+}

@@ -1,0 +1,99 @@
+import { z } from "zod";
+import { BOARD_ROLES, BUSES, METHODS, readName, ROLES, seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS } from "./words";
+
+/**
+ * The closed list of what a custody log can say (CUSTODY.md): for each action the shape of its facts, the sentence for
+ * people, and how the page draws it. No customer's name or e-mail is a fact of the log.
+ */
+const sha = z.string().regex(/^[0-9a-f]{64}$/);
+const crc = z.string().regex(/^[0-9a-f]{8}$/);
+const uuid = z.uuid();
+const words = z.string();
+const size = z.int().min(0);
+const optional = z.string().nullable();
+const person = z.object({ id: uuid, name: words });
+/** appended when the database's clock went back; see append-entry */
+const clock = { clockBehindMs: z.int().optional() };
+
+const change = z.object({ field: words, from: z.union([words, z.int(), z.boolean(), z.null()]), to: z.union([words, z.int(), z.boolean(), z.null()]) });
+const readRef = { read: z.object({ id: uuid, stage: z.enum(STAGES), number: z.int() }), chip: z.object({ id: uuid, designator: words }) };
+const chipRef = { chip: z.object({ id: uuid, designator: words }) };
+const donorRef = { donorChip: z.object({ id: uuid, designator: words, boardNumber: words }) };
+
+const name = (f: { read: { stage: (typeof STAGES)[number]; number: number } }) => readName(f.read.stage, f.read.number);
+const short = (digest: string) => `${digest.slice(0, 8)}…`;
+const kib = (n: number) => (n % 1024 === 0 ? `${(n / 1024).toLocaleString("en")} KiB` : `${n.toLocaleString("en")} bytes`);
+const changes = (list: { field: string; from: unknown; to: unknown }[]) =>
+  list.map((c) => `${c.field} from ${c.from ?? "nothing"} to ${c.to ?? "nothing"}`).join(", ");
+
+export type EntryKind = "entry" | "differs" | "signed" | "set-aside";
+
+interface Spec<S extends z.ZodObject> {
+  facts: S;
+  sentence: (facts: z.infer<S>) => string;
+  kind?: EntryKind | ((facts: z.infer<S>) => EntryKind);
+}
+function spec<S extends z.ZodRawShape>(shape: S, sentence: (f: z.infer<z.ZodObject<S>>) => string, kind?: Spec<z.ZodObject<S>>["kind"]): Spec<z.ZodObject<S>> {
+  return { facts: z.strictObject({ ...shape, ...clock }) as unknown as z.ZodObject<S>, sentence, kind };
+}
+
+export const ACTIONS = {
+  "case.received": spec({ ref: words, damage: words, dueOn: optional, receivedAt: words }, (f) => `Received case ${f.ref}: ${f.damage}`),
+  "drive.recorded": spec({ caseRef: words, letter: words, partNumber: optional, model: optional, serial: optional, interface: optional, caseReceivedAt: words },
+    (f) => `Recorded Drive ${f.letter} of case ${f.caseRef}${f.partNumber ? `, ${f.partNumber}` : ""}${f.serial ? `, serial ${f.serial}` : ""}`),
+  "drive.corrected": spec({ changes: z.array(change), reason: words }, (f) => `Corrected the drive: ${changes(f.changes)}. Reason: ${f.reason}`),
+  "board.recorded": spec({ role: z.enum(BOARD_ROLES), boardNumber: words, revision: optional, controllerMarking: optional, motorDriverMarking: optional, condition: optional,
+    fit: z.object({ verdict: words, differences: z.array(words), reason: optional }).nullable() },
+    (f) => `Recorded the ${f.role} board ${f.boardNumber}${f.revision ? ` ${f.revision}` : ""}${f.fit?.differences.length ? `; ${f.fit.differences.join("; ")}` : ""}${f.fit?.reason ? `. Reason: ${f.fit.reason}` : ""}`),
+  "board.corrected": spec({ changes: z.array(change), reason: words }, (f) => `Corrected the board: ${changes(f.changes)}. Reason: ${f.reason}`),
+  "chip.recorded": spec({ ...chipRef, boardRole: z.enum(BOARD_ROLES), bus: z.enum(BUSES), sizeBytes: size, sizeSource: z.enum(SIZE_SOURCES), supplyMillivolts: z.union([z.int(), z.literal("unknown")]), package: optional, marking: optional, holds: optional, needsTransfer: z.boolean() },
+    (f) => `Recorded ${f.chip.designator} on the ${f.boardRole} board, ${kib(f.sizeBytes)} (${f.sizeSource}), supply ${f.supplyMillivolts === "unknown" ? "unknown" : `${f.supplyMillivolts} mV`}`),
+  "chip.corrected": spec({ ...chipRef, changes: z.array(change), reason: words }, (f) => `Corrected ${f.chip.designator}: ${changes(f.changes)}. Reason: ${f.reason}`),
+  "chip.paired": spec({ ...chipRef, ...donorRef, before: z.object({ id: uuid, designator: words }).nullable() },
+    (f) => `Paired ${f.chip.designator} with donor ${f.donorChip.designator} on ${f.donorChip.boardNumber}${f.before ? ", in place of another donor chip" : ""}`),
+  "read.stored": spec({ ...readRef, seating: z.int(), sizeBytes: size, crc32: crc, sha256: sha, format: words, fileName: words, reader: words, method: z.enum(METHODS).nullable(), toolVersion: optional, adapter: optional,
+    supplyMillivolts: z.union([z.int(), z.literal("unknown"), z.null()]), clockKilohertz: z.int().nullable(), controllerHeld: z.boolean().nullable(), statusBits: z.literal("not read"), takenAt: optional, modifiedAt: optional, note: optional, transfer: uuid.nullable() },
+    (f) => `Stored ${name(f)}, seating ${seatingLetter(f.seating)}, ${kib(f.sizeBytes)}, SHA-256 ${short(f.sha256)}`),
+  "read.judged": spec({ ...readRef, sha256: sha, engineVersion: words, findings: z.array(z.object({ code: words, severity: z.enum(SEVERITIES), message: words, measured: words.optional(), threshold: words.optional() })), equalTo: z.array(words), differsFrom: z.array(words) },
+    (f) => `Judged ${name(f)}: ${[...f.findings.map((x) => x.message.replace(/\.$/, "")), f.equalTo.length ? `equal to ${f.equalTo.join(", ")}` : "", f.differsFrom.length ? `differs from ${f.differsFrom.join(", ")}` : ""].filter(Boolean).join("; ") || "nothing stands against it"}`,
+    (f) => (f.differsFrom.length || f.findings.some((x) => x.severity !== "note") ? "differs" : "entry")),
+  "read.set-aside": spec({ ...readRef, sha256: sha, reason: words }, (f) => `Set ${name(f)} aside: ${f.reason}`, "set-aside"),
+  "read.counted-again": spec({ ...readRef, sha256: sha, reason: words }, (f) => `Counted ${name(f)} again: ${f.reason}`),
+  "approval.asked": spec({ ...chipRef, sha256: sha.nullable(), message: optional }, (f) => `Asked for approval of ${f.chip.designator}${f.message ? `: ${f.message}` : ""}`),
+  "approval.given": spec({ ...chipRef, ...donorRef, sha256: sha, sizeBytes: size, crc32: crc, reads: z.array(words), seatings: z.array(z.int()), statement: words, reasons: z.record(z.string(), z.string()), lookedAt: z.array(words), twoPersonRule: z.boolean(), readsTakenBy: z.array(person) },
+    (f) => `Approved SHA-256 ${short(f.sha256)} for writing to donor ${f.donorChip.designator}${f.twoPersonRule ? "" : " (two-person rule switched off)"}: ${f.statement}`, "signed"),
+  "approval.sent-back": spec({ ...chipRef, reason: words }, (f) => `Sent the approval of ${f.chip.designator} back: ${f.reason}`),
+  "approval.refused": spec({ ...chipRef, sha256: sha, rule: words }, (f) => `An approval of ${f.chip.designator} was refused: ${f.rule}`, "differs"),
+  "approval.revoked": spec({ ...chipRef, approval: uuid, sha256: sha, cause: words, reason: words }, (f) => `The approval of ${f.chip.designator} was revoked (${f.cause}): ${f.reason}`, "differs"),
+  "image.handed-out": spec({ ...readRef, sha256: sha, sizeBytes: size, purpose: words, to: person, reason: optional },
+    (f) => `Handed out ${name(f)}, SHA-256 ${short(f.sha256)}, to ${f.to.name} (${f.purpose})${f.reason ? `: ${f.reason}` : ""}`),
+  "transfer.recorded": spec({ ...chipRef, ...donorRef, transfer: uuid, approval: uuid, sha256: sha, kind: z.enum(TRANSFER_KINDS), programmer: optional, toolVersion: optional, adapter: optional, note: optional },
+    (f) => (f.kind === "write" ? `Wrote SHA-256 ${short(f.sha256)} to donor ${f.donorChip.designator}` : `Moved ${f.chip.designator} to the donor board ${f.donorChip.boardNumber}`)),
+  "readback.verified": spec({ ...readRef, transfer: uuid, sha256: sha }, (f) => `${name(f)} equals the approved image in every byte`, "signed"),
+  "readback.differs": spec({ ...readRef, transfer: uuid, sha256: sha, approvedSha256: sha, diagnosis: words }, (f) => `${name(f)} differs from the approved image: ${f.diagnosis}`, "differs"),
+  "image.found-damaged": spec({ sha256: sha, state: z.enum(["damaged", "missing"]), where: words }, (f) => `The stored image ${short(f.sha256)} is ${f.state} (found by ${f.where})`, "differs"),
+  "bundle.started": spec({ caseRef: words, head: z.object({ seq: z.int(), hash: sha }) }, (f) => `Started the case bundle of ${f.caseRef}`),
+  "bundle.completed": spec({ caseRef: words, tagManifestSha256: sha, upToSeq: z.int() }, (f) => `Completed the case bundle of ${f.caseRef}, tag manifest ${short(f.tagManifestSha256)}`, "signed"),
+  "summary.sent": spec({ caseRef: words, share: uuid, expiresAt: words }, (f) => `Sent the verification summary of ${f.caseRef} to the customer`),
+  "summary.opened": spec({ share: uuid }, () => "The customer opened the verification summary"),
+  "share.withdrawn": spec({ share: uuid }, () => "Withdrew the customer's link to the summary"),
+  "log.assessed": spec({ text: words }, (f) => `Assessed the log: ${f.text}`, "signed"),
+  "user.created": spec({ user: person, role: z.enum(ROLES) }, (f) => `Made an account for ${f.user.name} (${f.role})`),
+  "user.changed": spec({ user: person, changes: z.array(change) }, (f) => `Changed the account of ${f.user.name}: ${changes(f.changes)}`),
+  "token.made": spec({ user: person, token: uuid, name: words }, (f) => `Made the bench token ${f.name} for ${f.user.name}`),
+  "token.withdrawn": spec({ user: person, token: uuid, name: words }, (f) => `Withdrew the bench token ${f.name} of ${f.user.name}`),
+  "policy.changed": spec({ changes: z.array(change) }, (f) => `Changed the policy: ${changes(f.changes)}`),
+  "key.introduced": spec({ keyId: sha, purpose: z.enum(["log", "seal"]), publicKeyPem: words }, (f) => `Introduced the ${f.purpose} key ${short(f.keyId)}`, "signed"),
+  "sign-in.limited": spec({ address: words, accountDigest: sha }, (f) => `Refused sign-ins from ${f.address}: too many attempts`, "differs"),
+};
+export type Action = keyof typeof ACTIONS;
+export type Facts<A extends Action> = z.infer<(typeof ACTIONS)[A]["facts"]>;
+
+/** The sentence and mark of an entry; an action of a later version still reads as its bare name. */
+export function describe(action: string, facts: unknown): { sentence: string; kind: EntryKind } {
+  const found = ACTIONS[action as Action] as Spec<z.ZodObject> | undefined;
+  const parsed = found?.facts.safeParse(facts);
+  if (!found || !parsed?.success) return { sentence: action, kind: "entry" };
+  const kind = typeof found.kind === "function" ? found.kind(parsed.data) : found.kind ?? "entry";
+  return { sentence: found.sentence(parsed.data), kind };
+}
