@@ -1,0 +1,31 @@
+import { donorFit } from "@/lib/core/donor-fit";
+import { may } from "@/lib/core/policy";
+import type { Actor } from "@/lib/core/words";
+import { AppError } from "@/lib/errors";
+import type { BoardCorrection } from "@/lib/schemas/board";
+import { Board, inTransaction } from "@/models";
+import { appendEntry, lockChain } from "./append-entry";
+import { changesOf } from "./correct-facts";
+import { placeOfBoard } from "./place";
+import { allow } from "./refuse";
+
+export async function correctBoard(actor: Actor, boardId: string, input: BoardCorrection): Promise<{ id: string }> {
+  allow(actor, "fact.correct");
+  const { drive } = await placeOfBoard(boardId);
+  return inTransaction(async (tx) => {
+    await lockChain(tx, drive.id);
+    const board = (await Board.findByPk(boardId, { transaction: tx }))!;
+    const changes = changesOf(board, input.changes);
+    if (changes.length === 0) throw new AppError("does-not-fit", "Nothing would change: these are the values on record.");
+    await board.update(input.changes, { transaction: tx });
+    // A corrected number may turn a fitting donor into one that needs a lead.
+    const boards = await Board.findAll({ where: { driveId: drive.id }, transaction: tx });
+    const original = boards.find((b) => b.role === "original");
+    const misfit = original && boards.some((b) => b.role === "donor" && donorFit(original, b).verdict === "other-number" && !b.fitReason);
+    if (misfit && !may(actor, "board.allow-other-number")) {
+      throw new AppError("rule-against", "With this the donor's board number would differ from the original's. A lead has to make this correction.");
+    }
+    await appendEntry(tx, drive.id, actor, "board.corrected", { type: "board", id: boardId }, { changes, reason: input.reason });
+    return { id: boardId };
+  });
+}

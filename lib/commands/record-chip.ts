@@ -1,0 +1,42 @@
+import { randomUUID } from "node:crypto";
+import { UniqueConstraintError } from "sequelize";
+import type { Actor } from "@/lib/core/words";
+import { AppError } from "@/lib/errors";
+import type { ChipInput } from "@/lib/schemas/chip";
+import { Chip, inTransaction } from "@/models";
+import { appendEntry, lockChain } from "./append-entry";
+import { pairChip } from "./pair-chip";
+import { placeOfBoard } from "./place";
+import { allow } from "./refuse";
+
+export async function recordChip(actor: Actor, boardId: string, input: ChipInput): Promise<{ id: string; designator: string }> {
+  allow(actor, "chip.record");
+  const place = await placeOfBoard(boardId);
+  const { board, drive } = place;
+  if (input.pairedWith && board.role !== "donor") {
+    throw new AppError("does-not-fit", "Only a donor's chip is paired: record it on the donor board and name the original's chip.", { errors: [{ path: "pairedWith", message: "Only on a donor's chip." }] });
+  }
+  try {
+    return await inTransaction(async (tx) => {
+      await lockChain(tx, drive.id);
+      const supply = input.supplyMillivolts;
+      const facts = {
+        bus: input.bus, sizeBytes: input.sizeBytes, sizeSource: input.sizeSource, package: input.package ?? null,
+        marking: input.marking ?? null, holds: input.holds ?? null, needsTransfer: board.role === "original" ? input.needsTransfer : false,
+      };
+      const chip = await Chip.create({
+        id: randomUUID(), boardId, designator: input.designator, ...facts, supplyMillivolts: supply === "unknown" ? null : supply, createdAt: new Date(),
+      }, { transaction: tx });
+      await appendEntry(tx, drive.id, actor, "chip.recorded", { type: "chip", id: chip.id }, {
+        chip: { id: chip.id, designator: chip.designator }, boardRole: board.role, supplyMillivolts: supply, ...facts,
+      });
+      if (input.pairedWith) await pairChip(tx, actor, { donorChip: chip, donorBoard: board, driveId: drive.id, originalChipId: input.pairedWith });
+      return { id: chip.id, designator: chip.designator };
+    });
+  } catch (error) {
+    if (error instanceof UniqueConstraintError) {
+      throw new AppError("rule-against", `This board has a ${input.designator} already. Open that one, or check the designator.`);
+    }
+    throw error;
+  }
+}

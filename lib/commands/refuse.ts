@@ -1,0 +1,21 @@
+import { may, type Thing, type Verb } from "@/lib/core/policy";
+import type { Actor } from "@/lib/core/words";
+import { AppError } from "@/lib/errors";
+
+const WHO: Partial<Record<Verb, string>> = {
+  "approval.give": "Only a lead can approve an image. Ask for approval on the chip's page.",
+  "approval.revoke": "Only a lead can revoke an approval.",
+  "approval.send-back": "Only a lead can send an approval back.",
+  "read.hand-out-any": "You can download the approved image and a donor's own content. Ask a lead or an auditor for any other image.",
+  "read.set-aside": "A technician can set aside their own reads only. Ask a lead for this one.",
+  "board.allow-other-number": "The donor's board number differs from the original's. Only a lead can record it, with a reason.",
+};
+
+/** Asks the policy and throws the refusal; `detail` names the way out where there is one. */
+export function allow(actor: Actor, verb: Verb, thing: Thing = {}): void {
+  if (!may(actor, verb, thing)) throw new AppError("forbidden", WHO[verb] ?? `As ${actor.role} you can look at this, but this step is for others in the workshop.`);
+}
+
+export function notFound(what: string): AppError {
+  return new AppError("not-found", `There is no ${what} under this address. Check the link.`);
+}

@@ -1,0 +1,46 @@
+import { z } from "zod";
+import { FORMATS, METHODS, STAGES } from "@/lib/core/words";
+import { millivolts } from "./chip";
+import { line, maybe, prose, reason } from "./text";
+
+const time = z.iso.datetime({ offset: true, error: "Give a time such as 2026-11-03T09:14:05Z." });
+
+/** The text fields of an upload (API.md); everything arrives as text. Per-file fields are lists in the files' order. */
+export const readFields = z.strictObject({
+  stage: z.enum(STAGES, "Say which content it is: before (of the original), donor or after."),
+  seating: z.coerce.number({ error: "Give the seating as a whole number from 1." }).int("Give the seating as a whole number from 1.").min(1, "Seatings count from 1.").max(9999, "Seatings count from 1 to 9999."),
+  reader: line(120, "the reader that took the image"),
+  method: maybe(z.enum(METHODS, "The method is in-place, lifted or socket.")).optional(),
+  toolVersion: maybe(line(120, "a tool version")).optional(),
+  adapter: maybe(line(120, "an adapter")).optional(),
+  supplyMillivolts: maybe(millivolts).optional(),
+  clockKilohertz: maybe(z.coerce.number().int("Give whole kilohertz.").min(1).max(1_000_000)).optional(),
+  controllerHeld: maybe(z.enum(["true", "false"], "Say true or false.").transform((s) => s === "true")).optional(),
+  note: maybe(prose(4000, "a note")).optional(),
+  format: z.enum(FORMATS, "The format is raw, intel-hex or s-record.").default("raw"),
+  sha256: z.array(z.string().regex(/^[0-9a-fA-F]{64}$/, "A SHA-256 has 64 hex digits.").transform((s) => s.toLowerCase())).default([]),
+  modifiedAt: z.array(maybe(time)).default([]),
+  takenAt: z.array(maybe(time)).default([]),
+});
+export type ReadFields = z.infer<typeof readFields>;
+
+export const reasonInput = z.strictObject({ reason });
+export type ReasonInput = z.infer<typeof reasonInput>;
+
+export const handOutInput = z.strictObject({ reason: maybe(reason).optional() });
+
+export const comparisonInput = z.object({
+  reads: z.string({ error: "Name two reads, such as reads=1,2." }).regex(/^\d{1,5},\d{1,5}$/, "Name two reads, such as reads=1,2.").transform((s) => s.split(",").map(Number) as [number, number]),
+  stage: z.enum(STAGES).default("before"),
+});
+
+export const bytesInput = z.object({
+  offset: z.coerce.number().int().min(0, "An offset counts from 0.").default(0),
+  length: z.coerce.number().int().min(1).max(65_536, "At most 65,536 bytes a window.").default(4096),
+});
+
+export const stripInput = z.object({ offset: z.coerce.number().int().min(0).default(0), length: z.coerce.number().int().min(256).optional() });
+
+export const findInput = z.object({
+  digest: z.string({ error: "Give a digest." }).trim().regex(/^(0x)?[0-9a-fA-F]{8,64}$/, "Give at least 8 hex digits of a SHA-256, or a CRC-32.").transform((s) => s.replace(/^0x/, "").toLowerCase()),
+});
