@@ -1,0 +1,29 @@
+"use client";
+
+import { useEffect, useRef } from "react";
+import { Icon } from "@/components/ui/icon";
+
+const TYPING = /^(INPUT|TEXTAREA|SELECT)$/;
+
+/** Case, serial or digest, from anywhere; `/` goes there. A plain form, so that it works before any script. */
+export function FindField() {
+  const field = useRef<HTMLInputElement>(null);
+  useEffect(() => {
+    function onKey(event: KeyboardEvent) {
+      const at = event.target as HTMLElement;
+      if (event.key !== "/" || event.ctrlKey || event.metaKey || event.altKey || TYPING.test(at.tagName) || at.isContentEditable) return;
+      event.preventDefault();
+      field.current?.focus();
+    }
+    document.addEventListener("keydown", onKey);
+    return () => document.removeEventListener("keydown", onKey);
+  }, []);
+  return (
+    <form action="/find" role="search" className="relative flex items-center phone:hidden">
+      <label htmlFor="find" className="sr-only">Find a case, serial or digest</label>
+      <Icon name="search" className="absolute left-[9px] text-silk-2" />
+      <input ref={field} id="find" name="q" autoComplete="off" placeholder="Case, serial or digest" className="h-[34px] w-[248px] rounded-none border border-mask-line bg-mask-deep pr-[34px] pl-8 text-silk placeholder:text-silk-2 mid:w-[180px]" />
+      <kbd aria-hidden="true" className="absolute right-2 border border-mask-line px-[5px] !text-t1 leading-4 text-silk-2">/</kbd>
+    </form>
+  );
+}

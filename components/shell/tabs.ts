@@ -1,0 +1,19 @@
+import { may } from "@/lib/core/policy";
+import type { Role } from "@/lib/core/words";
+
+export type TabKey = "bench" | "cases" | "find" | "users" | "policy" | "outbox";
+
+export interface Tab {
+  key: TabKey;
+  label: string;
+  href: string;
+}
+
+/** The contact fingers of one role. */
+export function tabsOf(user: { id: string; role: Role }): Tab[] {
+  const tabs: Tab[] = [{ key: "bench", label: "Bench", href: "/bench" }, { key: "cases", label: "Cases", href: "/cases" }, { key: "find", label: "Find", href: "/find" }];
+  if (may(user, "user.manage")) tabs.push({ key: "users", label: "Users", href: "/users" });
+  if (may(user, "policy.change")) tabs.push({ key: "policy", label: "Policy", href: "/policy" });
+  if (may(user, "outbox.read")) tabs.push({ key: "outbox", label: "Outbox", href: "/outbox" });
+  return tabs;
+}

@@ -1,0 +1,33 @@
+"use client";
+
+import { Dialog as Radix } from "radix-ui";
+import type { ReactNode } from "react";
+import { Icon } from "./icon";
+
+/** Asks something first. Not for anything that needs the strips in view. Put the buttons last among the children. */
+export function Dialog({ open, onOpenChange, title, description, children }: {
+  open: boolean;
+  onOpenChange(open: boolean): void;
+  title: ReactNode;
+  description?: ReactNode;
+  children: ReactNode;
+}) {
+  return (
+    <Radix.Root open={open} onOpenChange={onOpenChange}>
+      <Radix.Portal>
+        <Radix.Overlay className="fixed inset-0 z-40 bg-[color-mix(in_srgb,var(--mask-deep)_62%,transparent)]" />
+        <Radix.Content
+          {...(description ? {} : { "aria-describedby": undefined })}
+          className="fixed top-1/2 left-1/2 z-50 grid max-h-[92vh] w-[min(560px,calc(100vw-24px))] -translate-x-1/2 -translate-y-1/2 gap-4 overflow-y-auto border border-rule-2 border-t-4 border-t-mask bg-paper px-6 pt-5 pb-6 text-t3 text-ink phone:px-4"
+        >
+          <div className="flex items-start justify-between gap-4">
+            <Radix.Title className="text-t5 font-bold">{title}</Radix.Title>
+            <Radix.Close aria-label="Close" className="grid h-8 w-8 flex-none place-items-center border border-rule-2 bg-sheet hover:border-ink"><Icon name="close" /></Radix.Close>
+          </div>
+          {description ? <Radix.Description asChild><div className="-mt-2 text-ink-2">{description}</div></Radix.Description> : null}
+          {children}
+        </Radix.Content>
+      </Radix.Portal>
+    </Radix.Root>
+  );
+}

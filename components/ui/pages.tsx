@@ -1,0 +1,22 @@
+import { withCommas } from "@/lib/core/quantity";
+import { Button, ButtonLink } from "./button";
+import { Icon } from "./icon";
+
+/** "1 to 25 of 143", with the pages before and after. */
+export function Pages({ total, page, pageSize, href }: { total: number; page: number; pageSize: number; href: (page: number) => string }) {
+  const last = Math.max(1, Math.ceil(total / pageSize));
+  const from = Math.min(total, (page - 1) * pageSize + 1);
+  const before = <><Icon name="prev" />Previous</>;
+  const after = <>Next<Icon name="next" /></>;
+  return (
+    <nav aria-label="Pages" className="no-print flex flex-wrap items-center justify-between gap-3 pt-3 text-t2 text-ink-2">
+      <span>{withCommas(from)} to {withCommas(Math.min(total, page * pageSize))} of {withCommas(total)}</span>
+      {last > 1 ? (
+        <span className="flex gap-2">
+          {page > 1 ? <ButtonLink size="small" href={href(page - 1)}>{before}</ButtonLink> : <Button size="small" disabled>{before}</Button>}
+          {page < last ? <ButtonLink size="small" href={href(page + 1)}>{after}</ButtonLink> : <Button size="small" disabled>{after}</Button>}
+        </span>
+      ) : null}
+    </nav>
+  );
+}
