@@ -21,10 +21,11 @@ export async function correctBoard(actor: Actor, boardId: string, input: BoardCo
     // A corrected number may turn a fitting donor into one that needs a lead.
     const boards = await Board.findAll({ where: { driveId: drive.id }, transaction: tx });
     const original = boards.find((b) => b.role === "original");
-    const misfit = original && boards.some((b) => b.role === "donor" && donorFit(original, b).verdict === "other-number" && !b.fitReason);
-    if (misfit && !may(actor, "board.allow-other-number")) {
+    const misfits = boards.filter((b) => original && b.role === "donor" && donorFit(original, b).verdict === "other-number" && !b.fitReason);
+    if (misfits.length > 0 && !may(actor, "board.allow-other-number")) {
       throw new AppError("rule-against", "With this the donor's board number would differ from the original's. A lead has to make this correction.");
     }
+    for (const donor of misfits) await donor.update({ fitReason: input.reason }, { transaction: tx });
     await appendEntry(tx, drive.id, actor, "board.corrected", { type: "board", id: boardId }, { changes, reason: input.reason });
     return { id: boardId };
   });

@@ -1,0 +1,98 @@
+import { Op } from "sequelize";
+import { ENGINE_VERSION } from "@/lib/core/engine-version";
+import type { JudgeInput } from "@/lib/core/findings";
+import { judgeRead } from "@/lib/core/findings";
+import { type Finding, readName, SYSTEM } from "@/lib/core/words";
+import { currentPolicy } from "@/lib/queries/policy";
+import { Image, inTransaction, Read, type Transaction } from "@/models";
+import { imageChunks } from "@/storage";
+import { appendEntry, lockChain } from "./append-entry";
+import { judgeReadBackOf } from "./judge-read-back";
+import { type ChipPlace, driveLetter, placeOfChip } from "./place";
+
+/** The findings of one read, from its image and from what else is on record at this moment. */
+export async function findingsOf(tx: Transaction, place: ChipPlace, read: Read): Promise<Finding[]> {
+  const image = (await Image.findByPk(read.sha256, { transaction: tx }))!;
+  if (read.stage === "after") return judgeReadBackOf(tx, place, read, image.facts);
+  const siblings = await Read.findAll({ where: { chipId: place.chip.id, stage: read.stage, number: { [Op.lt]: read.number } }, order: ["number"], transaction: tx });
+  return judgeRead({
+    stage: read.stage,
+    read: { sizeBytes: read.sizeBytes, sha256: read.sha256.toString("hex"), fileName: read.fileName, modifiedAt: read.modifiedAt?.toISOString() ?? null },
+    chip: { sizeBytes: place.chip.sizeBytes, sizeSource: place.chip.sizeSource },
+    facts: image.facts, policy: await currentPolicy(tx),
+    earlier: siblings.map((r) => ({
+      number: r.number, stage: r.stage, sha256: r.sha256.toString("hex"), fileName: r.fileName, modifiedAt: r.modifiedAt?.toISOString() ?? null, counted: r.counted,
+    })),
+    elsewhere: await elsewhere(tx, place, read),
+    tail: read.sizeBytes > place.chip.sizeBytes ? { uniform: await tailIsUniform(read, place.chip.sizeBytes) } : undefined,
+  });
+}
+
+/** Counted reads of other chips that hold these very bytes; the read-backs of this chip's own transfers are left out. */
+async function elsewhere(tx: Transaction, place: ChipPlace, read: Read): Promise<JudgeInput["elsewhere"]> {
+  if (read.stage !== "before") return [];
+  const same = await Read.findAll({ where: { sha256: read.sha256, counted: true, chipId: { [Op.ne]: place.chip.id } }, order: ["storedAt"], transaction: tx });
+  const found: JudgeInput["elsewhere"] = [];
+  for (const other of same) {
+    const there = await placeOfChip(other.chipId, tx);
+    if (other.stage === "after" && there.chip.pairedWithId === place.chip.id) continue;
+    const relation = other.stage === "donor" ? "donor-content" : there.drive.id === place.drive.id ? "other-chip" : "other-drive";
+    found.push({
+      relation, readName: readName(other.stage, other.number), designator: there.chip.designator,
+      caseRef: there.case.id === place.case.id ? `Drive ${driveLetter(there.drive)}` : there.case.ref,
+      sameSerial: place.drive.serial !== null && place.drive.serial === there.drive.serial,
+    });
+  }
+  return found;
+}
+
+async function tailIsUniform(read: Read, from: number): Promise<boolean> {
+  let at = 0;
+  let fill = -1;
+  for await (const chunk of imageChunks(read.sha256.toString("hex"))) {
+    for (let i = Math.max(0, from - at); i < chunk.length; i += 1) {
+      if (fill === -1) fill = chunk[i];
+      else if (chunk[i] !== fill) return false;
+    }
+    at += chunk.length;
+  }
+  return true;
+}
+
+/** Writes the findings to the read and, when they are new or changed, an entry "read judged" by Twinread. */
+export async function judge(tx: Transaction, place: ChipPlace, read: Read, fresh = false): Promise<Finding[]> {
+  const findings = await findingsOf(tx, place, read);
+  const text = JSON.stringify(findings);
+  if (!fresh && text === read.findings && read.engineVersion === ENGINE_VERSION) return findings;
+  await read.update({ findings: text, engineVersion: ENGINE_VERSION }, { transaction: tx });
+  const others = await Read.findAll({ where: { chipId: place.chip.id, stage: read.stage, counted: true, id: { [Op.ne]: read.id }, transferId: read.transferId }, order: ["number"], transaction: tx });
+  const names = (equal: boolean) => others.filter((r) => r.sha256.equals(read.sha256) === equal).map((r) => readName(r.stage, r.number));
+  await appendEntry(tx, place.drive.id, SYSTEM, "read.judged", { type: "read", id: read.id }, {
+    read: { id: read.id, stage: read.stage, number: read.number }, chip: { id: place.chip.id, designator: place.chip.designator },
+    sha256: read.sha256.toString("hex"), engineVersion: ENGINE_VERSION,
+    findings: findings.map(({ code, severity, message, measured, threshold }) => ({ code, severity, message, measured, threshold })),
+    equalTo: names(true), differsFrom: names(false),
+  });
+  return findings;
+}
+
+/** Judges every read of a chip afresh, after a corrected size, a changed pair or the like. */
+export async function judgeChip(tx: Transaction, place: ChipPlace): Promise<void> {
+  for (const read of await Read.findAll({ where: { chipId: place.chip.id }, order: ["stage", "number"], transaction: tx })) await judge(tx, place, read);
+}
+
+/**
+ * The other side of a cross check: when an image turns up on one chip, or is set aside there, the `before` reads of
+ * other chips that hold the same bytes are judged again, each chain in a transaction of its own.
+ */
+export async function judgeSameImages(sha256: Buffer, exceptChipId: string): Promise<void> {
+  const same = await Read.findAll({ where: { sha256, stage: "before", chipId: { [Op.ne]: exceptChipId } } });
+  for (const { id, chipId } of same) {
+    const { drive } = await placeOfChip(chipId);
+    await inTransaction(async (tx) => {
+      await lockChain(tx, drive.id);
+      await judge(tx, await placeOfChip(chipId, tx), (await Read.findByPk(id, { transaction: tx }))!);
+    });
+  }
+}
+

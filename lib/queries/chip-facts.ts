@@ -1,0 +1,45 @@
+import type { ApprovalFacts } from "@/lib/core/approval";
+import { donorSaved } from "@/lib/core/approval";
+import type { StateFacts, StateRead } from "@/lib/core/chip-state";
+import type { Finding, Policy } from "@/lib/core/words";
+import type { Read } from "@/models";
+import type { ChipRecord } from "./chip-records";
+
+/** From rows to the plain facts that the rules of lib/core ask for. */
+export function stateRead(row: Read): StateRead {
+  return {
+    id: row.id, number: row.number, stage: row.stage, seating: row.seating, sha256: row.sha256.toString("hex"), sizeBytes: row.sizeBytes,
+    counted: row.counted, findings: JSON.parse(row.findings) as Finding[], operatorId: row.operatorId,
+  };
+}
+
+export function stateFacts(record: ChipRecord, policy: Policy, worst: StateFacts["worst"] = null): StateFacts {
+  const latest = record.transfers.at(-1);
+  const behind = latest && record.approvals.find((a) => a.id === latest.approvalId);
+  return {
+    policy, sizeBytes: record.chip.sizeBytes, reads: record.before.map(stateRead), worst,
+    approval: record.standing && { sha256: record.standing.sha256.toString("hex"), donorChipId: record.standing.donorChipId },
+    transfer: latest && behind ? {
+      approvedSha256: behind.sha256.toString("hex"), approvalStands: !behind.revokedAt, poweredOn: false,
+      readBacks: record.backs.filter((r) => r.transferId === latest.id).map(stateRead),
+    } : null,
+  };
+}
+
+export function approvalFacts(record: ChipRecord, policy: Policy, chainClean: boolean): ApprovalFacts {
+  const counted = record.before.filter((r) => r.counted);
+  return {
+    ...stateFacts(record, policy),
+    donor: record.donor && {
+      chipId: record.donor.chip.id, sizeBytes: record.donor.chip.sizeBytes, savedReads: record.own.map(stateRead),
+      firstTransferDone: record.transfers.some((t) => t.donorChipId === record.donor!.chip.id),
+    },
+    chainClean,
+    takers: [...new Set(record.before.map((r) => r.operatorId))],
+    imageSound: counted.every((r) => !record.unsound.has(r.sha256.toString("hex"))),
+  };
+}
+
+export function donorContentSaved(record: ChipRecord): boolean {
+  return record.donor !== null && donorSaved(record.own.map(stateRead), record.donor.chip.sizeBytes);
+}

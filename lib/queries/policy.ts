@@ -1,0 +1,11 @@
+import type { Policy } from "@/lib/core/words";
+import { PolicyRow, type Transaction } from "@/models";
+
+/** The workshop's policy; one row, made by the migration. */
+export async function currentPolicy(tx?: Transaction): Promise<Policy> {
+  const row = (await PolicyRow.findByPk(1, { transaction: tx }))!;
+  return {
+    reads: row.policyReads, seatings: row.seatings, readBacks: row.readBacks, readBackSeatings: row.readBackSeatings,
+    twoPersonRule: row.twoPersonRule, secondFactor: row.secondFactor, shareDays: row.shareDays, erasureDays: row.erasureDays,
+  };
+}

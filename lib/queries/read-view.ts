@@ -1,0 +1,19 @@
+import { crc32Hex } from "@/lib/core/digest";
+import type { Finding } from "@/lib/core/words";
+import type { ReadView } from "@/lib/views";
+import type { Read } from "@/models";
+import type { People } from "./people";
+
+export function readView(row: Read, who: People, imageSound = true): ReadView {
+  return {
+    id: row.id, chipId: row.chipId, number: row.number, stage: row.stage, seating: row.seating, sizeBytes: row.sizeBytes,
+    crc32: crc32Hex(row.crc32), sha256: row.sha256.toString("hex"), counted: row.counted, findings: JSON.parse(row.findings) as Finding[],
+    format: row.format, fileName: row.fileName, reader: row.reader, method: row.method ?? null, toolVersion: row.toolVersion ?? null,
+    adapter: row.adapter ?? null, supplyMillivolts: row.supplyUnknown ? "unknown" : row.supplyMillivolts ?? null,
+    clockKilohertz: row.clockKilohertz ?? null, controllerHeld: row.controllerHeld ?? null, note: row.note ?? null, operator: who(row.operatorId),
+    takenAt: row.takenAt?.toISOString() ?? null, modifiedAt: row.modifiedAt?.toISOString() ?? null, storedAt: row.storedAt.toISOString(),
+    transferId: row.transferId ?? null,
+    setAside: row.counted ? null : { reason: row.setAsideReason ?? "", by: who(row.setAsideBy ?? null), at: (row.setAsideAt ?? row.storedAt).toISOString() },
+    imageSound,
+  };
+}
