@@ -140,7 +140,7 @@ function together(read: Read, whole: boolean): string[] {
   if (!read.PUBLIC_URL && ["0.0.0.0", "::"].includes(read.HOST)) {
     problems.push(`HOST is ${read.HOST}, so PUBLIC_URL is needed. Set it to the address people type, like https://twinread.workshop.example.`);
   }
-  const parts = (["SMTP_HOST", "SMTP_PORT", "SMTP_USER", "SMTP_PASSWORD"] as const).filter((name) => read[name] !== undefined);
+  const parts = (["SMTP_HOST", "SMTP_PORT", "SMTP_USER", "SMTP_PASSWORD"] as const).filter((name) => (read[name] ?? null) !== null);
   if (read.SMTP_URL && parts.length > 0) problems.push(`SMTP_URL and ${parts[0]} are both set. Keep SMTP_URL, or take it out and set SMTP_HOST and the others.`);
   if (!read.SMTP_URL && parts.length > 0 && !read.SMTP_HOST) problems.push(`${parts[0]} is set and SMTP_HOST is not. Set SMTP_HOST to the mail server's name.`);
   if (Boolean(read.SMTP_USER) !== Boolean(read.SMTP_PASSWORD)) problems.push("Only one of SMTP_USER and SMTP_PASSWORD is set. Set both, or neither.");

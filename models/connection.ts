@@ -56,12 +56,13 @@ export function withReceipt<T>(save: Receipt, run: () => Promise<T>): Promise<T>
 
 /**
  * The one place where a transaction begins: READ COMMITTED, retried on deadlock and lock wait.
- * `run` may therefore be called again and must not keep state between calls.
+ * `run` may therefore be called again and must not keep state between calls. `receipt: false` is for what a refused
+ * request still writes down: it must not look like the request's answer.
  */
-export async function inTransaction<T>(run: (tx: Transaction) => Promise<T>): Promise<T> {
+export async function inTransaction<T>(run: (tx: Transaction) => Promise<T>, { receipt: leaves = true } = {}): Promise<T> {
   for (let attempt = 1; ; attempt += 1) {
     try {
-      const receipt = receipts.getStore();
+      const receipt = leaves ? receipts.getStore() : undefined;
       const result = await connection().transaction({ isolationLevel: Transaction.ISOLATION_LEVELS.READ_COMMITTED }, async (tx) => {
         const made = await run(tx);
         await receipt?.save?.(tx, made);

@@ -1,0 +1,39 @@
+import { may } from "@/lib/core/policy";
+import { type Actor, readName } from "@/lib/core/words";
+import { AppError } from "@/lib/errors";
+import { Approval, inTransaction, Read } from "@/models";
+import { appendEntry } from "./append-entry";
+import { requireCleanChain } from "./chain-gate";
+import { driveLetter, placeOfChip } from "./place";
+import { allow, notFound } from "./refuse";
+import { requireSoundImage } from "./report-image";
+
+export interface HandOut {
+  sha256: string;
+  sizeBytes: number;
+  /** a name of ours, never the uploader's */
+  fileName: string;
+}
+
+/** Records that an image leaves the house, before its first byte leaves: what, to whom, why. */
+export async function handOutImage(actor: Actor, readId: string, input: { reason?: string | null }): Promise<HandOut> {
+  const read = await Read.findByPk(readId);
+  if (!read) throw notFound("read");
+  const place = await placeOfChip(read.chipId);
+  const approval = await Approval.findOne({ where: { chipId: read.chipId, revokedAt: null, sha256: read.sha256 } });
+  const free = read.stage === "donor" ? "the donor's own content" : approval && read.stage === "before" ? "the approved image, for writing" : null;
+  if (free) allow(actor, "read.hand-out-approved");
+  else allow(actor, "read.hand-out-any");
+  if (!free || !may(actor, "transfer.record")) {
+    if (!input.reason) throw new AppError("does-not-fit", "Give a reason for taking this image out; it goes into the custody log.", { errors: [{ path: "reason", message: "Give a reason." }] });
+  }
+  await requireCleanChain(place.drive.id);
+  const sha256 = read.sha256.toString("hex");
+  await requireSoundImage(sha256, read.sizeBytes, "hand-out");
+  await inTransaction((tx) => appendEntry(tx, place.drive.id, actor, "image.handed-out", { type: "read", id: read.id }, {
+    read: { id: read.id, stage: read.stage, number: read.number }, chip: { id: place.chip.id, designator: place.chip.designator },
+    sha256, sizeBytes: read.sizeBytes, purpose: free ?? "another image, with a reason", to: { id: actor.id, name: actor.name }, reason: input.reason ?? null,
+  }));
+  const name = readName(read.stage, read.number).replace(" ", "-");
+  return { sha256, sizeBytes: read.sizeBytes, fileName: `${place.case.ref}_${driveLetter(place.drive)}_${place.chip.designator}_${name}_${sha256.slice(-8)}.bin` };
+}

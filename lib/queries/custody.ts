@@ -1,0 +1,87 @@
+import { createHash } from "node:crypto";
+import { type ChainFinding, checkChain } from "@/lib/core/custody";
+import { describe } from "@/lib/core/custody-actions";
+import { type Actor, type Stage, WORKSHOP_CHAIN } from "@/lib/core/words";
+import { allow, notFound } from "@/lib/commands/refuse";
+import type { CustodyCheckView, CustodyEntryView, PersonView } from "@/lib/views";
+import { CustodyEntry, CustodyHead, Drive, type Transaction } from "@/models";
+import { verifySignature } from "@/storage";
+
+interface Body {
+  at: string;
+  actor: PersonView;
+  action: string;
+  subject: { type: string; id: string };
+  facts: { read?: { stage: Stage; number: number }; chip?: { designator: string }; donorChip?: { designator: string }; [key: string]: unknown };
+}
+
+/** The entries of a chain in order; bodies verbatim. A body that no longer parses is shown as it is. */
+export async function chainEntries(chain: string, tx?: Transaction): Promise<CustodyEntryView[]> {
+  const rows = await CustodyEntry.findAll({ where: { chainId: chain }, order: ["seq"], transaction: tx });
+  return rows.map((row) => {
+    const body = row.body.toString("utf8");
+    const common = { seq: row.seq, hash: row.hash.toString("hex"), body, signature: row.signature.toString("base64"), keyId: row.keyId };
+    try {
+      const parsed = JSON.parse(body) as Body;
+      return { ...common, at: parsed.at, actor: parsed.actor, action: parsed.action, where: placeOf(parsed), ...describe(parsed.action, parsed.facts) };
+    } catch {
+      return { ...common, at: "", actor: { id: "", name: "unknown", role: "system" as const }, action: row.action, sentence: "This entry can't be read: its body is damaged.", where: "", kind: "differs" as const };
+    }
+  });
+}
+
+function placeOf({ facts, subject }: Body): string {
+  if (facts.chip) {
+    const side = facts.read ? (facts.read.stage === "before" ? "Orig" : "Donor") : "";
+    return `${side} ${facts.chip.designator}`.trim();
+  }
+  return subject.type.charAt(0).toUpperCase() + subject.type.slice(1);
+}
+
+/** PEM of every log key by its id, as the workshop chain introduces them. */
+export async function logKeys(tx?: Transaction): Promise<Map<string, string>> {
+  const rows = await CustodyEntry.findAll({ where: { chainId: WORKSHOP_CHAIN, action: "key.introduced" }, order: ["seq"], transaction: tx });
+  const keys = new Map<string, string>();
+  for (const row of rows) {
+    try {
+      const { facts } = JSON.parse(row.body.toString("utf8")) as { facts: { keyId: string; purpose: string; publicKeyPem: string } };
+      if (facts.purpose === "log") keys.set(facts.keyId, facts.publicKeyPem);
+    } catch {
+      // a damaged entry introduces nothing; the chain's check names it
+    }
+  }
+  return keys;
+}
+
+/** Checks one chain: links, numbers, hashes, signatures, head. It reports and never repairs. */
+export async function checkCustody(chain: string, tx?: Transaction): Promise<CustodyCheckView & { findings: ChainFinding[] }> {
+  const rows = await CustodyEntry.findAll({ where: { chainId: chain }, order: ["seq"], transaction: tx });
+  const head = await CustodyHead.findByPk(chain, { transaction: tx });
+  const keys = await logKeys(tx);
+  const findings = await checkChain(
+    rows.map((row) => ({ body: row.body, hash: row.hash.toString("hex"), signature: row.signature.toString("base64"), keyId: row.keyId })),
+    head && { seq: head.seq, hash: head.hash.toString("hex") },
+    {
+      sha256: (bytes) => createHash("sha256").update(bytes).digest("hex"),
+      verify: (keyId, bytes, signature) => {
+        const pem = keys.get(keyId);
+        return pem !== undefined && verifySignature(pem, bytes, signature);
+      },
+    },
+    chain,
+  );
+  return { ok: findings.length === 0, entries: rows.length, head: { seq: head?.seq ?? 0, hash: head?.hash.toString("hex") ?? "0".repeat(64) }, findings };
+}
+
+export async function custodyOfDrive(actor: Actor, driveId: string): Promise<{ entries: CustodyEntryView[] }> {
+  allow(actor, "custody.read");
+  if (!(await Drive.findByPk(driveId))) throw notFound("drive");
+  return { entries: await chainEntries(driveId) };
+}
+
+export async function custodyCheckOfDrive(actor: Actor, driveId: string): Promise<CustodyCheckView> {
+  allow(actor, "custody.read");
+  if (!(await Drive.findByPk(driveId))) throw notFound("drive");
+  return checkCustody(driveId);
+}
+
