@@ -1,0 +1,91 @@
+import { compareImages } from "@/lib/commands/compare-images";
+import { allow } from "@/lib/commands/refuse";
+import { driveLetter, placeOfChip } from "@/lib/commands/place";
+import { chainIsClean } from "@/lib/commands/chain-gate";
+import { approvalConditions } from "@/lib/core/approval";
+import type { Actor, Stage } from "@/lib/core/words";
+import { readName, STAGES } from "@/lib/core/words";
+import type { ChipView, GroupView, MatrixView } from "@/lib/views";
+import { Read, User } from "@/models";
+import { approvalFacts } from "./chip-facts";
+import { recordOfChip } from "./chip-records";
+import { chipState } from "./chip-state";
+import { donorSummary, originalSummary, stripImage, UNPAIRED, worthDrawing } from "./chip-summary";
+import { approvalView, requestView, transferView } from "./approval-views";
+import { people } from "./people";
+import { currentPolicy } from "./policy";
+import { readView } from "./read-view";
+import { stripStack } from "./strips";
+import { why } from "./why";
+
+/** Everything the chip page shows. A donor's chip answers with its pair's state and its own reads. */
+export async function chipView(actor: Actor, chipId: string): Promise<ChipView> {
+  allow(actor, "case.read");
+  const place = await placeOfChip(chipId);
+  const { chip, board, drive } = place;
+  const [record, policy, who] = [await recordOfChip(chipId), await currentPolicy(), await people()];
+  const isOriginal = board.role === "original";
+  const own = record && isOriginal ? [] : await Read.findAll({ where: { chipId }, order: ["stage", "number"] });
+  const reads = record && isOriginal ? [...record.before, ...record.own, ...record.backs] : own;
+  const state = record ? await chipState(record, policy) : UNPAIRED;
+  const summary = record && isOriginal ? await originalSummary(record, state) : await donorSummary(chip, board, own, record, state);
+  const unsound = record?.unsound ?? new Set<string>();
+  const drawn = worthDrawing(isOriginal ? reads.filter((r) => r.stage === "before") : own.filter((r) => r.stage === "donor"), unsound);
+  const facts = record && approvalFacts(record, policy, await chainIsClean(drive.id));
+  const takers = new Set(record?.before.map((r) => r.operatorId) ?? []);
+  const leads = await User.findAll({ where: { role: "lead", disabledAt: null }, order: ["name"] });
+  return {
+    ...summary, marking: chip.marking ?? null, sizeSource: chip.sizeSource,
+    drive: { id: drive.id, letter: driveLetter(drive), partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null },
+    board: { id: board.id, role: board.role, boardNumber: board.boardNumber, revision: board.revision ?? null },
+    case: { id: place.case.id, ref: place.case.ref, dueOn: place.case.dueOn ?? null, customerName: record?.customer.name ?? "" },
+    policy, reads: reads.map((r) => readView(r, who, !unsound.has(r.sha256.toString("hex")))), groups: groupsOf(reads),
+    matrix: await matrixOf(reads.filter((r) => r.counted && r.stage === (isOriginal ? "before" : "donor")), unsound),
+    stack: await stripStack(drawn.map(stripImage), chip.sizeBytes),
+    conditions: facts ? approvalConditions(facts) : [],
+    approvers: leads.filter((u) => !policy.twoPersonRule || !takers.has(u.id)).map((u) => who(u.id)),
+    approval: record?.standing ? approvalView(record.standing, who) : null,
+    approvals: record?.approvals.map((a) => approvalView(a, who)) ?? [],
+    request: record?.request ? requestView(record.request, who) : null,
+    transfers: record?.transfers.map((t) => transferView(t, who)) ?? [],
+    why: record ? why(record, policy) : UNPAIRED.sentence,
+    nextSeating: Object.fromEntries(STAGES.map((s) => [s, nextSeating(reads, s)])) as Record<Stage, number>,
+    receivedAt: place.case.receivedAt.toISOString(),
+  };
+}
+
+function nextSeating(reads: Read[], stage: Stage): number {
+  return Math.max(0, ...reads.filter((r) => r.stage === stage).map((r) => r.seating)) + 1;
+}
+
+function groupsOf(reads: Read[]): GroupView[] {
+  const groups = new Map<string, { view: GroupView; seatings: Set<number> }>();
+  for (const read of reads.filter((r) => r.counted)) {
+    const sha256 = read.sha256.toString("hex");
+    const key = `${read.stage}:${sha256}`;
+    const group = groups.get(key) ?? { view: { sha256, stage: read.stage, reads: [], seatings: 0 }, seatings: new Set<number>() };
+    group.view.reads.push(read.number);
+    group.seatings.add(read.seating);
+    group.view.seatings = group.seatings.size;
+    groups.set(key, group);
+  }
+  return [...groups.values()].map((g) => g.view);
+}
+
+/** Differing bytes between each two counted reads; each pair of distinct images is compared once. */
+async function matrixOf(reads: Read[], unsound: Set<string>): Promise<MatrixView> {
+  const refs = reads.map((r) => ({ sha256: r.sha256.toString("hex"), sizeBytes: r.sizeBytes }));
+  const cells: MatrixView["cells"] = [];
+  for (const [i, a] of refs.entries()) {
+    const row: MatrixView["cells"][number] = [];
+    for (const [j, b] of refs.entries()) {
+      if (i === j) row.push(null);
+      else if (a.sha256 === b.sha256) row.push(0);
+      else if (a.sizeBytes !== b.sizeBytes || unsound.has(a.sha256) || unsound.has(b.sha256)) row.push("other-size");
+      else row.push((await compareImages(a, b)).differingBytes);
+    }
+    cells.push(row);
+  }
+  return { reads: reads.map((r) => ({ number: r.number, name: readName(r.stage, r.number) })), cells };
+}
+

@@ -1,0 +1,29 @@
+import { agreement } from "@/lib/core/chip-state";
+import { type Policy, readName, seatingLetter } from "@/lib/core/words";
+import { stateRead } from "./chip-facts";
+import type { ChipRecord } from "./chip-records";
+
+const list = (items: string[]) => (items.length < 2 ? items.join("") : `${items.slice(0, -1).join(", ")} and ${items.at(-1)}`);
+const plural = (n: number, one: string) => `${n} ${one}${n === 1 ? "" : "s"}`;
+
+/** The paragraph under the verdict: what the reads show, what the policy asks, and what equal reads do not show. */
+export function why(record: ChipRecord, policy: Policy): string {
+  const latest = record.transfers.at(-1);
+  if (latest) {
+    const backs = record.backs.filter((r) => r.transferId === latest.id && r.counted).map(stateRead);
+    const seatings = new Set(backs.map((b) => b.seating)).size;
+    return `${plural(backs.length, "read-back")} of the latest transfer counted, in ${plural(seatings, "seating")}; the workshop's policy asks for ${policy.readBacks} in ${policy.readBackSeatings}, each equal to the approved image in every byte.`;
+  }
+  const reads = record.before.filter((r) => r.counted).map(stateRead);
+  if (reads.length === 0) return `The workshop's policy asks for ${policy.reads} equal reads in ${policy.seatings} seatings. Take power away before the clip goes on, and wear the wrist strap.`;
+  const { groups, largest } = agreement(reads);
+  const size = record.chip.sizeBytes.toLocaleString("en");
+  if (!largest) return "";
+  const names = list(largest.reads.map((n) => readName("before", n)));
+  const seatings = largest.seatings.length === 1 ? `seating ${seatingLetter(largest.seatings[0])}` : `seatings ${list(largest.seatings.map(seatingLetter))}`;
+  const agree = largest.reads.length > 1 ? `${names} agree in all ${size} bytes, ${seatings}.` : groups.length > 1 ? "No two reads agree." : `${names} stands alone so far.`;
+  const needed = Math.max(0, policy.reads - largest.reads.length);
+  const more = needed > 0 ? ` ${plural(needed, "more agreeing read")} ${needed === 1 ? "is" : "are"} needed.` : "";
+  const limit = groups.length === 1 && needed === 0 ? " Equal reads show that the chip gave the same bytes each time, not that the damage left those bytes unharmed; a clip that sits wrong gives the same wrong image every time." : "";
+  return agree + more + limit;
+}
