@@ -12,10 +12,10 @@ export function localUrl({ host, port }) {
 }
 
 /** Starts the app (one process) and keeps it running. */
-export function keepApp({ settings, dev = false, variables = {}, onGiveUp }) {
+export function keepApp({ settings, dev = false, variables = {}, onGiveUp, mostRestarts }) {
   let first = true;
   return keep({
-    dataDir: settings.dataDir, name: "app", label: "The app", onGiveUp,
+    dataDir: settings.dataDir, name: "app", label: "The app", onGiveUp, mostRestarts,
     start: () => progress("Starting the app", async () => {
       const handle = await start(settings, dev, variables, first);
       first = false;

@@ -67,16 +67,16 @@ export async function endLeftovers(dataDir) {
 export async function stopMarked(dataDir, name, mark) {
   const ended = await progress(`Stopping: ${name}`, () => endProcess(mark, PATIENCE[name]));
   if (!ended) throw new Refusal(`The ${name} (process ${mark.pid}) does not end. Look at ${logFile(dataDir, name)}, end it by hand, then start again.`);
+  rmSync(markFile(dataDir, name), { force: true });
 }
 
 const WINDOW_MS = 120_000;
-const MOST_IN_WINDOW = 5;
 
 /**
  * Keeps a program running: `start` launches it and resolves to its handle once it answers. When it ends by itself it is
- * started again, with growing pauses; after five times in two minutes `onGiveUp` is called instead.
+ * started again, with growing pauses; after `mostRestarts` times in two minutes `onGiveUp` is called instead.
  */
-export async function keep({ dataDir, name, label, start, onGiveUp }) {
+export async function keep({ dataDir, name, label, start, onGiveUp, mostRestarts }) {
   let handle = await start();
   let stopping = false;
   const recent = [];
@@ -87,12 +87,12 @@ export async function keep({ dataDir, name, label, start, onGiveUp }) {
       const now = Date.now();
       while (recent.length > 0 && now - recent[0] > WINDOW_MS) recent.shift();
       recent.push(now);
-      if (recent.length > MOST_IN_WINDOW) {
+      if (recent.length > mostRestarts) {
         say(`${label} ended ${recent.length} times within two minutes. Its last lines, from ${logFile(dataDir, name)}:\n${lastLines(dataDir, name)}`);
         return onGiveUp();
       }
       say(`${label} ended by itself (${how}). Starting it again.`);
-      await sleep(250 * 2 ** (recent.length - 1));
+      await sleep(Math.min(4000, 250 * 2 ** (recent.length - 1)));
       if (stopping) return;
       try {
         handle = await start();

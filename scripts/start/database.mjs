@@ -17,11 +17,11 @@ export const appUrl = (dataDir, port) => `mariadb://twinread_app:${readSecretFil
 export const adminUrl = (dataDir, port) => `mariadb://twinread_admin:${readSecretFile(dataDir, "db-admin-password")}@127.0.0.1:${port}/twinread`;
 
 /** Starts the built-in MariaDB of the data folder and keeps it running. Loopback only. */
-export async function keepDatabase({ dataDir, port, onGiveUp }) {
+export async function keepDatabase({ dataDir, port, onGiveUp, mostRestarts }) {
   await checkPort("127.0.0.1", port, "DB_PORT", "the database");
   if (!existsSync(path.join(dataDir, "db"))) await progress("Making the database", () => makeDatabase(dataDir));
   return keep({
-    dataDir, name: "database", label: "The database", onGiveUp,
+    dataDir, name: "database", label: "The database", onGiveUp, mostRestarts,
     start: () => progress("Starting the database", () => start(dataDir, port)),
   });
 }

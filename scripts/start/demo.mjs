@@ -1,11 +1,12 @@
-import { existsSync, readFileSync, readdirSync, rmSync, writeFileSync } from "node:fs";
+import { existsSync, readFileSync, writeFileSync } from "node:fs";
 import path from "node:path";
+import { emptyFolder } from "./folder.mjs";
 import { once } from "./once.mjs";
 import { appVariables, isEmbedded, tsArgs } from "./settings.mjs";
 import { progress, root, say } from "./say.mjs";
 
 const SCRIPT = "scripts/seed-demo.ts";
-const KEPT = new Set(["kind", "lock", "secrets", "keys", "run", "logs"]);
+const KEPT = ["kind", "lock", "secrets", "keys", "run", "logs"];
 const markOf = (dataDir) => path.join(dataDir, "demo-data");
 
 /** A demo whose making was cut short holds half a workshop that nobody has worked in yet: it is made afresh. */
@@ -13,9 +14,7 @@ export function clearHalfMadeDemo(settings) {
   const mark = markOf(settings.dataDir);
   if (!isEmbedded(settings) || !existsSync(mark) || readFileSync(mark, "utf8").trim() !== "started") return;
   say("The demo data was being made when Twinread was stopped. Making it afresh.");
-  for (const name of readdirSync(settings.dataDir)) {
-    if (!KEPT.has(name)) rmSync(path.join(settings.dataDir, name), { recursive: true, force: true });
-  }
+  emptyFolder(settings.dataDir, KEPT);
 }
 
 /** Fills an empty database with the demo workshop. */

@@ -26,6 +26,13 @@ export function prepareFolder(dataDir, kind) {
   makeSecrets(dataDir);
 }
 
+/** Removes what is in the folder, but for the names to keep. */
+export function emptyFolder(dataDir, kept) {
+  for (const name of readdirSync(dataDir)) {
+    if (!kept.includes(name)) rmSync(path.join(dataDir, name), { recursive: true, force: true });
+  }
+}
+
 /** Secrets and the log key, each made once and never replaced. */
 export function makeSecrets(dataDir) {
   const secret = (name, make) => writeOnce(path.join(dataDir, "secrets", name), make);

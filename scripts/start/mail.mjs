@@ -5,11 +5,11 @@ import { Refusal } from "./say.mjs";
 import { createConnection } from "node:net";
 
 /** The local mail fake: takes every mail on loopback and keeps it as a file of the data folder. */
-export async function keepMailFake({ settings, onGiveUp }) {
+export async function keepMailFake({ settings, onGiveUp, mostRestarts }) {
   const { dataDir, mailPort } = settings;
   await checkPort("127.0.0.1", mailPort, "MAIL_PORT", "the local mail fake");
   return keep({
-    dataDir, name: "mail", label: "The local mail fake", onGiveUp,
+    dataDir, name: "mail", label: "The local mail fake", onGiveUp, mostRestarts,
     start: async () => {
       const handle = launch({
         dataDir, name: "mail", port: mailPort, command: process.execPath, args: ["scripts/mail-fake.mjs"],
