@@ -1,0 +1,80 @@
+"use client";
+
+import { useRouter } from "next/navigation";
+import useSWR from "swr";
+import { PageMain } from "@/components/shell/page-main";
+import { StripLegend } from "@/components/strip/legend";
+import { StripStack } from "@/components/strip/strip-stack";
+import { Empty } from "@/components/ui/empty";
+import { Note } from "@/components/ui/note";
+import { DesignatorPlate } from "@/components/ui/plate";
+import { Section } from "@/components/ui/section";
+import { momentText } from "@/components/ui/times";
+import { may } from "@/lib/core/policy";
+import { sizeText } from "@/lib/core/quantity";
+import { backgroundFetcher, Refusal } from "@/lib/http/send";
+import type { ChipView, SessionView } from "@/lib/views";
+import { AddReads } from "./add-reads";
+import { ApprovalSection } from "./approval-section";
+import { ChipHead } from "./chip-head";
+import { ChipVerdict } from "./chip-verdict";
+import { nameOf } from "./chip-words";
+import { ReadsTable } from "./reads-table";
+import { TransferSection } from "./transfer-section";
+import { contentsOf } from "./upload-form";
+
+const REFRESH_MS = 5_000;
+
+/** The whole page of one chip; refreshed in the background, so that two people at two benches see the same. */
+export function ChipScreen({ chip: given, session, today }: {
+  chip: ChipView;
+  session: SessionView;
+  /** the workshop's calendar day, "2026-03-12" */
+  today: string;
+}) {
+  const router = useRouter();
+  const { data, error, mutate } = useSWR<ChipView, Error>(`/api/chips/${given.id}`, backgroundFetcher, { fallbackData: given, refreshInterval: REFRESH_MS, keepPreviousData: true, revalidateOnMount: false });
+  const chip = data ?? given;
+  const { user, timeZone } = session;
+  const changed = () => mutate();
+  const original = chip.boardRole === "original";
+  const latest = chip.reads.reduce<ChipView["reads"][number] | null>((last, r) => (last && last.storedAt >= r.storedAt ? last : r), null);
+  const differ = chip.stack.lanes.some((lane) => lane.differingBytes > 0);
+  const shared = { chip, user, timeZone, onChanged: changed };
+  const donorPlate = <DesignatorPlate designator={original ? chip.pair?.designator ?? chip.designator : chip.designator} board="donor" />;
+
+  return (
+    <>
+      <ChipHead chip={chip} timeZone={timeZone} today={today} />
+      <PageMain>
+        {error ? <div className="pt-4"><Note kind="caution" role="status" title="This page is not being refreshed.">{error instanceof Refusal && error.status === 401 ? "Your sign-in has ended. Reload the page to sign in again." : error.message}</Note></div> : null}
+        <Section first title="What was found" note={latest ? `After ${nameOf(latest)}, ${momentText(latest.storedAt, timeZone)}` : "No read is stored yet."}>
+          <ChipVerdict chip={chip} user={user} onChanged={changed} />
+        </Section>
+        {chip.stack.rows.length > 0 ? (
+          <Section wide title={differ ? "Where they differ" : "What the reads hold"} note={`Each read as ${chip.stack.rows[0].cells.length} cells${chip.stack.cellBytes >= 1 ? ` of ${sizeText(Math.ceil(chip.stack.cellBytes))}` : ""}. The line between two reads is whole where they agree.`} aside={<StripLegend />}>
+            <StripStack key={chip.stack.rows.map((r) => r.readId).join()} stack={chip.stack} onOpen={(at) => router.push(`/chips/${chip.id}/compare?at=${at}`)} />
+          </Section>
+        ) : null}
+        <Section title="Reads" note="Every file is kept as it came. A read is never changed or deleted, only set aside with a reason.">
+          {chip.reads.length > 0 ? <ReadsTable {...shared} /> : <Empty title={`No reads of ${chip.designator} yet.`}>Put the clip on, read the chip {chip.policy.reads} times in {chip.policy.seatings} seatings and drop the files below.</Empty>}
+        </Section>
+        {may(user, "read.store") && contentsOf(chip).length > 0 ? (
+          <Section id="add" title="Add reads" note="The digest is computed in this browser first; the server computes it again and the two must match.">
+            <AddReads chip={chip} onChanged={changed} />
+          </Section>
+        ) : null}
+        {original ? (
+          <>
+            <Section id="approval" title="Approval" note={chip.approval ? `Signed ${momentText(chip.approval.givenAt, timeZone)}.` : "Opens when every line is met."}>
+              <ApprovalSection {...shared} />
+            </Section>
+            <Section id="transfer" title="Write and read back" note={<>Donor {chip.pair ? donorPlate : "not paired yet"}</>}>
+              <TransferSection {...shared} />
+            </Section>
+          </>
+        ) : null}
+      </PageMain>
+    </>
+  );
+}

@@ -1,0 +1,46 @@
+"use client";
+
+import { useState } from "react";
+import { Button, ButtonLink } from "@/components/ui/button";
+import { Verdict } from "@/components/ui/verdict";
+import { may } from "@/lib/core/policy";
+import type { ChipView, SessionView } from "@/lib/views";
+import { AgreementMatrix } from "./agreement-matrix";
+import { nameOf, oddReads, verdictMark } from "./chip-words";
+import { ReadDialogs } from "./read-dialogs";
+
+/** What was found, and the step that leads on: one leading button, at most two more. */
+export function ChipVerdict({ chip, user, onChanged }: { chip: ChipView; user: SessionView["user"]; onChanged(): Promise<unknown> }) {
+  const [aside, setAside] = useState(false);
+  const state = chip.state.state;
+  const original = chip.boardRole === "original";
+  const bench = may(user, "read.store");
+  const odd = oddReads(chip.reads, "before");
+  const loner = odd.length === 1 && may(user, "read.set-aside", { operatorId: odd[0].operator.id }) ? odd[0] : null;
+  const signs = may(user, "approval.give") && !(chip.policy.twoPersonRule && chip.reads.some((r) => r.stage === "before" && r.operator.id === user.id));
+  const several = chip.reads.filter((r) => r.stage === "before").length > 1;
+
+  const first = () => {
+    if (!original) return chip.pair ? <ButtonLink variant="lead" href={`/chips/${chip.pair.id}`}>Open original {chip.pair.designator}</ButtonLink> : null;
+    if (["unread", "needs-reads", "reads-disagree"].includes(state) && bench) return <ButtonLink variant="lead" href="#add">Add a read</ButtonLink>;
+    if (["ready", "held"].includes(state)) return signs ? <ButtonLink variant="lead" href={`/chips/${chip.id}/decision`}>Open the decision sheet</ButtonLink> : bench ? <ButtonLink variant="lead" href="#approval">{state === "ready" ? "Ask for approval" : "See what stands against it"}</ButtonLink> : null;
+    if ((state === "approved" || state === "failed") && bench) return <ButtonLink variant="lead" href="#transfer">{state === "approved" ? "Write to the donor" : "Write again"}</ButtonLink>;
+    if (state === "written" && bench) return <ButtonLink variant="lead" href="#add">Add a read-back</ButtonLink>;
+    return state === "verified" ? <ButtonLink variant="lead" href={`/cases/${chip.case.id}`}>Open case {chip.case.ref}</ButtonLink> : null;
+  };
+
+  return (
+    <>
+      <Verdict mark={verdictMark(chip)} sentence={chip.state.sentence} why={chip.why}
+        aside={<AgreementMatrix matrix={chip.matrix} />}
+        buttons={(
+          <>
+            {first()}
+            {several ? <ButtonLink href={`/chips/${chip.id}/compare`}>Compare the bytes</ButtonLink> : null}
+            {loner ? <Button onClick={() => setAside(true)}>Set {nameOf(loner)} aside…</Button> : null}
+          </>
+        )} />
+      <ReadDialogs asked={aside && loner ? { read: loner, action: "set-aside" } : null} chip={chip} onClose={() => setAside(false)} onChanged={onChanged} />
+    </>
+  );
+}

@@ -1,0 +1,25 @@
+"use client";
+
+import { useEffect, useMemo, useRef, useSyncExternalStore } from "react";
+import { BROWSER_TOOLS, type Upload, UploadQueue } from "./upload-queue";
+
+const NONE: readonly Upload[] = [];
+const STEPS_AT_WORK: readonly Upload["step"][] = ["waiting", "hashing", "queued", "sending"];
+
+/** The upload queue of one page. Leaving the page while something is on its way asks first. */
+export function useUploads(onStored: (upload: Upload) => void): { queue: UploadQueue; uploads: readonly Upload[] } {
+  const told = useRef(onStored);
+  useEffect(() => {
+    told.current = onStored;
+  }, [onStored]);
+  const queue = useMemo(() => new UploadQueue(BROWSER_TOOLS, (upload) => told.current(upload)), []);
+  const uploads = useSyncExternalStore(queue.subscribe, queue.uploads, () => NONE);
+  const busy = uploads.some((u) => STEPS_AT_WORK.includes(u.step));
+  useEffect(() => {
+    if (!busy) return;
+    const ask = (event: BeforeUnloadEvent) => event.preventDefault();
+    window.addEventListener("beforeunload", ask);
+    return () => window.removeEventListener("beforeunload", ask);
+  }, [busy]);
+  return { queue, uploads };
+}

@@ -1,0 +1,50 @@
+"use client";
+
+import Link from "next/link";
+import { signIn } from "next-auth/react";
+import { useState, type FormEvent } from "react";
+import { Button } from "@/components/ui/button";
+import { Input } from "@/components/ui/input";
+import { Note } from "@/components/ui/note";
+
+interface Refused {
+  title: string;
+  words: string;
+}
+
+const LIMITED: Refused = { title: "Too many tries.", words: "This name or this machine rests for 15 minutes. Wait, then try again, or ask the admin for a new password." };
+const WRONG: Refused = { title: "That didn’t match.", words: "Check the e-mail address and the password. After 8 tries this name rests for 15 minutes." };
+const AWAY: Refused = { title: "Twinread can’t be reached.", words: "Check the network, then try again." };
+
+/** Signs in and goes on to `target`, a path of this site that the page has checked. */
+export function SignInForm({ workshop, target }: { workshop: string; target: string }) {
+  const [refused, setRefused] = useState<Refused | null>(null);
+  const [busy, setBusy] = useState(false);
+  async function onSubmit(event: FormEvent<HTMLFormElement>) {
+    event.preventDefault();
+    const form = new FormData(event.currentTarget);
+    setBusy(true);
+    setRefused(null);
+    const answer = await signIn("credentials", { email: String(form.get("email")), password: String(form.get("password")), redirect: false }).catch(() => undefined);
+    if (answer?.ok && !answer.error) {
+      // a whole new page, so that nothing of who was signed in before stays in memory
+      window.location.assign(target);
+      return;
+    }
+    setRefused(answer === undefined || answer.status >= 500 ? AWAY : answer.error === "limited" ? LIMITED : WRONG);
+    setBusy(false);
+  }
+  return (
+    <form onSubmit={onSubmit} className="grid w-full max-w-[352px] gap-[18px] phone:max-w-none">
+      <div>
+        <h1 className="mb-0.5 text-t5 font-bold">{workshop}</h1>
+        <p className="text-ink-2">Sign in to the bench.</p>
+      </div>
+      {refused ? <Note kind="block" role="alert" title={refused.title}>{refused.words}</Note> : null}
+      <Input label="E-mail address" name="email" type="email" autoComplete="username" autoCapitalize="none" required />
+      <Input label="Password" name="password" type="password" autoComplete="current-password" required aria-invalid={refused === WRONG || undefined} />
+      <Button type="submit" variant="lead" disabled={busy}>Sign in</Button>
+      <p className="border-t border-rule pt-3.5 text-t2 text-ink-2">Customers need no account: the summary opens from the link in your e-mail. <Link href="/request">Ask for a chip transfer</Link></p>
+    </form>
+  );
+}
