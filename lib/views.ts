@@ -2,6 +2,7 @@
  * What leaves the house: plain, minimal objects for pages and API. Sizes in bytes, digests lower-case hex,
  * times RFC 3339 UTC text, ids UUIDs. Rows never leave; queries build these.
  */
+import type { DiagnosisView } from "./core/diagnosis";
 import type {
   BoardRole, Bus, ChipStateCode, Finding, Format, Method, Policy, Range, Role, SizeSource, Stage, TransferKind,
 } from "./core/words";
@@ -181,12 +182,7 @@ export interface StripStackView extends StripView {
   loupe: StripView | null;
 }
 
-export interface DiagnosisView {
-  code: string;
-  message: string;
-  advice: string;
-  confidence: "certain" | "likely" | "unsure";
-}
+export type { DiagnosisView };
 
 export interface ComparisonView {
   equal: boolean;

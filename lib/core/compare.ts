@@ -65,7 +65,6 @@ export function createComparison(sizeA: number, sizeB: number): { push(a: Uint8A
     const open = ranges[ranges.length - 1];
     // a run that goes on from one chunk into the next is one range
     if (open && !truncated && open.start + open.length === start) open.length += end - start;
-    else if (last !== null && last + 1 === start && truncated) last = start;
     else if (ranges.length < RANGES_KEPT) ranges.push({ start, length: end - start });
     else truncated = true;
     first ??= start;

@@ -1,0 +1,57 @@
+import type { Finding, Stage } from "./words";
+
+/** What the rules need to know of a read. */
+export interface StateRead {
+  id: string;
+  /** counts per chip and stage, as shown */
+  number: number;
+  stage: Stage;
+  seating: number;
+  sha256: string;
+  sizeBytes: number;
+  counted: boolean;
+  findings: Finding[];
+  operatorId: string;
+}
+
+export interface AgreementGroup {
+  sha256: string;
+  /** read numbers, rising */
+  reads: number[];
+  /** distinct seatings, rising */
+  seatings: number[];
+}
+
+const rising = (a: number, b: number) => a - b;
+
+/** Counted reads grouped by image, largest group first, the older first among equals. One stage at a time. */
+export function agreement(reads: readonly StateRead[]): { groups: AgreementGroup[]; largest: AgreementGroup | null } {
+  const bySha = new Map<string, StateRead[]>();
+  for (const read of reads) {
+    if (read.counted) bySha.set(read.sha256, [...(bySha.get(read.sha256) ?? []), read]);
+  }
+  const groups = [...bySha].map(([sha256, members]) => ({
+    sha256,
+    reads: members.map((read) => read.number).sort(rising),
+    seatings: [...new Set(members.map((read) => read.seating))].sort(rising),
+  })).sort((a, b) => b.reads.length - a.reads.length || a.reads[0] - b.reads[0]);
+  return { groups, largest: groups[0] ?? null };
+}
+
+/** The newest counted read outside the one largest group; null when all agree or no group is largest. */
+export function oddOneOut(reads: readonly StateRead[]): StateRead | null {
+  const { groups } = agreement(reads);
+  if (groups.length < 2 || groups[0].reads.length === groups[1].reads.length) return null;
+  const odd = reads.filter((read) => read.counted && read.sha256 !== groups[0].sha256);
+  return odd.reduce((newest, read) => (read.number > newest.number ? read : newest));
+}
+
+/**
+ * The donor's own content is safe: two counted, equal, full-size `donor` reads, and none counted that disagrees.
+ * One seating is enough, any content is fine.
+ */
+export function donorSaved(reads: readonly StateRead[], sizeBytes: number): boolean {
+  const { groups } = agreement(reads.filter((read) => read.stage === "donor"));
+  const own = reads.find((read) => read.counted && read.stage === "donor");
+  return groups.length === 1 && groups[0].reads.length >= 2 && own?.sizeBytes === sizeBytes;
+}
