@@ -33,7 +33,7 @@ export function ChipScreen({ chip: given, session, today }: {
   today: string;
 }) {
   const router = useRouter();
-  const { data, error, mutate } = useSWR<ChipView, Error>(`/api/chips/${given.id}`, backgroundFetcher, { fallbackData: given, refreshInterval: REFRESH_MS, keepPreviousData: true, revalidateOnMount: false });
+  const { data, error, mutate } = useSWR<ChipView, Error>(`/api/chips/${given.id}/view`, backgroundFetcher, { fallbackData: given, refreshInterval: REFRESH_MS, keepPreviousData: true, revalidateOnMount: false });
   const chip = data ?? given;
   const { user, timeZone } = session;
   const changed = () => mutate();

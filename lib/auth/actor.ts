@@ -58,3 +58,8 @@ export async function signedInUser(background = false): Promise<User | null> {
   if (!background && now - session.lastSeenAt.getTime() > TOUCH_MS) await session.update({ lastSeenAt: new Date(now) });
   return user;
 }
+
+/** The id of the session that asks; null with a bench token. */
+export async function sessionId(): Promise<string | null> {
+  return (await getServerSession(authOptions))?.sid ?? null;
+}

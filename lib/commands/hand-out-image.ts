@@ -1,12 +1,14 @@
+import type { Readable } from "node:stream";
 import { may } from "@/lib/core/policy";
 import { type Actor, readName } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { Approval, inTransaction, Read } from "@/models";
+import { verifiedStream } from "@/storage";
 import { appendEntry } from "./append-entry";
 import { requireCleanChain } from "./chain-gate";
 import { driveLetter, placeOfChip } from "./place";
 import { allow, notFound } from "./refuse";
-import { requireSoundImage } from "./report-image";
+import { reportImage, requireSoundImage } from "./report-image";
 
 export interface HandOut {
   sha256: string;
@@ -36,4 +38,14 @@ export async function handOutImage(actor: Actor, readId: string, input: { reason
   }));
   const name = readName(read.stage, read.number).replace(" ", "-");
   return { sha256, sizeBytes: read.sizeBytes, fileName: `${place.case.ref}_${driveLetter(place.drive)}_${place.chip.designator}_${name}_${sha256.slice(-8)}.bin` };
+}
+
+/** Recorded first, then the bytes, checked while they flow: a mismatch breaks the transfer and is written down. */
+export async function openHandedOut(actor: Actor, readId: string, input: { reason?: string | null }): Promise<HandOut & { stream: Readable }> {
+  const handOut = await handOutImage(actor, readId, input);
+  const stream = verifiedStream(handOut.sha256);
+  stream.once("error", () => {
+    void reportImage(handOut.sha256, "damaged", "hand-out").catch((error: unknown) => console.error("could not record a damaged image:", error));
+  });
+  return { ...handOut, stream };
 }

@@ -1,5 +1,6 @@
 import { randomUUID } from "node:crypto";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
+import type { ImageFacts } from "@/lib/core/inspect";
 import { type Actor, readName, SYSTEM } from "@/lib/core/words";
 import { crc32Hex } from "@/lib/core/digest";
 import { AppError } from "@/lib/errors";
@@ -40,7 +41,7 @@ export async function storeReads(actor: Actor, chipId: string, fields: ReadField
   const place = await placeOfChip(chipId);
   checkFiles(fields, files);
   await checkStage(place, fields.stage);
-  const facts = [];
+  const facts: ImageFacts[] = [];
   for (const { arrived } of files) {
     await keep(arrived);
     facts.push(await inspectImage(arrived.sha256, arrived.sizeBytes));

@@ -26,6 +26,8 @@ interface Options<I> {
   status?: number;
   /** `anyone`: no sign-in asked; the actor is then nobody. `new-password`: open to who still has a one-time password */
   open?: "anyone" | "new-password";
+  /** the answer holds a secret that is shown once: it is kept nowhere, so a repeated request is a new one */
+  secret?: true;
 }
 
 /**
@@ -51,7 +53,7 @@ export function handler<I = undefined>(options: Options<I>, run: (call: Call<I>)
       const path = new URL(request.url).pathname;
       let own: Response | undefined;
       const answer = await once(
-        actor.id, `${request.method} ${path}`, request.headers.get("idempotency-key"), requestHash([request.method, path, text]), options.status ?? 200,
+        actor.id, `${request.method} ${path}`, options.secret ? null : request.headers.get("idempotency-key"), requestHash([request.method, path, text]), options.status ?? 200,
         async () => {
           const result = await run({ actor, input, params, request });
           if (result instanceof Response) {

@@ -5,7 +5,8 @@ import { chainIsClean } from "@/lib/commands/chain-gate";
 import { approvalConditions } from "@/lib/core/approval";
 import type { Actor, Stage } from "@/lib/core/words";
 import { readName, STAGES } from "@/lib/core/words";
-import type { ChipView, GroupView, MatrixView } from "@/lib/views";
+import { AppError } from "@/lib/errors";
+import type { ChipView, GroupView, MatrixView, StripView } from "@/lib/views";
 import { Read, User } from "@/models";
 import { approvalFacts } from "./chip-facts";
 import { recordOfChip } from "./chip-records";
@@ -15,7 +16,7 @@ import { approvalView, requestView, transferView } from "./approval-views";
 import { people } from "./people";
 import { currentPolicy } from "./policy";
 import { readView } from "./read-view";
-import { stripStack } from "./strips";
+import { stripStack, stripView } from "./strips";
 import { why } from "./why";
 
 /** Everything the chip page shows. A donor's chip answers with its pair's state and its own reads. */
@@ -89,3 +90,19 @@ async function matrixOf(reads: Read[], unsound: Set<string>): Promise<MatrixView
   return { reads: reads.map((r) => ({ number: r.number, name: readName(r.stage, r.number) })), cells };
 }
 
+
+/** What a bench script asks for (API.md): the facts of a chip without what only the page draws. */
+export async function chipFlatView(actor: Actor, chipId: string) {
+  const { state, stack: _stack, matrix: _matrix, thumbnail: _thumbnail, conditions: _conditions, why: _why, ...rest } = await chipView(actor, chipId);
+  return { ...rest, ...state };
+}
+
+/** Strips of a chip's counted reads over a window, for the loupe and the compare page. */
+export async function chipStrips(actor: Actor, chipId: string, { offset, length }: { offset: number; length?: number }): Promise<StripView> {
+  allow(actor, "case.read");
+  const { chip, board } = await placeOfChip(chipId);
+  const stage = board.role === "original" ? "before" : "donor";
+  const reads = await Read.findAll({ where: { chipId, stage, counted: true }, order: ["number"] });
+  if (offset >= chip.sizeBytes) throw new AppError("does-not-fit", "This address lies past the chip's end.");
+  return stripView(worthDrawing(reads, new Set()).map(stripImage), offset, Math.min(length ?? chip.sizeBytes, chip.sizeBytes - offset));
+}

@@ -85,3 +85,9 @@ export async function custodyCheckOfDrive(actor: Actor, driveId: string): Promis
   return checkCustody(driveId);
 }
 
+
+/** The chain of what belongs to no drive: accounts, policy, keys. */
+export async function workshopLog(actor: Actor): Promise<{ entries: CustodyEntryView[] }> {
+  allow(actor, "custody.read");
+  return { entries: await chainEntries(WORKSHOP_CHAIN) };
+}

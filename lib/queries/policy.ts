@@ -1,4 +1,5 @@
-import type { Policy } from "@/lib/core/words";
+import { allow } from "@/lib/commands/refuse";
+import type { Actor, Policy } from "@/lib/core/words";
 import { PolicyRow, type Transaction } from "@/models";
 
 /** The workshop's policy; one row, made by the migration. */
@@ -8,4 +9,10 @@ export async function currentPolicy(tx?: Transaction): Promise<Policy> {
     reads: row.policyReads, seatings: row.seatings, readBacks: row.readBacks, readBackSeatings: row.readBackSeatings,
     twoPersonRule: row.twoPersonRule, secondFactor: row.secondFactor, shareDays: row.shareDays, erasureDays: row.erasureDays,
   };
+}
+
+/** The rules as every member of staff may read them. */
+export async function policyView(actor: Actor): Promise<Policy> {
+  allow(actor, "policy.read");
+  return currentPolicy();
 }

@@ -1,0 +1,5 @@
+import { correctBoard } from "@/lib/commands/correct-board";
+import { handler } from "@/lib/http/handler";
+import { boardCorrection } from "@/lib/schemas/board";
+
+export const PATCH = handler({ input: boardCorrection }, ({ actor, params, input }) => correctBoard(actor, params.id, input));

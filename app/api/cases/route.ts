@@ -1,0 +1,7 @@
+import { createCase } from "@/lib/commands/create-case";
+import { handler } from "@/lib/http/handler";
+import { caseList } from "@/lib/queries/cases";
+import { caseInput, listInput } from "@/lib/schemas/case";
+
+export const GET = handler({ input: listInput }, ({ actor, input }) => caseList(actor, input));
+export const POST = handler({ input: caseInput, status: 201 }, ({ actor, input }) => createCase(actor, input));

@@ -1,0 +1,5 @@
+import { askForApproval } from "@/lib/commands/ask-for-approval";
+import { handler } from "@/lib/http/handler";
+import { approvalRequestInput } from "@/lib/schemas/approval";
+
+export const POST = handler({ input: approvalRequestInput, status: 201 }, ({ actor, params, input }) => askForApproval(actor, params.id, input));

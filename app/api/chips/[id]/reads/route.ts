@@ -1,0 +1,16 @@
+import { allow } from "@/lib/commands/refuse";
+import { placeOfChip } from "@/lib/commands/place";
+import { storeReads } from "@/lib/commands/store-reads";
+import { readFieldsOf } from "@/lib/http/read-fields";
+import { uploadHandler } from "@/lib/http/upload-handler";
+
+export const POST = uploadHandler(
+  {
+    status: 201, changes: true,
+    before: async (actor, id) => {
+      allow(actor, "read.store");
+      await placeOfChip(id);
+    },
+  },
+  ({ actor, id, upload }) => storeReads(actor, id, readFieldsOf(upload), upload.files),
+);

@@ -1,0 +1,7 @@
+import { correctChip } from "@/lib/commands/correct-chip";
+import { handler } from "@/lib/http/handler";
+import { chipFlatView } from "@/lib/queries/chip-view";
+import { chipCorrection } from "@/lib/schemas/chip";
+
+export const GET = handler({}, ({ actor, params }) => chipFlatView(actor, params.id));
+export const PATCH = handler({ input: chipCorrection }, ({ actor, params, input }) => correctChip(actor, params.id, input));

@@ -1,0 +1,5 @@
+import { sendBack } from "@/lib/commands/ask-for-approval";
+import { handler } from "@/lib/http/handler";
+import { reasonInput } from "@/lib/schemas/read";
+
+export const POST = handler({ input: reasonInput }, ({ actor, params, input }) => sendBack(actor, params.id, input));

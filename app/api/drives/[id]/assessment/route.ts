@@ -1,0 +1,5 @@
+import { assessLog } from "@/lib/commands/assess-log";
+import { handler } from "@/lib/http/handler";
+import { assessmentInput } from "@/lib/schemas/policy";
+
+export const POST = handler({ input: assessmentInput, status: 201 }, ({ actor, params, input }) => assessLog(actor, params.id, input));

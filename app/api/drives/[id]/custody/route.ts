@@ -1,0 +1,4 @@
+import { handler } from "@/lib/http/handler";
+import { custodyOfDrive } from "@/lib/queries/custody";
+
+export const GET = handler({}, ({ actor, params }) => custodyOfDrive(actor, params.id));

@@ -1,0 +1,7 @@
+import { correctDrive } from "@/lib/commands/correct-drive";
+import { handler } from "@/lib/http/handler";
+import { driveView } from "@/lib/queries/drives";
+import { driveCorrection } from "@/lib/schemas/drive";
+
+export const GET = handler({}, ({ actor, params }) => driveView(actor, params.id));
+export const PATCH = handler({ input: driveCorrection }, ({ actor, params, input }) => correctDrive(actor, params.id, input));

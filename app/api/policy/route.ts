@@ -1,0 +1,7 @@
+import { changePolicy } from "@/lib/commands/change-policy";
+import { handler } from "@/lib/http/handler";
+import { policyView } from "@/lib/queries/policy";
+import { policyInput } from "@/lib/schemas/policy";
+
+export const GET = handler({}, ({ actor }) => policyView(actor));
+export const PUT = handler({ input: policyInput }, ({ actor, input }) => changePolicy(actor, input));

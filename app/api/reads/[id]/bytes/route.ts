@@ -1,0 +1,6 @@
+import { handler } from "@/lib/http/handler";
+import { readBytes } from "@/lib/queries/compare";
+import { bytesInput } from "@/lib/schemas/read";
+
+export const GET = handler({ input: bytesInput }, async ({ actor, params, input }) =>
+  new Response(new Uint8Array(await readBytes(actor, params.id, input)), { headers: { "content-type": "application/octet-stream" } }));

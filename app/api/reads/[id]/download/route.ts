@@ -1,0 +1,17 @@
+import { Readable } from "node:stream";
+import { openHandedOut } from "@/lib/commands/hand-out-image";
+import { handler } from "@/lib/http/handler";
+import { handOutInput } from "@/lib/schemas/read";
+
+export const POST = handler({ input: handOutInput }, async ({ actor, params, input }) => {
+  const { sha256, sizeBytes, fileName, stream } = await openHandedOut(actor, params.id, input);
+  return new Response(Readable.toWeb(stream) as ReadableStream, {
+    headers: {
+      "content-type": "application/octet-stream",
+      "content-length": String(sizeBytes),
+      "content-disposition": `attachment; filename="${fileName}"`,
+      // RFC 9530: the digest as a structured-field byte sequence
+      "repr-digest": `sha-256=:${Buffer.from(sha256, "hex").toString("base64")}:`,
+    },
+  });
+});

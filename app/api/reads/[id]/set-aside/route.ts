@@ -1,0 +1,5 @@
+import { setReadAside } from "@/lib/commands/set-read-aside";
+import { handler } from "@/lib/http/handler";
+import { reasonInput } from "@/lib/schemas/read";
+
+export const POST = handler({ input: reasonInput }, ({ actor, params, input }) => setReadAside(actor, params.id, input));

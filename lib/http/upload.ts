@@ -1,0 +1,102 @@
+import { Readable } from "node:stream";
+import type { Request as ExpressRequest, Response as ExpressResponse } from "express";
+import multer from "multer";
+import { AppError } from "@/lib/errors";
+import { FREE_SPACE_FLOOR_BYTES, MAX_CALL_BYTES, MAX_FIELD_BYTES, MAX_FIELDS_A_CALL, MAX_FILES_A_CALL, MAX_IMAGE_BYTES, UPLOADS_IN_FLIGHT } from "@/lib/limits";
+import { type Arrived, discard, freeBytes, receive } from "@/storage";
+
+export interface Upload {
+  files: { arrived: Arrived; fileName: string }[];
+  /** each field's values in the order in which they came */
+  fields: Map<string, string[]>;
+}
+
+const SLACK = 1024 * 1024;
+const MULTER: Record<string, [code: "too-large" | "malformed", detail: string]> = {
+  LIMIT_FILE_SIZE: ["too-large", "A file is larger than 64 MiB, the largest chip here. Nothing was stored; check what the reader saved."],
+  LIMIT_FILE_COUNT: ["malformed", `At most ${MAX_FILES_A_CALL} files a call. Nothing was stored; send them in several calls.`],
+  LIMIT_UNEXPECTED_FILE: ["malformed", `Files go into parts named file, at most ${MAX_FILES_A_CALL} a call. Nothing was stored.`],
+};
+let inFlight = 0;
+
+/** multer's storage engine: the store itself receives the stream, hashing while it writes. */
+class IntoStore implements multer.StorageEngine {
+  _handleFile(_request: unknown, file: Express.Multer.File, done: (error?: unknown, info?: Partial<Express.Multer.File>) => void): void {
+    receive(file.stream).then((arrived) => done(null, { ...arrived, arrived } as Partial<Express.Multer.File>), done);
+  }
+  _removeFile(_request: unknown, file: Express.Multer.File, done: (error: Error | null) => void): void {
+    discard(file).then(() => done(null), done);
+  }
+}
+
+/** Ends the body once it passes the limit: multer itself would read a refused upload to its end. */
+async function* capped(body: ReadableStream<Uint8Array>): AsyncGenerator<Uint8Array> {
+  let size = 0;
+  for await (const chunk of body as unknown as AsyncIterable<Uint8Array>) {
+    size += chunk.length;
+    if (size > MAX_CALL_BYTES + SLACK) throw new AppError("too-large", "A call carries at most 512 MiB. Nothing was stored; send fewer files a call.");
+    yield chunk;
+  }
+}
+
+/** Takes a multipart call into the store's incoming folder. Hostile input: every count and size has a limit. */
+export async function takeUpload<T>(request: Request, run: (upload: Upload) => Promise<T>): Promise<T> {
+  const type = request.headers.get("content-type") ?? "";
+  if (!type.toLowerCase().startsWith("multipart/form-data")) throw new AppError("wrong-media-type", "Send the images as multipart/form-data, each as a part named file.");
+  if (!/boundary=/i.test(type)) throw new AppError("malformed", "The multipart boundary is missing. Let your program set the Content-Type itself.");
+  if (request.headers.get("content-encoding")) throw new AppError("wrong-media-type", "Send the images without Content-Encoding.");
+  const declared = Number(request.headers.get("content-length") ?? 0);
+  if (declared > MAX_CALL_BYTES + SLACK) throw new AppError("too-large", "A call carries at most 512 MiB. Nothing was stored; send fewer files a call.");
+  if (inFlight >= UPLOADS_IN_FLIGHT) throw new AppError("too-many", "Many uploads are under way. Send again in a few seconds; nothing was stored.", { retryAfterSeconds: 5 });
+  if ((await freeBytes()) < FREE_SPACE_FLOOR_BYTES + declared) throw new AppError("no-room", "The disk that holds the images is nearly full. Nothing was stored; free some space and send again.");
+  inFlight += 1;
+  let upload: Upload | undefined;
+  try {
+    upload = await parse(request);
+    return await run(upload);
+  } finally {
+    inFlight -= 1;
+    // what became an image is linked under its digest by now; what is still here belongs to nobody
+    for (const file of upload?.files ?? []) await discard(file.arrived);
+  }
+}
+
+async function parse(request: Request): Promise<Upload> {
+  if (!request.body) throw new AppError("malformed", "The request has no body. Send 1 to 16 parts named file.");
+  const stream = Readable.from(capped(request.body), { objectMode: false, highWaterMark: 256 * 1024 }) as Readable & {
+    headers: Record<string, string>; files?: (Express.Multer.File & { arrived: Arrived })[]; body?: Record<string, string | string[]>;
+  };
+  stream.headers = Object.fromEntries(request.headers);
+  if (!stream.headers["content-length"]) stream.headers["transfer-encoding"] ??= "chunked";
+  const run = multer({
+    storage: new IntoStore(), defParamCharset: "utf8",
+    limits: { fileSize: MAX_IMAGE_BYTES, files: MAX_FILES_A_CALL, fields: MAX_FIELDS_A_CALL, fieldSize: MAX_FIELD_BYTES, fieldNameSize: 100, parts: MAX_FILES_A_CALL + MAX_FIELDS_A_CALL, headerPairs: 20 },
+  }).array("file", MAX_FILES_A_CALL);
+  const onAbort = () => stream.destroy(new Error("the sender went away"));
+  request.signal.addEventListener("abort", onAbort, { once: true });
+  try {
+    await new Promise<void>((resolve, reject) => {
+      stream.on("error", reject);
+      run(stream as unknown as ExpressRequest, {} as ExpressResponse, (error?: unknown) => (error ? reject(error) : resolve()));
+    });
+  } catch (error) {
+    for (const file of stream.files ?? []) await discard(file.arrived);
+    throw refusal(error);
+  } finally {
+    request.signal.removeEventListener("abort", onAbort);
+    if (!stream.readableEnded) stream.destroy();
+  }
+  const fields = new Map(Object.entries(stream.body ?? {}).map(([name, value]) => [name, Array.isArray(value) ? value.map(String) : [String(value)]]));
+  return { files: (stream.files ?? []).map((file) => ({ arrived: file.arrived, fileName: file.originalname })), fields };
+}
+
+function refusal(error: unknown): unknown {
+  if (error instanceof AppError) return error;
+  if (error instanceof multer.MulterError) {
+    const [code, detail] = MULTER[error.code] ?? ["malformed", `The upload has too many or too long parts (${error.message}). Nothing was stored.`];
+    return new AppError(code, detail);
+  }
+  const fault = error as NodeJS.ErrnoException;
+  if (fault.code === "ENOSPC" || fault.code === "EIO" || fault.code?.startsWith("ER_")) return error;
+  return new AppError("malformed", "The upload broke off or is not well-formed multipart. Nothing was stored; send it again.");
+}

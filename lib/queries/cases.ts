@@ -1,0 +1,77 @@
+import { Op, type Order, type WhereOptions } from "sequelize";
+import { allow, notFound } from "@/lib/commands/refuse";
+import { driveLetter } from "@/lib/commands/place";
+import { readCaseRef, withCheck } from "@/lib/core/case-number";
+import type { Actor } from "@/lib/core/words";
+import type { ListInput } from "@/lib/schemas/case";
+import type { CaseRow, CaseView, ListView } from "@/lib/views";
+import { Case, CustodyHead, Customer, Drive, Share } from "@/models";
+import { boardViews } from "./boards";
+import { chipRecords } from "./chip-records";
+import { chipState } from "./chip-state";
+import { people } from "./people";
+import { currentPolicy } from "./policy";
+import { shareView } from "./share-view";
+
+const COLUMN: Record<string, string> = { ref: "ref", due: "dueOn", received: "receivedAt" };
+
+/** The cases as a list: searched, sorted and paged by the database. */
+export async function caseList(actor: Actor, input: ListInput): Promise<ListView<CaseRow>> {
+  allow(actor, "case.read");
+  const direction = input.order === "asc" ? "ASC" : "DESC";
+  const byName = [{ model: Customer, as: "customer" }, "name", direction] as const;
+  const column = COLUMN[input.sort];
+  const order: Order = [input.sort === "customer" ? [...byName] : column ? [column, direction] : ["receivedAt", "DESC"], ["ref", "DESC"]];
+  const { rows, count } = await Case.findAndCountAll({
+    where: await matching(input.q), include: [{ model: Customer, as: "customer", required: true }], order,
+    limit: input.pageSize, offset: (input.page - 1) * input.pageSize, distinct: true,
+  });
+  return { items: await caseRows(rows), total: count, page: input.page, pageSize: input.pageSize };
+}
+
+/** Case number, customer, damage, or a drive's part number, model or serial. */
+async function matching(q: string): Promise<WhereOptions> {
+  const text = q.trim();
+  if (!text) return {};
+  const reading = readCaseRef(text);
+  if (reading.kind === "ref") return { ref: reading.ref };
+  const like = { [Op.like]: `%${text.replace(/[\\%_]/g, (c) => `\\${c}`)}%` };
+  const drives = await Drive.findAll({ attributes: ["caseId"], where: { [Op.or]: [{ partNumber: like }, { model: like }, { serial: like }] }, limit: 1000 });
+  return { [Op.or]: [{ ref: like }, { damage: like }, { "$customer.name$": like }, { id: drives.map((d) => d.caseId) }] } as WhereOptions;
+}
+
+export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
+  const customers = new Map((await Customer.findAll({ where: { id: rows.map((r) => r.customerId) } })).map((c) => [c.id, c]));
+  const drives = await Drive.findAll({ where: { caseId: rows.map((r) => r.id) }, order: ["position"] });
+  const { records } = await chipRecords(drives.map((d) => d.id));
+  const policy = await currentPolicy();
+  const states = await Promise.all(records.filter((r) => r.chip.needsTransfer).map(async (record) => ({ caseId: record.case.id, designator: record.chip.designator, ...(await chipState(record, policy)) })));
+  return rows.map((row) => ({
+    id: row.id, ref: row.ref, customerName: customers.get(row.customerId)?.name ?? "", damage: row.damage, dueOn: row.dueOn ?? null,
+    partNumbers: drives.filter((d) => d.caseId === row.id).map((d) => d.partNumber ?? d.model ?? d.serial).join(", "),
+    receivedAt: row.receivedAt.toISOString(), state: row.closedAt ? "closed" : "open",
+    chips: states.filter((s) => s.caseId === row.id).map(({ state, label, designator }) => ({ state, label, designator })),
+  }));
+}
+
+export async function caseView(actor: Actor, id: string): Promise<CaseView> {
+  allow(actor, "case.read");
+  const found = await Case.findByPk(id);
+  const customer = found && (await Customer.findByPk(found.customerId));
+  if (!found || !customer) throw notFound("case");
+  const who = await people();
+  const drives = await Drive.findAll({ where: { caseId: id }, order: ["position"] });
+  const heads = new Map((await CustodyHead.findAll({ where: { chainId: drives.map((d) => d.id) } })).map((h) => [h.chainId, h.seq]));
+  const boards = await boardViews(drives.map((d) => d.id));
+  const shares = await Share.findAll({ where: { caseId: id }, order: [["createdAt", "DESC"]] });
+  return {
+    id, ref: found.ref, refChecked: withCheck(found.ref), state: found.closedAt ? "closed" : "open", closedReason: found.closedReason ?? null,
+    customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
+    damage: found.damage, note: found.note ?? null, dueOn: found.dueOn ?? null, receivedAt: found.receivedAt.toISOString(), createdBy: who(found.createdBy),
+    drives: drives.map((d) => ({
+      id: d.id, letter: driveLetter(d), partNumber: d.partNumber ?? null, model: d.model ?? null, serial: d.serial ?? null, interface: d.interface ?? null,
+      boards: boards.get(d.id) ?? [], custodyEntries: heads.get(d.id) ?? 0,
+    })),
+    shares: shares.map((s) => shareView(s, who)),
+  };
+}
