@@ -16,7 +16,7 @@ export async function up({ context: q }: { context: QueryInterface }): Promise<v
     CONSTRAINT approval_requests_chip FOREIGN KEY (chip_id) REFERENCES chips (id),
     CONSTRAINT approval_requests_by FOREIGN KEY (asked_by) REFERENCES users (id)
   ) ENGINE=InnoDB`);
-  // standing_chip_id makes the database itself refuse a second standing approval of one chip.
+  // `standing` is 1 or NULL: with it the database itself refuses a second standing approval of one chip.
   await q.sequelize.query(`CREATE TABLE approvals (
     id ${ID} NOT NULL PRIMARY KEY,
     chip_id ${ID} NOT NULL,
@@ -32,8 +32,8 @@ export async function up({ context: q }: { context: QueryInterface }): Promise<v
     revoked_by ${ID} NULL,
     revoked_cause VARCHAR(40) CHARACTER SET ascii COLLATE ascii_bin NULL,
     revoked_reason TEXT NULL,
-    standing_chip_id ${ID} AS (IF(revoked_at IS NULL, chip_id, NULL)) PERSISTENT,
-    UNIQUE KEY approvals_standing (standing_chip_id),
+    standing TINYINT AS (IF(revoked_at IS NULL, 1, NULL)) PERSISTENT,
+    UNIQUE KEY approvals_standing (chip_id, standing),
     KEY approvals_chip (chip_id, given_at),
     KEY approvals_digest (sha256),
     CONSTRAINT approvals_chip FOREIGN KEY (chip_id) REFERENCES chips (id),
