@@ -76,7 +76,7 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
         ) : null}
         <ul aria-label="Files">{uploads.map((upload) => <UploadLine key={upload.key} upload={upload} queue={queue} chip={chip} />)}</ul>
       </div>
-      <form className="grid content-start gap-3.5" onSubmit={(event) => { event.preventDefault(); if (held.length > 0) void take([]); }}>
+      <form className="grid content-start gap-3.5 narrow:grid-cols-2 narrow:gap-x-5 phone:grid-cols-1" onSubmit={(event) => { event.preventDefault(); if (held.length > 0) void take([]); }}>
         <Select label="Which content is it?" options={contents.map((c) => ({ value: c.stage, label: c.words }))} error={errors.stage?.message}
           {...register("stage", { onChange: (event: { target: { value: string } }) => setValue("seating", String(chip.nextSeating[event.target.value as Stage])) })} />
         <Select label="Seating" options={seatingOptions(chip, stage)} hint="A new seating counts more than another read in the old one." error={errors.seating?.message} {...register("seating")} />
@@ -84,9 +84,9 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
         <Input label="Adapter" placeholder="SOIC-8 clip C4" autoComplete="off" error={errors.adapter?.message} {...register("adapter")} />
         <Select label="Supply set in the reader" options={SUPPLY_OPTIONS} error={errors.supplyMillivolts?.message} {...register("supplyMillivolts")} />
         {warning ? <Note kind="caution" role="status">{warning}</Note> : null}
-        <details className="border-t border-rule pt-2">
+        <details className="narrow:col-span-full border-t border-rule pt-2">
           <summary className="cursor-pointer py-1 font-semibold">More about this read</summary>
-          <div className="grid gap-3.5 pt-2">
+          <div className="grid gap-3.5 pt-2 narrow:grid-cols-2 narrow:gap-x-5 phone:grid-cols-1">
             <Select label="Method" options={METHOD_OPTIONS} error={errors.method?.message} {...register("method")} />
             <Input label="Tool version" autoComplete="off" error={errors.toolVersion?.message} {...register("toolVersion")} />
             <Input label="Clock, kHz" inputMode="numeric" autoComplete="off" error={errors.clockKilohertz?.message} {...register("clockKilohertz")} />

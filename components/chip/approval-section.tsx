@@ -5,7 +5,6 @@ import { Button, ButtonLink, Buttons } from "@/components/ui/button";
 import { DigestInFull } from "@/components/ui/digest";
 import { Note } from "@/components/ui/note";
 import { momentText } from "@/components/ui/times";
-import { CopyButton } from "@/components/ui/copy-button";
 import { useSay } from "@/components/ui/toast";
 import { send } from "@/lib/http/send";
 import { may } from "@/lib/core/policy";
@@ -76,7 +75,7 @@ function Signed({ approval, timeZone }: { approval: ApprovalView; timeZone: stri
     <>
       <p>Approved by <b>{approval.approvedBy.name}</b>, {momentText(approval.givenAt, timeZone)}{approval.twoPersonRule ? ", who took no read of the original" : ", with the two-person rule off"}: “{approval.statement}”</p>
       {reasons.length > 0 ? <ul>{reasons.map(([code, text]) => <li key={code}>Looked at: “{text}”</li>)}</ul> : null}
-      <p><span className="text-ink-2">Approved image, SHA-256</span><br /><DigestInFull sha256={approval.sha256} /><CopyButton text={approval.sha256} label="Copy all 64 digits of the SHA-256" done="Copied all 64 digits." /></p>
+      <p><span className="text-ink-2">Approved image, SHA-256</span><br /><DigestInFull sha256={approval.sha256} /></p>
     </>
   );
 }

@@ -16,7 +16,8 @@ export function digestFile(file: File, onProgress: (done: number) => void): Runn
   const result = new Promise<FileDigest>((resolve, reject) => {
     worker.addEventListener("message", (event: MessageEvent<DigestAnswer>) => {
       const said = event.data;
-      if (said.kind === "progress") onProgress(said.done);
+      if (said.kind === "ready") worker.postMessage({ file } satisfies DigestRequest);
+      else if (said.kind === "progress") onProgress(said.done);
       else if (said.kind === "done") resolve({ sha256: said.sha256, crc32: said.crc32 });
       else reject(new Error("This file can't be read. It may have changed or moved since it was chosen; choose it again."));
     });

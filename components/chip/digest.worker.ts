@@ -6,6 +6,7 @@ export interface DigestRequest {
   file: File;
 }
 export type DigestAnswer =
+  | { kind: "ready" }
   | { kind: "progress"; done: number }
   | { kind: "done"; sha256: string; crc32: string }
   | { kind: "unreadable"; message: string };
@@ -16,6 +17,9 @@ const answer = (message: DigestAnswer) => self.postMessage(message);
 self.addEventListener("message", (event: MessageEvent<DigestRequest>) => {
   void digest(event.data.file);
 });
+
+// A bundler may load a worker's parts one after the other; what was sent before this line would be lost.
+answer({ kind: "ready" });
 
 async function digest(file: File): Promise<void> {
   try {

@@ -68,7 +68,7 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
 function ReadActions({ read, user, onAsk }: { read: ReadView; user: SessionView["user"]; onAsk(action: ReadAction): void }) {
   const mayChange = may(user, "read.set-aside", { operatorId: read.operator.id });
   return (
-    <span className="flex flex-wrap items-center justify-end gap-x-3 phone:justify-start">
+    <span className="flex items-center justify-end gap-x-3 whitespace-nowrap phone:justify-start">
       {mayChange ? <Button variant="text" size="small" aria-label={`${read.counted ? "Set aside" : "Count again"}: ${nameOf(read)}`} onClick={() => onAsk(read.counted ? "set-aside" : "count-again")}>{read.counted ? "Set aside…" : "Count again…"}</Button> : null}
       {may(user, "read.hand-out-any") ? <Button variant="text" size="small" aria-label={`Download ${nameOf(read)}`} onClick={() => onAsk("download")}>Download…</Button> : null}
     </span>

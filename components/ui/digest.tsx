@@ -12,10 +12,11 @@ export function Digest({ sha256, copy = true }: { sha256: string; copy?: boolean
 }
 
 /** All 64 digits in groups of 8, where a person must compare. */
-export function DigestInFull({ sha256, className = "" }: { sha256: string; className?: string }) {
+export function DigestInFull({ sha256, copy = true, className = "" }: { sha256: string; copy?: boolean; className?: string }) {
   return (
-    <code className={`inline-flex flex-wrap gap-x-[0.6em] font-medium ${className}`} aria-label={`SHA-256 ${sha256}`}>
+    <code className={`inline-flex flex-wrap gap-x-[0.6em] font-medium ${className}`}>
       {groupsOf8(sha256).map((group, i) => <span key={i} className="whitespace-nowrap">{group}</span>)}
+      {copy ? <CopyButton text={sha256} label="Copy all 64 digits of the SHA-256" done="Copied all 64 digits." /> : null}
     </code>
   );
 }

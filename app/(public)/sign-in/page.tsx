@@ -18,9 +18,9 @@ export default async function SignInPage({ searchParams }: { searchParams: Promi
   const { workshop, demo } = env();
   const target = ownPath((await searchParams).callbackUrl);
   return (
-    <>
+    <div className="flex min-h-screen flex-col">
       {demo ? <DemoStrip /> : null}
-      <main id="main" className="grid min-h-screen grid-cols-[minmax(0,1.15fr)_minmax(0,1fr)] phone:grid-cols-1 phone:grid-rows-[auto_1fr]">
+      <main id="main" className="grid flex-1 grid-cols-[minmax(0,1.15fr)_minmax(0,1fr)] phone:grid-cols-1 phone:grid-rows-[auto_1fr]">
         <div className="relative flex flex-col justify-between overflow-hidden border-r-4 border-bare-edge bg-mask px-12 py-9 text-silk phone:gap-3.5 phone:border-r-0 phone:border-b-4 phone:px-4 phone:py-[18px]">
           <SignInArt />
           <span className="relative flex items-center gap-[11px] text-[1.1875rem] font-bold tracking-[-0.005em]"><Logo />Twinread</span>
@@ -30,6 +30,6 @@ export default async function SignInPage({ searchParams }: { searchParams: Promi
           <SignInForm workshop={workshop} target={target} />
         </div>
       </main>
-    </>
+    </div>
   );
 }
