@@ -1,0 +1,75 @@
+import { createHash } from "node:crypto";
+import { Readable } from "node:stream";
+import { createCase } from "@/lib/commands/create-case";
+import { createUser } from "@/lib/commands/create-user";
+import { introduceKey } from "@/lib/commands/introduce-key";
+import { recordBoard } from "@/lib/commands/record-board";
+import { recordChip } from "@/lib/commands/record-chip";
+import { recordDrive } from "@/lib/commands/record-drive";
+import { type StoredReads, storeReads } from "@/lib/commands/store-reads";
+import { type Actor, type Role, type Stage, SYSTEM } from "@/lib/core/words";
+import { type ReadFields, readFields } from "@/lib/schemas/read";
+import { receive } from "@/storage";
+
+/** Real rows through the real commands: what a test needs to begin with. */
+let serial = 0;
+
+export async function makeUser(role: Role, name = `Person ${(serial += 1)}`): Promise<Actor & { role: Role; email: string }> {
+  await introduceKey();
+  const email = `${name.toLowerCase().replace(/[^a-z]+/g, ".")}.${Date.now().toString(36)}${(serial += 1)}@bench.example`;
+  const { user } = await createUser(SYSTEM, { email, name, role }, "correct horse battery staple", false);
+  return { id: user.id, name, role, email };
+}
+
+export interface MadeChip {
+  caseId: string;
+  ref: string;
+  driveId: string;
+  originalBoardId: string;
+  donorBoardId: string;
+  chipId: string;
+  donorChipId: string;
+}
+
+/** A case with one drive, both boards and a pair of chips. */
+export async function makeChip(actor: Actor, { sizeBytes = 8192, serialNumber = `SN-${(serial += 1)}-${Date.now().toString(36)}` } = {}): Promise<MadeChip> {
+  const made = await createCase(actor, { customer: { name: "Lindmoor Veterinary Practice", email: "desk@lindmoor.example" }, damage: "Power surge" });
+  const drive = await recordDrive(actor, made.id, { partNumber: "PN 4471-0093-B", serial: serialNumber });
+  const board = { boardNumber: "BX 40-3179", revision: "rev C" };
+  const original = await recordBoard(actor, drive.id, { role: "original", ...board });
+  const donor = await recordBoard(actor, drive.id, { role: "donor", ...board });
+  const facts = { designator: "U12", bus: "spi" as const, sizeBytes, sizeSource: "marking" as const, supplyMillivolts: 3300, needsTransfer: true };
+  const chip = await recordChip(actor, original.id, facts);
+  const donorChip = await recordChip(actor, donor.id, { ...facts, pairedWith: chip.id });
+  return { caseId: made.id, ref: made.ref, driveId: drive.id, originalBoardId: original.id, donorBoardId: donor.id, chipId: chip.id, donorChipId: donorChip.id };
+}
+
+/**
+ * `stream("bench-seed-1", n)` of the project's check values: SHA256(seed ‖ be32(0)) ‖ SHA256(seed ‖ be32(1)) ‖ …,
+ * so that any language can make the same bytes again.
+ */
+export function stream(seed: string, length: number): Buffer {
+  const blocks: Buffer[] = [];
+  for (let i = 0; i * 32 < length; i += 1) {
+    const counter = Buffer.alloc(4);
+    counter.writeUInt32BE(i);
+    blocks.push(createHash("sha256").update(seed).update(counter).digest());
+  }
+  return Buffer.concat(blocks).subarray(0, length);
+}
+
+export const sha256 = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");
+
+type Fields = Partial<Omit<ReadFields, "stage">>;
+
+/** Uploads one image as a read. */
+export async function store(actor: Actor, chipId: string, stage: Stage, bytes: Uint8Array, seating = 1, fields: Fields = {}, fileName = "image.bin"): Promise<StoredReads> {
+  const arrived = await receive(Readable.from([Buffer.from(bytes)]));
+  return storeReads(actor, chipId, { ...readFields.parse({ stage, seating, reader: "R2", supplyMillivolts: 3300 }), ...fields }, [{ arrived, fileName }]);
+}
+
+/** Three equal reads in two seatings and the donor's content saved: ready for approval. */
+export async function makeReady(technician: Actor, chip: MadeChip, image: Uint8Array, donorImage: Uint8Array = Buffer.alloc(image.length, 0xff)): Promise<void> {
+  for (const seating of [1, 1]) await store(technician, chip.donorChipId, "donor", donorImage, seating);
+  for (const seating of [1, 1, 2]) await store(technician, chip.chipId, "before", image, seating);
+}
