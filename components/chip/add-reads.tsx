@@ -1,7 +1,7 @@
 "use client";
 
 import { zodResolver } from "@hookform/resolvers/zod";
-import { useEffect, useState } from "react";
+import { useEffect, useRef, useState } from "react";
 import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { Input } from "@/components/ui/input";
@@ -36,6 +36,15 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
   useEffect(() => {
     for (const [name, value] of Object.entries(equipmentKept())) setValue(name as keyof UploadFormValues, value);
   }, [setValue]);
+
+  // After a transfer the next reads are read-backs: a form left on "Original" would file them under the wrong chip.
+  const transfers = useRef(chip.transfers.length);
+  useEffect(() => {
+    if (transfers.current === chip.transfers.length) return;
+    transfers.current = chip.transfers.length;
+    setValue("stage", "after");
+    setValue("seating", String(chip.nextSeating.after));
+  }, [chip.transfers.length, chip.nextSeating.after, setValue]);
 
   const stage = useWatch({ control, name: "stage" }) as Stage;
   const supply = text(useWatch({ control, name: "supplyMillivolts" }));

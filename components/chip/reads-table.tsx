@@ -27,7 +27,7 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
   const original = chip.boardRole === "original" ? chip.designator : chip.pair?.designator ?? chip.designator;
   return (
     <>
-      <div className="overflow-x-auto">
+      <div className="overflow-x-auto phone:overflow-visible">
         <table className="ruled lines">
           <caption className="sr-only">Reads of {chip.designator}</caption>
           <thead><tr>{HEADS.map((head) => <th key={head} scope="col" className={head === "Size" ? "num" : ""}>{head}</th>)}<th scope="col"><span className="sr-only">What can be done</span></th></tr></thead>

@@ -61,13 +61,14 @@ function TransferLines({ chip, transfer, place, timeZone }: { chip: ChipView; tr
   const backs = chip.reads.filter((r) => r.stage === "after" && r.transferId === transfer.id);
   const cleared = chip.approvals.find((a) => a.id === transfer.approvalId);
   const tools = [transfer.programmer, transfer.toolVersion, transfer.adapter].filter(Boolean).join(", ");
-  const line = "grid grid-cols-[16px_minmax(0,1fr)_auto] gap-2.5 border-b border-rule py-[7px]";
+  const line = "grid grid-cols-[16px_minmax(0,1fr)_auto] gap-x-2.5 border-b border-rule py-[7px] slim:grid-cols-[16px_minmax(0,1fr)]";
+  const when = "whitespace-nowrap text-ink-2 slim:col-start-2";
   return (
     <>
       <li className={line}>
         <Mark kind="note" label={`Transfer ${place}`} className="mt-0.5" />
         <span><b>{KIND[transfer.kind]}</b> by {transfer.by.name}{tools ? `, ${tools}` : ""}{transfer.note ? <span className="block text-ink-2">“{transfer.note}”</span> : null}</span>
-        <span className="whitespace-nowrap text-ink-2">{momentText(transfer.at, timeZone)}</span>
+        <span className={when}>{momentText(transfer.at, timeZone)}</span>
       </li>
       {backs.map((read) => {
         const equal = read.sha256 === cleared?.sha256;
@@ -76,7 +77,7 @@ function TransferLines({ chip, transfer, place, timeZone }: { chip: ChipView; tr
           <li key={read.id} className={line}>
             <Mark kind={read.setAside ? "aside" : equal ? "ok" : "block"} label={read.setAside ? "Set aside" : equal ? "Equal" : "Differs"} className="mt-0.5 [--hole:var(--paper)]" />
             <span className={read.setAside ? "text-ink-3" : ""}>{nameOf(read)}{equal ? " equals the approved image" : `: ${found?.message ?? "differs from the approved image."}`}{read.setAside ? ` Set aside: ${read.setAside.reason}` : ""}</span>
-            <span className="whitespace-nowrap text-ink-2">{momentText(read.storedAt, timeZone)}, seating {seatingLetter(read.seating)}</span>
+            <span className={when}>{momentText(read.storedAt, timeZone)}, seating {seatingLetter(read.seating)}</span>
           </li>
         );
       })}

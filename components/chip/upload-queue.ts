@@ -24,6 +24,8 @@ export type UploadStep =
 
 export interface Upload {
   key: string;
+  /** the Idempotency-Key: the same after a broken connection, a new one after an answer that refused */
+  sendKey: string;
   file: File;
   target: UploadTarget;
   step: UploadStep;
@@ -48,7 +50,14 @@ export class UploadQueue {
   private running = new Map<string, { stop(): void }>();
   private listeners = new Set<() => void>();
 
-  constructor(private readonly tools: QueueTools, private readonly onStored: (upload: Upload) => void) {}
+  private onStored: (upload: Upload) => void = () => undefined;
+
+  constructor(private readonly tools: QueueTools) {}
+
+  /** Who hears of each stored file; the latest one counts. */
+  tell(onStored: (upload: Upload) => void): void {
+    this.onStored = onStored;
+  }
 
   subscribe = (listener: () => void) => {
     this.listeners.add(listener);
@@ -57,7 +66,7 @@ export class UploadQueue {
   uploads = () => this.list;
 
   add(files: readonly File[], target: UploadTarget): void {
-    const fresh = files.map((file): Upload => ({ key: this.tools.newKey(), file, target, step: "waiting", hashed: 0, sent: 0, digest: null, read: null, problem: null }));
+    const fresh = files.map((file): Upload => ({ key: this.tools.newKey(), sendKey: this.tools.newKey(), file, target, step: "waiting", hashed: 0, sent: 0, digest: null, read: null, problem: null }));
     this.set([...this.list, ...fresh]);
     this.work();
   }
@@ -118,10 +127,10 @@ export class UploadQueue {
     }
   }
 
-  private async transmit({ key, file, target, digest }: Upload): Promise<void> {
+  private async transmit({ key, sendKey, file, target, digest }: Upload): Promise<void> {
     this.change(key, { step: "sending" });
     const fields = { ...target.fields, sha256: digest?.sha256 ?? "" };
-    const job = this.tools.send(target.chipId, file, fields, key, (sent) => this.change(key, { sent }));
+    const job = this.tools.send(target.chipId, file, fields, sendKey, (sent) => this.change(key, { sent }));
     this.running.set(key, job);
     try {
       const stored = await job.result;
@@ -129,7 +138,10 @@ export class UploadQueue {
       const upload = this.get(key);
       if (upload) this.onStored(upload);
     } catch (error) {
-      if (this.get(key)?.step === "sending") this.change(key, { step: "refused", problem: error instanceof Refusal ? error.detail : String(error) });
+      const answered = error instanceof Refusal && error.status >= 400 && error.status < 500;
+      if (this.get(key)?.step === "sending") {
+        this.change(key, { step: "refused", sendKey: answered ? this.tools.newKey() : sendKey, problem: error instanceof Refusal ? error.detail : String(error) });
+      }
     } finally {
       if (this.running.get(key) === job) this.running.delete(key);
       this.work();

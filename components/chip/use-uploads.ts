@@ -1,6 +1,6 @@
 "use client";
 
-import { useEffect, useMemo, useRef, useSyncExternalStore } from "react";
+import { useEffect, useState, useSyncExternalStore } from "react";
 import { BROWSER_TOOLS, type Upload, UploadQueue } from "./upload-queue";
 
 const NONE: readonly Upload[] = [];
@@ -8,11 +8,8 @@ const STEPS_AT_WORK: readonly Upload["step"][] = ["waiting", "hashing", "queued"
 
 /** The upload queue of one page. Leaving the page while something is on its way asks first. */
 export function useUploads(onStored: (upload: Upload) => void): { queue: UploadQueue; uploads: readonly Upload[] } {
-  const told = useRef(onStored);
-  useEffect(() => {
-    told.current = onStored;
-  }, [onStored]);
-  const queue = useMemo(() => new UploadQueue(BROWSER_TOOLS, (upload) => told.current(upload)), []);
+  const [queue] = useState(() => new UploadQueue(BROWSER_TOOLS));
+  useEffect(() => queue.tell(onStored), [queue, onStored]);
   const uploads = useSyncExternalStore(queue.subscribe, queue.uploads, () => NONE);
   const busy = uploads.some((u) => STEPS_AT_WORK.includes(u.step));
   useEffect(() => {

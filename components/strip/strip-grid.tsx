@@ -12,6 +12,11 @@ const TICK = 16;
 
 const at = (segment: number, row: number) => ({ "--s": segment, "--r": row }) as CSSProperties;
 
+/** On a phone "Read 2" is "2" and "Back 1" is "B1": the column has room for two letters. */
+function shortName(name: string): string {
+  return name.replace(/^Read /, "").replace(/^([A-Z])[a-z]+ /, "$1");
+}
+
 export interface StripGridProps {
   view: StripView;
   sizeBytes: number;
@@ -81,7 +86,7 @@ export function StripGrid({ view, sizeBytes, label, cursor, onCursor, onOpen }: 
             {segments.map((s) => {
               const all = foldAgrees(view, s);
               const rest = all && r > 0 ? "is-rest" : "";
-              const short = all ? "all" : row.name.replace(/^Read /, "");
+              const short = all ? "all" : shortName(row.name);
               return (
                 <Fragment key={s}>
                   {lane ? <div className={`stack-lane ${rest}`} style={at(s, r * 2 + 1)} onClick={(event) => onClick(event, s)}><LaneSvg counts={lane.cells?.slice(s * SEGMENT, (s + 1) * SEGMENT) ?? null} length={SEGMENT} /></div> : null}
