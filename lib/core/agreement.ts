@@ -38,12 +38,11 @@ export function agreement(reads: readonly StateRead[]): { groups: AgreementGroup
   return { groups, largest: groups[0] ?? null };
 }
 
-/** The newest counted read outside the one largest group; null when all agree or no group is largest. */
-export function oddOneOut(reads: readonly StateRead[]): StateRead | null {
+/** Number of the newest counted read outside the one largest group; null when all agree or no group is largest. */
+export function oddOneOut(reads: readonly StateRead[]): number | null {
   const { groups } = agreement(reads);
   if (groups.length < 2 || groups[0].reads.length === groups[1].reads.length) return null;
-  const odd = reads.filter((read) => read.counted && read.sha256 !== groups[0].sha256);
-  return odd.reduce((newest, read) => (read.number > newest.number ? read : newest));
+  return Math.max(...groups.slice(1).flatMap((group) => group.reads));
 }
 
 /**

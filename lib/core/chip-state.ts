@@ -119,7 +119,7 @@ export function deriveReadingState(facts: Pick<StateFacts, "policy" | "sizeBytes
   const say = (state: ChipStateCode, sentence: string): DerivedState => ({ state, label: STATE_LABEL[state], sentence });
   const { groups, largest } = agreement(reads);
   if (!largest) return say("unread", unreadSentence(policy, reads.length));
-  if (groups.length > 1) return say("reads-disagree", disagreeSentence(groups, oddOneOut(reads)?.number ?? null, facts.worst ?? null, sizeBytes));
+  if (groups.length > 1) return say("reads-disagree", disagreeSentence(groups, oddOneOut(reads), facts.worst ?? null, sizeBytes));
   const open = openFindings({ policy, reads });
   const blocks = open.filter(({ finding }) => finding.severity === "blocks");
   if (blocks.length > 0) return say("held", heldSentence(blocks, true));

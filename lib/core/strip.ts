@@ -119,7 +119,9 @@ export function rangeText(start: number, length: number, sizeBytes: number): str
 
 /** Where differences lie, for a sentence: "at 0x00123" or "all in 0x1F000–0x1FFFF" (the loupe's window, if any). */
 export function placeText(first: number, last: number, sizeBytes: number): string {
-  if (first === last) return `at ${address(first, sizeBytes)}`;
-  const { offset, length } = loupeWindow(sizeBytes, first, last) ?? { offset: first, length: last - first + 1 };
-  return `all in ${rangeText(offset, Math.min(length, sizeBytes - offset), sizeBytes)}`;
+  // a read longer than its chip differs past the chip's end
+  const size = Math.max(sizeBytes, last + 1);
+  if (first === last) return `at ${address(first, size)}`;
+  const { offset, length } = loupeWindow(size, first, last) ?? { offset: first, length: last - first + 1 };
+  return `all in ${rangeText(offset, Math.min(length, size - offset), size)}`;
 }

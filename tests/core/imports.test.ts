@@ -1,0 +1,57 @@
+import { readdirSync, readFileSync } from "node:fs";
+import { builtinModules } from "node:module";
+import path from "node:path";
+import { expect, it } from "vitest";
+
+/**
+ * Who may import whom: the table of the architecture, word for word. The longest room that fits a file decides; a
+ * room's own files are always free to it.
+ */
+const ROOMS: Record<string, RegExp> = {
+  "app": /^(components|lib)\//,
+  "components": /^(components\/ui|lib\/core|lib\/schemas)\/|^lib\/(limits|http\/send)$/,
+  "lib/commands": /^(models|storage)(\/|$)|^lib\/(core|schemas)\/|^lib\/(errors|limits|views)$/,
+  "lib/queries": /^(models|storage)(\/|$)|^lib\/(core|schemas)\/|^lib\/(errors|limits|views)$/,
+  "lib/core": /^lib\/core\//,
+  "lib/schemas": /^lib\/core\/|^lib\/limits$/,
+  "lib/auth": /^lib\/|^models(\/|$)/,
+  "lib/http": /^lib\/|^models(\/|$)/,
+  "lib/mail": /^lib\/|^models(\/|$)/,
+  "models": /^lib\/(env|errors|core\/digest)$/,
+  "storage": /^lib\/(env|errors|core\/digest)$/,
+  "scripts": /^(?!app\/|components\/)/,
+};
+const CORE_PACKAGES = ["zod", "canonicalize", "crc-32"];
+/** `import x from "y"`, `export * from "y"`, `import "y"`, `import("y")`, `require("y")` */
+const IMPORT = /(?:^|\n)\s*(import|export)\s+(type\s)?(?:[^"';]*?\sfrom\s*)?"([^"]+)"|\b(?:import|require)\(\s*"([^"]+)"\s*\)/g;
+
+const root = path.resolve(import.meta.dirname, "../..");
+const files = ["app", "components", "lib", "models", "storage", "scripts"].flatMap((folder) =>
+  readdirSync(path.join(root, folder), { recursive: true, encoding: "utf8" })
+    .filter((name) => /\.(ts|tsx|mjs)$/.test(name)).map((name) => path.posix.join(folder, name.replaceAll(path.sep, "/"))));
+
+function refused(file: string): string[] {
+  const room = Object.keys(ROOMS).filter((name) => file.startsWith(`${name}/`)).sort((a, b) => b.length - a.length)[0];
+  if (!room) return [];
+  return [...readFileSync(path.join(root, file), "utf8").matchAll(IMPORT)].flatMap(([, , typeOnly, from, called]) => {
+    const specifier = from ?? called;
+    const own = specifier.startsWith("@/") ? specifier.slice(2) : specifier.startsWith(".") ? path.posix.join(path.posix.dirname(file), specifier) : null;
+    if (own === null) {
+      const foreign = room === "lib/core" && !CORE_PACKAGES.includes(specifier);
+      const node = room === "components" && (specifier.startsWith("node:") || builtinModules.includes(specifier));
+      return foreign || node ? [`${file} imports ${specifier}`] : [];
+    }
+    const named = own.replace(/\.(ts|tsx|js|mjs|css)$/, "");
+    // what a page gets is a view: components know its type, never how it is made
+    const viewType = room === "components" && typeOnly !== undefined && named === "lib/views";
+    // components are one folder per noun, each a room of its own
+    const home = room === "components" ? path.posix.dirname(file) : room;
+    const allowed = named.startsWith(`${home}/`) || named === home || viewType || ROOMS[room].test(named);
+    return allowed ? [] : [`${file} imports ${own}`];
+  });
+}
+
+it("keeps each room to what it may import", () => {
+  expect(files.length).toBeGreaterThan(20);
+  expect(files.flatMap(refused)).toEqual([]);
+});
