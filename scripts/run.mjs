@@ -52,5 +52,6 @@ try {
   await end(await main());
 } catch (error) {
   await house?.stop();
-  giveUp(error);
+  // 2 for "could not be run": check-store's 1 means damage
+  giveUp(error, 2);
 }

@@ -12,22 +12,22 @@ export function localUrl({ host, port }) {
 }
 
 /** Starts the app (one process) and keeps it running. */
-export function keepApp({ settings, dev = false, variables = {}, onGiveUp, mostRestarts }) {
+export function keepApp({ settings, dev = false, variables = {}, onGiveUp, mostRestarts, control }) {
   let first = true;
   return keep({
-    dataDir: settings.dataDir, name: "app", label: "The app", onGiveUp, mostRestarts,
+    dataDir: settings.dataDir, name: "app", label: "The app", onGiveUp, mostRestarts, control,
     start: () => progress("Starting the app", async () => {
-      const handle = await start(settings, dev, variables, first);
+      const handle = await start({ settings, dev, variables, control, strict: first });
       first = false;
       return handle;
     }),
   });
 }
 
-async function start(settings, dev, variables, strict) {
+async function start({ settings, dev, variables, control, strict }) {
   const { dataDir, host, port } = settings;
   const handle = launch({
-    dataDir, name: "app", port, inherit: dev, command: process.execPath,
+    control, dataDir, name: "app", port, inherit: dev, command: process.execPath,
     args: ["node_modules/next/dist/bin/next", dev ? "dev" : "start", "-H", host, "-p", String(port)],
     env: { ...appVariables(settings), ...variables, NODE_ENV: dev ? "development" : "production" },
   });

@@ -1,5 +1,5 @@
 import { spawn } from "node:child_process";
-import { closeSync, mkdirSync, openSync, readdirSync, readFileSync, renameSync, rmSync, statSync, writeFileSync } from "node:fs";
+import { closeSync, mkdirSync, openSync, readFileSync, renameSync, rmSync, statSync, writeFileSync } from "node:fs";
 import path from "node:path";
 import { endProcess, isAlive, sleep, startTicks } from "./process-id.mjs";
 import { progress, Refusal, root, say } from "./say.mjs";
@@ -20,14 +20,19 @@ export function lastLines(dataDir, name, count = 20) {
   return readFileSync(logFile(dataDir, name), "utf8").trimEnd().split("\n").slice(-count).join("\n");
 }
 
+/** What the parts of one house share: whether it is being stopped, and what it has launched. */
+export const newControl = () => ({ stopping: false, launched: new Set() });
+
 /**
  * Starts a program in a process group of its own, so that Ctrl-C reaches only the starting process, which then stops
  * everything in order. Leaves a mark in the data folder, by which a later start finds what a killed one left behind.
  */
-export function launch({ dataDir, name, command, args, env, port = null, inherit = false }) {
+export function launch({ control, dataDir, name, command, args, env, port = null, inherit = false }) {
+  if (control.stopping) throw new Refusal("Stopping: nothing new is started.");
   const log = inherit ? null : openLog(dataDir, name);
   const child = spawn(command, args, { cwd: root, detached: true, env, stdio: ["ignore", log ?? "inherit", log ?? "inherit"] });
   if (log !== null) closeSync(log);
+  control.launched.add(name);
   const state = { ended: null };
   const exited = new Promise((done) => {
     child.on("error", (error) => done((state.ended = error.message)));
@@ -35,9 +40,6 @@ export function launch({ dataDir, name, command, args, env, port = null, inherit
   });
   const mark = { pid: child.pid ?? 0, ticks: child.pid ? startTicks(child.pid) : null, port };
   writeFileSync(markFile(dataDir, name), JSON.stringify(mark), { mode: 0o600 });
-  exited.then(() => {
-    if (runningMark(dataDir, name) === null) rmSync(markFile(dataDir, name), { force: true });
-  });
   return { mark, exited, hasEnded: () => state.ended };
 }
 
@@ -51,16 +53,26 @@ export function runningMark(dataDir, name) {
   }
 }
 
+// The order of stopping: whoever uses another stops before it. The database is never killed, however long it takes.
 const PATIENCE = { app: { waitMs: 30_000, killAfterMs: 12_000 }, mail: { waitMs: 10_000, killAfterMs: 3_000 }, database: { waitMs: 120_000 } };
 
 /** Ends what an earlier start left running when it was killed. The caller holds the folder's lock. */
 export async function endLeftovers(dataDir) {
-  const names = readdirSync(path.join(dataDir, "run")).map((file) => file.replace(/\.json$/, ""));
-  for (const name of ["app", "mail", "database"].filter((known) => names.includes(known))) {
+  for (const name of Object.keys(PATIENCE)) {
     const mark = runningMark(dataDir, name);
     if (!mark) continue;
     say(`Ending what an earlier start left running: ${name} (process ${mark.pid}).`);
     await stopMarked(dataDir, name, mark);
+  }
+}
+
+/** Stops in order whatever the house has launched, also what is only just starting. */
+export async function stopLaunched(dataDir, control) {
+  control.stopping = true;
+  for (const name of Object.keys(PATIENCE).filter((known) => control.launched.has(known))) {
+    const mark = runningMark(dataDir, name);
+    if (mark) await stopMarked(dataDir, name, mark);
+    else rmSync(markFile(dataDir, name), { force: true });
   }
 }
 
@@ -71,48 +83,40 @@ export async function stopMarked(dataDir, name, mark) {
 }
 
 const WINDOW_MS = 120_000;
+const LONGEST_PAUSE_MS = 4000;
 
 /**
  * Keeps a program running: `start` launches it and resolves to its handle once it answers. When it ends by itself it is
  * started again, with growing pauses; after `mostRestarts` times in two minutes `onGiveUp` is called instead.
  */
-export async function keep({ dataDir, name, label, start, onGiveUp, mostRestarts }) {
-  let handle = await start();
-  let stopping = false;
-  const recent = [];
-  const watch = (async () => {
-    for (;;) {
-      const how = await handle.exited;
-      if (stopping) return;
-      const now = Date.now();
-      while (recent.length > 0 && now - recent[0] > WINDOW_MS) recent.shift();
-      recent.push(now);
-      if (recent.length > mostRestarts) {
-        say(`${label} ended ${recent.length} times within two minutes. Its last lines, from ${logFile(dataDir, name)}:\n${lastLines(dataDir, name)}`);
-        return onGiveUp();
-      }
-      say(`${label} ended by itself (${how}). Starting it again.`);
-      await sleep(Math.min(4000, 250 * 2 ** (recent.length - 1)));
-      if (stopping) return;
-      try {
-        handle = await start();
-      } catch (error) {
-        say(error.message);
-        handle = { exited: Promise.resolve("did not start"), mark: null };
-      }
-    }
-  })();
-  watch.catch((error) => {
+export async function keep({ control, dataDir, name, label, start, onGiveUp, mostRestarts }) {
+  const handle = await start();
+  restartWhenEnded({ control, dataDir, name, label, start, onGiveUp, mostRestarts }, handle).catch((error) => {
     say(error.stack);
     onGiveUp();
   });
-  return {
-    pid: () => handle.mark?.pid ?? null,
-    async stop() {
-      stopping = true;
-      // a restart under way has its own mark, newer than the handle
-      const mark = runningMark(dataDir, name) ?? handle.mark;
-      if (mark) await stopMarked(dataDir, name, mark);
-    },
-  };
+}
+
+async function restartWhenEnded({ control, dataDir, name, label, start, onGiveUp, mostRestarts }, first) {
+  let handle = first;
+  let recent = [];
+  for (;;) {
+    const how = await handle.exited;
+    if (control.stopping) return;
+    recent = [...recent, Date.now()].filter((time) => Date.now() - time < WINDOW_MS);
+    if (recent.length > mostRestarts) {
+      say(`${label} ended ${recent.length} times within two minutes. Its last lines, from ${logFile(dataDir, name)}:\n${lastLines(dataDir, name)}`);
+      return onGiveUp();
+    }
+    say(`${label} ended by itself (${how}). Starting it again.`);
+    await sleep(Math.min(LONGEST_PAUSE_MS, 250 * 2 ** (recent.length - 1)));
+    if (control.stopping) return;
+    try {
+      handle = await start();
+    } catch (error) {
+      if (control.stopping) return;
+      say(error.message);
+      handle = { exited: Promise.resolve("it did not start") };
+    }
+  }
 }

@@ -17,12 +17,12 @@ export const appUrl = (dataDir, port) => `mariadb://twinread_app:${readSecretFil
 export const adminUrl = (dataDir, port) => `mariadb://twinread_admin:${readSecretFile(dataDir, "db-admin-password")}@127.0.0.1:${port}/twinread`;
 
 /** Starts the built-in MariaDB of the data folder and keeps it running. Loopback only. */
-export async function keepDatabase({ dataDir, port, onGiveUp, mostRestarts }) {
+export async function keepDatabase({ dataDir, port, onGiveUp, mostRestarts, control }) {
   await checkPort("127.0.0.1", port, "DB_PORT", "the database");
   if (!existsSync(path.join(dataDir, "db"))) await progress("Making the database", () => makeDatabase(dataDir));
   return keep({
-    dataDir, name: "database", label: "The database", onGiveUp, mostRestarts,
-    start: () => progress("Starting the database", () => start(dataDir, port)),
+    dataDir, name: "database", label: "The database", onGiveUp, mostRestarts, control,
+    start: () => progress("Starting the database", () => start(dataDir, port, control)),
   });
 }
 
@@ -60,12 +60,12 @@ function initStatements(dataDir) {
   ].join("\n");
 }
 
-async function start(dataDir, port) {
+async function start(dataDir, port, control) {
   const initFile = path.join(dataDir, "run/init.sql");
   rmSync(initFile, { force: true });
   writeFileSync(initFile, initStatements(dataDir), { mode: 0o600, flag: "wx" });
   const handle = launch({
-    dataDir, name: "database", port, command: findProgram("mariadbd"), env: { PATH: process.env.PATH, LC_ALL: "C" },
+    control, dataDir, name: "database", port, command: findProgram("mariadbd"), env: { PATH: process.env.PATH, LC_ALL: "C" },
     args: [
       "--no-defaults", ...asUser, `--datadir=${path.join(dataDir, "db")}`, `--socket=${socketPath(dataDir)}`,
       `--pid-file=${path.join(dataDir, "run/db.pid")}`, `--port=${port}`, "--bind-address=127.0.0.1", "--skip-name-resolve",

@@ -5,14 +5,14 @@ import { Refusal } from "./say.mjs";
 import { createConnection } from "node:net";
 
 /** The local mail fake: takes every mail on loopback and keeps it as a file of the data folder. */
-export async function keepMailFake({ settings, onGiveUp, mostRestarts }) {
+export async function keepMailFake({ settings, onGiveUp, mostRestarts, control }) {
   const { dataDir, mailPort } = settings;
   await checkPort("127.0.0.1", mailPort, "MAIL_PORT", "the local mail fake");
   return keep({
-    dataDir, name: "mail", label: "The local mail fake", onGiveUp, mostRestarts,
+    dataDir, name: "mail", label: "The local mail fake", onGiveUp, mostRestarts, control,
     start: async () => {
       const handle = launch({
-        dataDir, name: "mail", port: mailPort, command: process.execPath, args: ["scripts/mail-fake.mjs"],
+        control, dataDir, name: "mail", port: mailPort, command: process.execPath, args: ["scripts/mail-fake.mjs"],
         env: { PATH: process.env.PATH, MAIL_PORT: String(mailPort), TWINREAD_DATA: dataDir },
       });
       while (!(await listens(mailPort))) {

@@ -40,7 +40,7 @@ export async function progress(label, work) {
 }
 
 /** Ends the process with the sentence of a Refusal, or with the stack of anything unforeseen. */
-export function giveUp(error) {
+export function giveUp(error, code = 1) {
   process.stderr.write(`${error instanceof Refusal ? error.message : error?.stack ?? error}\n`);
-  process.exit(1);
+  process.exit(code);
 }

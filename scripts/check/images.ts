@@ -1,0 +1,97 @@
+import { readdir } from "node:fs/promises";
+import path from "node:path";
+import type { Transaction } from "sequelize";
+import { env } from "@/lib/env";
+import { Approval, Image } from "@/models";
+import { checkImage } from "@/storage";
+import type { Logged } from "./chains";
+import type { Places, PlacedRead } from "./places";
+import type { Damage, StoreReport } from "./report";
+
+export interface StoredImage {
+  sha256: string;
+  sizeBytes: number;
+  crc32: string;
+}
+
+export async function storedImages(tx: Transaction): Promise<StoredImage[]> {
+  const rows = await Image.findAll({ attributes: ["sha256", "sizeBytes", "crc32"], transaction: tx, raw: true });
+  return rows.map((row) => ({ sha256: row.sha256.toString("hex"), sizeBytes: row.sizeBytes, crc32: row.crc32.toString(16).padStart(8, "0") }));
+}
+
+/** Reads every stored image whole and compares it with its digest and size. `tick` is called after each. */
+export async function checkImages(images: StoredImage[], places: Places, tick: (done: number) => void): Promise<{ counts: StoreReport["images"]; damage: Damage[] }> {
+  const counts = { checked: 0, bytes: 0, damaged: 0, missing: 0 };
+  const found: Damage[] = [];
+  const users = grouped(places.reads);
+  for (const { sha256, sizeBytes } of images) {
+    const state = await checkImage(sha256, sizeBytes);
+    counts.checked += 1;
+    counts.bytes += sizeBytes;
+    tick(counts.checked);
+    if (state === "sound") continue;
+    counts[state] += 1;
+    const sentence = state === "missing" ? "The stored image is missing." : "The stored image is not the one that was stored: its bytes or its size changed.";
+    found.push({
+      place: `Image ${sha256}`, seq: null, problem: `image-${state}`, sentence, chain: null, sha256, reads: (users.get(sha256) ?? []).map((read) => read.name),
+    });
+  }
+  return { counts, damage: found };
+}
+
+function grouped(reads: PlacedRead[]): Map<string, PlacedRead[]> {
+  const groups = new Map<string, PlacedRead[]>();
+  for (const read of reads) groups.set(read.sha256, [...(groups.get(read.sha256) ?? []), read]);
+  return groups;
+}
+
+/** Every read has its image's row and its log entry, all three say the same, and no logged read is without its row. */
+export function checkReads(images: StoredImage[], places: Places, logged: Logged): Damage[] {
+  const found: Damage[] = [];
+  const bySha = new Map(images.map((image) => [image.sha256, image]));
+  const say = (read: PlacedRead, seq: number | null, problem: Damage["problem"], sentence: string, expected?: string, is?: string) =>
+    found.push({ place: read.name, seq, problem, sentence, chain: read.driveId, sha256: read.sha256, reads: [], expected, found: is });
+  for (const read of places.reads) {
+    const image = bySha.get(read.sha256);
+    if (!image) say(read, null, "image-record", "The read has no image on record.");
+    else if (image.sizeBytes !== read.sizeBytes || image.crc32 !== read.crc32) {
+      say(read, null, "image-record", "The read's size or CRC-32 is not its image's.", `${image.sizeBytes} bytes, ${image.crc32}`, `${read.sizeBytes} bytes, ${read.crc32}`);
+    }
+    const entry = logged.reads.get(read.id);
+    const [fromLog, fromRow] = [entry && `${entry.sha256}, ${entry.sizeBytes} bytes, ${entry.crc32}`, `${read.sha256}, ${read.sizeBytes} bytes, ${read.crc32}`];
+    if (!entry) say(read, null, "read-not-in-log", "The read stands in the database, but no entry of the log says that it was stored.");
+    else if (entry.chain !== read.driveId) say(read, entry.seq, "read-differs-from-log", "The read stands under another drive than the log says.", places.chain(entry.chain), places.chain(read.driveId));
+    else if (fromLog !== fromRow) say(read, entry.seq, "read-differs-from-log", "The read is not the one that the log says was stored.", fromLog, fromRow);
+  }
+  const known = new Set(places.reads.map((read) => read.id));
+  for (const [id, entry] of logged.reads) {
+    if (known.has(id)) continue;
+    found.push({ place: places.chain(entry.chain), seq: entry.seq, problem: "read-missing", sentence: "The log says that a read was stored, and the read is gone from the database.", chain: entry.chain, sha256: entry.sha256, reads: [] });
+  }
+  return found;
+}
+
+/** Every approval is in the log, for the same image. */
+export async function checkApprovals(tx: Transaction, places: Places, logged: Logged): Promise<Damage[]> {
+  const found: Damage[] = [];
+  for (const row of await Approval.findAll({ attributes: ["id", "chipId", "sha256", "revokedAt"], transaction: tx, raw: true })) {
+    const chain = places.driveOfChip.get(row.chipId) ?? "";
+    const sha256 = row.sha256.toString("hex");
+    const entry = logged.approvals.get(row.id);
+    const say = (problem: Damage["problem"], sentence: string, expected?: string) =>
+      found.push({ place: places.chain(chain), seq: entry?.seq ?? null, problem, sentence, chain, sha256, reads: [], expected, found: expected && sha256 });
+    if (!entry) say("approval-not-in-log", "An approval stands in the database that no entry of the log gives.");
+    else if (entry.sha256 !== sha256 || entry.chain !== chain) say("approval-differs-from-log", "The approval is for another image or drive than the log says.", entry.sha256);
+    else if (logged.revoked.has(row.id) !== (row.revokedAt !== null)) {
+      say("approval-differs-from-log", row.revokedAt ? "The approval is revoked in the database, and no entry of the log revokes it." : "The log revokes the approval, and in the database it stands.");
+    }
+  }
+  return found;
+}
+
+/** Files under the images' names that no row knows. */
+export async function countUnknownFiles(images: StoredImage[]): Promise<number> {
+  const known = new Set(images.map((image) => image.sha256));
+  const files = await readdir(path.join(env().dataDir, "images", "sha256"), { recursive: true }).catch(() => [] as string[]);
+  return files.map((file) => path.basename(file)).filter((name) => name.length === 64 && !known.has(name)).length;
+}
