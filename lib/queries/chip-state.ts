@@ -16,7 +16,8 @@ export async function worstPair(record: ChipRecord): Promise<StateFacts["worst"]
   const counted = record.before.filter((r) => r.counted);
   const reads = counted.map(stateRead);
   if (agreement(reads).groups.length < 2) return null;
-  const odd = oddOneOut(reads) ?? reads.at(-1)!;
+  const oddNumber = oddOneOut(reads);
+  const odd = reads.find((r) => r.counted && r.number === oddNumber) ?? reads.at(-1)!;
   const other = reads.find((r) => r.sha256 !== odd.sha256)!;
   const [rowOdd, rowOther] = [odd, other].map((r) => counted.find((row) => row.id === r.id)!);
   if (record.unsound.has(odd.sha256) || record.unsound.has(other.sha256)) return null;
