@@ -383,3 +383,18 @@ export interface SessionView {
   timeZone: string;
   benchCount: number;
 }
+
+/** What the decision sheet shows beyond the chip: the image, where it would go, and how the reads set aside differ from it. */
+export interface DecisionView {
+  chip: ChipView;
+  /** the image of the largest agreeing group, or the approved one; null while nothing is read */
+  image: { sha256: string; crc32: string; sizeBytes: number; reads: number[]; seatings: number[] } | null;
+  /** findings of severity `blocks` or `reason`; `read` is null for one on the chip as a whole */
+  open: { read: number | null; finding: Finding }[];
+  donor: { board: BoardView; chip: ChipSummary; own: ReadView[] } | null;
+  /** the image over the donor's own content; null until both are there */
+  stack: StripStackView | null;
+  donorDiffers: number | null;
+  /** per `before` read set aside: bytes that differ from the image, and where */
+  setAside: { read: ReadView; differingBytes: number; place: string | null }[];
+}

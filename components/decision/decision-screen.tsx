@@ -1,0 +1,96 @@
+"use client";
+
+import { zodResolver } from "@hookform/resolvers/zod";
+import { useRouter } from "next/navigation";
+import { useMemo, useState } from "react";
+import { useForm, useWatch } from "react-hook-form";
+import { ReasonDialog } from "@/components/chip/reason-dialog";
+import { Section } from "@/components/ui/section";
+import { useSay } from "@/components/ui/toast";
+import { REASON_CHARACTERS } from "@/lib/core/approval";
+import { may } from "@/lib/core/policy";
+import { readsText } from "@/lib/core/quantity";
+import { Refusal, send } from "@/lib/http/send";
+import type { DecisionView, SessionView } from "@/lib/views";
+import { standsAgainst, standsFor, stillOpen } from "./against";
+import { BeforeYouSign } from "./before-you-sign";
+import { type DecisionForm, decisionForm, reasonLength, sameDigits } from "./decision-form";
+import { ImageFacts } from "./image-facts";
+import { Ledger } from "./ledger";
+import { Sign } from "./sign";
+import { Standing } from "./standing";
+import { DonorFacts, WhereItGoes } from "./where-it-goes";
+import { maySign, WhoMaySign } from "./who-may-sign";
+
+/** The whole sheet: the image, for and against, where it goes, and the signature between double rules. */
+export function DecisionScreen({ view, session }: { view: DecisionView; session: SessionView }) {
+  const { chip, image } = view;
+  const { user } = session;
+  const router = useRouter();
+  const say = useSay();
+  const [looked, setLooked] = useState<ReadonlySet<string>>(new Set());
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const [sendingBack, setSendingBack] = useState(false);
+  const against = useMemo(() => standsAgainst(view), [view]);
+  const codes = useMemo(() => [...new Set(against.flatMap((i) => (i.reasonFor ? [i.reasonFor] : [])))], [against]);
+  const schema = useMemo(() => decisionForm(image?.sha256 ?? "", codes), [image, codes]);
+  const { register, control, handleSubmit, formState: { errors, isSubmitting } } = useForm<DecisionForm>({ resolver: zodResolver(schema), defaultValues: { statement: "", last8: "", reasons: {} } });
+  const typed = useWatch({ control });
+  const matches = image !== null && sameDigits(typed.last8 ?? "", image.sha256);
+  const signs = !chip.approval && image !== null && maySign(chip, user);
+  const open = stillOpen(against, looked, {
+    reasons: codes.filter((code) => reasonLength(typed.reasons?.[code]) < REASON_CHARACTERS).length, statement: (typed.statement ?? "").trim().length >= 3, last8: matches,
+  });
+
+  function onLook(key: string, seen: boolean) {
+    setLooked((before) => new Set(seen ? [...before, key] : [...before].filter((k) => k !== key)));
+  }
+
+  const submit = handleSubmit(async ({ statement, reasons }) => {
+    if (!image || !chip.pair || open) return;
+    setRefusal(null);
+    try {
+      await send("POST", `/api/chips/${chip.id}/approval`, {
+        sha256: image.sha256, donorChipId: chip.pair.id, statement, reasons: Object.fromEntries(codes.map((code) => [code, reasons[code]])),
+        lookedAt: against.filter((i) => looked.has(i.key)).map((i) => i.key),
+      });
+      say({ text: `The image is cleared for writing to donor ${chip.pair.designator}.` });
+    } catch (error) {
+      if (!(error instanceof Refusal)) throw error;
+      setRefusal(error.detail);
+    }
+    // after a refusal as well: the facts on the sheet may be older than the rule that refused
+    router.refresh();
+  });
+
+  const waiting = chip.request && !chip.request.sentBack;
+  return (
+    <>
+      <Section strong title="The image" note={image ? `Held by ${readsText(image.reads)}.` : undefined}><ImageFacts view={view} /></Section>
+      <Section title="For and against" note={signs ? "Tick what stands against it once you’ve looked at it." : undefined}>
+        <Ledger stands={standsFor(view)} against={against} looked={looked} onLook={onLook} signs={signs} register={register} errors={errors} />
+      </Section>
+      <Section wide title="Where it goes" note={view.donor ? `Donor board ${view.donor.board.boardNumber}.` : undefined} aside={<DonorFacts view={view} />}>
+        <WhereItGoes view={view} timeZone={session.timeZone} />
+      </Section>
+      {chip.approval ? (
+        <Section strong title="Signed" note="Stands in the custody log."><Standing chip={chip} approval={chip.approval} session={session} /></Section>
+      ) : (
+        <>
+          <Section title="Before you sign"><BeforeYouSign chip={chip} /></Section>
+          <Section strong title="Sign" note="Goes into the custody log, signed.">
+            {signs
+              ? <Sign chip={chip} user={user} open={open} matches={matches} busy={isSubmitting} refusal={refusal} register={register} errors={errors} onSubmit={submit} onSendBack={waiting && may(user, "approval.send-back") ? () => setSendingBack(true) : null} />
+              : <WhoMaySign chip={chip} user={user} />}
+          </Section>
+        </>
+      )}
+      <ReasonDialog open={sendingBack} onClose={() => setSendingBack(false)} title="Send back to the bench" action="Send back" variant="stop" label="What should be done first?"
+        onReason={async (reason) => {
+          await send("POST", `/api/chips/${chip.id}/sending-back`, { reason });
+          router.refresh();
+          say({ text: "Sent back to the bench." });
+        }} />
+    </>
+  );
+}
