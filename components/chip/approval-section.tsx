@@ -28,7 +28,7 @@ export function ApprovalSection({ chip, user, timeZone, onChanged }: { chip: Chi
   const decidable = chip.state.state === "ready" || chip.state.state === "held";
 
   return (
-    <div className="grid grid-cols-[minmax(0,1fr)_424px] gap-x-10 mid:grid-cols-[minmax(0,1fr)_360px] narrow:grid-cols-[minmax(0,1fr)] narrow:gap-y-[22px]">
+    <div className="grid grid-cols-[minmax(0,1fr)_424px] gap-x-10 mid:grid-cols-[minmax(0,1fr)_360px] narrow:grid-cols-[minmax(0,1fr)] narrow:gap-y-[22px] print:grid-cols-[minmax(0,1fr)] print:gap-y-3">
       <Conditions conditions={chip.conditions} />
       <div className="grid content-start gap-3.5">
         {approval ? <Signed approval={approval} timeZone={timeZone} /> : <TwoPeople chip={chip} userId={user.id} />}

@@ -40,7 +40,7 @@ export function AskApproval({ chip, onChanged }: { chip: ChipView; onChanged(): 
     }
   });
   return (
-    <form onSubmit={submit} noValidate className="grid gap-3.5">
+    <form onSubmit={submit} noValidate className="no-print grid gap-3.5">
       <TextArea label="Message to the lead" disabled={Boolean(closed)} placeholder={closed ? "Opens when every line is met" : ""} error={errors.message?.message} {...register("message")} />
       {refusal ? <Note kind="block" role="alert" title="Nobody was asked.">{refusal}</Note> : null}
       <Buttons><Button type="submit" reason={closed} disabled={isSubmitting}>Ask for approval</Button></Buttons>

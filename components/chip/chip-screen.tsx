@@ -60,9 +60,11 @@ export function ChipScreen({ chip: given, session, today }: {
           {chip.reads.length > 0 ? <ReadsTable {...shared} /> : <Empty title={`No reads of ${chip.designator} yet.`}>Put the clip on, read the chip {chip.policy.reads} times in {chip.policy.seatings} seatings and drop the files below.</Empty>}
         </Section>
         {may(user, "read.store") && contentsOf(chip).length > 0 ? (
-          <Section id="add" title="Add reads" note="The digest is computed in this browser first; the server computes it again and the two must match.">
-            <AddReads chip={chip} onChanged={changed} />
-          </Section>
+          <div className="no-print">
+            <Section id="add" title="Add reads" note="The digest is computed in this browser first; the server computes it again and the two must match.">
+              <AddReads chip={chip} onChanged={changed} />
+            </Section>
+          </div>
         ) : null}
         {original ? (
           <>

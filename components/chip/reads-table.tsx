@@ -27,7 +27,7 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
   const original = chip.boardRole === "original" ? chip.designator : chip.pair?.designator ?? chip.designator;
   return (
     <>
-      <div className="overflow-x-auto phone:overflow-visible">
+      <div className="overflow-x-auto phone:overflow-visible print:overflow-visible">
         <table className="ruled lines">
           <caption className="sr-only">Reads of {chip.designator}</caption>
           <thead><tr>{HEADS.map((head) => <th key={head} scope="col" className={head === "Size" ? "num" : ""}>{head}</th>)}<th scope="col"><span className="sr-only">What can be done</span></th></tr></thead>
@@ -68,7 +68,7 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
 function ReadActions({ read, user, onAsk }: { read: ReadView; user: SessionView["user"]; onAsk(action: ReadAction): void }) {
   const mayChange = may(user, "read.set-aside", { operatorId: read.operator.id });
   return (
-    <span className="flex items-center justify-end gap-x-3 whitespace-nowrap phone:justify-start">
+    <span className="-my-1 flex items-center justify-end gap-x-3 whitespace-nowrap phone:justify-start">
       {mayChange ? <Button variant="text" size="small" aria-label={`${read.counted ? "Set aside" : "Count again"}: ${nameOf(read)}`} onClick={() => onAsk(read.counted ? "set-aside" : "count-again")}>{read.counted ? "Set aside…" : "Count again…"}</Button> : null}
       {may(user, "read.hand-out-any") ? <Button variant="text" size="small" aria-label={`Download ${nameOf(read)}`} onClick={() => onAsk("download")}>Download…</Button> : null}
     </span>

@@ -38,7 +38,7 @@ export function TransferSection({ chip, user, timeZone, onChanged }: { chip: Chi
     );
   }
   return (
-    <div className="grid grid-cols-[minmax(0,1fr)_424px] gap-x-10 mid:grid-cols-[minmax(0,1fr)_360px] narrow:grid-cols-[minmax(0,1fr)] narrow:gap-y-[22px]">
+    <div className="grid grid-cols-[minmax(0,1fr)_424px] gap-x-10 mid:grid-cols-[minmax(0,1fr)_360px] narrow:grid-cols-[minmax(0,1fr)] narrow:gap-y-[22px] print:grid-cols-[minmax(0,1fr)] print:gap-y-3">
       <ul>
         {chip.transfers.map((transfer, i) => <TransferLines key={transfer.id} chip={chip} transfer={transfer} place={i + 1} timeZone={timeZone} />)}
         {chip.transfers.length === 0 ? <li className="border-b border-rule py-[7px]"><FindingLine kind="wait">Cleared, not written yet. Write the approved image to donor {donor}, then record it here.</FindingLine></li> : null}

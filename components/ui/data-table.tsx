@@ -51,7 +51,7 @@ export function DataTable<Row extends RowData>({ caption, columns, list, sort, o
   if (list.items.length === 0) return <>{empty}</>;
   return (
     <>
-      <div className="overflow-x-auto phone:overflow-visible">
+      <div className="overflow-x-auto phone:overflow-visible print:overflow-visible">
         <table className="ruled lines">
           <caption className="sr-only">{caption}</caption>
           <thead>
