@@ -107,8 +107,10 @@ export interface ChipSummary {
   boardRole: BoardRole;
   bus: Bus;
   sizeBytes: number;
+  sizeSource: SizeSource;
   supplyMillivolts: number | null;
   package: string | null;
+  marking: string | null;
   holds: string | null;
   needsTransfer: boolean;
   state: StateView;
@@ -123,8 +125,6 @@ export interface ChipSummary {
 }
 
 export interface ChipView extends ChipSummary {
-  marking: string | null;
-  sizeSource: SizeSource;
   drive: { id: string; letter: string; partNumber: string | null; model: string | null; serial: string | null };
   board: { id: string; role: BoardRole; boardNumber: string; revision: string | null };
   case: { id: string; ref: string; dueOn: string | null; customerName: string };
@@ -289,6 +289,18 @@ export interface CustodyEntryView {
   body: string;
   signature: string;
   keyId: string;
+}
+
+/** One drive's chain in the list of logs. */
+export interface CustodyHeadRow {
+  driveId: string;
+  letter: string;
+  label: string;
+  caseId: string;
+  caseRef: string;
+  entries: number;
+  hash: string;
+  lastAt: string;
 }
 
 export interface CustodyCheckView {

@@ -28,6 +28,7 @@ const RULES = {
   "approval.revoke": ["lead"],
   "transfer.record": BENCH,
   "custody.read": STAFF,
+  "workshop-log.read": ["lead", "auditor", "admin"],
   "bundle.make": ["auditor", "lead"],
   "summary.send": ["lead"],
   "share.withdraw": ["lead"],

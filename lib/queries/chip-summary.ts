@@ -40,8 +40,8 @@ async function thumbnail(reads: Read[], unsound: Set<string>, sizeBytes: number)
 
 function base(chip: Chip, board: Board) {
   return {
-    id: chip.id, designator: chip.designator, boardRole: board.role, bus: chip.bus, sizeBytes: chip.sizeBytes,
-    supplyMillivolts: chip.supplyMillivolts ?? null, package: chip.package ?? null, holds: chip.holds ?? null, needsTransfer: chip.needsTransfer,
+    id: chip.id, designator: chip.designator, boardRole: board.role, bus: chip.bus, sizeBytes: chip.sizeBytes, sizeSource: chip.sizeSource,
+    supplyMillivolts: chip.supplyMillivolts ?? null, package: chip.package ?? null, marking: chip.marking ?? null, holds: chip.holds ?? null, needsTransfer: chip.needsTransfer,
   };
 }
 

@@ -88,6 +88,6 @@ export async function custodyCheckOfDrive(actor: Actor, driveId: string): Promis
 
 /** The chain of what belongs to no drive: accounts, policy, keys. */
 export async function workshopLog(actor: Actor): Promise<{ entries: CustodyEntryView[] }> {
-  allow(actor, "custody.read");
+  allow(actor, "workshop-log.read");
   return { entries: await chainEntries(WORKSHOP_CHAIN) };
 }
