@@ -1,0 +1,21 @@
+import type { Metadata } from "next";
+import { ChipScreen } from "@/components/chip/chip-screen";
+import { DeskShell } from "@/components/shell/desk-shell";
+import { signedIn } from "@/lib/auth/page";
+import { orNotFound } from "@/lib/http/page-errors";
+import { chipView } from "@/lib/queries/chip-view";
+import { dayIn } from "@/lib/queries/workshop-day";
+
+export const metadata: Metadata = { title: "Chip" };
+
+/** The main screen: everything about one chip, live. */
+export default async function ChipPage({ params }: { params: Promise<{ id: string }> }) {
+  const { actor, session } = await signedIn();
+  const { id } = await params;
+  const chip = await orNotFound(() => chipView(actor, id));
+  return (
+    <DeskShell session={session} current="bench">
+      <ChipScreen chip={chip} session={session} today={dayIn(session.timeZone, new Date())} />
+    </DeskShell>
+  );
+}
