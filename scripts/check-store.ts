@@ -7,6 +7,7 @@ import { checkChains } from "./check/chains";
 import { checkApprovals, checkImages, checkReads, countUnknownFiles, storedImages } from "./check/images";
 import { findPlaces } from "./check/places";
 import { exitCode, page, type StoreReport } from "./check/report";
+import { CommandRefusal, reasonOf } from "./commands/run-command";
 
 // `npm run check:store [-- --json]`: every log, every signature, every stored image. It reports and never repairs.
 // Exit 0 clean, 1 damage found, 2 could not check.
@@ -51,13 +52,12 @@ function ticker(total: number): (done: number) => void {
 
 try {
   const unknown = process.argv.slice(2).filter((word) => word !== "--json");
-  if (unknown.length > 0) throw new Error(`This command knows --json only, not ${unknown.join(" ")}.`);
+  if (unknown.length > 0) throw new CommandRefusal(`This command knows --json only, not ${unknown.join(" ")}.`);
   const report = await check();
   console.log(json ? JSON.stringify(report, null, 2) : page(report));
   process.exitCode = exitCode(report);
 } catch (error) {
-  const { name, message } = error as Error;
-  const why = name.startsWith("Sequelize") ? `the database did not answer as it should (${message})` : message;
+  const why = reasonOf(error) ?? (error as Error).message;
   if (json) console.log(JSON.stringify({ clean: false, notChecked: [why] }, null, 2));
   console.error(`Could not check: ${why}`);
   process.exitCode = 2;
