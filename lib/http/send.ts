@@ -74,3 +74,8 @@ export async function fetcher<T>(path: string): Promise<T> {
 export async function backgroundFetcher<T>(path: string): Promise<T> {
   return (await ask(path, { headers: { "x-twinread-background": "1" } })).json() as Promise<T>;
 }
+
+/** A window of bytes, for the hex view. */
+export async function bytesFetcher(path: string): Promise<Uint8Array> {
+  return new Uint8Array(await (await ask(path, {})).arrayBuffer());
+}

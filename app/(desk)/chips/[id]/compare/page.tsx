@@ -1,0 +1,57 @@
+import type { Metadata } from "next";
+import { redirect } from "next/navigation";
+import { CompareHead } from "@/components/compare/compare-head";
+import { type Compared, CompareScreen } from "@/components/compare/compare-screen";
+import { firstPair, parseAddress, stagesToCompare } from "@/components/compare/places";
+import { DeskShell } from "@/components/shell/desk-shell";
+import { PageMain } from "@/components/shell/page-main";
+import { ButtonLink } from "@/components/ui/button";
+import { Empty } from "@/components/ui/empty";
+import { Note } from "@/components/ui/note";
+import { signedIn } from "@/lib/auth/page";
+import { AppError } from "@/lib/errors";
+import { orNotFound } from "@/lib/http/page-errors";
+import { chipView } from "@/lib/queries/chip-view";
+import { comparisonView } from "@/lib/queries/compare";
+import { comparisonInput } from "@/lib/schemas/read";
+
+export const metadata: Metadata = { title: "Compare reads" };
+
+type Query = Partial<Record<"reads" | "stage" | "at" | "a" | "b", string | string[]>>;
+const one = (value: string | string[] | undefined) => (Array.isArray(value) ? value[0] : value);
+
+export default async function ComparePage({ params, searchParams }: { params: Promise<{ id: string }>; searchParams: Promise<Query> }) {
+  const [{ id }, query] = [await params, await searchParams];
+  const { actor, session } = await signedIn();
+  // the form for other reads has no script: its two fields become the one that links use
+  if (one(query.a) && one(query.b)) redirect(`/chips/${id}/compare?${new URLSearchParams({ reads: `${one(query.a)},${one(query.b)}`, stage: one(query.stage) ?? "before" })}`);
+  const chip = await orNotFound(() => chipView(actor, id));
+  const own = chip.reads.filter((r) => r.chipId === chip.id);
+  const asked = comparisonInput.safeParse({ reads: one(query.reads), stage: one(query.stage) });
+  const wanted = comparisonInput.shape.stage.safeParse(one(query.stage));
+  const stage = asked.success ? asked.data.stage : one(query.stage) && wanted.success ? wanted.data : stagesToCompare(own)[0] ?? "before";
+  const pair = asked.success ? asked.data.reads : firstPair(own, stage);
+  const found = pair ? await compare(() => comparisonView(actor, id, { reads: pair, stage })) : null;
+  const compared = found && "stack" in found ? found : null;
+  const at = parseAddress(one(query.at) ?? "");
+  return (
+    <DeskShell session={session} current="bench">
+      <PageMain>
+        <CompareHead chip={chip} reads={own} compared={compared} stage={stage} chosen={pair} />
+        {compared ? <CompareScreen key={`${compared.readA.id} ${compared.readB.id}`} compared={compared} reads={own} start={at} /> : null}
+        {found && "refusal" in found ? <Note kind="block" title="These two can’t be compared.">{found.refusal}</Note> : null}
+        {pair ? null : <Empty title="Two reads are needed." action={<ButtonLink href={`/chips/${id}#add`}>Add a read</ButtonLink>}>As soon as {chip.designator} has two reads of one kind they can be compared here.</Empty>}
+      </PageMain>
+    </DeskShell>
+  );
+}
+
+/** A damaged stored image is a finding to show, not a broken page. */
+async function compare(run: () => Promise<Compared>): Promise<Compared | { refusal: string }> {
+  try {
+    return await orNotFound(run);
+  } catch (error) {
+    if (error instanceof AppError && error.code === "rule-against") return { refusal: error.detail };
+    throw error;
+  }
+}

@@ -1,0 +1,18 @@
+import { Button } from "@/components/ui/button";
+import { Select } from "@/components/ui/select";
+import { readName, seatingLetter, type Stage } from "@/lib/core/words";
+import type { ReadView } from "@/lib/views";
+
+/** Two reads of one stage: a plain form, so that the address of the page says what is shown. */
+export function ChooseReads({ reads, stage, chosen }: { reads: readonly ReadView[]; stage: Stage; chosen: readonly [number, number] }) {
+  const options = reads.filter((r) => r.stage === stage).map((r) => ({ value: String(r.number), label: `${readName(stage, r.number)}, seating ${seatingLetter(r.seating)}${r.counted ? "" : ", set aside"}` }));
+  return (
+    <form className="no-print flex flex-wrap items-end gap-2" aria-label="Choose other reads">
+      <input type="hidden" name="stage" value={stage} />
+      <Select key={`a${chosen[0]}`} quiet label="First read" name="a" defaultValue={String(chosen[0])} options={options} />
+      <span className="self-center text-ink-2">and</span>
+      <Select key={`b${chosen[1]}`} quiet label="Second read" name="b" defaultValue={String(chosen[1])} options={options} />
+      <Button type="submit">Compare</Button>
+    </form>
+  );
+}

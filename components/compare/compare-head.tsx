@@ -1,0 +1,41 @@
+import Link from "next/link";
+import { Crumbs } from "@/components/ui/crumbs";
+import { Mark } from "@/components/ui/mark";
+import { DesignatorPlate } from "@/components/ui/plate";
+import { withCommas } from "@/lib/core/quantity";
+import { readName as nameOf, type Stage } from "@/lib/core/words";
+import type { ChipView, ReadView } from "@/lib/views";
+import { ChooseReads } from "./choose-reads";
+import type { Compared } from "./compare-screen";
+import { stagesToCompare } from "./places";
+
+const STAGE_WORDS: Record<Stage, string> = { before: "reads of the original", donor: "the donor’s own content", after: "read-backs" };
+
+/** What the comparison found, and the ways to other reads. */
+export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: ChipView; reads: readonly ReadView[]; compared: Compared | null; stage: Stage; chosen: readonly [number, number] | null }) {
+  const others = stagesToCompare(reads).filter((s) => s !== stage);
+  const verdict = compared?.diagnosis;
+  return (
+    <>
+      <Crumbs items={[{ label: `Case ${chip.case.ref}`, href: `/cases/${chip.case.id}` }, { label: chip.designator, href: `/chips/${chip.id}` }, { label: "Compare" }]} />
+      <header className="flex flex-wrap items-center gap-x-5 gap-y-2 pt-[18px] pb-3.5">
+        <h1 className="flex flex-wrap items-center gap-3 text-t5 font-bold">
+          <DesignatorPlate designator={chip.designator} board={chip.boardRole} word />
+          {compared ? `${nameOf(stage, compared.readA.number)} and ${nameOf(stage, compared.readB.number)}` : "Compare reads"}
+        </h1>
+        <div className="ml-auto flex flex-wrap items-end gap-x-5 gap-y-2">
+          {others.map((s) => <Link key={s} href={`/chips/${chip.id}/compare?stage=${s}`}>Compare {STAGE_WORDS[s]}</Link>)}
+          {chosen ? <ChooseReads reads={reads} stage={stage} chosen={chosen} /> : null}
+        </div>
+        {verdict && compared ? (
+          <p className="flex basis-full items-start gap-2.5 text-t4">
+            <Mark kind={compared.equal ? "ok" : "block"} size={20} className="mt-0.5 [--hole:var(--paper)]" />
+            <span className="max-w-[86ch]"><b>{verdict.message}</b> {verdict.advice}
+              {compared.equal ? null : <span className="text-ink-2"> {withCommas(compared.differingBits.zeroToOne)} bits read 0 in {nameOf(stage, compared.readA.number)} and 1 in {nameOf(stage, compared.readB.number)}, {withCommas(compared.differingBits.oneToZero)} the other way round.</span>}
+            </span>
+          </p>
+        ) : null}
+      </header>
+    </>
+  );
+}

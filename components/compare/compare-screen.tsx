@@ -1,0 +1,89 @@
+"use client";
+
+import { useCallback, useMemo, useRef, useState, type KeyboardEvent } from "react";
+import { nextDifference, StripGrid } from "@/components/strip/strip-grid";
+import { addressDigits } from "@/lib/core/strip";
+import { readName } from "@/lib/core/words";
+import type { ComparisonView, ReadView, StripStackView, StripView } from "@/lib/views";
+import { CompareBar } from "./compare-bar";
+import { HexView } from "./hex-view";
+import { useLetterKeys, useLetterKeysOn } from "./letter-keys";
+import { rangeAt, standsAlone, stepRange } from "./places";
+import { RangeList } from "./range-list";
+
+export type Compared = ComparisonView & { readA: ReadView; readB: ReadView; stack: StripStackView };
+
+const cellOf = (view: StripView, at: number) => {
+  const cell = Math.floor((at - view.offset) / view.cellBytes);
+  return cell >= 0 && cell < (view.rows[0]?.cells.length ?? 0) ? cell : null;
+};
+
+/** Strips, ranges and bytes of two reads, all about one address that also stands in the page's own address. */
+export function CompareScreen({ compared, reads, start }: { compared: Compared; reads: readonly ReadView[]; start: number | null }) {
+  const { readA, readB, stack, ranges } = compared;
+  const { sizeBytes } = stack;
+  const [at, setAt] = useState(() => Math.min(start ?? ranges[0]?.start ?? 0, Math.max(0, sizeBytes - 1)));
+  const [fold, setFold] = useState(true);
+  const [under, setUnder] = useState(false);
+  const [keys, setKeys] = useLetterKeysOn();
+  const field = useRef<HTMLInputElement>(null);
+  const current = rangeAt(ranges, at);
+  const names = [readName(readA.stage, readA.number), readName(readB.stage, readB.number)] as const;
+  const alone = useMemo(() => standsAlone(reads, readA, readB), [reads, readA, readB]);
+
+  const go = useCallback((next: number) => {
+    setAt(next);
+    const url = new URL(window.location.href);
+    url.searchParams.set("at", `0x${next.toString(16).toUpperCase().padStart(addressDigits(sizeBytes), "0")}`);
+    window.history.replaceState(null, "", url);
+  }, [sizeBytes]);
+  const step = useCallback((way: 1 | -1) => {
+    const range = stepRange(ranges, at, way);
+    if (range) go(range.start);
+  }, [ranges, at, go]);
+  useLetterKeys(keys, useCallback((letter: string) => {
+    if (letter === "n") step(1);
+    else if (letter === "p") step(-1);
+    else if (letter === "g") field.current?.select();
+    else return false;
+    return true;
+  }, [step]));
+
+  /** in the strips N and P go by range as well, not by cell */
+  function onStripKey(event: KeyboardEvent) {
+    const letter = event.key.toLowerCase();
+    if ((letter !== "n" && letter !== "p") || event.ctrlKey || event.metaKey || event.altKey) return;
+    event.preventDefault();
+    event.stopPropagation();
+    if (keys) step(letter === "n" ? 1 : -1);
+  }
+  const onCell = (view: StripView) => (cell: number) => {
+    const from = view.offset + Math.floor(cell * view.cellBytes);
+    const first = ranges[rangeAt(ranges, from) + 1];
+    const inside = ranges[rangeAt(ranges, from)];
+    const reaches = inside && inside.start + inside.length > from;
+    go(!reaches && first && first.start < from + view.cellBytes ? first.start : from);
+  };
+  const showBytes = (address: number) => {
+    go(address);
+    document.getElementById("bytes")?.scrollIntoView({ block: "start" });
+  };
+  const grid = (view: StripView, label: string) => (
+    <StripGrid view={view} sizeBytes={sizeBytes} label={label} cursor={cellOf(view, at)} onCursor={onCell(view)} onOpen={showBytes} />
+  );
+
+  return (
+    <>
+      <div className="compare-strips strips" onKeyDownCapture={onStripKey}>
+        {grid(stack, `Strips of ${names[0]} and ${names[1]}. Arrow keys move by one cell, N and P by difference, Enter shows the bytes.`)}
+        {stack.loupe && nextDifference(stack.loupe, 0, 1) !== null ? <div className="pt-5"><p className="pb-1 text-t2 text-ink-2">Around the differences, larger</p>{grid(stack.loupe, "The part around the differences, larger. The same keys.")}</div> : null}
+      </div>
+      <CompareBar current={current} total={ranges.length} at={at} sizeBytes={sizeBytes} fold={fold} under={under} keys={keys} field={field}
+        onStep={step} onGo={go} onFold={setFold} onUnder={setUnder} onKeys={setKeys} />
+      <div id="bytes" className="grid grid-cols-[212px_minmax(0,1fr)] gap-x-6 gap-y-4 pt-3.5 pb-8 max-[1379px]:grid-cols-[minmax(0,1fr)]">
+        <RangeList ranges={ranges} truncated={compared.truncated ?? false} current={current} sizeBytes={sizeBytes} onGo={go} />
+        <HexView reads={[readA, readB]} names={names} alone={alone} at={at} sizeBytes={sizeBytes} fold={fold} under={under} onGo={go} />
+      </div>
+    </>
+  );
+}
