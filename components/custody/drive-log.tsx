@@ -1,0 +1,46 @@
+"use client";
+
+import { useRouter } from "next/navigation";
+import { useState } from "react";
+import { Button, Buttons } from "@/components/ui/button";
+import { Note } from "@/components/ui/note";
+import { Section } from "@/components/ui/section";
+import { exactText } from "@/components/ui/times";
+import { useChange } from "@/components/ui/use-change";
+import { entriesText } from "./entries-text";
+import { fetcher } from "@/lib/http/send";
+import type { CustodyCheckView, CustodyEntryView } from "@/lib/views";
+import { AssessmentForm } from "./assessment-form";
+import { ChainCheck } from "./chain-check";
+import { LogTable } from "./log-table";
+import { ViaLegend } from "./via-legend";
+
+/** The log of one drive: its check on demand, then its entries. */
+export function DriveLog({ driveId, entries, timeZone, assesses }: { driveId: string; entries: CustodyEntryView[]; timeZone: string; assesses: boolean }) {
+  const router = useRouter();
+  const [check, setCheck] = useState<{ result: CustodyCheckView; at: string } | null>(null);
+  const { refusal, busy, attempt } = useChange();
+  const run = () => attempt(async () => setCheck({ result: await fetcher<CustodyCheckView>(`/api/drives/${driveId}/custody/check`), at: new Date().toISOString() }));
+  const assessed = entries.at(-1)?.action === "log.assessed";
+
+  return (
+    <>
+      <Section strong title="Chain check" note={check ? exactText(check.at, timeZone) : "Not checked on this page yet."}>
+        {check ? <ChainCheck check={check.result} /> : (
+          <p className="max-w-[62ch] text-t4 text-ink-2">The log has {entriesText(entries.length)}. The check computes every hash again, checks every signature and compares the head. It reports and never repairs.</p>
+        )}
+        {refusal ? <Note kind="caution" role="alert" title="The log was not checked." className="mt-3">{refusal}</Note> : null}
+        <Buttons className="mt-4"><Button variant={check ? "plain" : "lead"} disabled={busy} onClick={() => void run()}>{busy ? "Checking the log" : check ? "Check the log again" : "Check the log"}</Button></Buttons>
+        {check && !check.result.ok ? (
+          <div className="mt-5">
+            {assessed ? <Note kind="note" title="An assessment stands at the end of this log." className="mb-3">Read it in the latest entry before you add another.</Note> : null}
+            {assesses ? <AssessmentForm driveId={driveId} onDone={() => { router.refresh(); void run(); }} /> : <p className="text-ink-2">An auditor can record an assessment here.</p>}
+          </div>
+        ) : null}
+      </Section>
+      <Section title="Entries" aside={<ViaLegend />}>
+        <LogTable entries={entries} timeZone={timeZone} against={check?.result.findings.flatMap((f) => (f.seq === null ? [] : [f.seq])) ?? []} />
+      </Section>
+    </>
+  );
+}
