@@ -7,9 +7,27 @@ export function bagName(ref: string): string {
   return `twinread-${ref}`;
 }
 
+export const MANIFEST = "manifest-sha256.txt";
+export const TAG_MANIFEST = "tagmanifest-sha256.txt";
+/** raw Ed25519 signature by the log key over the tag manifest's bytes */
+export const TAG_SIGNATURE = "tagmanifest-sha256.sig";
+export const CASE_JSON = "data/case.json";
+export const WORKSHOP_KEYS = "data/workshop-keys";
+export const LOG_KEY = "data/seal/log-key.pem";
+
 /** `n` counts the case's drives from 1. */
 export function driveFolder(n: number): string {
   return `data/drives/${n}`;
+}
+
+/** Without its ending: ".jsonl" holds the entries, ".sig" their signatures. */
+export function custodyPath(n: number): string {
+  return `${driveFolder(n)}/custody`;
+}
+
+/** A line of custody.sig: key id, space, signature in base64. */
+export function signatureLine(keyId: string, base64: string): string {
+  return `${keyId} ${base64}\n`;
 }
 
 /**
@@ -20,19 +38,31 @@ export function safeName(text: string): string {
   return text.replace(/[^A-Za-z0-9-]/gu, (character) => `_${(character.codePointAt(0) ?? 0).toString(16)}_`) || "_";
 }
 
-export interface ImagePlace {
+/** A drive has one original board; its donors are counted in the order in which they were recorded, from 1. */
+export function boardLabel(role: BoardRole, number: number): string {
+  return role === "original" ? "original" : `donor-${number}`;
+}
+
+export interface ChipPlace {
   /** counts the case's drives from 1 */
   drive: number;
   /** "original", or the donor board's label such as "donor-1" */
   board: BoardRole | string;
   designator: string;
+}
+
+export function chipFolder({ drive, board, designator }: ChipPlace): string {
+  return `${driveFolder(drive)}/${safeName(board)}-${safeName(designator)}`;
+}
+
+export interface ImagePlace extends ChipPlace {
   stage: Stage;
   number: number;
 }
 
 /** "data/drives/1/original-U3/before-1.bin" */
-export function imagePath({ drive, board, designator, stage, number }: ImagePlace): string {
-  return `${driveFolder(drive)}/${safeName(board)}-${safeName(designator)}/${stage}-${number}.bin`;
+export function imagePath(place: ImagePlace): string {
+  return `${chipFolder(place)}/${place.stage}-${place.number}.bin`;
 }
 
 export function bagitTxt(): string {
@@ -73,29 +103,36 @@ Everything that was kept of one case: ${countOf(images, "chip image")} of ${coun
 were read, the custody log of each drive, and what is needed to check both without
 the program that made them. The folder is a BagIt bag (RFC 8493).
 
-  data/case.json                the case as recorded
-  data/report.pdf               the same for people
+  data/case.json                the case as recorded, original file names included
   data/drives/N/custody.jsonl   the custody log, one entry a line
   data/drives/N/custody.sig     for each line: key id, space, signature in base64
   data/drives/N/...             the images: before = of the original chip,
                                 donor = the donor chip's own content,
-                                after = read back after the write
+                                after = read back after the transfer
   data/workshop-keys.jsonl      the entries that introduce the log's keys
-  data/seal/                    where every log stood when this was made, signed
+  data/workshop-keys.sig        their signatures
+  data/seal/log-key.pem         the public key that signs the log and this bundle
 
 HOW TO CHECK IT
-  sha256sum -c manifest-sha256.txt       each file is as it was packed
-  sha256sum -c tagmanifest-sha256.txt    so are the lists themselves
-  sh check.sh                            both, the logs, signatures and the seal
-  sh check.sh KEY-FINGERPRINT            the same, and compares the key
-Needed: a POSIX shell, sha256sum and OpenSSL 3. check.sh ends with 0 when all is in
-order, 1 when something is not, 2 when it could not check. Take the key's fingerprint
-from somewhere else than this bundle: a seal mail or the summary on paper.
+  sh check.sh                    everything below, and prints what it checked
+  sh check.sh KEY-FINGERPRINT    the same, and compares the key
+It needs a POSIX shell, sha256sum, OpenSSL 3 and standard tools, and ends with 0 when
+all is in order, 1 when something is not, 2 when it could not check. Take the
+fingerprint from somewhere else than this bundle: the mail with the summary has it.
+By hand:
+  sha256sum -c manifest-sha256.txt       each file of the case is as it was packed
+  sha256sum -c tagmanifest-sha256.txt    so are the lists and this page
+  openssl pkeyutl -verify -pubin -inkey data/seal/log-key.pem -rawin \\
+    -in tagmanifest-sha256.txt -sigfile tagmanifest-sha256.sig
+  openssl pkey -pubin -in data/seal/log-key.pem -outform DER | sha256sum
+The last one prints the key's fingerprint, which is also its key id.
 
 THE LOG
 Each line is one entry in canonical JSON (RFC 8785). "prev" is the SHA-256 of the line
 before without its newline, 64 zeros in the first; "seq" counts up by one. Each entry
 is signed with Ed25519 (RFC 8032) over "twinread-custody/1", a newline and the line.
+It ends with the entry that says that this bundle was started. Compare its last number
+and hash with those in the mail: an earlier head must stand further up in the log.
 
 WHAT IT DOES NOT SHOW
 Equal reads show that the chip gave the same bytes each time, not that those bytes

@@ -1,0 +1,65 @@
+import type { Actor } from "@/lib/core/words";
+import { WORKSHOP_CHAIN } from "@/lib/core/words";
+import { env } from "@/lib/env";
+import { AppError } from "@/lib/errors";
+import { currentPolicy } from "@/lib/queries/policy";
+import { Case, CustodyHead, Drive, inTransaction } from "@/models";
+import { appendEntry, lockChain } from "./append-entry";
+import { type BundleImage, recordOfCase } from "./bundle-case";
+import { notFound } from "./refuse";
+
+/** What a bundle holds, fixed at the heads of its drives' logs: the same plan always gives the same bytes. */
+export interface BundlePlan {
+  caseId: string;
+  ref: string;
+  workshop: string;
+  /** when the latest of the started entries was written, RFC 3339 UTC */
+  madeAt: string;
+  drives: { number: number; id: string; head: { seq: number; hash: string } }[];
+  workshopSeq: number;
+  caseJson: string;
+  images: BundleImage[];
+  twoPersonRule: boolean;
+}
+
+/** Writes into each drive's log that a bundle leaves, and fixes what it holds while the logs are locked. */
+export async function startBundle(actor: Actor, caseId: string): Promise<BundlePlan> {
+  const found = await Case.findByPk(caseId);
+  if (!found) throw notFound("case");
+  return inTransaction(async (tx) => {
+    const drives = await Drive.findAll({ where: { caseId }, order: ["position"], transaction: tx });
+    if (drives.length === 0) throw new AppError("rule-against", "This case has no drive yet, so there is nothing to pack. Record its drive first.");
+    const heads = new Map<string, { seq: number; hash: string }>();
+    let madeAt = "";
+    const inOrder = drives.map((d) => d.id).sort();
+    for (const id of inOrder) await lockChain(tx, id);
+    for (const id of inOrder) {
+      const before = await lockChain(tx, id);
+      heads.set(id, await appendEntry(tx, id, actor, "bundle.started", { type: "bundle", id: caseId }, {
+        caseRef: found.ref, head: { seq: before.seq, hash: before.hash.toString("hex") },
+      }));
+      const { at } = await lockChain(tx, id);
+      if (at > madeAt) madeAt = at;
+    }
+    const { record, images, twoPersonRule } = await recordOfCase(tx, found, drives, heads);
+    const workshop = env().workshop;
+    const policy = await currentPolicy(tx);
+    const keys = await CustodyHead.findByPk(WORKSHOP_CHAIN, { transaction: tx });
+    return {
+      caseId, ref: found.ref, workshop, madeAt, workshopSeq: keys?.seq ?? 0, images, twoPersonRule: twoPersonRule && policy.twoPersonRule,
+      drives: drives.map((drive, i) => ({ number: i + 1, id: drive.id, head: heads.get(drive.id)! })),
+      caseJson: `${JSON.stringify({ format: "twinread-case/1", workshop, madeAt, policy, ...record }, null, 2)}\n`,
+    };
+  }, { receipt: false });
+}
+
+/** After the last byte: which tag manifest left, and how far each log went with it. */
+export async function completeBundle(actor: Actor, plan: BundlePlan, tagManifestSha256: string): Promise<void> {
+  const drives = [...plan.drives].sort((a, b) => (a.id < b.id ? -1 : 1));
+  await inTransaction(async (tx) => {
+    for (const { id } of drives) await lockChain(tx, id);
+    for (const { id, head } of drives) {
+      await appendEntry(tx, id, actor, "bundle.completed", { type: "bundle", id: plan.caseId }, { caseRef: plan.ref, tagManifestSha256, upToSeq: head.seq });
+    }
+  }, { receipt: false });
+}
