@@ -53,10 +53,22 @@ async function withDatabase(mayUseKept, work) {
   }
 }
 
+/** A step that could not be taken counts as one that did not pass; the sentence says why. */
+async function orFailed(work) {
+  try {
+    return await work();
+  } catch (error) {
+    if (!(error instanceof Refusal)) throw error;
+    say(error.message);
+    if (error.message.includes("DB_PORT") || error.message.includes("MAIL_PORT")) say("For the tests: TEST_DB_PORT moves the database ports, E2E_PORT the app's, TEST_DATA the folder.");
+    return oneCheck(1);
+  }
+}
+
 export function vitest({ filter = null, long = false } = {}) {
   heading(long ? "Long tests" : "Unit and database tests");
   const config = long ? "tests/long/vitest.config.ts" : "vitest.config.ts";
-  return withDatabase(filter !== null, async (env) => {
+  return orFailed(() => withDatabase(filter !== null, async (env) => {
     const file = reportFile("vitest");
     mkdirSync(path.dirname(file), { recursive: true });
     rmSync(file, { force: true });
@@ -64,43 +76,38 @@ export function vitest({ filter = null, long = false } = {}) {
       "node_modules/vitest/vitest.mjs", "run", "--config", config, "--reporter=default", "--reporter=json", `--outputFile.json=${file}`, ...(filter ? [filter] : []),
     ], env);
     return vitestCounts(file, code);
+  }));
+}
+
+export function build() {
+  heading("Build");
+  return orFailed(async () => {
+    await ensureBuilt();
+    return oneCheck(0);
   });
 }
 
-export async function build() {
-  heading("Build");
-  try {
-    await ensureBuilt();
-    return oneCheck(0);
-  } catch (error) {
-    say(error.message);
-    return oneCheck(1);
-  }
-}
-
-export async function browser({ filter = null } = {}) {
+export function browser({ filter = null } = {}) {
   heading("Browser tests");
-  const { settings, house } = await openFor(browserVariables());
-  const file = reportFile("playwright");
-  rmSync(file, { force: true });
-  try {
-    await house.prepareEmpty();
-    await house.checkAppPort();
-    await house.database();
-    await house.migrate();
-    await house.seed();
-    await house.mail();
-    await house.app({});
-    const env = { ...adminVariables(settings), E2E_PORT: String(settings.port), E2E_REPORT: file };
-    const code = await node(["node_modules/@playwright/test/cli.js", "test", ...(filter ? [filter] : [])], env);
-    return playwrightCounts(file, code);
-  } catch (error) {
-    if (!(error instanceof Refusal)) throw error;
-    say(error.message);
-    return oneCheck(1);
-  } finally {
-    await house.stop();
-  }
+  return orFailed(async () => {
+    const { settings, house } = await openFor(browserVariables());
+    const file = reportFile("playwright");
+    rmSync(file, { force: true });
+    try {
+      await house.prepareEmpty();
+      await house.checkAppPort();
+      await house.database();
+      await house.migrate();
+      await house.seed();
+      await house.mail();
+      await house.app({});
+      const env = { ...adminVariables(settings), E2E_PORT: String(settings.port), E2E_REPORT: file };
+      const code = await node(["node_modules/@playwright/test/cli.js", "test", ...(filter ? [filter] : [])], env);
+      return playwrightCounts(file, code);
+    } finally {
+      await house.stop();
+    }
+  });
 }
 
 export const hasLongTests = () => existsSync(path.join(root, "tests/long")) && readdirSync(path.join(root, "tests/long"), { recursive: true }).some((name) => name.endsWith(".test.ts"));
