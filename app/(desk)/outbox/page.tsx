@@ -1,0 +1,40 @@
+import type { Metadata } from "next";
+import { MailLine } from "@/components/outbox/mail-line";
+import { DeskShell } from "@/components/shell/desk-shell";
+import { PageMain } from "@/components/shell/page-main";
+import { Button } from "@/components/ui/button";
+import { Empty } from "@/components/ui/empty";
+import { Input } from "@/components/ui/input";
+import { Pages } from "@/components/ui/pages";
+import { PageTitle } from "@/components/ui/section";
+import { signedIn } from "@/lib/auth/page";
+import { orNotFound } from "@/lib/http/page-errors";
+import { mailList } from "@/lib/queries/mails";
+import { listInput } from "@/lib/schemas/case";
+
+export const metadata: Metadata = { title: "Outbox" };
+
+export default async function OutboxPage({ searchParams }: { searchParams: Promise<Record<string, string | string[] | undefined>> }) {
+  const query = await searchParams;
+  const { actor, session } = await signedIn();
+  const asked = listInput.safeParse({ order: "desc", ...query });
+  const input = asked.success ? asked.data : listInput.parse({ order: "desc" });
+  const list = await orNotFound(() => mailList(actor, input));
+  return (
+    <DeskShell session={session} current="outbox">
+      <PageMain className="pb-8">
+        <PageTitle note="Every mail waits here first and is sent from here. One that can’t be delivered is tried again, then given up and shown so.">Outbox</PageTitle>
+        <form className="no-print flex max-w-[560px] items-end gap-3 pb-5" role="search" aria-label="Mails">
+          <Input key={input.q} className="flex-1" label="Address or subject" name="q" defaultValue={input.q} maxLength={200} autoComplete="off" />
+          <Button type="submit">Look</Button>
+        </form>
+        {list.items.length === 0 ? <Empty title={input.q ? `No mail matches “${input.q}”.` : "No mail yet."}>A mail is written when a lead sends a summary to a customer.</Empty> : (
+          <>
+            <ul className="border-t border-rule-2">{list.items.map((mail) => <MailLine key={mail.id} mail={mail} timeZone={session.timeZone} />)}</ul>
+            <Pages total={list.total} page={list.page} pageSize={list.pageSize} href={(page) => `/outbox?${new URLSearchParams({ q: input.q, page: String(page) })}`} />
+          </>
+        )}
+      </PageMain>
+    </DeskShell>
+  );
+}

@@ -1,0 +1,57 @@
+"use client";
+
+import { useRouter } from "next/navigation";
+import { useState } from "react";
+import { Button, Buttons } from "@/components/ui/button";
+import { Mark, type MarkKind } from "@/components/ui/mark";
+import { Note } from "@/components/ui/note";
+import { momentText } from "@/components/ui/times";
+import { useSay } from "@/components/ui/toast";
+import { Refusal, send } from "@/lib/http/send";
+import type { MailView } from "@/lib/views";
+
+const STATE: Record<MailView["state"], { mark: MarkKind; word: string }> = {
+  queued: { mark: "wait", word: "Waiting to be sent" }, sending: { mark: "run", word: "Being sent" }, sent: { mark: "done", word: "Sent" }, dead: { mark: "block", word: "Given up" },
+};
+
+/** One mail: to whom, how far it is, its text on request, and another try when it was given up. */
+export function MailLine({ mail, timeZone }: { mail: MailView; timeZone: string }) {
+  const router = useRouter();
+  const say = useSay();
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const [busy, setBusy] = useState(false);
+  const { mark, word } = STATE[mail.state];
+  async function retry() {
+    setBusy(true);
+    setRefusal(null);
+    try {
+      await send("POST", `/api/mails/${mail.id}/retry`);
+      router.refresh();
+      say({ text: `The mail to ${mail.to} waits to be sent again.` });
+    } catch (error) {
+      if (!(error instanceof Refusal)) throw error;
+      setRefusal(error.detail);
+    } finally {
+      setBusy(false);
+    }
+  }
+  return (
+    <li className="border-b border-rule py-2.5">
+      <details>
+        <summary className="grid cursor-pointer grid-cols-[minmax(0,2fr)_minmax(0,3fr)_180px_140px] items-baseline gap-x-4 gap-y-0.5 phone:grid-cols-[minmax(0,1fr)]">
+          <b className="[overflow-wrap:anywhere]">{mail.to}</b>
+          <span className="[overflow-wrap:anywhere]">{mail.subject}</span>
+          <span className={mail.state === "dead" ? "text-block" : ""}><Mark kind={mark} className="[--hole:var(--paper)]" /> {word}{mail.attempts > 1 || mail.state === "dead" ? `, ${mail.attempts === 1 ? "1 try" : `${mail.attempts} tries`}` : ""}</span>
+          <span className="text-ink-2">{momentText(mail.sentAt ?? mail.queuedAt, timeZone)}</span>
+        </summary>
+        <div className="grid gap-2 pt-2.5">
+          {mail.lastError ? <Note kind={mail.state === "dead" ? "block" : "caution"} title="What the mail server said last:">{mail.lastError}</Note> : null}
+          <p className="text-t2 text-ink-2">Written {momentText(mail.queuedAt, timeZone)}{mail.sentAt ? `, sent ${momentText(mail.sentAt, timeZone)}` : ""}. Secret links are masked here.</p>
+          <pre className="max-w-[80ch] bg-sheet px-4 py-3 font-mono text-t2 whitespace-pre-wrap [overflow-wrap:anywhere]">{mail.text}</pre>
+        </div>
+      </details>
+      {refusal ? <Note kind="block" role="alert" title="It was not put back." className="mt-2">{refusal}</Note> : null}
+      {mail.state === "dead" ? <Buttons className="pt-2"><Button size="small" disabled={busy} onClick={() => void retry()}>Try again</Button></Buttons> : null}
+    </li>
+  );
+}
