@@ -1,0 +1,55 @@
+import type { UseFormRegisterReturn } from "react-hook-form";
+import { Checkbox } from "@/components/ui/checkbox";
+import { Input } from "@/components/ui/input";
+import { Note } from "@/components/ui/note";
+import { Select } from "@/components/ui/select";
+import type { BoardRole } from "@/lib/core/words";
+import type { ChipSummary } from "@/lib/views";
+import type { ChipField } from "./chip-form";
+import { BUS_OPTIONS, SIZE_SOURCE_OPTIONS } from "./drive-words";
+import { sizeHint, sizeNote } from "./size-words";
+
+const VOLTS: readonly { value: string; label: string }[] = [
+  { value: "", label: "Choose the supply" }, { value: "1200", label: "1.2 V" }, { value: "1800", label: "1.8 V" }, { value: "2500", label: "2.5 V" },
+  { value: "3000", label: "3 V" }, { value: "3300", label: "3.3 V" }, { value: "5000", label: "5 V" }, { value: "unknown", label: "Unknown" },
+];
+
+/** The choices, and a recorded value that is none of them. */
+function voltOptions(chosen: string) {
+  return VOLTS.some((option) => option.value === chosen) || !/^\d+$/.test(chosen) ? VOLTS : [...VOLTS, { value: chosen, label: `${Number(chosen) / 1000} V` }];
+}
+
+export function ChipFields({ role, originals, register, errors, size, supply }: {
+  role: BoardRole;
+  /** chips of the original board that a donor's chip can be paired with */
+  originals: readonly ChipSummary[];
+  register(name: ChipField): UseFormRegisterReturn;
+  errors: Partial<Record<ChipField, { message?: string }>>;
+  /** as typed so far */
+  size: string;
+  supply: string;
+}) {
+  const note = sizeNote(size);
+  return (
+    <>
+      <div className="grid grid-cols-2 gap-4 slim:grid-cols-1">
+        <Input label="Designator" mono hint="Printed beside the chip, such as U12" error={errors.designator?.message} {...register("designator")} />
+        <Select label="Bus" options={BUS_OPTIONS} error={errors.bus?.message} {...register("bus")} />
+        <Input label="Size" mono hint={sizeHint(size)} error={errors.sizeBytes?.message} {...register("sizeBytes")} />
+        <Select label="The size comes from" options={SIZE_SOURCE_OPTIONS} error={errors.sizeSource?.message} {...register("sizeSource")} />
+        <Select label="Supply" options={voltOptions(supply)} hint="1.8 V chips are destroyed by 3.3 V or 5 V" error={errors.supplyMillivolts?.message} {...register("supplyMillivolts")} />
+        <Input label="Package" hint="Such as SOIC-8" error={errors.package?.message} {...register("package")} />
+        <Input label="Top marking" mono error={errors.marking?.message} {...register("marking")} />
+        <Input label="What it holds" hint="Such as configuration data" error={errors.holds?.message} {...register("holds")} />
+        {role === "donor" ? (
+          <Select label="Stands for which original chip" className="col-span-full" error={errors.pairedWith?.message}
+            hint="Another pairing takes the approval of the original’s chip away."
+            options={[{ value: "", label: originals.length > 0 ? "Not paired" : "Not paired: the original has no chip yet" }, ...originals.map((chip) => ({ value: chip.id, label: `Original ${chip.designator}${chip.pair ? `, paired with ${chip.pair.designator} on ${chip.pair.boardNumber}` : ""}` }))]}
+            {...register("pairedWith")} />
+        ) : <Checkbox className="col-span-full" label="This chip needs a transfer. Take the tick off for one that is kept for reference." {...register("needsTransfer")} />}
+      </div>
+      {note ? <Note kind="note" title={note} /> : null}
+      {supply === "unknown" ? <Note kind="caution" title="Look the supply up before anyone clips on.">A 1.8 V chip is destroyed by 3.3 V or 5 V. Start at the lowest supply when there is no other way.</Note> : null}
+    </>
+  );
+}
