@@ -1,0 +1,29 @@
+import type { Metadata } from "next";
+import { notFound } from "next/navigation";
+import { PublicShell } from "@/components/shell/public-shell";
+import { PrintButton } from "@/components/summary/print-button";
+import { SayOpened } from "@/components/summary/say-opened";
+import { SummarySheet } from "@/components/summary/summary-sheet";
+import { dayYearText } from "@/components/ui/times";
+import { env } from "@/lib/env";
+import { summaryByToken } from "@/lib/queries/summary";
+
+// the address itself is the key: no search engine, and no other site learns of it
+export const metadata: Metadata = { title: "Verification summary", robots: { index: false, follow: false, nocache: true }, referrer: "no-referrer" };
+
+export default async function SummaryPage({ params }: { params: Promise<{ token: string }> }) {
+  const { token } = await params;
+  const summary = /^[A-Za-z0-9_-]{43}$/.test(token) ? await summaryByToken(token) : null;
+  if (!summary) notFound();
+  const { demo, timeZone, publicUrl } = env();
+  return (
+    <PublicShell workshop={summary.workshop} demo={demo} line={`Shown to anyone who holds this link, until ${dayYearText(summary.expiresAt, timeZone)}`}>
+      <div className="no-print mx-auto flex w-[794px] max-w-full items-center justify-between gap-4 py-3.5 text-ink-2 phone:px-4">
+        <p>Made to be printed.</p>
+        <PrintButton />
+      </div>
+      <SummarySheet summary={summary} link={`${publicUrl}/summary/${token}`} timeZone={timeZone} />
+      <SayOpened token={token} />
+    </PublicShell>
+  );
+}
