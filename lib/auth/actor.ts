@@ -1,10 +1,10 @@
-import { createHash } from "node:crypto";
 import { getServerSession } from "next-auth";
 import { type Actor, NIL } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { SESSION_ABSOLUTE_SECONDS, SESSION_IDLE_SECONDS } from "@/lib/limits";
 import { BenchToken, Session, User } from "@/models";
 import { authOptions } from "./options";
+import { tokenHash } from "./token";
 
 const NOBODY: Actor = { id: NIL, name: "nobody", role: "technician" };
 const TOUCH_MS = 30_000;
@@ -31,11 +31,6 @@ async function actorOfToken(header: string): Promise<Actor> {
   if (user.disabledAt) throw new AppError("not-signed-in", "The account of this bench token is switched off. Ask the admin.");
   if (!row.lastUsedAt || Date.now() - row.lastUsedAt.getTime() > TOUCH_MS) await row.update({ lastUsedAt: new Date() });
   return { id: user.id, name: user.name, role: user.role };
-}
-
-/** SHA-256 of a token: only this is stored. */
-export function tokenHash(token: string): Buffer {
-  return createHash("sha256").update(token).digest();
 }
 
 /**

@@ -1,5 +1,5 @@
 import { randomBytes, randomUUID } from "node:crypto";
-import { tokenHash } from "@/lib/auth/actor";
+import { tokenHash } from "@/lib/auth/token";
 import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { BenchToken, inTransaction, User } from "@/models";
