@@ -32,9 +32,17 @@ export async function ensureBuilt() {
   const hash = sourcesHash();
   if (!needsBuild()) return;
   rmSync(BUILD_STAMP, { force: true });
-  await progress("Building the app", () => once(process.execPath, ["node_modules/next/dist/bin/next", "build"], {
-    env: { ...process.env, NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1" },
-  }));
+  const env = { ...process.env, NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1" };
+  // the build has no business with any database
+  delete env.DATABASE_URL;
+  delete env.DATABASE_ADMIN_URL;
+  try {
+    await progress("Building the app", () => once(process.execPath, ["node_modules/next/dist/bin/next", "build"], { env }));
+  } catch (error) {
+    // the bundler remembers a missing file even after it is there: the next attempt begins without its memory
+    rmSync(path.join(root, ".next"), { recursive: true, force: true });
+    throw error;
+  }
   writeFileSync(BUILD_STAMP, `${hash}\n`);
 }
 
