@@ -1,5 +1,5 @@
 import { execFile, spawnSync } from "node:child_process";
-import { createHash } from "node:crypto";
+import { createHash, randomUUID } from "node:crypto";
 import { chmodSync, cpSync, createWriteStream, existsSync, mkdtempSync, readdirSync, readFileSync, rmSync, statSync, writeFileSync } from "node:fs";
 import os from "node:os";
 import path from "node:path";
@@ -28,7 +28,10 @@ let lead: Actor;
 let chip: MadeChip;
 let bag = "";
 let zip = "";
-const image = stream("bundle-image", 8192);
+// of this run alone: equal images on two drives would be a finding
+const seed = randomUUID();
+const image = stream(`bundle-image ${seed}`, 8192);
+const donorImage = stream(`donor-image ${seed}`, 8192);
 
 async function pack(name: string): Promise<string> {
   const { stream: bytes } = await makeBundle(lead, chip.caseId);
@@ -70,8 +73,8 @@ beforeAll(async () => {
   lead = await makeUser("lead");
   chip = await makeChip(technician);
   await recordDrive(technician, chip.caseId, { partNumber: "PN 4471-0093-C", serial: `SECOND-${Date.now()}` });
-  await makeReady(technician, chip, image, stream("donor-image", 8192));
-  await store(technician, chip.chipId, "before", stream("odd one", 8192), 2, { note: 'Says "sha256":"00", {"prev":1} and ünïcödé ǁ' }, "../../x \"q\".bin");
+  await makeReady(technician, chip, image, donorImage);
+  await store(technician, chip.chipId, "before", stream(`odd one ${seed}`, 8192), 2, { note: 'Says "sha256":"00", {"prev":1} and ünïcödé ǁ' }, "../../x \"q\".bin");
   const odd = (await chipView(lead, chip.chipId)).reads.find((r) => r.stage === "before" && r.number === 4)!;
   await setReadAside(lead, odd.id, { reason: "Slipped clip" });
   const approval = await approveImage(lead, chip.chipId, { sha256: sha256(image), donorChipId: chip.donorChipId, statement: "Three clean reads.", reasons: {}, lookedAt: [] });
@@ -95,7 +98,7 @@ describe("a case bundle", () => {
 
   it("holds every image under a name of ours and the uploader's name as data", () => {
     const names = filesOf(bag);
-    for (const [name, bytes] of [["data/drives/1/original-U12/before-1.bin", image], ["data/drives/1/donor-1-U12/after-2.bin", image], ["data/drives/1/donor-1-U12/donor-1.bin", stream("donor-image", 8192)]] as const) {
+    for (const [name, bytes] of [["data/drives/1/original-U12/before-1.bin", image], ["data/drives/1/donor-1-U12/after-2.bin", image], ["data/drives/1/donor-1-U12/donor-1.bin", donorImage]] as const) {
       expect(readFileSync(path.join(bag, name)).equals(bytes)).toBe(true);
     }
     expect(names.every((name) => /^[A-Za-z0-9._/-]+$/.test(name) && !name.includes(".."))).toBe(true);
@@ -251,7 +254,7 @@ describe("check.sh", () => {
   it("says 1 for another fingerprint, 2 for something that is none or without its tools", () => {
     expect(check(bag, "0".repeat(64)).status).toBe(1);
     expect(check(bag, "not a key").status).toBe(2);
-    expect(spawnSync("/bin/sh", [path.join(bag, "check.sh")], { env: { PATH: "/nowhere" } }).status).toBe(2);
+    expect(spawnSync("/bin/sh", [path.join(bag, "check.sh")], { env: { ...process.env, PATH: "/nowhere" } }).status).toBe(2);
   });
 });
 

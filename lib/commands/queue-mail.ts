@@ -1,0 +1,23 @@
+import { randomUUID } from "node:crypto";
+import { sealText } from "@/lib/mail/sealed-text";
+import { connection, type Transaction } from "@/models";
+
+export interface MailInput {
+  to: string;
+  subject: string;
+  /** with its secret links; sealed until it is sent, then wiped */
+  text: string;
+  /** what the outbox page shows: the same with secret links masked */
+  maskedText: string;
+}
+
+/** Puts a mail into the outbox, in the transaction of what it tells about: it goes out if and only if that happened. */
+export async function queueMail(tx: Transaction, { to, subject, text, maskedText }: MailInput): Promise<{ id: string }> {
+  const id = randomUUID();
+  await connection().query(
+    `INSERT INTO mails (id, recipient, subject, text_masked, sealed, state, queued_at, next_attempt_at)
+     VALUES (?, ?, ?, ?, ?, 'queued', UTC_TIMESTAMP(6), UTC_TIMESTAMP(6))`,
+    { replacements: [id, to, subject, maskedText, sealText(id, text)], transaction: tx },
+  );
+  return { id };
+}

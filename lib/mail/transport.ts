@@ -1,0 +1,56 @@
+import { createTransport } from "nodemailer";
+import { env } from "@/lib/env";
+import type { SmtpSettings } from "@/lib/settings";
+
+export interface OutgoingMail {
+  id: string;
+  to: string;
+  subject: string;
+  text: string;
+}
+export type SendMail = (mail: OutgoingMail) => Promise<void>;
+
+/** Milliseconds; the whole of it stays below the lease of a claimed mail. */
+const CONNECT_MS = 10_000;
+const SILENCE_MS = 20_000;
+export const WHOLE_MS = 60_000;
+
+const LOOPBACK = new Set(["127.0.0.1", "::1", "localhost"]);
+
+/** One mail, one connection, within time limits. Rejects with what the mail server or the network said. */
+export function mailSender(smtp: SmtpSettings, publicUrl: string): SendMail {
+  const host = new URL(publicUrl).hostname.replace(/[[\]]/g, "");
+  return async ({ id, to, subject, text }) => {
+    const transport = createTransport({
+      host: smtp.host, port: smtp.port, secure: smtp.secure, auth: smtp.user && smtp.password ? { user: smtp.user, pass: smtp.password } : undefined,
+      // a password never crosses a network in the clear
+      requireTLS: smtp.user !== null && !LOOPBACK.has(smtp.host), ignoreTLS: smtp.fake,
+      connectionTimeout: CONNECT_MS, greetingTimeout: CONNECT_MS, dnsTimeout: CONNECT_MS, socketTimeout: SILENCE_MS,
+      disableFileAccess: true, disableUrlAccess: true,
+    });
+    let timer: NodeJS.Timeout | undefined;
+    const late = new Promise<never>((_, reject) => {
+      timer = setTimeout(() => reject(new Error("the mail server took longer than a minute")), WHOLE_MS);
+    });
+    const sent = transport.sendMail({
+      from: smtp.from, to: { name: "", address: to }, subject, text,
+      // the same mail sent twice can be told by its id
+      messageId: `<${id}@${host}>`, headers: { "Auto-Submitted": "auto-generated" },
+    });
+    sent.catch(() => {});
+    try {
+      await Promise.race([sent, late]);
+    } finally {
+      clearTimeout(timer);
+      transport.close();
+    }
+  };
+}
+
+export const sendMail: SendMail = (mail) => mailSender(env().smtp, env().publicUrl)(mail);
+
+/** True when the mail server has said for good that it will not take this mail. */
+export function refusedForGood(error: unknown): boolean {
+  const { code, responseCode } = (error ?? {}) as { code?: string; responseCode?: number };
+  return (code === "EENVELOPE" || code === "EMESSAGE") && responseCode !== undefined && responseCode >= 500 && responseCode < 600;
+}
