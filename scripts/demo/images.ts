@@ -44,7 +44,7 @@ const blank: Fill = (area) => void area.fill(0xff);
 type Area = readonly [cells: number, fill: Fill, shared: boolean];
 
 const FIRMWARE: readonly Area[] = [
-  [2, ordinary, true], [1, text, true], [46, dense, true], [9, ordinary, true], [3, text, false], [1, ordinary, false], [2, ordinary, false],
+  [2, ordinary, true], [1, text, true], [46, dense, true], [9, ordinary, true], [3, text, false], [3, ordinary, false],
   [7, zeros, true], [38, dense, true], [14, ordinary, true], [6, text, true], [9, blank, true], [22, dense, true], [17, ordinary, true],
   [4, text, false], [6, zeros, true], [8, ordinary, false], [19, blank, true], [2, ordinary, false], [40, blank, true],
 ];
@@ -54,10 +54,13 @@ const SETTINGS: readonly Area[] = [
   [12, zeros, true], [26, ordinary, false], [14, text, false], [40, blank, true], [4, ordinary, false], [20, blank, true],
 ];
 
-/** Shifts the borders of a kind's areas, so that two kinds of board don't look alike. */
+/** The first areas keep their place: a lost contact of the demo lies in the tables at 0x1F000. */
+const FIXED = 7;
+
+/** Shifts the later borders of a kind's areas, so that two kinds of board don't look alike. */
 function bordersOf(areas: readonly Area[], random: Random): readonly number[] {
-  const cells = areas.map(([n]) => n);
-  for (let i = 0; i + 1 < cells.length; i += 1) {
+  const cells: number[] = areas.map(([n]) => n);
+  for (let i = FIXED; i + 1 < cells.length; i += 1) {
     const most = Math.min(6, Math.floor(cells[i + 1] / 2), Math.floor(cells[i] / 2));
     const by = below(random, 2 * most + 1) - most;
     cells[i] += by;
