@@ -3,7 +3,7 @@
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
 import { useState } from "react";
-import { useForm } from "react-hook-form";
+import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
@@ -31,8 +31,8 @@ const typed = (value: unknown) => (typeof value === "string" ? value : "");
 function AddBoardForm({ driveId, role, original, isLead, onClose }: Given & { onClose(): void }) {
   const router = useRouter();
   const { refusal, busy, attempt } = useChange();
-  const { register, handleSubmit, watch, formState: { errors } } = useForm<z.input<typeof boardInput>, unknown, BoardInput>({ resolver: zodResolver(boardInput), defaultValues: { role, boardNumber: "", reason: "" } });
-  const [boardNumber, revision, controllerMarking, motorDriverMarking] = watch(["boardNumber", "revision", "controllerMarking", "motorDriverMarking"]).map(typed);
+  const { register, handleSubmit, control, formState: { errors } } = useForm<z.input<typeof boardInput>, unknown, BoardInput>({ resolver: zodResolver(boardInput), defaultValues: { role, boardNumber: "", reason: "" } });
+  const [boardNumber, revision, controllerMarking, motorDriverMarking] = useWatch({ control, name: ["boardNumber", "revision", "controllerMarking", "motorDriverMarking"] }).map(typed);
   const facts = { boardNumber, revision, controllerMarking, motorDriverMarking };
   const other = role === "donor" && original !== null && boardNumber.trim() !== "" && donorFit(original, facts).verdict === "other-number";
   const submit = handleSubmit(async ({ reason, ...input }) => {

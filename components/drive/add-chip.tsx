@@ -3,7 +3,7 @@
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
 import { useState } from "react";
-import { useForm } from "react-hook-form";
+import { useForm, useWatch } from "react-hook-form";
 import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { Note } from "@/components/ui/note";
@@ -26,14 +26,14 @@ function AddChipForm({ board, originals, onClose }: Given & { onClose(): void })
   const { refusal, busy, attempt } = useChange();
   // a donor that fits carries the same chip: the first original without a pair is what comes next
   const twin = board.role === "donor" ? originals.find((chip) => !chip.pair) ?? null : null;
-  const { register, handleSubmit, watch, formState: { errors } } = useForm<ChipFormInput, unknown, ChipFormOutput>({
+  const { register, handleSubmit, control, formState: { errors } } = useForm<ChipFormInput, unknown, ChipFormOutput>({
     resolver: zodResolver(chipForm),
     defaultValues: {
       designator: twin?.designator ?? "", bus: twin?.bus ?? "spi", sizeBytes: twin ? String(twin.sizeBytes) : "", sizeSource: "marking",
       supplyMillivolts: "", package: twin?.package ?? "", marking: "", holds: twin?.holds ?? "", needsTransfer: true, pairedWith: twin?.id ?? "",
     },
   });
-  const [size, supply, pairedWith] = watch(["sizeBytes", "supplyMillivolts", "pairedWith"]).map(typed);
+  const [size, supply, pairedWith] = useWatch({ control, name: ["sizeBytes", "supplyMillivolts", "pairedWith"] }).map(typed);
   const replaced = originals.find((chip) => chip.id === pairedWith)?.pair ?? null;
   const submit = handleSubmit(async ({ pairedWith: pair, ...input }) => {
     if (!(await attempt(() => send("POST", `/api/boards/${board.id}/chips`, pair ? { ...input, pairedWith: pair } : input)))) return;

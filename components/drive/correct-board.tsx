@@ -3,7 +3,7 @@
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
 import { useState } from "react";
-import { useForm } from "react-hook-form";
+import { useForm, useWatch } from "react-hook-form";
 import { z } from "zod";
 import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
@@ -30,8 +30,8 @@ function CorrectBoardForm({ board, original, isLead, onClose }: Given & { onClos
   const router = useRouter();
   const { refusal, busy, attempt } = useChange();
   const before = { boardNumber: board.boardNumber, revision: board.revision, controllerMarking: board.controllerMarking, motorDriverMarking: board.motorDriverMarking, condition: board.condition };
-  const { register, handleSubmit, setError, watch, formState: { errors } } = useForm<z.input<typeof form>, unknown, z.output<typeof form>>({ resolver: zodResolver(form), defaultValues: { ...before, reason: "" } });
-  const [boardNumber, revision, controllerMarking, motorDriverMarking] = watch(["boardNumber", "revision", "controllerMarking", "motorDriverMarking"]).map(typed);
+  const { register, handleSubmit, setError, control, formState: { errors } } = useForm<z.input<typeof form>, unknown, z.output<typeof form>>({ resolver: zodResolver(form), defaultValues: { ...before, reason: "" } });
+  const [boardNumber, revision, controllerMarking, motorDriverMarking] = useWatch({ control, name: ["boardNumber", "revision", "controllerMarking", "motorDriverMarking"] }).map(typed);
   const submit = handleSubmit(async ({ reason, ...after }) => {
     const changes = changedFields(before, after);
     if (Object.keys(changes).length === 0) return setError("boardNumber", { message: "These are the values on record. Change a field first." });

@@ -3,7 +3,7 @@
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
 import { useState } from "react";
-import { useForm } from "react-hook-form";
+import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
@@ -31,11 +31,11 @@ function CorrectChipForm({ chip, originals, onClose }: Given & { onClose(): void
     package: chip.package, marking: chip.marking, holds: chip.holds, needsTransfer: chip.needsTransfer,
     pairedWith: chip.boardRole === "donor" ? chip.pair?.id ?? null : null,
   };
-  const { register, handleSubmit, setError, watch, formState: { errors } } = useForm<z.input<typeof chipCorrectionForm>, unknown, z.output<typeof chipCorrectionForm>>({
+  const { register, handleSubmit, setError, control, formState: { errors } } = useForm<z.input<typeof chipCorrectionForm>, unknown, z.output<typeof chipCorrectionForm>>({
     resolver: zodResolver(chipCorrectionForm),
     defaultValues: { ...before, sizeBytes: String(chip.sizeBytes), supplyMillivolts: String(before.supplyMillivolts), pairedWith: before.pairedWith ?? "", reason: "" },
   });
-  const [size, supply] = watch(["sizeBytes", "supplyMillivolts"]).map(typed);
+  const [size, supply] = useWatch({ control, name: ["sizeBytes", "supplyMillivolts"] }).map(typed);
   const submit = handleSubmit(async ({ reason, ...after }) => {
     const changes = changedFields(before, after);
     if (Object.keys(changes).length === 0) return setError("designator", { message: "These are the values on record. Change a field first." });

@@ -1,0 +1,50 @@
+import type { Metadata } from "next";
+import { DriveBlock } from "@/components/case/drive-block";
+import { NextSteps } from "@/components/case/next-steps";
+import { ShareList } from "@/components/case/share-list";
+import { Ticket } from "@/components/case/ticket";
+import { LatestEntries } from "@/components/custody/latest-entries";
+import { AddDrive } from "@/components/drive/add-drive";
+import { DeskShell } from "@/components/shell/desk-shell";
+import { PageMain } from "@/components/shell/page-main";
+import { Empty } from "@/components/ui/empty";
+import { Section } from "@/components/ui/section";
+import { signedIn } from "@/lib/auth/page";
+import { may } from "@/lib/core/policy";
+import { orNotFound } from "@/lib/http/page-errors";
+import { caseView } from "@/lib/queries/cases";
+import { custodyOfDrive } from "@/lib/queries/custody";
+import { policyView } from "@/lib/queries/policy";
+import { dayIn } from "@/lib/queries/workshop-day";
+
+export const metadata: Metadata = { title: "Case" };
+
+export default async function CasePage({ params }: { params: Promise<{ id: string }> }) {
+  const { actor, session } = await signedIn();
+  const { id } = await params;
+  const view = await orNotFound(() => caseView(actor, id));
+  const policy = await policyView(actor);
+  const logs = await Promise.all(view.drives.map(async (drive) => ({ drive, ...(await custodyOfDrive(actor, drive.id)) })));
+  const { user, timeZone } = session;
+  const now = new Date();
+  const adds = may(actor, "drive.record") && view.state === "open";
+  return (
+    <DeskShell session={session} current="cases">
+      <PageMain>
+        <Ticket view={view} timeZone={timeZone} today={dayIn(timeZone, now)} />
+        {view.drives.map((drive) => <DriveBlock key={drive.id} drive={drive} policy={policy} user={user} />)}
+        {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive caseId={id} lead /> : null}>Type what its label says. An external drive may show only a part number on the enclosure: that is enough.</Empty></div> : null}
+        {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive caseId={id} /></div> : null}
+        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} /></Section>
+        {view.shares.length > 0 ? (
+          <Section title="Summary links" note="Private links to the verification summary."><ShareList shares={view.shares} timeZone={timeZone} withdraws={may(actor, "share.withdraw")} now={now.toISOString()} /></Section>
+        ) : null}
+        {logs.length > 0 ? (
+          <Section title="Custody log" note="Each entry carries the hash of the one before.">
+            {logs.map(({ drive, entries }) => <LatestEntries key={drive.id} driveId={drive.id} letter={drive.letter} entries={entries} timeZone={timeZone} />)}
+          </Section>
+        ) : null}
+      </PageMain>
+    </DeskShell>
+  );
+}

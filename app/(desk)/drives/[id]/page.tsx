@@ -1,0 +1,41 @@
+import type { Metadata } from "next";
+import { DriveBlock } from "@/components/case/drive-block";
+import { LatestEntries } from "@/components/custody/latest-entries";
+import { BoardTable } from "@/components/drive/board-table";
+import { originalOf } from "@/components/drive/drive-words";
+import { DeskShell } from "@/components/shell/desk-shell";
+import { PageMain } from "@/components/shell/page-main";
+import { Crumbs } from "@/components/ui/crumbs";
+import { PageTitle, Section } from "@/components/ui/section";
+import { signedIn } from "@/lib/auth/page";
+import { may } from "@/lib/core/policy";
+import { orNotFound } from "@/lib/http/page-errors";
+import { custodyOfDrive } from "@/lib/queries/custody";
+import { driveView } from "@/lib/queries/drives";
+import { policyView } from "@/lib/queries/policy";
+
+export const metadata: Metadata = { title: "Drive" };
+
+export default async function DrivePage({ params }: { params: Promise<{ id: string }> }) {
+  const { actor, session } = await signedIn();
+  const { id } = await params;
+  const drive = await orNotFound(() => driveView(actor, id));
+  const [policy, { entries }] = await Promise.all([policyView(actor), custodyOfDrive(actor, id)]);
+  return (
+    <DeskShell session={session} current="cases">
+      <PageMain>
+        <Crumbs items={[{ label: `Case ${drive.case.ref}`, href: `/cases/${drive.case.id}` }, { label: `Drive ${drive.letter}` }]} />
+        <PageTitle note={drive.case.customerName}>Drive {drive.letter} of case <span className="font-mono">{drive.case.ref}</span></PageTitle>
+        <DriveBlock drive={drive} policy={policy} user={session.user} here />
+        {drive.boards.length > 0 ? (
+          <Section title="As recorded" note="Typed facts are corrected by a new entry in the log; nothing is overwritten there.">
+            <BoardTable boards={drive.boards} original={originalOf(drive)} corrects={may(actor, "fact.correct")} isLead={may(actor, "board.allow-other-number")} />
+          </Section>
+        ) : null}
+        <Section title="Custody log" note="Each entry carries the hash of the one before.">
+          <LatestEntries driveId={id} letter={drive.letter} entries={entries} timeZone={session.timeZone} />
+        </Section>
+      </PageMain>
+    </DeskShell>
+  );
+}

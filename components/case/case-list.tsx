@@ -1,0 +1,51 @@
+"use client";
+
+import Link from "next/link";
+import { useMemo } from "react";
+import { stateMark } from "@/components/chip/chip-words";
+import { ButtonLink } from "@/components/ui/button";
+import { columnsFor, DataTable } from "@/components/ui/data-table";
+import { Empty } from "@/components/ui/empty";
+import { FindingLine } from "@/components/ui/finding-line";
+import { dayText, dueText } from "@/components/ui/times";
+import type { CaseRow, ListView } from "@/lib/views";
+
+const column = columnsFor<CaseRow>();
+
+function Chips({ row }: { row: CaseRow }) {
+  if (row.state === "closed") return <span className="text-ink-2">Closed</span>;
+  if (row.chips.length === 0) return <span className="text-ink-3">No chip recorded yet</span>;
+  return <>{row.chips.map((chip, i) => <FindingLine key={i} kind={stateMark(chip.state)}><span className="font-mono">{chip.designator}</span> {chip.label}</FindingLine>)}</>;
+}
+
+/** The cases: searched, sorted and paged by the database. */
+export function CaseList({ list, sort, order, q, timeZone, today, records }: {
+  list: ListView<CaseRow>;
+  sort: string;
+  order: "asc" | "desc";
+  q: string;
+  timeZone: string;
+  /** the workshop's calendar day */
+  today: string;
+  records: boolean;
+}) {
+  const columns = useMemo(() => column.columns([
+    column.accessor("ref", { id: "ref", header: "Case", cell: ({ row }) => <Link className="font-mono" href={`/cases/${row.original.id}`}>{row.original.ref}</Link> }),
+    column.accessor("customerName", { id: "customer", header: "Customer" }),
+    column.accessor("partNumbers", { id: "drives", header: "Drives", enableSorting: false, cell: ({ row }) => <span className="font-mono [overflow-wrap:anywhere]">{row.original.partNumbers}</span> }),
+    column.accessor("damage", { id: "damage", header: "Damage", enableSorting: false, cell: ({ row }) => <span className="line-clamp-2 max-w-[36ch]">{row.original.damage}</span> }),
+    column.accessor("dueOn", {
+      id: "due", header: "Due", cell: ({ row: { original: row } }) => {
+        if (!row.dueOn) return <span className="text-ink-3">no date</span>;
+        const late = row.state === "open" && row.dueOn < today;
+        return <span className={`whitespace-nowrap ${late ? "font-strong text-block" : ""}`}>{dueText(row.dueOn)}{late ? ", late" : row.state === "open" && row.dueOn === today ? ", today" : ""}</span>;
+      },
+    }),
+    column.accessor("receivedAt", { id: "received", header: "Received", cell: ({ row }) => <span className="whitespace-nowrap">{dayText(row.original.receivedAt, timeZone)}</span> }),
+    column.display({ id: "chips", header: "Chips", enableSorting: false, cell: ({ row }) => <Chips row={row.original} /> }),
+  ]), [timeZone, today]);
+  const empty = q
+    ? <Empty title={`No case fits “${q}”.`} action={<ButtonLink href="/cases">Show all cases</ButtonLink>}>The search looks at case number, customer, damage and the drives’ part numbers, models and serials.</Empty>
+    : <Empty title="No case yet." action={records ? <ButtonLink href="/cases/new">Record a case</ButtonLink> : null}>{records ? "Record the first one; then its drive, boards and chips." : "A technician or a lead records the first one."}</Empty>;
+  return <DataTable caption="Cases" columns={columns} list={list} sort={sort} order={order} rowId={(row) => row.id} empty={empty} rowClass={(row) => (row.state === "closed" ? "is-aside" : "")} />;
+}

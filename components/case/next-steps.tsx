@@ -1,0 +1,54 @@
+import { stateMark } from "@/components/chip/chip-words";
+import { originalOf } from "@/components/drive/drive-words";
+import { Button, ButtonLink } from "@/components/ui/button";
+import { Mark } from "@/components/ui/mark";
+import { may } from "@/lib/core/policy";
+import type { ChipStateCode, Policy } from "@/lib/core/words";
+import type { CaseView, ChipSummary, SessionView } from "@/lib/views";
+import { byUrgency, chipsToTransfer, waitsFor } from "./case-words";
+import { MakeBundle } from "./make-bundle";
+import { SendSummary } from "./send-summary";
+
+const STEP: Record<ChipStateCode, { word: string; at: string }> = {
+  unread: { word: "Add reads", at: "#add" }, "needs-reads": { word: "Add a read", at: "#add" }, "reads-disagree": { word: "Add a read", at: "#add" },
+  held: { word: "Look", at: "" }, ready: { word: "Open", at: "" }, approved: { word: "Write", at: "#transfer" },
+  written: { word: "Add a read-back", at: "#add" }, failed: { word: "Write again", at: "#transfer" }, verified: { word: "Look", at: "" },
+};
+
+function ChipStep({ chip, drive, lead, acts }: { chip: ChipSummary; drive: string | null; lead: boolean; acts: boolean }) {
+  const { word, at } = acts ? STEP[chip.state.state] : { word: "Open", at: "" };
+  return (
+    <li>
+      <Mark kind={stateMark(chip.state.state)} className="[--hole:var(--paper)]" />
+      <span><b>{chip.designator}{drive ? ` of Drive ${drive}` : ""}, {chip.state.label.toLowerCase()}.</b> {chip.state.sentence}{chip.pair ? null : <span className="text-ink-2"> No donor chip is paired yet: add it on the donor board.</span>}</span>
+      <ButtonLink variant={lead ? "lead" : "plain"} href={`/chips/${chip.id}${at}`}>{word}<span className="sr-only">, {chip.designator}</span></ButtonLink>
+    </li>
+  );
+}
+
+/** What is to be done on this case, the most urgent first; what can't be done yet says why. */
+export function NextSteps({ view, policy, user }: { view: CaseView; policy: Policy; user: SessionView["user"] }) {
+  const acts = may(user, "read.store");
+  const open = byUrgency(chipsToTransfer(view.drives)).filter((chip) => chip.state.state !== "verified");
+  const several = view.drives.length > 1;
+  const letterOf = (chip: ChipSummary) => (several ? view.drives.find((drive) => originalOf(drive)?.chips.some((one) => one.id === chip.id))?.letter ?? null : null);
+  const waits = waitsFor(view.drives);
+  const sends = may(user, "summary.send");
+  return (
+    <ol className="next-steps">
+      {open.map((chip, i) => <ChipStep key={chip.id} chip={chip} drive={letterOf(chip)} lead={i === 0 && acts} acts={acts} />)}
+      <li>
+        <Mark kind={waits ? "wait" : "run"} />
+        <span><b>Send the summary to the customer</b>{waits ? <span className="text-ink-2">; {waits}</span> : null}{sends ? null : <span className="text-ink-2">{waits ? ", and a lead sends it" : "; a lead sends it"}</span>}</span>
+        {sends && !waits ? <SendSummary view={view} policy={policy} lead={open.length === 0} /> : <Button disabled>Send summary…</Button>}
+      </li>
+      {may(user, "bundle.make") ? (
+        <li>
+          <Mark kind="note" />
+          <span><b>Case bundle for the auditor</b><span className="text-ink-2">: images, digests and log in one file; can be made at any time</span></span>
+          <MakeBundle caseId={view.id} />
+        </li>
+      ) : null}
+    </ol>
+  );
+}
