@@ -90,6 +90,7 @@ export function problemWords({ seq, problem, expected, found }: CheckFinding): s
 
 /** The verdict's sentence and why. */
 export function checkWords(check: CustodyCheckView): { sentence: string; why: string } {
+  if (check.ok && check.entries === 0) return { sentence: "This log has no entry yet.", why: "The first step recorded begins it." };
   if (check.ok) {
     return {
       sentence: check.entries === 1 ? "The one entry is sound. Nothing was changed, removed or put in between." : `All ${entriesText(check.entries)} link. Nothing was changed, removed or put in between.`,
