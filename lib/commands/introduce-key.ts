@@ -1,4 +1,5 @@
 import { SYSTEM, WORKSHOP_CHAIN } from "@/lib/core/words";
+import { keyring } from "@/lib/queries/keyring";
 import { CustodyEntry, inTransaction } from "@/models";
 import { logKey } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
@@ -9,8 +10,7 @@ export async function introduceKey(): Promise<void> {
   await inTransaction(async (tx) => {
     await lockChain(tx, WORKSHOP_CHAIN);
     const rows = await CustodyEntry.findAll({ where: { chainId: WORKSHOP_CHAIN, action: "key.introduced" }, transaction: tx });
-    const known = rows.some((row) => row.body.includes(keyId));
-    if (known) return;
+    if (keyring(rows, publicKeyPem).keys.has(keyId)) return;
     if (rows.length > 0) throw new Error("The log key in the data folder is not the one that the custody log knows. Put the former key back from your backup.");
     await appendEntry(tx, WORKSHOP_CHAIN, SYSTEM, "key.introduced", { type: "key", id: WORKSHOP_CHAIN }, { keyId, purpose: "log", publicKeyPem });
   });

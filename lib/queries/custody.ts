@@ -5,7 +5,8 @@ import { type Actor, type Stage, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { allow, notFound } from "@/lib/commands/refuse";
 import type { CustodyCheckView, CustodyEntryView, PersonView } from "@/lib/views";
 import { CustodyEntry, CustodyHead, Drive, type Transaction } from "@/models";
-import { verifySignature } from "@/storage";
+import { logKey, verifySignature } from "@/storage";
+import { keyring } from "./keyring";
 
 interface Body {
   at: string;
@@ -38,19 +39,10 @@ function placeOf({ facts, subject }: Body): string {
   return subject.type.charAt(0).toUpperCase() + subject.type.slice(1);
 }
 
-/** PEM of every log key by its id, as the workshop chain introduces them. */
+/** PEM of every key that the log may be signed with, by its id. */
 export async function logKeys(tx?: Transaction): Promise<Map<string, string>> {
   const rows = await CustodyEntry.findAll({ where: { chainId: WORKSHOP_CHAIN, action: "key.introduced" }, order: ["seq"], transaction: tx });
-  const keys = new Map<string, string>();
-  for (const row of rows) {
-    try {
-      const { facts } = JSON.parse(row.body.toString("utf8")) as { facts: { keyId: string; purpose: string; publicKeyPem: string } };
-      if (facts.purpose === "log") keys.set(facts.keyId, facts.publicKeyPem);
-    } catch {
-      // a damaged entry introduces nothing; the chain's check names it
-    }
-  }
-  return keys;
+  return keyring(rows, logKey().publicKeyPem).keys;
 }
 
 /** Checks one chain: links, numbers, hashes, signatures, head. It reports and never repairs. */
@@ -67,6 +59,7 @@ export async function checkCustody(chain: string, tx?: Transaction): Promise<Cus
         const pem = keys.get(keyId);
         return pem !== undefined && verifySignature(pem, bytes, signature);
       },
+      knows: (keyId) => keys.has(keyId),
     },
     chain,
   );

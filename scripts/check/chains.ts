@@ -4,7 +4,7 @@ import { checkChain, type ChainProblem } from "@/lib/core/custody";
 import { WORKSHOP_CHAIN } from "@/lib/core/words";
 import { CustodyEntry, CustodyHead } from "@/models";
 import { verifySignature } from "@/storage";
-import { keyring, type Keyring } from "./keys";
+import { keyring, type Keyring } from "@/lib/queries/keyring";
 import type { Places } from "./places";
 import type { Damage, StoreReport } from "./report";
 

@@ -1,7 +1,7 @@
 import { generateKeyPairSync, sign } from "node:crypto";
 import { describe, expect, it } from "vitest";
 import { signedBytes } from "@/lib/core/custody";
-import { keyring, type KeyEntry } from "@/scripts/check/keys";
+import { keyring, type KeyEntry } from "@/lib/queries/keyring";
 import { keyIdOf } from "@/storage";
 
 function newKey() {
