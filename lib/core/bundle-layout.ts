@@ -119,7 +119,7 @@ HOW TO CHECK IT
 It needs a POSIX shell, sha256sum, OpenSSL 3 and standard tools, and ends with 0 when
 all is in order, 1 when something is not, 2 when it could not check. Take the
 fingerprint from somewhere else than this bundle: the mail with the summary has it.
-By hand:
+A forger could change check.sh as well; by hand, without it:
   sha256sum -c manifest-sha256.txt       each file of the case is as it was packed
   sha256sum -c tagmanifest-sha256.txt    so are the lists and this page
   openssl pkeyutl -verify -pubin -inkey data/seal/log-key.pem -rawin \\

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { bagInfoTxt, bagitTxt, bagName, imagePath, manifestLine, readmeTxt, safeName } from "@/lib/core/bundle-layout";
+import { bagInfoTxt, bagitTxt, bagName, boardLabel, chipFolder, custodyPath, imagePath, manifestLine, readmeTxt, safeName, signatureLine } from "@/lib/core/bundle-layout";
 import { donorFit } from "@/lib/core/donor-fit";
 import { ascii, sha256Hex } from "./stream";
 
@@ -18,6 +18,10 @@ describe("the texts of a bag", () => {
   it("names files by what they are", () => {
     expect(bagName("26-0042")).toBe("twinread-26-0042");
     expect(imagePath({ drive: 1, board: "original", designator: "U3", stage: "before", number: 1 })).toBe("data/drives/1/original-U3/before-1.bin");
+    expect(chipFolder({ drive: 2, board: boardLabel("donor", 3), designator: "U3" })).toBe("data/drives/2/donor-3-U3");
+    expect(boardLabel("original", 1)).toBe("original");
+    expect(custodyPath(2)).toBe("data/drives/2/custody");
+    expect(signatureLine("ab", "AA==")).toBe("ab AA==\n");
   });
   it.each(["../../etc", "U3/..", "a\\b", "U 3", "U\n3", ".", "", "Ü3", "U_3", "C:"])("lets the designator %j out of no folder", (designator) => {
     const path = imagePath({ drive: 1, board: "donor", designator, stage: "after", number: 2 });

@@ -6,8 +6,11 @@ import path from "node:path";
 import { pipeline } from "node:stream/promises";
 import { promisify } from "node:util";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { POST } from "@/app/api/cases/[id]/bundle/route";
 import { approveImage } from "@/lib/commands/approve-image";
 import { startBundle } from "@/lib/commands/bundle-plan";
+import { createBenchToken } from "@/lib/commands/create-bench-token";
+import { createCase } from "@/lib/commands/create-case";
 import { makeBundle, writeBundle } from "@/lib/commands/make-bundle";
 import { recordDrive } from "@/lib/commands/record-drive";
 import { recordTransfer } from "@/lib/commands/record-transfer";
@@ -135,6 +138,20 @@ describe("a case bundle", () => {
     expect(readFileSync(path.join(later, log), "utf8").startsWith(readFileSync(path.join(bag, log), "utf8"))).toBe(true);
     const images = (dir: string) => readFileSync(path.join(dir, "manifest-sha256.txt"), "utf8").split("\n").filter((line) => line.endsWith(".bin"));
     expect(images(later)).toEqual(images(bag));
+  });
+
+  it("comes from its route as a file with our name, sent to a bench token's owner", async () => {
+    const { token } = await createBenchToken(lead, { name: "Bench 3", userId: lead.id });
+    const call = (id: string) => POST(new Request(`http://127.0.0.1/api/cases/${id}/bundle`, { method: "POST", headers: { authorization: `Bearer ${token}` } }), { params: Promise.resolve({ id }) });
+    const response = await call(chip.caseId);
+    expect(response.headers.get("content-type")).toBe("application/zip");
+    expect(response.headers.get("content-disposition")).toBe(`attachment; filename="twinread-${chip.ref}.zip"`);
+    const file = path.join(work, "route.zip");
+    writeFileSync(file, Buffer.from(await response.arrayBuffer()));
+    expect(check(await unpack(file)).status).toBe(0);
+    expect((await call(randomUUID())).status).toBe(404);
+    const empty = await createCase(lead, { customer: { name: "Lindmoor", email: "desk@lindmoor.example" }, damage: "None yet" });
+    expect((await call(empty.id)).status).toBe(409);
   });
 
   it("is for leads and auditors", async () => {
