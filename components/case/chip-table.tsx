@@ -26,12 +26,12 @@ function Row({ chip, drive, policy, corrects }: { chip: ChipSummary; drive: Driv
       <th scope="row">{original ? <DesignatorPlate designator={chip.designator} board="original" /> : <span className="font-normal text-ink-3">not paired</span>}</th>
       <td>{chipKind(chip)}{isPowerOfTwo(chip.sizeBytes) ? null : <span className="block text-t2 text-ink-2">size is not a power of two</span>}{chip.supplyMillivolts === null ? <FindingLine kind="caution">Look the supply up first</FindingLine> : null}</td>
       <td className="whitespace-nowrap" data-l="Reads">{original ? readsWords(chip, policy) : "own content only"}</td>
-      <td><StripThumb thumbnail={chip.thumbnail} /></td>
+      <td className="l-row"><StripThumb thumbnail={chip.thumbnail} /></td>
       <td className="text-center phone:text-left">{original && chip.needsTransfer ? <MiniRoute state={chip.state.state} /> : <span className="text-ink-3">{original ? "kept for reference" : ""}</span>}</td>
       <td data-l="Donor">{donor ? <DesignatorPlate designator={donor.designator} board="donor" /> : <span className="text-ink-3">not paired</span>}</td>
       <td className="whitespace-nowrap"><OwnContent donor={donor} /></td>
       <td className="l-full"><b className={mark === "block" ? "text-block" : ""}>{chip.state.label}.</b> {chip.state.sentence}</td>
-      <td className="text-right whitespace-nowrap">
+      <td className="l-row text-right whitespace-nowrap phone:flex phone:items-center phone:gap-4 phone:text-left">
         <ButtonLink size="small" href={`/chips/${chip.id}`}>Open {chip.designator}</ButtonLink>
         {corrects ? <span className="no-print block"><CorrectChip chip={chip} originals={originalOf(drive)?.chips ?? []} /></span> : null}
       </td>

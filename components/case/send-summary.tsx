@@ -34,7 +34,7 @@ export function SendSummary({ view, policy, lead }: { view: CaseView; policy: Po
         <FormDialog onClose={() => setOpen(false)} title="Send the verification summary" action="Send it" busy={busy} refusal={refusal} onSubmit={() => void submit()}>
           <dl className="grid grid-cols-[120px_minmax(0,1fr)] gap-x-4 gap-y-2 slim:grid-cols-1">
             <dt className="text-ink-2">To</dt><dd className="[overflow-wrap:anywhere]">{view.customer.name}, <b>{view.customer.email}</b></dd>
-            <dt className="text-ink-2">The mail holds</dt><dd>a private link, nothing of the images</dd>
+            <dt className="text-ink-2">The mail holds</dt><dd>a private link and the hash of each drive’s latest log entry, nothing of the images</dd>
             <dt className="text-ink-2">The page shows</dt><dd>{listText(chips)}: state, digests, how many reads agreed, who approved and when, and what this does not promise</dd>
             <dt className="text-ink-2">The link lasts</dt><dd>{policy.shareDays} days, or until a lead withdraws it</dd>
           </dl>

@@ -17,7 +17,7 @@ export function ChainCheck({ check, subject }: { check: CustodyCheckView; subjec
             <li key={i}>
               <FindingLine kind="block">
                 {finding.seq !== null ? <a href={`#entry-${finding.seq}`}>{problemWords(finding)}</a> : problemWords(finding)}
-                {finding.expected ? <span className="block text-t2 text-ink-2 [overflow-wrap:anywhere]">Expected <code>{finding.expected}</code>{finding.found ? <>, found <code>{finding.found}</code></> : null}</span> : null}
+                {finding.expected && finding.problem !== "tail-missing" ? <span className="block text-t2 text-ink-2 [overflow-wrap:anywhere]">Expected <code>{finding.expected}</code>{finding.found ? <>, found <code>{finding.found}</code></> : null}</span> : null}
               </FindingLine>
             </li>
           ))}

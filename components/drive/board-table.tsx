@@ -34,7 +34,7 @@ export function BoardTable({ boards, original, corrects, isLead }: { boards: rea
                 <td data-l="Marking" className="font-mono">{chip.marking ?? <span className="text-ink-3">none</span>}</td>
                 <td data-l="Holds">{chip.holds ?? <span className="text-ink-3">not said</span>}{board.role === "original" && !chip.needsTransfer ? ", kept for reference" : ""}</td>
                 <td data-l="Pair">{chip.pair ? <><DesignatorPlate designator={chip.pair.designator} board={board.role === "original" ? "donor" : "original"} /> <span className="font-mono text-t2">{chip.pair.boardNumber}</span></> : <span className="text-ink-3">not paired</span>}</td>
-                <td className="text-right whitespace-nowrap">
+                <td className="l-row text-right whitespace-nowrap phone:text-left">
                   <span className="inline-flex items-center gap-3">
                     {corrects ? <CorrectChip chip={chip} originals={original?.chips ?? []} /> : null}
                     <ButtonLink size="small" href={`/chips/${chip.id}`}>Open {chip.designator}</ButtonLink>
