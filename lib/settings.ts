@@ -187,7 +187,7 @@ export function readSettings(variables: Variables, root: string, whole: boolean)
     mailPort,
     databaseUrl: read.DATABASE_URL ?? null,
     databaseAdminUrl: read.DATABASE_ADMIN_URL ?? null,
-    workshop: read.WORKSHOP_NAME ?? (read.DEMO ? "Alder Lane Workshop" : "Twinread"),
+    workshop: read.WORKSHOP_NAME ?? (read.DEMO ? "Alder Lane Drive Bench" : "Twinread"),
     timeZone: read.WORKSHOP_TIME_ZONE,
     smtp: smtpOf(read, mailPort),
   };
