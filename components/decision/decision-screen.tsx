@@ -5,6 +5,7 @@ import { useRouter } from "next/navigation";
 import { useMemo, useState } from "react";
 import { useForm, useWatch } from "react-hook-form";
 import { ReasonDialog } from "@/components/chip/reason-dialog";
+import { Note } from "@/components/ui/note";
 import { Section } from "@/components/ui/section";
 import { useSay } from "@/components/ui/toast";
 import { REASON_CHARACTERS } from "@/lib/core/approval";
@@ -63,6 +64,8 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
     router.refresh();
   });
 
+  // stays whatever the refreshed sheet shows, also when another approval came first
+  const refused = refusal ? <Note kind="block" role="alert" title="You did not approve the image." className="mb-4">{refusal}</Note> : null;
   const waiting = chip.request && !chip.request.sentBack;
   return (
     <>
@@ -74,13 +77,14 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
         <WhereItGoes view={view} timeZone={session.timeZone} />
       </Section>
       {chip.approval ? (
-        <Section strong title="Signed" note="Stands in the custody log."><Standing chip={chip} approval={chip.approval} session={session} /></Section>
+        <Section strong title="Signed" note="Stands in the custody log.">{refused}<Standing chip={chip} approval={chip.approval} session={session} /></Section>
       ) : (
         <>
           <Section title="Before you sign"><BeforeYouSign chip={chip} /></Section>
           <Section strong title="Sign" note="Goes into the custody log, signed.">
+            {refused}
             {signs
-              ? <Sign chip={chip} user={user} open={open} matches={matches} busy={isSubmitting} refusal={refusal} register={register} errors={errors} onSubmit={submit} onSendBack={waiting && may(user, "approval.send-back") ? () => setSendingBack(true) : null} />
+              ? <Sign chip={chip} user={user} open={open} matches={matches} busy={isSubmitting} register={register} errors={errors} onSubmit={submit} onSendBack={waiting && may(user, "approval.send-back") ? () => setSendingBack(true) : null} />
               : <WhoMaySign chip={chip} user={user} />}
           </Section>
         </>

@@ -1,5 +1,6 @@
 import type { ReactNode } from "react";
 import { DigestInFull } from "@/components/ui/digest";
+import { boardName } from "@/components/drive/drive-words";
 import { Empty } from "@/components/ui/empty";
 import { sizeText } from "@/lib/core/quantity";
 import type { DecisionView } from "@/lib/views";
@@ -20,11 +21,11 @@ export function ImageFacts({ view: { chip, image } }: { view: DecisionView }) {
   return (
     <dl className="grid grid-cols-[repeat(4,auto)] justify-start gap-x-14 gap-y-2.5 narrow:grid-cols-[repeat(2,auto)] phone:gap-x-6">
       <Fact term="SHA-256" className="narrow:col-span-full">
-        <DigestInFull sha256={image.sha256} className="max-w-[23em] !text-[1.125rem] leading-[1.625rem] !font-semibold phone:max-w-none phone:!text-t4" />
+        <DigestInFull sha256={image.sha256} className="max-w-[25em] !text-[1.125rem] leading-[1.625rem] !font-semibold phone:max-w-none phone:!text-t4" />
       </Fact>
       <Fact term="CRC-32" mono>{image.crc32.toUpperCase()}</Fact>
       <Fact term="Size">{sizeText(image.sizeBytes)}{whole}</Fact>
-      <Fact term="From" mono>{chip.board.boardNumber}{chip.board.revision ? ` rev ${chip.board.revision}` : ""}</Fact>
+      <Fact term="From" mono>{boardName(chip.board)}</Fact>
     </dl>
   );
 }

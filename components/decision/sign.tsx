@@ -5,21 +5,19 @@ import type { FieldErrors, UseFormRegister } from "react-hook-form";
 import { Button, Buttons } from "@/components/ui/button";
 import { Input } from "@/components/ui/input";
 import { Mark } from "@/components/ui/mark";
-import { Note } from "@/components/ui/note";
 import { TextArea } from "@/components/ui/text-area";
 import type { ChipView, SessionView } from "@/lib/views";
 import type { DecisionForm } from "./decision-form";
 import { WhoMaySign } from "./who-may-sign";
 
 /** Statement, typed digits, signature. The button waits, and says for what. */
-export function Sign({ chip, user, open, matches, busy, refusal, register, errors, onSubmit, onSendBack }: {
+export function Sign({ chip, user, open, matches, busy, register, errors, onSubmit, onSendBack }: {
   chip: ChipView;
   user: SessionView["user"];
   /** what is still missing, in words */
   open: string | null;
   matches: boolean;
   busy: boolean;
-  refusal: string | null;
   register: UseFormRegister<DecisionForm>;
   errors: FieldErrors<DecisionForm>;
   onSubmit(event: FormEvent): void;
@@ -32,8 +30,7 @@ export function Sign({ chip, user, open, matches, busy, refusal, register, error
         <TextArea label="Statement" hint="Why you clear this image. The auditor reads this, the customer doesn’t." error={errors.statement?.message} {...register("statement")} />
       </div>
       <Input mono label="Last 8 digits of the SHA-256, typed from above" autoComplete="off" spellCheck={false} maxLength={16} error={matches ? undefined : errors.last8?.message}
-        hint={matches ? <span className="text-green"><Mark kind="done" className="[--hole:var(--paper)]" /> Matches the image on this sheet.</span> : "Typed, not pasted: so that an eye has been on the digest."} {...register("last8")} />
-      {refusal ? <Note kind="block" role="alert" title="The image was not approved." className="col-span-full">{refusal}</Note> : null}
+        hint={matches ? <span className="text-green"><Mark kind="done" className="[--hole:var(--paper)]" /> Matches the image on this sheet.</span> : "Typed by hand, so that an eye has been on the digest."} {...register("last8")} />
       <Buttons className="col-span-full pt-1">
         <Button type="submit" variant="lead" reason={open} disabled={busy}>Approve for writing to donor {chip.pair?.designator ?? ""}</Button>
         {onSendBack ? <Button variant="stop" onClick={onSendBack}>Send back…</Button> : null}

@@ -2,6 +2,7 @@
 
 import Link from "next/link";
 import { useState } from "react";
+import { boardName } from "@/components/drive/drive-words";
 import { cellWords } from "@/components/strip/cell-words";
 import { nextDifference, StripGrid } from "@/components/strip/strip-grid";
 import { Digest } from "@/components/ui/digest";
@@ -56,7 +57,7 @@ export function DonorFacts({ view: { chip, donor } }: { view: DecisionView }) {
   const facts = [
     { term: "Size and bus", value: `${donor.chip.sizeBytes.toLocaleString("en-GB")} bytes, ${donor.chip.bus.toUpperCase()}`, same: donor.chip.sizeBytes === chip.sizeBytes && donor.chip.bus === chip.bus },
     { term: "Supply", value: supply(donor.chip.supplyMillivolts), same: donor.chip.supplyMillivolts !== null && donor.chip.supplyMillivolts === chip.supplyMillivolts },
-    { term: "Board", value: `${donor.board.boardNumber}${donor.board.revision ? ` rev ${donor.board.revision}` : ""}`, same: donor.board.fit?.verdict === "fits" },
+    { term: "Board", value: boardName(donor.board), same: donor.board.fit?.verdict === "fits" },
   ];
   return (
     <dl className="mt-3.5 grid gap-2 mid:grid-flow-col mid:justify-start mid:gap-x-8 phone:grid-flow-row">

@@ -46,7 +46,7 @@ export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView
         </section>
       </div>
       <footer className="sheet-foot">
-        <p><b>What the words mean.</b> A <i>read</i> is the whole content of a chip, saved as a file. A <i>seating</i> is one time our clip was put on the chip. A <i>read-back</i> is a read of the donor chip after the write. <i>SHA-256</i> and <i>CRC-32</i> are check numbers computed from the content: if one bit differed, they would be others.</p>
+        <p><b>What the words mean.</b> A “read” is the whole content of a chip, saved as a file. A “seating” is one time our clip was put on the chip. A “read-back” is a read of the donor chip after the write. SHA-256 and CRC-32 are check numbers computed from the content: if one bit differed, they would be others.</p>
         <p><b>Check it yourself.</b> This page by its private link must show these numbers. If somebody reads a donor chip before the drive’s first start, the SHA-256 of that file must equal the one above; drives may rewrite their chips afterwards.</p>
         <p className="font-mono font-semibold [overflow-wrap:anywhere]">{link}</p>
         <p className="text-ink-2">Whoever holds the link sees this page until {dayYearText(summary.expiresAt, timeZone)}. {summary.drives.map((d) => <span key={d.letter}>Entry {d.head.seq} of the custody log{summary.drives.length > 1 ? ` of Drive ${d.letter}` : ""}: <code className="[overflow-wrap:anywhere]">{d.head.hash}</code> </span>)}</p>
