@@ -1,5 +1,6 @@
 import type { ReactNode } from "react";
 import { BoardPanel } from "@/components/shell/board-panel";
+import { boardName } from "@/components/drive/drive-words";
 import { Crumbs } from "@/components/ui/crumbs";
 import { Mark } from "@/components/ui/mark";
 import { dueText } from "@/components/ui/times";
@@ -58,7 +59,7 @@ export function ChipHead({ chip, timeZone, today }: { chip: ChipView; timeZone: 
           <Fact term="Size and addresses">{sizeText(chip.sizeBytes)}, <span className="font-mono whitespace-nowrap">{rangeText(0, chip.sizeBytes, chip.sizeBytes)}</span></Fact>
           <Fact term="Top mark" mono>{chip.marking ?? "not recorded"}</Fact>
           <Fact term="Drive" mono>{chip.drive.partNumber ?? chip.drive.model ?? chip.drive.serial ?? "not recorded"}</Fact>
-          <Fact term="Board" mono>{chip.board.boardNumber}{chip.board.revision ? ` rev ${chip.board.revision}` : ""}</Fact>
+          <Fact term="Board" mono>{boardName(chip.board)}</Fact>
           <Fact term="Customer">{chip.case.customerName}</Fact>
           <Fact term={original ? "Donor" : "Original"} mono={Boolean(chip.pair)}>{chip.pair ? `${chip.pair.boardNumber} ${chip.pair.designator}` : "not paired yet"}</Fact>
         </dl>
