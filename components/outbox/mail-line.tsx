@@ -3,6 +3,7 @@
 import { useRouter } from "next/navigation";
 import { useState } from "react";
 import { Button, Buttons } from "@/components/ui/button";
+import { Icon } from "@/components/ui/icon";
 import { Mark, type MarkKind } from "@/components/ui/mark";
 import { Note } from "@/components/ui/note";
 import { momentText } from "@/components/ui/times";
@@ -37,17 +38,17 @@ export function MailLine({ mail, timeZone }: { mail: MailView; timeZone: string 
   }
   return (
     <li className="border-b border-rule py-2.5">
-      <details>
+      <details className="group">
         <summary className="grid cursor-pointer grid-cols-[minmax(0,2fr)_minmax(0,3fr)_180px_140px] items-baseline gap-x-4 gap-y-0.5 phone:grid-cols-[minmax(0,1fr)]">
           <b className="[overflow-wrap:anywhere]">{mail.to}</b>
           <span className="[overflow-wrap:anywhere]">{mail.subject}</span>
           <span className={mail.state === "dead" ? "text-block" : ""}><Mark kind={mark} className="[--hole:var(--paper)]" /> {word}{mail.attempts > 1 || mail.state === "dead" ? `, ${mail.attempts === 1 ? "1 try" : `${mail.attempts} tries`}` : ""}</span>
-          <span className="text-ink-2">{momentText(mail.sentAt ?? mail.queuedAt, timeZone)}</span>
+          <span className="text-ink-2">{momentText(mail.sentAt ?? mail.queuedAt, timeZone)}<span className="pl-2 text-green"><Icon name="menu" label="Read the text" className="group-open:rotate-180" /></span></span>
         </summary>
         <div className="grid gap-2 pt-2.5">
           {mail.lastError ? <Note kind={mail.state === "dead" ? "block" : "caution"} title="What the mail server said last:">{mail.lastError}</Note> : null}
           <p className="text-t2 text-ink-2">Written {momentText(mail.queuedAt, timeZone)}{mail.sentAt ? `, sent ${momentText(mail.sentAt, timeZone)}` : ""}. Secret links are masked here.</p>
-          <pre className="max-w-[80ch] bg-sheet px-4 py-3 font-mono text-t2 whitespace-pre-wrap [overflow-wrap:anywhere]">{mail.text}</pre>
+          <pre className="max-w-[92ch] bg-sheet px-4 py-3 font-mono text-t2 whitespace-pre-wrap [overflow-wrap:anywhere]">{mail.text}</pre>
         </div>
       </details>
       {refusal ? <Note kind="block" role="alert" title="It was not put back." className="mt-2">{refusal}</Note> : null}
