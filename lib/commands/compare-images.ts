@@ -21,6 +21,16 @@ export async function compareImages(a: ImageRef, b: ImageRef): Promise<Compariso
   return seenFrom(made, swapped);
 }
 
+/** The same, or null when one of the stored images is gone: a lost image must not keep new reads out. */
+export async function compareIfStored(a: ImageRef, b: ImageRef): Promise<Comparison | null> {
+  try {
+    return await compareImages(a, b);
+  } catch (error) {
+    if ((error as NodeJS.ErrnoException).code === "ENOENT") return null;
+    throw error;
+  }
+}
+
 async function run(a: ImageRef, b: ImageRef): Promise<Comparison> {
   const comparison = createComparison(a.sizeBytes, b.sizeBytes);
   const chunksB = imageChunks(b.sha256);

@@ -4,7 +4,7 @@ import type { ImageFacts } from "@/lib/core/inspect";
 import type { Finding } from "@/lib/core/words";
 import { Approval, Image, Read, type Transaction, Transfer } from "@/models";
 import { imageChunks } from "@/storage";
-import { compareImages } from "./compare-images";
+import { compareIfStored } from "./compare-images";
 import { breathe, inTurn } from "./in-turn";
 import { type ChipPlace, placeOfChip } from "./place";
 
@@ -18,7 +18,7 @@ export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: R
   const approvedSha256 = approval.sha256.toString("hex");
   const equal = read.sha256.equals(approval.sha256);
   const old = saved.find((r) => r.sizeBytes === approved.sizeBytes);
-  const comparison = equal ? null : await compareImages({ sha256: approvedSha256, sizeBytes: approved.sizeBytes }, { sha256, sizeBytes: read.sizeBytes });
+  const comparison = equal ? null : await compareIfStored({ sha256: approvedSha256, sizeBytes: approved.sizeBytes }, { sha256, sizeBytes: read.sizeBytes });
   return judgeReadBack({
     facts, read: { sha256, sizeBytes: read.sizeBytes }, approved: { sha256: approvedSha256, sizeBytes: approved.sizeBytes },
     donorSaved: saved.map((r) => r.sha256.toString("hex")),
@@ -43,6 +43,9 @@ function equalsAnd(approved: string, old: string, readBack: string): Promise<boo
         await breathe();
       }
       return match.matches();
+    } catch (error) {
+      if ((error as NodeJS.ErrnoException).code === "ENOENT") return false;
+      throw error;
     } finally {
       await olds.return(undefined);
       await backs.return(undefined);

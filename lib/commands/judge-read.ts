@@ -2,11 +2,14 @@ import { Op } from "sequelize";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
 import type { JudgeInput } from "@/lib/core/findings";
 import { judgeRead } from "@/lib/core/findings";
+import { countOf } from "@/lib/core/quantity";
+import { placeText } from "@/lib/core/strip";
 import { type Finding, readName, SYSTEM } from "@/lib/core/words";
 import { currentPolicy } from "@/lib/queries/policy";
 import { Image, inTransaction, Read, type Transaction } from "@/models";
 import { imageChunks } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
+import { compareIfStored } from "./compare-images";
 import { judgeReadBackOf } from "./judge-read-back";
 import { type ChipPlace, driveLetter, placeOfChip } from "./place";
 
@@ -66,14 +69,26 @@ export async function judge(tx: Transaction, place: ChipPlace, read: Read, fresh
   if (!fresh && text === read.findings && read.engineVersion === ENGINE_VERSION) return findings;
   await read.update({ findings: text, engineVersion: ENGINE_VERSION }, { transaction: tx });
   const others = await Read.findAll({ where: { chipId: place.chip.id, stage: read.stage, counted: true, id: { [Op.ne]: read.id }, transferId: read.transferId }, order: ["number"], transaction: tx });
-  const names = (equal: boolean) => others.filter((r) => r.sha256.equals(read.sha256) === equal).map((r) => readName(r.stage, r.number));
+  const equal = others.filter((r) => r.sha256.equals(read.sha256));
   await appendEntry(tx, place.drive.id, SYSTEM, "read.judged", { type: "read", id: read.id }, {
     read: { id: read.id, stage: read.stage, number: read.number }, chip: { id: place.chip.id, designator: place.chip.designator },
     sha256: read.sha256.toString("hex"), engineVersion: ENGINE_VERSION,
     findings: findings.map(({ code, severity, message, measured, threshold }) => ({ code, severity, message, measured, threshold })),
-    equalTo: names(true), differsFrom: names(false),
+    equalTo: equal.map((r) => readName(r.stage, r.number)),
+    differsFrom: await differences(place, read, others.filter((r) => !equal.includes(r))),
   });
   return findings;
+}
+
+/** "Read 1 in 214 bytes, all in 0x1F000–0x1FFFF": the first read of each image that differs. */
+async function differences(place: ChipPlace, read: Read, others: Read[]): Promise<string[]> {
+  const distinct = others.filter((r, i) => others.findIndex((o) => o.sha256.equals(r.sha256)) === i);
+  const ref = (r: Read) => ({ sha256: r.sha256.toString("hex"), sizeBytes: r.sizeBytes });
+  return Promise.all(distinct.map(async (other) => {
+    const name = readName(other.stage, other.number);
+    const c = await compareIfStored(ref(other), ref(read));
+    return !c || c.first === null || c.last === null ? name : `${name} in ${countOf(c.differingBytes, "byte")}, ${placeText(c.first, c.last, place.chip.sizeBytes)}`;
+  }));
 }
 
 /** Judges every read of a chip afresh, after a corrected size, a changed pair or the like. */

@@ -15,7 +15,7 @@ import { Approval, inTransaction, Read, type Transaction, Transfer } from "@/mod
 import { type Arrived, keep } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { checkStage } from "./check-stage";
-import { compareImages } from "./compare-images";
+import { compareIfStored } from "./compare-images";
 import { inspectImage, recordImage } from "./inspect-image";
 import { judge, judgeSameImages } from "./judge-read";
 import { type ChipPlace, placeOfChip } from "./place";
@@ -94,7 +94,7 @@ async function compareAhead(chipId: string, fields: ReadFields, files: UploadedF
   const known = new Map(rows.map((r) => [r.sha256.toString("hex"), r.sizeBytes]));
   for (const { arrived } of files) {
     for (const [sha256, sizeBytes] of known) {
-      if (sha256 !== arrived.sha256) await compareImages({ sha256, sizeBytes }, arrived);
+      if (sha256 !== arrived.sha256) await compareIfStored({ sha256, sizeBytes }, arrived);
     }
     known.set(arrived.sha256, arrived.sizeBytes);
   }

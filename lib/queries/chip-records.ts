@@ -37,7 +37,8 @@ export async function chipRecords(driveIds: string[], tx?: Transaction): Promise
   const boards = await Board.findAll({ where: { driveId: driveIds }, order: ["createdAt"], ...at });
   const cases = await Case.findAll({ where: { id: drives.map((d) => d.caseId) }, ...at });
   const customers = await Customer.findAll({ where: { id: cases.map((c) => c.customerId) }, ...at });
-  const chips = await Chip.findAll({ where: { boardId: boards.map((b) => b.id) }, order: ["designator"], ...at });
+  const chips = await Chip.findAll({ where: { boardId: boards.map((b) => b.id) }, ...at });
+  chips.sort((a, b) => a.designator.localeCompare(b.designator, "en", { numeric: true }));
   const ids = chips.map((c) => c.id);
   const reads = await Read.findAll({ where: { chipId: ids }, order: ["stage", "number"], ...at });
   const approvals = await Approval.findAll({ where: { chipId: ids }, order: ["givenAt"], ...at });

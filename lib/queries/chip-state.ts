@@ -1,4 +1,4 @@
-import { compareImages } from "@/lib/commands/compare-images";
+import { compareIfStored } from "@/lib/commands/compare-images";
 import { agreement, deriveChipState, oddOneOut, type StateFacts } from "@/lib/core/chip-state";
 import { diagnose } from "@/lib/core/diagnosis";
 import { type Policy, readName } from "@/lib/core/words";
@@ -21,7 +21,8 @@ export async function worstPair(record: ChipRecord): Promise<StateFacts["worst"]
   const other = reads.find((r) => r.sha256 !== odd.sha256)!;
   const [rowOdd, rowOther] = [odd, other].map((r) => counted.find((row) => row.id === r.id)!);
   if (record.unsound.has(odd.sha256) || record.unsound.has(other.sha256)) return null;
-  const c = await compareImages({ sha256: other.sha256, sizeBytes: rowOther.sizeBytes }, { sha256: odd.sha256, sizeBytes: rowOdd.sizeBytes });
+  const c = await compareIfStored({ sha256: other.sha256, sizeBytes: rowOther.sizeBytes }, { sha256: odd.sha256, sizeBytes: rowOdd.sizeBytes });
+  if (!c) return null;
   const diagnosis = diagnose(c, { nameA: readName("before", other.number), nameB: readName("before", odd.number), sizeBytes: record.chip.sizeBytes });
   return {
     oddRead: odd.number, otherRead: other.number, differingBytes: c.differingBytes, first: c.first ?? 0, last: c.last ?? 0,

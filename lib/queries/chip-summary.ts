@@ -1,4 +1,4 @@
-import { compareImages } from "@/lib/commands/compare-images";
+import { compareIfStored } from "@/lib/commands/compare-images";
 import { agreement } from "@/lib/core/chip-state";
 import { CELLS, reduceCells } from "@/lib/core/strip";
 import { readName, seatingLetter } from "@/lib/core/words";
@@ -33,7 +33,8 @@ async function thumbnail(reads: Read[], unsound: Set<string>, sizeBytes: number)
   const length = Math.max(sizeBytes, ...distinct.map((d) => d.sizeBytes));
   const images = await Promise.all(distinct.map(async (d) => reduceCells(await cellsOf(d.sha256, d.sizeBytes, 0, length), 64)));
   if (distinct.length < 2) return { images, lane: null };
-  const { cells } = await compareImages(distinct[0], distinct[1]);
+  const cells = (await compareIfStored(distinct[0], distinct[1]))?.cells;
+  if (!cells) return { images, lane: null };
   const lane = Array.from({ length: 64 }, (_, i) => cells.slice((i * CELLS) / 64, ((i + 1) * CELLS) / 64).reduce((a, b) => a + b, 0));
   return { images, lane };
 }

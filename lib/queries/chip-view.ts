@@ -1,4 +1,4 @@
-import { compareImages } from "@/lib/commands/compare-images";
+import { compareIfStored } from "@/lib/commands/compare-images";
 import { allow } from "@/lib/commands/refuse";
 import { driveLetter, placeOfChip } from "@/lib/commands/place";
 import { chainIsClean } from "@/lib/commands/chain-gate";
@@ -83,7 +83,7 @@ async function matrixOf(reads: Read[], unsound: Set<string>): Promise<MatrixView
       if (i === j) row.push(null);
       else if (a.sha256 === b.sha256) row.push(0);
       else if (a.sizeBytes !== b.sizeBytes || unsound.has(a.sha256) || unsound.has(b.sha256)) row.push("other-size");
-      else row.push((await compareImages(a, b)).differingBytes);
+      else row.push((await compareIfStored(a, b))?.differingBytes ?? "other-size");
     }
     cells.push(row);
   }

@@ -1,4 +1,4 @@
-import { compareImages } from "@/lib/commands/compare-images";
+import { compareIfStored } from "@/lib/commands/compare-images";
 import { breathe, inTurn } from "@/lib/commands/in-turn";
 import { createWindowLane } from "@/lib/core/compare";
 import { CELLS, createStrip, loupeWindow } from "@/lib/core/strip";
@@ -34,11 +34,23 @@ export function cellsOf(sha256: string, sizeBytes: number, offset: number, lengt
     const strip = createStrip({ offset, length, cells: CELLS });
     const end = Math.min(offset + length, sizeBytes);
     for (let at = offset; at < end; at += STEP) {
-      strip.push(await imageWindow(sha256, at, Math.min(STEP, end - at)), at);
+      const bytes = await stored(sha256, at, Math.min(STEP, end - at));
+      if (!bytes) break;
+      strip.push(bytes, at);
       await breathe();
     }
     return strip.finish();
   }));
+}
+
+/** A window of an image, or null when the stored image is gone: its cells then show as not read. */
+async function stored(sha256: string, offset: number, length: number): Promise<Buffer | null> {
+  try {
+    return await imageWindow(sha256, offset, length);
+  } catch (error) {
+    if ((error as NodeJS.ErrnoException).code === "ENOENT") return null;
+    throw error;
+  }
 }
 
 function laneOf(a: StripImage, b: StripImage, offset: number, length: number): Promise<number[]> {
@@ -47,7 +59,9 @@ function laneOf(a: StripImage, b: StripImage, offset: number, length: number): P
     const end = Math.min(offset + length, Math.max(a.sizeBytes, b.sizeBytes));
     for (let at = offset; at < end; at += STEP) {
       const step = Math.min(STEP, end - at);
-      lane.push(await imageWindow(a.sha256, at, step), await imageWindow(b.sha256, at, step), at);
+      const [bytesA, bytesB] = [await stored(a.sha256, at, step), await stored(b.sha256, at, step)];
+      if (!bytesA || !bytesB) break;
+      lane.push(bytesA, bytesB, at);
       await breathe();
     }
     return lane.finish();
@@ -67,7 +81,7 @@ export async function stripView(images: StripImage[], offset: number, length: nu
       continue;
     }
     const cells = await laneOf(image, next, offset, length);
-    lanes.push({ differingBytes: (await compareImages(image, next)).differingBytes, cells });
+    lanes.push({ differingBytes: (await compareIfStored(image, next))?.differingBytes ?? 0, cells });
   }
   return { offset, cellBytes: length / CELLS, rows, lanes };
 }
@@ -80,8 +94,8 @@ export async function stripStack(images: StripImage[], chipSizeBytes: number): P
   let last: number | null = null;
   for (let i = 0; i + 1 < images.length; i += 1) {
     if (images[i].sha256 === images[i + 1].sha256) continue;
-    const c = await compareImages(images[i], images[i + 1]);
-    if (c.first === null || c.last === null) continue;
+    const c = await compareIfStored(images[i], images[i + 1]);
+    if (!c || c.first === null || c.last === null) continue;
     first = Math.min(first ?? c.first, c.first);
     last = Math.max(last ?? c.last, c.last);
   }
