@@ -1,6 +1,6 @@
 import { AddChip } from "@/components/drive/add-chip";
 import { CorrectBoard } from "@/components/drive/correct-board";
-import { boardName } from "@/components/drive/drive-words";
+import { boardName } from "@/lib/core/board-name";
 import { FindingLine } from "@/components/ui/finding-line";
 import type { MarkKind } from "@/components/ui/mark";
 import { may } from "@/lib/core/policy";

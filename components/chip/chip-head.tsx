@@ -1,6 +1,6 @@
 import type { ReactNode } from "react";
 import { BoardPanel } from "@/components/shell/board-panel";
-import { boardName } from "@/components/drive/drive-words";
+import { boardName } from "@/lib/core/board-name";
 import { Crumbs } from "@/components/ui/crumbs";
 import { Mark } from "@/components/ui/mark";
 import { dueText } from "@/components/ui/times";

@@ -1,6 +1,6 @@
 import type { ReactNode } from "react";
 import { DigestInFull } from "@/components/ui/digest";
-import { boardName } from "@/components/drive/drive-words";
+import { boardName } from "@/lib/core/board-name";
 import { Empty } from "@/components/ui/empty";
 import { sizeText } from "@/lib/core/quantity";
 import type { DecisionView } from "@/lib/views";

@@ -2,7 +2,7 @@
 
 import Link from "next/link";
 import { useState } from "react";
-import { boardName } from "@/components/drive/drive-words";
+import { boardName } from "@/lib/core/board-name";
 import { cellWords } from "@/components/strip/cell-words";
 import { nextDifference, StripGrid } from "@/components/strip/strip-grid";
 import { Digest } from "@/components/ui/digest";

@@ -12,7 +12,7 @@ import { send } from "@/lib/http/send";
 import type { BoardView, ChipSummary } from "@/lib/views";
 import { ChipFields } from "./chip-fields";
 import { chipForm, type ChipFormInput, type ChipFormOutput } from "./chip-form";
-import { boardName } from "./drive-words";
+import { boardName } from "@/lib/core/board-name";
 
 interface Given {
   board: BoardView;

@@ -5,7 +5,8 @@ import { ButtonLink } from "@/components/ui/button";
 import { DesignatorPlate } from "@/components/ui/plate";
 import { countOf } from "@/lib/core/quantity";
 import type { BoardView } from "@/lib/views";
-import { boardName, SIZE_SOURCE_OPTIONS } from "./drive-words";
+import { boardName } from "@/lib/core/board-name";
+import { SIZE_SOURCE_OPTIONS } from "./drive-words";
 
 const sourceWords = (source: string) => SIZE_SOURCE_OPTIONS.find((option) => option.value === source)?.label.toLowerCase() ?? source;
 

@@ -15,7 +15,7 @@ import type { BoardView } from "@/lib/views";
 import { BoardFields } from "./board-fields";
 import { changedFields } from "./changed-fields";
 import { DonorFitNote } from "./donor-fit-note";
-import { boardName } from "./drive-words";
+import { boardName } from "@/lib/core/board-name";
 
 const form = z.strictObject({ ...boardCorrection.shape.changes.shape, reason: boardCorrection.shape.reason });
 const typed = (value: unknown) => (typeof value === "string" ? value : "");

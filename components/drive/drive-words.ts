@@ -15,10 +15,6 @@ export function driveFacts(drive: Pick<DriveView, "partNumber" | "model" | "seri
   return [drive.partNumber, drive.model, drive.serial && `SN ${drive.serial}`, drive.interface].filter((fact): fact is string => Boolean(fact));
 }
 
-export function boardName(board: Pick<BoardView, "boardNumber" | "revision">): string {
-  return board.revision ? `${board.boardNumber} ${/^rev/i.test(board.revision) ? board.revision : `rev ${board.revision}`}` : board.boardNumber;
-}
-
 export function originalOf(drive: Pick<DriveView, "boards">): BoardView | null {
   return drive.boards.find((board) => board.role === "original") ?? null;
 }
