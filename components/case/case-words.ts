@@ -1,4 +1,3 @@
-import { kindText, supplyText } from "@/components/chip/chip-words";
 import { listText } from "@/lib/core/quantity";
 import type { ChipStateCode, Policy } from "@/lib/core/words";
 import type { CaseView, ChipSummary, DriveView } from "@/lib/views";
@@ -27,11 +26,6 @@ export function waitsFor(drives: readonly DriveView[]): string | null {
   if (chips.length === 0) return "opens when a chip is recorded and verified";
   if (open.length === 0) return null;
   return `opens when ${listText(open.map((chip) => chip.designator))} ${open.length === 1 ? "is" : "are"} verified`;
-}
-
-/** "SPI, 4 Mbit, SOIC-8, 3.3 V" */
-export function chipKind(chip: Pick<ChipSummary, "bus" | "sizeBytes" | "package" | "supplyMillivolts">): string {
-  return [kindText(chip.bus, chip.sizeBytes), chip.package, supplyText(chip.supplyMillivolts)].filter(Boolean).join(", ");
 }
 
 /** "none yet", "2 of 3 agree", "4 agree" */

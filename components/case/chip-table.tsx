@@ -1,4 +1,4 @@
-import { stateMark } from "@/components/chip/chip-words";
+import { chipKind, stateMark } from "@/components/chip/chip-words";
 import { CorrectChip } from "@/components/drive/correct-chip";
 import { originalOf } from "@/components/drive/drive-words";
 import { StripThumb } from "@/components/strip/strip-thumb";
@@ -8,7 +8,7 @@ import { DesignatorPlate } from "@/components/ui/plate";
 import type { Policy } from "@/lib/core/words";
 import { isPowerOfTwo } from "@/lib/core/quantity";
 import type { ChipSummary, DriveView } from "@/lib/views";
-import { chipKind, donorOf, ownContentWords, readsWords } from "./case-words";
+import { donorOf, ownContentWords, readsWords } from "./case-words";
 import { MiniRoute } from "./mini-route";
 
 function OwnContent({ donor }: { donor: ChipSummary | null }) {

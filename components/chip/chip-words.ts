@@ -1,7 +1,7 @@
 import type { MarkKind } from "@/components/ui/mark";
 import { listText, readsText } from "@/lib/core/quantity";
 import { type Bus, type ChipStateCode, type Finding, type Method, readName, type Stage } from "@/lib/core/words";
-import type { ChipView, ReadView } from "@/lib/views";
+import type { ChipSummary, ChipView, ReadView } from "@/lib/views";
 
 const STATE_MARK: Record<ChipStateCode, MarkKind> = {
   verified: "done", failed: "block", written: "run", approved: "done", unread: "wait", "reads-disagree": "block",
@@ -84,4 +84,9 @@ export function approvedRead(chip: ChipView): ReadView | null {
 /** The chip that is written to, or the moved one: where read-backs belong. */
 export function readBackChipId(chip: ChipView): string | null {
   return chip.transfers.at(-1)?.donorChipId ?? null;
+}
+
+/** "SPI, 4 Mbit, SOIC-8, 3.3 V" */
+export function chipKind(chip: Pick<ChipSummary, "bus" | "sizeBytes" | "package" | "supplyMillivolts">): string {
+  return [kindText(chip.bus, chip.sizeBytes), chip.package, supplyText(chip.supplyMillivolts)].filter(Boolean).join(", ");
 }

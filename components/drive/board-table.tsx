@@ -1,4 +1,4 @@
-import { chipKind } from "@/components/case/case-words";
+import { chipKind } from "@/components/chip/chip-words";
 import { CorrectBoard } from "@/components/drive/correct-board";
 import { CorrectChip } from "@/components/drive/correct-chip";
 import { ButtonLink } from "@/components/ui/button";

@@ -1,3 +1,4 @@
+import { randomUUID } from "node:crypto";
 import { buffer } from "node:stream/consumers";
 import { describe, expect, it } from "vitest";
 import { approveImage } from "@/lib/commands/approve-image";
@@ -16,7 +17,7 @@ describe("the whole way of a chip", () => {
     const technician = await makeUser("technician");
     const lead = await makeUser("lead");
     const chip = await makeChip(technician);
-    const image = stream("main-way", 8192);
+    const image = stream(`main-way-${randomUUID()}`, 8192);
     expect(await state(technician, chip)).toBe("unread");
     await makeReady(technician, chip, image);
     expect(await state(technician, chip)).toBe("ready");
@@ -40,7 +41,7 @@ describe("the whole way of a chip", () => {
   it("refuses a technician the image that nobody has approved", async () => {
     const technician = await makeUser("technician");
     const chip = await makeChip(technician);
-    const { reads } = await store(technician, chip.chipId, "before", stream("not-approved", 8192));
+    const { reads } = await store(technician, chip.chipId, "before", stream(`not-approved-${randomUUID()}`, 8192));
     await expect(handOutImage(technician, reads[0].id, {})).rejects.toMatchObject({ code: "forbidden" });
   });
 });
