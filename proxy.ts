@@ -24,6 +24,7 @@ export function proxy(request: NextRequest): NextResponse {
   const response = NextResponse.next({ request: { headers } });
   response.headers.set("content-security-policy", policy);
   response.headers.set("cache-control", "no-store");
+  if (process.env.PUBLIC_URL?.startsWith("https:")) response.headers.set("strict-transport-security", "max-age=31536000; includeSubDomains");
   return response;
 }
 
