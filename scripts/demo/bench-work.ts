@@ -91,6 +91,16 @@ export async function take(actor: Actor, at: Pair, stage: Stage, { seating, imag
   return reads[0];
 }
 
+/** The donor's content first, then the original, three minutes a read. */
+function minutesAgo(stage: Stage, number: number): number {
+  return { donor: 150, before: 90, after: 30 }[stage] - 3 * number;
+}
+
+/** One more read of the original that came out otherwise. */
+export function readOtherwise(actor: Actor, at: Pair, image: Buffer, seating: number, number: number): Promise<ReadView> {
+  return take(actor, at, "before", { seating, image, minutesAgo: minutesAgo("before", number), file: `r${number}` });
+}
+
 /** Reads of the original, one a letter of `seatings`: "AAB" are three reads in two seatings. */
 export async function readOriginal(actor: Actor, at: Pair, image: Buffer, seatings = "AAB", from = 1): Promise<ReadView[]> {
   return series(actor, at, "before", "r", image, seatings, from);
@@ -107,8 +117,8 @@ export async function readBack(actor: Actor, at: Pair, image: Buffer, seatings =
 async function series(actor: Actor, at: Pair, stage: Stage, prefix: string, image: Buffer, seatings: string, from: number): Promise<ReadView[]> {
   const taken: ReadView[] = [];
   for (const [index, letter] of [...seatings].entries()) {
-    const minutesAgo = 3 * (seatings.length - index) + { before: 90, donor: 150, after: 10 }[stage];
-    taken.push(await take(actor, at, stage, { seating: letter.charCodeAt(0) - 64, image, minutesAgo, file: `${prefix}${from + index}` }));
+    const number = from + index;
+    taken.push(await take(actor, at, stage, { seating: letter.charCodeAt(0) - 64, image, minutesAgo: minutesAgo(stage, number), file: `${prefix}${number}` }));
   }
   return taken;
 }

@@ -61,7 +61,7 @@ const FIXED = 7;
 function bordersOf(areas: readonly Area[], random: Random): readonly number[] {
   const cells: number[] = areas.map(([n]) => n);
   for (let i = FIXED; i + 1 < cells.length; i += 1) {
-    const most = Math.min(6, Math.floor(cells[i + 1] / 2), Math.floor(cells[i] / 2));
+    const most = Math.min(14, Math.floor(cells[i + 1] / 2), Math.floor(cells[i] / 2));
     const by = below(random, 2 * most + 1) - most;
     cells[i] += by;
     cells[i + 1] -= by;

@@ -3,7 +3,7 @@ import { recordBoard } from "@/lib/commands/record-board";
 import { recordChip } from "@/lib/commands/record-chip";
 import { recordDrive } from "@/lib/commands/record-drive";
 import { setReadAside } from "@/lib/commands/set-read-aside";
-import { boards, FIRMWARE_CHIP, pair, readOriginal, saveDonor, SETTINGS_CHIP, take } from "./bench-work";
+import { boards, FIRMWARE_CHIP, pair, readOriginal, readOtherwise, saveDonor, SETTINGS_CHIP, take } from "./bench-work";
 import { BOARDS, labelled, oneChip, receiveCase } from "./cases";
 import { lostContact, stuckAddressLine, unpowered } from "./faults";
 import { firmware, settings } from "./images";
@@ -36,7 +36,7 @@ async function addressLineStuck({ tomas }: Staff): Promise<void> {
   const at = await oneChip(tomas, made, "PN 3320-0071-A", "RK2-90-77C", { designator: "U2" });
   await saveDonor(tomas, at, at.donorImage);
   await readOriginal(tomas, at, at.image, "A");
-  await take(tomas, at, "before", { seating: 1, image: stuckAddressLine(at.image), minutesAgo: 80, file: "r2" });
+  await readOtherwise(tomas, at, stuckAddressLine(at.image), 1, 2);
 }
 
 async function approvalAskedFor({ mira }: Staff): Promise<void> {
@@ -45,7 +45,7 @@ async function approvalAskedFor({ mira }: Staff): Promise<void> {
   const at = await oneChip(mira, made, "PN 5108-0210-C", "L7-5544-03", { donor: { revision: "rev C" } });
   await saveDonor(mira, at, at.donorImage);
   await readOriginal(mira, at, at.image, "A");
-  const odd = await take(mira, at, "before", { seating: 1, image: lostContact(at.image), minutesAgo: 94, file: "r2" });
+  const odd = await readOtherwise(mira, at, lostContact(at.image), 1, 2);
   await readOriginal(mira, at, at.image, "BB", 3);
   await setReadAside(mira, odd.id, { reason: "Clip slipped on pin 8; re-seated. Reads 3 and 4 are fine." });
   await askForApproval(mira, at.chip, { message: "Read 2 is explained, three others agree. Due today." });
@@ -63,7 +63,7 @@ async function clipLostContact({ mira, tomas }: Staff): Promise<void> {
   const image = firmware({ kind, unit: "9KQ3-70B8-D2" });
   await saveDonor(tomas, u3, firmware({ kind, unit: "donor for 9KQ3-70B8-D2" }));
   await readOriginal(mira, u3, image, "A");
-  await take(mira, u3, "before", { seating: 1, image: lostContact(image), minutesAgo: 88, file: "r2" });
+  await readOtherwise(mira, u3, lostContact(image), 1, 2);
   await readOriginal(mira, u3, image, "B", 3);
   const u12 = await pair(mira, both, `${made.ref}_A_U12`, SETTINGS_CHIP);
   await saveDonor(tomas, u12, settings({ kind, unit: "donor for 9KQ3-70B8-D2" }), "A");
