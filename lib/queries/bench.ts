@@ -12,7 +12,8 @@ import { people } from "./people";
 import { currentPolicy } from "./policy";
 import { dayIn } from "./workshop-day";
 
-const ORDER: ChipStateCode[] = ["unread", "needs-reads", "reads-disagree", "held", "ready", "approved", "written", "failed", "verified"];
+/** `needs-reads` stands with `unread`: one group on the bench, by due date. */
+const ORDER: ChipStateCode[] = ["unread", "reads-disagree", "held", "ready", "approved", "written", "failed", "verified"];
 
 /** What lies on the bench: every chip of an open case that needs a transfer, in the order of its way. */
 export async function benchRows(actor: Actor): Promise<BenchRow[]> {
@@ -35,7 +36,8 @@ export async function benchRows(actor: Actor): Promise<BenchRow[]> {
       mine: hand.includes(actor.id) || (hand.length === 0 && may(actor, "read.store")),
     };
   }));
-  return rows.sort((a, b) => ORDER.indexOf(a.chip.state.state) - ORDER.indexOf(b.chip.state.state) || (a.dueOn ?? "9").localeCompare(b.dueOn ?? "9") || a.caseRef.localeCompare(b.caseRef));
+  const place = ({ chip: { state } }: BenchRow) => ORDER.indexOf(state.state === "needs-reads" ? "unread" : state.state);
+  return rows.sort((a, b) => place(a) - place(b) || (a.dueOn ?? "9").localeCompare(b.dueOn ?? "9") || a.caseRef.localeCompare(b.caseRef));
 }
 
 /** Who acts next: leads who may sign while it waits for approval, else whoever did the last thing at the bench. */
