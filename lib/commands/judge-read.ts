@@ -6,7 +6,7 @@ import { countOf } from "@/lib/core/quantity";
 import { placeText } from "@/lib/core/strip";
 import { type Finding, readName, SYSTEM } from "@/lib/core/words";
 import { currentPolicy } from "@/lib/queries/policy";
-import { Image, inTransaction, Read, type Transaction } from "@/models";
+import { Image, inTransaction, Read, type Transaction, Transfer } from "@/models";
 import { imageChunks } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { compareIfStored } from "./compare-images";
@@ -31,14 +31,15 @@ export async function findingsOf(tx: Transaction, place: ChipPlace, read: Read):
   });
 }
 
-/** Counted reads of other chips that hold these very bytes; the read-backs of this chip's own transfers are left out. */
+/** Counted reads of other chips that hold these very bytes; the read-backs of this chip's own transfers, to whatever donor, are left out. */
 async function elsewhere(tx: Transaction, place: ChipPlace, read: Read): Promise<JudgeInput["elsewhere"]> {
   if (read.stage !== "before") return [];
   const same = await Read.findAll({ where: { sha256: read.sha256, counted: true, chipId: { [Op.ne]: place.chip.id } }, order: ["storedAt"], transaction: tx });
+  const own = new Set((await Transfer.findAll({ attributes: ["id"], where: { chipId: place.chip.id }, transaction: tx })).map((t) => t.id));
   const found: JudgeInput["elsewhere"] = [];
   for (const other of same) {
+    if (other.transferId && own.has(other.transferId)) continue;
     const there = await placeOfChip(other.chipId, tx);
-    if (other.stage === "after" && there.chip.pairedWithId === place.chip.id) continue;
     const relation = other.stage === "donor" ? "donor-content" : there.drive.id === place.drive.id ? "other-chip" : "other-drive";
     found.push({
       relation, readName: readName(other.stage, other.number), designator: there.chip.designator,

@@ -1,5 +1,6 @@
 import { createHash } from "node:crypto";
 import { Readable } from "node:stream";
+import { approveImage } from "@/lib/commands/approve-image";
 import { createCase } from "@/lib/commands/create-case";
 import { createUser } from "@/lib/commands/create-user";
 import { introduceKey } from "@/lib/commands/introduce-key";
@@ -8,7 +9,11 @@ import { recordChip } from "@/lib/commands/record-chip";
 import { recordDrive } from "@/lib/commands/record-drive";
 import { type StoredReads, storeReads } from "@/lib/commands/store-reads";
 import { type Actor, type Role, type Stage, SYSTEM } from "@/lib/core/words";
+import { AppError } from "@/lib/errors";
+import { chipView } from "@/lib/queries/chip-view";
 import { type ReadFields, readFields } from "@/lib/schemas/read";
+import type { ReadView } from "@/lib/views";
+import { CustodyEntry } from "@/models";
 import { receive } from "@/storage";
 
 /** Real rows through the real commands: what a test needs to begin with. */
@@ -72,4 +77,61 @@ export async function store(actor: Actor, chipId: string, stage: Stage, bytes: U
 export async function makeReady(technician: Actor, chip: MadeChip, image: Uint8Array, donorImage: Uint8Array = Buffer.alloc(image.length, 0xff)): Promise<void> {
   for (const seating of [1, 1]) await store(technician, chip.donorChipId, "donor", donorImage, seating);
   for (const seating of [1, 1, 2]) await store(technician, chip.chipId, "before", image, seating);
+}
+
+/** An image of random look that no other test has. */
+export const freshImage = (length = 8192) => stream(`image-${(serial += 1)}-${Date.now()}-${Math.random()}`, length);
+
+/** Clears the agreed image for the paired donor chip. */
+export function approve(lead: Actor, chip: MadeChip, image: Uint8Array, reasons: Record<string, string> = {}): Promise<{ id: string; sha256: string }> {
+  return approveImage(lead, chip.chipId, { sha256: sha256(image), donorChipId: chip.donorChipId, statement: "Three clean reads.", reasons, lookedAt: [] });
+}
+
+export interface Bench {
+  technician: Awaited<ReturnType<typeof makeUser>>;
+  lead: Awaited<ReturnType<typeof makeUser>>;
+  chip: MadeChip;
+  image: Buffer;
+}
+
+/** A technician, a lead and a chip whose image waits for approval. */
+export async function makeReadyBench(): Promise<Bench> {
+  const [technician, lead] = [await makeUser("technician"), await makeUser("lead")];
+  const [chip, image] = [await makeChip(technician), freshImage()];
+  await makeReady(technician, chip, image);
+  return { technician, lead, chip, image };
+}
+
+export async function makeApprovedBench(): Promise<Bench & { approvalId: string }> {
+  const bench = await makeReadyBench();
+  return { ...bench, approvalId: (await approve(bench.lead, bench.chip, bench.image)).id };
+}
+
+export async function stateOf(actor: Actor, chipId: string): Promise<string> {
+  return (await chipView(actor, chipId)).state.state;
+}
+
+export async function readsOf(actor: Actor, chipId: string, stage: Stage): Promise<ReadView[]> {
+  return (await chipView(actor, chipId)).reads.filter((read) => read.stage === stage);
+}
+
+/** What a refused call answered; a call that went through, or broke in another way, is an error of the test. */
+export async function refusalOf(call: Promise<unknown>): Promise<{ code: string; detail: string }> {
+  try {
+    await call;
+  } catch (error) {
+    if (error instanceof AppError) return { code: error.code, detail: error.detail };
+    throw error;
+  }
+  throw new Error("the call was not refused");
+}
+
+/** What a chain says, in its order: the action and the facts of every entry. */
+export async function logOf(chain: string): Promise<{ action: string; facts: Record<string, unknown>; actor: { id: string; role: string } }[]> {
+  const rows = await CustodyEntry.findAll({ where: { chainId: chain }, order: ["seq"] });
+  return rows.map((row) => JSON.parse(row.body.toString("utf8")) as { action: string; facts: Record<string, unknown>; actor: { id: string; role: string } });
+}
+
+export async function lastEntry(chain: string, action: string): Promise<Record<string, unknown> | undefined> {
+  return (await logOf(chain)).findLast((entry) => entry.action === action)?.facts;
 }
