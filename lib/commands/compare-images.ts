@@ -1,6 +1,6 @@
 import { type Comparison, createComparison } from "@/lib/core/compare";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
-import { ComparisonRow } from "@/models";
+import { ComparisonRow, type Transaction } from "@/models";
 import { imageChunks } from "@/storage";
 import { breathe, inTurn } from "./in-turn";
 
@@ -9,22 +9,25 @@ export interface ImageRef {
   sizeBytes: number;
 }
 
-/** Byte by byte from `a` to `b`; computed once per pair of digests and engine version, then kept. */
-export async function compareImages(a: ImageRef, b: ImageRef): Promise<Comparison> {
+/**
+ * Byte by byte from `a` to `b`; computed once per pair of digests and engine version, then kept. Inside a transaction
+ * `tx` must be given: who holds a chain's lock and asks for a second connection waits for those who wait for the lock.
+ */
+export async function compareImages(a: ImageRef, b: ImageRef, tx?: Transaction): Promise<Comparison> {
   const swapped = a.sha256 > b.sha256;
   const [first, second] = swapped ? [b, a] : [a, b];
   const key = { sha256A: Buffer.from(first.sha256, "hex"), sha256B: Buffer.from(second.sha256, "hex"), engineVersion: ENGINE_VERSION };
-  const known = await ComparisonRow.findOne({ where: key });
+  const known = await ComparisonRow.findOne({ where: key, transaction: tx });
   if (known) return seenFrom(JSON.parse(known.result) as Comparison, swapped);
   const made = await inTurn(() => run(first, second));
-  await ComparisonRow.bulkCreate([{ ...key, result: JSON.stringify(made) }], { ignoreDuplicates: true });
+  await ComparisonRow.bulkCreate([{ ...key, result: JSON.stringify(made) }], { ignoreDuplicates: true, transaction: tx });
   return seenFrom(made, swapped);
 }
 
 /** The same, or null when one of the stored images is gone: a lost image must not keep new reads out. */
-export async function compareIfStored(a: ImageRef, b: ImageRef): Promise<Comparison | null> {
+export async function compareIfStored(a: ImageRef, b: ImageRef, tx?: Transaction): Promise<Comparison | null> {
   try {
-    return await compareImages(a, b);
+    return await compareImages(a, b, tx);
   } catch (error) {
     if ((error as NodeJS.ErrnoException).code === "ENOENT") return null;
     throw error;

@@ -18,7 +18,7 @@ export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: R
   const approvedSha256 = approval.sha256.toString("hex");
   const equal = read.sha256.equals(approval.sha256);
   const old = saved.find((r) => r.sizeBytes === approved.sizeBytes);
-  const comparison = equal ? null : await compareIfStored({ sha256: approvedSha256, sizeBytes: approved.sizeBytes }, { sha256, sizeBytes: read.sizeBytes });
+  const comparison = equal ? null : await compareIfStored({ sha256: approvedSha256, sizeBytes: approved.sizeBytes }, { sha256, sizeBytes: read.sizeBytes }, tx);
   return judgeReadBack({
     facts, read: { sha256, sizeBytes: read.sizeBytes }, approved: { sha256: approvedSha256, sizeBytes: approved.sizeBytes },
     donorSaved: saved.map((r) => r.sha256.toString("hex")),

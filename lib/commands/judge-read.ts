@@ -76,18 +76,18 @@ export async function judge(tx: Transaction, place: ChipPlace, read: Read, fresh
     sha256: read.sha256.toString("hex"), engineVersion: ENGINE_VERSION,
     findings: findings.map(({ code, severity, message, measured, threshold }) => ({ code, severity, message, measured, threshold })),
     equalTo: equal.map((r) => readName(r.stage, r.number)),
-    differsFrom: await differences(place, read, others.filter((r) => !equal.includes(r))),
+    differsFrom: await differences(tx, place, read, others.filter((r) => !equal.includes(r))),
   });
   return findings;
 }
 
 /** "Read 1 in 214 bytes, all in 0x1F000–0x1FFFF": the first read of each image that differs. */
-async function differences(place: ChipPlace, read: Read, others: Read[]): Promise<string[]> {
+async function differences(tx: Transaction, place: ChipPlace, read: Read, others: Read[]): Promise<string[]> {
   const distinct = others.filter((r, i) => others.findIndex((o) => o.sha256.equals(r.sha256)) === i);
   const ref = (r: Read) => ({ sha256: r.sha256.toString("hex"), sizeBytes: r.sizeBytes });
   return Promise.all(distinct.map(async (other) => {
     const name = readName(other.stage, other.number);
-    const c = await compareIfStored(ref(other), ref(read));
+    const c = await compareIfStored(ref(other), ref(read), tx);
     return !c || c.first === null || c.last === null ? name : `${name} in ${countOf(c.differingBytes, "byte")}, ${placeText(c.first, c.last, place.chip.sizeBytes)}`;
   }));
 }

@@ -13,7 +13,7 @@ export async function reportImage(sha256: string, state: Exclude<ImageState, "so
   await inTransaction(async (tx) => {
     const image = await Image.findByPk(digest, { transaction: tx });
     if (!image || image.state === state) return;
-    const places = await Promise.all([...new Set(reads.map((r) => r.chipId))].map((id) => placeOfChip(id)));
+    const places = await Promise.all([...new Set(reads.map((r) => r.chipId))].map((id) => placeOfChip(id, tx)));
     const drives = [...new Set(places.map((p) => p.drive.id))].sort();
     for (const drive of drives) await lockChain(tx, drive);
     await image.update({ state }, { transaction: tx });

@@ -63,7 +63,7 @@ export async function storeReads(actor: Actor, chipId: string, fields: ReadField
     if (fields.stage === "before") await reviewApproval(tx, actor, now, rows);
     const record = await recordOfChip(chipId, tx);
     const who = await people(tx);
-    return { reads: rows.map((r) => readView(r, who)), chip: record && (await chipState(record, await currentPolicy(tx))) };
+    return { reads: rows.map((r) => readView(r, who)), chip: record && (await chipState(record, await currentPolicy(tx), tx)) };
   });
   for (const sha256 of new Set(files.map((f) => f.arrived.sha256))) await judgeSameImages(Buffer.from(sha256, "hex"), chipId);
   return stored;

@@ -3,16 +3,17 @@ import { agreement, deriveChipState, oddOneOut, type StateFacts } from "@/lib/co
 import { diagnose } from "@/lib/core/diagnosis";
 import { type Policy, readName } from "@/lib/core/words";
 import type { StateView } from "@/lib/views";
+import type { Transaction } from "@/models";
 import { stateFacts, stateRead } from "./chip-facts";
 import type { ChipRecord } from "./chip-records";
 
 /** The state of a chip with its sentence; where reads disagree the sentence says where and what it looks like. */
-export async function chipState(record: ChipRecord, policy: Policy): Promise<StateView> {
-  return deriveChipState(stateFacts(record, policy, await worstPair(record)));
+export async function chipState(record: ChipRecord, policy: Policy, tx?: Transaction): Promise<StateView> {
+  return deriveChipState(stateFacts(record, policy, await worstPair(record, tx)));
 }
 
 /** The odd counted read and one that most others equal, compared; null when the reads agree. */
-export async function worstPair(record: ChipRecord): Promise<StateFacts["worst"]> {
+export async function worstPair(record: ChipRecord, tx?: Transaction): Promise<StateFacts["worst"]> {
   const counted = record.before.filter((r) => r.counted);
   const reads = counted.map(stateRead);
   if (agreement(reads).groups.length < 2) return null;
@@ -21,7 +22,7 @@ export async function worstPair(record: ChipRecord): Promise<StateFacts["worst"]
   const other = reads.find((r) => r.sha256 !== odd.sha256)!;
   const [rowOdd, rowOther] = [odd, other].map((r) => counted.find((row) => row.id === r.id)!);
   if (record.unsound.has(odd.sha256) || record.unsound.has(other.sha256)) return null;
-  const c = await compareIfStored({ sha256: other.sha256, sizeBytes: rowOther.sizeBytes }, { sha256: odd.sha256, sizeBytes: rowOdd.sizeBytes });
+  const c = await compareIfStored({ sha256: other.sha256, sizeBytes: rowOther.sizeBytes }, { sha256: odd.sha256, sizeBytes: rowOdd.sizeBytes }, tx);
   if (!c) return null;
   const diagnosis = diagnose(c, { nameA: readName("before", other.number), nameB: readName("before", odd.number), sizeBytes: record.chip.sizeBytes });
   return {
