@@ -2,7 +2,7 @@ import { UniqueConstraintError } from "sequelize";
 import { type Actor, SYSTEM } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { ChipCorrection } from "@/lib/schemas/chip";
-import { inTransaction } from "@/models";
+import { Chip, inTransaction, type Transaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { changesOf } from "./correct-facts";
 import { judgeChip } from "./judge-read";
@@ -26,12 +26,14 @@ export async function correctChip(actor: Actor, chipId: string, input: ChipCorre
       const repair = pairedWith !== undefined && (pairedWith ?? null) !== (chip.pairedWithId ?? null);
       if (changes.length === 0 && !repair) throw new AppError("does-not-fit", "Nothing would change: these are the values on record.");
       if (repair && board.role !== "donor") throw new AppError("does-not-fit", "Pairing is set on the donor's chip: open that one.");
+      const sizeChanges = changes.some((c) => c.field === "sizeBytes");
+      if (repair) changes.push({ field: "pairedWith", from: await nameOf(tx, chip.pairedWithId), to: await nameOf(tx, pairedWith) });
       if (changes.length > 0) {
         await chip.update(wanted, { transaction: tx });
         await appendEntry(tx, drive.id, actor, "chip.corrected", { type: "chip", id: chip.id }, { chip: { id: chip.id, designator: chip.designator }, changes, reason: input.reason });
       }
       const originalId = board.role === "original" ? chip.id : chip.pairedWithId;
-      if (originalId && changes.some((c) => c.field === "sizeBytes")) {
+      if (originalId && sizeChanges) {
         await revokeStanding(tx, SYSTEM, originalId, "size-changed", `The size of ${chip.designator} was corrected.`);
       }
       if (repair) await pairChip(tx, actor, { donorChip: chip, donorBoard: board, driveId: drive.id, originalChipId: pairedWith ?? null });
@@ -42,4 +44,10 @@ export async function correctChip(actor: Actor, chipId: string, input: ChipCorre
     if (error instanceof UniqueConstraintError) throw new AppError("rule-against", "Another chip of this board has that designator.");
     throw error;
   }
+}
+
+/** "original U12": a board has each designator once, so that the log says which chip without the database. */
+async function nameOf(tx: Transaction, originalId: string | null | undefined): Promise<string | null> {
+  const original = originalId ? await Chip.findByPk(originalId, { transaction: tx }) : null;
+  return original && `original ${original.designator}`;
 }
