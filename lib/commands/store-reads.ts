@@ -20,6 +20,7 @@ import { inspectImage, recordImage } from "./inspect-image";
 import { judge, judgeSameImages } from "./judge-read";
 import { type ChipPlace, placeOfChip } from "./place";
 import { allow } from "./refuse";
+import { reportSound } from "./report-image";
 import { revokeStanding } from "./revoke-approval";
 
 export interface UploadedFile {
@@ -44,6 +45,7 @@ export async function storeReads(actor: Actor, chipId: string, fields: ReadField
   const facts: ImageFacts[] = [];
   for (const { arrived } of files) {
     await keep(arrived);
+    await reportSound(arrived.sha256, "upload");
     facts.push(await inspectImage(arrived.sha256, arrived.sizeBytes));
   }
   await compareAhead(chipId, fields, files);

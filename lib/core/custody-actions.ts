@@ -72,6 +72,7 @@ export const ACTIONS = {
   "readback.verified": spec({ ...readRef, transfer: uuid, sha256: sha }, (f) => `${name(f)} equals the approved image in every byte`, "signed"),
   "readback.differs": spec({ ...readRef, transfer: uuid, sha256: sha, approvedSha256: sha, diagnosis: words }, (f) => `${name(f)} differs from the approved image: ${f.diagnosis}`, "differs"),
   "image.found-damaged": spec({ sha256: sha, state: z.enum(["damaged", "missing"]), where: words }, (f) => `The stored image ${short(f.sha256)} is ${f.state} (found by ${f.where})`, "differs"),
+  "image.found-sound": spec({ sha256: sha, where: words }, (f) => `The stored image ${short(f.sha256)} equals its digest again (found by ${f.where})`),
   "bundle.started": spec({ caseRef: words, head: z.object({ seq: z.int(), hash: sha }) }, (f) => `Started the case bundle of ${f.caseRef}`),
   "bundle.completed": spec({ caseRef: words, tagManifestSha256: sha, upToSeq: z.int() }, (f) => `Completed the case bundle of ${f.caseRef}, tag manifest ${short(f.tagManifestSha256)}`, "signed"),
   "summary.sent": spec({ caseRef: words, share: uuid, expiresAt: words }, (f) => `Sent the verification summary of ${f.caseRef} to the customer`),
