@@ -1,9 +1,10 @@
 import { createHash } from "node:crypto";
-import { QueryTypes } from "sequelize";
+import { QueryTypes, UniqueConstraintError } from "sequelize";
 import { type Action, ACTIONS, type Facts } from "@/lib/core/custody-actions";
 import { type CustodyBody, custodyText, signedBytes, ZERO_HASH } from "@/lib/core/custody";
 import type { Actor } from "@/lib/core/words";
 import { env } from "@/lib/env";
+import { AppError } from "@/lib/errors";
 import { MAX_CUSTODY_BODY_BYTES } from "@/lib/limits";
 import { connection, CustodyEntry, CustodyHead, type Transaction } from "@/models";
 import { logKey } from "@/storage";
@@ -18,6 +19,8 @@ interface Head {
   hash: Buffer;
   at: string;
 }
+
+const HEAD_BEHIND = "This custody log holds more entries than its head says, so nothing can be added. Run the check of the store and put the database back from a backup.";
 
 /** Locks the chain's head until the transaction ends: the first statement of every command on a drive. */
 export async function lockChain(tx: Transaction, chain: string): Promise<Head> {
@@ -61,9 +64,15 @@ export async function appendEntry<A extends Action>(
   if (bytes.length > MAX_CUSTODY_BODY_BYTES) throw new Error(`custody body of ${bytes.length} bytes is above the limit`);
   const hash = createHash("sha256").update(bytes).digest();
   const key = logKey();
-  await CustodyEntry.create({
-    chainId: chain, seq, body: bytes, hash, prev: head.hash, keyId: key.keyId, signature: key.sign(signedBytes(bytes)), action,
-  }, { transaction: tx });
+  try {
+    await CustodyEntry.create({
+      chainId: chain, seq, body: bytes, hash, prev: head.hash, keyId: key.keyId, signature: key.sign(signedBytes(bytes)), action,
+    }, { transaction: tx });
+  } catch (error) {
+    // the head is locked: a place that is taken already means that somebody turned the head back
+    if (error instanceof UniqueConstraintError) throw new AppError("rule-against", HEAD_BEHIND);
+    throw error;
+  }
   await CustodyHead.update({ seq, hash, at: body.at }, { where: { chainId: chain }, transaction: tx });
   return { seq, hash: hash.toString("hex") };
 }
