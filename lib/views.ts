@@ -153,6 +153,15 @@ export interface MatrixView {
   cells: (number | "other-size" | null)[][];
 }
 
+/** The approved image against the counted read-backs of the latest transfer. */
+export interface ReadBackView {
+  /** the original's chip: its approval is what they are held against */
+  chipId: string;
+  /** differing bytes of each read-back */
+  backs: { number: number; name: string; differs: number | "other-size" }[];
+  stack: StripStackView;
+}
+
 /** One letter a cell: see lib/core/strip.ts. b blank, z zeros, t text-like, o ordinary, d dense, n not read. */
 export type CellString = string;
 

@@ -1,6 +1,6 @@
 import { Icon } from "@/components/ui/icon";
 import { withCommas } from "@/lib/core/quantity";
-import type { MatrixView } from "@/lib/views";
+import type { MatrixView, ReadBackView } from "@/lib/views";
 
 const SORT_FROM = 5;
 
@@ -38,6 +38,21 @@ export function AgreementMatrix({ matrix }: { matrix: MatrixView }) {
         {order.map((row) => (
           <tr key={row}><th scope="row">{matrix.reads[row].name}</th>{order.map((column) => <Cell key={column} value={matrix.cells[row][column]} />)}</tr>
         ))}
+      </tbody>
+    </table>
+  );
+}
+
+/** After the write: each counted read-back against the approved image. */
+export function ReadBackMatrix({ backs }: { backs: ReadBackView["backs"] }) {
+  return (
+    <table className={`matrix ${backs.length >= SORT_FROM ? "matrix-many" : ""}`}>
+      <caption>Differing bytes against the approved image</caption>
+      <thead>
+        <tr><td className="corner" />{backs.map(({ name }) => <th key={name} scope="col">{name}</th>)}</tr>
+      </thead>
+      <tbody>
+        <tr><th scope="row">Approved</th>{backs.map(({ name, differs }) => <Cell key={name} value={differs} />)}</tr>
       </tbody>
     </table>
   );

@@ -1,6 +1,7 @@
 "use client";
 
 import { useRouter } from "next/navigation";
+import { useEffect } from "react";
 import useSWR from "swr";
 import { PageMain } from "@/components/shell/page-main";
 import { StripLegend } from "@/components/strip/legend";
@@ -13,12 +14,12 @@ import { momentText } from "@/components/ui/times";
 import { may } from "@/lib/core/policy";
 import { sizeText } from "@/lib/core/quantity";
 import { backgroundFetcher, Refusal } from "@/lib/http/send";
-import type { ChipView, SessionView } from "@/lib/views";
+import type { ChipView, ReadBackView, SessionView } from "@/lib/views";
 import { AddReads } from "./add-reads";
 import { ApprovalSection } from "./approval-section";
 import { ChipHead } from "./chip-head";
 import { ChipVerdict } from "./chip-verdict";
-import { nameOf } from "./chip-words";
+import { compareHref, nameOf, readBackKey } from "./chip-words";
 import { ReadsTable } from "./reads-table";
 import { TransferSection } from "./transfer-section";
 import { contentsOf } from "./upload-form";
@@ -26,8 +27,10 @@ import { contentsOf } from "./upload-form";
 const REFRESH_MS = 5_000;
 
 /** The whole page of one chip; refreshed in the background, so that two people at two benches see the same. */
-export function ChipScreen({ chip: given, session, today }: {
+export function ChipScreen({ chip: given, readBack, session, today }: {
   chip: ChipView;
+  /** after a write, what came back against the approved image takes the place of the reads */
+  readBack: ReadBackView | null;
   session: SessionView;
   /** the workshop's calendar day, "2026-03-12" */
   today: string;
@@ -39,7 +42,13 @@ export function ChipScreen({ chip: given, session, today }: {
   const changed = () => mutate();
   const original = chip.boardRole === "original";
   const latest = chip.reads.reduce<ChipView["reads"][number] | null>((last, r) => (last && last.storedAt >= r.storedAt ? last : r), null);
-  const differ = chip.stack.lanes.some((lane) => lane.differingBytes > 0);
+  const [key, shownKey] = [readBackKey(chip), readBackKey(given)];
+  // the read-backs' strips come with the page itself: another read-back, another page
+  useEffect(() => {
+    if (key !== shownKey) router.refresh();
+  }, [key, shownKey, router]);
+  const stack = readBack?.stack ?? chip.stack;
+  const differ = stack.lanes.some((lane) => lane.differingBytes > 0);
   const shared = { chip, user, timeZone, onChanged: changed };
   const donorPlate = <DesignatorPlate designator={original ? chip.pair?.designator ?? chip.designator : chip.designator} board="donor" />;
 
@@ -49,11 +58,11 @@ export function ChipScreen({ chip: given, session, today }: {
       <PageMain>
         {error ? <div className="pt-4"><Note kind="caution" role="status" title="This page is not being refreshed.">{error instanceof Refusal && error.status === 401 ? "Your sign-in has ended. Reload the page to sign in again." : error.message}</Note></div> : null}
         <Section first title="What was found" note={latest ? `After ${nameOf(latest)}, ${momentText(latest.storedAt, timeZone)}` : "No read is stored yet."}>
-          <ChipVerdict chip={chip} user={user} onChanged={changed} />
+          <ChipVerdict chip={chip} readBack={readBack} user={user} onChanged={changed} />
         </Section>
-        {chip.stack.rows.length > 0 ? (
-          <Section wide title={differ ? "Where they differ" : "What the reads hold"} note={`Each read as ${chip.stack.rows[0].cells.length} cells${chip.stack.cellBytes >= 1 ? ` of ${sizeText(Math.ceil(chip.stack.cellBytes))}` : ""}. The line between two reads is whole where they agree.`} aside={<StripLegend />}>
-            <StripStack key={chip.stack.rows.map((r) => r.readId).join()} stack={chip.stack} onOpen={(at) => router.push(`/chips/${chip.id}/compare?at=${at}`)} />
+        {stack.rows.length > 0 ? (
+          <Section wide title={differ ? "Where they differ" : "What the reads hold"} note={`Each read as ${stack.rows[0].cells.length} cells${stack.cellBytes >= 1 ? ` of ${sizeText(Math.ceil(stack.cellBytes))}` : ""}. The line between two reads is whole where they agree.`} aside={<StripLegend />}>
+            <StripStack key={stack.rows.map((r) => r.readId).join()} stack={stack} onOpen={(at) => router.push(compareHref(chip, readBack, at))} />
           </Section>
         ) : null}
         <Section title="Reads" note="Every file is kept as it came. A read is never changed or deleted, only set aside with a reason.">

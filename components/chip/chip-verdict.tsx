@@ -4,13 +4,13 @@ import { useState } from "react";
 import { Button, ButtonLink } from "@/components/ui/button";
 import { Verdict } from "@/components/ui/verdict";
 import { may } from "@/lib/core/policy";
-import type { ChipView, SessionView } from "@/lib/views";
-import { AgreementMatrix } from "./agreement-matrix";
-import { nameOf, oddReads, verdictMark } from "./chip-words";
+import type { ChipView, ReadBackView, SessionView } from "@/lib/views";
+import { AgreementMatrix, ReadBackMatrix } from "./agreement-matrix";
+import { compareHref, nameOf, oddReads, verdictMark } from "./chip-words";
 import { ReadDialogs } from "./read-dialogs";
 
 /** What was found, and the step that leads on: one leading button, at most two more. */
-export function ChipVerdict({ chip, user, onChanged }: { chip: ChipView; user: SessionView["user"]; onChanged(): Promise<unknown> }) {
+export function ChipVerdict({ chip, readBack, user, onChanged }: { chip: ChipView; readBack: ReadBackView | null; user: SessionView["user"]; onChanged(): Promise<unknown> }) {
   const [aside, setAside] = useState(false);
   const state = chip.state.state;
   const original = chip.boardRole === "original";
@@ -32,11 +32,11 @@ export function ChipVerdict({ chip, user, onChanged }: { chip: ChipView; user: S
   return (
     <>
       <Verdict mark={verdictMark(chip)} sentence={chip.state.sentence} why={chip.why}
-        aside={<AgreementMatrix matrix={chip.matrix} />}
+        aside={readBack ? <ReadBackMatrix backs={readBack.backs} /> : <AgreementMatrix matrix={chip.matrix} />}
         buttons={(
           <>
             {first()}
-            {several ? <ButtonLink href={`/chips/${chip.id}/compare`}>Compare the bytes</ButtonLink> : null}
+            {several || readBack ? <ButtonLink href={compareHref(chip, readBack)}>Compare the bytes</ButtonLink> : null}
             {loner ? <Button onClick={() => setAside(true)}>Set {nameOf(loner)} aside…</Button> : null}
           </>
         )} />

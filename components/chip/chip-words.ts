@@ -1,7 +1,7 @@
 import type { MarkKind } from "@/components/ui/mark";
 import { listText, readsText } from "@/lib/core/quantity";
 import { type Bus, type ChipStateCode, type Finding, type Method, readName, type Stage } from "@/lib/core/words";
-import type { ChipSummary, ChipView, ReadView } from "@/lib/views";
+import type { ChipSummary, ChipView, ReadBackView, ReadView } from "@/lib/views";
 
 const STATE_MARK: Record<ChipStateCode, MarkKind> = {
   verified: "done", failed: "block", written: "run", approved: "done", unread: "wait", "reads-disagree": "block",
@@ -79,6 +79,19 @@ export function oddReads(reads: readonly ReadView[], stage: Stage): ReadView[] {
 /** The stored read that carries the approved image. */
 export function approvedRead(chip: ChipView): ReadView | null {
   return chip.reads.find((r) => r.stage === "before" && r.counted && r.sha256 === chip.approval?.sha256) ?? null;
+}
+
+/** Where the bytes of this page are compared: after a write the approved image with the read-back that differs, or the latest. */
+export function compareHref(chip: Pick<ChipView, "id">, readBack: ReadBackView | null, at?: number): string {
+  const back = readBack ? readBack.backs.find((one) => one.differs !== 0) ?? readBack.backs.at(-1) : undefined;
+  const query = new URLSearchParams({ ...(back ? { back: String(back.number) } : {}), ...(at === undefined ? {} : { at: String(at) }) }).toString();
+  return `/chips/${readBack?.chipId ?? chip.id}/compare${query ? `?${query}` : ""}`;
+}
+
+/** Changes with every approval, transfer and read-back: what the read-backs' strips depend on. */
+export function readBackKey(chip: Pick<ChipView, "approval" | "transfers" | "reads">): string {
+  const backs = chip.reads.filter((r) => r.stage === "after").map((r) => `${r.id}${r.counted ? "" : " aside"}`);
+  return [chip.approval?.id, chip.transfers.at(-1)?.id, ...backs].join();
 }
 
 /** The chip that is written to, or the moved one: where read-backs belong. */

@@ -13,15 +13,19 @@ const STAGE_WORDS: Record<Stage, string> = { before: "reads of the original", do
 
 /** What the comparison found, and the ways to other reads. */
 export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: ChipView; reads: readonly ReadView[]; compared: Compared | null; stage: Stage; chosen: readonly [number, number] | null }) {
-  const others = stagesToCompare(reads).filter((s) => s !== stage);
-  const verdict = compared?.diagnosis;
+  const crossed = compared !== null && compared.readA.stage !== compared.readB.stage;
+  const others = stagesToCompare(reads).filter((s) => crossed || s !== stage);
+  const [a, b] = compared ? [nameOf(compared.readA.stage, compared.readA.number), nameOf(compared.readB.stage, compared.readB.number)] : ["", ""];
+  // a read-back was judged against the approved image when it came: that says what to do about the write
+  const judged = crossed ? compared.readB.findings.find((f) => f.severity === "blocks" || f.code === "verified") : undefined;
+  const verdict = judged ?? compared?.diagnosis;
   return (
     <>
       <Crumbs items={[{ label: `Case ${chip.case.ref}`, href: `/cases/${chip.case.id}` }, { label: chip.designator, href: `/chips/${chip.id}` }, { label: "Compare" }]} />
       <header className="flex flex-wrap items-center gap-x-5 gap-y-2 pt-[18px] pb-3.5">
         <h1 className="flex flex-wrap items-center gap-3 text-t5 font-bold">
           <DesignatorPlate designator={chip.designator} board={chip.boardRole} word />
-          {compared ? `${nameOf(stage, compared.readA.number)} and ${nameOf(stage, compared.readB.number)}` : "Compare reads"}
+          {compared ? `${crossed ? `Approved image (${a})` : a} and ${b}` : "Compare reads"}
         </h1>
         <div className="ml-auto flex flex-wrap items-end gap-x-5 gap-y-2">
           {others.map((s) => <Link key={s} href={`/chips/${chip.id}/compare?stage=${s}`}>Compare {STAGE_WORDS[s]}</Link>)}
@@ -31,7 +35,7 @@ export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: Ch
           <p className="flex basis-full items-start gap-2.5 text-t4">
             <Mark kind={compared.equal ? "ok" : "block"} size={20} className="mt-0.5 [--hole:var(--paper)]" />
             <span className="max-w-[86ch]"><b>{verdict.message}</b> {verdict.advice}
-              {compared.equal ? null : <span className="text-ink-2"> {withCommas(compared.differingBits.zeroToOne)} bits read 0 in {nameOf(stage, compared.readA.number)} and 1 in {nameOf(stage, compared.readB.number)}, {withCommas(compared.differingBits.oneToZero)} the other way round.</span>}
+              {compared.equal ? null : <span className="text-ink-2"> {withCommas(compared.differingBits.zeroToOne)} bits read 0 in {a} and 1 in {b}, {withCommas(compared.differingBits.oneToZero)} the other way round.</span>}
             </span>
           </p>
         ) : null}

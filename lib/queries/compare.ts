@@ -49,6 +49,11 @@ export async function comparison(actor: Actor, chipId: string, asked: Asked): Pr
 /** For the compare page: the comparison with both reads and their strips. */
 export async function comparisonView(actor: Actor, chipId: string, asked: Asked): Promise<ComparisonView & { readA: ReadView; readB: ReadView; stack: StripStackView }> {
   const { rows, sizeBytes } = await twoReads(actor, chipId, asked);
+  return comparisonOf(rows, sizeBytes);
+}
+
+/** Two reads, of one chip or of an original and what was written from it. The caller has asked whether the actor may. */
+export async function comparisonOf(rows: [Read, Read], sizeBytes: number): Promise<ComparisonView & { readA: ReadView; readB: ReadView; stack: StripStackView }> {
   const who = await people();
   const result = await compared(rows, sizeBytes);
   return { ...result, readA: readView(rows[0], who), readB: readView(rows[1], who), stack: await stripStack(rows.map(stripImage), sizeBytes) };

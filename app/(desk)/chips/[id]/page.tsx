@@ -4,6 +4,7 @@ import { DeskShell } from "@/components/shell/desk-shell";
 import { signedIn } from "@/lib/auth/page";
 import { orNotFound } from "@/lib/http/page-errors";
 import { chipView } from "@/lib/queries/chip-view";
+import { readBackView } from "@/lib/queries/read-back-view";
 import { dayIn } from "@/lib/queries/workshop-day";
 
 export const metadata: Metadata = { title: "Chip" };
@@ -13,9 +14,10 @@ export default async function ChipPage({ params }: { params: Promise<{ id: strin
   const { actor, session } = await signedIn();
   const { id } = await params;
   const chip = await orNotFound(() => chipView(actor, id));
+  const readBack = await readBackView(actor, chip);
   return (
     <DeskShell session={session} current="bench">
-      <ChipScreen chip={chip} session={session} today={dayIn(session.timeZone, new Date())} />
+      <ChipScreen chip={chip} readBack={readBack} session={session} today={dayIn(session.timeZone, new Date())} />
     </DeskShell>
   );
 }

@@ -13,11 +13,12 @@ import { AppError } from "@/lib/errors";
 import { orNotFound } from "@/lib/http/page-errors";
 import { chipView } from "@/lib/queries/chip-view";
 import { comparisonView } from "@/lib/queries/compare";
+import { readBackComparison } from "@/lib/queries/read-back-view";
 import { comparisonInput } from "@/lib/schemas/read";
 
 export const metadata: Metadata = { title: "Compare reads" };
 
-type Query = Partial<Record<"reads" | "stage" | "at" | "a" | "b", string | string[]>>;
+type Query = Partial<Record<"reads" | "stage" | "at" | "a" | "b" | "back", string | string[]>>;
 const one = (value: string | string[] | undefined) => (Array.isArray(value) ? value[0] : value);
 
 export default async function ComparePage({ params, searchParams }: { params: Promise<{ id: string }>; searchParams: Promise<Query> }) {
@@ -31,23 +32,25 @@ export default async function ComparePage({ params, searchParams }: { params: Pr
   const wanted = comparisonInput.shape.stage.safeParse(one(query.stage));
   const stage = asked.success ? asked.data.stage : one(query.stage) && wanted.success ? wanted.data : stagesToCompare(own)[0] ?? "before";
   const pair = asked.success ? asked.data.reads : firstPair(own, stage);
-  const found = pair ? await compare(() => comparisonView(actor, id, { reads: pair, stage })) : null;
+  const back = /^\d{1,5}$/.test(one(query.back) ?? "") ? Number(one(query.back)) : null;
+  const againstApproved = back === null ? null : await compare(() => readBackComparison(actor, chip, back));
+  const found = againstApproved ?? (pair ? await compare(() => comparisonView(actor, id, { reads: pair, stage })) : null);
   const compared = found && "stack" in found ? found : null;
   const at = parseAddress(one(query.at) ?? "");
   return (
     <DeskShell session={session} current="bench">
       <PageMain>
-        <CompareHead chip={chip} reads={own} compared={compared} stage={stage} chosen={pair} />
-        {compared ? <CompareScreen key={`${compared.readA.id} ${compared.readB.id}`} compared={compared} reads={own} start={at} /> : null}
+        <CompareHead chip={chip} reads={own} compared={compared} stage={stage} chosen={againstApproved ? null : pair} />
+        {compared ? <CompareScreen key={`${compared.readA.id} ${compared.readB.id}`} compared={compared} reads={againstApproved ? [compared.readA, compared.readB] : own} start={at} /> : null}
         {found && "refusal" in found ? <Note kind="block" title="These two can’t be compared.">{found.refusal}</Note> : null}
-        {pair ? null : <Empty title="Two reads are needed." action={<ButtonLink href={`/chips/${id}#add`}>Add a read</ButtonLink>}>As soon as {chip.designator} has two reads of one kind they can be compared here.</Empty>}
+        {found ? null : <Empty title="Two reads are needed." action={<ButtonLink href={`/chips/${id}#add`}>Add a read</ButtonLink>}>As soon as {chip.designator} has two reads of one kind they can be compared here.</Empty>}
       </PageMain>
     </DeskShell>
   );
 }
 
 /** A damaged stored image is a finding to show, not a broken page. */
-async function compare(run: () => Promise<Compared>): Promise<Compared | { refusal: string }> {
+async function compare<T extends Compared | null>(run: () => Promise<T>): Promise<T | { refusal: string }> {
   try {
     return await orNotFound(run);
   } catch (error) {
