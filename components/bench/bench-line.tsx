@@ -6,7 +6,7 @@ import { DesignatorPlate } from "@/components/ui/plate";
 import { dueText } from "@/components/ui/times";
 import { countOf } from "@/lib/core/quantity";
 import type { BenchRow } from "@/lib/views";
-import { atTheDonor, rowAction } from "./bench-words";
+import { atTheDonor, rowAction, stepAndReason } from "./bench-words";
 
 function Due({ row }: { row: BenchRow }) {
   return (
@@ -23,6 +23,7 @@ function Due({ row }: { row: BenchRow }) {
 /** The cells of one chip in the queue; the row itself brings the group's title where it is the first. */
 export function BenchLine({ row, acts }: { row: BenchRow; acts: boolean }) {
   const action = rowAction(row, acts);
+  const { step, reason } = stepAndReason(row.next);
   const donor = atTheDonor(row.chip.state.state) ? row.chip.pair : null;
   return (
     <>
@@ -30,7 +31,7 @@ export function BenchLine({ row, acts }: { row: BenchRow; acts: boolean }) {
       <td className="case"><Link href={`/cases/${row.caseId}`}>{row.caseRef}</Link></td>
       <td className="drv"><span>{row.customerName}</span><small className="font-mono">{row.partNumber}</small></td>
       <td className="chp"><DesignatorPlate designator={donor?.designator ?? row.chip.designator} board={donor ? "donor" : "original"} word /></td>
-      <td className="nxt">{row.next}{row.nextWhy ? <small>{row.nextWhy}</small> : null}</td>
+      <td className="nxt">{step}{reason ? <small>{reason}</small> : null}{row.nextWhy ? <small>{row.nextWhy}</small> : null}</td>
       <td className="with">{row.with}</td>
       <td className="img"><StripThumb thumbnail={row.chip.thumbnail} /></td>
       <td className="act"><ButtonLink size="small" href={action.href} aria-label={`${action.word}: ${row.chip.designator} of case ${row.caseRef}`}>{action.word}</ButtonLink></td>

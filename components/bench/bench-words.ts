@@ -88,3 +88,17 @@ export function rowAction(row: BenchRow, acts: boolean): { word: string; href: s
 export function atTheDonor(state: ChipStateCode): boolean {
   return ["approved", "written", "failed"].includes(state);
 }
+
+const STEPS = /^(ask|check|clean|clear|correct|erase|have|keep|look|lower|measure|pack|re-seat|read|save|set|take|tell|upload|wait|write)\b(?! \d)/i;
+
+/**
+ * A state's sentence is "what was found, then what to do": what to do stands first on the bench, what was found under it.
+ * A sentence that starts with a step is what to do; when there is none, the last one is.
+ */
+export function stepAndReason(sentence: string): { step: string; reason: string | null } {
+  const all = sentence.split(/(?<=\.) |(?<=\d (?:reads|read-backs|seatings)): /);
+  const first = all.findIndex((one) => STEPS.test(one));
+  const at = first < 0 ? all.length - 1 : first;
+  const reason = all.filter((_, i) => i !== at).map((one) => (one.endsWith(".") ? one : `${one}.`)).join(" ");
+  return { step: capital(all[at]), reason: reason || null };
+}
