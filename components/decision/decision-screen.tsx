@@ -5,6 +5,7 @@ import { useRouter } from "next/navigation";
 import { useMemo, useState } from "react";
 import { useForm, useWatch } from "react-hook-form";
 import { ReasonDialog } from "@/components/chip/reason-dialog";
+import { Button, Buttons } from "@/components/ui/button";
 import { Note } from "@/components/ui/note";
 import { Section } from "@/components/ui/section";
 import { useSay } from "@/components/ui/toast";
@@ -67,6 +68,7 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
   // stays whatever the refreshed sheet shows, also when another approval came first
   const refused = refusal ? <Note kind="block" role="alert" title="You did not approve the image." className="mb-4">{refusal}</Note> : null;
   const waiting = chip.request && !chip.request.sentBack;
+  const sendBack = waiting && may(user, "approval.send-back") ? () => setSendingBack(true) : null;
   return (
     <>
       <Section strong title="The image" note={image ? `Held by ${readsText(image.reads)}.` : undefined}><ImageFacts view={view} /></Section>
@@ -84,8 +86,13 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
           <Section strong title="Sign" note="Goes into the custody log, signed.">
             {refused}
             {signs
-              ? <Sign chip={chip} user={user} open={open} matches={matches} busy={isSubmitting} register={register} errors={errors} onSubmit={submit} onSendBack={waiting && may(user, "approval.send-back") ? () => setSendingBack(true) : null} />
-              : <WhoMaySign chip={chip} user={user} />}
+              ? <Sign chip={chip} user={user} open={open} matches={matches} busy={isSubmitting} register={register} errors={errors} onSubmit={submit} onSendBack={sendBack} />
+              : (
+                <div className="grid gap-3.5">
+                  <WhoMaySign chip={chip} user={user} />
+                  {sendBack ? <Buttons><Button variant="stop" onClick={sendBack}>Send back…</Button></Buttons> : null}
+                </div>
+              )}
           </Section>
         </>
       )}
