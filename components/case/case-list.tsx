@@ -11,6 +11,7 @@ import { dayText, dueText } from "@/components/ui/times";
 import type { CaseRow, ListView } from "@/lib/views";
 
 const column = columnsFor<CaseRow>();
+const PHONE = { customer: "bare l-top", damage: "bare l-full", drives: "bare l-row", chips: "bare l-row" };
 
 function Chips({ row }: { row: CaseRow }) {
   if (row.state === "closed") return <span className="text-ink-2">Closed</span>;
@@ -47,5 +48,5 @@ export function CaseList({ list, sort, order, q, timeZone, today, records }: {
   const empty = q
     ? <Empty title={`No case fits “${q}”.`} action={<ButtonLink href="/cases">Show all cases</ButtonLink>}>The search looks at case number, customer, damage and the drives’ part numbers, models and serials.</Empty>
     : <Empty title="No case yet." action={records ? <ButtonLink href="/cases/new">Record a case</ButtonLink> : null}>{records ? "Record the first one; then its drive, boards and chips." : "A technician or a lead records the first one."}</Empty>;
-  return <DataTable caption="Cases" columns={columns} list={list} sort={sort} order={order} rowId={(row) => row.id} empty={empty} rowClass={(row) => (row.state === "closed" ? "is-aside" : "")} />;
+  return <DataTable caption="Cases" columns={columns} list={list} sort={sort} order={order} rowId={(row) => row.id} empty={empty} phone={PHONE} rowClass={(row) => (row.state === "closed" ? "is-aside" : "")} />;
 }

@@ -5,6 +5,7 @@ import type { SessionView } from "@/lib/views";
 import { Logo } from "@/components/ui/logo";
 import { DemoStrip } from "./demo-strip";
 import { FindField } from "./find-field";
+import { Fingers } from "./fingers";
 import { Footer } from "./footer";
 import { ThemeFlip } from "./theme-flip";
 import { tabsOf, type TabKey } from "./tabs";
@@ -22,18 +23,7 @@ export function DeskShell({ session, current = null, children }: { session: Sess
       <header className="edge">
         <div className="mx-auto flex min-h-[60px] max-w-[1440px] items-stretch gap-7 px-8 grand:max-w-[1680px] mid:gap-[18px] phone:flex-wrap phone:gap-x-4 phone:gap-y-0 phone:px-4 phone:pb-1">
           <Link href="/bench" className="flex items-center gap-[11px] pt-1.5 text-[1.1875rem] font-bold tracking-[-0.005em] no-underline phone:py-1.5"><Logo />Twinread</Link>
-          <nav aria-label="Main" className="phone:order-first phone:-mx-4 phone:w-[calc(100%+32px)] phone:overflow-x-auto phone:px-4 phone:[scrollbar-width:none]">
-            <ul className="fingers flex h-full gap-1">
-              {tabsOf(session.user).map((tab) => (
-                <li key={tab.key}>
-                  <Link href={tab.href} aria-current={tab.key === current ? "page" : undefined}>
-                    {tab.label}
-                    {tab.key === "bench" && session.benchCount > 0 ? <span className="ml-[7px] font-mono !text-t1 font-medium">{session.benchCount}</span> : null}
-                  </Link>
-                </li>
-              ))}
-            </ul>
-          </nav>
+          <Fingers tabs={tabsOf(session.user)} current={current} benchCount={session.benchCount} />
           <div className="ml-auto flex items-center gap-4 pt-1.5 phone:py-1">
             <FindField />
             <WhoMenu user={session.user} />

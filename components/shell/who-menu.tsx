@@ -4,6 +4,7 @@ import Link from "next/link";
 import { signOut } from "next-auth/react";
 import { DropdownMenu } from "radix-ui";
 import { Icon } from "@/components/ui/icon";
+import { may } from "@/lib/core/policy";
 import type { SessionView } from "@/lib/views";
 
 const ITEM = "block w-full cursor-pointer px-3.5 py-2 text-left font-semibold text-ink no-underline data-[highlighted]:bg-well data-[highlighted]:outline-none";
@@ -20,6 +21,7 @@ export function WhoMenu({ user }: { user: SessionView["user"] }) {
         <DropdownMenu.Content align="end" sideOffset={6} className="z-50 min-w-44 border border-rule-2 bg-sheet py-1 text-t3 text-ink">
           <DropdownMenu.Label className="px-3.5 py-2 text-t2 text-ink-2">{user.email}</DropdownMenu.Label>
           <DropdownMenu.Item asChild><Link href="/account" className={ITEM}>Account</Link></DropdownMenu.Item>
+          {may(user, "policy.change") ? null : <DropdownMenu.Item asChild><Link href="/policy" className={ITEM}>Policy</Link></DropdownMenu.Item>}
           <DropdownMenu.Item className={ITEM} onSelect={() => void signOut({ callbackUrl: "/sign-in" })}>Sign out</DropdownMenu.Item>
         </DropdownMenu.Content>
       </DropdownMenu.Portal>

@@ -27,9 +27,11 @@ export interface DataTableProps<Row extends RowData> {
   /** ids of columns with numbers at the right */
   numeric?: readonly string[];
   rowClass?: (row: Row) => string;
+  /** how a column's cell stands in the lines of a phone: `l-top` beside the first, `l-full` a line of its own, first of all; `bare` without its head */
+  phone?: Readonly<Record<string, string>>;
 }
 
-export function DataTable<Row extends RowData>({ caption, columns, list, sort, order, rowId, empty, numeric = [], rowClass }: DataTableProps<Row>) {
+export function DataTable<Row extends RowData>({ caption, columns, list, sort, order, rowId, empty, numeric = [], rowClass, phone = {} }: DataTableProps<Row>) {
   const router = useRouter();
   const path = usePathname();
   const params = useSearchParams();
@@ -66,7 +68,7 @@ export function DataTable<Row extends RowData>({ caption, columns, list, sort, o
                           <table.FlexRender header={header} />
                           {sorted ? <Icon name="up" size={12} className={`!align-baseline ${sorted === "desc" ? "rotate-180" : ""}`} /> : null}
                         </button>
-                      ) : <table.FlexRender header={header} />}
+                      ) : <span className="inline-flex min-h-6 items-center"><table.FlexRender header={header} /></span>}
                     </th>
                   );
                 })}
@@ -78,10 +80,11 @@ export function DataTable<Row extends RowData>({ caption, columns, list, sort, o
               <tr key={row.id} className={rowClass?.(row.original)}>
                 {row.getAllCells().map((cell, i) => {
                   const number = numeric.includes(cell.column.id) ? "num" : "";
+                  const place = phone[cell.column.id] ?? "";
                   const words = typeof cell.column.columnDef.header === "string" ? cell.column.columnDef.header : undefined;
                   return i === 0
                     ? <th key={cell.id} scope="row"><table.FlexRender cell={cell} /></th>
-                    : <td key={cell.id} data-l={words} className={number}><table.FlexRender cell={cell} /></td>;
+                    : <td key={cell.id} data-l={place.includes("bare") ? undefined : words} className={`${number} ${place}`}><table.FlexRender cell={cell} /></td>;
                 })}
               </tr>
             ))}

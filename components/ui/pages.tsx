@@ -2,7 +2,7 @@ import { withCommas } from "@/lib/core/quantity";
 import { Button, ButtonLink } from "./button";
 import { Icon } from "./icon";
 
-/** "1 to 25 of 143", with the pages before and after. */
+/** "1 to 25 of 143" or "15 in all", with the pages before and after. */
 export function Pages({ total, page, pageSize, href }: { total: number; page: number; pageSize: number; href: (page: number) => string }) {
   const last = Math.max(1, Math.ceil(total / pageSize));
   const from = Math.min(total, (page - 1) * pageSize + 1);
@@ -10,7 +10,7 @@ export function Pages({ total, page, pageSize, href }: { total: number; page: nu
   const after = <>Next<Icon name="next" /></>;
   return (
     <nav aria-label="Pages" className="no-print flex flex-wrap items-center justify-between gap-3 pt-3 text-t2 text-ink-2">
-      <span>{withCommas(from)} to {withCommas(Math.min(total, page * pageSize))} of {withCommas(total)}</span>
+      <span>{last === 1 ? `${withCommas(total)} in all` : <>{withCommas(from)} to {withCommas(Math.min(total, page * pageSize))} of {withCommas(total)}</>}</span>
       {last > 1 ? (
         <span className="flex gap-2">
           {page > 1 ? <ButtonLink size="small" href={href(page - 1)}>{before}</ButtonLink> : <Button size="small" disabled>{before}</Button>}

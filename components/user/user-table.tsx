@@ -31,7 +31,7 @@ export function UserTable({ users, ownId, timeZone }: { users: readonly UserView
 
   return (
     <>
-      <table className="ruled lines">
+      <table className="ruled lines users">
         <caption className="sr-only">Users</caption>
         <thead><tr><th scope="col">Name</th><th scope="col">E-mail address</th><th scope="col">Role</th><th scope="col">State</th><th scope="col">Last seen</th><th scope="col"><span className="sr-only">Change</span></th></tr></thead>
         <tbody>
