@@ -29,6 +29,7 @@ export async function approveImage(actor: Actor, chipId: string, input: Approval
   if (board.role !== "original") throw new AppError("does-not-fit", "An approval belongs to the original's chip. Open its pair.");
   const read = await Read.findOne({ where: { chipId, stage: "before", sha256: Buffer.from(input.sha256, "hex") } });
   if (read) await requireSoundImage(input.sha256, read.sizeBytes, "approval");
+  await requireSoundDonor(input.donorChipId);
   try {
     return await inTransaction(async (tx) => {
       await lockChain(tx, drive.id);
@@ -48,6 +49,13 @@ export async function approveImage(actor: Actor, chipId: string, input: Approval
     }), { receipt: false });
     throw new AppError("rule-against", rule);
   }
+}
+
+/** The write destroys what the donor holds now, so its saved content must be there to the last bit. */
+async function requireSoundDonor(donorChipId: string): Promise<void> {
+  const own = await Read.findAll({ where: { chipId: donorChipId, stage: "donor", counted: true } });
+  const sizes = new Map(own.map((r) => [r.sha256.toString("hex"), r.sizeBytes]));
+  for (const [sha256, sizeBytes] of sizes) await requireSoundImage(sha256, sizeBytes, "approval");
 }
 
 async function give(tx: Transaction, actor: Actor, record: ChipRecord, input: ApprovalInput, twoPersonRule: boolean): Promise<{ id: string; sha256: string }> {

@@ -4,7 +4,7 @@ import { checkCustody } from "@/lib/queries/custody";
 import { CustodyEntry, type Transaction } from "@/models";
 
 /** What shows at an entry and says something about what lies before it. */
-const ABOUT_THE_PAST = new Set<ChainProblem>(["prev", "sequence", "time-went-back"]);
+const ABOUT_THE_PAST = new Set<string>(["prev", "sequence", "time-went-back"] satisfies ChainProblem[]);
 
 /**
  * False while the drive's log has a fault that no auditor has assessed since. An assessment covers the entries before

@@ -31,7 +31,7 @@ export function approvalFacts(record: ChipRecord, policy: Policy, chainClean: bo
   return {
     ...stateFacts(record, policy),
     donor: record.donor && {
-      chipId: record.donor.chip.id, sizeBytes: record.donor.chip.sizeBytes, savedReads: record.own.map(stateRead),
+      chipId: record.donor.chip.id, sizeBytes: record.donor.chip.sizeBytes, savedReads: soundOwn(record),
       firstTransferDone: record.transfers.some((t) => t.donorChipId === record.donor!.chip.id),
     },
     chainClean,
@@ -40,6 +40,11 @@ export function approvalFacts(record: ChipRecord, policy: Policy, chainClean: bo
   };
 }
 
+/** A donor's read whose stored image is damaged or missing saves nothing. */
+function soundOwn(record: ChipRecord): StateRead[] {
+  return record.own.filter((r) => !record.unsound.has(r.sha256.toString("hex"))).map(stateRead);
+}
+
 export function donorContentSaved(record: ChipRecord): boolean {
-  return record.donor !== null && donorSaved(record.own.map(stateRead), record.donor.chip.sizeBytes);
+  return record.donor !== null && donorSaved(soundOwn(record), record.donor.chip.sizeBytes);
 }

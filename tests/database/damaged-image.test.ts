@@ -3,7 +3,7 @@ import { afterEach, describe, expect, it } from "vitest";
 import { openHandedOut } from "@/lib/commands/hand-out-image";
 import { verifiedStream } from "@/storage";
 import { logged, readNamed, refusal, view } from "../support/bench-steps";
-import { approve, freshImage, lastEntry, makeApprovedBench, makeChip, makeReadyBench, makeUser, sha256, stateOf, store } from "../support/factory";
+import { approve, freshImage, lastEntry, makeApprovedBench, makeChip, makeReady, makeReadyBench, makeUser, sha256, stateOf, store } from "../support/factory";
 import { damageImage, loseImage } from "../support/tamper";
 
 /** What a test did to the store is undone, as by a backup. */
@@ -58,6 +58,20 @@ for (const state of ["damaged", "missing"] as const) {
       const chip = await makeChip(await makeUser("technician"));
       await store(bench.technician, chip.chipId, "before", freshImage());
       expect(await stateOf(bench.technician, chip.chipId)).toBe("needs-reads");
+    });
+
+    it("bars the approval when it is the donor's own content, which the write would destroy", async () => {
+      const [technician, lead] = [await makeUser("technician"), await makeUser("lead")];
+      const [chip, image, own] = [await makeChip(technician), freshImage(), freshImage()];
+      await makeReady(technician, chip, image, own);
+      harm[state](sha256(own));
+      expect(await refusal(approve(lead, chip, image))).toMatchObject({ status: 409, detail: expect.stringContaining(`is ${state}`) as string });
+      const { approval, conditions } = await view({ technician, chip });
+      expect(approval).toBeNull();
+      expect(conditions.find((c) => c.key === "donor-saved")).toMatchObject({ state: "open", value: "0 of 2" });
+      undo.pop()?.();
+      await approve(lead, chip, image);
+      expect(await stateOf(technician, chip.chipId)).toBe("approved");
     });
 
     it("can be cleared again once a backup has put it back", async () => {
