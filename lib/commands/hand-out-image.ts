@@ -4,7 +4,7 @@ import { type Actor, readName } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { Approval, inTransaction, Read } from "@/models";
 import { verifiedStream } from "@/storage";
-import { appendEntry } from "./append-entry";
+import { appendEntry, lockChain } from "./append-entry";
 import { requireCleanChain } from "./chain-gate";
 import { driveLetter, placeOfChip } from "./place";
 import { allow, notFound } from "./refuse";
@@ -32,10 +32,18 @@ export async function handOutImage(actor: Actor, readId: string, input: { reason
   await requireCleanChain(place.drive.id);
   const sha256 = read.sha256.toString("hex");
   await requireSoundImage(sha256, read.sizeBytes, "hand-out");
-  await inTransaction((tx) => appendEntry(tx, place.drive.id, actor, "image.handed-out", { type: "read", id: read.id }, {
-    read: { id: read.id, stage: read.stage, number: read.number }, chip: { id: place.chip.id, designator: place.chip.designator },
-    sha256, sizeBytes: read.sizeBytes, purpose: free ?? "another image, with a reason", to: { id: actor.id, name: actor.name }, reason: input.reason ?? null,
-  }));
+  await inTransaction(async (tx) => {
+    await lockChain(tx, place.drive.id);
+    // asked again under the lock: a revocation that came meanwhile counts
+    const now = approval && read.stage === "before" ? await Approval.findByPk(approval.id, { transaction: tx }) : null;
+    if (now?.revokedAt) {
+      throw new AppError("rule-against", "The approval of this image was revoked just now: it is no longer cleared. See the chip's page for what to do.");
+    }
+    await appendEntry(tx, place.drive.id, actor, "image.handed-out", { type: "read", id: read.id }, {
+      read: { id: read.id, stage: read.stage, number: read.number }, chip: { id: place.chip.id, designator: place.chip.designator },
+      sha256, sizeBytes: read.sizeBytes, purpose: free ?? "another image, with a reason", to: { id: actor.id, name: actor.name }, reason: input.reason ?? null,
+    });
+  });
   const name = readName(read.stage, read.number).replace(" ", "-");
   return { sha256, sizeBytes: read.sizeBytes, fileName: `${place.case.ref}_${driveLetter(place.drive)}_${place.chip.designator}_${name}_${sha256.slice(-8)}.bin` };
 }

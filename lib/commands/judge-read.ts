@@ -2,6 +2,7 @@ import { Op } from "sequelize";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
 import type { JudgeInput } from "@/lib/core/findings";
 import { judgeRead } from "@/lib/core/findings";
+import { nearlyBlank } from "@/lib/core/inspect";
 import { countOf } from "@/lib/core/quantity";
 import { placeText } from "@/lib/core/strip";
 import { type Finding, readName, SYSTEM } from "@/lib/core/words";
@@ -26,7 +27,8 @@ export async function findingsOf(tx: Transaction, place: ChipPlace, read: Read):
     earlier: siblings.map((r) => ({
       number: r.number, stage: r.stage, sha256: r.sha256.toString("hex"), fileName: r.fileName, modifiedAt: r.modifiedAt?.toISOString() ?? null, counted: r.counted,
     })),
-    elsewhere: await elsewhere(tx, place, read),
+    // every workshop holds many blank images: they say nothing about where they come from, so nothing is looked up
+    elsewhere: nearlyBlank(image.facts) ? [] : await elsewhere(tx, place, read),
     tail: read.sizeBytes > place.chip.sizeBytes ? { uniform: await tailIsUniform(read, place.chip.sizeBytes) } : undefined,
   });
 }
@@ -102,6 +104,8 @@ export async function judgeChip(tx: Transaction, place: ChipPlace): Promise<void
  * other chips that hold the same bytes are judged again, each chain in a transaction of its own.
  */
 export async function judgeSameImages(sha256: Buffer, exceptChipId: string): Promise<void> {
+  const image = await Image.findByPk(sha256);
+  if (!image || nearlyBlank(image.facts)) return;
   const same = await Read.findAll({ where: { sha256, stage: "before", chipId: { [Op.ne]: exceptChipId } } });
   for (const { id, chipId } of same) {
     const { drive } = await placeOfChip(chipId);
