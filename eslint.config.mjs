@@ -3,7 +3,7 @@ import hooks from "eslint-plugin-react-hooks";
 import tseslint from "typescript-eslint";
 
 export default tseslint.config(
-  { ignores: [".next/**", ".data/**", "next-env.d.ts", "test-results/**"] },
+  { ignores: [".next/**", "dist/**", ".data/**", "next-env.d.ts", "test-results/**"] },
   ...tseslint.configs.recommended,
   {
     plugins: { "@next/next": next, "react-hooks": hooks },

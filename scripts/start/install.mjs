@@ -1,6 +1,7 @@
 import { createHash } from "node:crypto";
 import { existsSync, readFileSync, readdirSync, rmSync, writeFileSync } from "node:fs";
 import path from "node:path";
+import { buildTools, toolsMissing } from "../build-tools.mjs";
 import { once } from "./once.mjs";
 import { progress, root } from "./say.mjs";
 
@@ -11,13 +12,15 @@ const BUILD_STAMP = path.join(root, ".next/twinread-build");
 const SOURCES = [
   "app", "components", "lib", "models", "storage", "migrations", "public", "proxy.ts", "instrumentation.ts",
   "next.config.mjs", "tailwind.config.ts", "postcss.config.mjs", "tsconfig.json", "package.json", "package-lock.json",
+  // what the tools in dist/ are made of besides lib
+  "scripts/build-tools.mjs", "scripts/inspect.ts", "scripts/inspect", "scripts/bench",
 ];
 
 const read = (file) => (existsSync(file) ? readFileSync(file, "utf8").trim() : "");
 const lockHash = () => createHash("sha256").update(readFileSync(path.join(root, "package-lock.json"))).digest("hex");
 
 export const needsInstall = () => read(LOCK_STAMP) !== lockHash();
-export const needsBuild = () => !existsSync(path.join(root, ".next/BUILD_ID")) || read(BUILD_STAMP) !== sourcesHash();
+export const needsBuild = () => !existsSync(path.join(root, ".next/BUILD_ID")) || toolsMissing() || read(BUILD_STAMP) !== sourcesHash();
 
 export async function ensureInstalled() {
   if (!needsInstall()) return;
@@ -38,6 +41,7 @@ export async function ensureBuilt() {
   delete env.DATABASE_ADMIN_URL;
   try {
     await progress("Building the app", () => once(process.execPath, ["node_modules/next/dist/bin/next", "build"], { env }));
+    await buildTools();
   } catch (error) {
     // the bundler remembers a missing file even after it is there: the next attempt begins without its memory
     rmSync(path.join(root, ".next"), { recursive: true, force: true });

@@ -34,10 +34,11 @@ const THERE = {
   openssl: program("openssl"),
   zip: program("zip"),
   binutils: program("strings"),
+  srecord: program("srec_cat"),
 };
 
 export const DATABASE_PACKAGES = ["mariadb-server-core", "mariadb-client"];
-export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils"];
+export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord"];
 
 export const missingPackages = (wanted) => wanted.filter((name) => !THERE[name]());
 

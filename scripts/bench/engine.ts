@@ -1,0 +1,57 @@
+import { spawnSync } from "node:child_process";
+import { readFileSync } from "node:fs";
+import { compareImages } from "@/lib/core/compare";
+import { comparePairs, judgeReads, verdictOf } from "../inspect/judge";
+import { loadReads } from "../inspect/load";
+
+/**
+ * What scripts/bench-engine.mjs has measured in a process of its own. `ratio TASK ROUNDS FILE…` times a task against
+ * sha256sum of all files plus cmp of the first with each other, round by round; `time TASK ROUNDS FILE…` times it alone;
+ * `memory TASK FILE…` runs it once. Prints one line of JSON.
+ */
+const asked = (files: string[]) => ({ files, size: null, format: "raw" as const, base: 0, fill: 0xff, json: false });
+
+const TASKS: Record<string, (files: string[]) => void> = {
+  /** the reads in memory and their digests: what every other task begins with */
+  load: (files) => void loadReads(asked(files)),
+  bytes: (files) => void files.map((file) => readFileSync(file)),
+  compare(files) {
+    // the bytes themselves, although equal digests would already tell
+    const [first, ...others] = files.map((file) => readFileSync(file));
+    for (const other of others) compareImages(first, other);
+  },
+  "digests-and-comparisons"(files) {
+    const [first] = loadReads(asked(files));
+    for (const file of files.slice(1)) compareImages(first.bytes, readFileSync(file));
+  },
+  inspect: (files) => void judgeReads(loadReads(asked(files)), null),
+  verdict(files) {
+    const reads = judgeReads(loadReads(asked(files)), null);
+    verdictOf(reads, comparePairs(reads, null), null);
+  },
+};
+
+function timed(work: () => void): number {
+  const from = performance.now();
+  work();
+  return performance.now() - from;
+}
+
+function yardstick(files: string[]): number {
+  const [first, ...others] = files.map((file) => `'${file}'`);
+  // cmp ends with 1 when they differ, and then stops early: -l has it go on to the end
+  const script = [`sha256sum ${files.map((file) => `'${file}'`).join(" ")}`, ...others.map((other) => `cmp -l ${first} ${other}`)].join("; ");
+  return timed(() => spawnSync("sh", ["-c", script], { stdio: "ignore" }));
+}
+
+const [mode, name, ...rest] = process.argv.slice(2);
+const task = TASKS[name];
+const rounds = mode === "memory" ? 1 : Number(rest.shift());
+const took: number[] = [];
+const yard: number[] = [];
+if (mode !== "memory") task(rest);
+for (let round = 0; round < rounds; round += 1) {
+  if (mode === "ratio") yard.push(yardstick(rest));
+  took.push(timed(() => task(rest)));
+}
+process.stdout.write(`${JSON.stringify({ took, yard, maxRssKib: process.resourceUsage().maxRSS })}\n`);
