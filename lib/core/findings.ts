@@ -1,8 +1,8 @@
 import { crossFindings, type Elsewhere } from "./cross-findings";
-import { isUniform, type ImageFacts } from "./inspect";
-import { countOf, isPowerOfTwo, sizeText, withCommas } from "./quantity";
-import { rangeText } from "./strip";
-import { readName, type Finding, type Policy, type SizeSource, type Stage } from "./words";
+import type { ImageFacts } from "./inspect";
+import { countOf, isPowerOfTwo, withCommas } from "./quantity";
+import { singleFindings, type ChipOfImage } from "./single-findings";
+import { readName, type Finding, type Policy, type Stage } from "./words";
 
 export interface EarlierRead {
   number: number;
@@ -16,71 +16,15 @@ export interface EarlierRead {
 export interface JudgeInput {
   stage: Stage;
   read: { sizeBytes: number; sha256: string; fileName: string; modifiedAt: string | null };
-  chip: { sizeBytes: number; sizeSource: SizeSource };
+  chip: ChipOfImage;
   facts: ImageFacts;
   policy: Policy;
   /** earlier reads of the same chip and stage */
   earlier: EarlierRead[];
   /** counted reads of other chips with this very digest */
   elsewhere: Elsewhere[];
-  /** for an image longer than the chip: whether all bytes past the chip's size are one fill value */
+  /** for an image longer than the chip: whether all bytes past its size are one fill value; the facts of inspectWhole know it themselves */
   tail?: { uniform: boolean };
-}
-
-const READ_AGAIN = "The chip wasn't powered or the clip isn't on. Check pin 8 and read again.";
-
-/** F01 F02 F03: one value throughout. */
-function uniformFinding({ facts, stage }: JudgeInput): Finding | null {
-  if (!isUniform(facts)) return null;
-  const hex = facts.dominantByte.toString(16).toUpperCase().padStart(2, "0");
-  const shared = { severity: "blocks", measured: `all ${countOf(facts.sizeBytes, "byte")} are ${hex}`, threshold: "every byte equal" } as const;
-  const message = `All ${hex}.`;
-  if (stage === "donor") {
-    const code = hex === "FF" ? "blank" : hex === "00" ? "all-zero" : "constant";
-    return { ...shared, code, message, advice: "Any content of the donor will do. If it should hold something, check the clip and read again." };
-  }
-  if (hex === "FF") {
-    return { ...shared, code: "blank", message, advice: `${READ_AGAIN} A plausible chip id with the same result says it is truly blank.` };
-  }
-  if (hex === "00") {
-    return { ...shared, code: "all-zero", message, advice: "Looks like no supply or a data line held low. Measure the supply at the chip, check ground, look for a short and read again." };
-  }
-  return { ...shared, code: "constant", message, advice: "Looks like a data line that is stuck or another kind of chip set in the reader. Check both and read again." };
-}
-
-/** F07 F08 F09: any size but the chip's. Nothing is trimmed or padded. */
-function sizeFinding({ read, chip, tail }: JudgeInput): Finding | null {
-  if (read.sizeBytes === chip.sizeBytes) return null;
-  const typed = chip.sizeSource === "typed" ? " The size was only typed: check it against the marking." : "";
-  const shared = {
-    severity: "blocks",
-    measured: countOf(read.sizeBytes, "byte"),
-    threshold: `${countOf(chip.sizeBytes, "byte")}, the chip's size (${chip.sizeSource})`,
-  } as const;
-  if (read.sizeBytes < chip.sizeBytes) {
-    const end = rangeText(read.sizeBytes - 1, 1, chip.sizeBytes);
-    return {
-      ...shared, code: "too-short",
-      message: `Ends at ${end}: ${sizeText(read.sizeBytes)} of ${sizeText(chip.sizeBytes)}.`,
-      advice: `The reader stopped early or a smaller chip was set. Read the whole chip again.${typed}`,
-      ranges: [{ start: read.sizeBytes, length: chip.sizeBytes - read.sizeBytes }],
-    };
-  }
-  const over = read.sizeBytes - chip.sizeBytes;
-  const where = rangeText(chip.sizeBytes, over, read.sizeBytes);
-  const ranges = [{ start: chip.sizeBytes, length: over }];
-  if (tail?.uniform) {
-    return {
-      ...shared, code: "padded", ranges,
-      message: `${countOf(over, "byte")} too long, and ${where} holds one fill value: looks like padding.`,
-      advice: `Set the chip's own size in the reader and read again, or correct the chip's size.${typed}`,
-    };
-  }
-  return {
-    ...shared, code: "extra-bytes", ranges,
-    message: `${countOf(over, "byte")} more than the chip holds, ${where}.`,
-    advice: `Looks like a header, a trailer or a larger chip set in the reader. Save the plain image and upload it, or correct the chip's size.${typed}`,
-  };
 }
 
 /** F30: the same file a second time. Without a known modification time nothing is said. */
@@ -106,19 +50,23 @@ function oddSizeFinding({ chip }: JudgeInput): Finding | null {
   };
 }
 
+/** A donor may hold anything, nothing too. */
+const UNIFORM_CODES: readonly string[] = ["blank", "all-zero", "constant"];
 const SIZE_CODES: readonly string[] = ["too-short", "padded", "extra-bytes"];
 
 /** Only `before` reads gate; of a donor's own reads the size does; read-backs are judged by judgeReadBack. */
 function forStage(finding: Finding, stage: Stage): Finding {
   if (stage === "before" || (stage === "donor" && SIZE_CODES.includes(finding.code))) return finding;
-  return { ...finding, severity: "note" };
+  const advice = stage === "donor" && UNIFORM_CODES.includes(finding.code)
+    ? "Any content of the donor will do. If it should hold something, check the clip and read again."
+    : finding.advice;
+  return { ...finding, severity: "note", advice };
 }
 
 /** Findings on one read when it is stored: what it shows by itself, and against what is already known. */
 export function judgeRead(input: JudgeInput): Finding[] {
   const found = [
-    uniformFinding(input),
-    sizeFinding(input),
+    ...singleFindings(input.facts, input.chip, input.tail?.uniform),
     copyFinding(input),
     input.stage === "after" ? null : oddSizeFinding(input),
     ...(input.stage === "before" ? crossFindings(input.facts, input.elsewhere) : []),
@@ -138,5 +86,6 @@ export function oneSeatingFinding(policy: Policy, countedReads: readonly { seati
   };
 }
 
+export { singleFindings } from "./single-findings";
 export { createAndMatch } from "./compare";
 export { judgeReadBack, type ReadBackInput } from "./read-back-findings";

@@ -64,10 +64,16 @@ export interface Finding {
 }
 
 export const FINDING_CODES = [
-  "blank", "all-zero", "constant", "too-short", "padded", "extra-bytes", "other-chip", "other-drive", "donor-content",
-  "copy-not-a-read", "one-seating", "size-not-power-of-two",
+  // one image by itself
+  "blank", "all-zero", "constant", "nearly-blank", "repeats-within", "address-line", "short-period", "too-short", "padded", "extra-bytes",
+  "bit-slip", "text-file", "container-file", "noise-like", "constant-bit", "size-contradicts", "size-not-power-of-two",
+  // against what else is on record
+  "other-chip", "other-drive", "donor-content", "family-likeness", "copy-not-a-read", "one-seating",
+  // two reads, or a read-back and what should have been written
+  "byte-slip", "command-echo", "rotated", "byte-swapped", "bit-reversed", "inverted", "rearranged", "lost-contact", "random-flips",
+  "one-way-flips", "foreign-blocks", "buffer-edge", "edge-bytes",
   // after a write
-  "verified", "write-refused", "not-erased", "erased-only", "other-image", "differs",
+  "verified", "write-refused", "not-erased", "erased-only", "page-wrap", "partly-protected", "weak-cells", "other-image", "differs",
 ] as const;
 export type FindingCode = (typeof FINDING_CODES)[number];
 
