@@ -6,11 +6,15 @@ const COLON = 0x3a;
 const SAVE_AGAIN = "Save the text again and send it unchanged.";
 /** count, address, type, 255 data bytes, checksum */
 const LONGEST = 260;
+/** where addresses wrap after type 02, and otherwise */
+const SEGMENT = 0x1_0000;
+const LINEAR = 0x1_0000_0000;
+/** data bytes of the types 01 to 05 */
+const FIXED_LENGTH = [NaN, 0, 2, 4, 2, 4];
 
 function checkLength(type: number, length: number, line: number): void {
-  const fixed: Record<number, number> = { 1: 0, 2: 2, 3: 4, 4: 2, 5: 4 };
   if (type > 5) throw new FormatError(line, `is a record of type ${hexOf(type)}; types 00 to 05 exist. Check that it is an Intel HEX text.`);
-  if (type !== 0 && length !== fixed[type]) throw new FormatError(line, `is a record of type ${hexOf(type)} with ${length} data bytes; it has ${fixed[type]}. ${SAVE_AGAIN}`);
+  if (type !== 0 && length !== FIXED_LENGTH[type]) throw new FormatError(line, `is a record of type ${hexOf(type)} with ${length} data bytes; it has ${FIXED_LENGTH[type]}. ${SAVE_AGAIN}`);
 }
 
 /**
@@ -20,17 +24,16 @@ function checkLength(type: number, length: number, line: number): void {
 export function walkIntelHex(text: string | Uint8Array, onData: OnData): { records: number; start?: string } {
   const source = asBytes(text);
   const values = new Uint8Array(LONGEST);
-  let [base, wrap, ended] = [0, 0x1_0000_0000, 0];
+  let [base, wrap, ended] = [0, LINEAR, 0];
   let start: string | undefined;
 
   function give(at: number, length: number, line: number): void {
-    const segment = wrap === 0x1_0000;
-    for (let done = 0; done < length; ) {
-      const offset = ((segment ? at : base + at) + done) % wrap;
-      const run = Math.min(length - done, wrap - offset);
-      onData(segment ? base + offset : offset, values, 4 + done, 4 + done + run, line);
-      done += run;
-    }
+    if (length === 0) return;
+    const lift = wrap === SEGMENT ? base : 0;
+    const offset = wrap === SEGMENT ? at : base + at;
+    const first = Math.min(length, wrap - offset);
+    onData(lift + offset, values, 4, 4 + first, line);
+    if (first < length) onData(lift, values, 4 + first, 4 + length, line);
   }
 
   const records = eachLine(source, (from, to, line) => {
@@ -49,8 +52,8 @@ export function walkIntelHex(text: string | Uint8Array, onData: OnData): { recor
     const word = (i: number) => (values[i] << 8) | values[i + 1];
     if (type === 0) give(word(1), length, line);
     else if (type === 1) ended = line;
-    else if (type === 2) [base, wrap] = [word(4) * 16, 0x1_0000];
-    else if (type === 4) [base, wrap] = [word(4) * 0x1_0000, 0x1_0000_0000];
+    else if (type === 2) [base, wrap] = [word(4) * 16, SEGMENT];
+    else if (type === 4) [base, wrap] = [word(4) * 0x1_0000, LINEAR];
     else start = type === 3 ? `${hexOf(word(4), 4)}:${hexOf(word(6), 4)}` : hexOf(word(4) * 0x1_0000 + word(6), 8);
   });
   if (ended === 0) throw new FormatError(Math.max(1, records), "is the last one and no end record: the text is cut off. Save it again.");

@@ -5,9 +5,9 @@ import { comparePairs, judgeReads, verdictOf } from "../inspect/judge";
 import { loadReads } from "../inspect/load";
 
 /**
- * What scripts/bench-engine.mjs has measured in a process of its own. `ratio TASK ROUNDS FILE…` times a task against
- * sha256sum of all files plus cmp of the first with each other, round by round; `time TASK ROUNDS FILE…` times it alone;
- * `memory TASK FILE…` runs it once. Prints one line of JSON.
+ * What scripts/bench-engine.mjs has measured in a process of its own. `ratio TASK ROUNDS FILE… -- FILE…` times a task,
+ * round by round, against sha256sum of the files after the dashes and cmp of the first of those with each other;
+ * `time TASK ROUNDS FILE…` times it alone; `memory TASK FILE…` runs it once. Prints one line of JSON.
  */
 const asked = (files: string[]) => ({ files, size: null, format: "raw" as const, base: 0, fill: 0xff, json: false });
 
@@ -39,19 +39,21 @@ function timed(work: () => void): number {
 
 function yardstick(files: string[]): number {
   const [first, ...others] = files.map((file) => `'${file}'`);
-  // cmp ends with 1 when they differ, and then stops early: -l has it go on to the end
-  const script = [`sha256sum ${files.map((file) => `'${file}'`).join(" ")}`, ...others.map((other) => `cmp -l ${first} ${other}`)].join("; ");
+  // equal files, or cmp would stop at the first difference
+  const script = [`sha256sum ${files.map((file) => `'${file}'`).join(" ")}`, ...others.map((other) => `cmp ${first} ${other}`)].join(" && ");
   return timed(() => spawnSync("sh", ["-c", script], { stdio: "ignore" }));
 }
 
 const [mode, name, ...rest] = process.argv.slice(2);
 const task = TASKS[name];
+const split = rest.indexOf("--");
+const yardFiles = split < 0 ? [] : rest.splice(split).slice(1);
 const rounds = mode === "memory" ? 1 : Number(rest.shift());
 const took: number[] = [];
 const yard: number[] = [];
 if (mode !== "memory") task(rest);
 for (let round = 0; round < rounds; round += 1) {
-  if (mode === "ratio") yard.push(yardstick(rest));
+  if (mode === "ratio") yard.push(yardstick(yardFiles));
   took.push(timed(() => task(rest)));
 }
 process.stdout.write(`${JSON.stringify({ took, yard, maxRssKib: process.resourceUsage().maxRSS })}\n`);
