@@ -2,7 +2,7 @@ import { agreement, deriveReadingState, oddOneOut, openFindings, type StateRead,
 import { compareImages, createComparison, type Comparison } from "@/lib/core/compare";
 import { diagnose, type DiagnosisView } from "@/lib/core/diagnosis";
 import { judgeRead } from "@/lib/core/findings";
-import { inspectImage, type ImageFacts } from "@/lib/core/inspect";
+import { inspectWhole, type ImageFacts } from "@/lib/core/inspect";
 import { countOf } from "@/lib/core/quantity";
 import { DEFAULT_POLICY, readName, type Finding, type Policy } from "@/lib/core/words";
 import type { LoadedRead } from "./load";
@@ -39,7 +39,7 @@ function once<T>(make: (read: LoadedRead) => T): (read: LoadedRead) => T {
 
 /** `size`: the chip's, or null where it isn't known: then each image is taken to be whole. */
 export function judgeReads(loaded: readonly LoadedRead[], size: number | null): JudgedRead[] {
-  const factsOf = once((read) => inspectImage(read.bytes));
+  const factsOf = once((read) => inspectWhole(read.bytes));
   return loaded.map((read, i) => {
     const sizeBytes = read.bytes.length;
     const chip = { sizeBytes: size ?? sizeBytes, sizeSource: "typed" as const };
