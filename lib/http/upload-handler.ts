@@ -4,7 +4,7 @@ import { AppError } from "@/lib/errors";
 import { once, requestHash } from "./idempotency";
 import { checkOrigin } from "./origin";
 import { answerTo } from "./problem";
-import { takeUpload, type Upload } from "./upload";
+import { readOut, takeUpload, type Upload } from "./upload";
 
 export interface UploadCall {
   actor: Actor;
@@ -34,7 +34,8 @@ export function uploadHandler(options: { before: (actor: Actor, id: string) => P
       return Response.json(answer.body, { status: answer.status });
     } catch (error) {
       const response = answerTo(error);
-      // the rest of a refused body is not worth reading
+      // closing on a sender who is still sending would lose the answer on its way
+      await readOut(request);
       response.headers.set("connection", "close");
       return response;
     }

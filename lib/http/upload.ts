@@ -61,16 +61,40 @@ export async function takeUpload<T>(request: Request, run: (upload: Upload) => P
   }
 }
 
+const READ_OUT_MS = 10_000;
+
+/** Reads what is left of a refused body and throws it away: up to the size of one image, and for some seconds. */
+export async function readOut(request: Request): Promise<void> {
+  if (!request.body || request.bodyUsed) return;
+  const reader = request.body.getReader();
+  const giveUp = () => void reader.cancel().catch(() => {});
+  const timer = setTimeout(giveUp, READ_OUT_MS);
+  let size = 0;
+  try {
+    for (let part = await reader.read(); !part.done; part = await reader.read()) {
+      size += part.value.length;
+      if (size > MAX_IMAGE_BYTES + SLACK) giveUp();
+    }
+  } catch {
+    // the sender is gone: nobody waits for the answer
+  } finally {
+    clearTimeout(timer);
+  }
+}
+
 async function parse(request: Request): Promise<Upload> {
   if (!request.body) throw new AppError("malformed", "The request has no body. Send 1 to 16 parts named file.");
   const stream = Readable.from(capped(request.body), { objectMode: false, highWaterMark: 256 * 1024 }) as Readable & {
-    headers: Record<string, string>; files?: (Express.Multer.File & { arrived: Arrived })[]; body?: Record<string, string | string[]>;
+    headers: Record<string, string>; files?: (Express.Multer.File & { arrived?: Arrived })[]; body?: Record<string, string | string[]>;
   };
   stream.headers = Object.fromEntries(request.headers);
   if (!stream.headers["content-length"]) stream.headers["transfer-encoding"] ??= "chunked";
   const run = multer({
     storage: new IntoStore(), defParamCharset: "utf8",
-    limits: { fileSize: MAX_IMAGE_BYTES, files: MAX_FILES_A_CALL, fields: MAX_FIELDS_A_CALL, fieldSize: MAX_FIELD_BYTES, fieldNameSize: 100, parts: MAX_FILES_A_CALL + MAX_FIELDS_A_CALL, headerPairs: 20 },
+    // the name is evidence and kept as it came; no path is ever made of it
+    preservePath: true,
+    // fieldNestingDepth: a field called note[4294967290] would become a list of that length
+    limits: { fileSize: MAX_IMAGE_BYTES, files: MAX_FILES_A_CALL, fields: MAX_FIELDS_A_CALL, fieldSize: MAX_FIELD_BYTES, fieldNameSize: 100, parts: MAX_FILES_A_CALL + MAX_FIELDS_A_CALL, headerPairs: 20, fieldNestingDepth: 0 },
   }).array("file", MAX_FILES_A_CALL);
   const onAbort = () => stream.destroy(new Error("the sender went away"));
   request.signal.addEventListener("abort", onAbort, { once: true });
@@ -80,14 +104,15 @@ async function parse(request: Request): Promise<Upload> {
       run(stream as unknown as ExpressRequest, {} as ExpressResponse, (error?: unknown) => (error ? reject(error) : resolve()));
     });
   } catch (error) {
-    for (const file of stream.files ?? []) await discard(file.arrived);
+    // what broke off within a file leaves an entry that never arrived
+    for (const file of stream.files ?? []) if (file.arrived) await discard(file.arrived);
     throw refusal(error);
   } finally {
     request.signal.removeEventListener("abort", onAbort);
     if (!stream.readableEnded) stream.destroy();
   }
   const fields = new Map(Object.entries(stream.body ?? {}).map(([name, value]) => [name, Array.isArray(value) ? value.map(String) : [String(value)]]));
-  return { files: (stream.files ?? []).map((file) => ({ arrived: file.arrived, fileName: file.originalname })), fields };
+  return { files: (stream.files ?? []).map((file) => ({ arrived: file.arrived!, fileName: file.originalname })), fields };
 }
 
 function refusal(error: unknown): unknown {
