@@ -1,0 +1,142 @@
+/** Who asks: nobody, each role, and two who hold something that is worth nothing any more. */
+export const WHO = ["anonymous", "technician", "lead", "auditor", "admin", "disabled", "garbage"] as const;
+export type Who = (typeof WHO)[number];
+export type Cells = Record<Who, number>;
+
+/** What the matrix may name in an address or a body. */
+export interface Things {
+  caseId: string;
+  driveId: string;
+  chipId: string;
+  /** a counted read of the original that another technician took; nothing is approved */
+  readId: string;
+  policy: object;
+  adminEmail: string;
+  /** nobody has ever used it */
+  unknown: string;
+}
+
+export interface ApiRow {
+  method: "GET" | "POST" | "PUT" | "PATCH" | "DELETE";
+  /** as the folders spell it */
+  route: string;
+  /** what fills the address; the route itself when left out */
+  at?: (things: Things) => string;
+  body?: (things: Things) => unknown;
+  multipart?: true;
+  cells: Cells;
+}
+
+/** The four roles in order; whoever is not signed in is 401. */
+const roles = (technician: number, lead: number, auditor: number, admin: number): Cells => ({
+  anonymous: 401, technician, lead, auditor, admin, disabled: 401, garbage: 401,
+});
+const everyRole = (status: number): Cells => roles(status, status, status, status);
+const anyone = (status: number): Cells => ({ ...everyRole(status), anonymous: status, disabled: status, garbage: status });
+/** Changes are tried on what does not exist: who may gets 404, who may not gets 403 and does not learn that. */
+const BENCH = roles(404, 404, 403, 403);
+const LEAD = roles(403, 404, 403, 403);
+const ADMIN = roles(403, 403, 403, 404);
+
+const reason = () => ({ reason: "Tried by the authorization matrix." });
+const onUnknown = (route: string) => (things: Things) => route.replace("[id]", things.unknown);
+const change = (method: ApiRow["method"], route: string, cells: Cells, body?: ApiRow["body"]): ApiRow => ({ method, route, at: onUnknown(route), body, cells });
+const look = (route: string, at: ApiRow["at"], cells = everyRole(200)): ApiRow => ({ method: "GET", route, at, cells });
+const chip = { designator: "U9", bus: "spi", sizeBytes: 4096, supplyMillivolts: 3300 };
+
+const METHODS = ["GET", "POST", "PUT", "PATCH", "DELETE"] as const;
+
+export const API: ApiRow[] = [
+  ...METHODS.map((method) => ({ method, route: "/api/[...path]", at: () => "/api/drivers", cells: anyone(404) })),
+  // next-auth answers for itself; without its own token it changes nothing and shows the sign-in page
+  { method: "GET", route: "/api/auth/[...nextauth]", at: () => "/api/auth/csrf", cells: anyone(200) },
+  { method: "POST", route: "/api/auth/[...nextauth]", at: () => "/api/auth/callback/credentials", cells: anyone(302) },
+  { method: "GET", route: "/api/health", cells: anyone(200) },
+  { method: "POST", route: "/api/shares/opened", body: () => ({ token: "x".repeat(43) }), cells: anyone(404) },
+
+  { method: "POST", route: "/api/account/password", body: () => ({ current: "not the present one", next: "another long password of mine" }), cells: everyRole(422) },
+  { method: "POST", route: "/api/account/sessions/end", cells: everyRole(200) },
+  { method: "GET", route: "/api/account/tokens", cells: everyRole(200) },
+  { method: "POST", route: "/api/account/tokens", body: () => ({ name: "" }), cells: everyRole(422) },
+  change("DELETE", "/api/account/tokens/[id]", everyRole(404)),
+
+  { method: "GET", route: "/api/bench", cells: everyRole(200) },
+  { method: "GET", route: "/api/cases", cells: everyRole(200) },
+  { method: "POST", route: "/api/cases", body: () => ({ customer: { name: "Authorization matrix", email: "matrix@apitests.example" }, damage: "None" }), cells: roles(201, 201, 403, 403) },
+  look("/api/cases/[id]", (t) => `/api/cases/${t.caseId}`),
+  change("POST", "/api/cases/[id]/drives", BENCH, () => ({ partNumber: "PN 1" })),
+  change("POST", "/api/cases/[id]/bundle", roles(403, 404, 404, 403)),
+  change("POST", "/api/cases/[id]/summary", LEAD),
+
+  look("/api/drives/[id]", (t) => `/api/drives/${t.driveId}`),
+  change("PATCH", "/api/drives/[id]", BENCH, () => ({ changes: { serial: "S1" }, ...reason() })),
+  change("POST", "/api/drives/[id]/boards", BENCH, () => ({ role: "original", boardNumber: "BX 1" })),
+  look("/api/drives/[id]/custody", (t) => `/api/drives/${t.driveId}/custody`),
+  look("/api/drives/[id]/custody/check", (t) => `/api/drives/${t.driveId}/custody/check`),
+  change("POST", "/api/drives/[id]/assessment", roles(403, 403, 404, 403), () => ({ text: "Looked at every entry." })),
+  change("PATCH", "/api/boards/[id]", BENCH, () => ({ changes: { revision: "rev B" }, ...reason() })),
+  change("POST", "/api/boards/[id]/chips", BENCH, () => chip),
+
+  look("/api/chips/[id]", (t) => `/api/chips/${t.chipId}`),
+  change("PATCH", "/api/chips/[id]", BENCH, () => ({ changes: { package: "SOIC-8" }, ...reason() })),
+  look("/api/chips/[id]/view", (t) => `/api/chips/${t.chipId}/view`),
+  look("/api/chips/[id]/strips", (t) => `/api/chips/${t.chipId}/strips`),
+  look("/api/chips/[id]/comparison", (t) => `/api/chips/${t.chipId}/comparison?reads=1,2`),
+  { ...change("POST", "/api/chips/[id]/reads", BENCH), multipart: true },
+  change("POST", "/api/chips/[id]/approval-request", BENCH, () => ({})),
+  change("POST", "/api/chips/[id]/approval", LEAD, (t) => ({ sha256: "0".repeat(64), donorChipId: t.unknown, statement: "Tried by the matrix." })),
+  change("POST", "/api/chips/[id]/sending-back", LEAD, reason),
+  change("POST", "/api/approvals/[id]/revocation", LEAD, reason),
+  change("POST", "/api/approvals/[id]/transfer", BENCH, (t) => ({ kind: "write", donorChipId: t.unknown })),
+
+  look("/api/reads/[id]/bytes", (t) => `/api/reads/${t.readId}/bytes?offset=0&length=16`),
+  // on a read that exists: whose it is decides
+  { method: "POST", route: "/api/reads/[id]/download", at: (t) => `/api/reads/${t.readId}/download`, body: reason, cells: roles(403, 200, 200, 403) },
+  { method: "POST", route: "/api/reads/[id]/count-again", at: (t) => `/api/reads/${t.readId}/count-again`, body: reason, cells: roles(403, 409, 403, 403) },
+  { method: "POST", route: "/api/reads/[id]/set-aside", at: (t) => `/api/reads/${t.readId}/set-aside`, body: reason, cells: roles(403, 200, 403, 403) },
+  { method: "GET", route: "/api/find", at: () => "/api/find?digest=00000000", cells: everyRole(200) },
+  { method: "POST", route: "/api/find", multipart: true, cells: everyRole(200) },
+
+  { method: "GET", route: "/api/mails", cells: roles(403, 403, 403, 200) },
+  change("POST", "/api/mails/[id]/retry", ADMIN),
+  { method: "GET", route: "/api/policy", cells: everyRole(200) },
+  { method: "PUT", route: "/api/policy", body: (t) => t.policy, cells: roles(403, 403, 403, 422) },
+  change("DELETE", "/api/shares/[id]", LEAD),
+  { method: "GET", route: "/api/users", cells: roles(403, 403, 403, 200) },
+  { method: "POST", route: "/api/users", body: (t) => ({ email: t.adminEmail, name: "Twice", role: "admin" }), cells: roles(403, 403, 403, 409) },
+  change("PATCH", "/api/users/[id]", ADMIN, () => ({ name: "Nobody" })),
+];
+
+export interface PageRow {
+  route: string;
+  at?: (things: Things) => string;
+  cells: Cells;
+}
+
+/** Who is not signed in is sent to the sign-in page. */
+const pages = (technician: number, lead: number, auditor: number, admin: number): Cells => ({
+  anonymous: 307, technician, lead, auditor, admin, disabled: 307, garbage: 307,
+});
+const everyDesk = pages(200, 200, 200, 200);
+
+export const PAGES: PageRow[] = [
+  { route: "/", cells: anyone(307) },
+  { route: "/sign-in", cells: anyone(200) },
+  { route: "/summary/[token]", at: () => `/summary/${"x".repeat(43)}`, cells: anyone(404) },
+  { route: "/account", cells: everyDesk },
+  { route: "/bench", cells: everyDesk },
+  { route: "/cases", cells: everyDesk },
+  { route: "/cases/new", cells: pages(200, 200, 307, 307) },
+  { route: "/cases/[id]", at: (t) => `/cases/${t.caseId}`, cells: everyDesk },
+  { route: "/chips/[id]", at: (t) => `/chips/${t.chipId}`, cells: everyDesk },
+  { route: "/chips/[id]/compare", at: (t) => `/chips/${t.chipId}/compare?reads=1,2`, cells: everyDesk },
+  { route: "/chips/[id]/decision", at: (t) => `/chips/${t.chipId}/decision`, cells: everyDesk },
+  { route: "/custody", cells: everyDesk },
+  { route: "/custody/workshop", cells: pages(404, 200, 200, 200) },
+  { route: "/drives/[id]", at: (t) => `/drives/${t.driveId}`, cells: everyDesk },
+  { route: "/drives/[id]/custody", at: (t) => `/drives/${t.driveId}/custody`, cells: everyDesk },
+  { route: "/find", cells: everyDesk },
+  { route: "/outbox", cells: pages(404, 404, 404, 200) },
+  { route: "/policy", cells: everyDesk },
+  { route: "/users", cells: pages(404, 404, 404, 200) },
+];
