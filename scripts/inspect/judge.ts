@@ -1,6 +1,6 @@
 import { agreement, deriveReadingState, oddOneOut, openFindings, type StateRead, type WorstDifference } from "@/lib/core/chip-state";
 import { compareImages, createComparison, type Comparison } from "@/lib/core/compare";
-import { diagnose, type DiagnosisView } from "@/lib/core/diagnosis";
+import { diagnosePair, looksLikeText, type Diagnosis } from "@/lib/core/diagnose-pair";
 import { judgeRead } from "@/lib/core/findings";
 import { inspectWhole, type ImageFacts } from "@/lib/core/inspect";
 import { countOf } from "@/lib/core/quantity";
@@ -16,7 +16,7 @@ export interface JudgedRead extends LoadedRead {
 export interface JudgedPair {
   reads: [number, number];
   comparison: Comparison;
-  diagnosis: DiagnosisView;
+  diagnosis: Diagnosis;
 }
 
 export interface Verdict {
@@ -65,9 +65,8 @@ export function comparePairs(reads: readonly JudgedRead[], size: number | null):
     const key = `${a.sha256} ${b.sha256}`;
     const comparison = done.get(key) ?? compared(a, b);
     done.set(key, comparison);
-    const sizeBytes = size ?? Math.max(a.bytes.length, b.bytes.length);
-    const diagnosis = diagnose(comparison, { nameA: readName("before", a.number), nameB: readName("before", b.number), sizeBytes });
-    return { reads: [a.number, b.number], comparison, diagnosis };
+    const names = { nameA: readName("before", a.number), nameB: readName("before", b.number), sizeBytes: size ?? Math.max(a.bytes.length, b.bytes.length) };
+    return { reads: [a.number, b.number], ...diagnosePair(a.bytes, b.bytes, a.facts, b.facts, names, comparison) };
   }));
 }
 
@@ -79,8 +78,8 @@ function worstOf(states: StateRead[], pairs: readonly JudgedPair[]): WorstDiffer
   if (!pair || pair.comparison.first === null || pair.comparison.last === null) return null;
   const oddRead = odd !== null && pair.reads.includes(odd) ? odd : pair.reads[1];
   const { differingBytes, first, last } = pair.comparison;
-  const looksLike = /looks like ([^.;]+)/.exec(pair.diagnosis.message)?.[1] ?? null;
-  return { oddRead, otherRead: pair.reads[0] === oddRead ? pair.reads[1] : pair.reads[0], differingBytes, first, last, looksLike };
+  const otherRead = pair.reads[0] === oddRead ? pair.reads[1] : pair.reads[0];
+  return { oddRead, otherRead, differingBytes, first, last, looksLike: looksLikeText(pair.diagnosis.code) };
 }
 
 export function verdictOf(reads: readonly JudgedRead[], pairs: readonly JudgedPair[], size: number | null): Verdict {

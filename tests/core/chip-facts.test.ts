@@ -32,6 +32,7 @@ describe("the three-byte id", () => {
   it.each([0x00, 0xff, 0x03, 0xee])("first byte %i looks like a bad contact", (first) => {
     expect(chipIdFacts(Uint8Array.of(first, 0x40, 0x13))).toMatchObject({ answered: true, plausible: false, proposedBytes: null });
   });
+  it("may have two equal bytes", () => expect(id("EF EF 13")).toMatchObject({ answered: true, plausible: true }));
   it("proposes a size by common practice", () => {
     const table = [64, 128, 256, 512, KIB, 2 * KIB, 4 * KIB, 8 * KIB, 16 * KIB, 32 * KIB].map((n) => n * KIB);
     expect(table.map((_, i) => chipIdFacts(Uint8Array.of(0xef, 0x40, 0x10 + i)).proposedBytes)).toEqual(table);
@@ -68,6 +69,10 @@ describe("the chip's own table", () => {
     }
     expect(caught).toBeInstanceOf(SfdpError);
     expect((caught as SfdpError).answered).toBe(answered);
+  });
+  it("needs the dump up to the size, and no more", () => {
+    expect(parseSfdp(dump().slice(0, 0x38)).sizeBytes).toBe(512 * KIB);
+    expect(() => parseSfdp(dump().slice(0, 0x37))).toThrow("The dump ends before the size is told. Read 112 bytes or more.");
   });
   it("throws nothing but its own error", () => {
     fc.assert(fc.property(fc.uint8Array({ maxLength: 200 }), fc.boolean(), (noise, signed) => {

@@ -54,6 +54,11 @@ describe("a composite", () => {
     expect(sha256Hex(reports[0])).toBe("cb93001c3cdfff07c9df3cd7d416067c3ac7fa3a1e3881ffc12669cad612e1e8");
     expect(JSON.parse(reports[0])).toMatchObject({ derived: true, method: "bit majority, n=3", sha256: sha256Hex(GOOD), counts: { disputed: 4, weak: 4 } });
   });
+  it("is the same where one image was read in two seatings", () => {
+    const [a, b, c] = noisy();
+    const reports = permutations([a, { ...a, seating: 2 }, { ...a, seating: 3, excluded: "x" }, b, c, read(flip(50, 4), 1)]).map((sources) => compositeReport(makeComposite(sources), "x"));
+    expect(new Set(reports).size).toBe(1);
+  });
   it("changes its report when a source, a seating or a cause changes", () => {
     const text = (sources: CompositeSource[]) => compositeReport(makeComposite(sources), "x");
     const base = text(noisy());
@@ -87,6 +92,9 @@ describe("refuses", () => {
     const many = (n: number) => [read(Object.assign({}, ...Array.from({ length: n }, (_, i) => flip(8 * i, 1))), 1), read({}, 1), read(flip(0, 2), 2)];
     expect(refusalOf(many(41))).toBe("too-many-disputed");
     expect(refusalOf(many(40))).toBe("made");
+    const short = many(40).map((one) => ({ ...one, bytes: one.bytes.slice(0, 4000) }));
+    expect(refusalOf(short)).toBe("made");
+    expect(refusalOf(short.map((one) => ({ ...one, bytes: one.bytes.slice(0, 3999) })))).toBe("too-many-disputed");
   });
   it("as many votes for as against at one bit of thousands", () => {
     expect(refusalOf([read(flip(7, 7), 1), read({}, 1), read(flip(9, 0), 2), read({ ...flip(7, 7), ...flip(9, 0) }, 2)])).toBe("ties");
@@ -134,6 +142,15 @@ describe("what a lead has to answer", () => {
     });
     expect(codes(alone(200))).toContainEqual(["constructed-bytes", "blocks"]);
     expect(codes(alone(300))).toContainEqual(["constructed-bytes", "reason"]);
+    // two FF in a row are data, sixteen are not
+    const holed = (n: number) => built(2000).map((one) => ({ ...one, bytes: one.bytes.slice().fill(0xff, 1990 - n, 1990).fill(0, 2010, 2010 + n) }));
+    expect(codes(holed(15))).toContainEqual(["constructed-bytes", "reason"]);
+    expect(codes(holed(16))).toContainEqual(["constructed-bytes", "blocks"]);
+  });
+  it("is a made-up byte anywhere in an image that is small as a whole", () => {
+    const cut = (n: number) => [1, 2, 4].map((value, i) => read({ 700: value }, 1 + (i % 2))).map((one) => ({ ...one, bytes: one.bytes.slice(0, n) }));
+    expect(codes(cut(2048))).toContainEqual(["constructed-bytes", "blocks"]);
+    expect(codes(cut(2049))).toContainEqual(["constructed-bytes", "reason"]);
   });
   it("names the places", () => {
     const [, weak] = compositeFindings(makeComposite(noisy()));

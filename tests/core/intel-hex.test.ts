@@ -105,6 +105,7 @@ describe("refuses, with the line", () => {
     ["a start of two bytes", `${record("020000050000")}${END}`, 1],
     ["an end with data", record("0100000100"), 1],
     ["a length that is not the line's", `:0C0010006164647265737320676170A6\n${END}`, 1],
+    ["more bytes than announced, with a right checksum", `${record("010000004142")}${END}`, 1],
     ["two bytes for one address", `${record("0100100041")}${record("0100100042")}${END}`, 2],
     ["a byte past the image", `${record("0200FF004142")}${END}`, 1],
     ["a record of 300 bytes", `:FF${"00".repeat(299)}\n${END}`, 1],
@@ -112,6 +113,7 @@ describe("refuses, with the line", () => {
     ["characters beyond ASCII", `${good}:０0000001FF\n`, 2],
   ])("%s", (_name, text, line) => expect(lineOf(text)).toBe(line));
   it("says what was found and what to do", () => {
+    expect(() => parseIntelHex(record("00000006") + END, WINDOW)).toThrow("Line 1 is a record of type 06; types 00 to 05 exist.");
     expect(() => parseIntelHex(`${good}:0B0010006164647265737320676170A8\n`, WINDOW)).toThrow("Line 2 has the checksum A8, and its bytes give A7. Save the text again and send it unchanged.");
     expect(() => parseIntelHex(W, { base: 0, size: 256, fill: 0 })).toThrow("Line 1 gives address 0100, and the image runs from 0000 to 00FF. Check base and size.");
     expect(() => parseIntelHex(W, { base: 0x108, size: 256, fill: 0 })).toThrow("Line 1 gives address 0100, and the image runs from 0108 to 0207. Check base and size.");
@@ -142,6 +144,9 @@ describe("printing", () => {
 ${END}`);
     expect(printIntelHex(stream("bench-seed-1", 524_288))).toContain("\n:020000040001F9\n");
     expect(printIntelHex(new Uint8Array(0))).toBe(END);
+  });
+  it("never lets a line cross 64 KiB", () => {
+    expect(printIntelHex(fill(17, 0), { base: 0xfff8 })).toBe(`:08FFF8000000000000000000${"01"}\n:020000040001F9\n:090000000000000000000000${"00F7"}\n${END}`);
   });
   it("refuses addresses past FFFFFFFF", () => {
     expect(() => printIntelHex(fill(2, 0), { base: 0xffff_ffff })).toThrow(FormatError);

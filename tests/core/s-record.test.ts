@@ -91,8 +91,14 @@ describe("refuses, with the line", () => {
     ["nothing at all", "", 1],
     ["a blank line between records", `${record(1, "0000", "41")}\n${END}`, 2],
     ["an address past the image", record(1, "0040", "41") + END, 1],
+    ["a count byte too small, with a right checksum", `S1040000414278\n${END}`, 1],
     ["data past the last 16-bit address", record(1, "FFFF", "4142") + END, 1],
   ])("%s", (_name, text, line) => expect(lineOf(text)).toBe(line));
+  it("data past the last 16-bit address although the image would hold it", () => {
+    const window = { base: 0xfff0, size: 64, fill: 0 };
+    expect(() => parseSRecord(record(1, "FFFF", "4142") + END, window)).toThrow("Line 1 runs past the last address that an S1 record can name.");
+    expect(parseSRecord(record(1, "FFFE", "4142") + END, window).gapBytes).toBe(62);
+  });
   it("says what was found and what to do", () => {
     expect(() => parseSRecord(M.replace("S5030004F8", "S5030003F9"), WINDOW)).toThrow("Line 6 counts 3 data records, and 4 came before it. A part of the text is missing: save it again.");
   });
@@ -107,6 +113,12 @@ describe("printing", () => {
     expect(printSRecord(fill(1, 0), { base: 0xffffff })).toMatch(/^S2/m);
     expect(printSRecord(fill(2, 0), { base: 0xffffff })).toMatch(/^S3.*\n(S3.*\n)S5030002FA\nS70500000000FA\n/m);
     expect(printSRecord(new Uint8Array(0))).toBe("S0030000FC\nS5030000FC\nS9030000FC\n");
+  });
+  it("leaves out a count that 16 bits don't hold", () => {
+    const bytes = fill(16 * 65_536, 7);
+    expect(printSRecord(bytes.subarray(16))).toMatch(/\nS503FFFFFE\nS80/);
+    expect(printSRecord(bytes)).not.toMatch(/\nS[56]/);
+    expect(parseSRecord(encodeSRecord(bytes), { base: 0, size: bytes.length, fill: 0 })).toMatchObject({ gapBytes: 0, records: 65_538 });
   });
   it("refuses addresses past FFFFFFFF", () => expect(() => printSRecord(fill(2, 0), { base: 0xffff_ffff })).toThrow(FormatError));
   it("and parsing give the image back, from any base", () => {

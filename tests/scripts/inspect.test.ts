@@ -77,6 +77,14 @@ describe("reads with something against them", () => {
     expect(answer.verdict).toMatchObject({ ready: false });
     expect(answer.verdict.sentence).toMatch(/^Read 2 differs in 63 bytes/);
   });
+  it("say what the difference looks like, and in which read", () => {
+    const good = goldenImage();
+    const late = Uint8Array.from([...good.subarray(0, 0x400), ...good.subarray(0x401), 0xff]);
+    const { status, answer } = json(...three("slip", good, good, late));
+    expect(status).toBe(1);
+    expect(answer.comparisons.map((pair) => pair.diagnosis.code)).toEqual(["equal", "byte-slip", "byte-slip"]);
+    expect(answer.verdict.sentence).toMatch(/^Read 3 differs in 2,989 bytes.*looks like/);
+  });
   it("end with 1 although all agree, when they are blank, too short, too long or one file twice", () => {
     const codes = (words: string[]) => {
       const { status, answer } = json(...words);
