@@ -1,7 +1,7 @@
 "use client";
 
 import { Dialog as Radix } from "radix-ui";
-import type { ReactNode } from "react";
+import { useRef, type ReactNode } from "react";
 import { Icon } from "./icon";
 
 /** Asks something first. Not for anything that needs the strips in view. Put the buttons last among the children. */
@@ -12,12 +12,28 @@ export function Dialog({ open, onOpenChange, title, description, children }: {
   description?: ReactNode;
   children: ReactNode;
 }) {
+  const before = useRef<Element | null>(null);
+  // what opened it isn't always a Radix trigger: the focus goes back to where it was, or to the page when that is gone
+  function start(event: Event) {
+    before.current = document.activeElement;
+    const field = event.currentTarget instanceof HTMLElement ? event.currentTarget.querySelector<HTMLElement>("input, select, textarea") : null;
+    if (!field) return;
+    event.preventDefault();
+    field.focus();
+  }
+  function back(event: Event) {
+    event.preventDefault();
+    const target = before.current?.isConnected ? before.current : document.getElementById("main");
+    if (target instanceof HTMLElement) target.focus({ preventScroll: true });
+  }
   return (
     <Radix.Root open={open} onOpenChange={onOpenChange}>
       <Radix.Portal>
         <Radix.Overlay className="fixed inset-0 z-40 bg-[color-mix(in_srgb,var(--mask-deep)_62%,transparent)]" />
         <Radix.Content
           {...(description ? {} : { "aria-describedby": undefined })}
+          onOpenAutoFocus={start}
+          onCloseAutoFocus={back}
           className="fixed top-1/2 left-1/2 z-50 grid max-h-[92vh] w-[min(560px,calc(100vw-24px))] -translate-x-1/2 -translate-y-1/2 gap-4 overflow-y-auto border border-rule-2 border-t-4 border-t-mask bg-paper px-6 pt-5 pb-6 text-t3 text-ink phone:px-4"
         >
           <div className="flex items-start justify-between gap-4">
