@@ -35,7 +35,7 @@ export function BenchScreen({ rows: given, session, mine, now: loadedAt }: { row
 
   return (
     <>
-      <BoardPanel className="pt-3.5 pb-4">
+      <BoardPanel label="Bench" className="pt-3.5 pb-4">
         <div className="flex flex-wrap items-baseline gap-x-[22px] gap-y-1">
           <h1 className="text-t7 font-bold tracking-[-0.012em]">Bench</h1>
           <p className="text-silk-2">
@@ -50,7 +50,7 @@ export function BenchScreen({ rows: given, session, mine, now: loadedAt }: { row
       </BoardPanel>
       <PageMain>
         {error ? <div className="pt-4"><Note kind="caution" role="status" title="This page is not being refreshed.">{error instanceof Refusal && error.status === 401 ? "Your sign-in has ended. Reload the page to sign in again." : error.message}</Note></div> : null}
-        {rows.length > 0 ? <BenchTable groups={groups} acts={acts} /> : (
+        {rows.length > 0 ? <BenchTable groups={groups} acts={acts} signs={may(session.user, "approval.give")} /> : (
           <div className="py-8">
             {all.length > 0
               ? <Empty title="Nothing is with you." action={<ButtonLink href="/bench">Show everyone’s work</ButtonLink>}>The chips in the shop are with others now.</Empty>

@@ -39,7 +39,7 @@ function dueWords(dueOn: string, today: string): string {
 export function ChipHead({ chip, timeZone, today }: { chip: ChipView; timeZone: string; today: string }) {
   const original = chip.boardRole === "original";
   return (
-    <BoardPanel>
+    <BoardPanel label={`Chip ${chip.designator}`}>
       <Crumbs items={[
         { label: `Case ${chip.case.ref}`, href: `/cases/${chip.case.id}` },
         { label: `Drive ${chip.drive.letter}`, href: `/cases/${chip.case.id}#drive-${chip.drive.letter}` },

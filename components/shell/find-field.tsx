@@ -19,7 +19,7 @@ export function FindField() {
     return () => document.removeEventListener("keydown", onKey);
   }, []);
   return (
-    <form action="/find" role="search" className="relative flex items-center phone:hidden">
+    <form action="/find" role="search" aria-label="Find from any page" className="relative flex items-center phone:hidden">
       <label htmlFor="find" className="sr-only">Find a case, serial or digest</label>
       <Icon name="search" className="absolute left-[9px] text-silk-2" />
       <input ref={field} id="find" name="q" autoComplete="off" placeholder="Case, serial or digest" className="h-[34px] w-[248px] rounded-none border border-mask-line bg-mask-deep pr-[34px] pl-8 text-silk placeholder:text-silk-2 mid:w-[180px]" />

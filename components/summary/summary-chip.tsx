@@ -18,7 +18,7 @@ export function SummaryChip({ chip, timeZone, both }: { chip: Chip; timeZone: st
     <section className="sheet-chip grid gap-[7px] border-t border-rule-2 pt-2">
       <div className="flex flex-wrap items-center gap-2.5">
         <DesignatorPlate designator={chip.designator} board="original" />
-        <h3 className="font-normal">{chip.holds ?? "Memory chip"}, {sizeText(chip.sizeBytes)}</h3>
+        <h2 className="!text-t3 font-normal">{chip.holds ?? "Memory chip"}, {sizeText(chip.sizeBytes)}</h2>
         <b className={`ml-auto flex items-center gap-1.5 ${chip.verified ? "text-green" : "text-ink-2"}`}><Mark kind={chip.verified ? "ok" : "run"} className="[--hole:var(--sheet)]" />{chip.verified ? "Verified" : chip.stateLabel}</b>
       </div>
       {chip.cells ? (
