@@ -6,7 +6,7 @@ import { DesignatorPlate } from "@/components/ui/plate";
 import { dueText } from "@/components/ui/times";
 import { countOf } from "@/lib/core/quantity";
 import type { BenchRow } from "@/lib/views";
-import { atTheDonor, rowAction, stepAndReason } from "./bench-words";
+import { atTheDonor, decides, rowAction, stepAndReason } from "./bench-words";
 
 function Due({ row }: { row: BenchRow }) {
   return (
@@ -21,9 +21,10 @@ function Due({ row }: { row: BenchRow }) {
 }
 
 /** The cells of one chip in the queue; the row itself brings the group's title where it is the first. */
-export function BenchLine({ row, acts }: { row: BenchRow; acts: boolean }) {
-  const action = rowAction(row, acts);
-  const { step, reason } = stepAndReason(row.next);
+export function BenchLine({ row, acts, signs }: { row: BenchRow; acts: boolean; signs: boolean }) {
+  const decide = decides(row, signs);
+  const action = decide ? { word: "Decide", href: `/chips/${row.chip.id}/decision` } : rowAction(row, acts);
+  const { step, reason } = stepAndReason(decide ? row.next.replace(/Ask a lead.*$/, "Sign the decision sheet, or send the image back.") : row.next);
   const donor = atTheDonor(row.chip.state.state) ? row.chip.pair : null;
   return (
     <>

@@ -4,7 +4,7 @@ import type { BenchGroup } from "./bench-words";
 const HEADS = ["Due", "Case", "Customer, part number", "Chip", "Do this next", "With", "Image"];
 
 /** One table with row groups, in the order of the route. */
-export function BenchTable({ groups, acts }: { groups: readonly BenchGroup[]; acts: boolean }) {
+export function BenchTable({ groups, acts, signs }: { groups: readonly BenchGroup[]; acts: boolean; signs: boolean }) {
   return (
     <table className="queue">
       <caption className="sr-only">Work on the bench, by what has to be done next</caption>
@@ -25,7 +25,7 @@ export function BenchTable({ groups, acts }: { groups: readonly BenchGroup[]; ac
                   <span className="mt-0.5 text-t2 text-ink-2">{group.note}</span>
                 </th>
               ) : null}
-              <BenchLine row={row} acts={acts} />
+              <BenchLine row={row} acts={acts} signs={signs} />
             </tr>
           ))}
         </tbody>

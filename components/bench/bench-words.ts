@@ -77,6 +77,11 @@ const STEP: Record<ChipStateCode, { word: string; at: string }> = {
   verified: { word: "Open case", at: "" },
 };
 
+/** A lead who may sign reads "sign"; everybody else reads whom to ask. */
+export function decides(row: BenchRow, signs: boolean): boolean {
+  return signs && row.mine && row.chip.state.state === "ready" && row.nextWhy === null;
+}
+
 /** Where the row's button leads; who may not act just opens the chip. */
 export function rowAction(row: BenchRow, acts: boolean): { word: string; href: string } {
   const { word, at } = STEP[row.chip.state.state];
@@ -89,7 +94,7 @@ export function atTheDonor(state: ChipStateCode): boolean {
   return ["approved", "written", "failed"].includes(state);
 }
 
-const STEPS = /^(ask|check|clean|clear|correct|erase|have|keep|look|lower|measure|pack|re-seat|read|save|set|take|tell|upload|wait|write)\b(?! \d)/i;
+const STEPS = /^(ask|check|clean|clear|correct|erase|have|keep|look|lower|measure|pack|re-seat|read|save|set|sign|take|tell|upload|wait|write)\b(?! \d)/i;
 
 /**
  * A state's sentence is "what was found, then what to do": what to do stands first on the bench, what was found under it.
