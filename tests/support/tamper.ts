@@ -1,7 +1,6 @@
 import { chmodSync, readFileSync, renameSync, writeFileSync } from "node:fs";
 import path from "node:path";
 import * as mariadb from "mariadb";
-import { env } from "@/lib/env";
 
 /** What an attacker with the migrating user's rights, or with a shell on the machine, could do. Everything is put back. */
 
@@ -44,11 +43,13 @@ export async function changeBody(chain: string, seq: number, change: (body: Buff
   return async () => void (await put(before));
 }
 
-export const imageFile = (sha256: string, dataDir = env().dataDir) => path.join(dataDir, "images", "sha256", sha256.slice(0, 2), sha256);
+const dataFolder = () => process.env.TWINREAD_DATA ?? "";
+
+export const imageFile = (sha256: string) => path.join(dataFolder(), "images", "sha256", sha256.slice(0, 2), sha256);
 
 /** Flips one bit of a stored image. Gives back how to undo it. */
-export function damageImage(sha256: string, at = 100, dataDir = env().dataDir): () => void {
-  const file = imageFile(sha256, dataDir);
+export function damageImage(sha256: string, at = 100): () => void {
+  const file = imageFile(sha256);
   const before = readFileSync(file);
   const after = Buffer.from(before);
   after[at] ^= 1;
