@@ -88,4 +88,5 @@ export function oneSeatingFinding(policy: Policy, countedReads: readonly { seati
 
 export { singleFindings } from "./single-findings";
 export { createAndMatch } from "./compare";
+export { diagnoseReadBack, type ReadBackDiagnosis } from "./diagnose-read-back";
 export { judgeReadBack, type ReadBackInput } from "./read-back-findings";

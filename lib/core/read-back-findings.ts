@@ -1,3 +1,4 @@
+import type { ReadBackDiagnosis } from "./diagnose-read-back";
 import { isUniform, type ImageFacts } from "./inspect";
 import { countOf, sizeText } from "./quantity";
 import { placeText } from "./strip";
@@ -14,6 +15,8 @@ export interface ReadBackInput {
   /** another standing or past approval with the read-back's digest */
   otherApproved: { designator: string; caseRef: string } | null;
   comparison: { differingBytes: number; first: number | null; last: number | null } | null;
+  /** of diagnoseReadBack, where the bytes were at hand: says how the write went wrong */
+  diagnosis?: ReadBackDiagnosis;
   /** taken after the board's first power-on on the drive */
   poweredOn?: boolean;
 }
@@ -37,7 +40,7 @@ function differenceFinding({ read, approved, comparison }: ReadBackInput): Findi
     again, countOf(differingBytes, "differing byte"));
 }
 
-/** V1 V2 V3 V4 V9 of READ-FAULTS B.5 in the order in which one would say them, else where it differs. */
+/** V1 V2 V3 V4 V9 of READ-FAULTS B.5 in the order in which one would say them, then V5 to V8, else where it differs. */
 function whatHappened(input: ReadBackInput): Finding {
   const { facts, read, donorSaved } = input;
   if (donorSaved.includes(read.sha256)) {
@@ -57,7 +60,10 @@ function whatHappened(input: ReadBackInput): Finding {
     return finding("other-image", `Equals the approved image of ${designator}, case ${caseRef}: the wrong file was written.`,
       "Stop, check labels and file, then write the right image.", "equal to another approved image");
   }
-  return differenceFinding(input);
+  const { diagnosis } = input;
+  if (!diagnosis || diagnosis.code === "verified") return differenceFinding(input);
+  const found = finding(diagnosis.code, diagnosis.message, diagnosis.advice, diagnosis.measured);
+  return diagnosis.ranges ? { ...found, ranges: diagnosis.ranges } : found;
 }
 
 /**

@@ -1,11 +1,11 @@
 import { describe, expect, it } from "vitest";
 import { diagnosePair } from "@/lib/core/diagnose-pair";
 import { crc32Hex, crc32Of } from "@/lib/core/digest";
-import { judgeRead } from "@/lib/core/findings";
+import { diagnoseReadBack, judgeRead } from "@/lib/core/findings";
 import { inspectWhole } from "@/lib/core/inspect";
 import { DEFAULT_POLICY } from "@/lib/core/words";
 import { sha256Hex } from "../stream";
-import { GOLDEN_FAULTS, GOOD_DIGEST, GOOD_IMAGE } from "./recipes";
+import { APPROVED, GOLDEN_FAULTS, GOLDEN_READ_BACKS, GOOD_DIGEST, GOOD_IMAGE, OLD } from "./recipes";
 
 const good = GOOD_IMAGE;
 const facts = inspectWhole(good);
@@ -69,5 +69,21 @@ describe("golden faults as the only image there is", () => {
     expect(lines("A12low")).toMatchObject({ period: { bytes: 4096, informative: 2973 }, lines: [{ line: 12, informative: 2973, matches: 2973 }] });
     expect(lines("wrap16k").period?.bytes).toBe(8192);
     expect(lines("idrep").short).toEqual({ bytes: 3, informative: 8189, matches: 8189 });
+  });
+});
+
+describe("golden read-backs", () => {
+  it.each(GOLDEN_READ_BACKS)("$name", ({ bytes, crc32, sha256, code }) => {
+    expect([crc32Hex(crc32Of(bytes)), sha256Hex(bytes)]).toEqual([crc32, sha256]);
+    expect(diagnoseReadBack(bytes, APPROVED, OLD).code).toBe(code);
+  });
+  it("tells equal, refused and erased", () => {
+    expect(diagnoseReadBack(APPROVED, APPROVED, OLD).code).toBe("verified");
+    expect(diagnoseReadBack(OLD, APPROVED, OLD).code).toBe("write-refused");
+    expect(diagnoseReadBack(APPROVED.map(() => 0xff), APPROVED, OLD).code).toBe("erased-only");
+  });
+  it("calls a rotated, swapped or shifted write by the fault's own code", () => {
+    const written = GOLDEN_FAULTS.filter(({ name }) => ["lose1", "loseByte", "rot512", "swap16", "inverted", "bitrev"].includes(name));
+    expect(written.map((fault) => diagnoseReadBack(fault.make(good), good, null).code)).toEqual(written.map((fault) => fault.code));
   });
 });
