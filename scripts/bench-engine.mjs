@@ -39,6 +39,13 @@ function flipped(bytes, count, step) {
   return out;
 }
 
+/** From `from` on every bit one place later, as after a missed clock. */
+function slipped(bytes, from, bits) {
+  const out = Buffer.from(bytes);
+  for (let i = from; i < out.length - 1; i += 1) out[i] = ((bytes[i] << bits) | (bytes[i + 1] >> (8 - bits))) & 0xff;
+  return out;
+}
+
 const file = (name, bytes) => {
   const at = path.join(folder, name);
   writeFileSync(at, bytes);
@@ -84,6 +91,8 @@ try {
   const image = mixed(16 * MIB);
   const equal = [1, 2, 3].map((n) => file(`equal-${n}.bin`, image));
   const differ = [file("differ-1.bin", flipped(image, 500, 30011)), file("differ-2.bin", flipped(image, 800, 20011)), file("differ-3.bin", flipped(image, 1100, 15013))];
+  const slips = [file("slip-1.bin", image), file("slip-2.bin", slipped(image, MIB, 1)), file("slip-3.bin", slipped(image, 3 * MIB, 3))];
+  const foreign = [1, 2, 3].map((n) => file(`foreign-${n}.bin`, dense(`foreign ${n}`, 16 * MIB)));
   const large = mixed(64 * MIB);
   const big = [file("big-1.bin", flipped(large, 500, 130_003)), file("big-2.bin", flipped(large, 800, 80_021)), file("big-3.bin", large)];
 
@@ -91,6 +100,7 @@ try {
   const a = ratioOf("digests-and-comparisons", equal, equal);
   const b = ratioOf("verdict", equal, equal);
   const c = ratioOf("verdict", differ, equal);
+  const [slip, apart] = [ratioOf("verdict", slips, equal), ratioOf("verdict", foreign, equal)];
   const parts = Object.fromEntries(["bytes", "load", "compare", "inspect"].map((task) => [task, { equal: median(measure("time", task, ROUNDS, ...equal).took), differ: median(measure("time", task, ROUNDS, ...differ).took) }]));
   say("Growth …");
   const d = growth();
@@ -110,6 +120,8 @@ of three equal files of 16 MiB and \`cmp\` of the first with both others. Ratios
 | a | digests (SHA-256 and CRC-32) and both comparisons of three equal 16 MiB reads | ${range(a.ratios, 2)} | 1.5 | ${aim(median(a.ratios), 1.5)} |
 | b | the whole verdict on them | ${range(b.ratios, 2)} | 4, better 2 | ${aim(median(b.ratios), 4)} |
 | c | the whole verdict when all three differ (500 to 1,100 flipped bits each) | ${range(c.ratios, 2)} | 10 | ${aim(median(c.ratios), 10)} |
+| c | the same, two of them slipped by bits from an early place on | ${range(slip.ratios, 2)} | 10 | ${aim(median(slip.ratios), 10)} |
+| c | the same, three dense images with nothing in common | ${range(apart.ratios, 2)} | 10 | ${aim(median(apart.ratios), 10)} |
 
 In milliseconds, medians: yardstick ${ms(median(a.yard))}; a ${ms(median(a.took))}, b ${ms(median(b.took))}, c ${ms(median(c.took))}.
 
@@ -125,7 +137,8 @@ Time of the parts on the same three files, each with the parts above it inside:
 
 - a: SHA-256 of 48 MiB, as in the yardstick; comparing equal stretches goes by 32-bit words.
 - b: one inspection, as equal digests share it; comparisons of equal digests cost nothing.
-- c: three inspections, one for each content; the comparisons beside them are small, as long stretches are equal.
+- c: three inspections, one for each content, while long stretches are equal; where nearly every byte differs, the three comparisons, which
+  count bits and ranges byte by byte, and the search for a shift.
 
 ## d. Growth
 Whole verdict on two reads that differ in one bit a KiB.
