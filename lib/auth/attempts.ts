@@ -2,7 +2,7 @@ import { createHash } from "node:crypto";
 import { Op } from "sequelize";
 import { appendEntry } from "@/lib/commands/append-entry";
 import { SYSTEM, WORKSHOP_CHAIN } from "@/lib/core/words";
-import { inTransaction, SignInAttempt } from "@/models";
+import { inTransaction, SignInAttempt, type Transaction } from "@/models";
 
 const WINDOW_MS = 15 * 60_000;
 /** wrong passwords in the window: for one account from one address, for one address, for one account from anywhere */
@@ -39,4 +39,9 @@ export async function noteAttempt(email: string, address: string): Promise<void>
 /** After a right password the pair starts afresh; old rows of all go with it. */
 export async function clearAttempts(email: string, address: string): Promise<void> {
   await SignInAttempt.destroy({ where: { [Op.or]: [{ account: accountDigest(email), address }, { at: { [Op.lt]: new Date(Date.now() - WINDOW_MS) } }] } });
+}
+
+/** An admin's new one-time password is the way out for who is shut out: the account's tries are forgotten with it. */
+export async function forgetAttempts(email: string, tx: Transaction): Promise<void> {
+  await SignInAttempt.destroy({ where: { account: accountDigest(email) }, transaction: tx });
 }

@@ -1,3 +1,4 @@
+import { forgetAttempts } from "@/lib/auth/attempts";
 import { hashPassword, oneTimePassword } from "@/lib/auth/password";
 import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
@@ -29,6 +30,7 @@ export async function changeUser(actor: Actor, userId: string, input: UserChange
       ...(input.disabled === undefined ? {} : { disabledAt: input.disabled ? new Date() : null }),
       ...(passwordHash ? { passwordHash, mustChangePassword: true } : {}),
     }, { transaction: tx });
+    if (passwordHash) await forgetAttempts(user.email, tx);
     if (passwordHash || input.disabled) await Session.update({ endedAt: new Date() }, { where: { userId, endedAt: null }, transaction: tx });
     await appendEntry(tx, WORKSHOP_CHAIN, actor, "user.changed", { type: "user", id: userId }, { user: { id: userId, name: user.name }, changes });
     return { id: userId, ...(password ? { password } : {}) };
