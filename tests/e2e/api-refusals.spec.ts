@@ -1,6 +1,6 @@
 import { randomBytes } from "node:crypto";
 import { request as httpRequest } from "node:http";
-import { expect, test } from "@playwright/test";
+import { test } from "@playwright/test";
 import { type FileToSend, makePair, type Pair, randomImage, sha256Of, upload, uploadForm } from "./support/bench";
 import { type Answer, appUrl, call, expectProblem, tokenOf } from "./support/station";
 import { expectNothingStored } from "./support/store";
