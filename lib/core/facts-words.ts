@@ -20,6 +20,7 @@ function runAround(bytes: Uint8Array, shift: number, at: number): Run {
   // with a shift the last byte has no neighbour to take bits from
   const next = shift === 0 ? 0 : 1;
   const valueAt = (i: number) => ((bytes[i] << shift) | (bytes[i + next] >> (8 - shift))) & 0xff;
+  if (WORD[valueAt(at)] === 0) return { end: at, score: 0 };
   let from = at;
   while (from > 0 && WORD[valueAt(from - 1)] === 1) from -= 1;
   let different = 0;
