@@ -1,8 +1,8 @@
-import { agreement, deriveReadingState, oddOneOut, openFindings, type StateRead, type WorstDifference } from "@/lib/core/chip-state";
 import { compareImages, createComparison, type Comparison } from "@/lib/core/compare";
-import { diagnosePair, looksLikeText, type Diagnosis } from "@/lib/core/diagnose-pair";
+import { diagnosePair, type Diagnosis } from "@/lib/core/diagnose-pair";
 import { judgeRead } from "@/lib/core/findings";
 import { inspectWhole, type ImageFacts } from "@/lib/core/inspect";
+import { judgeSet } from "@/lib/core/judge-set";
 import { countOf } from "@/lib/core/quantity";
 import { DEFAULT_POLICY, readName, type Finding, type Policy } from "@/lib/core/words";
 import type { LoadedRead } from "./load";
@@ -25,8 +25,8 @@ export interface Verdict {
   sentence: string;
 }
 
-/** Seatings, drives and other cases are unknown here: only what the files themselves show is judged. */
-const HERE: Policy = { ...DEFAULT_POLICY, reads: 1, seatings: 1 };
+/** Seatings, drives and other cases are unknown here, so nothing is asked of them: only what the files show is judged. */
+const HERE: Policy = { ...DEFAULT_POLICY, reads: 1, seatings: 0 };
 
 function once<T>(make: (read: LoadedRead) => T): (read: LoadedRead) => T {
   const made = new Map<string, T>();
@@ -70,29 +70,14 @@ export function comparePairs(reads: readonly JudgedRead[], size: number | null):
   }));
 }
 
-/** The pair that a sentence on disagreeing reads speaks of: the odd one against the first of the largest group. */
-function worstOf(states: StateRead[], pairs: readonly JudgedPair[]): WorstDifference | null {
-  const odd = oddOneOut(states);
-  const other = agreement(states).groups[0].reads[0];
-  const pair = pairs.find((one) => odd !== null && one.reads.includes(odd) && one.reads.includes(other)) ?? pairs.find((one) => !one.comparison.equal);
-  if (!pair || pair.comparison.first === null || pair.comparison.last === null) return null;
-  const oddRead = odd !== null && pair.reads.includes(odd) ? odd : pair.reads[1];
-  const { differingBytes, first, last } = pair.comparison;
-  const otherRead = pair.reads[0] === oddRead ? pair.reads[1] : pair.reads[0];
-  return { oddRead, otherRead, differingBytes, first, last, looksLike: looksLikeText(pair.diagnosis.code) };
-}
-
 export function verdictOf(reads: readonly JudgedRead[], pairs: readonly JudgedPair[], size: number | null): Verdict {
-  const states = reads.map((read): StateRead => ({
-    id: String(read.number), number: read.number, stage: "before", seating: read.number, sha256: read.sha256, sizeBytes: read.bytes.length,
-    counted: true, findings: read.findings, operatorId: "",
-  }));
-  const equal = agreement(states).groups.length === 1;
-  const against = openFindings({ policy: HERE, reads: states }).length > 0;
-  if (!equal || against) {
-    const sizeBytes = size ?? Math.max(...reads.map((read) => read.bytes.length));
-    return { ready: false, sentence: deriveReadingState({ policy: HERE, sizeBytes, reads: states, worst: equal ? null : worstOf(states, pairs) }).sentence };
-  }
+  const facts = new Map(reads.map((read) => [read.sha256, read.facts]));
+  const set = judgeSet(
+    reads.map((read) => ({ ...read, sizeBytes: read.bytes.length, seating: 1, counted: true })), facts,
+    pairs.map(({ reads: [a, b], ...result }) => ({ a, b, result })), HERE,
+    { sizeBytes: size ?? Math.max(...reads.map((read) => read.bytes.length)), sizeSource: "typed" },
+  );
+  if (!set.ready) return { ready: false, sentence: [set.sentence, ...set.common].join(" ") };
   if (reads.length === 1) return { ready: true, sentence: "Nothing stands against this one read, and one read can't be compared. Read the chip again, in another seating too." };
   const more = reads.length < DEFAULT_POLICY.reads ? ` Take ${countOf(DEFAULT_POLICY.reads - reads.length, "more read")}.` : "";
   return {

@@ -29,7 +29,6 @@ function readLines(read: JudgedRead): string[] {
 }
 
 function pairLines({ reads, comparison, diagnosis }: JudgedPair): string[] {
-  if (comparison.equal) return [];
   const size = Math.max(comparison.sizeA, comparison.sizeB);
   const shown = comparison.ranges.slice(0, RANGES_SHOWN).map(({ start, length }) => rangeText(start, length, size));
   const more = comparison.ranges.length - shown.length;
@@ -41,10 +40,15 @@ function pairLines({ reads, comparison, diagnosis }: JudgedPair): string[] {
   ];
 }
 
-/** Equal reads once a group, not once a pair. */
-function groupLines(reads: readonly JudgedRead[]): string[] {
+/** Equal reads once a group; differences between the first of each group only. */
+function comparisonLines(reads: readonly JudgedRead[], pairs: readonly JudgedPair[]): string[] {
   const groups = [...new Set(reads.map((read) => read.sha256))].map((sha256) => reads.filter((read) => read.sha256 === sha256).map((read) => read.number));
-  return groups.filter((numbers) => numbers.length > 1).map((numbers) => `${readsText(numbers)}: equal.`);
+  const first = groups.map((numbers) => numbers[0]);
+  return [
+    ...groups.filter((numbers) => numbers.length > 1).map((numbers) => `${readsText(numbers)}: equal.`),
+    ...pairs.filter((pair) => pair.reads.every((number) => first.includes(number))).flatMap(pairLines),
+    ...(pairs.length > 0 ? [""] : []),
+  ];
 }
 
 /** The compact page for people; ends with a line end. */
@@ -52,7 +56,7 @@ export function pageOf(reads: readonly JudgedRead[], pairs: readonly JudgedPair[
   return [
     ...reads.flatMap(readLines),
     `  ${STRIP_LEGEND}`, "",
-    ...groupLines(reads), ...pairs.flatMap(pairLines), ...(pairs.length > 0 ? [""] : []),
+    ...comparisonLines(reads, pairs),
     `Verdict: ${verdict.sentence}`, "",
   ].join("\n");
 }

@@ -158,6 +158,7 @@ describe("for people", () => {
     expect(stdout).toContain("SHA-256 504bc4f5 9fc5e628 be38f6b4 17026ad3 88a98421 624bae62 f7d00438 acd4b88f");
     expect(stdout).toContain("\n  oooooooooooooooooooooooo........o......oooooooo.................\n");
     expect(stdout).toContain("Reads 1 and 2: equal.");
+    expect(stdout).not.toContain("Reads 2 and 3");
     expect(stdout).toMatch(/Reads 1 and 3: .*looks like lost contact/);
     expect(stdout).toContain("\n        ^\n");
     expect(stdout).toMatch(/\nVerdict: Read 3 differs in 63 bytes/);
