@@ -12,28 +12,32 @@ const ACCOUNT = 60;
 
 export const accountDigest = (email: string) => createHash("sha256").update(email.trim().toLowerCase()).digest();
 
+let turn: Promise<unknown> = Promise.resolve();
+
 /**
- * Whether this sign-in may be tried at all. The limit by account alone is wide, so that a stranger cannot shut a
- * colleague out with a handful of guesses; by account and address together it is narrow.
+ * Whether this sign-in may be tried at all. The try is noted first and counted with the others, one after the other:
+ * a hundred at once must not all find the count at nothing. The limit by account alone is wide, so that a stranger
+ * cannot shut a colleague out with a handful of guesses; by account and address together it is narrow.
  */
-export async function mayTry(email: string, address: string): Promise<boolean> {
-  const account = accountDigest(email);
-  const at = { [Op.gt]: new Date(Date.now() - WINDOW_MS) };
-  const [pair, fromAddress, onAccount] = await Promise.all([
-    SignInAttempt.count({ where: { account, address, at } }),
-    SignInAttempt.count({ where: { address, at } }),
-    SignInAttempt.count({ where: { account, at } }),
-  ]);
-  const allowed = pair < PAIR && fromAddress < ADDRESS && onAccount < ACCOUNT;
-  if (!allowed && (pair === PAIR || fromAddress === ADDRESS || onAccount === ACCOUNT)) {
-    await noteAttempt(email, address);
-    await inTransaction((tx) => appendEntry(tx, WORKSHOP_CHAIN, SYSTEM, "sign-in.limited", { type: "user", id: SYSTEM.id }, { address, accountDigest: account.toString("hex") }));
-  }
-  return allowed;
+export function mayTry(email: string, address: string): Promise<boolean> {
+  const mine = turn.then(() => noteAndCount(accountDigest(email), address.slice(0, 64)));
+  turn = mine.catch(() => {});
+  return mine;
 }
 
-export async function noteAttempt(email: string, address: string): Promise<void> {
-  await SignInAttempt.create({ account: accountDigest(email), address: address.slice(0, 64), at: new Date() });
+async function noteAndCount(account: Buffer, address: string): Promise<boolean> {
+  const mine = await SignInAttempt.create({ account, address, at: new Date() });
+  const at = { [Op.gt]: new Date(Date.now() - WINDOW_MS) };
+  const past = [
+    (await SignInAttempt.count({ where: { account, address, at } })) - PAIR,
+    (await SignInAttempt.count({ where: { address, at } })) - ADDRESS,
+    (await SignInAttempt.count({ where: { account, at } })) - ACCOUNT,
+  ];
+  if (past.every((over) => over <= 0)) return true;
+  // the first past a limit is written down; the others leave no trace, so that trying on shuts nobody out for longer
+  if (past.includes(1)) await inTransaction((tx) => appendEntry(tx, WORKSHOP_CHAIN, SYSTEM, "sign-in.limited", { type: "user", id: SYSTEM.id }, { address, accountDigest: account.toString("hex") }));
+  else await mine.destroy();
+  return false;
 }
 
 /** After a right password the pair starts afresh; old rows of all go with it. */

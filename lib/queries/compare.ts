@@ -1,4 +1,4 @@
-import { compareImages } from "@/lib/commands/compare-images";
+import { compareIfStored } from "@/lib/commands/compare-images";
 import { placeOfChip } from "@/lib/commands/place";
 import { allow, notFound } from "@/lib/commands/refuse";
 import { requireSoundImage } from "@/lib/commands/report-image";
@@ -33,7 +33,11 @@ async function compared(rows: [Read, Read], sizeBytes: number): Promise<Comparis
     const row = await Image.findByPk(Buffer.from(image.sha256, "hex"));
     if (row?.state !== "sound") await requireSoundImage(image.sha256, image.sizeBytes, "comparison");
   }
-  const c = await compareImages(a, b);
+  const c = await compareIfStored(a, b);
+  if (!c) {
+    for (const image of [a, b]) await requireSoundImage(image.sha256, image.sizeBytes, "comparison");
+    throw new AppError("unavailable", "The stored images could not be read just now. Try again in a moment.", { retryAfterSeconds: 2 });
+  }
   const [nameA, nameB] = rows.map((r) => readName(r.stage, r.number));
   return {
     equal: c.equal, differingBytes: c.differingBytes, differingBits: { zeroToOne: c.zeroToOne, oneToZero: c.oneToZero }, ranges: c.ranges,
@@ -67,5 +71,11 @@ export async function readBytes(actor: Actor, readId: string, { offset, length }
   if (offset >= read.sizeBytes) throw new AppError("does-not-fit", `This image ends at byte ${read.sizeBytes.toLocaleString("en")}. Choose an offset before that.`);
   const image = await Image.findByPk(read.sha256);
   if (image?.state !== "sound") throw new AppError("rule-against", "The stored image no longer matches its digest, so its bytes aren't shown. Tell the lead.");
-  return imageWindow(read.sha256.toString("hex"), offset, Math.min(length, read.sizeBytes - offset));
+  try {
+    return await imageWindow(read.sha256.toString("hex"), offset, Math.min(length, read.sizeBytes - offset));
+  } catch (error) {
+    // gone since its row was written: found out, written down and refused
+    await requireSoundImage(read.sha256.toString("hex"), read.sizeBytes, "a look at its bytes");
+    throw error;
+  }
 }
