@@ -6,7 +6,7 @@ import { inspectWhole, isUniform, type ImageFacts } from "./inspect";
 import { countOf, sizeText } from "./quantity";
 import { erasedSector, explainsAll, pageWrap, protectedPart } from "./read-back-writes";
 import { placeText, rangeText } from "./strip";
-import { FLIPS_SINGLE_BIT_SHARE, WEAK_CELLS_MOST } from "./thresholds";
+import { FLIPS_SINGLE_BIT_SHARE, SECTOR_SIZES, WEAK_CELLS_MOST } from "./thresholds";
 import type { FindingCode, Range } from "./words";
 
 /** How a write went, as far as the bytes tell. */
@@ -79,9 +79,10 @@ function partWrite(readBack: Uint8Array, approved: Uint8Array, old: Uint8Array |
   }
   const sector = explainsAll(readBack, approved, () => 0xff) ? erasedSector(readBack, first, last) : null;
   if (sector) {
+    const what = (SECTOR_SIZES as readonly number[]).includes(sector.length) ? "one sector" : "a row of sectors";
     return {
       code: "erased-only", measured: `${countOf(c.differingBytes, "byte")} are FF`, ranges: [sector],
-      message: `${countOf(c.differingBytes, "byte")} ${c.differingBytes === 1 ? "is" : "are"} FF, all in ${rangeText(sector.start, sector.length, size)}: one sector stayed erased.`,
+      message: `${countOf(c.differingBytes, "byte")} ${c.differingBytes === 1 ? "is" : "are"} FF, all in ${rangeText(sector.start, sector.length, size)}: ${what} stayed erased.`,
       advice: "Write again, then read back.",
     };
   }

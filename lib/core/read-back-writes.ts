@@ -72,14 +72,20 @@ export function explainsAll(readBack: Uint8Array, image: Uint8Array, rule: (at: 
   return true;
 }
 
-/** The smallest whole sector around all differences, if it reads FF throughout. */
+function allErased(readBack: Uint8Array, start: number, end: number): boolean {
+  for (let at = start; at < end; at += 1) if (readBack[at] !== FF) return false;
+  return true;
+}
+
+/** The smallest whole sector around all differences, or the row of sectors, if it reads FF throughout. */
 export function erasedSector(readBack: Uint8Array, first: number, last: number): { start: number; length: number } | null {
-  for (const length of SECTOR_SIZES) {
-    const start = Math.floor(first / length) * length;
-    if (last >= start + length) continue;
-    if (start + length > readBack.length || length >= readBack.length) return null;
-    for (let at = start; at < start + length; at += 1) if (readBack[at] !== FF) return null;
-    return { start, length };
+  const [small] = SECTOR_SIZES;
+  const row = { start: Math.floor(first / small) * small, end: Math.ceil((last + 1) / small) * small };
+  const sector = SECTOR_SIZES.map((length) => ({ start: Math.floor(first / length) * length, end: Math.floor(first / length) * length + length }))
+    .find(({ end }) => last < end) ?? row;
+  for (const { start, end } of [sector, row]) {
+    // the whole chip would be no sector of it
+    if (end <= readBack.length && end - start < readBack.length && allErased(readBack, start, end)) return { start, length: end - start };
   }
   return null;
 }

@@ -25,6 +25,8 @@ describe("a write", () => {
     expect(found.message).toBe("4,086 bytes are FF, all in 0x44000–0x44FFF: one sector stayed erased.");
     expect(found.ranges).toEqual([{ start: 0x44000, length: 0x1000 }]);
     expect(told(edited((b) => b.fill(0xff, 0x40000, 0x50000))).ranges).toEqual([{ start: 0x40000, length: 0x10000 }]);
+    expect(told(edited((b) => b.fill(0xff, 0x44000, 0x47000)))).toMatchObject({ code: "erased-only", ranges: [{ start: 0x44000, length: 0x3000 }] });
+    expect(told(edited((b) => b.fill(0xff, 0x44000, 0x47000))).message).toMatch(/a row of sectors stayed erased\.$/);
     expect(told(edited((b) => b.fill(0xff, 0x44000, 0x44800))).code).toBe("lost-contact");
   });
   it.each([[64, 32], [256, 128], [128, 16], [256, 64]])("of pages of %i to a chip of %i wraps", (tool, chip) => {
