@@ -21,7 +21,9 @@ export class SecondServer {
   private said = "";
   base = "";
 
+  /** Starts it unless it runs. */
   async start(): Promise<void> {
+    if (this.child) return;
     const port = await freePort();
     this.base = `http://127.0.0.1:${port}`;
     this.said = "";
