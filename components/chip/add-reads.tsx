@@ -9,7 +9,7 @@ import { Note } from "@/components/ui/note";
 import { Select } from "@/components/ui/select";
 import { TextArea } from "@/components/ui/text-area";
 import { useSay } from "@/components/ui/toast";
-import { sizeText } from "@/lib/core/quantity";
+import { listText, sizeText } from "@/lib/core/quantity";
 import { METHODS, type Stage } from "@/lib/core/words";
 import type { ChipView } from "@/lib/views";
 import { METHOD_WORD, nameOf, namesOf, twins } from "./chip-words";
@@ -78,7 +78,7 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
         <Note kind="caution" title={`Before you clip on: ${content.words}`}>{clipCaution(stage)}</Note>
         <DropZone title="Drop chip images here" onFiles={(files) => void take(files)}>Raw binary, {sizes} each. Several files at once are fine; they share what the form says.</DropZone>
         {held.length > 0 ? (
-          <Note kind="note" title={held.length === 1 ? `${held[0].name} waits.` : `${held.length} files wait.`} role="status">
+          <Note kind="note" title={`${listText(held.map((file) => file.name))} ${held.length === 1 ? "waits" : "wait"}.`} role="status">
             Complete the form, then send. <button type="button" className="font-semibold text-green underline" onClick={() => void take([])}>Send now</button>{" "}
             <button type="button" className="font-semibold text-green underline" onClick={() => setHeld([])}>Take off the list</button>
           </Note>

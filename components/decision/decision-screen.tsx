@@ -36,7 +36,7 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
   const against = useMemo(() => standsAgainst(view), [view]);
   const codes = useMemo(() => [...new Set(against.flatMap((i) => (i.reasonFor ? [i.reasonFor] : [])))], [against]);
   const schema = useMemo(() => decisionForm(image?.sha256 ?? "", codes), [image, codes]);
-  const { register, control, handleSubmit, formState: { errors, isSubmitting } } = useForm<DecisionForm>({ resolver: zodResolver(schema), defaultValues: { statement: "", last8: "", reasons: {} } });
+  const { register, control, handleSubmit, formState: { errors, isSubmitting } } = useForm<DecisionForm>({ resolver: zodResolver(schema), mode: "onTouched", defaultValues: { statement: "", last8: "", reasons: {} } });
   const typed = useWatch({ control });
   const matches = image !== null && sameDigits(typed.last8 ?? "", image.sha256);
   const signs = !chip.approval && image !== null && maySign(chip, user);
