@@ -1,4 +1,6 @@
 import { handler } from "@/lib/http/handler";
+import { othersThan } from "@/lib/http/others-than";
 import { benchRows } from "@/lib/queries/bench";
 
 export const GET = handler({}, async ({ actor }) => ({ items: await benchRows(actor) }));
+export const { POST, PUT, PATCH, DELETE, OPTIONS } = othersThan("GET");

@@ -3,6 +3,7 @@ import { handler } from "@/lib/http/handler";
 import { uploadHandler } from "@/lib/http/upload-handler";
 import { findDigest } from "@/lib/queries/find";
 import { AppError } from "@/lib/errors";
+import { othersThan } from "@/lib/http/others-than";
 import { findInput } from "@/lib/schemas/read";
 
 export const GET = handler({ input: findInput }, ({ actor, input }) => findDigest(actor, input.digest));
@@ -16,3 +17,4 @@ export const POST = uploadHandler(
     return { sha256: file.arrived.sha256, ...(await findDigest(actor, file.arrived.sha256)) };
   },
 );
+export const { PUT, PATCH, DELETE, OPTIONS } = othersThan("GET", "POST");

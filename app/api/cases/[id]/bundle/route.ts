@@ -1,6 +1,7 @@
 import { Readable } from "node:stream";
 import { makeBundle } from "@/lib/commands/make-bundle";
 import { handler } from "@/lib/http/handler";
+import { othersThan } from "@/lib/http/others-than";
 
 // `secret`: an archive is never answered from what is kept under an Idempotency-Key; each request makes a new one
 export const POST = handler({ secret: true }, async ({ actor, params, request }) => {
@@ -11,3 +12,4 @@ export const POST = handler({ secret: true }, async ({ actor, params, request })
     headers: { "content-type": "application/zip", "content-disposition": `attachment; filename="${fileName}"` },
   });
 });
+export const { GET, PUT, PATCH, DELETE, OPTIONS } = othersThan("POST");

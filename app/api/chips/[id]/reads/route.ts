@@ -1,6 +1,7 @@
 import { allow } from "@/lib/commands/refuse";
 import { placeOfChip } from "@/lib/commands/place";
 import { storeReads } from "@/lib/commands/store-reads";
+import { othersThan } from "@/lib/http/others-than";
 import { readFieldsOf } from "@/lib/http/read-fields";
 import { uploadHandler } from "@/lib/http/upload-handler";
 
@@ -14,3 +15,4 @@ export const POST = uploadHandler(
   },
   ({ actor, id, upload }) => storeReads(actor, id, readFieldsOf(upload), upload.files),
 );
+export const { GET, PUT, PATCH, DELETE, OPTIONS } = othersThan("POST");

@@ -1,6 +1,7 @@
 import { Readable } from "node:stream";
 import { openHandedOut } from "@/lib/commands/hand-out-image";
 import { handler } from "@/lib/http/handler";
+import { othersThan } from "@/lib/http/others-than";
 import { handOutInput } from "@/lib/schemas/read";
 
 // `secret`: the bytes are kept under no Idempotency-Key. Asked again they leave again, and that is written down again
@@ -16,3 +17,4 @@ export const POST = handler({ input: handOutInput, secret: true }, async ({ acto
     },
   });
 });
+export const { GET, PUT, PATCH, DELETE, OPTIONS } = othersThan("POST");
