@@ -43,10 +43,13 @@ test.describe("what is sent", () => {
     expectProblem(await call("GET", "/api/chips/U7", { token: mira }), 404, /Check the link\.$/);
     expectProblem(await call("GET", `/api/chips/${UNKNOWN}`, { token: mira }), 404, /Check the link\.$/);
   });
-  test("answers 405 to a method that an address does not take", async () => {
-    expect((await call("DELETE", `/api/chips/${ready.chipId}`, { token: ines })).status).toBe(405);
-    expect((await call("PUT", `/api/reads/${ready.reads[0].id}/bytes`, { token: ines })).status).toBe(405);
-    expect((await call("DELETE", "/api/policy", { token: ines })).status).toBe(405);
+  test("answers 405 to a method that an address does not take, and tells which it takes", async () => {
+    const answer = await call("DELETE", `/api/chips/${ready.chipId}`, { token: ines });
+    expectProblem(answer, 405, /^This address takes GET, PATCH only\./);
+    expect(answer.headers.get("allow")).toBe("GET, PATCH, HEAD, OPTIONS");
+    const options = await call("OPTIONS", "/api/policy");
+    expect([options.status, options.headers.get("allow")]).toEqual([204, "GET, PUT, HEAD, OPTIONS"]);
+    expect((await call("HEAD", "/api/health")).status).toBe(200);
   });
   test("does not know addresses that nobody made", async () => {
     expectProblem(await call("GET", "/api/drivers", { token: mira }), 404, /no such address/);

@@ -103,6 +103,19 @@ test.describe("pages", () => {
   }
 });
 
+test("every address refuses the methods that it does not take, and says which it takes", async () => {
+  for (const file of filesCalled("route.ts").filter((name) => !name.includes("[..."))) {
+    const taken = methodsOf(file);
+    const at = routeOf(file).replace("[id]", UNKNOWN);
+    for (const method of ["GET", "POST", "PUT", "PATCH", "DELETE"].filter((name) => !taken.includes(name))) {
+      const answer = await call(method, at, { token: tokens.get("lead") });
+      expectProblem(answer, 405, /^This address takes [A-Z, ]+ only\. Check the method\.$/);
+      const allow = answer.headers.get("allow")!.split(", ").filter((name) => !["HEAD", "OPTIONS"].includes(name));
+      expect(allow.sort(), `${method} ${at}`).toEqual([...taken].sort());
+    }
+  }
+});
+
 test("whoever holds nothing that counts changed nothing at all", async () => {
   expect(NIL).not.toBe(UNKNOWN);
   const entries = await done<{ entries: { actor: { name: string } }[] }>("GET", `/api/drives/${things.driveId}/custody`, { token: tokens.get("lead") });
