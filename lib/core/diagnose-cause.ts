@@ -142,6 +142,14 @@ function ordered(a: JudgedImage, b: JudgedImage, first: number, last: number): C
   return segmentCause(a, b, first, last, windows);
 }
 
+/** The same cause, seen from the other image. `sizeBytes`: of both, where they have one size. */
+export function turnCause(cause: Cause, sizeBytes: number): Cause {
+  const counts = { ...cause.counts };
+  if ("shiftBits" in counts) counts.shiftBits = -counts.shiftBits;
+  if (cause.code === "rotated") counts.bytes = sizeBytes - counts.bytes;
+  return { ...cause, counts, faulty: cause.faulty && other(cause.faulty) };
+}
+
 /**
  * One primary cause for two images, in the catalogue's order: length, identical, uniform, same bytes in another
  * order, inverted or reversed, address line, shift, stretches. `first` and `last`: differing addresses, null when
@@ -151,9 +159,5 @@ export function causeOf(a: JudgedImage, b: JudgedImage, first: number | null, la
   if (first === null || last === null) return { code: "equal", confidence: "certain", faulty: null, counts: {} };
   if (a.bytes.length !== b.bytes.length) return lengthCause(a.bytes, b.bytes, [a.facts, b.facts], chipBytes);
   if (a.bytes[first] <= b.bytes[first]) return ordered(a, b, first, last);
-  const cause = ordered(b, a, first, last);
-  const counts = { ...cause.counts };
-  if ("shiftBits" in counts) counts.shiftBits = -counts.shiftBits;
-  if (cause.code === "rotated") counts.bytes = a.bytes.length - counts.bytes;
-  return { ...cause, counts, faulty: cause.faulty && other(cause.faulty) };
+  return turnCause(ordered(b, a, first, last), a.bytes.length);
 }

@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
-import { diagnosePair, looksLikeText } from "@/lib/core/diagnose-pair";
+import { compareImages } from "@/lib/core/compare";
+import { causeOfPair, diagnosePair, looksLikeText, sayCause, turnCause } from "@/lib/core/diagnose-pair";
 import { inspectImage, inspectWhole } from "@/lib/core/inspect";
 import { joined, loseBits } from "./golden/bits";
 import { GOLDEN_FAULTS, GOOD_IMAGE } from "./golden/recipes";
@@ -104,6 +105,15 @@ describe("images of one size", () => {
     a.set([1, 2, 3], 500);
     b.set([0x71, 0x18, 0x35], 500);
     expect(between(a, b)).toMatchObject({ code: "unclassified", confidence: "unsure", counts: { sparse: 1 } });
+  });
+  it("keep their cause without names, and say it again from either side", () => {
+    for (const name of ["lose1", "rot512", "burst00", "A8low"]) {
+      const bad = GOLDEN_FAULTS.find((fault) => fault.name === name)!.make(GOOD_IMAGE);
+      const [a, b] = [inspectWhole(GOOD_IMAGE), inspectWhole(bad)];
+      const kept = JSON.parse(JSON.stringify(causeOfPair(GOOD_IMAGE, bad, a, b, 8192, compareImages(GOOD_IMAGE, bad))));
+      const turned = sayCause(compareImages(bad, GOOD_IMAGE), turnCause(kept, 8192), named(8192));
+      expect(turned).toEqual(diagnosePair(bad, GOOD_IMAGE, b, a, named(8192)).diagnosis);
+    }
   });
   it("takes stream facts as well, and looks at the whole itself", () => {
     const bad = good.map((_, i) => good[i & ~0x100]);
