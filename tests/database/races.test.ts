@@ -14,20 +14,6 @@ async function outcomes(runs: Promise<unknown>[]): Promise<(number | "done")[]> 
 }
 
 describe("at the same moment", () => {
-  it("one of 6 approvals wins and 5 are refused, ten times over", async () => {
-    for (let round = 1; round <= 10; round += 1) {
-      const bench = await makeReadyBench();
-      const leads = await Promise.all(Array.from({ length: 6 }, () => makeUser("lead")));
-      const ended = await outcomes(leads.map((lead) => approve(lead, bench.chip, bench.image)));
-      expect(ended.filter((end) => end === "done"), `round ${round}`).toHaveLength(1);
-      expect(ended.filter((end) => end === 409), `round ${round}`).toHaveLength(5);
-      const { approvals } = await view(bench);
-      expect(approvals).toHaveLength(1);
-      expect(await logged(bench.chip.driveId, "approval.refused")).toHaveLength(5);
-      expect((await checkCustody(bench.chip.driveId)).findings).toEqual([]);
-    }
-  }, 120_000);
-
   it("an approval and a differing read never both stand", async () => {
     for (let round = 1; round <= 10; round += 1) {
       const bench = await makeReadyBench();
