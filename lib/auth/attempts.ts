@@ -1,16 +1,14 @@
-import { createHash } from "node:crypto";
 import { Op } from "sequelize";
 import { appendEntry } from "@/lib/commands/append-entry";
+import { accountDigest } from "@/lib/commands/forget-attempts";
 import { SYSTEM, WORKSHOP_CHAIN } from "@/lib/core/words";
-import { inTransaction, SignInAttempt, type Transaction } from "@/models";
+import { inTransaction, SignInAttempt } from "@/models";
 
 const WINDOW_MS = 15 * 60_000;
 /** wrong passwords in the window: for one account from one address, for one address, for one account from anywhere */
 const PAIR = 8;
 const ADDRESS = 40;
 const ACCOUNT = 60;
-
-export const accountDigest = (email: string) => createHash("sha256").update(email.trim().toLowerCase()).digest();
 
 let turn: Promise<unknown> = Promise.resolve();
 
@@ -43,9 +41,4 @@ async function noteAndCount(account: Buffer, address: string): Promise<boolean> 
 /** After a right password the pair starts afresh; old rows of all go with it. */
 export async function clearAttempts(email: string, address: string): Promise<void> {
   await SignInAttempt.destroy({ where: { [Op.or]: [{ account: accountDigest(email), address }, { at: { [Op.lt]: new Date(Date.now() - WINDOW_MS) } }] } });
-}
-
-/** An admin's new one-time password is the way out for who is shut out: the account's tries are forgotten with it. */
-export async function forgetAttempts(email: string, tx: Transaction): Promise<void> {
-  await SignInAttempt.destroy({ where: { account: accountDigest(email) }, transaction: tx });
 }

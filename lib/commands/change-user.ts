@@ -1,4 +1,3 @@
-import { forgetAttempts } from "@/lib/auth/attempts";
 import { hashPassword, oneTimePassword } from "@/lib/auth/password";
 import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
@@ -6,6 +5,7 @@ import type { UserChange } from "@/lib/schemas/user";
 import { inTransaction, Session, User } from "@/models";
 import { appendEntry } from "./append-entry";
 import type { Change } from "./correct-facts";
+import { forgetAttempts } from "./forget-attempts";
 import { allow, notFound } from "./refuse";
 
 /** Name, role, switched off or on, a new one-time password. What it takes away counts at the next request. */
