@@ -12,6 +12,7 @@ export default defineConfig({
   },
   test: {
     environment: "node",
+    globalSetup: ["tests/support/build-worker.ts"],
     include: ["tests/**/*.test.ts"],
     exclude: ["tests/long/**", "node_modules/**"],
     pool: "forks",

@@ -1,4 +1,5 @@
 import { introduceKey } from "@/lib/commands/introduce-key";
+import { judgeAgain } from "@/lib/commands/judge-again";
 import { startOutbox } from "@/lib/mail/outbox";
 import { env } from "@/lib/env";
 import { checkDatabase } from "@/models/check-database";
@@ -15,6 +16,7 @@ export async function startUp(): Promise<void> {
     await introduceKey();
     await clearIncoming(STALE_UPLOAD_MS);
     startOutbox();
+    void judgeAgain();
   } catch (error) {
     console.error(`Twinread does not start: ${(error as Error).message}`);
     process.exit(1);

@@ -43,8 +43,25 @@ export interface ReadView {
   /** for `after` reads: the transfer they belong to */
   transferId: string | null;
   setAside: { reason: string; by: PersonView; at: string } | null;
+  /** the text file the image was expanded from */
+  source: { sha256: string; base: number; fill: number } | null;
+  /** for a composite: how it was made */
+  derived: { method: string; voters: number[]; excluded: number[]; disputedBytes: number; weak: number; constructed: number; limit: string } | null;
   /** false when the stored image is damaged or missing */
   imageSound: boolean;
+}
+
+/** Behind a composite: who voted what for each disputed byte (the stored report, CompositeReport of lib/core). */
+export interface VotesView {
+  method: string;
+  sha256: string;
+  sources: { number: number | null; seating: number; sha256: string }[];
+  excluded: { number: number | null; cause: string }[];
+  disputed: { at: number; values: number[]; chosen: number; support: number; margin: number; standing: "firm" | "weak" | "constructed" | "undecided" }[];
+  counts: { firm: number; weak: number; constructed: number; undecided: number; disputed: number };
+  odds: { bitErrorRate: string; expectedWrongBitsByMargin: string; leastSureByte: string | null };
+  limit: string;
+  truncated: boolean;
 }
 
 export interface GroupView {
@@ -112,6 +129,9 @@ export interface ChipSummary {
   package: string | null;
   marking: string | null;
   holds: string | null;
+  /** what the chip answered of itself, as lower-case hex: three id bytes, and its SFDP table */
+  idBytes: string | null;
+  sfdp: string | null;
   needsTransfer: boolean;
   state: StateView;
   /** the paired chip, if any */

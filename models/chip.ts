@@ -13,6 +13,10 @@ export class Chip extends Model<InferAttributes<Chip>, InferCreationAttributes<C
   declare package: CreationOptional<string | null>;
   declare marking: CreationOptional<string | null>;
   declare holds: CreationOptional<string | null>;
+  /** three bytes that the chip answered to its identification command, as 6 hex digits */
+  declare idBytes: CreationOptional<string | null>;
+  /** its discoverable parameters as hex, as far as they were read */
+  declare sfdp: CreationOptional<string | null>;
   declare needsTransfer: boolean;
   declare pairedWithId: CreationOptional<string | null>;
   declare createdAt: Date;
@@ -30,6 +34,8 @@ export function initChip(sequelize: Sequelize): void {
     package: text(60, true),
     marking: text(120, true),
     holds: text(120, true),
+    idBytes: text(6, true),
+    sfdp: text(4096, true),
     needsTransfer: yes(true),
     pairedWithId: reference(true),
     createdAt: time(),

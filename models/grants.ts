@@ -16,7 +16,7 @@ export const GRANTS: { table: string; grants: string[] }[] = [
   { table: "drives", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "boards", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "chips", grants: ["SELECT", "INSERT", "UPDATE"] },
-  { table: "images", grants: ["SELECT", "INSERT", "UPDATE (state)"] },
+  { table: "images", grants: ["SELECT", "INSERT", "UPDATE (state, facts, engine_version)"] },
   { table: "comparisons", grants: ["SELECT", "INSERT"] },
   {
     table: "reads",

@@ -7,6 +7,7 @@ export class Image extends Model<InferAttributes<Image>, InferCreationAttributes
   declare sizeBytes: number;
   declare crc32: number;
   declare facts: ImageFacts;
+  declare engineVersion: CreationOptional<string>;
   declare state: CreationOptional<"sound" | "damaged" | "missing">;
   declare storedAt: Date;
 }
@@ -17,6 +18,7 @@ export function initImage(sequelize: Sequelize): void {
     sizeBytes: whole(),
     crc32: whole(),
     facts: { type: DataTypes.JSON, allowNull: false },
+    engineVersion: { ...text(16), defaultValue: "1" },
     state: { ...text(10), defaultValue: "sound" },
     storedAt: time(),
   }, { sequelize, modelName: "Image", tableName: "images" });

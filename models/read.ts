@@ -19,6 +19,12 @@ export class Read extends Model<InferAttributes<Read>, InferCreationAttributes<R
   declare controllerHeld: CreationOptional<boolean | null>;
   declare note: CreationOptional<string | null>;
   declare format: Format;
+  /** the text file that the image was expanded from, as it came */
+  declare sourceSha256: CreationOptional<Buffer | null>;
+  declare sourceBase: CreationOptional<number | null>;
+  declare sourceFill: CreationOptional<number | null>;
+  /** for a composite: how it was made, as JSON (DerivedFacts) */
+  declare derived: CreationOptional<string | null>;
   declare fileName: string;
   declare modifiedAt: CreationOptional<Date | null>;
   declare takenAt: CreationOptional<Date | null>;
@@ -53,6 +59,10 @@ export function initRead(sequelize: Sequelize): void {
     controllerHeld: { type: DataTypes.BOOLEAN, allowNull: true },
     note: longText(true),
     format: text(12),
+    sourceSha256: { ...bytes(32, true), field: "source_sha256" },
+    sourceBase: { type: DataTypes.BIGINT.UNSIGNED, allowNull: true },
+    sourceFill: whole(true),
+    derived: longText(true),
     fileName: text(1024),
     modifiedAt: time(true),
     takenAt: time(true),

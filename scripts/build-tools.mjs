@@ -9,6 +9,7 @@ const folder = path.join(root, "dist");
 
 /** dist/NAME.mjs and what it is made of. A worker of the app is one line more. */
 export const TOOLS = {
+  "engine-worker": "lib/engine/worker.ts",
   "inspect": "scripts/inspect.ts",
   "bench-engine": "scripts/bench/engine.ts",
 };

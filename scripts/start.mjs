@@ -2,6 +2,7 @@ import path from "node:path";
 import { localUrl } from "./start/app.mjs";
 import { demoAccounts } from "./start/demo.mjs";
 import { openHouse } from "./start/house.mjs";
+import { buildTools } from "./build-tools.mjs";
 import { ensureBuilt, ensureInstalled } from "./start/install.mjs";
 import { takeLock } from "./start/lock.mjs";
 import { endOnce } from "./start/once.mjs";
@@ -45,7 +46,8 @@ async function start() {
   house = opening;
   await opening.prepare(settings.demo ? "demo" : "live");
   await opening.checkAppPort();
-  if (!dev) await ensureBuilt();
+  // the engine's worker is plain JavaScript also where the pages are not built
+  await (dev ? buildTools() : ensureBuilt());
   await opening.database();
   await opening.migrate();
   await opening.seed();

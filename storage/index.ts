@@ -2,6 +2,7 @@ import "server-only";
 import type { Readable } from "node:stream";
 import { env } from "@/lib/env";
 import * as local from "./local";
+import { imagePath } from "./paths";
 import * as writeOnce from "./write-once";
 
 export type { Arrived } from "./write-once";
@@ -11,6 +12,8 @@ export { discard } from "./write-once";
 /** The byte store of this data folder. Images are named by their SHA-256 in lower-case hex and never change. */
 export const receive = (stream: Readable) => writeOnce.receive(env().dataDir, stream);
 export const keep = (arrived: writeOnce.Arrived) => writeOnce.keep(env().dataDir, arrived);
+/** Where the bytes of an image lie, for the engine's threads. */
+export const pathOfImage = (sha256: string) => imagePath(env().dataDir, sha256);
 export const imageChunks = (sha256: string) => local.imageChunks(env().dataDir, sha256);
 export const imageWindow = (sha256: string, offset: number, length: number) => local.imageWindow(env().dataDir, sha256, offset, length);
 export const checkImage = (sha256: string, sizeBytes: number) => local.checkImage(env().dataDir, sha256, sizeBytes);

@@ -4,7 +4,9 @@ import { donorFit } from "@/lib/core/donor-fit";
 import { readName } from "@/lib/core/words";
 import { people, type People } from "@/lib/queries/people";
 import { readView } from "@/lib/queries/read-view";
-import { Approval, ApprovalRequest, Board, type Case, Chip, Customer, type Drive, Read, type Transaction, Transfer } from "@/models";
+import { derivedFacts } from "@/lib/core/derived";
+import { FORMAT_ENDING } from "@/lib/core/text-format";
+import { Approval, ApprovalRequest, Board, type Case, Chip, Customer, type Drive, Image, Read, type Transaction, Transfer } from "@/models";
 import { driveLetter } from "./place";
 
 export interface BundleImage {
@@ -28,6 +30,8 @@ interface Rows {
   approvals: Approval[];
   requests: ApprovalRequest[];
   transfers: Transfer[];
+  /** bytes of what is kept beside images: texts as they came, reports of composites */
+  sizes: Map<string, number>;
   who: People;
 }
 
@@ -37,9 +41,10 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
   const boards = await Board.findAll({ where: { driveId: drives.map((d) => d.id) }, order: ["createdAt", "id"], ...at });
   const chips = await Chip.findAll({ where: { boardId: boards.map((b) => b.id) }, order: ["createdAt", "id"], ...at });
   const chipId = chips.map((c) => c.id);
+  const reads = await Read.findAll({ where: { chipId }, order: ["stage", "number"], ...at });
+  const beside = await Image.findAll({ where: { sha256: reads.flatMap(besides).map((one) => Buffer.from(one.sha256, "hex")) }, ...at });
   const rows: Rows = {
-    boards, chips, who: await people(tx),
-    reads: await Read.findAll({ where: { chipId }, order: ["stage", "number"], ...at }),
+    boards, chips, reads, who: await people(tx), sizes: new Map(beside.map((i) => [i.sha256.toString("hex"), i.sizeBytes])),
     approvals: await Approval.findAll({ where: { chipId }, order: ["givenAt", "id"], ...at }),
     requests: await ApprovalRequest.findAll({ where: { chipId }, order: ["askedAt", "id"], ...at }),
     transfers: await Transfer.findAll({ where: { chipId }, order: ["at", "id"], ...at }),
@@ -56,6 +61,15 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
     })),
   };
   return { record, images, twoPersonRule: rows.approvals.every((a) => a.twoPersonRule) };
+}
+
+/** What is kept beside a read's image: the text it came as, the report of the vote. */
+function besides(row: Read): { sha256: string; ending: string }[] {
+  const derived = derivedFacts(row);
+  return [
+    ...(row.sourceSha256 ? [{ sha256: row.sourceSha256.toString("hex"), ending: `.${FORMAT_ENDING[row.format]}` }] : []),
+    ...(derived ? [{ sha256: derived.reportSha256, ending: "-votes.json" }] : []),
+  ];
 }
 
 function boardRecords(rows: Rows, driveId: string, drive: number, images: BundleImage[]) {
@@ -81,6 +95,7 @@ function chipRecord(rows: Rows, chip: Chip, place: { drive: number; board: strin
     reads: rows.reads.filter((r) => r.chipId === chip.id).map((row) => {
       const path = imagePath({ ...place, stage: row.stage, number: row.number });
       images.push({ path, sha256: row.sha256.toString("hex"), sizeBytes: row.sizeBytes });
+      for (const { sha256: digest, ending } of besides(row)) images.push({ path: path.replace(/\.bin$/, ending), sha256: digest, sizeBytes: rows.sizes.get(digest)! });
       const { id, number, stage, seating, sizeBytes, crc32, sha256, counted, findings, ...rest } = readView(row, who);
       const { chipId: _chip, imageSound: _sound, fileName, ...equipment } = rest;
       return { name: readName(stage, number), path, id, number, stage, seating, sizeBytes, crc32, sha256, counted, findings, originalFileName: fileName, ...equipment };

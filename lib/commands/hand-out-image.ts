@@ -1,14 +1,23 @@
-import type { Readable } from "node:stream";
+import { createHash } from "node:crypto";
+import { Readable } from "node:stream";
 import { may } from "@/lib/core/policy";
-import { type Actor, readName } from "@/lib/core/words";
+import { FORMAT_ENDING } from "@/lib/core/text-format";
+import { type Actor, type Format, readName } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { Approval, inTransaction, Read } from "@/models";
-import { verifiedStream } from "@/storage";
+import { engine } from "@/lib/engine/pool";
+import { pathOfImage, verifiedStream } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { requireCleanChain } from "./chain-gate";
 import { driveLetter, placeOfChip } from "./place";
 import { allow, notFound } from "./refuse";
 import { reportImage, requireSoundImage } from "./report-image";
+
+export interface HandOutInput {
+  reason?: string | null;
+  /** raw when left out */
+  format?: Format;
+}
 
 export interface HandOut {
   sha256: string;
@@ -18,7 +27,7 @@ export interface HandOut {
 }
 
 /** Records that an image leaves the house, before its first byte leaves: what, to whom, why. */
-export async function handOutImage(actor: Actor, readId: string, input: { reason?: string | null }): Promise<HandOut> {
+export async function handOutImage(actor: Actor, readId: string, input: HandOutInput): Promise<HandOut> {
   const read = await Read.findByPk(readId);
   if (!read) throw notFound("read");
   const place = await placeOfChip(read.chipId);
@@ -42,18 +51,26 @@ export async function handOutImage(actor: Actor, readId: string, input: { reason
     await appendEntry(tx, place.drive.id, actor, "image.handed-out", { type: "read", id: read.id }, {
       read: { id: read.id, stage: read.stage, number: read.number }, chip: { id: place.chip.id, designator: place.chip.designator },
       sha256, sizeBytes: read.sizeBytes, purpose: free ?? "another image, with a reason", to: { id: actor.id, name: actor.name }, reason: input.reason ?? null,
+      ...(input.format && input.format !== "raw" ? { format: input.format } : {}),
     });
   });
   const name = readName(read.stage, read.number).replace(" ", "-");
-  return { sha256, sizeBytes: read.sizeBytes, fileName: `${place.case.ref}_${driveLetter(place.drive)}_${place.chip.designator}_${name}_${sha256.slice(-8)}.bin` };
+  return { sha256, sizeBytes: read.sizeBytes, fileName: `${place.case.ref}_${driveLetter(place.drive)}_${place.chip.designator}_${name}_${sha256.slice(-8)}.${FORMAT_ENDING[input.format ?? "raw"]}` };
 }
 
-/** Recorded first, then the bytes, checked while they flow: a mismatch breaks the transfer and is written down. */
-export async function openHandedOut(actor: Actor, readId: string, input: { reason?: string | null }): Promise<HandOut & { stream: Readable }> {
+/**
+ * Recorded first, then the bytes, checked while they flow: a mismatch breaks the transfer and is written down. As text the
+ * image has been read whole and checked just before; `fileSha256` is the digest of what leaves.
+ */
+export async function openHandedOut(actor: Actor, readId: string, input: HandOutInput): Promise<HandOut & { stream: Readable; fileSha256: string; fileBytes: number }> {
   const handOut = await handOutImage(actor, readId, input);
+  if (input.format && input.format !== "raw") {
+    const text = Buffer.from(await engine("encode", { file: pathOfImage(handOut.sha256), format: input.format, base: 0 }));
+    return { ...handOut, stream: Readable.from([text]), fileSha256: createHash("sha256").update(text).digest("hex"), fileBytes: text.length };
+  }
   const stream = verifiedStream(handOut.sha256);
   stream.once("error", () => {
     void reportImage(handOut.sha256, "damaged", "hand-out").catch((error: unknown) => console.error("could not record a damaged image:", error));
   });
-  return { ...handOut, stream };
+  return { ...handOut, stream, fileSha256: handOut.sha256, fileBytes: handOut.sizeBytes };
 }

@@ -1,25 +1,22 @@
-import { createInspection, type ImageFacts } from "@/lib/core/inspect";
+import { Op } from "sequelize";
+import { ENGINE_VERSION } from "@/lib/core/engine-version";
+import type { ImageFacts } from "@/lib/core/inspect";
+import { engine } from "@/lib/engine/pool";
 import { Image, type Transaction } from "@/models";
-import { type Arrived, imageChunks } from "@/storage";
-import { breathe, inTurn } from "./in-turn";
+import { type Arrived, pathOfImage } from "@/storage";
 
-/** What one image shows by itself; computed once per distinct digest and kept with the image's row. */
-export async function inspectImage(sha256: string, sizeBytes: number): Promise<ImageFacts> {
-  const known = await Image.findByPk(Buffer.from(sha256, "hex"));
-  if (known) return known.facts;
-  return inTurn(async () => {
-    const inspection = createInspection(sizeBytes);
-    for await (const chunk of imageChunks(sha256)) {
-      inspection.push(chunk);
-      await breathe();
-    }
-    return inspection.finish();
-  });
+/** What one image shows by itself; worked out once per distinct digest and engine version, kept with the image's row. */
+export async function inspectImage(sha256: string, tx?: Transaction): Promise<ImageFacts> {
+  const known = await Image.findByPk(Buffer.from(sha256, "hex"), { transaction: tx });
+  if (known && known.engineVersion === ENGINE_VERSION) return known.facts;
+  return engine("inspect", { file: pathOfImage(sha256) });
 }
 
-/** The image's row, unless it is there already. Bytes are in the store before this is called. */
+/** The image's row, unless it is there already; its facts are those of the present engine. Bytes are in the store before. */
 export async function recordImage(tx: Transaction, arrived: Arrived, facts: ImageFacts): Promise<void> {
-  await Image.bulkCreate([{ sha256: Buffer.from(arrived.sha256, "hex"), sizeBytes: arrived.sizeBytes, crc32: arrived.crc32, facts, storedAt: new Date() }], {
+  const sha256 = Buffer.from(arrived.sha256, "hex");
+  await Image.bulkCreate([{ sha256, sizeBytes: arrived.sizeBytes, crc32: arrived.crc32, facts, engineVersion: ENGINE_VERSION, storedAt: new Date() }], {
     transaction: tx, ignoreDuplicates: true,
   });
+  await Image.update({ facts, engineVersion: ENGINE_VERSION }, { where: { sha256, engineVersion: { [Op.ne]: ENGINE_VERSION } }, transaction: tx });
 }

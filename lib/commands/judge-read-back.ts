@@ -1,11 +1,11 @@
 import { Op } from "sequelize";
-import { createAndMatch, judgeReadBack } from "@/lib/core/findings";
+import { judgeReadBack, type ReadBackDiagnosis } from "@/lib/core/findings";
 import type { ImageFacts } from "@/lib/core/inspect";
 import type { Finding } from "@/lib/core/words";
+import { engine } from "@/lib/engine/pool";
 import { Approval, Image, Read, type Transaction, Transfer } from "@/models";
-import { imageChunks } from "@/storage";
+import { pathOfImage } from "@/storage";
 import { compareIfStored } from "./compare-images";
-import { breathe, inTurn } from "./in-turn";
 import { type ChipPlace, placeOfChip } from "./place";
 
 /** Judges a read-back against the image that was approved for its transfer and the donor's saved content. */
@@ -19,38 +19,24 @@ export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: R
   const equal = read.sha256.equals(approval.sha256);
   const old = saved.find((r) => r.sizeBytes === approved.sizeBytes);
   const comparison = equal ? null : await compareIfStored({ sha256: approvedSha256, sizeBytes: approved.sizeBytes }, { sha256, sizeBytes: read.sizeBytes }, tx);
+  const diagnosis = equal ? undefined : await diagnosisOf(approvedSha256, old?.sha256.toString("hex") ?? null, sha256);
   return judgeReadBack({
     facts, read: { sha256, sizeBytes: read.sizeBytes }, approved: { sha256: approvedSha256, sizeBytes: approved.sizeBytes },
     donorSaved: saved.map((r) => r.sha256.toString("hex")),
-    equalsAnd: !equal && old !== undefined && read.sizeBytes === approved.sizeBytes && (await equalsAnd(approvedSha256, old.sha256.toString("hex"), sha256)),
+    equalsAnd: diagnosis?.code === "not-erased" && !diagnosis.ranges, diagnosis,
     otherApproved: equal ? null : await otherApproved(tx, read.sha256, transfer.chipId),
     comparison: comparison && { differingBytes: comparison.differingBytes, first: comparison.first, last: comparison.last },
   });
 }
 
-/** Flash that was programmed without an erase holds approved AND old, bit by bit. */
-function equalsAnd(approved: string, old: string, readBack: string): Promise<boolean> {
-  return inTurn(async () => {
-    const match = createAndMatch();
-    const olds = imageChunks(old);
-    const backs = imageChunks(readBack);
-    try {
-      for await (const chunk of imageChunks(approved)) {
-        const [o, b] = [(await olds.next()).value, (await backs.next()).value];
-        if (!o || !b) return false;
-        match.push(chunk, o, b);
-        if (!match.matches()) return false;
-        await breathe();
-      }
-      return match.matches();
-    } catch (error) {
-      if ((error as NodeJS.ErrnoException).code === "ENOENT") return false;
-      throw error;
-    } finally {
-      await olds.return(undefined);
-      await backs.return(undefined);
-    }
-  });
+/** How the write went as far as the bytes tell; undefined when an image is gone. */
+async function diagnosisOf(approved: string, old: string | null, readBack: string): Promise<ReadBackDiagnosis | undefined> {
+  try {
+    return await engine("readBack", { approved: pathOfImage(approved), old: old && pathOfImage(old), readBack: pathOfImage(readBack) });
+  } catch (error) {
+    if ((error as NodeJS.ErrnoException).code === "ENOENT") return undefined;
+    throw error;
+  }
 }
 
 async function otherApproved(tx: Transaction, sha256: Buffer, chipId: string): Promise<{ designator: string; caseRef: string } | null> {

@@ -1,36 +1,57 @@
 import { Op } from "sequelize";
+import { sizeContradiction } from "@/lib/core/chip-id";
+import { derivedFacts } from "@/lib/core/derived";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
 import type { JudgeInput } from "@/lib/core/findings";
 import { judgeRead } from "@/lib/core/findings";
-import { nearlyBlank } from "@/lib/core/inspect";
+import { type ImageFacts, nearlyBlank } from "@/lib/core/inspect";
+import type { ChipOfImage } from "@/lib/core/single-findings";
 import { countOf } from "@/lib/core/quantity";
 import { placeText } from "@/lib/core/strip";
 import { type Finding, readName, SYSTEM } from "@/lib/core/words";
 import { currentPolicy } from "@/lib/queries/policy";
-import { Image, inTransaction, Read, type Transaction, Transfer } from "@/models";
+import { type Chip, Image, inTransaction, Read, type Transaction, Transfer } from "@/models";
 import { imageChunks } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { compareIfStored } from "./compare-images";
+import { inspectImage } from "./inspect-image";
 import { judgeReadBackOf } from "./judge-read-back";
 import { type ChipPlace, driveLetter, placeOfChip } from "./place";
 
 /** The findings of one read, from its image and from what else is on record at this moment. */
 export async function findingsOf(tx: Transaction, place: ChipPlace, read: Read): Promise<Finding[]> {
-  const image = (await Image.findByPk(read.sha256, { transaction: tx }))!;
-  if (read.stage === "after") return judgeReadBackOf(tx, place, read, image.facts);
+  const facts = await factsOf(tx, read);
+  if (read.stage === "after") return judgeReadBackOf(tx, place, read, facts);
   const siblings = await Read.findAll({ where: { chipId: place.chip.id, stage: read.stage, number: { [Op.lt]: read.number } }, order: ["number"], transaction: tx });
-  return judgeRead({
+  const derived = derivedFacts(read);
+  const own = derived ? derived.findings : [];
+  return [...own, ...judgeRead({
     stage: read.stage,
     read: { sizeBytes: read.sizeBytes, sha256: read.sha256.toString("hex"), fileName: read.fileName, modifiedAt: read.modifiedAt?.toISOString() ?? null },
-    chip: { sizeBytes: place.chip.sizeBytes, sizeSource: place.chip.sizeSource },
-    facts: image.facts, policy: await currentPolicy(tx),
+    chip: chipOfImage(place.chip),
+    facts, policy: await currentPolicy(tx),
     earlier: siblings.map((r) => ({
       number: r.number, stage: r.stage, sha256: r.sha256.toString("hex"), fileName: r.fileName, modifiedAt: r.modifiedAt?.toISOString() ?? null, counted: r.counted,
     })),
     // every workshop holds many blank images: they say nothing about where they come from, so nothing is looked up
-    elsewhere: nearlyBlank(image.facts) ? [] : await elsewhere(tx, place, read),
+    elsewhere: nearlyBlank(facts) ? [] : await elsewhere(tx, place, read),
     tail: read.sizeBytes > place.chip.sizeBytes ? { uniform: await tailIsUniform(read, place.chip.sizeBytes) } : undefined,
-  });
+  })];
+}
+
+function chipOfImage(chip: Chip): ChipOfImage {
+  const { sizeBytes, sizeSource } = chip;
+  const [idBytes, sfdpBytes] = [chip.idBytes ?? null, chip.sfdp ?? null];
+  return { sizeBytes, sizeSource, idBytes, sfdpBytes, contradiction: sizeContradiction({ sizeBytes, sizeSource }, idBytes, sfdpBytes)?.message ?? null };
+}
+
+/** The image's facts by the present engine; those of an older one are worked out again and kept. */
+async function factsOf(tx: Transaction, read: Read): Promise<ImageFacts> {
+  const image = (await Image.findByPk(read.sha256, { transaction: tx }))!;
+  if (image.engineVersion === ENGINE_VERSION) return image.facts;
+  const facts = await inspectImage(read.sha256.toString("hex"), tx);
+  await image.update({ facts, engineVersion: ENGINE_VERSION }, { transaction: tx });
+  return facts;
 }
 
 /** Counted reads of other chips that hold these very bytes; the read-backs of this chip's own transfers, to whatever donor, are left out. */
@@ -71,7 +92,7 @@ export async function judge(tx: Transaction, place: ChipPlace, read: Read, fresh
   const text = JSON.stringify(findings);
   if (!fresh && text === read.findings && read.engineVersion === ENGINE_VERSION) return findings;
   await read.update({ findings: text, engineVersion: ENGINE_VERSION }, { transaction: tx });
-  const others = await Read.findAll({ where: { chipId: place.chip.id, stage: read.stage, counted: true, id: { [Op.ne]: read.id }, transferId: read.transferId }, order: ["number"], transaction: tx });
+  const others = await Read.findAll({ where: { chipId: place.chip.id, stage: read.stage, counted: true, id: { [Op.ne]: read.id }, transferId: read.transferId ?? null }, order: ["number"], transaction: tx });
   const equal = others.filter((r) => r.sha256.equals(read.sha256));
   await appendEntry(tx, place.drive.id, SYSTEM, "read.judged", { type: "read", id: read.id }, {
     read: { id: read.id, stage: read.stage, number: read.number }, chip: { id: place.chip.id, designator: place.chip.designator },

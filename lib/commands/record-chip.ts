@@ -22,7 +22,7 @@ export async function recordChip(actor: Actor, boardId: string, input: ChipInput
       const supply = input.supplyMillivolts;
       const facts = {
         bus: input.bus, sizeBytes: input.sizeBytes, sizeSource: input.sizeSource, package: input.package ?? null,
-        marking: input.marking ?? null, holds: input.holds ?? null, needsTransfer: board.role === "original" ? input.needsTransfer : false,
+        marking: input.marking ?? null, holds: input.holds ?? null, idBytes: input.idBytes ?? null, sfdp: input.sfdp ?? null, needsTransfer: board.role === "original" ? input.needsTransfer : false,
       };
       const chip = await Chip.create({
         id: randomUUID(), boardId, designator: input.designator, ...facts, supplyMillivolts: supply === "unknown" ? null : supply, createdAt: new Date(),

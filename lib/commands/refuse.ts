@@ -3,6 +3,7 @@ import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 
 const WHO: Partial<Record<Verb, string>> = {
+  "composite.make": "Only a lead can make a composite. Ask one, or take more reads.",
   "approval.give": "Only a lead can approve an image. Ask for approval on the chip's page.",
   "approval.revoke": "Only a lead can revoke an approval.",
   "approval.send-back": "Only a lead can send an approval back.",

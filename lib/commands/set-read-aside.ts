@@ -59,7 +59,7 @@ async function reviewApproval(tx: Transaction, place: ChipPlace): Promise<void> 
   const approved = groups.find((g) => g.sha256 === standing.sha256.toString("hex"));
   if (groups.some((g) => g !== approved)) {
     await revokeStanding(tx, SYSTEM, place.chip.id, "differing-read", "A read that is counted again differs from the approved image.");
-  } else if (!approved || approved.reads.length < policy.reads || approved.seatings.length < policy.seatings) {
+  } else if (!approved || approved.behind < policy.reads || approved.seatings.length < policy.seatings) {
     await revokeStanding(tx, SYSTEM, place.chip.id, "below-policy", `Fewer than ${policy.reads} counted reads in ${policy.seatings} seatings hold the approved image now.`);
   }
 }

@@ -1,4 +1,5 @@
 import { randomUUID } from "node:crypto";
+import { Readable } from "node:stream";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
 import type { ImageFacts } from "@/lib/core/inspect";
 import { type Actor, readName, SYSTEM } from "@/lib/core/words";
@@ -11,8 +12,9 @@ import { currentPolicy } from "@/lib/queries/policy";
 import { readView } from "@/lib/queries/read-view";
 import type { ReadFields } from "@/lib/schemas/read";
 import type { ReadView, StateView } from "@/lib/views";
+import { engine } from "@/lib/engine/pool";
 import { Approval, inTransaction, Read, type Transaction, Transfer } from "@/models";
-import { type Arrived, keep } from "@/storage";
+import { type Arrived, keep, receive } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { checkStage } from "./check-stage";
 import { compareIfStored } from "./compare-images";
@@ -26,6 +28,11 @@ import { revokeStanding } from "./revoke-approval";
 export interface UploadedFile {
   arrived: Arrived;
   fileName: string;
+}
+
+/** A file of the call as it will be stored: its image and, for text formats, the text it was expanded from. */
+interface Incoming extends UploadedFile {
+  source: Arrived | null;
 }
 
 export interface StoredReads {
@@ -42,21 +49,23 @@ export async function storeReads(actor: Actor, chipId: string, fields: ReadField
   const place = await placeOfChip(chipId);
   checkFiles(fields, files);
   await checkStage(place, fields.stage);
-  const facts: ImageFacts[] = [];
-  for (const { arrived } of files) {
+  const incoming = await Promise.all(files.map((file) => expandText(fields, file)));
+  const facts = new Map<string, ImageFacts>();
+  for (const arrived of incoming.flatMap((file) => (file.source ? [file.source, file.arrived] : [file.arrived]))) {
     await keep(arrived);
     await reportSound(arrived.sha256, "upload");
-    facts.push(await inspectImage(arrived.sha256, arrived.sizeBytes));
+    facts.set(arrived.sha256, await inspectImage(arrived.sha256));
   }
-  await compareAhead(chipId, fields, files);
+  await compareAhead(chipId, fields, incoming);
 
   const stored = await inTransaction(async (tx) => {
     await lockChain(tx, place.drive.id);
     const now = await placeOfChip(chipId, tx);
     const transferId = await checkStage(now, fields.stage, tx);
     const rows: Read[] = [];
-    for (const [index, file] of files.entries()) {
-      await recordImage(tx, file.arrived, facts[index]);
+    for (const [index, file] of incoming.entries()) {
+      if (file.source) await recordImage(tx, file.source, facts.get(file.source.sha256)!);
+      await recordImage(tx, file.arrived, facts.get(file.arrived.sha256)!);
       const row = await createRead(tx, actor, now, fields, file, index, transferId);
       const findings = await judge(tx, now, row, true);
       if (fields.stage === "after") await recordReadBack(tx, now, row, transferId!, findings[0]?.message ?? "");
@@ -67,14 +76,17 @@ export async function storeReads(actor: Actor, chipId: string, fields: ReadField
     const who = await people(tx);
     return { reads: rows.map((r) => readView(r, who)), chip: record && (await chipState(record, await currentPolicy(tx), tx)) };
   });
-  for (const sha256 of new Set(files.map((f) => f.arrived.sha256))) await judgeSameImages(Buffer.from(sha256, "hex"), chipId);
+  for (const sha256 of new Set(incoming.map((f) => f.arrived.sha256))) await judgeSameImages(Buffer.from(sha256, "hex"), chipId);
   return stored;
 }
 
 function checkFiles(fields: ReadFields, files: UploadedFile[]): void {
   if (files.length === 0) throw new AppError("malformed", "No file came with the request. Send 1 to 16 parts named file.");
-  if (fields.format !== "raw") {
-    throw new AppError("does-not-fit", "Only raw binary images can be stored so far. Save the image as raw binary in your reader's software and send that.", { errors: [{ path: "format", message: "Send raw." }] });
+  for (const name of ["base", "size", "fill"] as const) {
+    const given = fields[name] !== undefined && fields[name] !== null;
+    if (given === (fields.format !== "raw")) continue;
+    const detail = given ? `A raw image has no ${name}. Leave it out, or say which text format this is.` : `A text file needs its ${name}: say base, size and fill. They are never guessed, and are recorded.`;
+    throw new AppError("does-not-fit", detail, { errors: [{ path: name, message: given ? "Leave it out." : `Give the ${name}.` }] });
   }
   for (const [name, list] of Object.entries({ sha256: fields.sha256, modifiedAt: fields.modifiedAt, takenAt: fields.takenAt })) {
     if (list.length !== 0 && list.length !== files.length) {
@@ -90,8 +102,16 @@ function checkFiles(fields: ReadFields, files: UploadedFile[]): void {
   }
 }
 
+/** The image that a text file holds; the text itself is kept beside it as it came. Nothing malformed is stored. */
+async function expandText({ format, base, size, fill }: ReadFields, file: UploadedFile): Promise<Incoming> {
+  if (format === "raw") return { ...file, source: null };
+  const result = await engine("expand", { file: file.arrived.path, format, window: { base: base!, size: size!, fill: fill! } });
+  if ("refused" in result) throw new AppError("does-not-fit", `${file.fileName}: ${result.refused} Nothing was stored.`);
+  return { fileName: file.fileName, arrived: await receive(Readable.from([Buffer.from(result.bytes.buffer, result.bytes.byteOffset, result.bytes.byteLength)])), source: file.arrived };
+}
+
 /** Compares with what is there already before any lock is taken: inside the transaction it is then a look-up. */
-async function compareAhead(chipId: string, fields: ReadFields, files: UploadedFile[]): Promise<void> {
+async function compareAhead(chipId: string, fields: ReadFields, files: Incoming[]): Promise<void> {
   const rows = await Read.findAll({ where: { chipId, stage: fields.stage, counted: true } });
   const known = new Map(rows.map((r) => [r.sha256.toString("hex"), r.sizeBytes]));
   for (const { arrived } of files) {
@@ -102,7 +122,7 @@ async function compareAhead(chipId: string, fields: ReadFields, files: UploadedF
   }
 }
 
-async function createRead(tx: Transaction, actor: Actor, place: ChipPlace, fields: ReadFields, file: UploadedFile, index: number, transferId: string | null): Promise<Read> {
+async function createRead(tx: Transaction, actor: Actor, place: ChipPlace, fields: ReadFields, file: Incoming, index: number, transferId: string | null): Promise<Read> {
   const { chip, drive } = place;
   const number = ((await Read.max<number, Read>("number", { where: { chipId: chip.id, stage: fields.stage }, transaction: tx })) ?? 0) + 1;
   const taken = fields.takenAt[index] ?? null;
@@ -115,6 +135,7 @@ async function createRead(tx: Transaction, actor: Actor, place: ChipPlace, field
   const row = await Read.create({
     id: randomUUID(), chipId: chip.id, stage: fields.stage, number, seating: fields.seating, transferId, reader: fields.reader, ...equipment,
     supplyMillivolts: supply === "unknown" ? null : supply, supplyUnknown: supply === "unknown", format: fields.format, fileName: file.fileName,
+    ...(file.source ? { sourceSha256: Buffer.from(file.source.sha256, "hex"), sourceBase: fields.base, sourceFill: fields.fill } : {}),
     modifiedAt: modified ? new Date(modified) : null, takenAt: taken ? new Date(taken) : null, storedAt: new Date(), operatorId: actor.id,
     sha256: Buffer.from(file.arrived.sha256, "hex"), sizeBytes: file.arrived.sizeBytes, crc32: file.arrived.crc32, findings: "[]", engineVersion: ENGINE_VERSION,
   }, { transaction: tx });
@@ -122,6 +143,7 @@ async function createRead(tx: Transaction, actor: Actor, place: ChipPlace, field
     read: { id: row.id, stage: row.stage, number }, chip: { id: chip.id, designator: chip.designator }, seating: row.seating,
     sizeBytes: row.sizeBytes, crc32: crc32Hex(row.crc32), sha256: file.arrived.sha256, format: row.format, fileName: row.fileName, reader: row.reader,
     ...equipment, supplyMillivolts: supply, statusBits: "not read", takenAt: row.takenAt?.toISOString() ?? null, modifiedAt: row.modifiedAt?.toISOString() ?? null, transfer: transferId,
+    ...(file.source ? { source: { fileSha256: file.source.sha256, fileBytes: file.source.sizeBytes, base: fields.base!, fill: fields.fill! } } : {}),
   });
   return row;
 }

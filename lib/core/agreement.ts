@@ -12,14 +12,18 @@ export interface StateRead {
   counted: boolean;
   findings: Finding[];
   operatorId: string;
+  /** of a composite: how many reads were voted into it, and their seatings; it stands for them in the count */
+  voters?: { reads: number; seatings: number[] };
 }
 
 export interface AgreementGroup {
   sha256: string;
   /** read numbers, rising */
   reads: number[];
-  /** distinct seatings, rising */
+  /** distinct seatings, rising; those of a composite's voters included */
   seatings: number[];
+  /** reads that stand behind the image: its own, and for a composite those that were voted into it */
+  behind: number;
 }
 
 const rising = (a: number, b: number) => a - b;
@@ -33,15 +37,16 @@ export function agreement(reads: readonly StateRead[]): { groups: AgreementGroup
   const groups = [...bySha].map(([sha256, members]) => ({
     sha256,
     reads: members.map((read) => read.number).sort(rising),
-    seatings: [...new Set(members.map((read) => read.seating))].sort(rising),
-  })).sort((a, b) => b.reads.length - a.reads.length || a.reads[0] - b.reads[0]);
+    seatings: [...new Set(members.flatMap((read) => read.voters?.seatings ?? [read.seating]))].sort(rising),
+    behind: members.reduce((sum, read) => sum + (read.voters?.reads ?? 1), 0),
+  })).sort((a, b) => b.behind - a.behind || a.reads[0] - b.reads[0]);
   return { groups, largest: groups[0] ?? null };
 }
 
 /** Number of the newest counted read outside the one largest group; null when all agree or no group is largest. */
 export function oddOneOut(reads: readonly StateRead[]): number | null {
   const { groups } = agreement(reads);
-  if (groups.length < 2 || groups[0].reads.length === groups[1].reads.length) return null;
+  if (groups.length < 2 || groups[0].behind === groups[1].behind) return null;
   return Math.max(...groups.slice(1).flatMap((group) => group.reads));
 }
 

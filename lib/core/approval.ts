@@ -39,12 +39,13 @@ const beforeReads = (facts: StateFacts) => facts.reads.filter((read) => read.sta
 
 function agreementConditions({ policy }: StateFacts, largest: AgreementGroup | null, alone: boolean): Condition[] {
   const [reads, seatings] = [largest?.reads ?? [], largest?.seatings ?? []];
-  const enough = alone && reads.length >= policy.reads;
+  const behind = largest?.behind ?? 0;
+  const enough = alone && behind >= policy.reads;
   const lettered = seatings.map(seatingLetter);
   return [
     {
       key: "agreeing-reads", rule: `At least ${policy.reads} reads agree byte for byte`,
-      value: enough ? listText(reads.map(String)) : `${reads.length} of ${policy.reads}`, state: enough ? "met" : "open",
+      value: enough ? (behind > reads.length ? `composite of ${behind}` : listText(reads.map(String))) : `${behind} of ${policy.reads}`, state: enough ? "met" : "open",
     },
     {
       key: "seatings",

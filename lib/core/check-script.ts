@@ -156,7 +156,8 @@ check_log() { # number of the drive
     '{"action":"bundle.started",'*) ;;
     *) bad "$log.jsonl does not end with the start of this bundle: its end was cut, or something was added." ;;
   esac
-  sed -n 's/^{"action":"read\.stored",.*"read":{"id":"[0-9a-f-]*","number":\([0-9]*\),"stage":"\([a-z]*\)"},.*,"sha256":"\([0-9a-f]\{64\}\)","sizeBytes":.*/\3 \2-\1.bin/p' "$log.jsonl" | sort >"$at/told"
+  sed -n -e 's/^{"action":"read\.stored",.*"read":{"id":"[0-9a-f-]*","number":\([0-9]*\),"stage":"\([a-z]*\)"},.*,"sha256":"\([0-9a-f]\{64\}\)","sizeBytes":.*/\3 \2-\1.bin/p' \
+    -e 's/^{"action":"composite\.made",.*"read":{"id":"[0-9a-f-]*","number":\([0-9]*\),"stage":"\([a-z]*\)"},.*,"sha256":"\([0-9a-f]\{64\}\)","sizeBytes":.*/\3 \2-\1.bin/p' "$log.jsonl" | sort >"$at/told"
   sed -n "s,^\([0-9a-f]\{64\}\)  data/drives/$1/[^/]*/\([a-z]*-[0-9]*\.bin\)\$,\1 \2,p" manifest-sha256.txt | sort >"$at/kept"
   comm -23 "$at/told" "$at/kept" >"$at/missing"
   each_bad "$at/missing" "$log.jsonl names an image that the bundle does not hold: "

@@ -16,6 +16,8 @@ export interface WorstDifference {
   first: number;
   last: number;
   looksLike: string | null;
+  /** what to do next, where the cause says more than "read again" */
+  advice?: string;
 }
 
 export interface StateTransfer {
@@ -123,7 +125,7 @@ export function deriveReadingState(facts: Pick<StateFacts, "policy" | "sizeBytes
   const open = openFindings({ policy, reads });
   const blocks = open.filter(({ finding }) => finding.severity === "blocks");
   if (blocks.length > 0) return say("held", heldSentence(blocks, true));
-  const [agreeing, seatings] = [largest.reads.length, largest.seatings.length];
+  const [agreeing, seatings] = [largest.behind, largest.seatings.length];
   if (agreeing < policy.reads || seatings < policy.seatings) {
     return say("needs-reads", needsReadsSentence(policy, agreeing, seatings));
   }

@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { BOARD_ROLES, BUSES, METHODS, readName, ROLES, seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS } from "./words";
+import { BOARD_ROLES, BUSES, FORMATS, METHODS, readName, ROLES, seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS } from "./words";
 
 /**
  * The closed list of what a custody log can say (CUSTODY.md): for each action the shape of its facts, the sentence for
@@ -46,26 +46,32 @@ export const ACTIONS = {
     fit: z.object({ verdict: words, differences: z.array(words), reason: optional }).nullable() },
     (f) => `Recorded the ${f.role} board ${f.boardNumber}${f.revision ? ` ${f.revision}` : ""}${f.fit?.differences.length ? `; ${f.fit.differences.join("; ")}` : ""}${f.fit?.reason ? `. Reason: ${f.fit.reason}` : ""}`),
   "board.corrected": spec({ changes: z.array(change), reason: words }, (f) => `Corrected the board: ${changes(f.changes)}. Reason: ${f.reason}`),
-  "chip.recorded": spec({ ...chipRef, boardRole: z.enum(BOARD_ROLES), bus: z.enum(BUSES), sizeBytes: size, sizeSource: z.enum(SIZE_SOURCES), supplyMillivolts: z.union([z.int(), z.literal("unknown")]), package: optional, marking: optional, holds: optional, needsTransfer: z.boolean() },
+  "chip.recorded": spec({ ...chipRef, boardRole: z.enum(BOARD_ROLES), bus: z.enum(BUSES), sizeBytes: size, sizeSource: z.enum(SIZE_SOURCES), supplyMillivolts: z.union([z.int(), z.literal("unknown")]), package: optional, marking: optional, holds: optional, idBytes: optional.optional(), sfdp: optional.optional(), needsTransfer: z.boolean() },
     (f) => `Recorded ${f.chip.designator} on the ${f.boardRole} board, ${kib(f.sizeBytes)} (${f.sizeSource}), supply ${f.supplyMillivolts === "unknown" ? "unknown" : `${f.supplyMillivolts} mV`}`),
   "chip.corrected": spec({ ...chipRef, changes: z.array(change), reason: words }, (f) => `Corrected ${f.chip.designator}: ${changes(f.changes)}. Reason: ${f.reason}`),
   "chip.paired": spec({ ...chipRef, ...donorRef, before: z.object({ id: uuid, designator: words }).nullable() },
     (f) => `Paired ${f.chip.designator} with donor ${f.donorChip.designator} on ${f.donorChip.boardNumber}${f.before ? ", in place of another donor chip" : ""}`),
   "read.stored": spec({ ...readRef, seating: z.int(), sizeBytes: size, crc32: crc, sha256: sha, format: words, fileName: words, reader: words, method: z.enum(METHODS).nullable(), toolVersion: optional, adapter: optional,
-    supplyMillivolts: z.union([z.int(), z.literal("unknown"), z.null()]), clockKilohertz: z.int().nullable(), controllerHeld: z.boolean().nullable(), statusBits: z.literal("not read"), takenAt: optional, modifiedAt: optional, note: optional, transfer: uuid.nullable() },
+    supplyMillivolts: z.union([z.int(), z.literal("unknown"), z.null()]), clockKilohertz: z.int().nullable(), controllerHeld: z.boolean().nullable(), statusBits: z.literal("not read"), takenAt: optional, modifiedAt: optional, note: optional, transfer: uuid.nullable(),
+    /** for text formats: the file as it came, and how it was expanded */
+    source: z.object({ fileSha256: sha, fileBytes: size, base: z.int(), fill: z.int() }).optional() },
     (f) => `Stored ${name(f)}, seating ${seatingLetter(f.seating)}, ${kib(f.sizeBytes)}, SHA-256 ${short(f.sha256)}`),
   "read.judged": spec({ ...readRef, sha256: sha, engineVersion: words, findings: z.array(z.object({ code: words, severity: z.enum(SEVERITIES), message: words, measured: words.optional(), threshold: words.optional() })), equalTo: z.array(words), differsFrom: z.array(words) },
     (f) => `Judged ${name(f)}: ${[...f.findings.map((x) => x.message.replace(/\.$/, "")), f.equalTo.length ? `equal to ${f.equalTo.join(", ")}` : "", f.differsFrom.length ? `differs from ${f.differsFrom.join(", ")}` : ""].filter(Boolean).join("; ") || "nothing stands against it"}`,
     (f) => (f.differsFrom.length || f.findings.some((x) => x.severity !== "note") ? "differs" : "entry")),
   "read.set-aside": spec({ ...readRef, sha256: sha, reason: words }, (f) => `Set ${name(f)} aside: ${f.reason}`, "set-aside"),
   "read.counted-again": spec({ ...readRef, sha256: sha, reason: words }, (f) => `Counted ${name(f)} again: ${f.reason}`),
+  "composite.made": spec({ ...readRef, sha256: sha, sizeBytes: size, crc32: crc, method: words, version: z.int(), reportSha256: sha, reason: words,
+    voters: z.array(z.object({ name: words, seating: z.int(), sha256: sha })), excluded: z.array(z.object({ name: words, cause: words })),
+    disputedBytes: z.int(), weak: z.int(), constructed: z.int() },
+    (f) => `Made ${name(f)}, a composite of ${f.voters.map((v) => v.name).join(", ")}: ${f.disputedBytes} disputed bytes, ${f.weak} of them weak: ${f.reason}`, "differs"),
   "approval.asked": spec({ ...chipRef, sha256: sha.nullable(), message: optional }, (f) => `Asked for approval of ${f.chip.designator}${f.message ? `: ${f.message}` : ""}`),
   "approval.given": spec({ ...chipRef, ...donorRef, sha256: sha, sizeBytes: size, crc32: crc, reads: z.array(words), seatings: z.array(z.int()), statement: words, reasons: z.record(z.string(), z.string()), lookedAt: z.array(words), twoPersonRule: z.boolean(), readsTakenBy: z.array(person) },
     (f) => `Approved SHA-256 ${short(f.sha256)} for writing to donor ${f.donorChip.designator}${f.twoPersonRule ? "" : " (two-person rule switched off)"}: ${f.statement}`, "signed"),
   "approval.sent-back": spec({ ...chipRef, reason: words }, (f) => `Sent the approval of ${f.chip.designator} back: ${f.reason}`),
   "approval.refused": spec({ ...chipRef, sha256: sha, rule: words }, (f) => `An approval of ${f.chip.designator} was refused: ${f.rule}`, "differs"),
   "approval.revoked": spec({ ...chipRef, approval: uuid, sha256: sha, cause: words, reason: words }, (f) => `The approval of ${f.chip.designator} was revoked (${f.cause}): ${f.reason}`, "differs"),
-  "image.handed-out": spec({ ...readRef, sha256: sha, sizeBytes: size, purpose: words, to: person, reason: optional },
+  "image.handed-out": spec({ ...readRef, sha256: sha, sizeBytes: size, purpose: words, to: person, reason: optional, format: z.enum(FORMATS).optional() },
     (f) => `Handed out ${name(f)}, SHA-256 ${short(f.sha256)}, to ${f.to.name} (${f.purpose})${f.reason ? `: ${f.reason}` : ""}`),
   "transfer.recorded": spec({ ...chipRef, ...donorRef, transfer: uuid, approval: uuid, sha256: sha, kind: z.enum(TRANSFER_KINDS), programmer: optional, toolVersion: optional, adapter: optional, note: optional },
     (f) => (f.kind === "write" ? `Wrote SHA-256 ${short(f.sha256)} to donor ${f.donorChip.designator}` : `Moved ${f.chip.designator} to the donor board ${f.donorChip.boardNumber}`)),

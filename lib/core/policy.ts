@@ -22,6 +22,7 @@ const RULES = {
   "read.set-aside": BENCH,
   "read.hand-out-approved": ["technician", "lead", "auditor"],
   "read.hand-out-any": ["lead", "auditor"],
+  "composite.make": ["lead"],
   "approval.ask": BENCH,
   "approval.give": ["lead"],
   "approval.send-back": ["lead"],

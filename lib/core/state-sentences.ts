@@ -40,7 +40,7 @@ export function unreadSentence(policy: Policy, setAside: number): string {
 }
 
 export function disagreeSentence(groups: readonly AgreementGroup[], odd: number | null, worst: WorstDifference | null, sizeBytes: number): string {
-  const next = "Re-seat the clip and read again.";
+  const next = worst?.advice ?? "Re-seat the clip and read again.";
   if (worst) {
     const who = odd === worst.oddRead ? `Read ${odd} differs` : `${readsText([worst.oddRead, worst.otherRead].sort((a, b) => a - b))} differ`;
     const guess = worst.looksLike ? `: looks like ${worst.looksLike}` : "";

@@ -72,6 +72,8 @@ export const FINDING_CODES = [
   // two reads, or a read-back and what should have been written
   "byte-slip", "command-echo", "rotated", "byte-swapped", "bit-reversed", "inverted", "rearranged", "lost-contact", "random-flips",
   "one-way-flips", "foreign-blocks", "buffer-edge", "edge-bytes",
+  // a composite
+  "derived", "weak-bytes", "constructed-bytes",
   // after a write
   "verified", "write-refused", "not-erased", "erased-only", "page-wrap", "partly-protected", "weak-cells", "other-image", "differs",
 ] as const;

@@ -2,14 +2,17 @@ import type { ApprovalFacts } from "@/lib/core/approval";
 import { donorSaved } from "@/lib/core/approval";
 import type { StateFacts, StateRead } from "@/lib/core/chip-state";
 import type { Finding, Policy } from "@/lib/core/words";
+import { derivedFacts } from "@/lib/core/derived";
 import type { Read } from "@/models";
 import type { ChipRecord } from "./chip-records";
 
 /** From rows to the plain facts that the rules of lib/core ask for. */
 export function stateRead(row: Read): StateRead {
+  const derived = derivedFacts(row);
   return {
     id: row.id, number: row.number, stage: row.stage, seating: row.seating, sha256: row.sha256.toString("hex"), sizeBytes: row.sizeBytes,
     counted: row.counted, findings: JSON.parse(row.findings) as Finding[], operatorId: row.operatorId,
+    ...(derived ? { voters: { reads: derived.voters.length, seatings: [...new Set(derived.voters.map((v) => v.seating))] } } : {}),
   };
 }
 

@@ -1,7 +1,8 @@
 import { compareIfStored } from "@/lib/commands/compare-images";
 import { agreement, deriveChipState, oddOneOut, type StateFacts } from "@/lib/core/chip-state";
-import { diagnose } from "@/lib/core/diagnosis";
-import { type Policy, readName } from "@/lib/core/words";
+import { looksLikeText } from "@/lib/core/diagnose-pair";
+import { causeAdvice } from "@/lib/core/diagnose-sentences";
+import type { Policy } from "@/lib/core/words";
 import type { StateView } from "@/lib/views";
 import type { Transaction } from "@/models";
 import { stateFacts, stateRead } from "./chip-facts";
@@ -22,11 +23,10 @@ export async function worstPair(record: ChipRecord, tx?: Transaction): Promise<S
   const other = reads.find((r) => r.sha256 !== odd.sha256)!;
   const [rowOdd, rowOther] = [odd, other].map((r) => counted.find((row) => row.id === r.id)!);
   if (record.unsound.has(odd.sha256) || record.unsound.has(other.sha256)) return null;
-  const c = await compareIfStored({ sha256: other.sha256, sizeBytes: rowOther.sizeBytes }, { sha256: odd.sha256, sizeBytes: rowOdd.sizeBytes }, tx);
+  const c = await compareIfStored({ sha256: other.sha256, sizeBytes: rowOther.sizeBytes }, { sha256: odd.sha256, sizeBytes: rowOdd.sizeBytes }, tx, record.chip.sizeBytes);
   if (!c) return null;
-  const diagnosis = diagnose(c, { nameA: readName("before", other.number), nameB: readName("before", odd.number), sizeBytes: record.chip.sizeBytes });
   return {
     oddRead: odd.number, otherRead: other.number, differingBytes: c.differingBytes, first: c.first ?? 0, last: c.last ?? 0,
-    looksLike: diagnosis.code === "lost-contact" ? "lost contact" : null,
+    looksLike: looksLikeText(c.cause.code), advice: causeAdvice(c.cause.code),
   };
 }

@@ -10,7 +10,7 @@ import { cellsOf, type StripImage } from "./strips";
 
 export function stripImage(read: Read): StripImage {
   return {
-    readId: read.id, name: readName(read.stage, read.number), note: `seating ${seatingLetter(read.seating)}`,
+    readId: read.id, name: readName(read.stage, read.number), note: read.derived ? "composite" : `seating ${seatingLetter(read.seating)}`,
     sha256: read.sha256.toString("hex"), sizeBytes: read.sizeBytes,
   };
 }
@@ -42,7 +42,8 @@ async function thumbnail(reads: Read[], unsound: Set<string>, sizeBytes: number)
 function base(chip: Chip, board: Board) {
   return {
     id: chip.id, designator: chip.designator, boardRole: board.role, bus: chip.bus, sizeBytes: chip.sizeBytes, sizeSource: chip.sizeSource,
-    supplyMillivolts: chip.supplyMillivolts ?? null, package: chip.package ?? null, marking: chip.marking ?? null, holds: chip.holds ?? null, needsTransfer: chip.needsTransfer,
+    supplyMillivolts: chip.supplyMillivolts ?? null, package: chip.package ?? null, marking: chip.marking ?? null, holds: chip.holds ?? null,
+    idBytes: chip.idBytes ?? null, sfdp: chip.sfdp ?? null, needsTransfer: chip.needsTransfer,
   };
 }
 

@@ -2,7 +2,7 @@ import { compareIfStored } from "@/lib/commands/compare-images";
 import { placeOfChip } from "@/lib/commands/place";
 import { allow, notFound } from "@/lib/commands/refuse";
 import { requireSoundImage } from "@/lib/commands/report-image";
-import { diagnose } from "@/lib/core/diagnosis";
+import { sayCause } from "@/lib/core/diagnose-pair";
 import { type Actor, readName, type Stage } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { ComparisonView, ReadView, StripStackView } from "@/lib/views";
@@ -33,7 +33,7 @@ async function compared(rows: [Read, Read], sizeBytes: number): Promise<Comparis
     const row = await Image.findByPk(Buffer.from(image.sha256, "hex"));
     if (row?.state !== "sound") await requireSoundImage(image.sha256, image.sizeBytes, "comparison");
   }
-  const c = await compareIfStored(a, b);
+  const c = await compareIfStored(a, b, undefined, sizeBytes);
   if (!c) {
     for (const image of [a, b]) await requireSoundImage(image.sha256, image.sizeBytes, "comparison");
     throw new AppError("unavailable", "The stored images could not be read just now. Try again in a moment.", { retryAfterSeconds: 2 });
@@ -41,7 +41,7 @@ async function compared(rows: [Read, Read], sizeBytes: number): Promise<Comparis
   const [nameA, nameB] = rows.map((r) => readName(r.stage, r.number));
   return {
     equal: c.equal, differingBytes: c.differingBytes, differingBits: { zeroToOne: c.zeroToOne, oneToZero: c.oneToZero }, ranges: c.ranges,
-    ...(c.truncated ? { truncated: true as const } : {}), diagnosis: diagnose(c, { nameA, nameB, sizeBytes }),
+    ...(c.truncated ? { truncated: true as const } : {}), diagnosis: sayCause(c, c.cause, { nameA, nameB, sizeBytes }),
   };
 }
 

@@ -21,9 +21,10 @@ export function why(record: ChipRecord, policy: Policy): string {
   if (!largest) return "";
   const names = list(largest.reads.map((n) => readName("before", n)));
   const seatings = largest.seatings.length === 1 ? `seating ${seatingLetter(largest.seatings[0])}` : `seatings ${list(largest.seatings.map(seatingLetter))}`;
-  const agree = largest.reads.length > 1 ? `${names} agree in all ${size} bytes, ${seatings}.` : groups.length > 1 ? "No two reads agree." : `${names} stands alone so far.`;
-  const needed = Math.max(0, policy.reads - largest.reads.length);
-  const more = needed > 0 ? ` ${plural(needed, "more agreeing read")} ${needed === 1 ? "is" : "are"} needed.` : "";
-  const limit = groups.length === 1 && needed === 0 ? " Equal reads show that the chip gave the same bytes each time, not that the damage left those bytes unharmed; a clip that sits wrong gives the same wrong image every time." : "";
+  const voted = largest.behind > largest.reads.length;
+  const agree = voted ? `${names} is a composite and stands for the ${largest.behind} reads that were voted into it, ${seatings}.` : largest.reads.length > 1 ? `${names} agree in all ${size} bytes, ${seatings}.` : groups.length > 1 ? "No two reads agree." : `${names} stands alone so far.`;
+  const needed = Math.max(0, policy.reads - largest.behind);
+  const more = needed > 0 ? ` ${plural(needed, voted ? "more read" : "more agreeing read")} ${needed === 1 ? "is" : "are"} needed.` : "";
+  const limit = voted ? " A majority shows what repeats, not what is true." : groups.length === 1 && needed === 0 ? " Equal reads show that the chip gave the same bytes each time, not that the damage left those bytes unharmed; a clip that sits wrong gives the same wrong image every time." : "";
   return agree + more + limit;
 }

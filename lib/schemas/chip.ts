@@ -6,6 +6,10 @@ import { line, maybe, reason, uuid } from "./text";
 
 export const millivolts = z.union([z.literal("unknown"), z.coerce.number().int("Give whole millivolts.").min(500, "Give the supply in millivolts, such as 3300.").max(20_000, "Give the supply in millivolts, such as 3300.")], "Give the supply in millivolts, or say that it is unknown.");
 
+/** Bytes as a person pastes them: hex digits with any space or 0x between them. */
+const hexText = (what: string) => z.string({ error: `Give ${what}.` }).max(20_000).transform((s) => s.toLowerCase().replace(/0x|[\s,:;-]/g, ""))
+  .refine((s) => /^([0-9a-f]{2})+$/.test(s), `Give ${what} as hex digits, two a byte.`);
+
 const facts = {
   designator: line(16, "the reference designator, such as U12").regex(/^[A-Za-z]{1,4}[0-9]{1,5}[A-Za-z]?$/, "A designator is letters and a number, such as U12.").transform((s) => s.toUpperCase()),
   bus: z.enum(BUSES, "Choose the bus."),
@@ -15,6 +19,8 @@ const facts = {
   package: maybe(line(60, "a package")),
   marking: maybe(line(120, "the marking")),
   holds: maybe(line(120, "what the chip holds")),
+  idBytes: maybe(hexText("the three bytes of the id").refine((s) => s.length === 6, "An id has 3 bytes, such as 20 40 13.")),
+  sfdp: maybe(hexText("the dump").refine((s) => s.length >= 32 && s.length <= 4096, "A dump has 16 to 2,048 bytes.")),
   needsTransfer: z.boolean(),
 };
 
@@ -24,6 +30,8 @@ export const chipInput = z.strictObject({
   package: facts.package.optional(),
   marking: facts.marking.optional(),
   holds: facts.holds.optional(),
+  idBytes: facts.idBytes.optional(),
+  sfdp: facts.sfdp.optional(),
   needsTransfer: facts.needsTransfer.default(true),
   pairedWith: maybe(uuid).optional(),
 });

@@ -5,6 +5,9 @@ import { line, maybe, prose, reason } from "./text";
 
 const time = z.iso.datetime({ offset: true, error: "Give a time such as 2026-11-03T09:14:05Z." });
 
+/** A whole number in decimal or as 0x and hex digits. */
+const address = (what: string) => z.string().trim().regex(/^(0x[0-9a-fA-F]{1,8}|\d{1,10})$/, `Give ${what} as a number, such as 4096 or 0x1000.`).transform(Number);
+
 /** The text fields of an upload (API.md); everything arrives as text. Per-file fields are lists in the files' order. */
 export const readFields = z.strictObject({
   stage: z.enum(STAGES, "Say which content it is: before (of the original), donor or after."),
@@ -18,6 +21,9 @@ export const readFields = z.strictObject({
   controllerHeld: maybe(z.enum(["true", "false"], "Say true or false.").transform((s) => s === "true")).optional(),
   note: maybe(prose(4000, "a note")).optional(),
   format: z.enum(FORMATS, "The format is raw, intel-hex or s-record.").default("raw"),
+  base: maybe(address("the address of the image's first byte")).optional(),
+  size: maybe(address("the image's size in bytes")).optional(),
+  fill: maybe(address("the value of bytes that the text leaves out").refine((n) => n <= 255, "A fill is one byte, 0 to 255, such as 0xFF.")).optional(),
   sha256: z.array(z.string().regex(/^[0-9a-fA-F]{64}$/, "A SHA-256 has 64 hex digits.").transform((s) => s.toLowerCase())).default([]),
   modifiedAt: z.array(maybe(time)).default([]),
   takenAt: z.array(maybe(time)).default([]),
@@ -27,7 +33,13 @@ export type ReadFields = z.infer<typeof readFields>;
 export const reasonInput = z.strictObject({ reason });
 export type ReasonInput = z.infer<typeof reasonInput>;
 
-export const handOutInput = z.strictObject({ reason: maybe(reason).optional() });
+export const handOutInput = z.strictObject({ reason: maybe(reason).optional(), format: z.enum(FORMATS, "The format is raw, intel-hex or s-record.").default("raw") });
+
+export const compositeInput = z.strictObject({
+  reads: z.array(z.number().int().min(1), "Name the reads, such as [1, 2, 3].").min(3, "A composite needs at least 3 reads.").max(100).refine((list) => new Set(list).size === list.length, "Name each read once."),
+  reason,
+});
+export type CompositeInput = z.infer<typeof compositeInput>;
 
 export const comparisonInput = z.object({
   reads: z.string({ error: "Name two reads, such as reads=1,2." }).regex(/^\d{1,5},\d{1,5}$/, "Name two reads, such as reads=1,2.").transform((s) => s.split(",").map(Number) as [number, number]),

@@ -15,6 +15,7 @@ import { type ReadFields, readFields } from "@/lib/schemas/read";
 import type { ReadView } from "@/lib/views";
 import { CustodyEntry } from "@/models";
 import { receive } from "@/storage";
+import { likeFirmware } from "./firmware";
 
 /** Real rows through the real commands: what a test needs to begin with. */
 let serial = 0;
@@ -50,17 +51,17 @@ export async function makeChip(actor: Actor, { sizeBytes = 8192, serialNumber = 
 }
 
 /**
- * `stream("bench-seed-1", n)` of the project's check values: SHA256(seed ‖ be32(0)) ‖ SHA256(seed ‖ be32(1)) ‖ …,
- * so that any language can make the same bytes again.
+ * Repeatable bytes that look like firmware rather than noise: SHA-256 blocks of the seed and a counter, every third byte
+ * thinned out. Plain noise would be held against a chip (`noise-like`).
  */
-export function stream(seed: string, length: number): Buffer {
+export function firmware(seed: string, length: number): Buffer {
   const blocks: Buffer[] = [];
   for (let i = 0; i * 32 < length; i += 1) {
     const counter = Buffer.alloc(4);
     counter.writeUInt32BE(i);
     blocks.push(createHash("sha256").update(seed).update(counter).digest());
   }
-  return Buffer.concat(blocks).subarray(0, length);
+  return likeFirmware(Buffer.concat(blocks).subarray(0, length));
 }
 
 export const sha256 = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");
@@ -80,7 +81,7 @@ export async function makeReady(technician: Actor, chip: MadeChip, image: Uint8A
 }
 
 /** An image of random look that no other test has. */
-export const freshImage = (length = 8192) => stream(`image-${(serial += 1)}-${Date.now()}-${Math.random()}`, length);
+export const freshImage = (length = 8192) => firmware(`image-${(serial += 1)}-${Date.now()}-${Math.random()}`, length);
 
 /** Clears the agreed image for the paired donor chip. */
 export function approve(lead: Actor, chip: MadeChip, image: Uint8Array, reasons: Record<string, string> = {}): Promise<{ id: string; sha256: string }> {

@@ -1,0 +1,96 @@
+import { createHash } from "node:crypto";
+import { readFile } from "node:fs/promises";
+import { type Comparison, compareImages } from "../core/compare";
+import { type CompositeSource, compositeReport, makeComposite } from "../core/composite";
+import { compositeFindings } from "../core/composite-findings";
+import { CompositeRefusal } from "../core/composite-rules";
+import { type Cause, causeOfPair } from "../core/diagnose-pair";
+import { diagnoseReadBack, type ReadBackDiagnosis } from "../core/diagnose-read-back";
+import { type ImageFacts, inspectWhole } from "../core/inspect";
+import { FormatError, fromImage, type ImageWindow, toImage } from "../core/text-format";
+import type { DerivedFacts } from "../core/derived";
+import type { Format } from "../core/words";
+
+/**
+ * The heavy rules in a thread of their own: they get names of stored files and give back plain facts or bytes. Bundled
+ * to plain JavaScript by the build (dist/engine-worker.mjs).
+ */
+export interface Tasks {
+  inspect: { input: { file: string }; output: ImageFacts };
+  compare: { input: { fileA: string; fileB: string; chipBytes: number }; output: Compared };
+  readBack: { input: { approved: string; old: string | null; readBack: string }; output: ReadBackDiagnosis };
+  expand: { input: { file: string; format: Format; window: ImageWindow }; output: { bytes: Uint8Array } | { refused: string } };
+  encode: { input: { file: string; format: Format; base: number }; output: Uint8Array };
+  vote: { input: { sources: (Omit<CompositeSource, "bytes"> & { file: string; number: number })[] }; output: VoteResult };
+}
+
+/** Byte by byte from A to B, and one primary cause of the difference. */
+export type Compared = Comparison & { cause: Cause };
+
+export type VoteResult =
+  | { refused: string }
+  | { bytes: Uint8Array; derived: Omit<DerivedFacts, "reportSha256">; report: string };
+
+const bytesOf = async (file: string) => new Uint8Array(await readFile(file));
+
+// what this thread has just inspected is often compared next
+const seen = new Map<string, ImageFacts>();
+const KEPT = 32;
+
+function factsOf(file: string, bytes: Uint8Array): ImageFacts {
+  const facts = seen.get(file) ?? inspectWhole(bytes);
+  seen.set(file, facts);
+  if (seen.size > KEPT) seen.delete(seen.keys().next().value!);
+  return facts;
+}
+
+export async function inspect({ file }: Tasks["inspect"]["input"]): Promise<ImageFacts> {
+  return factsOf(file, await bytesOf(file));
+}
+
+export async function compare({ fileA, fileB, chipBytes }: Tasks["compare"]["input"]): Promise<Compared> {
+  const [a, b] = await Promise.all([bytesOf(fileA), bytesOf(fileB)]);
+  const comparison = compareImages(a, b);
+  const cause = causeOfPair(a, b, factsOf(fileA, a), factsOf(fileB, b), chipBytes, comparison);
+  return { ...comparison, cause };
+}
+
+export async function readBack({ approved, old, readBack: back }: Tasks["readBack"]["input"]): Promise<ReadBackDiagnosis> {
+  const [a, r, o] = await Promise.all([bytesOf(approved), bytesOf(back), old ? bytesOf(old).catch(() => null) : null]);
+  return diagnoseReadBack(r, a, o, { readBack: factsOf(back, r), approved: factsOf(approved, a) });
+}
+
+export async function expand({ file, format, window }: Tasks["expand"]["input"]): Promise<Tasks["expand"]["output"]> {
+  try {
+    return { bytes: toImage(format, await bytesOf(file), window).bytes };
+  } catch (error) {
+    if (error instanceof FormatError) return { refused: error.message };
+    throw error;
+  }
+}
+
+export async function encode({ file, format, base }: Tasks["encode"]["input"]): Promise<Uint8Array> {
+  return fromImage(format, await bytesOf(file), { base });
+}
+
+/** The vote, with the digest of its image worked out here so that the report can name it. */
+export async function vote({ sources }: Tasks["vote"]["input"]): Promise<VoteResult> {
+  try {
+    const loaded = await Promise.all(sources.map(async ({ file, ...source }) => ({ ...source, bytes: await bytesOf(file) })));
+    const composite = makeComposite(loaded);
+    const sha256 = createHash("sha256").update(composite.bytes).digest("hex");
+    return {
+      bytes: composite.bytes, report: compositeReport(composite, sha256),
+      derived: {
+        method: composite.method, version: composite.version, disputedBytes: composite.disputedBytes, counts: composite.counts, limit: composite.limit,
+        voters: composite.sources.map(({ number, seating, sha256: digest }) => ({ number: number ?? 0, seating, sha256: digest })),
+        excluded: composite.excluded.map(({ number, cause }) => ({ number: number ?? 0, cause })),
+        odds: { bitErrorRate: composite.odds.bitErrorRate, expectedWrongBitsByMargin: composite.odds.expectedWrongBitsByMargin, leastSureByte: composite.odds.leastSureByte },
+        findings: compositeFindings(composite) as DerivedFacts["findings"],
+      },
+    };
+  } catch (error) {
+    if (error instanceof CompositeRefusal) return { refused: error.message };
+    throw error;
+  }
+}

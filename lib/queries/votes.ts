@@ -1,0 +1,22 @@
+import { allow, notFound } from "@/lib/commands/refuse";
+import { derivedFacts } from "@/lib/core/derived";
+import type { Actor } from "@/lib/core/words";
+import { AppError } from "@/lib/errors";
+import type { VotesView } from "@/lib/views";
+import { Image, Read } from "@/models";
+import { checkImage, imageChunks } from "@/storage";
+
+/** The votes behind a composite, from its stored report; the report is checked against the digest in the log first. */
+export async function votes(actor: Actor, readId: string): Promise<VotesView> {
+  allow(actor, "case.read");
+  const read = await Read.findByPk(readId);
+  const derived = read && derivedFacts(read);
+  if (!read || !derived) throw notFound("composite");
+  const stored = await Image.findByPk(Buffer.from(derived.reportSha256, "hex"));
+  if (!stored || (await checkImage(derived.reportSha256, stored.sizeBytes)) !== "sound") {
+    throw new AppError("rule-against", "The stored report of this composite no longer matches its digest. Tell the lead; make the composite again from its reads.");
+  }
+  const chunks: Buffer[] = [];
+  for await (const chunk of imageChunks(derived.reportSha256)) chunks.push(chunk);
+  return JSON.parse(Buffer.concat(chunks).toString("utf8")) as VotesView;
+}

@@ -1,0 +1,2 @@
+export function isStale(name: string): boolean;
+export function buildTool(name: string): Promise<void>;
