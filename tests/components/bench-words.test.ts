@@ -7,7 +7,7 @@ import type { BenchRow, BoardView, ChipSummary, DriveView } from "@/lib/views";
 
 function chip(id: string, state: ChipStateCode, more: Partial<ChipSummary> = {}): ChipSummary {
   return {
-    id, designator: id.toUpperCase(), boardRole: "original", bus: "spi", sizeBytes: 8192, sizeSource: "typed", supplyMillivolts: 3300, package: null, marking: null, holds: null,
+    id, designator: id.toUpperCase(), boardRole: "original", bus: "spi", sizeBytes: 8192, sizeSource: "typed", supplyMillivolts: 3300, package: null, marking: null, holds: null, idBytes: null, sfdp: null,
     needsTransfer: true, state: { state, label: state, sentence: "" }, pair: null, countedReads: 0, agreeingReads: 0, donorSaved: false, thumbnail: { images: [], lane: null }, ...more,
   };
 }

@@ -7,7 +7,7 @@ import { Refusal } from "@/lib/http/send";
 const DIGEST: FileDigest = { sha256: "a".repeat(64), crc32: "00000000" };
 const STORED: StoredReads = { reads: [], chip: { state: "needs-reads", label: "", sentence: "" } };
 const file = (name: string, bytes = 4) => new File([new Uint8Array(bytes)], name);
-const target = { chipId: "c1", words: "Original U3", expectedBytes: 4, fields: { stage: "before" } };
+const target = { chipId: "c1", words: "Original U3", expectedBytes: 4, imageBytes: null, fields: { stage: "before" } };
 
 /** Sends stay open until they are settled by hand. */
 function bench() {
@@ -51,6 +51,14 @@ describe("the upload queue", () => {
     queue.send(queue.uploads()[0].key);
     await settle();
     expect(open).toHaveLength(1);
+  });
+
+  it("asks about the size of the image that a text becomes, not about the text's own length", async () => {
+    const { queue, open } = bench();
+    queue.add([file("right.hex", 60)], { ...target, imageBytes: 4 });
+    queue.add([file("other.hex", 4)], { ...target, imageBytes: 2 });
+    await settle();
+    expect([steps(queue), open.map((o) => o.name)]).toEqual([["sending", "asking"], ["right.hex"]]);
   });
 
   it("sends the digest that this browser computed, and what the form said when the file was dropped", async () => {

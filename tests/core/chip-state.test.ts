@@ -112,8 +112,15 @@ describe("its sentences", () => {
 describe("agreement", () => {
   it("groups counted reads, the largest first, with their seatings", () => {
     const reads = [read({ number: 1, sha256: OTHER }), read({ number: 2 }), read({ number: 3, seating: 2 }), read({ number: 4, counted: false })];
-    expect(agreement(reads).groups).toEqual([{ sha256: GOOD, reads: [2, 3], seatings: [1, 2] }, { sha256: OTHER, reads: [1], seatings: [1] }]);
+    expect(agreement(reads).groups).toEqual([{ sha256: GOOD, reads: [2, 3], seatings: [1, 2], behind: 2 }, { sha256: OTHER, reads: [1], seatings: [1], behind: 1 }]);
     expect(oddOneOut(reads)).toBe(1);
+  });
+  it("lets a composite stand for the reads that were voted into it, and no more", () => {
+    const composite = read({ number: 6, voters: { reads: 5, seatings: [1, 2] } });
+    expect(agreement([composite]).largest).toEqual({ sha256: GOOD, reads: [6], seatings: [1, 2], behind: 5 });
+    expect(deriveChipState(facts({ reads: [composite] })).state).toBe("ready");
+    expect(deriveChipState(facts({ reads: [read({ number: 6, voters: { reads: 2, seatings: [1, 2] } })] })).state).toBe("needs-reads");
+    expect(deriveChipState(facts({ reads: [composite, read({ number: 7, sha256: OTHER })] })).state).toBe("reads-disagree");
   });
   it("names no odd one where no group is largest or all agree", () => {
     expect(oddOneOut([read(), read({ number: 2, sha256: OTHER })])).toBeNull();

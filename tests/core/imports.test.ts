@@ -7,20 +7,23 @@ import { expect, it } from "vitest";
  * Who may import whom: the table of DEVELOPERS.md. The longest room that fits a file decides; a room's own files are
  * always free to it.
  */
-const CHANGES = /^(models|storage)(\/|$)|^lib\/(core|schemas|commands|queries|mail)\/|^lib\/(env|errors|limits|views|auth\/(password|token))$/;
+const CHANGES = /^(models|storage)(\/|$)|^lib\/(core|schemas|commands|queries|mail|engine)\/|^lib\/(env|errors|limits|views|auth\/(password|token|attempts))$/;
 const PARTS = "(components\\/(ui|shell|strip)|lib\\/core|lib\\/schemas)\\/|^lib\\/(limits|http\\/send)$";
 const ROOMS: Record<string, RegExp> = {
   "app": /^(components|lib)\//,
   "components": new RegExp(`^${PARTS}`),
   // a page about something larger is put together from the parts of what lies in it, never the other way round
-  ...Object.fromEntries(["case", "bench", "decision", "compare", "find"].map((noun) => [`components/${noun}`, new RegExp(`^components/(drive|custody|chip)/|^${PARTS}`)])),
+  ...Object.fromEntries(["case", "bench", "decision", "compare", "find"].map((noun) => [`components/${noun}`, new RegExp(`^components/(drive|custody|chip|composite)/|^${PARTS}`)])),
   "components/drive": new RegExp(`^components/(custody|chip)/|^${PARTS}`),
+  // a composite lies in a chip: its page shows the votes and makes one
+  "components/chip": new RegExp(`^components/composite/|^${PARTS}`),
   "lib/commands": CHANGES,
   "lib/queries": CHANGES,
   "lib/core": /^lib\/core\//,
   "lib/schemas": /^lib\/core\/|^lib\/limits$/,
   "lib/auth": /^lib\/|^models(\/|$)/,
   "lib/http": /^lib\/|^(models|storage)(\/|$)/,
+  "lib/engine": /^lib\/core\//,
   "lib/mail": /^lib\/|^models(\/|$)/,
   "models": /^lib\/(env|errors)$|^lib\/core\//,
   "storage": /^lib\/(env|errors|core\/digest)$/,

@@ -20,7 +20,7 @@ import { env } from "@/lib/env";
 import { chipView } from "@/lib/queries/chip-view";
 import { chainEntries, checkCustody } from "@/lib/queries/custody";
 import { logKey } from "@/storage";
-import { type MadeChip, makeChip, makeReady, makeUser, sha256, store, stream } from "../support/factory";
+import { type MadeChip, makeChip, makeReady, makeUser, sha256, store, firmware } from "../support/factory";
 
 const run = promisify(execFile);
 const work = mkdtempSync(path.join(os.tmpdir(), "twinread-bundle-"));
@@ -33,8 +33,8 @@ let bag = "";
 let zip = "";
 // of this run alone: equal images on two drives would be a finding
 const seed = randomUUID();
-const image = stream(`bundle-image ${seed}`, 8192);
-const donorImage = stream(`donor-image ${seed}`, 8192);
+const image = firmware(`bundle-image ${seed}`, 8192);
+const donorImage = firmware(`donor-image ${seed}`, 8192);
 
 async function pack(name: string): Promise<string> {
   const { stream: bytes } = await makeBundle(lead, chip.caseId);
@@ -77,7 +77,7 @@ beforeAll(async () => {
   chip = await makeChip(technician);
   await recordDrive(technician, chip.caseId, { partNumber: "PN 4471-0093-C", serial: `SECOND-${Date.now()}` });
   await makeReady(technician, chip, image, donorImage);
-  await store(technician, chip.chipId, "before", stream(`odd one ${seed}`, 8192), 2, { note: 'Says "sha256":"00", {"prev":1} and ünïcödé ǁ' }, "../../x \"q\".bin");
+  await store(technician, chip.chipId, "before", firmware(`odd one ${seed}`, 8192), 2, { note: 'Says "sha256":"00", {"prev":1} and ünïcödé ǁ' }, "../../x \"q\".bin");
   const odd = (await chipView(lead, chip.chipId)).reads.find((r) => r.stage === "before" && r.number === 4)!;
   await setReadAside(lead, odd.id, { reason: "Slipped clip" });
   const approval = await approveImage(lead, chip.chipId, { sha256: sha256(image), donorChipId: chip.donorChipId, statement: "Three clean reads.", reasons: {}, lookedAt: [] });
@@ -246,7 +246,7 @@ describe("check.sh", () => {
 
   it("finds images that do not belong to the log, though the lists name them", () => {
     const swapped = copy();
-    writeFileSync(path.join(swapped, "data/drives/1/original-U12/before-1.bin"), stream("another", 8192));
+    writeFileSync(path.join(swapped, "data/drives/1/original-U12/before-1.bin"), firmware("another", 8192));
     relist(swapped);
     expect(check(swapped).text).toMatch(/names an image that the bundle does not hold: [0-9a-f]{64} before-1\.bin/);
     const added = copy();

@@ -6,7 +6,7 @@ import { handOutImage, openHandedOut } from "@/lib/commands/hand-out-image";
 import { recordTransfer } from "@/lib/commands/record-transfer";
 import { chipView } from "@/lib/queries/chip-view";
 import { checkCustody } from "@/lib/queries/custody";
-import { type MadeChip, makeChip, makeReady, makeUser, sha256, store, stream } from "../support/factory";
+import { type MadeChip, makeChip, makeReady, makeUser, sha256, store, firmware } from "../support/factory";
 
 async function state(actor: Parameters<typeof chipView>[0], chip: MadeChip): Promise<string> {
   return (await chipView(actor, chip.chipId)).state.state;
@@ -17,7 +17,7 @@ describe("the whole way of a chip", () => {
     const technician = await makeUser("technician");
     const lead = await makeUser("lead");
     const chip = await makeChip(technician);
-    const image = stream(`main-way-${randomUUID()}`, 8192);
+    const image = firmware(`main-way-${randomUUID()}`, 8192);
     expect(await state(technician, chip)).toBe("unread");
     await makeReady(technician, chip, image);
     expect(await state(technician, chip)).toBe("ready");
@@ -41,7 +41,7 @@ describe("the whole way of a chip", () => {
   it("refuses a technician the image that nobody has approved", async () => {
     const technician = await makeUser("technician");
     const chip = await makeChip(technician);
-    const { reads } = await store(technician, chip.chipId, "before", stream(`not-approved-${randomUUID()}`, 8192));
+    const { reads } = await store(technician, chip.chipId, "before", firmware(`not-approved-${randomUUID()}`, 8192));
     await expect(handOutImage(technician, reads[0].id, {})).rejects.toMatchObject({ code: "forbidden" });
   });
 });

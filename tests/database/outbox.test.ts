@@ -19,7 +19,7 @@ import { mailList } from "@/lib/queries/mails";
 import { summaryByToken } from "@/lib/queries/summary";
 import { connection, inTransaction, Mail, Share } from "@/models";
 import { logKey } from "@/storage";
-import { type MadeChip, makeChip, makeReady, makeUser, sha256, store, stream } from "../support/factory";
+import { type MadeChip, makeChip, makeReady, makeUser, sha256, store, firmware } from "../support/factory";
 
 const SECRET = "https://bench.example/summary/AAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAA";
 const list = { q: "", sort: "", order: "asc" as const, page: 1, pageSize: 50 };
@@ -195,7 +195,7 @@ describe("the verification summary", () => {
   let technician: Actor;
   let lead: Actor;
   let chip: MadeChip;
-  const image = stream(`summary-image ${randomUUID()}`, 8192);
+  const image = firmware(`summary-image ${randomUUID()}`, 8192);
 
   beforeAll(async () => {
     technician = await makeUser("technician", "Nell Farrow");

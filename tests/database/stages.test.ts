@@ -100,7 +100,7 @@ describe("a write that went wrong", () => {
     ["nothing was written", "write-refused", (_image, own) => own],
     ["it was erased only", "erased-only", (image) => Buffer.alloc(image.length, 0xff)],
     ["it was not erased", "not-erased", (image, own) => Buffer.from(image.map((byte, i) => byte & own[i]))],
-    ["one bit differs", "differs", (image) => flipped(image)],
+    ["one bit differs", "weak-cells", (image) => flipped(image)],
   ];
   for (const [name, code, bytes] of wrong) {
     it(`is told apart: ${name}`, async () => {

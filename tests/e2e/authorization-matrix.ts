@@ -86,10 +86,12 @@ export const API: ApiRow[] = [
   change("POST", "/api/chips/[id]/approval-request", BENCH, () => ({})),
   change("POST", "/api/chips/[id]/approval", LEAD, (t) => ({ sha256: "0".repeat(64), donorChipId: t.unknown, statement: "Tried by the matrix." })),
   change("POST", "/api/chips/[id]/sending-back", LEAD, reason),
+  change("POST", "/api/chips/[id]/composite", LEAD, () => ({ reads: [1, 2, 3], ...reason() })),
   change("POST", "/api/approvals/[id]/revocation", LEAD, reason),
   change("POST", "/api/approvals/[id]/transfer", BENCH, (t) => ({ kind: "write", donorChipId: t.unknown })),
 
   look("/api/reads/[id]/bytes", (t) => `/api/reads/${t.readId}/bytes?offset=0&length=16`),
+  look("/api/reads/[id]/votes", (t) => `/api/reads/${t.readId}/votes`, everyRole(404)),
   // on a read that exists: whose it is decides
   { method: "POST", route: "/api/reads/[id]/download", at: (t) => `/api/reads/${t.readId}/download`, body: reason, cells: roles(403, 200, 200, 403) },
   { method: "POST", route: "/api/reads/[id]/count-again", at: (t) => `/api/reads/${t.readId}/count-again`, body: reason, cells: roles(403, 409, 403, 403) },

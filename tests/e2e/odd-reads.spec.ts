@@ -1,4 +1,5 @@
 import { randomBytes } from "node:crypto";
+import { likeFirmware } from "../support/firmware";
 import { readFileSync, writeFileSync } from "node:fs";
 import path from "node:path";
 import { expect, type Page, test } from "@playwright/test";
@@ -57,7 +58,7 @@ for (const odd of ODD) {
   test(`${odd.what} as Read 2 is stored, judged and keeps the approval closed`, async () => {
     const page = mira.page;
     const folder = newFolder();
-    const image = randomBytes(SIZE);
+    const image = likeFirmware(randomBytes(SIZE));
     const save = (name: string, bytes: Buffer) => {
       const file = path.join(folder, name);
       writeFileSync(file, bytes);

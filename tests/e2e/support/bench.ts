@@ -1,4 +1,5 @@
 import { createHash, randomBytes } from "node:crypto";
+import { likeFirmware } from "../../support/firmware";
 import type { Stage } from "@/lib/core/words";
 import type { ReadView, StateView } from "@/lib/views";
 import { type Answer, call, done } from "./station";
@@ -56,7 +57,7 @@ export async function store(token: string, chipId: string, stage: Stage, seating
   });
 }
 
-export const randomImage = (sizeBytes: number): Uint8Array<ArrayBuffer> => new Uint8Array(randomBytes(sizeBytes));
+export const randomImage = (sizeBytes: number): Uint8Array<ArrayBuffer> => likeFirmware(new Uint8Array(randomBytes(sizeBytes)));
 
 export interface Ready extends Pair {
   image: Uint8Array<ArrayBuffer>;

@@ -6,14 +6,14 @@ import { handOutInput } from "@/lib/schemas/read";
 
 // `secret`: the bytes are kept under no Idempotency-Key. Asked again they leave again, and that is written down again
 export const POST = handler({ input: handOutInput, secret: true }, async ({ actor, params, input }) => {
-  const { sha256, sizeBytes, fileName, stream } = await openHandedOut(actor, params.id, input);
+  const { fileSha256, fileBytes, fileName, stream } = await openHandedOut(actor, params.id, input);
   return new Response(Readable.toWeb(stream) as ReadableStream, {
     headers: {
       "content-type": "application/octet-stream",
-      "content-length": String(sizeBytes),
+      "content-length": String(fileBytes),
       "content-disposition": `attachment; filename="${fileName}"`,
       // RFC 9530: the digest as a structured-field byte sequence
-      "repr-digest": `sha-256=:${Buffer.from(sha256, "hex").toString("base64")}:`,
+      "repr-digest": `sha-256=:${Buffer.from(fileSha256, "hex").toString("base64")}:`,
     },
   });
 });

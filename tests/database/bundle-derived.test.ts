@@ -1,0 +1,30 @@
+import { execFileSync } from "node:child_process";
+import { mkdtempSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import path from "node:path";
+import { buffer } from "node:stream/consumers";
+import { expect, it } from "vitest";
+import { makeBundle } from "@/lib/commands/make-bundle";
+import { makeComposite } from "@/lib/commands/make-composite";
+import { fromImage } from "@/lib/core/text-format";
+import { freshImage, makeChip, makeUser, store } from "../support/factory";
+import { flipped } from "../support/bench-steps";
+
+it("a bundle holds the texts as they came and the votes behind a composite, and its own check knows both", async () => {
+  const lead = await makeUser("lead");
+  const chip = await makeChip(lead);
+  const image = freshImage();
+  for (const [i, seating] of [1, 1, 2, 2].entries()) await store(lead, chip.chipId, "before", flipped(image, 100 + 7 * i), seating);
+  const text = fromImage("intel-hex", flipped(image, 500), { base: 0 });
+  await store(lead, chip.chipId, "before", text, 2, { format: "intel-hex", base: 0, size: image.length, fill: 0xff }, "read.hex");
+  await makeComposite(lead, chip.chipId, { reads: [1, 2, 3, 4, 5], reason: "No two reads agree." });
+  const folder = mkdtempSync(path.join(tmpdir(), "twinread-bundle-"));
+  const { stream } = await makeBundle(lead, chip.caseId);
+  writeFileSync(path.join(folder, "case.zip"), await buffer(stream));
+  execFileSync("unzip", ["-q", "case.zip"], { cwd: folder });
+  const bag = path.join(folder, `twinread-${chip.ref}`);
+  const said = execFileSync("sh", ["check.sh"], { cwd: bag, encoding: "utf8" });
+  expect(said).toContain("6 images, each as the log names it");
+  const listed = execFileSync("grep", ["-c", "-e", "before-5\\.hex$", "-e", "before-6-votes\\.json$", "manifest-sha256.txt"], { cwd: bag, encoding: "utf8" });
+  expect(listed.trim()).toBe("2");
+});
