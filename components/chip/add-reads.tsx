@@ -9,13 +9,16 @@ import { Note } from "@/components/ui/note";
 import { Select } from "@/components/ui/select";
 import { TextArea } from "@/components/ui/text-area";
 import { useSay } from "@/components/ui/toast";
-import { listText, sizeText } from "@/lib/core/quantity";
-import { METHODS, type Stage } from "@/lib/core/words";
+import { sizeText } from "@/lib/core/quantity";
+import { type Format, METHODS, type Stage } from "@/lib/core/words";
 import type { ChipView } from "@/lib/views";
 import { METHOD_WORD, nameOf, namesOf, twins } from "./chip-words";
 import { DropZone } from "./drop-zone";
 import { equipmentKept, keepEquipment } from "./equipment";
-import { clipCaution, contentsOf, FIELD_NAMES, likelyStage, seatingOptions, SUPPLY_OPTIONS, supplyWarning, uploadForm, type UploadFormValues } from "./upload-form";
+import { type FileLook, heldBecause, lookAt, textAddress } from "./file-look";
+import { FormatFields } from "./format-fields";
+import { HeldFiles } from "./held-files";
+import { clipCaution, contentsOf, fieldsToSend, FIELD_NAMES, likelyStage, numberTyped, seatingOptions, SUPPLY_OPTIONS, supplyWarning, uploadForm, type UploadFormValues } from "./upload-form";
 import { UploadLine } from "./upload-line";
 import { useUploads } from "./use-uploads";
 
@@ -27,15 +30,21 @@ const text = (value: unknown) => (typeof value === "string" ? value : value === 
 export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Promise<unknown> }) {
   const say = useSay();
   const contents = contentsOf(chip);
-  const [held, setHeld] = useState<File[]>([]);
+  const [held, setHeld] = useState<readonly FileLook[]>([]);
+  const [incomplete, setIncomplete] = useState(false);
   const first = likelyStage(chip, contents);
   const { register, setValue, control, trigger, getValues, formState: { errors } } = useForm<z.input<typeof uploadForm>, unknown, z.output<typeof uploadForm>>({
     resolver: zodResolver(uploadForm),
-    defaultValues: { stage: first, seating: String(chip.nextSeating[first]), reader: "", method: "", toolVersion: "", adapter: "", supplyMillivolts: "", clockKilohertz: "", controllerHeld: "", note: "" },
+    defaultValues: { stage: first, seating: String(chip.nextSeating[first]), reader: "", method: "", toolVersion: "", adapter: "", supplyMillivolts: "", clockKilohertz: "", controllerHeld: "", note: "", format: "raw", base: "", size: String(contents.find((c) => c.stage === first)?.expectedBytes ?? ""), fill: "0xFF" },
   });
   useEffect(() => {
     for (const [name, value] of Object.entries(equipmentKept())) setValue(name as keyof UploadFormValues, value);
   }, [setValue]);
+
+  function chooseStage(next: Stage) {
+    setValue("seating", String(chip.nextSeating[next]));
+    setValue("size", String(contents.find((c) => c.stage === next)?.expectedBytes ?? ""));
+  }
 
   // After a transfer the next reads are read-backs: a form left on "Original" would file them under the wrong chip.
   const transfers = useRef(chip.transfers.length);
@@ -49,6 +58,10 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
   const stage = useWatch({ control, name: "stage" }) as Stage;
   const supply = text(useWatch({ control, name: "supplyMillivolts" }));
   const content = contents.find((c) => c.stage === stage) ?? contents[0];
+  const [format, base, size] = useWatch({ control, name: ["format", "base", "size"] }).map(text) as [Format, string, string];
+  const [from, length] = [numberTyped(base), numberTyped(size)];
+  const frame = from === null || length === null ? null : { base: from, size: length };
+  const given = held.flatMap((one) => (one.looks === format && one.addresses ? [one.addresses] : []));
   const warning = content ? supplyWarning(supply, content.supplyMillivolts, chip.designator) : null;
 
   const { queue, uploads } = useUploads((upload) => {
@@ -58,16 +71,23 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
     say({ text: `${nameOf(upload.read)} is stored.${same.length > 0 ? ` It equals ${namesOf(upload.read.stage, same)}.` : ""}` });
   });
 
-  async function take(files: File[]) {
-    if (!content || !(await trigger(undefined, { shouldFocus: true }))) {
-      setHeld((before) => [...before, ...files]);
-      return;
-    }
+  /** Sends these files as the form says; whatever can't go yet waits on the page. */
+  async function sendAll(looks: readonly FileLook[]) {
+    const complete = await trigger(undefined, { shouldFocus: true });
+    setIncomplete(!complete);
+    if (!content || !complete) return setHeld(looks);
     const values = getValues();
-    const fields = Object.fromEntries(FIELD_NAMES.map((name) => [name, text(values[name]).trim()])) as UploadFormValues;
+    const fields = fieldsToSend(Object.fromEntries(FIELD_NAMES.map((name) => [name, text(values[name]).trim()])) as UploadFormValues);
     keepEquipment(fields);
-    queue.add([...held, ...files], { chipId: content.chipId, words: content.words, expectedBytes: content.expectedBytes, fields });
+    queue.add(looks.map((one) => one.file), { chipId: content.chipId, words: content.words, expectedBytes: content.expectedBytes, imageBytes: format === "raw" ? null : numberTyped(fields.size), fields });
     setHeld([]);
+  }
+
+  async function take(files: File[]) {
+    const looks = [...held, ...await Promise.all(files.map(lookAt))];
+    // what a file looks like is a proposal: one that isn't what the form says waits for a person
+    if (looks.some((one) => heldBecause(one, format, frame) !== null)) setHeld(looks);
+    else await sendAll(looks);
   }
 
   if (!content) return null;
@@ -76,23 +96,21 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
     <div className="grid grid-cols-[minmax(0,1fr)_352px] gap-8 mid:grid-cols-[minmax(0,1fr)_300px] narrow:grid-cols-[minmax(0,1fr)] narrow:gap-y-[22px]">
       <div className="grid content-start gap-3">
         <Note kind="caution" title={`Before you clip on: ${content.words}`}>{clipCaution(stage)}</Note>
-        <DropZone title="Drop chip images here" onFiles={(files) => void take(files)}>Raw binary, {sizes} each. Several files at once are fine; they share what the form says.</DropZone>
-        {held.length > 0 ? (
-          <Note kind="note" title={`${listText(held.map((file) => file.name))} ${held.length === 1 ? "waits" : "wait"}.`} role="status">
-            Complete the form, then send. <button type="button" className="font-semibold text-green underline" onClick={() => void take([])}>Send now</button>{" "}
-            <button type="button" className="font-semibold text-green underline" onClick={() => setHeld([])}>Take off the list</button>
-          </Note>
-        ) : null}
+        <DropZone title="Drop chip images here" onFiles={(files) => void take(files)}>Raw binary, {sizes} each, or a text of records (Intel HEX, S-record). Several files at once are fine; they share what the form says.</DropZone>
+        <HeldFiles held={held} format={format} window={frame} incomplete={incomplete} onFormat={(value) => setValue("format", value, { shouldValidate: true })}
+          onSend={() => void sendAll(held)} onDrop={() => { setHeld([]); setIncomplete(false); }} />
         <ul aria-label="Files">{uploads.map((upload) => <UploadLine key={upload.key} upload={upload} queue={queue} chip={chip} />)}</ul>
       </div>
-      <form className="grid content-start gap-3.5 narrow:grid-cols-2 narrow:gap-x-5 phone:grid-cols-1" onSubmit={(event) => { event.preventDefault(); if (held.length > 0) void take([]); }}>
+      <form className="grid content-start gap-3.5 narrow:grid-cols-2 narrow:gap-x-5 phone:grid-cols-1" onSubmit={(event) => { event.preventDefault(); if (held.length > 0) void sendAll(held); }}>
         <Select label="Which content is it?" options={contents.map((c) => ({ value: c.stage, label: c.words }))} error={errors.stage?.message}
-          {...register("stage", { onChange: (event: { target: { value: string } }) => setValue("seating", String(chip.nextSeating[event.target.value as Stage])) })} />
+          {...register("stage", { onChange: (event: { target: { value: string } }) => chooseStage(event.target.value as Stage) })} />
         <Select label="Seating" options={seatingOptions(chip, stage)} hint="A new seating counts more than another read in the old one." error={errors.seating?.message} {...register("seating")} />
         <Input label="Reader" placeholder="R2" autoComplete="off" error={errors.reader?.message} {...register("reader")} />
         <Input label="Adapter" placeholder="SOIC-8 clip C4" autoComplete="off" error={errors.adapter?.message} {...register("adapter")} />
         <Select label="Supply set in the reader" options={SUPPLY_OPTIONS} error={errors.supplyMillivolts?.message} {...register("supplyMillivolts")} />
         {warning ? <Note kind="caution" role="status">{warning}</Note> : null}
+        <FormatFields format={format} register={register} errors={errors} typed={{ base, size }} onBase={(value) => setValue("base", textAddress(value), { shouldValidate: true })}
+          addresses={given.length > 0 ? { first: Math.min(...given.map((one) => one.first)), last: Math.max(...given.map((one) => one.last)) } : null} />
         <details className="narrow:col-span-full border-t border-rule pt-2">
           <summary className="cursor-pointer py-1 font-semibold">More about this read</summary>
           <div className="grid gap-3.5 pt-2 narrow:grid-cols-2 narrow:gap-x-5 phone:grid-cols-1">

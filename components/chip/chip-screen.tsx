@@ -3,9 +3,13 @@
 import { useRouter } from "next/navigation";
 import { useEffect } from "react";
 import useSWR from "swr";
+import { compositesOf, offersComposite } from "@/components/composite/composite-words";
+import { MakeComposite } from "@/components/composite/make-composite";
+import { Votes } from "@/components/composite/votes";
 import { PageMain } from "@/components/shell/page-main";
 import { StripLegend } from "@/components/strip/legend";
 import { StripStack } from "@/components/strip/strip-stack";
+import { Buttons } from "@/components/ui/button";
 import { Empty } from "@/components/ui/empty";
 import { Note } from "@/components/ui/note";
 import { DesignatorPlate } from "@/components/ui/plate";
@@ -48,6 +52,7 @@ export function ChipScreen({ chip: given, readBack, session, today }: {
     if (key !== shownKey) router.refresh();
   }, [key, shownKey, router]);
   const stack = readBack?.stack ?? chip.stack;
+  const composites = compositesOf(chip.reads);
   const differ = stack.lanes.some((lane) => lane.differingBytes > 0);
   const shared = { chip, user, timeZone, onChanged: changed };
   const donorPlate = <DesignatorPlate designator={original ? chip.pair?.designator ?? chip.designator : chip.designator} board="donor" />;
@@ -66,8 +71,20 @@ export function ChipScreen({ chip: given, readBack, session, today }: {
           </Section>
         ) : null}
         <Section title="Reads" note="Every file is kept as it came. A read is never changed or deleted, only set aside with a reason.">
-          {chip.reads.length > 0 ? <ReadsTable {...shared} /> : <Empty title={`No reads of ${chip.designator} yet.`}>Put the clip on, read the chip {chip.policy.reads} times in {chip.policy.seatings} seatings and drop the files below.</Empty>}
+          {chip.reads.length > 0 ? (
+            <>
+              <ReadsTable {...shared} />
+              {may(user, "composite.make") && offersComposite(chip) ? (
+                <Buttons className="pt-4"><MakeComposite chip={chip} onChanged={changed} /><span className="max-w-[60ch] text-ink-2">A last resort: what most reads say, bit by bit. Three equal reads are better.</span></Buttons>
+              ) : null}
+            </>
+          ) : <Empty title={`No reads of ${chip.designator} yet.`}>Put the clip on, read the chip {chip.policy.reads} times in {chip.policy.seatings} seatings and drop the files below.</Empty>}
         </Section>
+        {composites.length > 0 ? (
+          <Section title="The votes" note="What each disputed byte of a composite rests on.">
+            <div className="grid gap-8">{composites.map((read) => <Votes key={read.id} read={read} heading={composites.length > 1} />)}</div>
+          </Section>
+        ) : null}
         {may(user, "read.store") && contentsOf(chip).length > 0 ? (
           <div className="no-print">
             <Section id="add" title="Add reads" note="The digest is computed in this browser first; the server computes it again and the two must match.">

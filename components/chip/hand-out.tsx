@@ -5,18 +5,21 @@ import { Button } from "@/components/ui/button";
 import { Icon } from "@/components/ui/icon";
 import { Note } from "@/components/ui/note";
 import { useSay } from "@/components/ui/toast";
+import type { Format } from "@/lib/core/words";
 import { Refusal, save } from "@/lib/http/send";
+import { FormatChoice } from "./format-choice";
 
 /** Saves an image that may leave the house without a reason: the approved one, or the donor's own content. */
 export function HandOut({ readId, children, lead = false }: { readId: string; children: string; lead?: boolean }) {
   const say = useSay();
+  const [format, setFormat] = useState<Format>("raw");
   const [busy, setBusy] = useState(false);
   const [refusal, setRefusal] = useState<string | null>(null);
   async function download() {
     setBusy(true);
     setRefusal(null);
     try {
-      const file = await save(`/api/reads/${readId}/download`, {});
+      const file = await save(`/api/reads/${readId}/download`, { format });
       say({ text: `Saved as ${file}. The hand-out is in the log.` });
     } catch (error) {
       if (!(error instanceof Refusal)) throw error;
@@ -27,7 +30,10 @@ export function HandOut({ readId, children, lead = false }: { readId: string; ch
   }
   return (
     <>
-      <Button variant={lead ? "lead" : "plain"} disabled={busy} onClick={() => void download()}><Icon name="down" />{children}</Button>
+      <span className="inline-flex flex-wrap items-start gap-x-2 gap-y-1.5">
+        <Button variant={lead ? "lead" : "plain"} disabled={busy} onClick={() => void download()}><Icon name="down" />{children}</Button>
+        <FormatChoice quiet label={`Format of ${children}`} value={format} onChoose={setFormat} />
+      </span>
       {refusal ? <Note kind="block" role="alert" title="Nothing was handed out." className="basis-full">{refusal}</Note> : null}
     </>
   );

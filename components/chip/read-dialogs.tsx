@@ -1,9 +1,12 @@
 "use client";
 
+import { useState } from "react";
 import { useSay } from "@/components/ui/toast";
+import type { Format } from "@/lib/core/words";
 import { save, send } from "@/lib/http/send";
 import type { ChipView, ReadView } from "@/lib/views";
 import { nameOf } from "./chip-words";
+import { FormatChoice } from "./format-choice";
 import { ReasonDialog } from "./reason-dialog";
 
 export type ReadAction = "set-aside" | "count-again" | "download";
@@ -16,6 +19,7 @@ export function ReadDialogs({ asked, chip, onClose, onChanged }: {
   onChanged(): Promise<unknown>;
 }) {
   const say = useSay();
+  const [format, setFormat] = useState<Format>("raw");
   if (!asked) return null;
   const { read, action } = asked;
   const name = nameOf(read);
@@ -45,10 +49,12 @@ export function ReadDialogs({ asked, chip, onClose, onChanged }: {
   }
   return (
     <ReasonDialog open onClose={onClose} title={`Download ${name}`} action="Download" label="What is it for?"
-      description="It leaves the house as a file. Who, when and what for goes into the log before the first byte."
+      description={`${read.derived ? "A composite, no read. " : ""}It leaves the house as a file. Who, when and what for goes into the log before the first byte.`}
       onReason={async (reason) => {
-        const file = await save(`/api/reads/${read.id}/download`, { reason });
+        const file = await save(`/api/reads/${read.id}/download`, { reason, format });
         say({ text: `${name} was saved as ${file}.` });
-      }} />
+      }}>
+      <FormatChoice label="As what" value={format} onChoose={setFormat} />
+    </ReasonDialog>
   );
 }

@@ -1,6 +1,7 @@
 "use client";
 
 import { useState } from "react";
+import { readTitle } from "@/components/composite/composite-words";
 import { Button } from "@/components/ui/button";
 import { Digest } from "@/components/ui/digest";
 import { DesignatorPlate } from "@/components/ui/plate";
@@ -9,6 +10,7 @@ import { may } from "@/lib/core/policy";
 import { sizeText } from "@/lib/core/quantity";
 import { seatingLetter, type Stage } from "@/lib/core/words";
 import type { ChipView, ReadView, SessionView } from "@/lib/views";
+import { ReadOrigin } from "./read-origin";
 import { nameOf, oddReads } from "./chip-words";
 import { ReadDialogs, type ReadAction } from "./read-dialogs";
 import { ReadFindings } from "./read-findings";
@@ -42,9 +44,9 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
                   const stands = read.counted && (odd.includes(read) || read.findings.some((f) => f.severity === "blocks"));
                   return (
                     <tr key={read.id} id={`read-${read.id}`} className={read.setAside ? "is-aside" : stands ? "is-odd" : ""}>
-                      <th scope="row"><span className="struck">{nameOf(read)}</span></th>
-                      <td data-l="Seating">{seatingLetter(read.seating)}</td>
-                      <td>{[read.reader, read.adapter].filter(Boolean).join(", ")}</td>
+                      <th scope="row"><span className="struck">{readTitle(read)}</span></th>
+                      {read.derived ? null : <td data-l="Seating">{seatingLetter(read.seating)}</td>}
+                      <td colSpan={read.derived ? 2 : 1} className={read.derived ? "l-full" : ""}><ReadOrigin read={read} /></td>
                       <td className="whitespace-nowrap">{read.operator.name}</td>
                       <td className="l-top whitespace-nowrap">{momentText(read.takenAt ?? read.storedAt, timeZone)}</td>
                       <td className="num">{sizeText(read.sizeBytes)}</td>

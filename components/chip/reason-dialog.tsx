@@ -11,7 +11,7 @@ import { Refusal } from "@/lib/http/send";
 import { type ReasonInput, reasonInput } from "@/lib/schemas/read";
 
 /** Asks for a reason, then does it. A refusal stays here, with what was typed. */
-export function ReasonDialog({ open, onClose, title, description, label = "Reason", hint, action, variant = "lead", onReason }: {
+export function ReasonDialog({ open, onClose, title, description, label = "Reason", hint, action, variant = "lead", children, onReason }: {
   open: boolean;
   onClose(): void;
   title: string;
@@ -21,6 +21,8 @@ export function ReasonDialog({ open, onClose, title, description, label = "Reaso
   /** the button's words */
   action: string;
   variant?: "lead" | "stop";
+  /** what else is asked, above the reason */
+  children?: ReactNode;
   /** does it; a Refusal thrown here is shown */
   onReason(reason: string): Promise<void>;
 }) {
@@ -44,6 +46,7 @@ export function ReasonDialog({ open, onClose, title, description, label = "Reaso
   return (
     <Dialog open={open} onOpenChange={(next) => { if (!next) close(); }} title={title} description={description}>
       <form onSubmit={submit} noValidate className="grid gap-4">
+        {children}
         <TextArea label={label} hint={hint ?? "Goes into the custody log as you type it."} error={errors.reason?.message} {...register("reason")} />
         {refusal ? <Note kind="block" role="alert" title="This was not done.">{refusal}</Note> : null}
         <Buttons>

@@ -46,7 +46,7 @@ export function TransferSection({ chip, user, timeZone, onChanged }: { chip: Chi
       <div className="grid content-start gap-3.5">
         {writeNow ? <Note kind="caution" title={`Write to the donor only: donor ${donor}.`}>Never to the original chip. A wrong image can leave a drive beyond repair: compare the digest of the downloaded file before writing.</Note> : null}
         <Buttons>
-          {image && mayTake ? <HandOut readId={image.id} lead={writeNow}>{`Approved image, ${sizeText(image.sizeBytes)}`}</HandOut> : null}
+          {image && mayTake ? <HandOut readId={image.id} lead={writeNow}>{`Approved ${image.derived ? "composite" : "image"}, ${sizeText(image.sizeBytes)}`}</HandOut> : null}
           {own && mayTake && chip.donorSaved ? <HandOut readId={own.id}>Donor’s own content</HandOut> : null}
           {chip.approval && may(user, "transfer.record") ? <Button onClick={() => setRecording(true)}>Record the transfer…</Button> : null}
         </Buttons>

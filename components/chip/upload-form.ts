@@ -1,16 +1,36 @@
 import { z } from "zod";
 import { seatingLetter, type Stage } from "@/lib/core/words";
 import { readFields } from "@/lib/schemas/read";
+import { MAX_IMAGE_BYTES } from "@/lib/limits";
 import type { ChipView } from "@/lib/views";
 import { nameOf, readBackChipId, supplyText } from "./chip-words";
 
 /** The form beside the drop zone: the upload's own fields, and the supply is asked for. */
 export const uploadForm = readFields.pick({
   stage: true, seating: true, reader: true, method: true, toolVersion: true, adapter: true, clockKilohertz: true, controllerHeld: true, note: true,
-}).extend({ supplyMillivolts: z.string().min(1, "Say which supply was set, or that it is unknown.") });
+  format: true, base: true, size: true, fill: true,
+}).extend({ supplyMillivolts: z.string().min(1, "Say which supply was set, or that it is unknown.") }).superRefine(({ format, base, size, fill }, context) => {
+  if (format === "raw") return;
+  const wants = { base: "Give the address of the image’s first byte, such as 0x0000.", size: "Give the image’s size in bytes, such as 524288.", fill: "Give the value of bytes left out, such as 0xFF." };
+  for (const [name, value] of Object.entries({ base, size, fill })) {
+    if (typeof value !== "number") context.addIssue({ code: "custom", path: [name], message: wants[name as keyof typeof wants] });
+  }
+  if (typeof size === "number" && (size < 1 || size > MAX_IMAGE_BYTES)) context.addIssue({ code: "custom", path: ["size"], message: "An image has 1 byte to 64 MiB (67108864)." });
+});
 
-export const FIELD_NAMES = ["stage", "seating", "reader", "method", "toolVersion", "adapter", "supplyMillivolts", "clockKilohertz", "controllerHeld", "note"] as const;
+export const FIELD_NAMES = ["stage", "seating", "reader", "method", "toolVersion", "adapter", "supplyMillivolts", "clockKilohertz", "controllerHeld", "note", "format", "base", "size", "fill"] as const;
 export type UploadFormValues = Record<(typeof FIELD_NAMES)[number], string>;
+
+/** A number as it is typed, decimal or 0x and hex digits; null while it is none. */
+export function numberTyped(text: string): number | null {
+  const bare = text.trim();
+  return /^(0x[0-9a-f]{1,8}|\d{1,10})$/i.test(bare) ? Number(bare) : null;
+}
+
+/** What goes with the files: base, size and fill belong to texts only. */
+export function fieldsToSend(values: UploadFormValues): UploadFormValues {
+  return values.format === "raw" ? { ...values, base: "", size: "", fill: "" } : values;
+}
 
 /** What stays the same from read to read; the supply is asked for each time, because a wrong one destroys the chip. */
 export const REMEMBERED = ["reader", "method", "toolVersion", "adapter", "clockKilohertz", "controllerHeld"] as const;
@@ -46,7 +66,7 @@ export function likelyStage(chip: ChipView, contents: readonly Content[]): Stage
 /** A new seating first: it counts for more than another read in the old one. */
 export function seatingOptions(chip: ChipView, stage: Stage): { value: string; label: string }[] {
   const used = new Map<number, string>();
-  for (const read of chip.reads) if (read.stage === stage) used.set(read.seating, nameOf(read));
+  for (const read of chip.reads) if (read.stage === stage && !read.derived) used.set(read.seating, nameOf(read));
   const next = chip.nextSeating[stage];
   const fresh = { value: String(next), label: used.size > 0 ? `${seatingLetter(next)}, seated anew` : `${seatingLetter(next)}, the first seating` };
   return [fresh, ...[...used].filter(([seating]) => seating !== next).sort(([a], [b]) => b - a).map(([seating, name]) => ({ value: String(seating), label: `${seatingLetter(seating)}, as for ${name}` }))];

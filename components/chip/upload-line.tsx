@@ -8,7 +8,7 @@ import type { Stage } from "@/lib/core/words";
 import { MAX_IMAGE_BYTES } from "@/lib/limits";
 import type { ChipView } from "@/lib/views";
 import { nameOf } from "./chip-words";
-import type { Upload, UploadQueue } from "./upload-queue";
+import { imageBytesOf, type Upload, type UploadQueue } from "./upload-queue";
 import { sizeQuestion, willEqual } from "./will-equal";
 
 /** "352 of 512 KiB": whole KiB while it runs. */
@@ -41,7 +41,9 @@ function stateWords(upload: Upload): { words: string; tone: string } {
 export function UploadLine({ upload, queue, chip }: { upload: Upload; queue: UploadQueue; chip: ChipView }) {
   const { key, file, step, digest, target } = upload;
   const { words, tone } = stateWords(upload);
-  const same = digest && step !== "stored" ? willEqual(chip, target.fields.stage as Stage, digest.sha256) : null;
+  const text = target.imageBytes !== null;
+  // the digest of a text says nothing of the image in it
+  const same = digest && !text && step !== "stored" ? willEqual(chip, target.fields.stage as Stage, digest.sha256) : null;
   const share = step === "hashing" ? upload.hashed / Math.max(1, file.size) : step === "sending" ? upload.sent / Math.max(1, file.size) : null;
   const fits = file.size > 0 && file.size <= MAX_IMAGE_BYTES;
   let ways: ReactNode = null;
@@ -59,11 +61,12 @@ export function UploadLine({ upload, queue, chip }: { upload: Upload; queue: Upl
       <span className="font-mono !text-t2 font-semibold [overflow-wrap:anywhere]">{file.name}</span>
       <span className={`text-right ${tone}`} role="status">{words}</span>
       {share === null ? null : <span className="col-span-full"><Progress share={share} label={`${step === "hashing" ? "Computing the digest of" : "Sending"} ${file.name}`} /></span>}
-      {step === "asking" ? <div className="col-span-full"><FindingLine kind="caution">{file.size > MAX_IMAGE_BYTES ? `Larger than ${sizeText(MAX_IMAGE_BYTES)}, the most a chip here can hold. Take it off the list.` : sizeQuestion(file.size, target.expectedBytes)}</FindingLine></div> : null}
+      {step === "asking" ? <div className="col-span-full"><FindingLine kind="caution">{file.size > MAX_IMAGE_BYTES ? `Larger than ${sizeText(MAX_IMAGE_BYTES)}, the most a chip here can hold. Take it off the list.` : sizeQuestion(imageBytesOf(file, target), target.expectedBytes)}</FindingLine></div> : null}
       {upload.problem ? <div className="col-span-full" role="alert"><FindingLine kind="block">{upload.problem}</FindingLine></div> : null}
       <div className="col-span-full flex flex-wrap items-center gap-x-[18px] gap-y-0.5 text-t2 text-ink-2">
         <span>{target.words}</span>
-        {digest ? <><span>CRC-32 <code>{digest.crc32.toUpperCase()}</code></span><span className="inline-flex items-center">SHA-256&nbsp;<Digest sha256={digest.sha256} copy={false} /></span></> : null}
+        {digest ? <><span>{text ? "The text’s " : ""}CRC-32 <code>{digest.crc32.toUpperCase()}</code></span><span className="inline-flex items-center">SHA-256&nbsp;<Digest sha256={digest.sha256} copy={false} /></span></> : null}
+        {text ? <span>becomes an image of {sizeText(imageBytesOf(file, target))}</span> : null}
         {same ? <b className={same.good ? "text-green" : "text-caution"}>{same.words}</b> : null}
         <span className="ml-auto flex flex-wrap items-center gap-x-4 gap-y-2">{ways}</span>
       </div>

@@ -9,6 +9,8 @@ export interface UploadTarget {
   /** "Original U3" */
   words: string;
   expectedBytes: number;
+  /** of a text: the size of the image that is made from it; null when the file is the image */
+  imageBytes: number | null;
   fields: UploadFields;
 }
 
@@ -43,6 +45,11 @@ export interface QueueTools {
 }
 
 const AT_ONCE = 2;
+
+/** Bytes of the image that a file becomes: a text is longer than its image. */
+export function imageBytesOf(file: File, target: Pick<UploadTarget, "imageBytes">): number {
+  return target.imageBytes ?? file.size;
+}
 
 /** Hashes files one after the other, sends two at a time, one call a file. Knows nothing of React. */
 export class UploadQueue {
@@ -118,7 +125,7 @@ export class UploadQueue {
     try {
       const digest = await job.result;
       if (this.get(key)?.step !== "hashing") return;
-      this.change(key, { digest, hashed: file.size, step: file.size === target.expectedBytes ? "queued" : "asking" });
+      this.change(key, { digest, hashed: file.size, step: imageBytesOf(file, target) === target.expectedBytes ? "queued" : "asking" });
     } catch (error) {
       if (this.get(key)?.step === "hashing") this.change(key, { step: "refused", problem: (error as Error).message });
     } finally {

@@ -1,11 +1,12 @@
+import { readTitle } from "@/components/composite/composite-words";
 import { Button } from "@/components/ui/button";
 import { Select } from "@/components/ui/select";
-import { readName, seatingLetter, type Stage } from "@/lib/core/words";
+import { seatingLetter, type Stage } from "@/lib/core/words";
 import type { ReadView } from "@/lib/views";
 
 /** Two reads of one stage: a plain form, so that the address of the page says what is shown. */
 export function ChooseReads({ reads, stage, chosen }: { reads: readonly ReadView[]; stage: Stage; chosen: readonly [number, number] }) {
-  const options = reads.filter((r) => r.stage === stage).map((r) => ({ value: String(r.number), label: `${readName(stage, r.number)}, seating ${seatingLetter(r.seating)}${r.counted ? "" : ", set aside"}` }));
+  const options = reads.filter((r) => r.stage === stage).map((r) => ({ value: String(r.number), label: `${readTitle(r)}${r.derived ? "" : `, seating ${seatingLetter(r.seating)}`}${r.counted ? "" : ", set aside"}` }));
   return (
     <form className="no-print flex flex-wrap items-end gap-2" aria-label="Choose other reads">
       <input type="hidden" name="stage" value={stage} />

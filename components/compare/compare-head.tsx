@@ -1,9 +1,10 @@
 import Link from "next/link";
+import { readTitle } from "@/components/composite/composite-words";
 import { Crumbs } from "@/components/ui/crumbs";
 import { Mark } from "@/components/ui/mark";
 import { DesignatorPlate } from "@/components/ui/plate";
 import { withCommas } from "@/lib/core/quantity";
-import { readName as nameOf, type Stage } from "@/lib/core/words";
+import type { Stage } from "@/lib/core/words";
 import type { ChipView, ReadView } from "@/lib/views";
 import { ChooseReads } from "./choose-reads";
 import type { Compared } from "./compare-screen";
@@ -15,7 +16,7 @@ const STAGE_WORDS: Record<Stage, string> = { before: "reads of the original", do
 export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: ChipView; reads: readonly ReadView[]; compared: Compared | null; stage: Stage; chosen: readonly [number, number] | null }) {
   const crossed = compared !== null && compared.readA.stage !== compared.readB.stage;
   const others = stagesToCompare(reads).filter((s) => crossed || s !== stage);
-  const [a, b] = compared ? [nameOf(compared.readA.stage, compared.readA.number), nameOf(compared.readB.stage, compared.readB.number)] : ["", ""];
+  const [a, b] = compared ? [readTitle(compared.readA), readTitle(compared.readB)] : ["", ""];
   // a read-back was judged against the approved image when it came: that says what to do about the write
   const judged = crossed ? compared.readB.findings.find((f) => f.severity === "blocks" || f.code === "verified") : undefined;
   const verdict = judged ?? compared?.diagnosis;

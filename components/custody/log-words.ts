@@ -7,7 +7,7 @@ export const LOG_KINDS: readonly { key: LogKind; label: string }[] = [
 ];
 
 export function ofKind(entry: CustodyEntryView, kind: LogKind): boolean {
-  if (kind === "reads") return entry.action.startsWith("read.") || entry.action.startsWith("readback.");
+  if (kind === "reads") return entry.action.startsWith("read.") || entry.action.startsWith("readback.") || entry.action.startsWith("composite.");
   if (kind === "findings") return entry.kind === "differs";
   if (kind === "signatures") return entry.kind === "signed";
   return true;

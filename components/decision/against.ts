@@ -1,3 +1,4 @@
+import { compositeBehind, VOTE_FINDINGS, votesAnchor } from "@/components/composite/composite-words";
 import type { MarkKind } from "@/components/ui/mark";
 import { countOf, listText, readsText } from "@/lib/core/quantity";
 import { type FindingCode, readName } from "@/lib/core/words";
@@ -29,7 +30,8 @@ function fromConditions(conditions: readonly ConditionView[]): AgainstItem[] {
 }
 
 /** The same finding on several reads is one line. */
-function fromFindings({ chip, open }: DecisionView): AgainstItem[] {
+function fromFindings({ chip, image, open }: DecisionView): AgainstItem[] {
+  const composite = compositeBehind(chip.reads, image?.sha256);
   const notes = chip.reads.filter((r) => r.stage === "before" && r.counted).flatMap((r) => r.findings.filter((f) => f.severity === "note").map((finding) => ({ read: r.number, finding })));
   const lines = new Map<string, { reads: number[]; finding: DecisionView["open"][number]["finding"] }>();
   for (const { read, finding } of [...open, ...notes]) {
@@ -43,6 +45,7 @@ function fromFindings({ chip, open }: DecisionView): AgainstItem[] {
     return {
       key: short(`${who}${finding.code}`), mark: finding.severity === "blocks" ? "block" : finding.severity === "reason" ? "caution" : "note",
       title: `${who}${finding.message}`, text: finding.advice, blocks: finding.severity === "blocks",
+      ...(composite && VOTE_FINDINGS.includes(finding.code) ? { link: { href: `#${votesAnchor(composite)}`, label: "See the votes" } } : {}),
       ...(finding.severity === "reason" ? { reasonFor: finding.code } : {}),
     };
   });
@@ -64,10 +67,13 @@ function fromSetAside({ chip, image, setAside }: DecisionView): AgainstItem[] {
 
 function fromCircumstances({ chip, donor, donorDiffers }: DecisionView): AgainstItem[] {
   const items: AgainstItem[] = [];
-  const counted = chip.reads.filter((r) => r.stage === "before" && r.counted);
+  const standing = chip.reads.filter((r) => r.stage === "before" && r.counted);
+  // a composite stands for the reads that voted: those came from a reader
+  const voters = new Set(standing.flatMap((r) => r.derived?.voters ?? []));
+  const counted = chip.reads.filter((r) => r.stage === "before" && !r.derived && (r.counted || voters.has(r.number)));
   const readers = new Set(counted.map((r) => r.reader));
   if (counted.length > 1 && readers.size === 1) {
-    items.push({ key: "One reader took every counted read", mark: "caution", title: "One reader took every counted read.", text: `${counted[0].reader}. A fault of the reader itself would repeat in all of them.`, blocks: false });
+    items.push({ key: "One reader took every counted read", mark: "caution", title: `One reader took every ${voters.size > 0 ? "read behind the image" : "counted read"}.`, text: `${counted[0].reader}. A fault of the reader itself would repeat in all of them.`, blocks: false });
   }
   if (donor?.board.fit && donor.board.fit.verdict !== "fits") {
     const { fit } = donor.board;

@@ -1,8 +1,8 @@
 import { Mark } from "@/components/ui/mark";
 import { countOf } from "@/lib/core/quantity";
-import type { ChipView } from "@/lib/views";
+import type { ChipView, ReadView } from "@/lib/views";
 
-export function BeforeYouSign({ chip }: { chip: ChipView }) {
+export function BeforeYouSign({ chip, composite }: { chip: ChipView; composite: ReadView | null }) {
   const donor = chip.pair?.designator ?? "chip";
   const board = chip.pair?.boardNumber ?? "its board";
   const backs = `${countOf(chip.policy.readBacks, "equal read-back")}${chip.policy.readBackSeatings > 1 ? ` in ${chip.policy.readBackSeatings} seatings` : ""}`;
@@ -10,7 +10,7 @@ export function BeforeYouSign({ chip }: { chip: ChipView }) {
     <ol className="grid grid-cols-3 gap-x-8 gap-y-[22px] narrow:grid-cols-[minmax(0,1fr)] print:grid-cols-3">
       {[
         { kind: "caution", title: `Writing erases all of donor ${donor}.`, text: chip.donorSaved ? "Its own content is saved and can be written back." : "Its own content isn’t saved yet: it would be gone." },
-        { kind: "caution", title: "Agreeing reads aren’t proof of sound content.", text: "They show that the chip gave the same bytes each time, not that whatever broke the board left those bytes unharmed. A clip that sits wrong gives the same wrong image every time." },
+        composite?.derived ? { kind: "caution", title: "This image is a composite.", text: composite.derived.limit } : { kind: "caution", title: "Agreeing reads aren’t proof of sound content.", text: "They show that the chip gave the same bytes each time, not that whatever broke the board left those bytes unharmed. A clip that sits wrong gives the same wrong image every time." },
         { kind: "note", title: "The original is only ever read.", text: `This approval covers donor ${donor} on ${board} and no other chip. ${backs} must follow.` },
       ].map((w) => (
         <li key={w.title} className="grid grid-cols-[16px_minmax(0,1fr)] gap-2.5">

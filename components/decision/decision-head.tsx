@@ -1,7 +1,9 @@
+import { compositeBehind, madeOf, votesAnchor } from "@/components/composite/composite-words";
 import { Crumbs } from "@/components/ui/crumbs";
+import { Mark } from "@/components/ui/mark";
 import { DesignatorPlate } from "@/components/ui/plate";
 import { dueText, momentText } from "@/components/ui/times";
-import type { ChipView } from "@/lib/views";
+import type { ChipView, DecisionView } from "@/lib/views";
 
 function asked(chip: ChipView, timeZone: string): string {
   const due = chip.case.dueOn ? `, due ${dueText(chip.case.dueOn)}` : "";
@@ -11,7 +13,9 @@ function asked(chip: ChipView, timeZone: string): string {
   return `Decision sheet, not asked for yet${due}`;
 }
 
-export function DecisionHead({ chip, timeZone }: { chip: ChipView; timeZone: string }) {
+export function DecisionHead({ view: { chip, image }, timeZone }: { view: DecisionView; timeZone: string }) {
+  const composite = compositeBehind(chip.reads, image?.sha256);
+  const what = composite ? "composite" : "image";
   const message = !chip.approval && chip.request && !chip.request.sentBack ? chip.request.message : null;
   return (
     <>
@@ -20,8 +24,9 @@ export function DecisionHead({ chip, timeZone }: { chip: ChipView; timeZone: str
         <div className="min-w-0">
           <p className="text-ink-2">{asked(chip, timeZone)}</p>
           <h1 className="mt-0.5 text-t7 font-bold tracking-[-0.012em] text-balance phone:text-[1.625rem] phone:leading-8">
-            {chip.approval ? `This image may be written to donor ${chip.pair?.designator ?? ""}.` : chip.pair ? `May this image be written to donor ${chip.pair.designator}?` : "May this image be written to a donor?"}
+            {chip.approval ? `This ${what} may be written to donor ${chip.pair?.designator ?? ""}.` : chip.pair ? `May this ${what} be written to donor ${chip.pair.designator}?` : `May this ${what} be written to a donor?`}
           </h1>
+          {composite?.derived ? <p className="mt-1 flex items-start gap-2"><Mark kind="caution" className="mt-0.5 [--hole:var(--paper)]" /><span><b>No read gave this image.</b> {madeOf(composite.derived)}. <a href={`#${votesAnchor(composite)}`}>See the votes</a></span></p> : null}
           {message ? <p className="mt-1 max-w-[62ch] text-ink-2">“{message}”</p> : null}
         </div>
         <div className="flex items-center gap-3.5 slim:gap-2">

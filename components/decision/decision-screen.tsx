@@ -5,6 +5,8 @@ import { useRouter } from "next/navigation";
 import { useMemo, useState } from "react";
 import { useForm, useWatch } from "react-hook-form";
 import { ReasonDialog } from "@/components/chip/reason-dialog";
+import { compositeBehind, readTitle } from "@/components/composite/composite-words";
+import { Votes } from "@/components/composite/votes";
 import { Button, Buttons } from "@/components/ui/button";
 import { Note } from "@/components/ui/note";
 import { Section } from "@/components/ui/section";
@@ -33,6 +35,7 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
   const [looked, setLooked] = useState<ReadonlySet<string>>(new Set());
   const [refusal, setRefusal] = useState<string | null>(null);
   const [sendingBack, setSendingBack] = useState(false);
+  const composite = compositeBehind(chip.reads, image?.sha256);
   const against = useMemo(() => standsAgainst(view), [view]);
   const codes = useMemo(() => [...new Set(against.flatMap((i) => (i.reasonFor ? [i.reasonFor] : [])))], [against]);
   const schema = useMemo(() => decisionForm(image?.sha256 ?? "", codes), [image, codes]);
@@ -56,7 +59,7 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
         sha256: image.sha256, donorChipId: chip.pair.id, statement, reasons: Object.fromEntries(codes.map((code) => [code, reasons[code]])),
         lookedAt: against.filter((i) => looked.has(i.key)).map((i) => i.key),
       });
-      say({ text: `The image is cleared for writing to donor ${chip.pair.designator}.` });
+      say({ text: `The ${composite ? "composite" : "image"} is cleared for writing to donor ${chip.pair.designator}.` });
     } catch (error) {
       if (!(error instanceof Refusal)) throw error;
       setRefusal(error.detail);
@@ -71,22 +74,23 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
   const sendBack = waiting && may(user, "approval.send-back") ? () => setSendingBack(true) : null;
   return (
     <>
-      <Section strong title="The image" note={image ? `Held by ${readsText(image.reads)}.` : undefined}><ImageFacts view={view} /></Section>
+      <Section strong title="The image" note={composite ? `${readTitle(composite)}: derived, no read.` : image ? `Held by ${readsText(image.reads)}.` : undefined}><ImageFacts view={view} /></Section>
       <Section title="For and against" note={signs ? "Tick what stands against it once you’ve looked at it." : undefined}>
         <Ledger stands={standsFor(view)} against={against} looked={looked} onLook={onLook} signs={signs} register={register} errors={errors} />
       </Section>
+      {composite ? <Section title="The votes" note="What each disputed byte of the composite rests on."><Votes read={composite} /></Section> : null}
       <Section wide title="Where it goes" note={view.donor ? `Donor board ${view.donor.board.boardNumber}.` : undefined} aside={<DonorFacts view={view} />}>
         <WhereItGoes view={view} timeZone={session.timeZone} />
       </Section>
       {chip.approval ? (
-        <Section strong title="Signed" note="Stands in the custody log.">{refused}<Standing chip={chip} approval={chip.approval} session={session} /></Section>
+        <Section strong title="Signed" note="Stands in the custody log.">{refused}<Standing chip={chip} approval={chip.approval} composite={composite} session={session} /></Section>
       ) : (
         <>
-          <Section title="Before you sign"><BeforeYouSign chip={chip} /></Section>
+          <Section title="Before you sign"><BeforeYouSign chip={chip} composite={composite} /></Section>
           <Section strong title="Sign" note="Goes into the custody log, signed.">
             {refused}
             {signs
-              ? <Sign chip={chip} user={user} open={open} matches={matches} busy={isSubmitting} register={register} errors={errors} onSubmit={submit} onSendBack={sendBack} />
+              ? <Sign chip={chip} user={user} composite={composite !== null} open={open} matches={matches} busy={isSubmitting} register={register} errors={errors} onSubmit={submit} onSendBack={sendBack} />
               : (
                 <div className="grid gap-3.5">
                   <WhoMaySign chip={chip} user={user} />

@@ -53,7 +53,7 @@ export function Ledger({ stands, against, looked, onLook, signs, register, error
                 <Checkbox className="whitespace-nowrap phone:col-start-2" checked={looked.has(item.key)} onChange={(event) => onLook(item.key, event.target.checked)} label={<>Looked at<span className="sr-only">: {item.title}</span></>} />
               ) : null}
               {signs && item.reasonFor ? (
-                <TextArea className="col-span-2 col-start-2 phone:col-span-1" label="Why may it be approved all the same?" hint="At least 10 characters. Goes into the custody log as you type it."
+                <TextArea className="col-start-2 col-end-4 phone:col-end-3" label="Why may it be approved all the same?" hint="At least 10 characters. Goes into the custody log as you type it."
                   error={errors.reasons?.[item.reasonFor]?.message} {...register(`reasons.${item.reasonFor}`)} />
               ) : null}
             </li>

@@ -11,9 +11,11 @@ import type { DecisionForm } from "./decision-form";
 import { WhoMaySign } from "./who-may-sign";
 
 /** Statement, typed digits, signature. The button waits, and says for what. */
-export function Sign({ chip, user, open, matches, busy, register, errors, onSubmit, onSendBack }: {
+export function Sign({ chip, user, composite, open, matches, busy, register, errors, onSubmit, onSendBack }: {
   chip: ChipView;
   user: SessionView["user"];
+  /** the image is a composite, and the button says so */
+  composite: boolean;
   /** what is still missing, in words */
   open: string | null;
   matches: boolean;
@@ -27,12 +29,12 @@ export function Sign({ chip, user, open, matches, busy, register, errors, onSubm
     <form onSubmit={onSubmit} noValidate className="grid grid-cols-[minmax(0,1fr)_minmax(0,420px)] gap-x-10 gap-y-[22px] narrow:grid-cols-[minmax(0,1fr)]">
       <div className="grid content-start gap-3.5">
         <WhoMaySign chip={chip} user={user} />
-        <TextArea label="Statement" hint="Why you clear this image. The auditor reads this, the customer doesn’t." error={errors.statement?.message} {...register("statement")} />
+        <TextArea label="Statement" hint={`Why you clear this ${composite ? "composite" : "image"}. The auditor reads this, the customer doesn’t.`} error={errors.statement?.message} {...register("statement")} />
       </div>
       <Input mono label="Last 8 digits of the SHA-256, typed from above" autoComplete="off" spellCheck={false} maxLength={16} error={matches ? undefined : errors.last8?.message}
         hint={matches ? <span className="text-green"><Mark kind="done" className="[--hole:var(--paper)]" /> Matches the image on this sheet.</span> : "Typed by hand, so that an eye has been on the digest."} {...register("last8")} />
       <Buttons className="col-span-full pt-1">
-        <Button type="submit" variant="lead" reason={open} disabled={busy}>Approve for writing to donor {chip.pair?.designator ?? ""}</Button>
+        <Button type="submit" variant="lead" reason={open} disabled={busy}>{composite ? "Approve the composite" : "Approve"} for writing to donor {chip.pair?.designator ?? ""}</Button>
         {onSendBack ? <Button variant="stop" onClick={onSendBack}>Send back…</Button> : null}
       </Buttons>
     </form>

@@ -3,16 +3,19 @@
 import { useRouter } from "next/navigation";
 import { useState } from "react";
 import { ReasonDialog } from "@/components/chip/reason-dialog";
+import { madeOf, votesAnchor } from "@/components/composite/composite-words";
 import { Button, ButtonLink, Buttons } from "@/components/ui/button";
+import { Note } from "@/components/ui/note";
 import { Mark } from "@/components/ui/mark";
 import { exactText } from "@/components/ui/times";
 import { useSay } from "@/components/ui/toast";
+import { readName } from "@/lib/core/words";
 import { may } from "@/lib/core/policy";
 import { send } from "@/lib/http/send";
-import type { ApprovalView, ChipView, SessionView } from "@/lib/views";
+import type { ApprovalView, ChipView, ReadView, SessionView } from "@/lib/views";
 
 /** The signature that stands on this sheet, and the way to take it back. */
-export function Standing({ chip, approval, session }: { chip: ChipView; approval: ApprovalView; session: SessionView }) {
+export function Standing({ chip, approval, composite, session }: { chip: ChipView; approval: ApprovalView; composite: ReadView | null; session: SessionView }) {
   const router = useRouter();
   const say = useSay();
   const [asked, setAsked] = useState(false);
@@ -20,6 +23,7 @@ export function Standing({ chip, approval, session }: { chip: ChipView; approval
   return (
     <div className="grid max-w-[76ch] gap-3.5">
       <p className="flex items-start gap-2.5 text-t4"><Mark kind="done" size={20} className="mt-0.5 [--hole:var(--paper)]" /><span><b>Approved by {approval.approvedBy.name}</b>, {exactText(approval.givenAt, session.timeZone)}{approval.twoPersonRule ? ", who took no read of the original." : ", with the two-person rule switched off."}</span></p>
+      {composite?.derived ? <Note kind="caution" title={`What is approved is a composite, ${readName("before", composite.number)}.`}>{madeOf(composite.derived)}. <a href={`#${votesAnchor(composite)}`}>See the votes</a></Note> : null}
       <p>“{approval.statement}”</p>
       {reasons.length > 0 ? <ul className="grid gap-1">{reasons.map(([code, text]) => <li key={code}>Approved all the same: “{text}”</li>)}</ul> : null}
       <Buttons>

@@ -26,14 +26,14 @@ function AddChipForm({ board, originals, onClose }: Given & { onClose(): void })
   const { refusal, busy, attempt } = useChange();
   // a donor that fits carries the same chip: the first original without a pair is what comes next
   const twin = board.role === "donor" ? originals.find((chip) => !chip.pair) ?? null : null;
-  const { register, handleSubmit, control, formState: { errors } } = useForm<ChipFormInput, unknown, ChipFormOutput>({
+  const { register, handleSubmit, setValue, control, formState: { errors } } = useForm<ChipFormInput, unknown, ChipFormOutput>({
     resolver: zodResolver(chipForm),
     defaultValues: {
       designator: twin?.designator ?? "", bus: twin?.bus ?? "spi", sizeBytes: twin ? String(twin.sizeBytes) : "", sizeSource: "marking",
-      supplyMillivolts: "", package: twin?.package ?? "", marking: "", holds: twin?.holds ?? "", needsTransfer: true, pairedWith: twin?.id ?? "",
+      supplyMillivolts: "", package: twin?.package ?? "", marking: "", holds: twin?.holds ?? "", idBytes: "", sfdp: "", needsTransfer: true, pairedWith: twin?.id ?? "",
     },
   });
-  const [size, supply, pairedWith] = useWatch({ control, name: ["sizeBytes", "supplyMillivolts", "pairedWith"] }).map(typed);
+  const [size, supply, marking, idBytes, sfdp, pairedWith] = useWatch({ control, name: ["sizeBytes", "supplyMillivolts", "marking", "idBytes", "sfdp", "pairedWith"] }).map(typed);
   const replaced = originals.find((chip) => chip.id === pairedWith)?.pair ?? null;
   const submit = handleSubmit(async ({ pairedWith: pair, ...input }) => {
     if (!(await attempt(() => send("POST", `/api/boards/${board.id}/chips`, pair ? { ...input, pairedWith: pair } : input)))) return;
@@ -42,7 +42,11 @@ function AddChipForm({ board, originals, onClose }: Given & { onClose(): void })
   });
   return (
     <FormDialog onClose={onClose} title={`Add a chip on ${board.role === "original" ? "the original" : "the donor"} ${boardName(board)}`} action="Add the chip" busy={busy} refusal={refusal} onSubmit={() => void submit()}>
-      <ChipFields role={board.role} originals={originals} register={register} errors={errors} size={size} supply={supply} />
+      <ChipFields role={board.role} originals={originals} register={register} errors={errors} typed={{ size, supply, marking, idBytes, sfdp }}
+        onTakeSize={({ bytes, source }) => {
+          setValue("sizeBytes", String(bytes), { shouldValidate: true });
+          setValue("sizeSource", source);
+        }} />
       {replaced ? <Note kind="caution" title={`The pair with ${replaced.designator} on ${replaced.boardNumber} ends.`}>An approval for it falls.</Note> : null}
       {board.role === "original" ? <Note kind="caution" title="Take power away before clipping, and never write to this chip.">Never heat it before agreed reads exist.</Note> : null}
     </FormDialog>

@@ -3,9 +3,12 @@ import { Checkbox } from "@/components/ui/checkbox";
 import { Input } from "@/components/ui/input";
 import { Note } from "@/components/ui/note";
 import { Select } from "@/components/ui/select";
+import { nameHelp } from "@/lib/core/name-digits";
 import type { BoardRole } from "@/lib/core/words";
 import type { ChipSummary } from "@/lib/views";
 import type { ChipField } from "./chip-form";
+import { ChipAnswers } from "./chip-answers";
+import type { SizeProposal } from "./chip-says";
 import { BUS_OPTIONS, SIZE_SOURCE_OPTIONS } from "./drive-words";
 import { sizeHint, sizeNote } from "./size-words";
 
@@ -19,23 +22,26 @@ function voltOptions(chosen: string) {
   return VOLTS.some((option) => option.value === chosen) || !/^\d+$/.test(chosen) ? VOLTS : [...VOLTS, { value: chosen, label: `${Number(chosen) / 1000} V` }];
 }
 
-export function ChipFields({ role, originals, register, errors, size, supply }: {
+export function ChipFields({ role, originals, register, errors, typed, onTakeSize }: {
   role: BoardRole;
   /** chips of the original board that a donor's chip can be paired with */
   originals: readonly ChipSummary[];
   register(name: ChipField): UseFormRegisterReturn;
   errors: Partial<Record<ChipField, { message?: string }>>;
   /** as typed so far */
-  size: string;
-  supply: string;
+  typed: { size: string; supply: string; marking: string; idBytes: string; sfdp: string };
+  onTakeSize(proposal: SizeProposal): void;
 }) {
+  const { size, supply } = typed;
   const note = sizeNote(size);
+  // never filled in by itself: the same digits count Mbit in one family and Kbit in another
+  const named = nameHelp(typed.marking);
   return (
     <>
       <div className="grid grid-cols-2 gap-4 slim:grid-cols-1">
         <Input label="Designator" mono hint="Printed beside the chip, such as U12" error={errors.designator?.message} {...register("designator")} />
         <Select label="Bus" options={BUS_OPTIONS} error={errors.bus?.message} {...register("bus")} />
-        <Input label="Size" mono hint={sizeHint(size)} error={errors.sizeBytes?.message} {...register("sizeBytes")} />
+        <Input label="Size" mono hint={<>{sizeHint(size)}{named ? <span className="mt-1 block">{named}</span> : null}</>} error={errors.sizeBytes?.message} {...register("sizeBytes")} />
         <Select label="The size comes from" options={SIZE_SOURCE_OPTIONS} error={errors.sizeSource?.message} {...register("sizeSource")} />
         <Select label="Supply" options={voltOptions(supply)} hint="1.8 V chips are destroyed by 3.3 V or 5 V" error={errors.supplyMillivolts?.message} {...register("supplyMillivolts")} />
         <Input label="Package" hint="Such as SOIC-8" error={errors.package?.message} {...register("package")} />
@@ -49,6 +55,7 @@ export function ChipFields({ role, originals, register, errors, size, supply }: 
         ) : <Checkbox className="col-span-full" label="This chip needs a transfer. Take the tick off for one that is kept for reference." {...register("needsTransfer")} />}
       </div>
       {note ? <Note kind="note" title={note} /> : null}
+      <ChipAnswers register={register} errors={errors} typed={typed} onTakeSize={onTakeSize} />
       {supply === "unknown" ? <Note kind="caution" title="Look the supply up before anyone clips on.">A 1.8 V chip is destroyed by 3.3 V or 5 V. Start at the lowest supply when there is no other way.</Note> : null}
     </>
   );

@@ -13,6 +13,7 @@ const askedSupply = z.preprocess((value) => (value === "" ? undefined : value), 
 const fields = {
   designator: chipInput.shape.designator, bus: chipInput.shape.bus, sizeBytes: typedSize, sizeSource: chipInput.shape.sizeSource,
   supplyMillivolts: askedSupply, package: facts.package, marking: facts.marking, holds: facts.holds,
+  idBytes: facts.idBytes, sfdp: facts.sfdp,
   needsTransfer: chipInput.shape.needsTransfer, pairedWith: facts.pairedWith,
 };
 

@@ -28,14 +28,15 @@ function CorrectChipForm({ chip, originals, onClose }: Given & { onClose(): void
   const { refusal, busy, attempt } = useChange();
   const before: ChipFormOutput = {
     designator: chip.designator, bus: chip.bus, sizeBytes: chip.sizeBytes, sizeSource: chip.sizeSource, supplyMillivolts: chip.supplyMillivolts ?? "unknown",
-    package: chip.package, marking: chip.marking, holds: chip.holds, needsTransfer: chip.needsTransfer,
+    package: chip.package, marking: chip.marking, holds: chip.holds,
+    idBytes: chip.idBytes, sfdp: chip.sfdp, needsTransfer: chip.needsTransfer,
     pairedWith: chip.boardRole === "donor" ? chip.pair?.id ?? null : null,
   };
-  const { register, handleSubmit, setError, control, formState: { errors } } = useForm<z.input<typeof chipCorrectionForm>, unknown, z.output<typeof chipCorrectionForm>>({
+  const { register, handleSubmit, setError, setValue, control, formState: { errors } } = useForm<z.input<typeof chipCorrectionForm>, unknown, z.output<typeof chipCorrectionForm>>({
     resolver: zodResolver(chipCorrectionForm),
     defaultValues: { ...before, sizeBytes: String(chip.sizeBytes), supplyMillivolts: String(before.supplyMillivolts), pairedWith: before.pairedWith ?? "", reason: "" },
   });
-  const [size, supply] = useWatch({ control, name: ["sizeBytes", "supplyMillivolts"] }).map(typed);
+  const [size, supply, marking, idBytes, sfdp] = useWatch({ control, name: ["sizeBytes", "supplyMillivolts", "marking", "idBytes", "sfdp"] }).map(typed);
   const submit = handleSubmit(async ({ reason, ...after }) => {
     const changes = changedFields(before, after);
     if (Object.keys(changes).length === 0) return setError("designator", { message: "These are the values on record. Change a field first." });
@@ -45,7 +46,11 @@ function CorrectChipForm({ chip, originals, onClose }: Given & { onClose(): void
   });
   return (
     <FormDialog onClose={onClose} title={`Correct ${chip.designator}, ${chip.boardRole}`} description="The log keeps what was there before, what is there now and why. The reads are judged again." action="Record the correction" busy={busy} refusal={refusal} onSubmit={() => void submit()}>
-      <ChipFields role={chip.boardRole} originals={originals} register={register} errors={errors} size={size} supply={supply} />
+      <ChipFields role={chip.boardRole} originals={originals} register={register} errors={errors} typed={{ size, supply, marking, idBytes, sfdp }}
+        onTakeSize={({ bytes, source }) => {
+          setValue("sizeBytes", String(bytes), { shouldValidate: true });
+          setValue("sizeSource", source);
+        }} />
       <TextArea label="Reason" hint="Goes into the custody log as you type it." error={errors.reason?.message} {...register("reason")} />
       <Note kind="caution" title="Another size or another pair takes an approval away.">The image has to be approved again.</Note>
     </FormDialog>

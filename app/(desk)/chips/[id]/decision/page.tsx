@@ -19,7 +19,7 @@ export default async function DecisionPage({ params }: { params: Promise<{ id: s
   return (
     <DeskShell session={session} current="bench">
       <PageMain>
-        <DecisionHead chip={view.chip} timeZone={session.timeZone} />
+        <DecisionHead view={view} timeZone={session.timeZone} />
         <DecisionScreen view={view} session={session} />
       </PageMain>
     </DeskShell>
