@@ -74,6 +74,16 @@ describe("SHA-256 of server and browser", () => {
     ["CAVP Len 16", fromHex("11af"), "5ca7133fa735326081558ac312c620eeca9970d1e70a4b95533d956f072d1f98"],
     ["CAVP Len 24", fromHex("b4190e"), "dff2e73091f6c05e528896c4c831b9448653dc2ff043528f6769437bc7b975c2"],
     ["CAVP Len 32", fromHex("74ba2521"), "b16aa56be3880d18cd41e68384cf1ec8c17680c45a02b1575dc1518923ae8b0e"],
+    ["CAVP Len 440", fromHex("3ebfb06db8c38d5ba037f1363e118550aad94606e26835a01af05078533cc25f2f39573c04b632f62f68c294ab31f2a3e2a1a0d8c2be51"), "6595a2ef537a69ba8583dfbf7f5bec0ab1f93ce4c8ee1916eff44a93af5749c4"],
+    ["CAVP Len 448", fromHex("2d52447d1244d2ebc28650e7b05654bad35b3a68eedc7f8515306b496d75f3e73385dd1b002625024b81a02f2fd6dffb6e6d561cb7d0bd7a"), "cfb88d6faf2de3a69d36195acec2e255e2af2b7d933997f348e09f6ce5758360"],
+    ["CAVP Len 504", fromHex("e2f76e97606a872e317439f1a03fcd92e632e5bd4e7cbc4e97f1afc19a16fde92d77cbe546416b51640cddb92af996534dfd81edb17c4424cf1ac4d75aceeb"), "18041bd4665083001fba8c5411d2d748e8abbfdcdfd9218cb02b68a78e7d4c23"],
+    ["CAVP Len 512", fromHex("5a86b737eaea8ee976a0a24da63e7ed7eefad18a101c1211e2b3650c5187c2a8a650547208251f6d4237e661c7bf4c77f335390394c37fa1a9f9be836ac28509"), "42e61e174fbb3897d6dd6cef3dd2802fe67b331953b06114a65c772859dfc1aa"],
+    ["CAVP Len 1304", fromHex("451101250ec6f26652249d59dc974b7361d571a8101cdfd36aba3b5854d3ae086b5fdd4597721b66e3c0dc5d8c606d9657d0e323283a5217d1f53f2f284f57b85c8a61ac8924711f895c5ed90ef17745ed2d728abd22a5f7a13479a462d71b56c19a74a40b655c58edfe0a188ad2cf46cbf30524f65d423c837dd1ff2bf462ac4198007345bb44dbb7b1c861298cdf61982a833afc728fae1eda2f87aa2c9480858bec"), "3c593aa539fdcdae516cdf2f15000f6634185c88f505b39775fb9ab137a10aa2"],
+    ["896 bits", ascii("abcdefghbcdefghicdefghijdefghijkefghijklfghijklmghijklmnhijklmnoijklmnopjklmnopqklmnopqrlmnopqrsmnopqrstnopqrstu"), "cf5b16a778af8380036ce59e7b0492370b249b11e8f07a51afac45037afee9d1"],
+    ["1000 zeros", fill(1000, 0), "541b3e9daa09b20bf85fa273e5cbd3e80185aa4ec298e765db87742b70138a53"],
+    ["1000 x 41", fill(1000, 0x41), "c2e686823489ced2017f6059b8b239318b6364f6dcd835d0a519105a1eadd6e4"],
+    ["1005 x 55", fill(1005, 0x55), "f4d62ddec0f3dd90ea1380fa16a5ff8dc4c54b21740650f24afc4120903552b0"],
+    ["a million zeros", fill(1_000_000, 0), "d29751f2649b32ff572b5e0a9f541ea660a50f94ff0beedfb0b692b924cc8025"],
   ];
   it.each(published)("%s", (_name, message, digest) => {
     expect(createHash("sha256").update(message).digest("hex")).toBe(digest);
