@@ -8,14 +8,18 @@ export interface Mutant {
   why?: string;
 }
 
+/** Changes nothing: must not be noticed, or the report is worthless. */
+export const CONTROL: Mutant = { name: "nothing at all", file: "judge-set.ts", from: "alone: groups", to: "alone: groups", why: "a control, changes nothing" };
+
 export const RULES: Mutant[] = [
   { name: "F05 never blocks", file: "repeat-findings.ts", from: 'period.bytes * 4 <= size && !confirmed) ? "blocks"', to: 'period.bytes * 4 <= size && !confirmed) ? "reason"' },
+  { ...CONTROL, name: "nothing at all, after a change that was noticed" },
   { name: "F05 blocks for a confirmed size too", file: "repeat-findings.ts", from: "&& !confirmed", to: "" },
   { name: "F05 takes another size than the chip's", file: "repeat-findings.ts", from: "size !== chip.sizeBytes || ", to: "" },
   { name: "F06 notes dense content too", file: "repeat-findings.ts", from: "if (!dense && blockPairs < 2)", to: "if (blockPairs < 2000)" },
   { name: "F06 blocks below all pairs", file: "repeat-findings.ts", from: "matches === informative && ", to: "" },
   { name: "F05 F06 read fill as informative", file: "facts-repeats.ts", from: "else if (x === 0xff || x === 0) continue;", to: "" },
-  { name: "F20 before F05", file: "facts-repeats.ts", from: "if (short) return { short, period: null, lines: [] };", to: "" },
+  { name: "F20 before F05", file: "facts-repeats.ts", from: "if (short) return { short, period: null, lines: [] };", to: "", why: "the findings ask for the short period first; this only saves the search for others" },
   { name: "F08 for any tail", file: "single-findings.ts", from: "if (tailUniform)", to: "if (over > 0)" },
   { name: "F10 single without a ratio", file: "single-findings.ts", from: " || best < WORD_SCORE_RATIO * wordScores[0]", to: "" },
   { name: "F24 as a reason", file: "single-findings.ts", from: 'code: "text-file", severity: "blocks"', to: 'code: "text-file", severity: "reason"' },

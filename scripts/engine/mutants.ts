@@ -2,7 +2,7 @@ import { spawnSync } from "node:child_process";
 import { cpSync, mkdtempSync, readFileSync, rmSync, symlinkSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
-import { RULES, type Mutant } from "./mutant-rules";
+import { CONTROL, RULES, type Mutant } from "./mutant-rules";
 
 /**
  * Breaks one rule or threshold of the engine at a time, in a copy, and sees whether the tests of tests/core notice.
@@ -10,15 +10,23 @@ import { RULES, type Mutant } from "./mutant-rules";
  */
 const root = path.join(import.meta.dirname, "../..");
 const budget = Number(process.argv[2] ?? 330) * 1000;
-const TESTS = ["golden/golden", "inspect", "single-findings", "diagnose-pair", "diagnose-read-back", "judge-set", "findings", "fault-injection"].map((name) => `tests/core/${name}.test.ts`);
-
-const scaled = (text: string, by: number) => String(text.includes(".") || text.includes("/") ? Number((valueOf(text) * by).toFixed(6)) : Math.round(valueOf(text) * by));
+const file = (name: string) => `tests/core/${name}.test.ts`;
+/** the quick ones first; real images only where those notice nothing */
+const QUICK = ["golden/golden", "inspect", "single-findings", "diagnose-pair", "diagnose-read-back", "judge-set"].map(file);
+/** where a change in a file is most likely noticed */
+const NEAREST: [RegExp, string[]][] = [
+  [/^facts|^inspect/, ["inspect"]], [/^single|^repeat/, ["single-findings"]], [/^judge/, ["judge-set"]], [/read-back/, ["diagnose-read-back"]],
+  [/^diagnose/, ["golden/golden", "diagnose-pair"]], [/^thresholds/, ["single-findings", "diagnose-pair"]],
+];
+const SLOW = ["findings", "engine-properties", "fault-injection"].map(file);
 
 /** "4096", "32_768", "0.98" or "1 / 16" */
 function valueOf(text: string): number {
   const [top, bottom = "1"] = text.replaceAll("_", "").split("/");
   return Number(top) / Number(bottom);
 }
+
+const scaled = (text: string, by: number) => String(text.includes(".") || text.includes("/") ? Number((valueOf(text) * by).toFixed(6)) : Math.round(valueOf(text) * by));
 
 /** Every threshold doubled, and halved. */
 function thresholdMutants(source: string): Mutant[] {
@@ -28,25 +36,42 @@ function thresholdMutants(source: string): Mutant[] {
   })));
 }
 
+const CONFIG = `export default {
+  resolve: { alias: [{ find: /^@\\//, replacement: import.meta.dirname + "/" }] },
+  test: { environment: "node", include: ["tests/**/*.test.ts"], pool: "forks", fileParallelism: false, testTimeout: 60000 },
+};
+`;
+
 const home = mkdtempSync(path.join(tmpdir(), "twinread-mutants-"));
 try {
-  for (const part of ["lib/core", "tests/core", "tests/support", "scripts/engine", "vitest.config.ts", "tsconfig.json", "package.json"]) {
+  for (const part of ["lib/core", "tests/core", "tests/support", "scripts/engine", "tsconfig.json", "package.json"]) {
     cpSync(path.join(root, part), path.join(home, part), { recursive: true });
   }
+  // the project's own settings build the worker first, which no rule of the engine needs
+  writeFileSync(path.join(home, "vitest.config.ts"), CONFIG);
   symlinkSync(path.join(root, "node_modules"), path.join(home, "node_modules"));
-  const passes = () => spawnSync("npx", ["vitest", "run", "--bail", "1", "--pool", "threads", "--no-isolate", ...TESTS], { cwd: home, stdio: "ignore", timeout: 60_000 }).status === 0;
+  // a new process for each run: a warm one remembers an earlier failure and calls every change noticed
+  const run = (tests: readonly string[]) => spawnSync(process.execPath, ["node_modules/vitest/vitest.mjs", "run", "--bail", "1", "--no-isolate", ...tests], {
+    cwd: home, stdio: "ignore", timeout: 90_000,
+  }).status === 0;
+  const passes = (changed?: string) => {
+    const name = changed ? path.basename(changed) : "";
+    const nearest = NEAREST.find(([files]) => files.test(name))?.[1].map(file) ?? [];
+    if (nearest.length > 0 && !run(nearest)) return false;
+    return run(QUICK.filter((test) => !nearest.includes(test))) && run(SLOW);
+  };
   if (!passes()) throw new Error("The tests don't pass before anything is broken: make them pass first.");
   const began = Date.now();
-  const all = [...RULES, ...thresholdMutants(readFileSync(path.join(root, "lib/core/thresholds.ts"), "utf8"))];
+  const all = [CONTROL, ...RULES, ...thresholdMutants(readFileSync(path.join(root, "lib/core/thresholds.ts"), "utf8"))];
   const results: { mutant: Mutant; noticed: boolean }[] = [];
   for (const mutant of all) {
     if (Date.now() - began > budget) break;
-    const file = path.join(home, "lib/core", mutant.file);
-    const source = readFileSync(file, "utf8");
+    const target = path.join(home, "lib/core", mutant.file);
+    const source = readFileSync(target, "utf8");
     if (!source.includes(mutant.from)) throw new Error(`${mutant.name}: ${mutant.file} no longer holds that text. Bring mutant-rules.ts up to date.`);
-    writeFileSync(file, source.replace(mutant.from, () => mutant.to));
-    results.push({ mutant, noticed: !passes() });
-    writeFileSync(file, source);
+    writeFileSync(target, source.replace(mutant.from, () => mutant.to));
+    results.push({ mutant, noticed: !passes(target) });
+    writeFileSync(target, source);
     process.stderr.write(`${results[results.length - 1].noticed ? "noticed " : "SURVIVES"} ${mutant.name}\n`);
   }
   const survivors = results.filter((one) => !one.noticed);

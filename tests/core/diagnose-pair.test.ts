@@ -106,6 +106,34 @@ describe("images of one size", () => {
     b.set([0x71, 0x18, 0x35], 500);
     expect(between(a, b)).toMatchObject({ code: "unclassified", confidence: "unsure", counts: { sparse: 1 } });
   });
+  it("that both repeat over a line don't blame the line", () => {
+    const [half, torn] = [stream("half", 8192), stream("half", 8192)];
+    torn.fill(0xff, 3000, 3200);
+    expect(between(joined(half, half), joined(torn, torn)).code).toBe("lost-contact");
+  });
+  it("with patterns that fit their own neighbourhood don't move", () => {
+    const image = joined(stream("data", 8192), ...Array.from({ length: 8 }, (_, n) => { const unit = stream(`unit ${n}`, 8); return Array.from({ length: 1024 }, (__, i) => unit[i % 8]); }));
+    const torn = edited((b) => { for (let at = 8192 + 52; at < b.length; at += 128) for (let i = 0; i < 8; i += 1) b[at + i] ^= 0x5a; }, image);
+    expect(between(image, torn).code).toBe("unclassified");
+  });
+  it("with single bits off in blank space have not lost contact", () => {
+    const blank = joined(stream("data", 8192), fill(8192, 0xff));
+    expect(between(blank, edited((b) => [9001, 10_001, 12_001].forEach((at) => b.fill(0xfe, at, at + 12)), blank)).code).toMatch(/flips/);
+  });
+  it("mostly FF must lose ones: 40 flips one way say nothing there", () => {
+    const blank = joined(stream("data", 512), fill(16_000, 0xff));
+    expect(between(blank, edited((b) => { for (let n = 0; n < 40; n += 1) b[1003 + n * 300] ^= 1 << (n % 8); }, blank)).code).toBe("random-flips");
+  });
+  it("with one long stretch over fill and other faults beside it stay unclassified", () => {
+    const blank = joined(stream("data", 8192), fill(8192, 0xff));
+    expect(between(blank, edited((b) => {
+      b.set(stream("over", 300), 9000);
+      for (const at of [1001, 2001, 3001]) { b[at] ^= 0x5a; b[at + 1] ^= 0x33; }
+    }, blank)).code).toBe("unclassified");
+  });
+  it("that differ at both ends differ at neither alone", () => {
+    expect(between(good, edited((b) => { b[0] ^= 0x5a; b[16_383] ^= 0x33; })).code).toBe("unclassified");
+  });
   it("keep their cause without names, and say it again from either side", () => {
     for (const name of ["lose1", "rot512", "burst00", "A8low"]) {
       const bad = GOLDEN_FAULTS.find((fault) => fault.name === name)!.make(GOOD_IMAGE);
