@@ -49,7 +49,7 @@ describe("a write", () => {
     expect(told(edited((b) => b.set(old.subarray(0x3000, 0x5000), 0x3000)), null).code).toBe("foreign-blocks");
   });
   it("that was not erased, in whole or in part", () => {
-    expect(told(approved.map((value, i) => value & old[i])).code).toBe("not-erased");
+    expect(told(approved.map((value, i) => value & old[i]))).toMatchObject({ code: "not-erased", measured: "every byte is approved AND old" });
     expect(told(edited((b) => { for (let i = 0x3000; i < 0x4000; i += 1) b[i] &= old[i]; })).message).toMatch(/a part of the chip was not erased/);
   });
   it("with few single bits off has weak cells", () => {
