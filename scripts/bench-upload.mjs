@@ -5,6 +5,7 @@ import path from "node:path";
 import { runningMark } from "./start/child.mjs";
 import { openHouse } from "./start/house.mjs";
 import { localUrl } from "./start/app.mjs";
+import { ensureBuilt } from "./start/install.mjs";
 import { once } from "./start/once.mjs";
 import { giveUp, Refusal, root, say } from "./start/say.mjs";
 import { appVariables, loadSettings, tsArgs } from "./start/settings.mjs";
@@ -89,6 +90,7 @@ async function eightAtOnce(token, pid) {
 
 try {
   mkdirSync(folder, { recursive: true });
+  await ensureBuilt();
   await house.prepareEmpty();
   await house.checkAppPort();
   await house.database();

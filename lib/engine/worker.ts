@@ -1,5 +1,5 @@
 import { createHash } from "node:crypto";
-import { readFile } from "node:fs/promises";
+import { open } from "node:fs/promises";
 import { type Comparison, compareImages } from "../core/compare";
 import { type CompositeSource, compositeReport, makeComposite } from "../core/composite";
 import { compositeFindings } from "../core/composite-findings";
@@ -31,7 +31,25 @@ export type VoteResult =
   | { refused: string }
   | { bytes: Uint8Array; derived: Omit<DerivedFacts, "reportSha256">; report: string };
 
-const bytesOf = async (file: string) => new Uint8Array(await readFile(file));
+// Files are read into the same few buffers again and again: left to the garbage collector, images of 64 MiB pile up.
+const slots: Uint8Array<ArrayBuffer>[] = [];
+const KEPT_SLOTS = 3;
+
+async function bytesOf(path: string, slot = 0): Promise<Uint8Array<ArrayBuffer>> {
+  const file = await open(path, "r");
+  try {
+    const { size } = await file.stat();
+    if (!slots[slot] || slots[slot].length < size) slots[slot] = new Uint8Array(size);
+    for (let at = 0; at < size; ) {
+      const { bytesRead } = await file.read(slots[slot], at, size - at, at);
+      if (bytesRead === 0) throw new Error(`${path} ended early`);
+      at += bytesRead;
+    }
+    return slots[slot].subarray(0, size);
+  } finally {
+    await file.close();
+  }
+}
 
 // what this thread has just inspected is often compared next
 const seen = new Map<string, ImageFacts>();
@@ -49,14 +67,14 @@ export async function inspect({ file }: Tasks["inspect"]["input"]): Promise<Imag
 }
 
 export async function compare({ fileA, fileB, chipBytes }: Tasks["compare"]["input"]): Promise<Compared> {
-  const [a, b] = await Promise.all([bytesOf(fileA), bytesOf(fileB)]);
+  const [a, b] = await Promise.all([bytesOf(fileA), bytesOf(fileB, 1)]);
   const comparison = compareImages(a, b);
   const cause = causeOfPair(a, b, factsOf(fileA, a), factsOf(fileB, b), chipBytes, comparison);
   return { ...comparison, cause };
 }
 
 export async function readBack({ approved, old, readBack: back }: Tasks["readBack"]["input"]): Promise<ReadBackDiagnosis> {
-  const [a, r, o] = await Promise.all([bytesOf(approved), bytesOf(back), old ? bytesOf(old).catch(() => null) : null]);
+  const [a, r, o] = await Promise.all([bytesOf(approved), bytesOf(back, 1), old ? bytesOf(old, 2).catch(() => null) : null]);
   return diagnoseReadBack(r, a, o, { readBack: factsOf(back, r), approved: factsOf(approved, a) });
 }
 
@@ -76,7 +94,7 @@ export async function encode({ file, format, base }: Tasks["encode"]["input"]): 
 /** The vote, with the digest of its image worked out here so that the report can name it. */
 export async function vote({ sources }: Tasks["vote"]["input"]): Promise<VoteResult> {
   try {
-    const loaded = await Promise.all(sources.map(async ({ file, ...source }) => ({ ...source, bytes: await bytesOf(file) })));
+    const loaded = await Promise.all(sources.map(async ({ file, ...source }, i) => ({ ...source, bytes: await bytesOf(file, i) })));
     const composite = makeComposite(loaded);
     const sha256 = createHash("sha256").update(composite.bytes).digest("hex");
     return {
@@ -92,5 +110,7 @@ export async function vote({ sources }: Tasks["vote"]["input"]): Promise<VoteRes
   } catch (error) {
     if (error instanceof CompositeRefusal) return { refused: error.message };
     throw error;
+  } finally {
+    slots.length = Math.min(slots.length, KEPT_SLOTS);
   }
 }

@@ -35,10 +35,13 @@ const THERE = {
   zip: program("zip"),
   binutils: program("strings"),
   srecord: program("srec_cat"),
+  ent: program("ent"),
+  "ipxe-qemu": file("/usr/lib/ipxe/qemu/pxe-e1000.rom"),
+  diffutils: program("cmp"),
 };
 
 export const DATABASE_PACKAGES = ["mariadb-server-core", "mariadb-client"];
-export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord"];
+export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord", "ent", "ipxe-qemu", "diffutils"];
 
 export const missingPackages = (wanted) => wanted.filter((name) => !THERE[name]());
 

@@ -29,7 +29,7 @@ const ODD: Odd[] = [
       read[FLIPPED_AT] ^= 0x08;
       return read;
     },
-    sentence: /^Read 2 differs in 1 byte, at 0x1A2B3\. Re-seat the clip and read again\./,
+    sentence: /^Read 2 differs in 1 byte, at 0x1A2B3: looks like single bits that flip\. Lower the clock/,
     finding: /1 byte differs/,
   },
   { what: "a blank read", spoil: (image) => Buffer.alloc(image.length, 0xff), sentence: /^Read 2 differs in [\d,]+ bytes/, finding: /All FF/ },
