@@ -156,6 +156,10 @@ Peak of the whole process beyond one that only holds the reads, as a multiple of
 |---|---|---|---|---|
 | 3 × 16 MiB, all differ | ${e16.held.toFixed(0)} MiB | ${e16.peak.toFixed(0)} MiB | ${e16.times.toFixed(2)} | ${aim(e16.times, 4)} |
 | 3 × 64 MiB, all differ | ${e64.held.toFixed(0)} MiB | ${e64.peak.toFixed(0)} MiB | ${e64.times.toFixed(2)} | ${aim(e64.times, 4)} |
+
+## f. Other requests meanwhile
+Measured with the server: \`npm run bench:upload\` asks for the case list while eight images of 64 MiB are taken in and judged in
+the engine's thread; the answer times stand in [bench-upload](bench-upload.md). A thread of its own keeps the judging from them.
 `;
   mkdirSync(path.join(root, "docs"), { recursive: true });
   writeFileSync(path.join(root, "docs/bench-engine.md"), report);
