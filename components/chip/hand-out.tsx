@@ -5,29 +5,20 @@ import { Button } from "@/components/ui/button";
 import { Icon } from "@/components/ui/icon";
 import { Note } from "@/components/ui/note";
 import { useSay } from "@/components/ui/toast";
+import { useChange } from "@/components/ui/use-change";
 import type { Format } from "@/lib/core/words";
-import { Refusal, save } from "@/lib/http/send";
+import { save } from "@/lib/http/send";
 import { FormatChoice } from "./format-choice";
 
 /** Saves an image that may leave the house without a reason: the approved one, or the donor's own content. */
 export function HandOut({ readId, children, lead = false }: { readId: string; children: string; lead?: boolean }) {
   const say = useSay();
   const [format, setFormat] = useState<Format>("raw");
-  const [busy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string | null>(null);
-  async function download() {
-    setBusy(true);
-    setRefusal(null);
-    try {
-      const file = await save(`/api/reads/${readId}/download`, { format });
-      say({ text: `Saved as ${file}. The hand-out is in the log.` });
-    } catch (error) {
-      if (!(error instanceof Refusal)) throw error;
-      setRefusal(error.detail);
-    } finally {
-      setBusy(false);
-    }
-  }
+  const { refusal, busy, attempt } = useChange();
+  const download = () => attempt(async () => {
+    const file = await save(`/api/reads/${readId}/download`, { format });
+    say({ text: `Saved as ${file}. The hand-out is in the log.` });
+  });
   return (
     <>
       <span className="inline-flex flex-wrap items-start gap-x-2 gap-y-1.5">

@@ -1,14 +1,14 @@
 "use client";
 
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { Button, Buttons } from "@/components/ui/button";
 import { Icon } from "@/components/ui/icon";
 import { Mark, type MarkKind } from "@/components/ui/mark";
 import { Note } from "@/components/ui/note";
 import { momentText } from "@/components/ui/times";
 import { useSay } from "@/components/ui/toast";
-import { Refusal, send } from "@/lib/http/send";
+import { useChange } from "@/components/ui/use-change";
+import { send } from "@/lib/http/send";
 import type { MailView } from "@/lib/views";
 
 const STATE: Record<MailView["state"], { mark: MarkKind; word: string }> = {
@@ -19,23 +19,13 @@ const STATE: Record<MailView["state"], { mark: MarkKind; word: string }> = {
 export function MailLine({ mail, timeZone }: { mail: MailView; timeZone: string }) {
   const router = useRouter();
   const say = useSay();
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const [busy, setBusy] = useState(false);
   const { mark, word } = STATE[mail.state];
-  async function retry() {
-    setBusy(true);
-    setRefusal(null);
-    try {
-      await send("POST", `/api/mails/${mail.id}/retry`);
-      router.refresh();
-      say({ text: `The mail to ${mail.to} waits to be sent again.` });
-    } catch (error) {
-      if (!(error instanceof Refusal)) throw error;
-      setRefusal(error.detail);
-    } finally {
-      setBusy(false);
-    }
-  }
+  const { refusal, busy, attempt } = useChange();
+  const retry = () => attempt(async () => {
+    await send("POST", `/api/mails/${mail.id}/retry`);
+    router.refresh();
+    say({ text: `The mail to ${mail.to} waits to be sent again.` });
+  });
   return (
     <li className="border-b border-rule py-2.5">
       <details className="group">

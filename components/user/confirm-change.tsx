@@ -1,32 +1,18 @@
 "use client";
 
-import { useState } from "react";
 import { Button, Buttons } from "@/components/ui/button";
 import { Dialog } from "@/components/ui/dialog";
 import { Note } from "@/components/ui/note";
-import { Refusal } from "@/lib/http/send";
+import { useChange } from "@/components/ui/use-change";
 
 /** Asks before something that is felt at once; a refusal stays here. */
 export function ConfirmChange({ title, children, action, variant = "lead", onConfirm, onClose }: { title: string; children: string; action: string; variant?: "lead" | "stop"; onConfirm(): Promise<void>; onClose(): void }) {
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const [busy, setBusy] = useState(false);
-  async function confirm() {
-    setBusy(true);
-    setRefusal(null);
-    try {
-      await onConfirm();
-    } catch (error) {
-      if (!(error instanceof Refusal)) throw error;
-      setRefusal(error.detail);
-    } finally {
-      setBusy(false);
-    }
-  }
+  const { refusal, busy, attempt } = useChange();
   return (
     <Dialog open onOpenChange={(open) => { if (!open) onClose(); }} title={title}>
       <p>{children}</p>
       {refusal ? <Note kind="block" role="alert" title="This was not done.">{refusal}</Note> : null}
-      <Buttons><Button variant={variant} disabled={busy} onClick={() => void confirm()}>{action}</Button><Button onClick={onClose}>Leave it</Button></Buttons>
+      <Buttons><Button variant={variant} disabled={busy} onClick={() => void attempt(onConfirm)}>{action}</Button><Button onClick={onClose}>Leave it</Button></Buttons>
     </Dialog>
   );
 }
