@@ -49,5 +49,5 @@ export async function requireSoundImage(sha256: string, sizeBytes: number, where
   const state = await checkImage(sha256, sizeBytes);
   if (state === "sound") return reportSound(sha256, where);
   await reportImage(sha256, state, where);
-  throw new AppError("rule-against", `The stored image ${sha256.slice(0, 8)}… is ${state}: it no longer matches its digest. Nothing was handed out. Tell the lead; restore it from a backup or read the chip again.`);
+  throw new AppError("rule-against", `The stored image ${sha256.slice(0, 8)}… is ${state}: it no longer matches its digest. Nothing was done with it. Tell the lead; restore it from a backup or read the chip again.`);
 }

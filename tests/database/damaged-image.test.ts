@@ -18,7 +18,7 @@ for (const state of ["damaged", "missing"] as const) {
       const { id } = await readNamed(bench, "before", 1);
       harm[state](sha256(bench.image));
       const said = await refusal(openHandedOut(bench.technician, id, {}));
-      expect(said).toMatchObject({ status: 409, detail: expect.stringMatching(new RegExp(`is ${state}: it no longer matches its digest\\. Nothing was handed out\\.`)) as string });
+      expect(said).toMatchObject({ status: 409, detail: expect.stringMatching(new RegExp(`is ${state}: it no longer matches its digest\\. Nothing was done with it\\.`)) as string });
       expect(await logged(bench.chip.driveId, "image.found-damaged")).toEqual([{ sha256: sha256(bench.image), state, where: "hand-out" }]);
       expect(await logged(bench.chip.driveId, "image.handed-out")).toEqual([]);
       expect(await lastEntry(bench.chip.driveId, "approval.revoked")).toMatchObject({ cause: "image-damaged", reason: `The stored image is ${state}.` });

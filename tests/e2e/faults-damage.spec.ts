@@ -62,7 +62,7 @@ for (const { what, spoil, problem, word } of [
       expect(found[0].reads).toHaveLength(3);
       expect(found[0].reads).toContainEqual(expect.stringMatching(/^Case \d\d-\d{4}, Drive A, Orig U7, Read 2$/));
       if (spoil === flipBit) expect(report.page).toContain(`Image ${chip.sha256}`);
-      for (const token of [mira, ines]) expectProblem(await handOut(token, chip.reads[0].id), 409, new RegExp(`is ${word}: it no longer matches its digest\\. Nothing was handed out\\.`));
+      for (const token of [mira, ines]) expectProblem(await handOut(token, chip.reads[0].id), 409, new RegExp(`is ${word}: it no longer matches its digest\\. Nothing was done with it\\.`));
       const after = await chipOf(mira, chip.chipId);
       expect(after.state).not.toBe("approved");
       expectProblem(await transfer(chip), 409, /revoked/);
