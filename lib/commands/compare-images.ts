@@ -1,3 +1,4 @@
+import { turnCause } from "@/lib/core/diagnose-pair";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
 import { engine } from "@/lib/engine/pool";
 import type { Compared } from "@/lib/engine/worker";
@@ -17,6 +18,8 @@ export interface ImageRef {
  * chain's lock and asks for a second connection waits for those who wait for the lock.
  */
 export async function compareImages(a: ImageRef, b: ImageRef, tx?: Transaction, chipBytes = Math.max(a.sizeBytes, b.sizeBytes)): Promise<Compared> {
+  // one result serves both directions; of two sizes each direction is kept for itself, its counts can't be turned
+  if (a.sizeBytes === b.sizeBytes && a.sha256 > b.sha256) return turned(await compareImages(b, a, tx, chipBytes));
   const engineVersion = a.sizeBytes === b.sizeBytes ? ENGINE_VERSION : `${ENGINE_VERSION}:${chipBytes}`;
   const key = { sha256A: Buffer.from(a.sha256, "hex"), sha256B: Buffer.from(b.sha256, "hex"), engineVersion };
   const known = await ComparisonRow.findOne({ where: key, transaction: tx });
@@ -24,6 +27,12 @@ export async function compareImages(a: ImageRef, b: ImageRef, tx?: Transaction, 
   const made = await engine("compare", { fileA: pathOfImage(a.sha256), fileB: pathOfImage(b.sha256), chipBytes });
   await ComparisonRow.bulkCreate([{ ...key, result: JSON.stringify(made) }], { ignoreDuplicates: true, transaction: tx });
   return made;
+}
+
+function turned(c: Compared): Compared {
+  return {
+    ...c, zeroToOne: c.oneToZero, oneToZero: c.zeroToOne, fillInA: c.fillInB, fillInB: c.fillInA, cause: turnCause(c.cause, c.sizeA),
+  };
 }
 
 /** The same, or null when one of the stored images is gone: a lost image must not keep new reads out. */

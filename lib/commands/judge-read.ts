@@ -11,7 +11,6 @@ import { placeText } from "@/lib/core/strip";
 import { type Finding, readName, SYSTEM } from "@/lib/core/words";
 import { currentPolicy } from "@/lib/queries/policy";
 import { type Chip, Image, inTransaction, Read, type Transaction, Transfer } from "@/models";
-import { imageChunks } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { compareIfStored } from "./compare-images";
 import { inspectImage } from "./inspect-image";
@@ -35,7 +34,6 @@ export async function findingsOf(tx: Transaction, place: ChipPlace, read: Read):
     })),
     // every workshop holds many blank images: they say nothing about where they come from, so nothing is looked up
     elsewhere: nearlyBlank(facts) ? [] : await elsewhere(tx, place, read),
-    tail: read.sizeBytes > place.chip.sizeBytes ? { uniform: await tailIsUniform(read, place.chip.sizeBytes) } : undefined,
   })];
 }
 
@@ -71,19 +69,6 @@ async function elsewhere(tx: Transaction, place: ChipPlace, read: Read): Promise
     });
   }
   return found;
-}
-
-async function tailIsUniform(read: Read, from: number): Promise<boolean> {
-  let at = 0;
-  let fill = -1;
-  for await (const chunk of imageChunks(read.sha256.toString("hex"))) {
-    for (let i = Math.max(0, from - at); i < chunk.length; i += 1) {
-      if (fill === -1) fill = chunk[i];
-      else if (chunk[i] !== fill) return false;
-    }
-    at += chunk.length;
-  }
-  return true;
 }
 
 /** Writes the findings to the read and, when they are new or changed, an entry "read judged" by Twinread. */
