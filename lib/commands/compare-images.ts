@@ -19,14 +19,29 @@ export interface ImageRef {
  */
 export async function compareImages(a: ImageRef, b: ImageRef, tx?: Transaction, chipBytes = Math.max(a.sizeBytes, b.sizeBytes)): Promise<Compared> {
   // one result serves both directions; of two sizes each direction is kept for itself, its counts can't be turned
-  if (a.sizeBytes === b.sizeBytes && a.sha256 > b.sha256) return turned(await compareImages(b, a, tx, chipBytes));
-  const engineVersion = a.sizeBytes === b.sizeBytes ? ENGINE_VERSION : `${ENGINE_VERSION}:${chipBytes}`;
-  const key = { sha256A: Buffer.from(a.sha256, "hex"), sha256B: Buffer.from(b.sha256, "hex"), engineVersion };
-  const known = await ComparisonRow.findOne({ where: key, transaction: tx });
-  if (known) return JSON.parse(known.result) as Compared;
+  if (isTurned(a, b)) return turned(await compareImages(b, a, tx, chipBytes));
+  const known = await comparisonOnRecord(a, b, tx, chipBytes);
+  if (known) return known;
   const made = await engine("compare", { fileA: pathOfImage(a.sha256), fileB: pathOfImage(b.sha256), chipBytes });
-  await ComparisonRow.bulkCreate([{ ...key, result: JSON.stringify(made) }], { ignoreDuplicates: true, transaction: tx });
+  await ComparisonRow.bulkCreate([{ ...keyOf(a, b, chipBytes), result: JSON.stringify(made) }], { ignoreDuplicates: true, transaction: tx });
   return made;
+}
+
+const isTurned = (a: ImageRef, b: ImageRef) => a.sizeBytes === b.sizeBytes && a.sha256 > b.sha256;
+
+function keyOf(a: ImageRef, b: ImageRef, chipBytes: number) {
+  const engineVersion = a.sizeBytes === b.sizeBytes ? ENGINE_VERSION : `${ENGINE_VERSION}:${chipBytes}`;
+  return { sha256A: Buffer.from(a.sha256, "hex"), sha256B: Buffer.from(b.sha256, "hex"), engineVersion };
+}
+
+/** A comparison that was made before, or null: nothing is computed and no image is opened. */
+export async function comparisonOnRecord(a: ImageRef, b: ImageRef, tx?: Transaction, chipBytes = Math.max(a.sizeBytes, b.sizeBytes)): Promise<Compared | null> {
+  if (isTurned(a, b)) {
+    const other = await comparisonOnRecord(b, a, tx, chipBytes);
+    return other && turned(other);
+  }
+  const known = await ComparisonRow.findOne({ where: keyOf(a, b, chipBytes), transaction: tx });
+  return known && (JSON.parse(known.result) as Compared);
 }
 
 function turned(c: Compared): Compared {

@@ -49,7 +49,7 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
     approvals: record?.approvals.map((a) => approvalView(a, who)) ?? [],
     request: record?.request ? requestView(record.request, who) : null,
     transfers: record?.transfers.map((t) => transferView(t, who)) ?? [],
-    why: record ? why(record, policy) : UNPAIRED.sentence,
+    why: record ? await why(record, policy) : UNPAIRED.sentence,
     nextSeating: Object.fromEntries(STAGES.map((s) => [s, nextSeating(reads, s)])) as Record<Stage, number>,
     receivedAt: place.case.receivedAt.toISOString(),
   };

@@ -1,13 +1,17 @@
 import { agreement } from "@/lib/core/chip-state";
-import { type Policy, readName, seatingLetter } from "@/lib/core/words";
+import { listText, readsText } from "@/lib/core/quantity";
+import { type Policy, seatingLetter } from "@/lib/core/words";
 import { stateRead } from "./chip-facts";
 import type { ChipRecord } from "./chip-records";
+import { inCommon } from "./in-common";
 
-const list = (items: string[]) => (items.length < 2 ? items.join("") : `${items.slice(0, -1).join(", ")} and ${items.at(-1)}`);
 const plural = (n: number, one: string) => `${n} ${one}${n === 1 ? "" : "s"}`;
 
-/** The paragraph under the verdict: what the reads show, what the policy asks, and what equal reads do not show. */
-export function why(record: ChipRecord, policy: Policy): string {
+/**
+ * The paragraph under the verdict: what the reads show, what those that differ have in common, what the policy asks, and
+ * what equal reads do not show.
+ */
+export async function why(record: ChipRecord, policy: Policy): Promise<string> {
   const latest = record.transfers.at(-1);
   if (latest) {
     const backs = record.backs.filter((r) => r.transferId === latest.id && r.counted).map(stateRead);
@@ -19,12 +23,13 @@ export function why(record: ChipRecord, policy: Policy): string {
   const { groups, largest } = agreement(reads);
   const size = record.chip.sizeBytes.toLocaleString("en");
   if (!largest) return "";
-  const names = list(largest.reads.map((n) => readName("before", n)));
-  const seatings = largest.seatings.length === 1 ? `seating ${seatingLetter(largest.seatings[0])}` : `seatings ${list(largest.seatings.map(seatingLetter))}`;
+  const names = readsText(largest.reads);
+  const seatings = largest.seatings.length === 1 ? `seating ${seatingLetter(largest.seatings[0])}` : `seatings ${listText(largest.seatings.map(seatingLetter))}`;
   const voted = largest.behind > largest.reads.length;
   const agree = voted ? `${names} is a composite and stands for the ${largest.behind} reads that were voted into it, ${seatings}.` : largest.reads.length > 1 ? `${names} agree in all ${size} bytes, ${seatings}.` : groups.length > 1 ? "No two reads agree." : `${names} stands alone so far.`;
   const needed = Math.max(0, policy.reads - largest.behind);
   const more = needed > 0 ? ` ${plural(needed, voted ? "more read" : "more agreeing read")} ${needed === 1 ? "is" : "are"} needed.` : "";
   const limit = voted ? " A majority shows what repeats, not what is true." : groups.length === 1 && needed === 0 ? " Equal reads show that the chip gave the same bytes each time, not that the damage left those bytes unharmed; a clip that sits wrong gives the same wrong image every time." : "";
-  return agree + more + limit;
+  const common = groups.length > 1 ? (await inCommon(record, policy)).map((sentence) => ` ${sentence}`).join("") : "";
+  return agree + common + more + limit;
 }
