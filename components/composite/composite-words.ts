@@ -1,4 +1,4 @@
-import { LEAST_READS } from "@/lib/core/composite-rules";
+import { LEAST_READS, voteExclusion } from "@/lib/core/composite-rules";
 import { countOf, listText, readsText, sizeText, withCommas } from "@/lib/core/quantity";
 import { type FindingCode, readName, seatingLetter } from "@/lib/core/words";
 import type { ChipView, ReadView, VotesView } from "@/lib/views";
@@ -56,12 +56,14 @@ export function offersComposite(chip: Pick<ChipView, "boardRole" | "reads">): bo
 
 /** What to know of a read before it is given a vote. */
 export function candidateWords(read: ReadView, chip: Pick<ChipView, "sizeBytes" | "reads">): string {
+  const cause = voteExclusion(read.findings);
   const same = candidates(chip).filter((r) => r.id !== read.id && r.sha256 === read.sha256).map((r) => r.number);
   return [
     `seating ${seatingLetter(read.seating)}`, read.reader,
     ...(read.sizeBytes === chip.sizeBytes ? [] : [`${sizeText(read.sizeBytes)}, not the chip’s ${sizeText(chip.sizeBytes)}`]),
     ...(same.length > 0 ? [`equals ${readsText(same)}`] : []),
     ...(read.counted ? [] : ["set aside"]),
+    ...(cause ? [`may not vote: ${causeText(cause)}`] : []),
   ].join(", ");
 }
 

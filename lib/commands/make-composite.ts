@@ -1,6 +1,6 @@
 import { randomUUID } from "node:crypto";
 import { Readable } from "node:stream";
-import { voteExclusion } from "@/lib/core/composite-rules";
+import { readsThatAreOff, voteExclusion } from "@/lib/core/composite-rules";
 import type { DerivedFacts } from "@/lib/core/derived";
 import { crc32Hex } from "@/lib/core/digest";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
@@ -14,6 +14,7 @@ import type { ReadView } from "@/lib/views";
 import { inTransaction, Read, type Transaction } from "@/models";
 import { type Arrived, keep, pathOfImage, receive } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
+import { comparisonOnRecord } from "./compare-images";
 import { inspectImage, recordImage } from "./inspect-image";
 import { judge } from "./judge-read";
 import { type ChipPlace, placeOfChip } from "./place";
@@ -58,11 +59,26 @@ export async function makeComposite(actor: Actor, chipId: string, input: Composi
   });
 }
 
+/** What the comparisons on record say of each two of them; images of one size only, another size is a finding of its own. */
+async function causes(rows: Read[]): Promise<{ a: number; b: number; code: string }[]> {
+  const found: { a: number; b: number; code: string }[] = [];
+  for (const [i, a] of rows.entries()) {
+    for (const b of rows.slice(i + 1)) {
+      if (a.sizeBytes !== b.sizeBytes || a.sha256.equals(b.sha256)) continue;
+      const ref = (row: Read) => ({ sha256: row.sha256.toString("hex"), sizeBytes: row.sizeBytes });
+      const comparison = await comparisonOnRecord(ref(a), ref(b));
+      if (comparison) found.push({ a: a.number, b: b.number, code: comparison.cause.code });
+    }
+  }
+  return found;
+}
+
 async function vote(rows: Read[]): Promise<Made> {
+  const off = readsThatAreOff(rows.map((row) => row.number), await causes(rows));
   const result = await engine("vote", {
     sources: rows.map((row) => ({
       file: pathOfImage(row.sha256.toString("hex")), sha256: row.sha256.toString("hex"), seating: row.seating, number: row.number,
-      excluded: voteExclusion(JSON.parse(row.findings) as Finding[]),
+      excluded: voteExclusion(JSON.parse(row.findings) as Finding[], off.get(row.number)),
     })),
   });
   if ("refused" in result) throw new AppError("rule-against", result.refused);

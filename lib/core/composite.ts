@@ -87,9 +87,9 @@ export function makeComposite(sources: readonly CompositeSource[]): Composite {
   const ordered = [...sources].sort(inOrder);
   const voters = ordered.filter((one) => !one.excluded);
   const excluded = ordered.flatMap((one) => (one.excluded ? [{ ...named(one), cause: one.excluded }] : []));
-  checkVoters(voters, excluded.length);
+  checkVoters(voters, excluded);
   const vote = voteBits(voters.map((one) => one.bytes));
-  checkVote(vote, voters.length);
+  checkVote(vote, voters.length, excluded);
   return {
     ...vote,
     method: `bit majority, n=${voters.length}`, version: COMPOSITE_VERSION,

@@ -38,6 +38,8 @@ describe("a composite", () => {
   it("says before the vote which reads are odd, equal or set aside", () => {
     const reads = [read(1, "a"), read(2, "a", { sizeBytes: 4096, counted: false })];
     expect(candidateWords(reads[1], chip(reads))).toBe("seating A, R2, 4 KiB, not the chip’s 8 KiB, equals Read 1, set aside");
+    const blank = read(3, "c", { findings: [{ code: "blank", severity: "blocks", message: "All FF.", advice: "Check pin 8." }] });
+    expect(candidateWords(blank, chip([blank]))).toBe("seating A, R2, may not vote: it is blank");
   });
 });
 

@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { compositeReport, COMPOSITE_LIMIT, makeComposite, type CompositeSource } from "@/lib/core/composite";
 import { compositeFindings } from "@/lib/core/composite-findings";
-import { CompositeRefusal, voteExclusion } from "@/lib/core/composite-rules";
+import { CompositeRefusal, readsThatAreOff, voteExclusion } from "@/lib/core/composite-rules";
 import { fill, sha256Hex, stream } from "./stream";
 
 const GOOD = stream("bench-seed-1", 4096);
@@ -99,8 +99,33 @@ describe("refuses", () => {
   it("as many votes for as against at one bit of thousands", () => {
     expect(refusalOf([read(flip(7, 7), 1), read({}, 1), read(flip(9, 0), 2), read({ ...flip(7, 7), ...flip(9, 0) }, 2)])).toBe("ties");
   });
-  it("by a sentence with numbers in it", () => {
-    expect(() => makeComposite([a, b, excluded])).toThrow("A composite needs 3 reads that may vote; there are 2 (1 read may not vote). Take more reads.");
+  it("by one sentence that names who may not vote, and why", () => {
+    const numbered = [a, b, excluded].map((one, i) => ({ ...one, number: i + 1 }));
+    expect(() => makeComposite(numbered)).toThrow("Read 3 may not vote because it is shifted by bits, so only 2 reads are left of the 3 that a composite needs: take more reads.");
+    const blank = { ...c, number: 4, excluded: "it is blank (blank)" };
+    expect(() => makeComposite([...numbered.slice(1), blank])).toThrow("Read 3 may not vote because it is shifted by bits, and Read 4 because it is blank, so only 1 read is left of the 3 that a composite needs: take more reads.");
+    expect(() => makeComposite([a, b, { ...c, seating: 1 }, blank])).toThrow(/^All reads that may vote come from one seating, .* Read 4 may not vote because it is blank\.$/);
+    expect(() => makeComposite([a, b])).toThrow("A composite needs 3 reads that may vote; there are 2. Take more reads.");
+  });
+  it("by naming the reads of other lengths and those that are equal", () => {
+    const of = (number: number, one: CompositeSource): CompositeSource => ({ ...one, number });
+    expect(() => makeComposite([of(1, a), of(2, b), of(3, { ...c, bytes: c.bytes.slice(0, 4000) })])).toThrow("different lengths in bytes: Read 3 has 4,000 and Reads 1 and 2 have 4,096.");
+    expect(() => makeComposite([of(1, a), of(2, a), of(3, b), of(4, { ...b, seating: 2 })])).toThrow(/^Reads [13] and [24] are equal and Reads [13] and [24] are equal: /);
+    expect(() => makeComposite([of(1, a), of(2, { ...a, seating: 2 }), of(5, { ...a, seating: 3 }), of(6, b)])).toThrow(/^Reads 1, 2 and 5 are equal, and equal reads beat a vote\./);
+  });
+});
+
+describe("reads that are off as a whole", () => {
+  const pair = (a: number, b: number, code: string) => ({ a, b, code });
+  it("are those that most others differ from in the same place-by-place fault", () => {
+    const off = readsThatAreOff([1, 2, 3], [pair(1, 2, "random-flips"), pair(1, 3, "byte-slip"), pair(2, 3, "byte-slip")]);
+    expect([...off]).toEqual([[3, ["byte-slip", "byte-slip"]]]);
+    expect(voteExclusion([], off.get(3))).toBe("it is shifted by bytes (byte-slip)");
+  });
+  it("are nobody where as many are off as are not, or where all faults are local", () => {
+    expect(readsThatAreOff([1, 2], [pair(1, 2, "inverted")]).size).toBe(0);
+    expect(readsThatAreOff([1, 2, 3, 4], [pair(1, 3, "rotated"), pair(1, 4, "rotated"), pair(2, 3, "rotated"), pair(2, 4, "rotated")]).size).toBe(0);
+    expect(readsThatAreOff([1, 2, 3], [pair(1, 2, "lost-contact"), pair(1, 3, "random-flips"), pair(2, 3, "unclassified")]).size).toBe(0);
   });
 });
 

@@ -72,4 +72,17 @@ describe("a composite", () => {
     await expect(makeComposite(lead, chip.chipId, { reads: [1, 4, 6, 7, 8], reason: REASON })).rejects.toThrow(/equal reads beat a vote/);
     expect((await chipView(lead, chip.chipId)).reads.filter((r) => r.derived)).toEqual([]);
   });
+
+  it("is refused with the name of the read that may not vote, and why: by its own finding or by what it looks like beside the others", async () => {
+    const { technician, lead, chip, image } = await makeNoisy();
+    await store(technician, chip.chipId, "before", Buffer.alloc(SIZE, 0xff), 3);
+    await store(technician, chip.chipId, "before", Buffer.concat([image.subarray(1), Buffer.of(0x5a)]), 3);
+    await expect(makeComposite(lead, chip.chipId, { reads: [1, 4, 6], reason: REASON })).rejects.toMatchObject({
+      code: "rule-against", detail: "Read 6 may not vote because it is blank, so only 2 reads are left of the 3 that a composite needs: take more reads.",
+    });
+    await expect(makeComposite(lead, chip.chipId, { reads: [1, 4, 7], reason: REASON })).rejects.toThrow(
+      "Read 7 may not vote because it is shifted by bytes, so only 2 reads are left of the 3 that a composite needs: take more reads.");
+    const made = await makeComposite(lead, chip.chipId, { reads: [1, 2, 4, 6, 7], reason: REASON });
+    expect(made.derived).toMatchObject({ voters: expect.arrayContaining([1, 2, 4]), excluded: expect.arrayContaining([6, 7]) });
+  });
 });
