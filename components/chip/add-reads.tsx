@@ -9,7 +9,7 @@ import { Note } from "@/components/ui/note";
 import { Select } from "@/components/ui/select";
 import { TextArea } from "@/components/ui/text-area";
 import { useSay } from "@/components/ui/toast";
-import { sizeText } from "@/lib/core/quantity";
+import { countOf, sizeText } from "@/lib/core/quantity";
 import { type Format, METHODS, type Stage } from "@/lib/core/words";
 import type { ChipView } from "@/lib/views";
 import { METHOD_WORD, nameOf, namesOf, twins } from "./chip-words";
@@ -21,6 +21,7 @@ import { HeldFiles } from "./held-files";
 import { clipCaution, contentsOf, fieldsToSend, FIELD_NAMES, likelyStage, numberTyped, seatingOptions, SUPPLY_OPTIONS, supplyWarning, uploadForm, type UploadFormValues } from "./upload-form";
 import { UploadLine } from "./upload-line";
 import { useUploads } from "./use-uploads";
+import { walkText } from "./walk-text";
 
 const METHOD_OPTIONS = [{ value: "", label: "Not said" }, ...METHODS.map((m) => ({ value: m, label: METHOD_WORD[m] }))];
 const HELD_OPTIONS = [{ value: "", label: "Not said" }, { value: "true", label: "Held in reset" }, { value: "false", label: "Not held" }];
@@ -30,7 +31,14 @@ const text = (value: unknown) => (typeof value === "string" ? value : value === 
 export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Promise<unknown> }) {
   const say = useSay();
   const contents = contentsOf(chip);
-  const [held, setHeld] = useState<readonly FileLook[]>([]);
+  const [held, setHeldShown] = useState<readonly FileLook[]>([]);
+  // looking into a large text takes a moment: files dropped meanwhile must not push out what waits by then
+  const waiting = useRef<readonly FileLook[]>([]);
+  const setHeld = (looks: readonly FileLook[]) => {
+    waiting.current = looks;
+    setHeldShown(looks);
+  };
+  const [looking, setLooking] = useState(0);
   const [incomplete, setIncomplete] = useState(false);
   const first = likelyStage(chip, contents);
   const { register, setValue, control, trigger, getValues, formState: { errors } } = useForm<z.input<typeof uploadForm>, unknown, z.output<typeof uploadForm>>({
@@ -84,7 +92,10 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
   }
 
   async function take(files: File[]) {
-    const looks = [...held, ...await Promise.all(files.map(lookAt))];
+    setLooking((n) => n + files.length);
+    const fresh = await Promise.all(files.map((file) => lookAt(file, walkText)));
+    setLooking((n) => n - files.length);
+    const looks = [...waiting.current, ...fresh];
     // what a file looks like is a proposal: one that isn't what the form says waits for a person
     if (looks.some((one) => heldBecause(one, format, frame) !== null)) setHeld(looks);
     else await sendAll(looks);
@@ -97,6 +108,7 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
       <div className="grid content-start gap-3">
         <Note kind="caution" title={`Before you clip on: ${content.words}`}>{clipCaution(stage)}</Note>
         <DropZone title="Drop chip images here" onFiles={(files) => void take(files)}>Raw binary, {sizes} each, or a text of records (Intel HEX, S-record). Several files at once are fine; they share what the form says.</DropZone>
+        {looking > 0 ? <p role="status" className="text-t2 text-ink-2">Looking into {countOf(looking, "file")}.</p> : null}
         <HeldFiles held={held} format={format} window={frame} incomplete={incomplete} onFormat={(value) => setValue("format", value, { shouldValidate: true })}
           onSend={() => void sendAll(held)} onDrop={() => { setHeld([]); setIncomplete(false); }} />
         <ul aria-label="Files">{uploads.map((upload) => <UploadLine key={upload.key} upload={upload} queue={queue} chip={chip} />)}</ul>

@@ -37,8 +37,13 @@ export function formatByLook(name: string, head: string): { looks: Format; becau
   return { looks: "raw", because: "its first bytes are no text of records" };
 }
 
-/** The addresses of a text, or why it can't be walked. */
-export function addressesIn(format: Exclude<Format, "raw">, bytes: Uint8Array): Pick<FileLook, "addresses" | "problem"> {
+export type TextLook = Pick<FileLook, "addresses" | "problem">;
+export type WalkText = (file: File, format: Exclude<Format, "raw">) => Promise<TextLook>;
+
+export const CANT_BE_READ = "This file can't be read. It may have changed or moved since it was chosen; choose it again.";
+
+/** The addresses of a text, or why it can't be walked. Takes about a second for 64 MiB. */
+export function addressesIn(format: Exclude<Format, "raw">, bytes: Uint8Array): TextLook {
   try {
     const addresses = addressesOf(format, bytes);
     return { addresses, problem: addresses ? null : "It gives no data at all. Save the image again." };
@@ -48,16 +53,17 @@ export function addressesIn(format: Exclude<Format, "raw">, bytes: Uint8Array): 
   }
 }
 
-export async function lookAt(file: File): Promise<FileLook> {
+/** `walk` gives the addresses of a text; the page walks in a thread of its own (walk-text.ts). */
+export async function lookAt(file: File, walk: WalkText): Promise<FileLook> {
   try {
     const head = new TextDecoder("latin1").decode(await file.slice(0, FIRST_BYTES).arrayBuffer());
     const seen = formatByLook(file.name, head);
     if (seen.looks === "raw") return { file, ...seen, addresses: null, problem: null };
     if (file.size > MAX_IMAGE_BYTES) return { file, ...seen, addresses: null, problem: `It is larger than ${sizeText(MAX_IMAGE_BYTES)}. Save the image as raw binary.` };
-    return { file, ...seen, ...addressesIn(seen.looks, new Uint8Array(await file.arrayBuffer())) };
+    return { file, ...seen, ...await walk(file, seen.looks) };
   } catch (error) {
     if (!(error instanceof DOMException)) throw error;
-    return { file, looks: "raw", because: "it could not be looked into", addresses: null, problem: "This file can't be read. It may have changed or moved since it was chosen; choose it again." };
+    return { file, looks: "raw", because: "it could not be looked into", addresses: null, problem: CANT_BE_READ };
   }
 }
 

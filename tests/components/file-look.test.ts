@@ -1,8 +1,10 @@
 import { describe, expect, it } from "vitest";
-import { formatByLook, heldBecause, lookAt } from "@/components/chip/file-look";
+import { addressesIn, formatByLook, heldBecause, lookAt as lookBy } from "@/components/chip/file-look";
 import { fieldsToSend, FIELD_NAMES, uploadForm, type UploadFormValues } from "@/components/chip/upload-form";
 import { fromImage } from "@/lib/core/text-format";
 
+/** in the browser a worker does this */
+const lookAt = (file: File) => lookBy(file, async (text, format) => addressesIn(format, new Uint8Array(await text.arrayBuffer())));
 const image = Uint8Array.from({ length: 300 }, (_, i) => (i * 7) & 0xff);
 const fileOf = (bytes: Uint8Array, name: string) => new File([new Uint8Array(bytes)], name);
 const form = { stage: "before", seating: "1", reader: "R2", method: "", toolVersion: "", adapter: "", clockKilohertz: "", controllerHeld: "", note: "", supplyMillivolts: "3300" };
