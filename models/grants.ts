@@ -5,6 +5,10 @@
 export const GRANTS: { table: string; grants: string[] }[] = [
   { table: "custody_entries", grants: ["SELECT", "INSERT"] },
   { table: "custody_heads", grants: ["SELECT", "INSERT", "UPDATE"] },
+  { table: "seals", grants: ["SELECT", "INSERT"] },
+  { table: "chain_checks", grants: ["SELECT", "INSERT", "UPDATE"] },
+  { table: "user_cases", grants: ["SELECT", "INSERT", "DELETE"] },
+  { table: "hand_overs", grants: ["SELECT", "INSERT", "UPDATE (confirmed_by, confirmed_at, confirmation)"] },
   { table: "users", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "sessions", grants: ["SELECT", "INSERT", "UPDATE", "DELETE"] },
   { table: "sign_in_attempts", grants: ["SELECT", "INSERT", "DELETE"] },
@@ -16,7 +20,7 @@ export const GRANTS: { table: string; grants: string[] }[] = [
   { table: "drives", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "boards", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "chips", grants: ["SELECT", "INSERT", "UPDATE"] },
-  { table: "images", grants: ["SELECT", "INSERT", "UPDATE (state, facts, engine_version)"] },
+  { table: "images", grants: ["SELECT", "INSERT", "UPDATE (state, facts, engine_version, checked_at)"] },
   { table: "comparisons", grants: ["SELECT", "INSERT"] },
   {
     table: "reads",

@@ -10,6 +10,8 @@ export class Image extends Model<InferAttributes<Image>, InferCreationAttributes
   declare engineVersion: CreationOptional<string>;
   declare state: CreationOptional<"sound" | "damaged" | "missing">;
   declare storedAt: Date;
+  /** when the stored bytes were last read whole and found equal to their digest, or not; null since they were stored */
+  declare checkedAt: CreationOptional<Date | null>;
 }
 
 export function initImage(sequelize: Sequelize): void {
@@ -21,5 +23,6 @@ export function initImage(sequelize: Sequelize): void {
     engineVersion: { ...text(16), defaultValue: "1" },
     state: { ...text(10), defaultValue: "sound" },
     storedAt: time(),
+    checkedAt: time(true),
   }, { sequelize, modelName: "Image", tableName: "images" });
 }

@@ -18,6 +18,10 @@ import { Approval, initApproval } from "./approval";
 import { Transfer, initTransfer } from "./transfer";
 import { CustodyHead, initCustodyHead } from "./custody-head";
 import { CustodyEntry, initCustodyEntry } from "./custody-entry";
+import { Seal, initSeal } from "./seal";
+import { ChainCheck, initChainCheck } from "./chain-check";
+import { HandOver, initHandOver } from "./hand-over";
+import { UserCase, initUserCase } from "./user-case";
 import { Mail, initMail } from "./mail";
 import { Share, initShare } from "./share";
 import { IdempotencyKey, initIdempotencyKey } from "./idempotency-key";
@@ -43,6 +47,10 @@ for (const init of [
   initTransfer,
   initCustodyHead,
   initCustodyEntry,
+  initSeal,
+  initChainCheck,
+  initHandOver,
+  initUserCase,
   initMail,
   initShare,
   initIdempotencyKey,
@@ -81,6 +89,10 @@ export {
   Transfer,
   CustodyHead,
   CustodyEntry,
+  Seal,
+  ChainCheck,
+  HandOver,
+  UserCase,
   Mail,
   Share,
   IdempotencyKey,

@@ -10,6 +10,10 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
   declare passwordHash: string;
   declare mustChangePassword: CreationOptional<boolean>;
   declare disabledAt: CreationOptional<Date | null>;
+  /** an auditor's account may carry an end */
+  declare endsAt: CreationOptional<Date | null>;
+  /** true: an auditor who sees the cases of `user_cases` and nothing else */
+  declare limited: CreationOptional<boolean>;
   declare createdAt: Date;
 }
 
@@ -22,6 +26,8 @@ export function initUser(sequelize: Sequelize): void {
     passwordHash: text(255),
     mustChangePassword: yes(false),
     disabledAt: time(true),
+    endsAt: time(true),
+    limited: yes(false),
     createdAt: time(),
   }, { sequelize, modelName: "User", tableName: "users" });
 }

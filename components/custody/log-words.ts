@@ -82,6 +82,7 @@ const PROBLEM: Record<string, string> = {
 
 /** One finding of the check in plain words. */
 export function problemWords({ seq, problem, expected, found }: CheckFinding): string {
+  if (problem === "head-was-behind") return "When this entry was written, somebody had turned the log's head back behind entries that were there.";
   if (problem === "tail-missing") return `The end of the log is cut off: ${expected ?? "more entries"} should be there, ${found ?? "fewer"} are.`;
   if (problem === "head") return "The head beside the log doesn't name its last entry: entries were added or taken away without Twinread.";
   const words = PROBLEM[problem] ?? `doesn't pass the check (${problem})`;

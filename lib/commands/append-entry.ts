@@ -1,16 +1,15 @@
 import { createHash } from "node:crypto";
-import { QueryTypes, UniqueConstraintError } from "sequelize";
+import { Op, QueryTypes } from "sequelize";
 import { type Action, ACTIONS, type Facts } from "@/lib/core/custody-actions";
 import { type CustodyBody, custodyText, signedBytes, ZERO_HASH } from "@/lib/core/custody";
 import type { Actor } from "@/lib/core/words";
 import { env } from "@/lib/env";
-import { AppError } from "@/lib/errors";
 import { MAX_CUSTODY_BODY_BYTES } from "@/lib/limits";
 import { connection, CustodyEntry, CustodyHead, type Transaction } from "@/models";
 import { logKey } from "@/storage";
 
 export interface Subject {
-  type: "case" | "drive" | "board" | "chip" | "read" | "approval" | "transfer" | "share" | "image" | "user" | "token" | "policy" | "key" | "bundle";
+  type: "case" | "drive" | "board" | "chip" | "read" | "approval" | "transfer" | "share" | "image" | "user" | "token" | "policy" | "key" | "bundle" | "seal" | "item";
   id: string;
 }
 
@@ -18,19 +17,34 @@ interface Head {
   seq: number;
   hash: Buffer;
   at: string;
+  /** where the head stood when somebody had turned it back behind the last entry */
+  behind?: number;
 }
-
-const HEAD_BEHIND = "This custody log holds more entries than its head says, so nothing can be added. Run the check of the store and put the database back from a backup.";
 
 /** Locks the chain's head until the transaction ends: the first statement of every command on a drive. */
 export async function lockChain(tx: Transaction, chain: string): Promise<Head> {
   const locked = await selectHead(tx, chain);
-  if (locked) return locked;
+  if (locked) return atItsEnd(tx, chain, locked);
   await connection().query(
     "INSERT IGNORE INTO custody_heads (chain_id, seq, hash, at) VALUES (?, 0, ?, '1970-01-01T00:00:00.000000Z')",
     { replacements: [chain, Buffer.from(ZERO_HASH, "hex")], transaction: tx },
   );
-  return (await selectHead(tx, chain))!;
+  return atItsEnd(tx, chain, (await selectHead(tx, chain))!);
+}
+
+/** A head that was turned back does not stop the log: the next entry follows the last one that there is, and says so. */
+async function atItsEnd(tx: Transaction, chain: string, head: Head): Promise<Head> {
+  const last = await CustodyEntry.findOne({ where: { chainId: chain, seq: { [Op.gt]: head.seq } }, order: [["seq", "DESC"]], transaction: tx });
+  return last ? { seq: last.seq, hash: last.hash, at: atOf(last.body) ?? head.at, behind: head.seq } : head;
+}
+
+function atOf(body: Buffer): string | null {
+  try {
+    const { at } = JSON.parse(body.toString("utf8")) as { at?: unknown };
+    return typeof at === "string" ? at : null;
+  } catch {
+    return null;
+  }
 }
 
 async function selectHead(tx: Transaction, chain: string): Promise<Head | undefined> {
@@ -52,7 +66,7 @@ export async function appendEntry<A extends Action>(
     "SELECT DATE_FORMAT(UTC_TIMESTAMP(6), '%Y-%m-%dT%H:%i:%s.%fZ') AS now", { transaction: tx, type: QueryTypes.SELECT },
   );
   const clockBehindMs = now < head.at ? Math.ceil(Date.parse(head.at) - Date.parse(now)) : undefined;
-  const parsed = ACTIONS[action].facts.parse(clockBehindMs === undefined ? facts : { ...facts, clockBehindMs });
+  const parsed = ACTIONS[action].facts.parse({ ...facts, clockBehindMs, headBehind: head.behind });
   // an absent optional fact is left out, never written as undefined
   const checked = JSON.parse(JSON.stringify(parsed)) as Record<string, unknown>;
   const seq = head.seq + 1;
@@ -64,15 +78,9 @@ export async function appendEntry<A extends Action>(
   if (bytes.length > MAX_CUSTODY_BODY_BYTES) throw new Error(`custody body of ${bytes.length} bytes is above the limit`);
   const hash = createHash("sha256").update(bytes).digest();
   const key = logKey();
-  try {
-    await CustodyEntry.create({
-      chainId: chain, seq, body: bytes, hash, prev: head.hash, keyId: key.keyId, signature: key.sign(signedBytes(bytes)), action,
-    }, { transaction: tx });
-  } catch (error) {
-    // the head is locked: a place that is taken already means that somebody turned the head back
-    if (error instanceof UniqueConstraintError) throw new AppError("rule-against", HEAD_BEHIND);
-    throw error;
-  }
+  await CustodyEntry.create({
+    chainId: chain, seq, body: bytes, hash, prev: head.hash, keyId: key.keyId, signature: key.sign(signedBytes(bytes)), action,
+  }, { transaction: tx });
   await CustodyHead.update({ seq, hash, at: body.at }, { where: { chainId: chain }, transaction: tx });
   return { seq, hash: hash.toString("hex") };
 }

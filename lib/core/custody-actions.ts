@@ -1,5 +1,7 @@
 import { z } from "zod";
-import { BOARD_ROLES, BUSES, FORMATS, METHODS, readName, ROLES, seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS } from "./words";
+import {
+  BOARD_ROLES, BUSES, FORMATS, ITEM_TYPES, KEY_PURPOSES, METHODS, readName, ROLES, SEAL_CAUSES, seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS,
+} from "./words";
 
 /**
  * The closed list of what a custody log can say (CUSTODY.md): for each action the shape of its facts, the sentence for
@@ -12,8 +14,9 @@ const words = z.string();
 const size = z.int().min(0);
 const optional = z.string().nullable();
 const person = z.object({ id: uuid, name: words });
-/** appended when the database's clock went back; see append-entry */
-const clock = { clockBehindMs: z.int().optional() };
+const party = z.object({ person: words, place: words });
+/** set by append-entry: the database's clock went back; the chain's head had been turned back to this place */
+const clock = { clockBehindMs: z.int().optional(), headBehind: z.int().optional() };
 
 const change = z.object({ field: words, from: z.union([words, z.int(), z.boolean(), z.null()]), to: z.union([words, z.int(), z.boolean(), z.null()]) });
 const readRef = { read: z.object({ id: uuid, stage: z.enum(STAGES), number: z.int() }), chip: z.object({ id: uuid, designator: words }) };
@@ -79,6 +82,14 @@ export const ACTIONS = {
   "readback.differs": spec({ ...readRef, transfer: uuid, sha256: sha, approvedSha256: sha, diagnosis: words }, (f) => `${name(f)} differs from the approved image: ${f.diagnosis}`, "differs"),
   "image.found-damaged": spec({ sha256: sha, state: z.enum(["damaged", "missing"]), where: words }, (f) => `The stored image ${short(f.sha256)} is ${f.state} (found by ${f.where})`, "differs"),
   "image.found-sound": spec({ sha256: sha, where: words }, (f) => `The stored image ${short(f.sha256)} equals its digest again (found by ${f.where})`),
+  "image.second-look": spec({ sha256: sha, where: words }, (f) => `The stored image ${short(f.sha256)} read once as damaged and at the second look as sound (${f.where}): look at the disk`, "differs"),
+  "images.checked": spec({ images: z.int(), bytes: z.int(), damaged: z.int(), missing: z.int(), oldestBefore: optional },
+    (f) => `Checked ${f.images} stored ${f.images === 1 ? "image" : "images"} of this drive: ${f.damaged + f.missing === 0 ? "each equals its digest" : `${f.damaged} damaged, ${f.missing} missing`}`,
+    (f) => (f.damaged + f.missing > 0 ? "differs" : "entry")),
+  "item.handed-over": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, condition: words, sealNumber: optional, note: optional },
+    (f) => `Handed ${f.item.name} over from ${f.from.person}, ${f.from.place}, to ${f.to.person}, ${f.to.place}: ${f.condition}${f.sealNumber ? `; seal ${f.sealNumber}` : ""}`),
+  "item.received": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, condition: words, sealNumber: optional, confirmation: optional },
+    (f) => `${f.to.person} confirmed having ${f.item.name} at ${f.to.place}${f.confirmation ? `: ${f.confirmation}` : ""}`),
   "bundle.started": spec({ caseRef: words, head: z.object({ seq: z.int(), hash: sha }) }, (f) => `Started the case bundle of ${f.caseRef}`),
   "bundle.completed": spec({ caseRef: words, tagManifestSha256: sha, upToSeq: z.int() }, (f) => `Completed the case bundle of ${f.caseRef}, tag manifest ${short(f.tagManifestSha256)}`, "signed"),
   "summary.sent": spec({ caseRef: words, share: uuid, expiresAt: words }, (f) => `Sent the verification summary of ${f.caseRef} to the customer`),
@@ -90,7 +101,9 @@ export const ACTIONS = {
   "token.made": spec({ user: person, token: uuid, name: words }, (f) => `Made the bench token ${f.name} for ${f.user.name}`),
   "token.withdrawn": spec({ user: person, token: uuid, name: words }, (f) => `Withdrew the bench token ${f.name} of ${f.user.name}`),
   "policy.changed": spec({ changes: z.array(change) }, (f) => `Changed the policy: ${changes(f.changes)}`),
-  "key.introduced": spec({ keyId: sha, purpose: z.enum(["log", "seal"]), publicKeyPem: words }, (f) => `Introduced the ${f.purpose} key ${short(f.keyId)}`, "signed"),
+  "key.introduced": spec({ keyId: sha, purpose: z.enum(KEY_PURPOSES), publicKeyPem: words, reason: words.optional() }, (f) => `Introduced the ${f.purpose} key ${short(f.keyId)}`, "signed"),
+  "seal.made": spec({ number: z.int(), sha256: sha, root: sha, chains: z.int(), keyId: sha, cause: z.enum(SEAL_CAUSES) },
+    (f) => `Made seal ${f.number} over ${f.chains} ${f.chains === 1 ? "log" : "logs"}, SHA-256 ${short(f.sha256)}`, "signed"),
   "sign-in.limited": spec({ address: words, accountDigest: sha }, (f) => `Refused sign-ins from ${f.address}: too many attempts`, "differs"),
 };
 export type Action = keyof typeof ACTIONS;

@@ -39,7 +39,7 @@ export function signedBytes(body: string | Uint8Array): Uint8Array<ArrayBuffer> 
 
 export type ChainProblem =
   | "not-readable" | "not-canonical" | "wrong-shape" | "other-chain" | "sequence" | "time-went-back" | "prev" | "stored-hash"
-  | "unknown-key" | "signature" | "head" | "tail-missing" | "could-not-check";
+  | "unknown-key" | "signature" | "head" | "head-was-behind" | "tail-missing" | "could-not-check";
 
 export interface ChainFinding {
   /** the entry's place in the chain; null for the head */
@@ -167,6 +167,8 @@ export async function checkChain(
         if (body.at < previous.at) report("time-went-back", `${previous.at} or later`, body.at);
         next.at = body.at;
       }
+      const behind = body.facts?.headBehind;
+      if (behind !== undefined) report("head-was-behind", `the head at entry ${expectedSeq - 1}`, `at entry ${text(behind)}`);
       if (previous.hash !== null && body.prev !== previous.hash) report("prev", previous.hash, text(body.prev));
     }
     try {

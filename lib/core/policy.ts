@@ -39,6 +39,11 @@ const RULES = {
   "user.manage": ["admin"],
   "outbox.read": ["admin"],
   "assessment.record": ["auditor"],
+  "audit.read": ["auditor", "lead", "admin"],
+  "seal.make": ["auditor", "lead", "admin"],
+  "key.change": ["admin"],
+  "item.hand-over": BENCH,
+  "item.confirm": BENCH,
 } as const satisfies Record<string, readonly string[]>;
 
 export type Verb = keyof typeof RULES;

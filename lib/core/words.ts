@@ -36,6 +36,17 @@ export type Format = (typeof FORMATS)[number];
 export const TRANSFER_KINDS = ["write", "chip-moved"] as const;
 export type TransferKind = (typeof TRANSFER_KINDS)[number];
 
+/** Why a seal was made: the day's own, before a bundle or a summary left, or because somebody asked. */
+export const SEAL_CAUSES = ["daily", "bundle", "summary", "asked"] as const;
+export type SealCause = (typeof SEAL_CAUSES)[number];
+
+/** What a hand-over moves from person to person and place to place. */
+export const ITEM_TYPES = ["drive", "board", "chip"] as const;
+export type ItemType = (typeof ITEM_TYPES)[number];
+
+export const KEY_PURPOSES = ["log", "seal"] as const;
+export type KeyPurpose = (typeof KEY_PURPOSES)[number];
+
 export const SEVERITIES = ["blocks", "reason", "note"] as const;
 export type Severity = (typeof SEVERITIES)[number];
 

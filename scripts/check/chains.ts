@@ -20,6 +20,7 @@ const SENTENCE: Record<ChainProblem, string> = {
   "unknown-key": "The entry is signed with a key that no log introduces.",
   signature: "The signature does not fit the entry: it was changed, or somebody else wrote it.",
   head: "The log's head does not stand at its last entry.",
+  "head-was-behind": "The log's head had been turned back when this entry was written.",
   "tail-missing": "The log ends before its head: entries at the end are missing.",
   "could-not-check": "The entry could not be checked.",
 };

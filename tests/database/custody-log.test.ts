@@ -42,10 +42,10 @@ describe("the app's database user", () => {
     await checkDatabase();
   });
 
-  it("cannot turn the head of a chain back, nor move it by two", async () => {
+  it("cannot turn the head of a chain back, nor move it past the last entry", async () => {
     const { chip } = await makeReadyBench();
     for (const step of ["seq - 1", "seq + 2", "seq"]) {
-      await expect(raw(`UPDATE custody_heads SET seq = ${step} WHERE chain_id = '${chip.driveId}'`), step).rejects.toThrow("one entry forward");
+      await expect(raw(`UPDATE custody_heads SET seq = ${step} WHERE chain_id = '${chip.driveId}'`), step).rejects.toThrow("only moves forward");
     }
   });
 
@@ -173,16 +173,27 @@ describe("a chain that was cut or turned back", () => {
     await approve(bench.lead, bench.chip, bench.image);
   });
 
-  it("is found when its head is turned back; nothing can be added over what is there", async () => {
+  it("goes on after the last entry when its head is turned back, says so for good, and approves nothing until that is assessed", async () => {
     const bench = await makeReadyBench();
     const last = await lastSeq(bench.chip.driveId);
     const { prev } = (await CustodyEntry.findOne({ where: { chainId: bench.chip.driveId, seq: last } }))!;
     await withoutTriggers(["custody_heads"], (db) => db.query("UPDATE custody_heads SET seq = ?, hash = ? WHERE chain_id = ?", [last - 1, prev, bench.chip.driveId]));
     expect(await problems(bench.chip.driveId)).toEqual(["head: head"]);
-    const stuck = { status: 409, detail: "This custody log holds more entries than its head says, so nothing can be added. Run the check of the store and put the database back from a backup." };
-    expect(await refusal(correctDrive(bench.technician, bench.chip.driveId, { changes: { interface: "SATA" }, reason: "It says so." }))).toMatchObject(stuck);
-    expect(await refusal(approve(bench.lead, bench.chip, bench.image))).toMatchObject(stuck);
-    expect((await checkCustody(bench.chip.driveId)).entries).toBe(last);
+    await correctDrive(bench.technician, bench.chip.driveId, { changes: { interface: "SATA" }, reason: "It says so." });
+    expect((await logged(bench.chip.driveId, "drive.corrected"))[0].headBehind).toBe(last - 1);
+    expect(await problems(bench.chip.driveId)).toEqual([`${last + 1}: head-was-behind`]);
+    await expectClosed(bench, null);
+    await assessLog(await makeUser("auditor"), bench.chip.driveId, TEXT);
+    await approve(bench.lead, bench.chip, bench.image);
+  });
+
+  it("goes on when its head is gone", async () => {
+    const { technician, chip } = await makeReadyBench();
+    const last = await lastSeq(chip.driveId);
+    await withoutTriggers(["custody_heads"], (db) => db.query("DELETE FROM custody_heads WHERE chain_id = ?", [chip.driveId]));
+    expect(await problems(chip.driveId)).toEqual(["head: head"]);
+    await correctDrive(technician, chip.driveId, { changes: { interface: "SATA" }, reason: "It says so." });
+    expect(await problems(chip.driveId)).toEqual([`${last + 1}: head-was-behind`]);
   });
 
   it("is found when an entry in the middle is gone", async () => {
