@@ -20,3 +20,13 @@ export function allow(actor: Actor, verb: Verb, thing: Thing = {}): void {
 export function notFound(what: string): AppError {
   return new AppError("not-found", `There is no ${what} under this address. Check the link.`);
 }
+
+/** The only cases that this actor may see, for a query's condition; null when there is no limit. */
+export function casesOf(actor: Actor): readonly string[] | null {
+  return actor.cases ?? null;
+}
+
+/** A case outside an auditor's list is not there for them: 404, like one that never was. */
+export function allowCase(actor: Actor, caseId: string, what = "case"): void {
+  if (actor.cases && !actor.cases.includes(caseId)) throw notFound(what);
+}

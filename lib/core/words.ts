@@ -8,6 +8,8 @@ export interface Actor {
   id: string;
   name: string;
   role: Role | "system";
+  /** ids of the only cases that this auditor may see; left out where the account carries no list */
+  cases?: readonly string[];
 }
 
 /** The nil UUID: Twinread as an actor, and the chain `workshop`. */
