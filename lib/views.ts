@@ -118,6 +118,13 @@ export interface ApprovalRequestView {
   sentBack: { by: PersonView; at: string; reason: string } | null;
 }
 
+/** An image that nothing read as a whole: which read it is kept as, of how many reads it was made, in how many seatings. */
+export interface CompositeMark {
+  number: number;
+  reads: number;
+  seatings: number;
+}
+
 export interface ChipSummary {
   id: string;
   designator: string;
@@ -140,8 +147,10 @@ export interface ChipSummary {
   countedReads: number;
   agreeingReads: number;
   donorSaved: boolean;
-  /** strip thumbnails: at most two distinct images, 64 cells, and the lane between them */
-  thumbnail: { images: string[]; lane: number[] | null };
+  /** strip thumbnails: at most two distinct images, 64 cells, and the lane between them; two reads, or the approved image over a read-back that differs */
+  thumbnail: { images: string[]; lane: number[] | null; shows: "reads" | "read-back" };
+  /** set when the image that the chip stands for, approved or still to be approved, is a composite */
+  composite: CompositeMark | null;
 }
 
 export interface ChipView extends ChipSummary {
@@ -404,6 +413,8 @@ export interface SummaryView {
       crc32: string | null;
       agreeingReads: number;
       seatings: number;
+      /** the image was put together from several reads: it must say so */
+      composite: CompositeMark | null;
       readBacks: number;
       approvedBy: string | null;
       approvedAt: string | null;

@@ -1,4 +1,5 @@
 import Link from "next/link";
+import { compositeWords } from "@/components/composite/composite-words";
 import { StripThumb } from "@/components/strip/strip-thumb";
 import { ButtonLink } from "@/components/ui/button";
 import { Mark } from "@/components/ui/mark";
@@ -34,7 +35,7 @@ export function BenchLine({ row, acts, signs }: { row: BenchRow; acts: boolean; 
       <td className="chp"><DesignatorPlate designator={donor?.designator ?? row.chip.designator} board={donor ? "donor" : "original"} word /></td>
       <td className="nxt">{step}{reason ? <small>{reason}</small> : null}{row.nextWhy ? <small>{row.nextWhy}</small> : null}</td>
       <td className="with">{row.with}</td>
-      <td className="img"><StripThumb thumbnail={row.chip.thumbnail} /></td>
+      <td className="img"><StripThumb thumbnail={row.chip.thumbnail} />{row.chip.composite ? <small>{compositeWords(row.chip.composite)}</small> : null}</td>
       <td className="act"><ButtonLink size="small" href={action.href} aria-label={`${action.word}: ${row.chip.designator} of case ${row.caseRef}`}>{action.word}</ButtonLink></td>
     </>
   );

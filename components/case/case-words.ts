@@ -1,3 +1,4 @@
+import { compositeWords } from "@/components/composite/composite-words";
 import { listText } from "@/lib/core/quantity";
 import type { ChipStateCode, Policy } from "@/lib/core/words";
 import type { CaseView, ChipSummary, DriveView } from "@/lib/views";
@@ -28,8 +29,9 @@ export function waitsFor(drives: readonly DriveView[]): string | null {
   return `opens when ${listText(open.map((chip) => chip.designator))} ${open.length === 1 ? "is" : "are"} verified`;
 }
 
-/** "none yet", "2 of 3 agree", "4 agree" */
-export function readsWords(chip: Pick<ChipSummary, "countedReads" | "agreeingReads">, policy: Policy): string {
+/** "none yet", "2 of 3 agree", "4 agree", "composite of 5 reads" */
+export function readsWords(chip: Pick<ChipSummary, "countedReads" | "agreeingReads" | "composite">, policy: Policy): string {
+  if (chip.composite) return compositeWords(chip.composite);
   if (chip.countedReads === 0) return "none yet";
   if (chip.agreeingReads === chip.countedReads && chip.countedReads >= policy.reads) return `${chip.agreeingReads} agree`;
   return `${chip.agreeingReads} of ${Math.max(policy.reads, chip.countedReads)} agree`;

@@ -1,7 +1,7 @@
 import { LEAST_READS, voteExclusion } from "@/lib/core/composite-rules";
 import { countOf, listText, readsText, sizeText, withCommas } from "@/lib/core/quantity";
 import { type FindingCode, readName, seatingLetter } from "@/lib/core/words";
-import type { ChipView, ReadView, VotesView } from "@/lib/views";
+import type { ChipView, CompositeMark, ReadView, VotesView } from "@/lib/views";
 
 export type Standing = VotesView["disputed"][number]["standing"];
 
@@ -12,6 +12,11 @@ export const STANDING_WORD: Record<Standing, string> = {
 /** "Read 5, composite": a composite never goes by the plain name of a read where reads are listed. */
 export function readTitle(read: Pick<ReadView, "stage" | "number" | "derived">): string {
   return `${readName(read.stage, read.number)}${read.derived ? ", composite" : ""}`;
+}
+
+/** "composite of 3 reads": beside the image wherever a chip stands in a list. */
+export function compositeWords({ reads }: Pick<CompositeMark, "reads">): string {
+  return `composite of ${countOf(reads, "read")}`;
 }
 
 /** "Made of Reads 1, 2 and 3 by majority", and who was left out. */

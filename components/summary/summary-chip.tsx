@@ -5,7 +5,7 @@ import { Mark } from "@/components/ui/mark";
 import { DesignatorPlate } from "@/components/ui/plate";
 import { dayText } from "@/components/ui/times";
 import { countOf, sizeText } from "@/lib/core/quantity";
-import { seatingsText, type SummaryChip as Chip } from "./summary-words";
+import { compositeSentences, seatingsText, type SummaryChip as Chip } from "./summary-words";
 
 function Fact({ term, children, whole, mono }: { term: string; children: ReactNode; whole?: boolean; mono?: boolean }) {
   return <div className={whole ? "whole" : ""}><dt>{term}</dt><dd className={mono ? "font-mono" : ""}>{children}</dd></div>;
@@ -23,7 +23,7 @@ export function SummaryChip({ chip, timeZone, both }: { chip: Chip; timeZone: st
       </div>
       {chip.cells ? (
         <div className="sheet-strips">
-          <span>Read from your board</span><StripSvg cells={chip.cells} height={22} />
+          <span>{chip.composite ? `Put together from ${countOf(chip.composite.reads, "read")} of your board` : "Read from your board"}</span><StripSvg cells={chip.cells} height={22} />
           {chip.verified && both ? (
             <Fragment>
               <span className="text-green">equal in all {countOf(chip.sizeBytes, "byte")}</span><LaneSvg counts={null} length={chip.cells.length} height={8} />
@@ -32,8 +32,11 @@ export function SummaryChip({ chip, timeZone, both }: { chip: Chip; timeZone: st
           ) : null}
         </div>
       ) : null}
+      {chip.composite ? <p className="flex items-start gap-2"><Mark kind="caution" className="mt-px shrink-0 text-caution [--hole:var(--sheet)]" /><span><b>This image is a composite.</b> {compositeSentences(chip)}</span></p> : null}
       <dl className="sheet-facts">
-        <Fact term="Reads that agree">{seatingsText(chip)}</Fact>
+        {chip.composite
+          ? <Fact term="Put together from">{countOf(chip.composite.reads, "read")}, in {countOf(chip.composite.seatings, "seating")}</Fact>
+          : <Fact term="Reads that agree">{seatingsText(chip)}</Fact>}
         <Fact term="Approved">{chip.approvedAt ? `${dayText(chip.approvedAt, timeZone)}${chip.approvedBy ? `, ${chip.approvedBy}` : ""}` : "not yet"}</Fact>
         <Fact term={moved ? "Chip moved" : "Written"}>{chip.transferredAt ? dayText(chip.transferredAt, timeZone) : "not yet"}</Fact>
         <Fact term="Equal read-backs">{chip.readBacks}</Fact>

@@ -12,6 +12,7 @@ const BOTH_STRIPS_TO = 2;
 export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView; link: string; timeZone: string }) {
   const chips = chipsOf(summary);
   const verified = chips.length > 0 && chips.every((c) => c.verified);
+  const made = chips.filter((c) => c.composite);
   const done = steps(summary, timeZone);
   return (
     <main id="main" className="sheet">
@@ -41,12 +42,13 @@ export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView
           <ul className="sheet-dashes">
             <li>That the drive will start or keep starting, or that your files can be read. The chips are one part of the drive.</li>
             <li>That the content was sound before we read it. We show that it was moved unchanged, not that the fault left it unharmed.</li>
+            {made.length > 0 ? <li>That the composite of {listText(made.map((c) => c.designator))} holds what the chip held before the fault: it holds what most reads say.</li> : null}
             <li>Anything about parts of the board other than {chips.length > 0 ? listText(chips.map((c) => c.designator)) : "the chips named here"}.</li>
           </ul>
         </section>
       </div>
       <footer className="sheet-foot">
-        <p><b>What the words mean.</b> A “read” is the whole content of a chip, saved as a file. A “seating” is one time our clip was put on the chip. A “read-back” is a read of the donor chip after the write. SHA-256 and CRC-32 are check numbers computed from the content: if one bit differed, they would be others.</p>
+        <p><b>What the words mean.</b> A “read” is the whole content of a chip, saved as a file. A “seating” is one time our clip was put on the chip. A “read-back” is a read of the donor chip after the write.{made.length > 0 ? " A “composite” is an image put together from several reads that differ: each bit is what most of them say." : ""} SHA-256 and CRC-32 are check numbers computed from the content: if one bit differed, they would be others.</p>
         <p><b>Check it yourself.</b> This page by its private link must show these numbers. If somebody reads a donor chip before the drive’s first start, the SHA-256 of that file must equal the one above; drives may rewrite their chips afterwards.</p>
         <p className="font-mono font-semibold [overflow-wrap:anywhere]">{link}</p>
         <p className="text-ink-2">Whoever holds the link sees this page until {dayYearText(summary.expiresAt, timeZone)}. {summary.drives.map((d) => <span key={d.letter}>Entry {d.head.seq} of the custody log{summary.drives.length > 1 ? ` of Drive ${d.letter}` : ""}: <code className="[overflow-wrap:anywhere]">{d.head.hash}</code> </span>)}</p>

@@ -1,4 +1,4 @@
-import { boardLabel, chipFolder, imagePath } from "@/lib/core/bundle-layout";
+import { boardLabel, chipFolder, imagePath, VOTES_ENDING } from "@/lib/core/bundle-layout";
 import { crc32Hex } from "@/lib/core/digest";
 import { donorFit } from "@/lib/core/donor-fit";
 import { readName } from "@/lib/core/words";
@@ -68,7 +68,7 @@ function besides(row: Read): { sha256: string; ending: string }[] {
   const derived = derivedFacts(row);
   return [
     ...(row.sourceSha256 ? [{ sha256: row.sourceSha256.toString("hex"), ending: `.${FORMAT_ENDING[row.format]}` }] : []),
-    ...(derived ? [{ sha256: derived.reportSha256, ending: "-votes.json" }] : []),
+    ...(derived ? [{ sha256: derived.reportSha256, ending: VOTES_ENDING }] : []),
   ];
 }
 
@@ -105,7 +105,7 @@ function chipRecord(rows: Rows, chip: Chip, place: { drive: number; board: strin
       sentBack: r.sentBackAt ? { by: who(r.sentBackBy ?? null), at: r.sentBackAt.toISOString(), reason: r.sentBackReason ?? null } : null,
     })),
     approvals: rows.approvals.filter((a) => a.chipId === chip.id).map((a) => ({
-      id: a.id, sha256: a.sha256.toString("hex"), crc32: crcOf(rows, a.sha256), donorChip: a.donorChipId, approvedBy: who(a.approvedBy), givenAt: a.givenAt.toISOString(), statement: a.statement,
+      id: a.id, sha256: a.sha256.toString("hex"), crc32: crcOf(rows, a.sha256), composite: compositeOf(rows, chip.id, a.sha256), donorChip: a.donorChipId, approvedBy: who(a.approvedBy), givenAt: a.givenAt.toISOString(), statement: a.statement,
       reasons: JSON.parse(a.reasons) as Record<string, string>, twoPersonRule: a.twoPersonRule,
       revoked: a.revokedAt ? { at: a.revokedAt.toISOString(), by: who(a.revokedBy ?? null), cause: a.revokedCause ?? null, reason: a.revokedReason ?? null } : null,
     })),
@@ -114,6 +114,12 @@ function chipRecord(rows: Rows, chip: Chip, place: { drive: number; board: strin
       adapter: t.adapter ?? null, note: t.note ?? null, by: who(t.byUserId), at: t.at.toISOString(),
     })),
   };
+}
+
+/** "Read 6" where the approved image is a composite: nothing read it as a whole. Null when a read of the chip holds the same bytes. */
+function compositeOf({ reads }: Rows, chipId: string, sha256: Buffer): string | null {
+  const holders = reads.filter((r) => r.chipId === chipId && r.stage === "before" && r.sha256.equals(sha256));
+  return holders.length > 0 && holders.every((r) => r.derived) ? readName("before", holders[0].number) : null;
 }
 
 function crcOf({ reads }: Rows, sha256: Buffer): string | null {

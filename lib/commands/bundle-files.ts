@@ -1,7 +1,7 @@
 import { createHash } from "node:crypto";
 import { Readable } from "node:stream";
 import {
-  bagInfoTxt, bagitTxt, CASE_JSON, custodyPath, LOG_KEY, MANIFEST, manifestLine, readmeTxt, TAG_MANIFEST, TAG_SIGNATURE, WORKSHOP_KEYS,
+  bagInfoTxt, bagitTxt, CASE_JSON, compositePaths, custodyPath, LOG_KEY, MANIFEST, manifestLine, readmeTxt, TAG_MANIFEST, TAG_SIGNATURE, WORKSHOP_KEYS,
 } from "@/lib/core/bundle-layout";
 import { CHECK_SCRIPT } from "@/lib/core/check-script";
 import { logKey, verifiedStream } from "@/storage";
@@ -77,7 +77,7 @@ export async function bundleFiles(plan: BundlePlan): Promise<{ files: BundleFile
     textFile("bagit.txt", bagitTxt()),
     textFile("bag-info.txt", bagInfoTxt({ date: plan.madeAt.slice(0, 10), ref: plan.ref, octets, files: data.length })),
     textFile(MANIFEST, manifest(data)),
-    textFile("README.txt", readmeTxt({ ...plan, drives: plan.drives.length, images: plan.images.length })),
+    textFile("README.txt", readmeTxt({ ...plan, drives: plan.drives.length, images: plan.images.length, composites: compositePaths(plan.images.map((image) => image.path)) })),
     { ...textFile("check.sh", CHECK_SCRIPT), executable: true as const },
   ];
   const tagText = manifest(tags);

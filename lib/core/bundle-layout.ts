@@ -92,9 +92,32 @@ export interface ReadmeFacts {
   drives: number;
   images: number;
   twoPersonRule: boolean;
+  /** paths of images that are composites */
+  composites: readonly string[];
 }
 
-export function readmeTxt({ ref, workshop, madeAt, drives, images, twoPersonRule }: ReadmeFacts): string {
+/** What lies beside the image of a composite: who voted what. Instead of the image's ".bin". */
+export const VOTES_ENDING = "-votes.json";
+
+/** The composites among a bundle's paths: an image with votes beside it. */
+export function compositePaths(paths: readonly string[]): string[] {
+  return paths.filter((path) => path.endsWith(VOTES_ENDING)).map((path) => `${path.slice(0, -VOTES_ENDING.length)}.bin`);
+}
+
+function compositeText(paths: readonly string[]): string {
+  if (paths.length === 0) return "";
+  return `
+COMPOSITES
+${paths.length === 1 ? "One image here was never read as a whole" : `${paths.length} images here were never read as a whole`}:
+${paths.map((path) => `  ${path}`).join("\n")}
+${paths.length === 1 ? "It was" : "Each was"} put together from several reads that differed: each bit is what most of
+them say. The file beside it that ends in ${VOTES_ENDING} tells who voted what for each
+byte; the log says who made it, who approved it and why. A majority shows what
+repeats, not what is true.
+`;
+}
+
+export function readmeTxt({ ref, workshop, madeAt, drives, images, twoPersonRule, composites }: ReadmeFacts): string {
   return `Case ${ref}, ${workshop}
 Made ${madeAt}
 
@@ -102,7 +125,7 @@ WHAT THIS IS
 Everything that was kept of one case: ${countOf(images, "chip image")} of ${countOf(drives, "drive")}, as they
 were read, the custody log of each drive, and what is needed to check both without
 the program that made them. The folder is a BagIt bag (RFC 8493).
-
+${compositeText(composites)}
   data/case.json                the case as recorded, original file names included
   data/drives/N/custody.jsonl   the custody log, one entry a line
   data/drives/N/custody.sig     for each line: key id, space, signature in base64

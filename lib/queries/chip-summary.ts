@@ -6,6 +6,7 @@ import type { ChipSummary, StateView } from "@/lib/views";
 import type { Board, Chip, Read } from "@/models";
 import { donorContentSaved, stateRead } from "./chip-facts";
 import type { ChipRecord } from "./chip-records";
+import { compositeBehind, imageAtStake } from "./composite-behind";
 import { cellsOf, type StripImage } from "./strips";
 
 export function stripImage(read: Read): StripImage {
@@ -30,6 +31,20 @@ async function thumbnail(reads: Read[], unsound: Set<string>, sizeBytes: number)
     const image = stripImage(read);
     if (distinct.length < 2 && !distinct.some((d) => d.sha256 === image.sha256)) distinct.push(image);
   }
+  return { ...(await drawn(distinct, sizeBytes)), shows: "reads" };
+}
+
+/** After a write: the written image over the newest read-back that differs from it; null where none does. */
+async function readBackThumbnail({ chip, before, backs, approvals, transfers, unsound }: ChipRecord): Promise<ChipSummary["thumbnail"] | null> {
+  const latest = transfers.at(-1);
+  const written = approvals.find((a) => a.id === latest?.approvalId)?.sha256;
+  const sound = (read: Read) => !unsound.has(read.sha256.toString("hex"));
+  const image = written && before.find((r) => r.sha256.equals(written) && sound(r));
+  const back = written && backs.findLast((r) => r.transferId === latest?.id && r.counted && !r.sha256.equals(written) && sound(r));
+  return image && back ? { ...(await drawn([stripImage(image), stripImage(back)], chip.sizeBytes)), shows: "read-back" } : null;
+}
+
+async function drawn(distinct: StripImage[], sizeBytes: number): Promise<Omit<ChipSummary["thumbnail"], "shows">> {
   const length = Math.max(sizeBytes, ...distinct.map((d) => d.sizeBytes));
   const images = await Promise.all(distinct.map(async (d) => reduceCells(await cellsOf(d.sha256, d.sizeBytes, 0, length), 64)));
   if (distinct.length < 2) return { images, lane: null };
@@ -55,7 +70,8 @@ export async function originalSummary(record: ChipRecord, state: StateView): Pro
   return {
     ...base(record.chip, record.board), state, pair: record.donor && pairOf(record.donor.chip, record.donor.board),
     countedReads: counted.length, agreeingReads: agreement(counted.map(stateRead)).largest?.reads.length ?? 0,
-    donorSaved: donorContentSaved(record), thumbnail: await thumbnail(record.before, record.unsound, record.chip.sizeBytes),
+    donorSaved: donorContentSaved(record), composite: compositeBehind(record, imageAtStake(record)),
+    thumbnail: (await readBackThumbnail(record)) ?? await thumbnail(record.before, record.unsound, record.chip.sizeBytes),
   };
 }
 
@@ -65,7 +81,8 @@ export async function donorSummary(chip: Chip, board: Board, own: Read[], record
   return {
     ...base(chip, board), state, pair: record && pairOf(record.chip, record.board),
     countedReads: counted.length, agreeingReads: agreement(counted.map(stateRead)).largest?.reads.length ?? 0,
-    donorSaved: record !== null && donorContentSaved(record), thumbnail: await thumbnail(counted, record?.unsound ?? new Set(), chip.sizeBytes),
+    donorSaved: record !== null && donorContentSaved(record), composite: record && compositeBehind(record, imageAtStake(record)),
+    thumbnail: await thumbnail(counted, record?.unsound ?? new Set(), chip.sizeBytes),
   };
 }
 

@@ -8,6 +8,7 @@ import type { SummaryView } from "@/lib/views";
 import { Case, Customer, CustodyEntry, CustodyHead, Drive, type Read } from "@/models";
 import { stateFacts } from "./chip-facts";
 import { type ChipRecord, chipRecords } from "./chip-records";
+import { compositeBehind } from "./composite-behind";
 import { openShare } from "./open-share";
 import { people, type People } from "./people";
 import { currentPolicy } from "./policy";
@@ -45,7 +46,8 @@ async function chipOf(record: ChipRecord, policy: Policy, who: People): Promise<
   const sha256 = approval?.sha256.toString("hex") ?? null;
   return {
     designator: record.chip.designator, holds: record.chip.holds ?? null, sizeBytes: record.chip.sizeBytes, verified: state === "verified", stateLabel: label,
-    sha256, crc32: image ? crc32Hex(image.crc32) : null, agreeingReads: agreeing.length, seatings: new Set(agreeing.map((r) => r.seating)).size, readBacks: backs.length,
+    sha256, crc32: image ? crc32Hex(image.crc32) : null, agreeingReads: agreeing.length, seatings: new Set(agreeing.map((r) => r.seating)).size,
+    composite: compositeBehind(record, sha256), readBacks: backs.length,
     approvedBy: approval ? who(approval.approvedBy).name : null, approvedAt: approval?.givenAt.toISOString() ?? null,
     transferredAt: transfer?.at.toISOString() ?? null, transferKind: transfer?.kind ?? null, verifiedAt: state === "verified" ? verifiedAt(backs, policy) : null,
     cells: sha256 && image && !record.unsound.has(sha256) ? await cellsOf(sha256, image.sizeBytes, 0, Math.max(image.sizeBytes, record.chip.sizeBytes)) : null,

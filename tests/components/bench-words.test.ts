@@ -8,7 +8,7 @@ import type { BenchRow, BoardView, ChipSummary, DriveView } from "@/lib/views";
 function chip(id: string, state: ChipStateCode, more: Partial<ChipSummary> = {}): ChipSummary {
   return {
     id, designator: id.toUpperCase(), boardRole: "original", bus: "spi", sizeBytes: 8192, sizeSource: "typed", supplyMillivolts: 3300, package: null, marking: null, holds: null, idBytes: null, sfdp: null,
-    needsTransfer: true, state: { state, label: state, sentence: "" }, pair: null, countedReads: 0, agreeingReads: 0, donorSaved: false, thumbnail: { images: [], lane: null }, ...more,
+    needsTransfer: true, state: { state, label: state, sentence: "" }, pair: null, countedReads: 0, agreeingReads: 0, donorSaved: false, composite: null, thumbnail: { images: [], lane: null, shows: "reads" }, ...more,
   };
 }
 const board = (role: "original" | "donor", chips: ChipSummary[]): BoardView => ({ id: role, role, boardNumber: "BX 40-3179", revision: null, controllerMarking: null, motorDriverMarking: null, condition: null, fit: null, chips });
@@ -44,9 +44,10 @@ describe("a case", () => {
     expect(waitsFor([])).toContain("recorded");
   });
   it("does not say that too few reads agree", () => {
-    expect(readsWords({ countedReads: 2, agreeingReads: 2 }, DEFAULT_POLICY)).toBe("2 of 3 agree");
-    expect(readsWords({ countedReads: 3, agreeingReads: 3 }, DEFAULT_POLICY)).toBe("3 agree");
-    expect(readsWords({ countedReads: 4, agreeingReads: 3 }, DEFAULT_POLICY)).toBe("3 of 4 agree");
+    expect(readsWords({ countedReads: 2, agreeingReads: 2, composite: null }, DEFAULT_POLICY)).toBe("2 of 3 agree");
+    expect(readsWords({ countedReads: 3, agreeingReads: 3, composite: null }, DEFAULT_POLICY)).toBe("3 agree");
+    expect(readsWords({ countedReads: 4, agreeingReads: 3, composite: null }, DEFAULT_POLICY)).toBe("3 of 4 agree");
+    expect(readsWords({ countedReads: 1, agreeingReads: 1, composite: { number: 6, reads: 5, seatings: 2 } }, DEFAULT_POLICY)).toBe("composite of 5 reads");
   });
   it("draws a donor's chip where its pair is, and never two in one place", () => {
     const original = board("original", [chip("u3", "unread"), chip("u12", "unread")]);

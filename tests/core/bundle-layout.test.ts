@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { bagInfoTxt, bagitTxt, bagName, boardLabel, chipFolder, custodyPath, imagePath, manifestLine, readmeTxt, safeName, signatureLine } from "@/lib/core/bundle-layout";
+import { bagInfoTxt, bagitTxt, bagName, boardLabel, chipFolder, compositePaths, custodyPath, imagePath, manifestLine, readmeTxt, safeName, signatureLine } from "@/lib/core/bundle-layout";
 import { donorFit } from "@/lib/core/donor-fit";
 import { ascii, sha256Hex } from "./stream";
 
@@ -39,11 +39,15 @@ describe("the texts of a bag", () => {
     for (const digest of ["", "0".repeat(63), "A".repeat(64)]) expect(() => manifestLine(digest, "data/x")).toThrow(RangeError);
   });
   it("says on one page how to check it, and that one person did both where that is so", () => {
-    const given = { ref: "26-0042", workshop: "Alder Lane Drive Bench", madeAt: "2026-03-12T14:00:00Z", drives: 1, images: 7, twoPersonRule: true };
+    const given = { ref: "26-0042", workshop: "Alder Lane Drive Bench", madeAt: "2026-03-12T14:00:00Z", drives: 1, images: 7, twoPersonRule: true, composites: [] };
     const text = readmeTxt(given);
     expect(text.split("\n").length).toBeLessThan(60);
     expect(Math.max(...text.split("\n").map((one) => one.length))).toBeLessThanOrEqual(90);
     expect(text).toContain("7 chip images of 1 drive,");
+    expect(text).not.toContain("COMPOSITE");
+    const composites = compositePaths(["data/drives/1/original-U3/before-6.bin", "data/drives/1/original-U3/before-6-votes.json", "data/drives/1/original-U3/before-5.bin"]);
+    expect(composites).toEqual(["data/drives/1/original-U3/before-6.bin"]);
+    expect(readmeTxt({ ...given, composites })).toMatch(/One image here was never read as a whole:\n {2}data\/drives\/1\/original-U3\/before-6\.bin\nIt was put together/);
     expect(readmeTxt({ ...given, twoPersonRule: false })).toContain("switched off");
     expect(ascii(text).length).toBe(text.length);
   });

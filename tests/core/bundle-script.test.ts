@@ -24,7 +24,7 @@ describe("the bundle's check.sh", () => {
 
 describe("the bundle's README", () => {
   it("names each list and key that a person needs to check by hand", () => {
-    const text = readmeTxt({ ref: "26-0042", workshop: "Alder Lane", madeAt: "2026-03-12T14:00:00Z", drives: 2, images: 7, twoPersonRule: true });
+    const text = readmeTxt({ ref: "26-0042", workshop: "Alder Lane", madeAt: "2026-03-12T14:00:00Z", drives: 2, images: 7, twoPersonRule: true, composites: [] });
     for (const name of [MANIFEST, TAG_MANIFEST, TAG_SIGNATURE, LOG_KEY, "check.sh", "openssl pkeyutl -verify"]) expect(text).toContain(name);
     expect(text).not.toMatch(/report\.pdf|photos|seal\.txt/);
   });

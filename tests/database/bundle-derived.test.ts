@@ -1,9 +1,10 @@
 import { execFileSync } from "node:child_process";
-import { mkdtempSync, writeFileSync } from "node:fs";
+import { mkdtempSync, readFileSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
 import { buffer } from "node:stream/consumers";
 import { expect, it } from "vitest";
+import { approveImage } from "@/lib/commands/approve-image";
 import { makeBundle } from "@/lib/commands/make-bundle";
 import { makeComposite } from "@/lib/commands/make-composite";
 import { fromImage } from "@/lib/core/text-format";
@@ -17,14 +18,24 @@ it("a bundle holds the texts as they came and the votes behind a composite, and 
   for (const [i, seating] of [1, 1, 2, 2].entries()) await store(lead, chip.chipId, "before", flipped(image, 100 + 7 * i), seating);
   const text = fromImage("intel-hex", flipped(image, 500), { base: 0 });
   await store(lead, chip.chipId, "before", text, 2, { format: "intel-hex", base: 0, size: image.length, fill: 0xff }, "read.hex");
-  await makeComposite(lead, chip.chipId, { reads: [1, 2, 3, 4, 5], reason: "No two reads agree." });
+  const made = await makeComposite(lead, chip.chipId, { reads: [1, 2, 3, 4, 5], reason: "No two reads agree." });
+  const other = await makeUser("lead");
+  for (const seating of [1, 1]) await store(lead, chip.donorChipId, "donor", Buffer.alloc(image.length, 0xff), seating);
+  const reasons = Object.fromEntries(made.findings.filter((f) => f.severity === "reason").map((f) => [f.code, "Looked at each disputed byte."]));
+  await approveImage(other, chip.chipId, { sha256: made.sha256, donorChipId: chip.donorChipId, statement: "Voted.", reasons, lookedAt: [] });
   const folder = mkdtempSync(path.join(tmpdir(), "twinread-bundle-"));
   const { stream } = await makeBundle(lead, chip.caseId);
   writeFileSync(path.join(folder, "case.zip"), await buffer(stream));
   execFileSync("unzip", ["-q", "case.zip"], { cwd: folder });
   const bag = path.join(folder, `twinread-${chip.ref}`);
   const said = execFileSync("sh", ["check.sh"], { cwd: bag, encoding: "utf8" });
-  expect(said).toContain("6 images, each as the log names it");
+  expect(said).toContain("8 images, each as the log names it");
   const listed = execFileSync("grep", ["-c", "-e", "before-5\\.hex$", "-e", "before-6-votes\\.json$", "manifest-sha256.txt"], { cwd: bag, encoding: "utf8" });
   expect(listed.trim()).toBe("2");
+  // whoever has nothing but the bundle learns that the approved image was never read as a whole
+  expect(readFileSync(path.join(bag, "README.txt"), "utf8")).toContain("COMPOSITES\nOne image here was never read as a whole:\n  data/drives/1/original-U12/before-6.bin\n");
+  const { drives } = JSON.parse(readFileSync(path.join(bag, "data/case.json"), "utf8")) as { drives: { boards: { chips: { approvals: object[]; reads: { name: string; derived: object | null }[] }[] }[] }[] };
+  const [original] = drives[0].boards[0].chips;
+  expect(original.approvals).toEqual([expect.objectContaining({ sha256: made.sha256, composite: "Read 6" })]);
+  expect(original.reads.filter((r) => r.derived)).toEqual([expect.objectContaining({ name: "Read 6", derived: expect.objectContaining({ voters: expect.arrayContaining([1, 2, 3, 4, 5]) }) })]);
 });
