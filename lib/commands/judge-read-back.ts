@@ -5,7 +5,7 @@ import type { Finding } from "@/lib/core/words";
 import { engine } from "@/lib/engine/pool";
 import { Approval, Image, Read, type Transaction, Transfer } from "@/models";
 import { pathOfImage } from "@/storage";
-import { compareIfStored } from "./compare-images";
+import { type Compared, compareIfStored } from "./compare-images";
 import { type ChipPlace, placeOfChip } from "./place";
 
 /** Judges a read-back against the image that was approved for its transfer and the donor's saved content. */
@@ -19,7 +19,7 @@ export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: R
   const equal = read.sha256.equals(approval.sha256);
   const old = saved.find((r) => r.sizeBytes === approved.sizeBytes);
   const comparison = equal ? null : await compareIfStored({ sha256: approvedSha256, sizeBytes: approved.sizeBytes }, { sha256, sizeBytes: read.sizeBytes }, tx);
-  const diagnosis = equal ? undefined : await diagnosisOf(approvedSha256, old?.sha256.toString("hex") ?? null, sha256);
+  const diagnosis = comparison ? await diagnosisOf(approvedSha256, old?.sha256.toString("hex") ?? null, sha256, comparison) : undefined;
   return judgeReadBack({
     facts, read: { sha256, sizeBytes: read.sizeBytes }, approved: { sha256: approvedSha256, sizeBytes: approved.sizeBytes },
     donorSaved: saved.map((r) => r.sha256.toString("hex")),
@@ -29,10 +29,10 @@ export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: R
   });
 }
 
-/** How the write went as far as the bytes tell; undefined when an image is gone. */
-async function diagnosisOf(approved: string, old: string | null, readBack: string): Promise<ReadBackDiagnosis | undefined> {
+/** How the write went as far as the bytes tell, with the comparison as it was counted; undefined when an image is gone. */
+async function diagnosisOf(approved: string, old: string | null, readBack: string, comparison: Compared): Promise<ReadBackDiagnosis | undefined> {
   try {
-    return await engine("readBack", { approved: pathOfImage(approved), old: old && pathOfImage(old), readBack: pathOfImage(readBack) });
+    return await engine("readBack", { approved: pathOfImage(approved), old: old && pathOfImage(old), readBack: pathOfImage(readBack), comparison });
   } catch (error) {
     if ((error as NodeJS.ErrnoException).code === "ENOENT") return undefined;
     throw error;

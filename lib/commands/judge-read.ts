@@ -15,6 +15,7 @@ import { appendEntry, lockChain } from "./append-entry";
 import { compareIfStored } from "./compare-images";
 import { inspectImage } from "./inspect-image";
 import { judgeReadBackOf } from "./judge-read-back";
+import { familyOf } from "./judge-read-family";
 import { type ChipPlace, driveLetter, placeOfChip } from "./place";
 
 /** The findings of one read, from its image and from what else is on record at this moment. */
@@ -34,6 +35,7 @@ export async function findingsOf(tx: Transaction, place: ChipPlace, read: Read):
     })),
     // every workshop holds many blank images: they say nothing about where they come from, so nothing is looked up
     elsewhere: nearlyBlank(facts) ? [] : await elsewhere(tx, place, read),
+    family: await familyOf(tx, place, read, facts),
   })];
 }
 

@@ -135,17 +135,3 @@ export function createWindowLane(window: CellWindow): { push(a: Uint8Array, b: U
     finish: () => spreadBins(counts, map, window.cells),
   };
 }
-
-/** Whether a read-back is exactly `approved AND old`, bit by bit: a flash chip programmed without an erase (V3). */
-export function createAndMatch(): { push(approved: Uint8Array, old: Uint8Array, readBack: Uint8Array): void; matches(): boolean } {
-  let seen = 0;
-  let holds = true;
-  return {
-    push(approved, old, readBack) {
-      seen += readBack.length;
-      if (approved.length !== readBack.length || old.length !== readBack.length) holds = false;
-      for (let i = 0; holds && i < readBack.length; i += 1) holds = (approved[i] & old[i]) === readBack[i];
-    },
-    matches: () => holds && seen > 0,
-  };
-}

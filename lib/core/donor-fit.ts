@@ -12,10 +12,14 @@ export interface DonorFit {
   differences: string[];
 }
 
+/** Without case and white space, as markings are compared. */
+export function bareMarking(text: string): string {
+  return text.replace(/\s+/gu, "").toUpperCase();
+}
+
 /** Board numbers compare without case and white space: "BX 40-3179" is "bx40-3179". */
 export function sameMarking(a: string, b: string): boolean {
-  const bare = (text: string) => text.replace(/\s+/gu, "").toUpperCase();
-  return bare(a) === bare(b);
+  return bareMarking(a) === bareMarking(b);
 }
 
 const LOOKED_AT: { key: "revision" | "controllerMarking" | "motorDriverMarking"; name: string }[] = [

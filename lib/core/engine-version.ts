@@ -1,2 +1,2 @@
 /** Changes whenever a rule or threshold of findings, comparison or diagnosis changes; stored with every judgement. */
-export const ENGINE_VERSION = "2";
+export const ENGINE_VERSION = "3";

@@ -56,26 +56,6 @@ function zipParses(bytes: Uint8Array): boolean {
   return false;
 }
 
-/** RFC 1952 header, a deflate block that can begin (RFC 1951), and a length that its data can unpack to. */
-function gzipParses(bytes: Uint8Array): boolean {
-  if (bytes.length < 20 || bytes[2] !== 8 || (bytes[3] & 0xe0) !== 0) return false;
-  let at = 10;
-  if (bytes[3] & 4) at += 2 + view(bytes).getUint16(at, true);
-  for (const flag of [8, 16]) {
-    if (!(bytes[3] & flag)) continue;
-    while (at < bytes.length && bytes[at] !== 0) at += 1;
-    at += 1;
-  }
-  if (bytes[3] & 2) at += 2;
-  if (at + 10 > bytes.length) return false;
-  const type = (bytes[at] >> 1) & 3;
-  if (type === 3) return false;
-  if (type === 0 && ((bytes[at + 1] | (bytes[at + 2] << 8)) ^ 0xffff) !== (bytes[at + 3] | (bytes[at + 4] << 8))) return false;
-  if (type === 2 && (bytes[at] >> 3 > 29 || (bytes[at + 1] & 0x1f) > 29)) return false;
-  const unpacked = view(bytes).getUint32(bytes.length - 4, true);
-  return unpacked <= (bytes.length - at) * 1032 && unpacked * 1.01 + 64 >= bytes.length - at - 8;
-}
-
 /** The start header's own checksum, and a next header inside the file. */
 function sevenZipParses(bytes: Uint8Array): boolean {
   if (bytes.length < 32 || bytes[4] !== 0x27 || bytes[5] !== 0x1c) return false;
@@ -97,10 +77,18 @@ function elfParses(bytes: Uint8Array): boolean {
   return size === wanted && table <= bytes.length;
 }
 
-/** F25: an archive or document by its first bytes, and whether the rest of it holds together. */
-export function containerOf(bytes: Uint8Array): { kind: ContainerKind; parses: boolean } | null {
+/** The first bytes of a gzip file (RFC 1952). */
+export function beginsAsGzip(bytes: Uint8Array): boolean {
+  return starts(bytes, 0x1f, 0x8b);
+}
+
+/**
+ * F25: an archive or document by its first bytes, and whether the rest of it holds together; of a gzip file that is
+ * whether it unpacks, which the caller says.
+ */
+export function containerOf(bytes: Uint8Array, gunzips: boolean): { kind: ContainerKind; parses: boolean } | null {
   if (starts(bytes, 0x50, 0x4b, 3, 4)) return { kind: "zip", parses: zipParses(bytes) };
-  if (starts(bytes, 0x1f, 0x8b)) return { kind: "gzip", parses: gzipParses(bytes) };
+  if (beginsAsGzip(bytes)) return { kind: "gzip", parses: gunzips };
   if (starts(bytes, 0x37, 0x7a, 0xbc, 0xaf)) return { kind: "7z", parses: sevenZipParses(bytes) };
   if (starts(bytes, 0x25, 0x50, 0x44, 0x46)) return { kind: "pdf", parses: pdfParses(bytes) };
   if (starts(bytes, 0x7f, 0x45, 0x4c, 0x46)) return { kind: "elf", parses: elfParses(bytes) };

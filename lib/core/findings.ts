@@ -1,4 +1,5 @@
 import { crossFindings, type Elsewhere } from "./cross-findings";
+import { familyFinding, type Family } from "./family";
 import type { ImageFacts } from "./inspect";
 import { countOf, isPowerOfTwo, withCommas } from "./quantity";
 import { singleFindings, type ChipOfImage } from "./single-findings";
@@ -23,8 +24,8 @@ export interface JudgeInput {
   earlier: EarlierRead[];
   /** counted reads of other chips with this very digest */
   elsewhere: Elsewhere[];
-  /** for an image longer than the chip: whether all bytes past its size are one fill value; the facts of inspectWhole know it themselves */
-  tail?: { uniform: boolean };
+  /** the same chip on other cases' boards of the same number; left out where nothing is known of other cases */
+  family?: Family;
 }
 
 /** F30: the same file a second time. Without a known modification time nothing is said. */
@@ -63,13 +64,20 @@ function forStage(finding: Finding, stage: Stage): Finding {
   return { ...finding, severity: "note", advice };
 }
 
+/** F26 to F29. An image that equals another chip's is more than alike to it. */
+function recordFindings({ facts, elsewhere, family }: JudgeInput): Finding[] {
+  const found = crossFindings(facts, elsewhere);
+  const alike = family && found.length === 0 ? familyFinding(family) : null;
+  return alike ? [alike] : found;
+}
+
 /** Findings on one read when it is stored: what it shows by itself, and against what is already known. */
 export function judgeRead(input: JudgeInput): Finding[] {
   const found = [
-    ...singleFindings(input.facts, input.chip, input.tail?.uniform),
+    ...singleFindings(input.facts, input.chip),
     copyFinding(input),
     input.stage === "after" ? null : oddSizeFinding(input),
-    ...(input.stage === "before" ? crossFindings(input.facts, input.elsewhere) : []),
+    ...(input.stage === "before" ? recordFindings(input) : []),
   ];
   return found.filter((finding) => finding !== null).map((finding) => forStage(finding, input.stage));
 }
@@ -87,6 +95,5 @@ export function oneSeatingFinding(policy: Policy, countedReads: readonly { seati
 }
 
 export { singleFindings } from "./single-findings";
-export { createAndMatch } from "./compare";
 export { diagnoseReadBack, type ReadBackDiagnosis } from "./diagnose-read-back";
 export { judgeReadBack, type ReadBackInput } from "./read-back-findings";

@@ -8,7 +8,7 @@ import { wordScores } from "./facts-words";
 import { CELLS, cellsOf } from "./strip";
 import { CHI_SQUARE_LEAST_BYTES, NEARLY_BLANK_SHARE } from "./thresholds";
 
-/** What only the whole image in memory shows. Plain JSON; fractions are decimal strings. */
+/** What takes more than counting. Plain JSON; fractions are decimal strings. */
 export interface WholeFacts {
   /** of the engine that looked; another version looks again */
   engineVersion: string;
@@ -41,64 +41,40 @@ export interface ImageFacts {
   zeroCount: number;
   /** 256 strip cells over the image's own size */
   cells: string;
-  /** of inspectWhole; streaming inspection leaves it out */
+  /** missing only in facts that an early engine kept */
   whole?: WholeFacts;
 }
 
-function createCounting(sizeBytes: number) {
-  const counters = createCellCounters({ offset: 0, length: sizeBytes, cells: CELLS });
-  let at = 0;
-  return {
-    push(chunk: Uint8Array): void {
-      counters.push(chunk, at);
-      at += chunk.length;
-    },
-    finish(): { facts: ImageFacts; totals: Float64Array } {
-      const totals = new Float64Array(256);
-      for (let bin = 0; bin < counters.map.bins; bin += 1) {
-        const histogram = counters.histogram(bin);
-        for (let value = 0; value < 256; value += 1) totals[value] += histogram[value];
-      }
-      const dominantCount = Math.max(...totals);
-      const facts = {
-        sizeBytes,
-        distinctValues: totals.reduce((n, count) => n + (count > 0 ? 1 : 0), 0),
-        dominantByte: totals.indexOf(dominantCount),
-        dominantCount,
-        ffCount: totals[0xff],
-        zeroCount: totals[0x00],
-        cells: cellsOf(counters, CELLS),
-      };
-      return { facts, totals };
-    },
+function count(bytes: Uint8Array): { facts: ImageFacts; totals: Float64Array } {
+  const counters = createCellCounters({ offset: 0, length: bytes.length, cells: CELLS });
+  counters.push(bytes, 0);
+  const totals = new Float64Array(256);
+  for (let bin = 0; bin < counters.map.bins; bin += 1) {
+    const histogram = counters.histogram(bin);
+    for (let value = 0; value < 256; value += 1) totals[value] += histogram[value];
+  }
+  const dominantCount = Math.max(...totals);
+  const facts = {
+    sizeBytes: bytes.length,
+    distinctValues: totals.reduce((n, one) => n + (one > 0 ? 1 : 0), 0),
+    dominantByte: totals.indexOf(dominantCount),
+    dominantCount,
+    ffCount: totals[0xff],
+    zeroCount: totals[0x00],
+    cells: cellsOf(counters, CELLS),
   };
-}
-
-/**
- * Streaming inspection: chunks in order, one pass, memory that doesn't grow with the image. `sizeBytes` is the
- * image's whole size; bytes past it are not counted.
- */
-export function createInspection(sizeBytes: number): { push(chunk: Uint8Array): void; finish(): ImageFacts } {
-  const counting = createCounting(sizeBytes);
-  return { push: counting.push, finish: () => counting.finish().facts };
-}
-
-export function inspectImage(bytes: Uint8Array): ImageFacts {
-  const inspection = createInspection(bytes.length);
-  inspection.push(bytes);
-  return inspection.finish();
+  return { facts, totals };
 }
 
 const NO_REPEATS: RepeatFacts = { period: null, lines: [], short: null };
 
 /**
  * Everything that one image can show. Linear time; beyond the image it needs 1/256 of its size. An image of one
- * value throughout has nothing more to tell.
+ * value throughout has nothing more to tell. `gunzips`: gzip streams that unpack fill the file; who asks has tried it
+ * (lib/engine/gunzips.ts), as these rules have no way to.
  */
-export function inspectWhole(bytes: Uint8Array): ImageFacts {
-  const counting = createCounting(bytes.length);
-  counting.push(bytes);
-  const { facts, totals } = counting.finish();
+export function inspectWhole(bytes: Uint8Array, gunzips = false): ImageFacts {
+  const { facts, totals } = count(bytes);
   const size = bytes.length;
   let [alwaysOne, everOne, oneBits] = [size === 0 ? 0 : 0xff, 0, 0];
   for (let value = 0; value < 256; value += 1) {
@@ -122,7 +98,7 @@ export function inspectWhole(bytes: Uint8Array): ImageFacts {
       repeats: plain ? NO_REPEATS : repeatFactsOf(bytes, fillMapOf(bytes), mostInformative),
       wordScores: plain ? new Array<number>(8).fill(0) : wordScores(bytes),
       text: plain ? null : textKindOf(bytes),
-      container: containerOf(bytes),
+      container: containerOf(bytes, gunzips),
     },
   };
 }

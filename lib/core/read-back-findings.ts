@@ -10,7 +10,7 @@ export interface ReadBackInput {
   approved: { sha256: string; sizeBytes: number };
   /** digests of the donor's saved content */
   donorSaved: string[];
-  /** the read-back is approved AND old, bit by bit (createAndMatch) */
+  /** the read-back is approved AND old, bit by bit (diagnoseReadBack) */
   equalsAnd: boolean;
   /** another standing or past approval with the read-back's digest */
   otherApproved: { designator: string; caseRef: string } | null;

@@ -176,11 +176,11 @@ function contentFindings(facts: ImageFacts, chip: ChipOfImage): Finding[] {
 
 /**
  * All rows that a single image shows: F01 to F10, F20, F24, F25, F32 to F34. Severities are those for a `before`
- * read. `tailUniform`: known from elsewhere where the facts come from a stream.
+ * read.
  */
-export function singleFindings(facts: ImageFacts, chip: ChipOfImage, tailUniform?: boolean): Finding[] {
+export function singleFindings(facts: ImageFacts, chip: ChipOfImage): Finding[] {
   if (facts.sizeBytes === 0) return [sizeFinding(facts, chip, false)].filter((one) => one !== null);
-  const uniformTail = tailUniform ?? (facts.whole !== undefined && facts.whole.endRun >= facts.sizeBytes - chip.sizeBytes);
+  const uniformTail = facts.whole !== undefined && facts.whole.endRun >= facts.sizeBytes - chip.sizeBytes;
   return [
     ...(isUniform(facts) ? [uniformFinding(facts, chip)] : []),
     sizeFinding(facts, chip, uniformTail),

@@ -95,3 +95,9 @@ export const PAGE_MOST = 4096;
 export const PROTECT_PARTS = 64;
 /** a sector that stayed erased */
 export const SECTOR_SIZES = [4096, 32_768, 65_536] as const;
+
+/** F29: images of one kind of firmware are normally equal in a share between these two */
+export const FAMILY_LEAST_SHARE = 0.9;
+export const FAMILY_MOST_SHARE = 0.999;
+/** F29, own choice: fewer bytes that are not fill in both say nothing */
+export const FAMILY_LEAST_BYTES = 64;

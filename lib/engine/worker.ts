@@ -6,9 +6,11 @@ import { compositeFindings } from "../core/composite-findings";
 import { CompositeRefusal } from "../core/composite-rules";
 import { type Cause, causeOfPair } from "../core/diagnose-pair";
 import { diagnoseReadBack, type ReadBackDiagnosis } from "../core/diagnose-read-back";
+import { type Likeness, likenessOf } from "../core/family";
 import { type ImageFacts, inspectWhole } from "../core/inspect";
 import { FormatError, fromImage, type ImageWindow, toImage } from "../core/text-format";
 import type { DerivedFacts } from "../core/derived";
+import { gunzips } from "./gunzips";
 import type { Format } from "../core/words";
 
 /**
@@ -18,7 +20,8 @@ import type { Format } from "../core/words";
 export interface Tasks {
   inspect: { input: { file: string }; output: ImageFacts };
   compare: { input: { fileA: string; fileB: string; chipBytes: number }; output: Compared };
-  readBack: { input: { approved: string; old: string | null; readBack: string }; output: ReadBackDiagnosis };
+  likeness: { input: { file: string; others: string[] }; output: (Likeness | null)[] };
+  readBack: { input: { approved: string; old: string | null; readBack: string; comparison: Comparison }; output: ReadBackDiagnosis };
   expand: { input: { file: string; format: Format; window: ImageWindow }; output: { bytes: Uint8Array } | { refused: string } };
   encode: { input: { file: string; format: Format; base: number }; output: Uint8Array };
   vote: { input: { sources: (Omit<CompositeSource, "bytes"> & { file: string; number: number })[] }; output: VoteResult };
@@ -55,8 +58,8 @@ async function bytesOf(path: string, slot = 0): Promise<Uint8Array<ArrayBuffer>>
 const seen = new Map<string, ImageFacts>();
 const KEPT = 32;
 
-function factsOf(file: string, bytes: Uint8Array): ImageFacts {
-  const facts = seen.get(file) ?? inspectWhole(bytes);
+async function factsOf(file: string, bytes: Uint8Array): Promise<ImageFacts> {
+  const facts = seen.get(file) ?? inspectWhole(bytes, await gunzips(bytes));
   seen.set(file, facts);
   if (seen.size > KEPT) seen.delete(seen.keys().next().value!);
   return facts;
@@ -69,13 +72,31 @@ export async function inspect({ file }: Tasks["inspect"]["input"]): Promise<Imag
 export async function compare({ fileA, fileB, chipBytes }: Tasks["compare"]["input"]): Promise<Compared> {
   const [a, b] = await Promise.all([bytesOf(fileA), bytesOf(fileB, 1)]);
   const comparison = compareImages(a, b);
-  const cause = causeOfPair(a, b, factsOf(fileA, a), factsOf(fileB, b), chipBytes, comparison);
+  const cause = causeOfPair(a, b, await factsOf(fileA, a), await factsOf(fileB, b), chipBytes, comparison);
   return { ...comparison, cause };
 }
 
-export async function readBack({ approved, old, readBack: back }: Tasks["readBack"]["input"]): Promise<ReadBackDiagnosis> {
+/** One image against others of its size; null for one that is gone. */
+export async function likeness({ file, others }: Tasks["likeness"]["input"]): Promise<Tasks["likeness"]["output"]> {
+  const bytes = await bytesIfStored(file, 0);
+  const found: Tasks["likeness"]["output"] = [];
+  for (const other of others) {
+    const there = bytes && (await bytesIfStored(other, 1));
+    found.push(bytes && there && there.length === bytes.length ? likenessOf(bytes, there) : null);
+  }
+  return found;
+}
+
+async function bytesIfStored(path: string, slot: number): Promise<Uint8Array | null> {
+  return bytesOf(path, slot).catch((error: NodeJS.ErrnoException) => {
+    if (error.code === "ENOENT") return null;
+    throw error;
+  });
+}
+
+export async function readBack({ approved, old, readBack: back, comparison }: Tasks["readBack"]["input"]): Promise<ReadBackDiagnosis> {
   const [a, r, o] = await Promise.all([bytesOf(approved), bytesOf(back, 1), old ? bytesOf(old, 2).catch(() => null) : null]);
-  return diagnoseReadBack(r, a, o, { readBack: factsOf(back, r), approved: factsOf(approved, a) });
+  return diagnoseReadBack(r, a, o, { readBack: await factsOf(back, r), approved: await factsOf(approved, a), comparison });
 }
 
 export async function expand({ file, format, window }: Tasks["expand"]["input"]): Promise<Tasks["expand"]["output"]> {

@@ -11,7 +11,7 @@ import { loadReads } from "../inspect/load";
  */
 const asked = (files: string[]) => ({ files, size: null, format: "raw" as const, base: 0, fill: 0xff, json: false });
 
-const TASKS: Record<string, (files: string[]) => void> = {
+const TASKS: Record<string, (files: string[]) => void | Promise<void>> = {
   /** the reads in memory and their digests: what every other task begins with */
   load: (files) => void loadReads(asked(files)),
   bytes: (files) => void files.map((file) => readFileSync(file)),
@@ -24,24 +24,26 @@ const TASKS: Record<string, (files: string[]) => void> = {
     const [first] = loadReads(asked(files));
     for (const file of files.slice(1)) compareImages(first.bytes, readFileSync(file));
   },
-  inspect: (files) => void judgeReads(loadReads(asked(files)), null),
-  verdict(files) {
-    const reads = judgeReads(loadReads(asked(files)), null);
+  async inspect(files) {
+    await judgeReads(loadReads(asked(files)), null);
+  },
+  async verdict(files) {
+    const reads = await judgeReads(loadReads(asked(files)), null);
     verdictOf(reads, comparePairs(reads, null), null);
   },
 };
 
-function timed(work: () => void): number {
+async function timed(work: () => void | Promise<void>): Promise<number> {
   const from = performance.now();
-  work();
+  await work();
   return performance.now() - from;
 }
 
-function yardstick(files: string[]): number {
+function yardstick(files: string[]): Promise<number> {
   const [first, ...others] = files.map((file) => `'${file}'`);
   // equal files, or cmp would stop at the first difference
   const script = [`sha256sum ${files.map((file) => `'${file}'`).join(" ")}`, ...others.map((other) => `cmp ${first} ${other}`)].join(" && ");
-  return timed(() => spawnSync("sh", ["-c", script], { stdio: "ignore" }));
+  return timed(() => void spawnSync("sh", ["-c", script], { stdio: "ignore" }));
 }
 
 const [mode, name, ...rest] = process.argv.slice(2);
@@ -51,9 +53,9 @@ const yardFiles = split < 0 ? [] : rest.splice(split).slice(1);
 const rounds = mode === "memory" ? 1 : Number(rest.shift());
 const took: number[] = [];
 const yard: number[] = [];
-if (mode !== "memory") task(rest);
+if (mode !== "memory") await task(rest);
 for (let round = 0; round < rounds; round += 1) {
-  if (mode === "ratio") yard.push(yardstick(yardFiles));
-  took.push(timed(() => task(rest)));
+  if (mode === "ratio") yard.push(await yardstick(yardFiles));
+  took.push(await timed(() => task(rest)));
 }
 process.stdout.write(`${JSON.stringify({ took, yard, maxRssKib: process.resourceUsage().maxRSS })}\n`);

@@ -5,6 +5,7 @@ import { inspectWhole, type ImageFacts } from "@/lib/core/inspect";
 import { judgeSet } from "@/lib/core/judge-set";
 import { countOf } from "@/lib/core/quantity";
 import { DEFAULT_POLICY, readName, type Finding, type Policy } from "@/lib/core/words";
+import { gunzips } from "@/lib/engine/gunzips";
 import type { LoadedRead } from "./load";
 
 export interface JudgedRead extends LoadedRead {
@@ -28,28 +29,18 @@ export interface Verdict {
 /** Seatings, drives and other cases are unknown here, so nothing is asked of them: only what the files show is judged. */
 const HERE: Policy = { ...DEFAULT_POLICY, reads: 1, seatings: 0 };
 
-function once<T>(make: (read: LoadedRead) => T): (read: LoadedRead) => T {
-  const made = new Map<string, T>();
-  return (read) => {
-    const known = made.get(read.sha256) ?? make(read);
-    made.set(read.sha256, known);
-    return known;
-  };
-}
-
 /** `size`: the chip's, or null where it isn't known: then each image is taken to be whole. */
-export function judgeReads(loaded: readonly LoadedRead[], size: number | null): JudgedRead[] {
-  const factsOf = once((read) => inspectWhole(read.bytes));
+export async function judgeReads(loaded: readonly LoadedRead[], size: number | null): Promise<JudgedRead[]> {
+  // once for each content
+  const known = new Map<string, ImageFacts>();
+  for (const { sha256, bytes } of loaded) if (!known.has(sha256)) known.set(sha256, inspectWhole(bytes, await gunzips(bytes)));
   return loaded.map((read, i) => {
-    const sizeBytes = read.bytes.length;
-    const chip = { sizeBytes: size ?? sizeBytes, sizeSource: "typed" as const };
-    const rest = read.bytes.subarray(chip.sizeBytes);
+    const [sizeBytes, facts] = [read.bytes.length, known.get(read.sha256)!];
     const findings = judgeRead({
-      stage: "before", read: { ...read, sizeBytes }, chip, facts: factsOf(read), policy: HERE, elsewhere: [],
+      stage: "before", read: { ...read, sizeBytes }, chip: { sizeBytes: size ?? sizeBytes, sizeSource: "typed" }, facts, policy: HERE, elsewhere: [],
       earlier: loaded.slice(0, i).map((one, k) => ({ ...one, number: k + 1, stage: "before" as const, counted: true })),
-      ...(rest.length > 0 ? { tail: { uniform: rest.every((byte) => byte === rest[0]) } } : {}),
     });
-    return { ...read, number: i + 1, facts: factsOf(read), findings };
+    return { ...read, number: i + 1, facts, findings };
   });
 }
 

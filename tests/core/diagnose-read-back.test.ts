@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { diagnoseReadBack } from "@/lib/core/diagnose-read-back";
+import { crc32Hex, crc32Of } from "@/lib/core/digest";
 import { judgeReadBack } from "@/lib/core/findings";
 import { inspectWhole } from "@/lib/core/inspect";
 import { pageWrap, protectedPart } from "@/lib/core/read-back-writes";
@@ -49,7 +50,10 @@ describe("a write", () => {
     expect(told(edited((b) => b.set(old.subarray(0x3000, 0x5000), 0x3000)), null).code).toBe("foreign-blocks");
   });
   it("that was not erased, in whole or in part", () => {
-    expect(told(approved.map((value, i) => value & old[i]))).toMatchObject({ code: "not-erased", measured: "every byte is approved AND old" });
+    const both = approved.map((value, i) => value & old[i]);
+    // READ-FAULTS B.5, computed there
+    expect(crc32Hex(crc32Of(both.subarray(0, 256)))).toBe("49bd5957");
+    expect(told(both)).toMatchObject({ code: "not-erased", measured: "every byte is approved AND old" });
     expect(told(edited((b) => { for (let i = 0x3000; i < 0x4000; i += 1) b[i] &= old[i]; })).message).toMatch(/a part of the chip was not erased/);
   });
   it("with few single bits off has weak cells", () => {

@@ -38,10 +38,10 @@ export interface MadeChip {
 }
 
 /** A case with one drive, both boards and a pair of chips. */
-export async function makeChip(actor: Actor, { sizeBytes = 8192, serialNumber = `SN-${(serial += 1)}-${Date.now().toString(36)}` } = {}): Promise<MadeChip> {
+export async function makeChip(actor: Actor, { sizeBytes = 8192, serialNumber = `SN-${(serial += 1)}-${Date.now().toString(36)}`, boardNumber = "BX 40-3179" } = {}): Promise<MadeChip> {
   const made = await createCase(actor, { customer: { name: "Lindmoor Veterinary Practice", email: "desk@lindmoor.example" }, damage: "Power surge" });
   const drive = await recordDrive(actor, made.id, { partNumber: "PN 4471-0093-B", serial: serialNumber });
-  const board = { boardNumber: "BX 40-3179", revision: "rev C" };
+  const board = { boardNumber, revision: "rev C" };
   const original = await recordBoard(actor, drive.id, { role: "original", ...board });
   const donor = await recordBoard(actor, drive.id, { role: "donor", ...board });
   const facts = { designator: "U12", bus: "spi" as const, sizeBytes, sizeSource: "marking" as const, supplyMillivolts: 3300, needsTransfer: true };
