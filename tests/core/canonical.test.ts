@@ -18,6 +18,31 @@ describe("RFC 8785", () => {
     expect(rfc8785({ "\u20ac": 1, "\r": 2, "\ufb33": 3, "1": 4, "\u{1f600}": 5, "\u0080": 6, "\u00f6": 7 }))
       .toBe('{"\\r":2,"1":4,"\u0080":6,"ö":7,"€":1,"\u{1f600}":5,"\ufb33":3}');
   });
+  // The RFC author's public test data (testdata/input of his json-canonicalization repository), lengths and digests re-made
+  // with independent tools: values.json and weird.json.
+  it.each([
+    [
+      "values.json", 120, "0af3685dce30daa753153aadb1956b0f3133642fbe5d4a5e3a4267f94814ba87",
+      '{"numbers":[1E30,4.50,333333333.33333329,2e-3,0.000000000000000000000000001],"escaping":"\\u20ac$\\u000F\\u000aA\'\\u0042\\u0022\\u005c\\\\\\"\\/","literals":[null,true,false]}',
+      '{"escaping":"€$\\u000f\\nA\'B\\"\\\\\\\\\\"/","literals":[null,true,false],"numbers":[1e+30,4.5,333333333.3333333,0.002,1e-27]}',
+    ],
+    [
+      "weird.json", 176, "92591c387de83f90a4f5a7b853081c9482ee5bf076e8e309366de6f215cfcbfb",
+      '{"\\u20ac":"Euro Sign","1":"One","\\u0080":"Control\\u007f","\\ud83d\\ude02":"Smiley","\\u00f6":"Latin Small Letter O With Diaeresis","\\ufb33":"Hebrew Letter Dalet With Dagesh","</script>":"Browser Challenge"}',
+      // a surrogate pair sorts before U+FB33, and U+007F is no control to be escaped
+      '{"1":"One","</script>":"Browser Challenge","\u0080":"Control\u007f","ö":"Latin Small Letter O With Diaeresis","€":"Euro Sign","\u{1f602}":"Smiley","\ufb33":"Hebrew Letter Dalet With Dagesh"}',
+    ],
+    [
+      // RFC 8785 section 3.2.3, from memory; the values too
+      "the sample of section 3.2.3", 180, "5e321556d22018a9656991a9e94f77ec175fa193e52a2429d312f8419ec8b08c",
+      '{"\\u20ac":"Euro Sign","\\r":"Carriage Return","\\ufb33":"Hebrew Letter Dalet With Dagesh","1":"One","\\ud83d\\ude00":"Emoji: Grinning Face","\\u0080":"Control","\\u00f6":"Latin Small Letter O With Diaeresis"}',
+      '{"\\r":"Carriage Return","1":"One","\u0080":"Control","ö":"Latin Small Letter O With Diaeresis","€":"Euro Sign","\u{1f600}":"Emoji: Grinning Face","\ufb33":"Hebrew Letter Dalet With Dagesh"}',
+    ],
+  ])("gives the text of %s", (_name, bytes, digest, input, canonical) => {
+    const text = rfc8785(JSON.parse(input));
+    expect(text).toBe(canonical);
+    expect([Buffer.byteLength(text), sha256Hex(text)]).toEqual([bytes, digest]);
+  });
   // RFC 8785 appendix B: IEEE 754 bits and their text
   it.each([
     ["4340000000000000", "9007199254740992"], ["444b1ae4d6e2ef50", "1e+21"], ["444b1ae4d6e2ef4e", "999999999999999700000"],

@@ -6,7 +6,7 @@ import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { compareImages, createComparison, createWindowLane, RANGES_KEPT, type Comparison } from "@/lib/core/compare";
 import { crc32Hex, crc32Of } from "@/lib/core/digest";
-import { ascii, goldenImage, stream } from "./stream";
+import { goldenImage, stream } from "./stream";
 
 function naive(a: Uint8Array, b: Uint8Array) {
   const size = Math.max(a.length, b.length);
