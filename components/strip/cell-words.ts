@@ -1,7 +1,7 @@
 import { countOf } from "@/lib/core/quantity";
 import { rangeText } from "@/lib/core/strip";
+import { CLASS_WORD, type StripClass } from "@/lib/core/strip-path";
 import type { StripStackView, StripView } from "@/lib/views";
-import { CLASS_WORD, type StripClass } from "./strip-path";
 
 export const SEGMENT = 64;
 

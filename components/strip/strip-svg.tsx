@@ -1,5 +1,5 @@
+import { lanePaths, stripPaths } from "@/lib/core/strip-path";
 import type { CellString } from "@/lib/views";
-import { lanePaths, stripPaths } from "./strip-path";
 
 /** A strip that fills its box; the words stand beside it, so it is hidden from screen readers. */
 export function StripSvg({ cells, height = 32, className = "" }: { cells: CellString; height?: number; className?: string }) {

@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { cellWords, foldAgrees, stackSummary } from "@/components/strip/cell-words";
-import { lanePaths, stripPaths } from "@/components/strip/strip-path";
+import { lanePaths, stripPaths } from "@/lib/core/strip-path";
 import { nextDifference } from "@/components/strip/strip-grid";
 import type { StripStackView } from "@/lib/views";
 

@@ -1,5 +1,3 @@
-import type { CellString } from "@/lib/views";
-
 /** Strips as SVG paths, one per class, so that page, PDF and mail draw the same. Pure: text in, text out. */
 export type StripClass = "b" | "z" | "t" | "o" | "d" | "n";
 
@@ -55,7 +53,7 @@ function drawn(cls: StripClass, x: number, width: number, height: number, step: 
 }
 
 /** One path per class that occurs, over `cells.length * width` by `height`. */
-export function stripPaths(cells: CellString, { width, height, gap = 0 }: CellSize): StripPath[] {
+export function stripPaths(cells: string, { width, height, gap = 0 }: CellSize): StripPath[] {
   const paths = new Map<StripClass, string>();
   for (let i = 0; i < cells.length; ) {
     const cls = cells[i] as StripClass;
