@@ -231,6 +231,14 @@ export interface ComparisonView {
   diagnosis: DiagnosisView;
 }
 
+/** Two or three reads for the compare page; of three, the ranges are those in which not all agree. */
+export interface ComparedReads extends Omit<ComparisonView, "differingBits"> {
+  reads: ReadView[];
+  /** from the first to the second; null for three reads */
+  differingBits: ComparisonView["differingBits"] | null;
+  stack: StripStackView;
+}
+
 export interface BoardView {
   id: string;
   role: BoardRole;

@@ -3,22 +3,23 @@ import { readTitle } from "@/components/composite/composite-words";
 import { Crumbs } from "@/components/ui/crumbs";
 import { Mark } from "@/components/ui/mark";
 import { DesignatorPlate } from "@/components/ui/plate";
-import { withCommas } from "@/lib/core/quantity";
+import { listText, readsText, withCommas } from "@/lib/core/quantity";
 import type { Stage } from "@/lib/core/words";
-import type { ChipView, ReadView } from "@/lib/views";
+import type { ChipView, ComparedReads, ReadView } from "@/lib/views";
 import { ChooseReads } from "./choose-reads";
-import type { Compared } from "./compare-screen";
 import { stagesToCompare } from "./places";
 
 const STAGE_WORDS: Record<Stage, string> = { before: "reads of the original", donor: "the donor’s own content", after: "read-backs" };
 
 /** What the comparison found, and the ways to other reads. */
-export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: ChipView; reads: readonly ReadView[]; compared: Compared | null; stage: Stage; chosen: readonly [number, number] | null }) {
-  const crossed = compared !== null && compared.readA.stage !== compared.readB.stage;
+export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: ChipView; reads: readonly ReadView[]; compared: ComparedReads | null; stage: Stage; chosen: readonly number[] | null }) {
+  const crossed = compared !== null && compared.reads.some((r) => r.stage !== compared.reads[0].stage);
   const others = stagesToCompare(reads).filter((s) => crossed || s !== stage);
-  const [a, b] = compared ? [readTitle(compared.readA), readTitle(compared.readB)] : ["", ""];
+  const titles = compared?.reads.map(readTitle) ?? [];
+  const [a, b] = titles;
+  const plain = compared !== null && compared.reads.every((r) => !r.derived && r.stage === "before");
   // a read-back was judged against the approved image when it came: that says what to do about the write
-  const judged = crossed ? compared.readB.findings.find((f) => f.severity === "blocks" || f.code === "verified") : undefined;
+  const judged = crossed ? compared.reads[1].findings.find((f) => f.severity === "blocks" || f.code === "verified") : undefined;
   const verdict = judged ?? compared?.diagnosis;
   return (
     <>
@@ -26,7 +27,7 @@ export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: Ch
       <header className="flex flex-wrap items-center gap-x-5 gap-y-2 pt-[18px] pb-3.5">
         <h1 className="flex flex-wrap items-center gap-3 text-t5 font-bold">
           <DesignatorPlate designator={chip.designator} board={chip.boardRole} word />
-          {compared ? `${crossed ? `Approved image (${a})` : a} and ${b}` : "Compare reads"}
+          {!compared ? "Compare reads" : crossed ? `Approved image (${a}) and ${b}` : plain ? readsText(compared.reads.map((r) => r.number)) : listText(titles)}
         </h1>
         <div className="ml-auto flex flex-wrap items-end gap-x-5 gap-y-2">
           {others.map((s) => <Link key={s} href={`/chips/${chip.id}/compare?stage=${s}`}>Compare {STAGE_WORDS[s]}</Link>)}
@@ -36,7 +37,7 @@ export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: Ch
           <p className="flex basis-full items-start gap-2.5 text-t4">
             <Mark kind={compared.equal ? "ok" : "block"} size={20} className="mt-0.5 [--hole:var(--paper)]" />
             <span className="max-w-[86ch]"><b>{verdict.message}</b> {verdict.advice}
-              {compared.equal ? null : <span className="text-ink-2"> {withCommas(compared.differingBits.zeroToOne)} bits read 0 in {a} and 1 in {b}, {withCommas(compared.differingBits.oneToZero)} the other way round.</span>}
+              {compared.equal || !compared.differingBits ? null : <span className="text-ink-2"> {withCommas(compared.differingBits.zeroToOne)} bits read 0 in {a} and 1 in {b}, {withCommas(compared.differingBits.oneToZero)} the other way round.</span>}
             </span>
           </p>
         ) : null}

@@ -2,25 +2,30 @@
 
 import { useCallback, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import { nextDifference, StripGrid } from "@/components/strip/strip-grid";
+import { listText } from "@/lib/core/quantity";
 import { addressDigits } from "@/lib/core/strip";
 import { readName } from "@/lib/core/words";
-import type { ComparisonView, ReadView, StripStackView, StripView } from "@/lib/views";
+import type { ComparedReads, ReadView, StripView } from "@/lib/views";
 import { CompareBar } from "./compare-bar";
 import { HexView } from "./hex-view";
 import { useLetterKeys, useLetterKeysOn } from "./letter-keys";
 import { rangeAt, standsAlone, stepRange } from "./places";
 import { RangeList } from "./range-list";
 
-export type Compared = ComparisonView & { readA: ReadView; readB: ReadView; stack: StripStackView };
-
 const cellOf = (view: StripView, at: number) => {
   const cell = Math.floor((at - view.offset) / view.cellBytes);
   return cell >= 0 && cell < (view.rows[0]?.cells.length ?? 0) ? cell : null;
 };
 
-/** Strips, ranges and bytes of two reads, all about one address that also stands in the page's own address. */
-export function CompareScreen({ compared, reads, start }: { compared: Compared; reads: readonly ReadView[]; start: number | null }) {
-  const { readA, readB, stack, ranges } = compared;
+/** Strips, ranges and bytes of two or three reads, all about one address that also stands in the page's own address. */
+export function CompareScreen({ compared, reads, start, csv }: {
+  compared: ComparedReads;
+  reads: readonly ReadView[];
+  start: number | null;
+  /** where the ranges are had as CSV; null where they aren't */
+  csv: string | null;
+}) {
+  const { stack, ranges } = compared;
   const { sizeBytes } = stack;
   const [at, setAt] = useState(() => Math.min(start ?? ranges[0]?.start ?? 0, Math.max(0, sizeBytes - 1)));
   const [fold, setFold] = useState(true);
@@ -28,8 +33,8 @@ export function CompareScreen({ compared, reads, start }: { compared: Compared; 
   const [keys, setKeys] = useLetterKeysOn();
   const field = useRef<HTMLInputElement>(null);
   const current = rangeAt(ranges, at);
-  const names = [readName(readA.stage, readA.number), readName(readB.stage, readB.number)] as const;
-  const alone = useMemo(() => standsAlone(reads, readA, readB), [reads, readA, readB]);
+  const names = compared.reads.map((r) => readName(r.stage, r.number));
+  const alone = useMemo(() => standsAlone(reads, compared.reads), [reads, compared.reads]);
 
   const go = useCallback((next: number) => {
     setAt(next);
@@ -75,14 +80,14 @@ export function CompareScreen({ compared, reads, start }: { compared: Compared; 
   return (
     <>
       <div className="compare-strips strips" onKeyDownCapture={onStripKey}>
-        {grid(stack, `Strips of ${names[0]} and ${names[1]}. Arrow keys move by one cell, N and P by difference, Enter shows the bytes.`)}
+        {grid(stack, `Strips of ${listText(names)}. Arrow keys move by one cell, N and P by difference, Enter shows the bytes.`)}
         {stack.loupe && nextDifference(stack.loupe, 0, 1) !== null ? <div className="pt-5"><p className="pb-1 text-t2 text-ink-2">Around the differences, larger</p>{grid(stack.loupe, "The part around the differences, larger. The same keys.")}</div> : null}
       </div>
       <CompareBar current={current} total={ranges.length} at={at} sizeBytes={sizeBytes} fold={fold} under={under} keys={keys} field={field}
         onStep={step} onGo={go} onFold={setFold} onUnder={setUnder} onKeys={setKeys} />
-      <div id="bytes" className="grid grid-cols-[212px_minmax(0,1fr)] gap-x-6 gap-y-4 pt-3.5 pb-8 max-[1379px]:grid-cols-[minmax(0,1fr)]">
-        <RangeList ranges={ranges} truncated={compared.truncated ?? false} current={current} sizeBytes={sizeBytes} onGo={go} />
-        <HexView reads={[readA, readB]} names={names} alone={alone} at={at} sizeBytes={sizeBytes} fold={fold} under={under} onGo={go} />
+      <div id="bytes" className={`compare-bytes ${names.length > 2 ? "is-three" : ""}`}>
+        <RangeList ranges={ranges} truncated={compared.truncated ?? false} current={current} sizeBytes={sizeBytes} csv={csv} onGo={go} />
+        <HexView reads={compared.reads} names={names} alone={alone} at={at} sizeBytes={sizeBytes} fold={fold} under={under} onGo={go} />
       </div>
     </>
   );

@@ -1,13 +1,16 @@
-/** Lines of the hex view, from two windows of bytes. Pure. */
+/** Lines of the hex view, from two or three windows of bytes. Pure. */
 export const LINE = 16;
+
+/** Equal in all, what stands alone, or what the others hold where one stands alone. */
+export type ByteMark = "equal" | "odd" | "other";
 
 export interface ByteLine {
   kind: "line";
   /** address of the first byte */
   at: number;
-  /** the two reads' bytes; null past an image's end */
-  bytes: readonly [readonly (number | null)[], readonly (number | null)[]];
-  differs: readonly boolean[];
+  /** each read's bytes; null past an image's end */
+  bytes: readonly (readonly (number | null)[])[];
+  marks: readonly (readonly ByteMark[])[];
   differing: number;
 }
 
@@ -18,24 +21,32 @@ export interface Fold {
 }
 
 export interface HexWindow {
-  a: Uint8Array;
-  b: Uint8Array;
-  /** address of the first byte of both, a multiple of 16 */
+  images: readonly Uint8Array[];
+  /** address of the first byte of all, a multiple of 16 */
   offset: number;
   /** bytes shown; where an image ends earlier its bytes are null */
   length: number;
+  /** of two reads the one that stands alone as a whole; of three each byte says so itself */
+  alone: number;
 }
 
 const CONTEXT = 1;
 /** folding fewer lines would take as much room as it saves */
 const LEAST_FOLDED = 2;
+const ALL_EQUAL: readonly ByteMark[] = ["equal", "equal", "equal"];
 
-function lineAt({ a, b, length, offset }: HexWindow, from: number): ByteLine {
+/** How each read's byte at one address is marked; where no two of three agree each stands alone. */
+function marksOf(values: readonly (number | null)[], alone: number): readonly ByteMark[] {
+  if (values.every((value) => value === values[0])) return ALL_EQUAL;
+  if (values.length === 2) return values.map((_, i) => (i === alone ? "odd" : "other"));
+  return values.map((value) => (values.filter((other) => other === value).length > 1 ? "other" : "odd"));
+}
+
+function lineAt({ images, length, offset, alone }: HexWindow, from: number): ByteLine {
   const count = Math.min(LINE, length - from);
-  const pick = (bytes: Uint8Array) => Array.from({ length: count }, (_, i) => (from + i < bytes.length ? bytes[from + i] : null));
-  const bytes = [pick(a), pick(b)] as const;
-  const differs = bytes[0].map((value, i) => value !== bytes[1][i]);
-  return { kind: "line", at: offset + from, bytes, differs, differing: differs.filter(Boolean).length };
+  const bytes = images.map((image) => Array.from({ length: count }, (_, i) => (from + i < image.length ? image[from + i] : null)));
+  const columns = Array.from({ length: count }, (_, i) => marksOf(bytes.map((one) => one[i]), alone));
+  return { kind: "line", at: offset + from, bytes, marks: images.map((_, who) => columns.map((column) => column[who])), differing: columns.filter((column) => column !== ALL_EQUAL).length };
 }
 
 /**
@@ -65,25 +76,24 @@ export function hexRows(view: HexWindow, { fold, here, opened }: { fold: boolean
 
 export interface Run {
   text: string;
-  differs: boolean;
+  mark: ByteMark;
 }
 
-/** One line's bytes as text, "00 5E  3C", cut where equal turns to differing; 8 + 8 with a wider gap. */
-export function runsOf(bytes: readonly (number | null)[], differs: readonly boolean[]): Run[] {
+/** One line's bytes as text, "00 5E  3C", cut where the mark changes; 8 + 8 with a wider gap. A gap between two bytes of one mark belongs to it. */
+export function runsOf(bytes: readonly (number | null)[], marks: readonly ByteMark[]): Run[] {
   const runs: Run[] = [];
   for (let i = 0; i < LINE; i += 1) {
     const gap = i === 0 ? "" : i === LINE / 2 ? "  " : " ";
     const value = i < bytes.length ? bytes[i] : null;
     const text = i >= bytes.length ? "  " : value === null ? "--" : value.toString(16).toUpperCase().padStart(2, "0");
-    const off = differs[i] ?? false;
+    const mark = marks[i] ?? "equal";
     const last = runs.at(-1);
-    // a gap between two differing bytes belongs to the mark, any other does not
-    if (last?.differs === off) last.text += gap + text;
+    if (last?.mark === mark) last.text += gap + text;
+    else if (mark === "equal") runs.push({ text: gap + text, mark });
     else {
-      if (last && !last.differs) last.text += gap;
-      else if (gap) runs.push({ text: gap, differs: false });
-      if (runs.at(-1)?.differs === off && !off) runs[runs.length - 1].text += text;
-      else runs.push({ text, differs: off });
+      if (last?.mark === "equal") last.text += gap;
+      else if (gap) runs.push({ text: gap, mark: "equal" });
+      runs.push({ text, mark });
     }
   }
   return runs;

@@ -11,11 +11,11 @@ import { hexRows } from "./hex-rows";
 import { HexKey, HexTable } from "./hex-table";
 import { STEP_BYTES, useBytes, windowOf } from "./use-bytes";
 
-/** The bytes around one address of both reads, fetched as they are looked at. */
+/** The bytes around one address of each read, fetched as they are looked at. */
 export function HexView({ reads, names, alone, at, sizeBytes, fold, under, onGo }: {
-  reads: readonly [ReadView, ReadView];
-  names: readonly [string, string];
-  alone: 0 | 1;
+  reads: readonly ReadView[];
+  names: readonly string[];
+  alone: number;
   at: number;
   sizeBytes: number;
   fold: boolean;
@@ -23,13 +23,15 @@ export function HexView({ reads, names, alone, at, sizeBytes, fold, under, onGo 
   onGo(at: number): void;
 }) {
   const { offset, length } = windowOf(at, sizeBytes);
-  const a = useBytes(reads[0], offset, length);
-  const b = useBytes(reads[1], offset, length);
+  const [a, b, c] = [useBytes(reads[0], offset, length), useBytes(reads[1], offset, length), useBytes(reads[2] ?? null, offset, length)];
+  const three = reads.length > 2;
   const [opened, setOpened] = useState<ReadonlySet<number>>(new Set());
-  const rows = useMemo(() => (a.bytes && b.bytes ? hexRows({ a: a.bytes, b: b.bytes, offset, length }, { fold, here: at, opened }) : null), [a.bytes, b.bytes, offset, length, fold, at, opened]);
-  const columns = reads.map((r, i) => ({ name: names[i], note: `seating ${seatingLetter(r.seating)}, ${r.reader}` }));
-  const pair = [columns[0], columns[1]] as const;
-  const error = a.error ?? b.error;
+  const rows = useMemo(() => {
+    if (!a.bytes || !b.bytes || (three && !c.bytes)) return null;
+    return hexRows({ images: three && c.bytes ? [a.bytes, b.bytes, c.bytes] : [a.bytes, b.bytes], offset, length, alone }, { fold, here: at, opened });
+  }, [a.bytes, b.bytes, c.bytes, three, alone, offset, length, fold, at, opened]);
+  const columns = reads.map((r, i) => ({ name: names[i], note: r.derived ? "composite" : `seating ${seatingLetter(r.seating)}, ${r.reader}` }));
+  const error = a.error ?? b.error ?? c.error;
   const [earlier, later] = [offset - STEP_BYTES, offset + STEP_BYTES];
   return (
     <div className="min-w-0">
@@ -42,8 +44,8 @@ export function HexView({ reads, names, alone, at, sizeBytes, fold, under, onGo 
       </div>
       {error ? <Note kind="block" role="alert" title="These bytes can’t be shown.">{error.message}</Note> : rows ? (
         <>
-          <div className="overflow-x-auto"><HexTable rows={rows} columns={pair} alone={alone} here={at} under={under} sizeBytes={sizeBytes} onOpen={(start) => setOpened((before) => new Set([...before, start]))} /></div>
-          <HexKey alone={alone} columns={pair} />
+          <div className="overflow-x-auto"><HexTable rows={rows} columns={columns} here={at} under={under} sizeBytes={sizeBytes} onOpen={(start) => setOpened((before) => new Set([...before, start]))} /></div>
+          <HexKey alone={alone} columns={columns} />
         </>
       ) : <p role="status" className="py-6 text-ink-2">Fetching the bytes of {rangeText(offset, length, sizeBytes)}.</p>}
     </div>

@@ -36,18 +36,23 @@ export function stagesToCompare(reads: readonly ReadView[]): Stage[] {
   return STAGES.filter((stage) => reads.filter((r) => r.stage === stage).length > 1);
 }
 
-/** What one most likely wants to see first: two counted reads that differ, else two counted, else any two. */
-export function firstPair(reads: readonly ReadView[], stage: Stage): [number, number] | null {
+/**
+ * What one most likely wants to see first: of three or more counted reads that disagree two that agree and the newest that
+ * doesn't, or the first three where no two agree; else two counted that differ, else two counted, else any two.
+ */
+export function firstReads(reads: readonly ReadView[], stage: Stage): number[] | null {
   const all = reads.filter((r) => r.stage === stage);
   const counted = all.filter((r) => r.counted);
-  const [first] = counted;
-  const other = first && counted.find((r) => r.sha256 !== first.sha256);
-  const pair = other ? [first, other] : counted.length > 1 ? counted.slice(0, 2) : all.slice(0, 2);
-  return pair.length === 2 ? [pair[0].number, pair[1].number] : null;
+  const held = (read: ReadView) => counted.filter((r) => r.sha256 === read.sha256);
+  const main = counted.reduce<ReadView[]>((most, read) => (held(read).length > most.length ? held(read) : most), []);
+  const others = counted.filter((r) => r.sha256 !== main[0]?.sha256);
+  const newest = others.at(-1);
+  const chosen = !newest ? (counted.length > 1 ? counted : all).slice(0, 2) : counted.length === 2 ? counted : main.length > 1 ? [main[0], main[1], newest] : counted.slice(0, 3);
+  return chosen.length > 1 ? chosen.map((r) => r.number).sort((a, b) => a - b) : null;
 }
 
 /** Which of the two stands alone: the image that fewer counted reads hold; the second when both are held by as many. */
-export function standsAlone(reads: readonly ReadView[], a: ReadView, b: ReadView): 0 | 1 {
+export function standsAlone(reads: readonly ReadView[], [a, b]: readonly ReadView[]): 0 | 1 {
   const held = (sha256: string) => reads.filter((r) => r.stage === a.stage && r.counted && r.sha256 === sha256).length;
   return held(a.sha256) < held(b.sha256) ? 0 : 1;
 }

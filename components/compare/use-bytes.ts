@@ -16,8 +16,8 @@ export function windowOf(at: number, sizeBytes: number): { offset: number; lengt
 }
 
 /** A window of one read. Stored images never change, so what is here is never asked for again. */
-export function useBytes(read: Pick<ReadView, "id" | "sizeBytes">, offset: number, length: number): { bytes: Uint8Array | null; error: Error | null } {
-  const here = Math.max(0, Math.min(length, read.sizeBytes - offset));
-  const { data, error } = useSWR<Uint8Array, Error>(here > 0 ? `/api/reads/${read.id}/bytes?offset=${offset}&length=${here}` : null, bytesFetcher, { revalidateIfStale: false, revalidateOnFocus: false, revalidateOnReconnect: false });
+export function useBytes(read: Pick<ReadView, "id" | "sizeBytes"> | null, offset: number, length: number): { bytes: Uint8Array | null; error: Error | null } {
+  const here = Math.max(0, Math.min(length, (read?.sizeBytes ?? 0) - offset));
+  const { data, error } = useSWR<Uint8Array, Error>(read && here > 0 ? `/api/reads/${read.id}/bytes?offset=${offset}&length=${here}` : null, bytesFetcher, { revalidateIfStale: false, revalidateOnFocus: false, revalidateOnReconnect: false });
   return { bytes: here > 0 ? data ?? null : NONE, error: error ?? null };
 }

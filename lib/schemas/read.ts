@@ -46,6 +46,15 @@ export const comparisonInput = z.object({
   stage: z.enum(STAGES).default("before"),
 });
 
+const LIST_OF_READS = "Name two or three reads, such as reads=1,2 or reads=1,2,3.";
+
+/** Two or three different reads, or the same one twice. */
+export const comparedInput = z.object({
+  reads: z.string({ error: LIST_OF_READS }).regex(/^\d{1,5}(,\d{1,5}){1,2}$/, LIST_OF_READS).transform((s) => s.split(",").map(Number))
+    .refine((list) => list.length === 2 || new Set(list).size === list.length, "Name each of three reads once."),
+  stage: z.enum(STAGES).default("before"),
+});
+
 export const bytesInput = z.object({
   offset: z.coerce.number().int().min(0, "An offset counts from 0.").default(0),
   length: z.coerce.number().int().min(1).max(65_536, "At most 65,536 bytes a window.").default(4096),

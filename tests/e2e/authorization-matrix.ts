@@ -82,6 +82,7 @@ export const API: ApiRow[] = [
   look("/api/chips/[id]/view", (t) => `/api/chips/${t.chipId}/view`),
   look("/api/chips/[id]/strips", (t) => `/api/chips/${t.chipId}/strips`),
   look("/api/chips/[id]/comparison", (t) => `/api/chips/${t.chipId}/comparison?reads=1,2`),
+  look("/api/chips/[id]/comparison/differences", (t) => `/api/chips/${t.chipId}/comparison/differences?reads=1,2`),
   { ...change("POST", "/api/chips/[id]/reads", BENCH), multipart: true },
   change("POST", "/api/chips/[id]/approval-request", BENCH, () => ({})),
   change("POST", "/api/chips/[id]/approval", LEAD, (t) => ({ sha256: "0".repeat(64), donorChipId: t.unknown, statement: "Tried by the matrix." })),
