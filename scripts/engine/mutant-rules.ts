@@ -24,6 +24,11 @@ export const RULES: Mutant[] = [
   { name: "F10 single without a ratio", file: "single-findings.ts", from: " || best < WORD_SCORE_RATIO * wordScores[0]", to: "" },
   { name: "F24 as a reason", file: "single-findings.ts", from: 'code: "text-file", severity: "blocks"', to: 'code: "text-file", severity: "reason"' },
   { name: "F25 without a look at the rest", file: "single-findings.ts", from: "if (!container.parses)", to: "if (false)" },
+  { name: "F25 a gzip file by its first bytes alone", file: "facts-kind.ts", from: "parses: gunzips", to: "parses: true" },
+  { name: "F29 of chips that are never alike", file: "family.ts", from: "!among || !alike(among)", to: "!among" },
+  { name: "F29 of a read that is as alike as usual", file: "family.ts", from: "if (alike(next) || ", to: "if (" },
+  { name: "F29 takes fill as informative", file: "family.ts", from: "if (a[i] === 0xff || a[i] === 0) fill += 1;", to: "if (i < 0) fill += 1;" },
+  { name: "F29 beside an equal image", file: "findings.ts", from: "family && found.length === 0 ?", to: "family ?" },
   { name: "F33 by chi-square alone", file: "facts-noise.ts", from: "expectedEntropy(block.length) - NOISE_ENTROPY_SLACK) return false", to: "expectedEntropy(block.length) - 9) return false" },
   { name: "F34 forgets bits that are always 0", file: "single-findings.ts", from: "((whole.everOne >> bit) & 1) === 0", to: "false" },
   { name: "F34 forgets bits that are always 1", file: "single-findings.ts", from: "(whole.alwaysOne >> bit) & 1", to: "false" },
@@ -58,3 +63,8 @@ export const RULES: Mutant[] = [
   { name: "a read alone is not named", file: "judge-set.ts", from: "group.reads.length === 1 && groups.length > 1", to: "group.reads.length === 0" },
   { name: "a seating of the agreeing reads counts as their own", file: "judge-set.ts", from: "&& !main.seatings.includes(seatings[0])", to: "" },
 ];
+
+/** Thresholds whose change can't be noticed, and why. */
+export const THRESHOLDS_WITHOUT_EFFECT: Record<string, string> = {
+  "ONE_WAY_LEAST_FLIPS halved": "8 flips that all go one way are 2.8 standard deviations at most, as the lesser of both views counts: below ONE_WAY_Z",
+};

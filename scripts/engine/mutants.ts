@@ -2,7 +2,7 @@ import { spawnSync } from "node:child_process";
 import { cpSync, mkdtempSync, readFileSync, rmSync, symlinkSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
-import { CONTROL, RULES, type Mutant } from "./mutant-rules";
+import { CONTROL, RULES, THRESHOLDS_WITHOUT_EFFECT, type Mutant } from "./mutant-rules";
 
 /**
  * Breaks one rule or threshold of the engine at a time, in a copy, and sees whether the tests of tests/core notice.
@@ -12,11 +12,11 @@ const root = path.join(import.meta.dirname, "../..");
 const budget = Number(process.argv[2] ?? 330) * 1000;
 const file = (name: string) => `tests/core/${name}.test.ts`;
 /** the quick ones first; real images only where those notice nothing */
-const QUICK = ["golden/golden", "inspect", "single-findings", "diagnose-pair", "diagnose-read-back", "judge-set"].map(file);
+const QUICK = ["golden/golden", "thresholds", "family", "inspect", "single-findings", "diagnose-pair", "diagnose-read-back", "judge-set"].map(file);
 /** where a change in a file is most likely noticed */
 const NEAREST: [RegExp, string[]][] = [
   [/^facts|^inspect/, ["inspect"]], [/^single|^repeat/, ["single-findings"]], [/^judge/, ["judge-set"]], [/read-back/, ["diagnose-read-back"]],
-  [/^diagnose/, ["golden/golden", "diagnose-pair"]], [/^thresholds/, ["single-findings", "diagnose-pair"]],
+  [/^diagnose/, ["golden/golden", "diagnose-pair"]], [/^thresholds/, ["thresholds", "single-findings", "diagnose-pair"]], [/^family/, ["family"]],
 ];
 const SLOW = ["findings", "engine-properties", "fault-injection"].map(file);
 
@@ -33,6 +33,7 @@ function thresholdMutants(source: string): Mutant[] {
   const found = [...source.matchAll(/export const ([A-Z_0-9]+) = ([0-9._ /]+);/g)];
   return [2, 0.5].flatMap((by) => found.map(([line, name, value]) => ({
     name: `${name} ${by === 2 ? "doubled" : "halved"}`, file: "thresholds.ts", from: line, to: line.replace(`= ${value};`, `= ${scaled(value, by)};`),
+    why: THRESHOLDS_WITHOUT_EFFECT[`${name} ${by === 2 ? "doubled" : "halved"}`],
   })));
 }
 
@@ -44,7 +45,7 @@ const CONFIG = `export default {
 
 const home = mkdtempSync(path.join(tmpdir(), "twinread-mutants-"));
 try {
-  for (const part of ["lib/core", "tests/core", "tests/support", "scripts/engine", "tsconfig.json", "package.json"]) {
+  for (const part of ["lib/core", "lib/engine", "tests/core", "tests/support", "scripts/engine", "tsconfig.json", "package.json"]) {
     cpSync(path.join(root, part), path.join(home, part), { recursive: true });
   }
   // the project's own settings build the worker first, which no rule of the engine needs
