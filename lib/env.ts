@@ -18,6 +18,8 @@ export interface Env {
   /** IANA name */
   timeZone: string;
   smtp: SmtpSettings;
+  /** absolute path; every seal is appended to it */
+  witnessFile: string;
   appVersion: string;
 }
 
@@ -27,9 +29,9 @@ let known: Env | undefined;
 export function env(): Env {
   if (known) return known;
   const settings = readSettings(process.env, /* turbopackIgnore: true */ process.cwd(), false);
-  const { port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, dbPort, databaseUrl } = settings;
+  const { port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, witnessFile, dbPort, databaseUrl } = settings;
   known = {
-    port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp,
+    port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, witnessFile,
     appVersion: packageJson.version,
     get databaseUrl() {
       return databaseUrl ?? `mariadb://twinread_app:${secretIn(dataDir, "db-app-password")}@127.0.0.1:${dbPort}/twinread`;

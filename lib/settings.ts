@@ -32,6 +32,8 @@ export interface Settings {
   /** IANA name */
   timeZone: string;
   smtp: SmtpSettings;
+  /** absolute; every seal is appended to it */
+  witnessFile: string;
 }
 
 /** Every problem at once, each a sentence that names the variable and what to do. */
@@ -121,6 +123,11 @@ const schema = z.object({
     context.addIssue(`SMTP_FROM is "${value}". Set it to the sender's e-mail address, such as desk@workshop.example.`);
     return z.NEVER;
   }),
+  WITNESS_FILE: text.transform((value, context) => {
+    if (value === undefined || !/[/\\]$/.test(value)) return value;
+    context.addIssue(`WITNESS_FILE is "${value}", a folder. Set it to the path of a file, such as /mnt/other-disk/seals.jsonl.`);
+    return z.NEVER;
+  }),
 });
 
 type Read = z.output<typeof schema>;
@@ -165,6 +172,9 @@ function smtpOf(read: Read, mailPort: number): SmtpSettings {
   return { host: "127.0.0.1", port: mailPort, secure: false, user: null, password: null, from, fake: true };
 }
 
+/** Where the witness file lies when no other place is set. */
+export const ownWitnessFile = (dataDir: string) => path.join(dataDir, "witness", "seals.jsonl");
+
 /**
  * Parses all settings at once and throws one SettingsError that lists every problem. `root` is what a relative data folder
  * starts from. `whole` is for the starting process, which sees both database addresses; the app sees one only.
@@ -177,12 +187,13 @@ export function readSettings(variables: Variables, root: string, whole: boolean)
   if (problems.length > 0) throw new SettingsError(problems);
   const [number, dbPort] = [read.PORT as number, read.DB_PORT as number];
   const mailPort = read.MAIL_PORT ?? (dbPort < 65535 ? dbPort + 1 : dbPort - 1);
+  const dataDir = path.resolve(root, read.TWINREAD_DATA ?? (read.DEMO ? ".data/demo" : ".data/live"));
   return {
     port: number,
     host: read.HOST,
     publicUrl: read.PUBLIC_URL ?? `http://${read.HOST.includes(":") ? `[${read.HOST}]` : read.HOST}:${number}`,
     demo: read.DEMO,
-    dataDir: path.resolve(root, read.TWINREAD_DATA ?? (read.DEMO ? ".data/demo" : ".data/live")),
+    dataDir,
     dbPort,
     mailPort,
     databaseUrl: read.DATABASE_URL ?? null,
@@ -190,5 +201,6 @@ export function readSettings(variables: Variables, root: string, whole: boolean)
     workshop: read.WORKSHOP_NAME ?? (read.DEMO ? "Alder Lane Drive Bench" : "Twinread"),
     timeZone: read.WORKSHOP_TIME_ZONE,
     smtp: smtpOf(read, mailPort),
+    witnessFile: read.WITNESS_FILE ? path.resolve(root, read.WITNESS_FILE) : ownWitnessFile(dataDir),
   };
 }

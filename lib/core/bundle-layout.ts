@@ -14,6 +14,12 @@ export const TAG_SIGNATURE = "tagmanifest-sha256.sig";
 export const CASE_JSON = "data/case.json";
 export const WORKSHOP_KEYS = "data/workshop-keys";
 export const LOG_KEY = "data/seal/log-key.pem";
+/** the seal that was made when the bundle was started: its text, its raw Ed25519 signature, the key that signed it */
+export const SEAL_TEXT = "data/seal/seal.txt";
+export const SEAL_SIGNATURE = "data/seal/seal.sig";
+export const SEAL_KEY = "data/seal/seal-key.pem";
+/** canonical JSON of lib/core/seal.ts SealProof, one proof a drive in the order of their numbers, no newline at its end */
+export const SEAL_PROOF = "data/seal/proof.json";
 
 /** `n` counts the case's drives from 1. */
 export function driveFolder(n: number): string {

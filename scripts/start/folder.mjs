@@ -33,17 +33,22 @@ export function emptyFolder(dataDir, kept) {
   }
 }
 
-/** Secrets and the log key, each made once and never replaced. */
+/** Secrets and keys, each made once and never replaced. */
 export function makeSecrets(dataDir) {
   const secret = (name, make) => writeOnce(path.join(dataDir, "secrets", name), make);
   secret("session-secret", () => `${randomBytes(32).toString("base64url")}\n`);
   secret("db-app-password", () => `${randomBytes(32).toString("base64url")}\n`);
   secret("db-admin-password", () => `${randomBytes(32).toString("base64url")}\n`);
   secret("outbox-key", () => `${randomBytes(32).toString("hex")}\n`);
-  const keyFile = path.join(dataDir, "keys/log-key.pem");
-  const publicFile = path.join(dataDir, "keys/log-key.pub.pem");
+  for (const use of ["log", "seal"]) makeKey(dataDir, use);
+}
+
+/** The key that signs the log, and the one that signs seals: an older version's folder gets the second at its next start. */
+function makeKey(dataDir, use) {
+  const keyFile = path.join(dataDir, `keys/${use}-key.pem`);
+  const publicFile = path.join(dataDir, `keys/${use}-key.pub.pem`);
   if (existsSync(keyFile) && existsSync(publicFile)) return checkMode(keyFile);
-  if (existsSync(keyFile)) throw new Refusal(`${publicFile} is missing beside the log key. Bring the folder keys back from your backup.`);
+  if (existsSync(keyFile)) throw new Refusal(`${publicFile} is missing beside the ${use} key. Bring the folder keys back from your backup.`);
   const pair = generateKeyPairSync("ed25519");
   // the public half first: a start that is cut in between leaves no key without it
   rmSync(publicFile, { force: true });

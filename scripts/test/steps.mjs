@@ -1,6 +1,7 @@
 import { existsSync, mkdirSync, readdirSync, rmSync, writeFileSync } from "node:fs";
 import path from "node:path";
 import { runningMark } from "../start/child.mjs";
+import { makeSecrets } from "../start/folder.mjs";
 import { openHouse } from "../start/house.mjs";
 import { ensureBuilt } from "../start/install.mjs";
 import { once } from "../start/once.mjs";
@@ -46,6 +47,8 @@ async function withDatabase(mayUseKept, work) {
       await house.prepareEmpty();
       await house.database();
     }
+    // a kept folder may be older than the newest key
+    if (kept) makeSecrets(settings.dataDir);
     await house.migrate();
     return await work({ ...adminVariables(settings), NODE_ENV: "test" }, house, settings);
   } finally {

@@ -21,7 +21,7 @@ describe("the data folder", () => {
     expect(mode(".")).toBe(0o700);
     const files = ["secrets", "keys"].flatMap((folder) => readdirSync(path.join(dataDir, folder)).map((name) => `${folder}/${name}`));
     expect(files.sort()).toEqual([
-      "keys/log-key.pem", "keys/log-key.pub.pem", "secrets/db-admin-password", "secrets/db-app-password", "secrets/outbox-key", "secrets/session-secret",
+      "keys/log-key.pem", "keys/log-key.pub.pem", "keys/seal-key.pem", "keys/seal-key.pub.pem", "secrets/db-admin-password", "secrets/db-app-password", "secrets/outbox-key", "secrets/session-secret",
     ]);
     for (const file of files) expect([file, mode(file)]).toEqual([file, 0o600]);
   });
@@ -33,12 +33,23 @@ describe("the data folder", () => {
     expect(["secrets/session-secret", "secrets/outbox-key", "keys/log-key.pem"].map(content)).toEqual(before);
   });
 
-  it("gets an Ed25519 log key whose public half fits", () => {
+  it("gets two Ed25519 keys, one for the log and one for seals, whose public halves fit", () => {
     prepareFolder(dataDir, "demo");
-    const secret = createPrivateKey(content("keys/log-key.pem"));
-    expect(secret.asymmetricKeyType).toBe("ed25519");
-    expect(createPublicKey(secret).export({ type: "spki", format: "pem" })).toBe(content("keys/log-key.pub.pem"));
+    for (const use of ["log", "seal"]) {
+      const secret = createPrivateKey(content(`keys/${use}-key.pem`));
+      expect(secret.asymmetricKeyType).toBe("ed25519");
+      expect(createPublicKey(secret).export({ type: "spki", format: "pem" })).toBe(content(`keys/${use}-key.pub.pem`));
+    }
+    expect(content("keys/seal-key.pem")).not.toBe(content("keys/log-key.pem"));
     expect(Buffer.from(content("secrets/outbox-key").trim(), "hex")).toHaveLength(32);
+  });
+
+  it("of an older version gets a seal key and keeps its log key", () => {
+    prepareFolder(dataDir, "live");
+    const log = content("keys/log-key.pem");
+    for (const name of ["seal-key.pem", "seal-key.pub.pem"]) rmSync(path.join(dataDir, "keys", name));
+    prepareFolder(dataDir, "live");
+    expect([mode("keys/seal-key.pem"), content("keys/log-key.pem")]).toEqual([0o600, log]);
   });
 
   it("never mixes demo data and real work", () => {

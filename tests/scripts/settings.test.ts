@@ -57,11 +57,18 @@ describe("settings", () => {
     ["SMTP_PASSWORD", { SMTP_HOST: "mail.workshop.example", SMTP_USER: "me", SMTP_FROM: "a@b.example" }],
     ["SMTP_FROM", { SMTP_HOST: "mail.workshop.example" }],
     ["SMTP_FROM", { SMTP_FROM: "the desk" }],
+    ["WITNESS_FILE", { WITNESS_FILE: "/mnt/other-disk/" }],
   ])("refuse a wrong %s with a sentence: %o", (name, variables) => {
     const found = problems(variables);
     expect(found).toHaveLength(1);
     expect(found[0]).toContain(name);
     expect(found[0]).toMatch(/^\S.*\.$/);
+  });
+
+  it("keep the witness file in the data folder, or where they are told to", () => {
+    expect(read({ TWINREAD_DATA: "/srv/vault" }).witnessFile).toBe("/srv/vault/witness/seals.jsonl");
+    expect(read({ WITNESS_FILE: "/mnt/other-disk/seals.jsonl" }).witnessFile).toBe("/mnt/other-disk/seals.jsonl");
+    expect(read({ WITNESS_FILE: "outside/seals.jsonl" }).witnessFile).toBe("/srv/checkout/outside/seals.jsonl");
   });
 
   it("list every problem at once", () => {
