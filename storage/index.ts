@@ -6,18 +6,23 @@ import { imagePath } from "./paths";
 import * as writeOnce from "./write-once";
 
 export type { Arrived } from "./write-once";
-export type { ImageState } from "./local";
-export { discard } from "./write-once";
+export type { ImageState, Look } from "./local";
+export { discard, filesArriving } from "./write-once";
 
 /** The byte store of this data folder. Images are named by their SHA-256 in lower-case hex and never change. */
 export const receive = (stream: Readable) => writeOnce.receive(env().dataDir, stream);
-export const keep = (arrived: writeOnce.Arrived) => writeOnce.keep(env().dataDir, arrived);
+export const keep = (arrived: writeOnce.Arrived, damaged?: () => Promise<void>) => writeOnce.keep(env().dataDir, arrived, damaged);
 /** Where the bytes of an image lie, for the engine's threads. */
 export const pathOfImage = (sha256: string) => imagePath(env().dataDir, sha256);
 export const imageChunks = (sha256: string) => local.imageChunks(env().dataDir, sha256);
 export const imageWindow = (sha256: string, offset: number, length: number) => local.imageWindow(env().dataDir, sha256, offset, length);
 export const checkImage = (sha256: string, sizeBytes: number) => local.checkImage(env().dataDir, sha256, sizeBytes);
+export const lookAtImage = (sha256: string, sizeBytes: number, passed?: (bytes: number) => Promise<void>) => local.lookAtImage(env().dataDir, sha256, sizeBytes, passed);
+export const markOfImage = (sha256: string) => local.markOfImage(env().dataDir, sha256);
+export const stateNow = (sha256: string, sizeBytes: number) => local.stateNow(env().dataDir, sha256, sizeBytes);
+export const storeIsThere = () => local.storeIsThere(env().dataDir);
 export const verifiedStream = (sha256: string) => local.verifiedStream(env().dataDir, sha256);
 export const freeBytes = () => local.freeBytes(env().dataDir);
 export const clearIncoming = (olderThanMs: number) => local.clearIncoming(env().dataDir, olderThanMs);
-export { keyIdOf, logKey, verifySignature } from "./keys";
+export { dropNextKey, keyIdOf, type KeyUse, logKey, makeNextKey, nextKeyId, placeNextKey, sealKey, verifySignature } from "./keys";
+export { appendWitness, readWitness, witnessMark } from "./witness-file";
