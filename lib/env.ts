@@ -20,6 +20,10 @@ export interface Env {
   smtp: SmtpSettings;
   /** absolute path; every seal is appended to it */
   witnessFile: string;
+  /** days within which each stored image is read whole again; 0: the check is off */
+  scrubDays: number;
+  /** MiB a second that the check reads at most */
+  scrubMebibytesPerSecond: number;
   appVersion: string;
 }
 
@@ -29,9 +33,9 @@ let known: Env | undefined;
 export function env(): Env {
   if (known) return known;
   const settings = readSettings(process.env, /* turbopackIgnore: true */ process.cwd(), false);
-  const { port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, witnessFile, dbPort, databaseUrl } = settings;
+  const { port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, witnessFile, scrubDays, scrubMebibytesPerSecond, dbPort, databaseUrl } = settings;
   known = {
-    port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, witnessFile,
+    port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, witnessFile, scrubDays, scrubMebibytesPerSecond,
     appVersion: packageJson.version,
     get databaseUrl() {
       return databaseUrl ?? `mariadb://twinread_app:${secretIn(dataDir, "db-app-password")}@127.0.0.1:${dbPort}/twinread`;

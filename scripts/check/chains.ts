@@ -1,29 +1,14 @@
 import { createHash } from "node:crypto";
 import type { Transaction } from "sequelize";
-import { checkChain, type ChainProblem } from "@/lib/core/custody";
+import { CHAIN_PROBLEMS } from "@/lib/core/chain-words";
+import { checkChain } from "@/lib/core/custody";
+import { keyOrder } from "@/lib/core/keyring";
 import { WORKSHOP_CHAIN } from "@/lib/core/words";
 import { CustodyEntry, CustodyHead } from "@/models";
 import { verifySignature } from "@/storage";
 import { keyring, type Keyring } from "@/lib/queries/keyring";
 import type { Places } from "./places";
 import type { Damage, StoreReport } from "./report";
-
-const SENTENCE: Record<ChainProblem, string> = {
-  "not-readable": "The entry cannot be read.",
-  "not-canonical": "The entry's text is not in its canonical form: it was written by something else.",
-  "wrong-shape": "The entry does not have the parts that an entry has.",
-  "other-chain": "The entry belongs to another log.",
-  sequence: "The entry's number does not follow the one before.",
-  "time-went-back": "The entry claims a time before the one before it.",
-  prev: "The entry does not continue the one before it: one of the two was changed, or one is missing.",
-  "stored-hash": "The entry is not the one whose digest was stored: it was changed.",
-  "unknown-key": "The entry is signed with a key that no log introduces.",
-  signature: "The signature does not fit the entry: it was changed, or somebody else wrote it.",
-  head: "The log's head does not stand at its last entry.",
-  "head-was-behind": "The log's head had been turned back when this entry was written.",
-  "tail-missing": "The log ends before its head: entries at the end are missing.",
-  "could-not-check": "The entry could not be checked.",
-};
 
 /** What the log says was stored or approved: the facts that a row must agree with. */
 export interface Logged {
@@ -67,11 +52,12 @@ async function checkOne(tx: Transaction, chain: string, head: { seq: number; has
     head, {
       sha256,
       knows: (keyId) => ring.keys.has(keyId),
+      order: keyOrder(ring),
       verify: (keyId, bytes, signature) => verifySignature(ring.keys.get(keyId) ?? "", bytes, signature),
     }, chain,
   );
   for (const finding of findings) {
-    found.damage.push({ ...damage(places, chain, finding.seq, finding.problem, SENTENCE[finding.problem]), expected: finding.expected, found: finding.found });
+    found.damage.push({ ...damage(places, chain, finding.seq, finding.problem, CHAIN_PROBLEMS[finding.problem]), expected: finding.expected, found: finding.found });
   }
   if (rows.length === 0 && !head && chain !== WORKSHOP_CHAIN) found.damage.push(damage(places, chain, null, "no-log", "The drive has no log at all."));
   found.chains.push({ chain, place: places.chain(chain), entries: rows.length, head, findings: findings.length });

@@ -4,7 +4,7 @@ import { root } from "../start/say.mjs";
 /** Settings of a person's own must not leak into the tests. */
 const OWN = [
   "PORT", "HOST", "PUBLIC_URL", "DEMO", "TWINREAD_DATA", "DB_PORT", "MAIL_PORT", "DATABASE_URL", "DATABASE_ADMIN_URL",
-  "WORKSHOP_NAME", "WORKSHOP_TIME_ZONE", "SMTP_URL", "SMTP_HOST", "SMTP_PORT", "SMTP_USER", "SMTP_PASSWORD", "SMTP_FROM", "WITNESS_FILE",
+  "WORKSHOP_NAME", "WORKSHOP_TIME_ZONE", "SCRUB_DAYS", "SCRUB_MEBIBYTES_A_SECOND", "SMTP_URL", "SMTP_HOST", "SMTP_PORT", "SMTP_USER", "SMTP_PASSWORD", "SMTP_FROM", "WITNESS_FILE",
 ];
 
 /** The data folders and ports of the tests; TEST_DATA, TEST_DB_PORT and E2E_PORT move them, for two runs side by side. */
