@@ -64,20 +64,24 @@ function forStage(finding: Finding, stage: Stage): Finding {
   return { ...finding, severity: "note", advice };
 }
 
-/** F26 to F29. An image that equals another chip's is more than alike to it. */
-function recordFindings({ facts, elsewhere, family }: JudgeInput): Finding[] {
+/**
+ * F26 to F29. An image that equals another chip's is more than alike to it; one that shows a fault of its own is unlike
+ * others because of that.
+ */
+function recordFindings({ facts, elsewhere, family }: JudgeInput, ownFault: boolean): Finding[] {
   const found = crossFindings(facts, elsewhere);
-  const alike = family && found.length === 0 ? familyFinding(family) : null;
+  const alike = family && found.length === 0 && !ownFault ? familyFinding(family) : null;
   return alike ? [alike] : found;
 }
 
 /** Findings on one read when it is stored: what it shows by itself, and against what is already known. */
 export function judgeRead(input: JudgeInput): Finding[] {
+  const own = singleFindings(input.facts, input.chip);
   const found = [
-    ...singleFindings(input.facts, input.chip),
+    ...own,
     copyFinding(input),
     input.stage === "after" ? null : oddSizeFinding(input),
-    ...(input.stage === "before" ? recordFindings(input) : []),
+    ...(input.stage === "before" ? recordFindings(input, own.some((finding) => finding.severity === "blocks")) : []),
   ];
   return found.filter((finding) => finding !== null).map((finding) => forStage(finding, input.stage));
 }

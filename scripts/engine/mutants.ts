@@ -53,7 +53,7 @@ try {
   symlinkSync(path.join(root, "node_modules"), path.join(home, "node_modules"));
   // a new process for each run: a warm one remembers an earlier failure and calls every change noticed
   const run = (tests: readonly string[]) => spawnSync(process.execPath, ["node_modules/vitest/vitest.mjs", "run", "--bail", "1", "--no-isolate", ...tests], {
-    cwd: home, stdio: "ignore", timeout: 90_000,
+    cwd: home, stdio: "ignore", timeout: 300_000,
   }).status === 0;
   const passes = (changed?: string) => {
     const name = changed ? path.basename(changed) : "";

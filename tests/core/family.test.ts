@@ -64,10 +64,13 @@ describe("a read beside the same chip of other boards", () => {
 describe("the note on a judged read", () => {
   const image = goldenImage();
   const other = { relation: "other-drive" as const, readName: "Read 1", designator: "U7", caseRef: "26-0181", sameSerial: false };
-  const judged = (stage: Stage, elsewhere: (typeof other)[] = []) => judgeRead({
+  const judged = (stage: Stage, elsewhere: (typeof other)[] = [], bytes = image) => judgeRead({
     stage, read: { sizeBytes: 8192, sha256: GOOD, fileName: "u3.bin", modifiedAt: null }, chip: { sizeBytes: 8192, sizeSource: "marking" },
-    facts: inspectWhole(image), policy: DEFAULT_POLICY, earlier: [], elsewhere, family: { relatives: [{ ...relative(0), ...likenessOf(image, stream("s", 8192)) }], among: share(1000) },
+    facts: inspectWhole(bytes), policy: DEFAULT_POLICY, earlier: [], elsewhere, family: { relatives: [{ ...relative(0), ...likenessOf(image, stream("s", 8192)) }], among: share(1000) },
   }).map((one) => `${one.code} ${one.severity}`);
   it("stands on reads of the original alone", () => expect((["before", "donor", "after"] as const).map((stage) => judged(stage))).toEqual([["family-likeness note"], [], []]));
   it("gives way to an equal image of another chip", () => expect(judged("before", [other])).toEqual(["other-drive blocks"]));
+  it("gives way to a fault that the image shows by itself", () => {
+    expect(judged("before", [], Uint8Array.from(image, (_, i) => image[i % 1024]))).toEqual(["repeats-within blocks"]);
+  });
 });

@@ -66,6 +66,7 @@ describe("content", () => {
     const low = (n: number) => plain(n).map((value) => value & 0xdf);
     expect(said(low(255))).toEqual([]);
     expect(said(low(256))).toEqual(["constant-bit reason"]);
+    expect(said(low(4095))).toEqual(["constant-bit reason"]);
     expect(said(low(4096))).toEqual(["constant-bit blocks"]);
     expect(alone(plain(4096).map((value) => value | 0x02))[0].message).toBe("In every byte bit 1 is always 1.");
   });
