@@ -19,3 +19,5 @@ export const SESSION_IDLE_SECONDS = 30 * 60;
 export const SESSION_ABSOLUTE_SECONDS = 8 * 3600;
 export const IDEMPOTENCY_DAYS = 7;
 export const MIN_PASSWORD_CHARACTERS = 15;
+/** rows of one CSV file; more has to be narrowed down */
+export const MAX_CSV_ROWS = 20_000;

@@ -14,7 +14,12 @@ export async function chainIsClean(driveId: string, tx?: Transaction): Promise<b
   const { findings } = await checkCustody(driveId, tx);
   if (findings.length === 0) return true;
   const assessed = await lastAssessment(driveId, tx);
-  return findings.every((f) => f.seq !== null && (f.seq < assessed || (f.seq === assessed && ABOUT_THE_PAST.has(f.problem))));
+  return findings.every((finding) => covers(assessed, finding));
+}
+
+/** Whether an assessment at this place says something about a finding of the check. */
+export function covers(assessed: number, { seq, problem }: { seq: number | null; problem: string }): boolean {
+  return seq !== null && (seq < assessed || (seq === assessed && ABOUT_THE_PAST.has(problem)));
 }
 
 /** Its place in the chain, 0 without one. The signed body counts, not the column beside it. */
