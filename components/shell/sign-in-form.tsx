@@ -13,7 +13,14 @@ interface Refused {
 
 const LIMITED: Refused = { title: "Too many tries.", words: "This name or this machine rests for 15 minutes. Wait, then try again, or ask the admin for a new password." };
 const WRONG: Refused = { title: "That didn’t match.", words: "Check the e-mail address and the password. After 8 tries this name rests for 15 minutes." };
+const ended = (day: string): Refused => ({ title: `This account ended on ${day}.`, words: "Nobody can sign in with it any more; ask the admin if it should go on." });
 const AWAY: Refused = { title: "Twinread can’t be reached.", words: "Check the network, then try again." };
+
+/** What the server says in one word, or "ended" with the account's last day. */
+function refusedBy(error: string | null | undefined): Refused {
+  const day = /^ended (\d{1,2} [A-Z][a-z]+ \d{4})$/.exec(error ?? "")?.[1];
+  return day ? ended(day) : error === "limited" ? LIMITED : WRONG;
+}
 
 /** Signs in and goes on to `target`, a path of this site that the page has checked. */
 export function SignInForm({ workshop, target }: { workshop: string; target: string }) {
@@ -30,7 +37,7 @@ export function SignInForm({ workshop, target }: { workshop: string; target: str
       window.location.assign(target);
       return;
     }
-    setRefused(answer === undefined || answer.status >= 500 ? AWAY : answer.error === "limited" ? LIMITED : WRONG);
+    setRefused(answer === undefined || answer.status >= 500 ? AWAY : refusedBy(answer.error));
     setBusy(false);
   }
   return (

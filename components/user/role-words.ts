@@ -1,5 +1,8 @@
+import { dayInWords } from "@/lib/core/account-end";
+import { listText } from "@/lib/core/quantity";
 import type { Role } from "@/lib/core/words";
 import { ROLES } from "@/lib/core/words";
+import type { UserView } from "@/lib/views";
 
 const DOES: Record<Role, string> = {
   technician: "receives and returns parcels, records drives, boards and chips, takes and uploads reads, writes and reads back",
@@ -10,6 +13,17 @@ const DOES: Record<Role, string> = {
 
 export function roleDoes(role: Role): string {
   return DOES[role];
+}
+
+/** The sentence under the field: "An auditor reads …". */
+export function roleHint(role: string): string {
+  return `A ${role} ${DOES[role as Role]}.`.replace(/^A a/, "An a");
+}
+
+/** "limited to 26-0003 and 26-0007, until 31 January 2027"; null for an account without limits. */
+export function limitsText({ cases, endsOn }: Pick<UserView, "cases" | "endsOn">): string | null {
+  const only = cases && (cases.length > 0 ? `limited to ${listText(cases.map((one) => one.ref))}` : "limited to no case");
+  return [only, endsOn && `${only ? "" : "open "}until ${dayInWords(endsOn)}`].filter(Boolean).join(", ") || null;
 }
 
 export const ROLE_OPTIONS = ROLES.map((role) => ({ value: role, label: role }));

@@ -6,6 +6,7 @@ import { Button, Buttons } from "@/components/ui/button";
 import { Mark } from "@/components/ui/mark";
 import { momentText } from "@/components/ui/times";
 import { useSay } from "@/components/ui/toast";
+import { dayInWords } from "@/lib/core/account-end";
 import { send } from "@/lib/http/send";
 import type { UserView } from "@/lib/views";
 import { ChangeUser } from "./change-user";
@@ -36,10 +37,10 @@ export function UserTable({ users, ownId, timeZone }: { users: readonly UserView
         <thead><tr><th scope="col">Name</th><th scope="col">E-mail address</th><th scope="col">Role</th><th scope="col">State</th><th scope="col">Last seen</th><th scope="col"><span className="sr-only">Change</span></th></tr></thead>
         <tbody>
           {users.map((user) => (
-            <tr key={user.id} className={user.disabled ? "is-aside" : ""}>
+            <tr key={user.id} className={user.disabled || user.ended ? "is-aside" : ""}>
               <th scope="row">{user.name}{user.id === ownId ? <span className="font-normal text-ink-2"> (you)</span> : null}</th>
               <td className="[overflow-wrap:anywhere]">{user.email}</td>
-              <td>{user.role}</td>
+              <td><RoleCell user={user} /></td>
               <td><State user={user} /></td>
               <td data-l="Last seen">{user.lastSeenAt ? momentText(user.lastSeenAt, timeZone) : "never"}</td>
               <td className="l-row">
@@ -70,8 +71,20 @@ export function UserTable({ users, ownId, timeZone }: { users: readonly UserView
   );
 }
 
+/** The role with what the account carries: the only cases it sees, and its last day. */
+function RoleCell({ user: { role, cases, endsOn, ended } }: { user: UserView }) {
+  return (
+    <>
+      {role}
+      {cases ? <span className="block max-w-[30ch] text-t2 text-ink-2">only {cases.length > 0 ? <span className="font-mono">{cases.map((one) => one.ref).join(", ")}</span> : "an empty list of cases"}</span> : null}
+      {endsOn ? <span className="block text-t2 text-ink-2">{ended ? "ended on" : "until"} {dayInWords(endsOn)}</span> : null}
+    </>
+  );
+}
+
 function State({ user }: { user: UserView }) {
   if (user.disabled) return <><Mark kind="aside" /> Switched off</>;
+  if (user.ended) return <><Mark kind="aside" /> Ended</>;
   if (user.mustChangePassword) return <><Mark kind="wait" /> Has a one-time password</>;
   return <><Mark kind="done" className="[--hole:var(--paper)]" /> Can sign in</>;
 }

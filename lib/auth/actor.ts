@@ -3,6 +3,7 @@ import { type Actor, NIL } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { SESSION_ABSOLUTE_SECONDS, SESSION_IDLE_SECONDS } from "@/lib/limits";
 import { BenchToken, Session, User } from "@/models";
+import { actorOfUser, hasEnded, lastDayInWords } from "./account";
 import { authOptions } from "./options";
 import { tokenHash } from "./token";
 
@@ -20,7 +21,7 @@ export async function actorOf(request: Request, open?: "anyone" | "new-password"
   if (user.mustChangePassword && open !== "new-password") {
     throw new AppError("forbidden", "Choose a password of your own first, on your account page.");
   }
-  return { id: user.id, name: user.name, role: user.role };
+  return actorOfUser(user);
 }
 
 async function actorOfToken(header: string): Promise<Actor> {
@@ -29,13 +30,14 @@ async function actorOfToken(header: string): Promise<Actor> {
   if (!row || row.withdrawnAt) throw new AppError("not-signed-in", "This bench token isn't known or was withdrawn. Make a new one on the account page.");
   const user = (row as unknown as { user: User }).user;
   if (user.disabledAt) throw new AppError("not-signed-in", "The account of this bench token is switched off. Ask the admin.");
+  if (hasEnded(user)) throw new AppError("not-signed-in", `The account of this bench token ended on ${lastDayInWords(user)}. Ask the admin.`);
   if (!row.lastUsedAt || Date.now() - row.lastUsedAt.getTime() > TOUCH_MS) await row.update({ lastUsedAt: new Date() });
-  return { id: user.id, name: user.name, role: user.role };
+  return actorOfUser(user);
 }
 
 /**
  * The user of the session cookie, or null. The session row decides, not the cookie: ended, idle for 30 minutes,
- * older than 8 hours or a disabled user count at once. A background refresh does not keep the session alive.
+ * older than 8 hours, a disabled user or one past the end date count at once. A background refresh does not keep the session alive.
  */
 export async function signedInUser(background = false): Promise<User | null> {
   const cookie = await getServerSession(authOptions);
@@ -46,7 +48,7 @@ export async function signedInUser(background = false): Promise<User | null> {
   const user = (session as unknown as { user: User }).user;
   const idle = now - session.lastSeenAt.getTime() > SESSION_IDLE_SECONDS * 1000;
   const old = now - session.createdAt.getTime() > SESSION_ABSOLUTE_SECONDS * 1000;
-  if (idle || old || user.disabledAt) {
+  if (idle || old || user.disabledAt || hasEnded(user, now)) {
     await session.update({ endedAt: new Date(now) });
     return null;
   }

@@ -3,6 +3,7 @@ import type { NextAuthOptions } from "next-auth";
 import CredentialsProvider from "next-auth/providers/credentials";
 import { SESSION_ABSOLUTE_SECONDS } from "@/lib/limits";
 import { Session, User } from "@/models";
+import { hasEnded, lastDayInWords } from "./account";
 import { clearAttempts, mayTry } from "./attempts";
 import { passwordFits } from "./password";
 
@@ -50,6 +51,8 @@ export const authOptions: NextAuthOptions = {
         const fits = await passwordFits(user?.passwordHash ?? null, password);
         if (!user || !fits || user.disabledAt) return null;
         await clearAttempts(email, address);
+        // told only to who knows the password; the sign-in page makes a sentence of it
+        if (hasEnded(user)) throw new Error(`ended ${lastDayInWords(user)}`);
         const now = new Date();
         const session = await Session.create({ id: randomUUID(), userId: user.id, createdAt: now, lastSeenAt: now });
         return { id: user.id, sid: session.id };

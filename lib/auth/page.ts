@@ -3,6 +3,7 @@ import { redirect } from "next/navigation";
 import type { Actor } from "@/lib/core/words";
 import { sessionView } from "@/lib/queries/session";
 import type { SessionView } from "@/lib/views";
+import { actorOfUser } from "./account";
 import { signedInUser } from "./actor";
 
 /** For pages: the actor and what the shell shows, or a way to the sign-in page and back. */
@@ -11,6 +12,6 @@ export async function signedIn(): Promise<{ actor: Actor; session: SessionView }
   const here = (await headers()).get("x-twinread-path") ?? "/bench";
   if (!user) redirect(`/sign-in?callbackUrl=${encodeURIComponent(here)}`);
   if (user.mustChangePassword && !here.startsWith("/account")) redirect("/account?choose=password");
-  const actor: Actor = { id: user.id, name: user.name, role: user.role };
+  const actor = await actorOfUser(user);
   return { actor, session: await sessionView(actor, user.email) };
 }

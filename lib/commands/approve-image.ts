@@ -13,7 +13,7 @@ import { Approval, inTransaction, Read, type Transaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { chainIsClean } from "./chain-gate";
 import { judgeChip } from "./judge-read";
-import { placeOfChip } from "./place";
+import { chipFor, placeOfChip } from "./place";
 import { allow } from "./refuse";
 import { requireSoundImage } from "./report-image";
 
@@ -25,7 +25,7 @@ class AgainstRule extends Error {}
  */
 export async function approveImage(actor: Actor, chipId: string, input: ApprovalInput): Promise<{ id: string; sha256: string }> {
   allow(actor, "approval.give");
-  const { drive, chip, board } = await placeOfChip(chipId);
+  const { drive, chip, board } = await chipFor(actor, chipId);
   if (board.role !== "original") throw new AppError("does-not-fit", "An approval belongs to the original's chip. Open its pair.");
   const read = await Read.findOne({ where: { chipId, stage: "before", sha256: Buffer.from(input.sha256, "hex") } });
   if (read) await requireSoundImage(input.sha256, read.sizeBytes, "approval");

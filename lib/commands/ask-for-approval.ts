@@ -8,13 +8,13 @@ import { currentPolicy } from "@/lib/queries/policy";
 import type { ApprovalRequestInput } from "@/lib/schemas/approval";
 import { ApprovalRequest, inTransaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
-import { placeOfChip } from "./place";
+import { chipFor } from "./place";
 import { allow } from "./refuse";
 
 /** Puts a chip on the leads' list, with a message. */
 export async function askForApproval(actor: Actor, chipId: string, input: ApprovalRequestInput): Promise<{ id: string }> {
   allow(actor, "approval.ask");
-  const { drive, chip, board } = await placeOfChip(chipId);
+  const { drive, chip, board } = await chipFor(actor, chipId);
   if (board.role !== "original") throw new AppError("does-not-fit", "Approval is asked for on the original's chip. Open its pair.");
   return inTransaction(async (tx) => {
     await lockChain(tx, drive.id);
@@ -34,7 +34,7 @@ export async function askForApproval(actor: Actor, chipId: string, input: Approv
 /** A lead sends the request back with a reason. */
 export async function sendBack(actor: Actor, chipId: string, input: { reason: string }): Promise<{ id: string }> {
   allow(actor, "approval.send-back");
-  const { drive, chip } = await placeOfChip(chipId);
+  const { drive, chip } = await chipFor(actor, chipId);
   return inTransaction(async (tx) => {
     await lockChain(tx, drive.id);
     const request = await ApprovalRequest.findOne({ where: { chipId }, order: [["askedAt", "DESC"]], transaction: tx });

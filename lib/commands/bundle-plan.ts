@@ -3,10 +3,10 @@ import { WORKSHOP_CHAIN } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import { AppError } from "@/lib/errors";
 import { currentPolicy } from "@/lib/queries/policy";
-import { Case, CustodyHead, Drive, inTransaction } from "@/models";
+import { CustodyHead, Drive, inTransaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { type BundleImage, recordOfCase } from "./bundle-case";
-import { notFound } from "./refuse";
+import { caseFor } from "./place";
 
 /** What a bundle holds, fixed at the heads of its drives' logs: the same plan always gives the same bytes. */
 export interface BundlePlan {
@@ -24,8 +24,7 @@ export interface BundlePlan {
 
 /** Writes into each drive's log that a bundle leaves, and fixes what it holds while the logs are locked. */
 export async function startBundle(actor: Actor, caseId: string): Promise<BundlePlan> {
-  const found = await Case.findByPk(caseId);
-  if (!found) throw notFound("case");
+  const found = await caseFor(actor, caseId);
   return inTransaction(async (tx) => {
     const drives = await Drive.findAll({ where: { caseId }, order: ["position"], transaction: tx });
     if (drives.length === 0) throw new AppError("rule-against", "This case has no drive yet, so there is nothing to pack. Record its drive first.");

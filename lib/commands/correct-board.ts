@@ -6,12 +6,12 @@ import type { BoardCorrection } from "@/lib/schemas/board";
 import { Board, inTransaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { changesOf } from "./correct-facts";
-import { placeOfBoard } from "./place";
+import { boardFor } from "./place";
 import { allow } from "./refuse";
 
 export async function correctBoard(actor: Actor, boardId: string, input: BoardCorrection): Promise<{ id: string }> {
   allow(actor, "fact.correct");
-  const { drive } = await placeOfBoard(boardId);
+  const { drive } = await boardFor(actor, boardId);
   return inTransaction(async (tx) => {
     await lockChain(tx, drive.id);
     const board = (await Board.findByPk(boardId, { transaction: tx }))!;

@@ -7,14 +7,14 @@ import { appendEntry, lockChain } from "./append-entry";
 import { changesOf } from "./correct-facts";
 import { judgeChip } from "./judge-read";
 import { pairChip } from "./pair-chip";
-import { placeOfChip } from "./place";
+import { chipFor, placeOfChip } from "./place";
 import { allow } from "./refuse";
 import { revokeStanding } from "./revoke-approval";
 
 /** Corrects what was typed about a chip; its reads are judged again and an approval that stood on the old facts falls. */
 export async function correctChip(actor: Actor, chipId: string, input: ChipCorrection): Promise<{ id: string }> {
   allow(actor, "fact.correct");
-  const { drive } = await placeOfChip(chipId);
+  const { drive } = await chipFor(actor, chipId);
   const { pairedWith, supplyMillivolts, ...rest } = input.changes;
   const wanted = { ...rest, ...(supplyMillivolts === undefined ? {} : { supplyMillivolts: supplyMillivolts === "unknown" ? null : supplyMillivolts }) };
   try {

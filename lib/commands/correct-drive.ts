@@ -5,13 +5,13 @@ import { Board, Chip, Drive, inTransaction, Read, type Transaction } from "@/mod
 import { appendEntry, lockChain } from "./append-entry";
 import { changesOf } from "./correct-facts";
 import { judge, judgeSameImages } from "./judge-read";
-import { placeOfChip } from "./place";
-import { allow, notFound } from "./refuse";
+import { driveFor, placeOfChip } from "./place";
+import { allow } from "./refuse";
 
 /** Corrects what was typed about a drive. Two drives of one serial are one drive recorded twice, so a new serial is judged at once. */
 export async function correctDrive(actor: Actor, driveId: string, input: DriveCorrection): Promise<{ id: string }> {
   allow(actor, "fact.correct");
-  if (!(await Drive.findByPk(driveId))) throw notFound("drive");
+  await driveFor(actor, driveId);
   const judged = await inTransaction(async (tx) => {
     await lockChain(tx, driveId);
     const drive = (await Drive.findByPk(driveId, { transaction: tx }))!;

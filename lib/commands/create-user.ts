@@ -5,6 +5,7 @@ import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { UserInput } from "@/lib/schemas/user";
 import { inTransaction, User } from "@/models";
+import { caseListInWords, checkLimits, keepCaseList, limitColumns } from "./account-limits";
 import { appendEntry } from "./append-entry";
 import { allow } from "./refuse";
 
@@ -14,8 +15,16 @@ export async function createUser(actor: Actor, input: UserInput, password = oneT
   const passwordHash = await hashPassword(password);
   try {
     return await inTransaction(async (tx) => {
-      const user = await User.create({ id: randomUUID(), email: input.email, name: input.name, role: input.role, passwordHash, mustChangePassword, createdAt: new Date() }, { transaction: tx });
-      await appendEntry(tx, WORKSHOP_CHAIN, actor, "user.created", { type: "user", id: user.id }, { user: { id: user.id, name: user.name }, role: user.role });
+      const limits = { cases: input.cases ?? null, endsOn: input.endsOn ?? null };
+      await checkLimits(tx, input.role, limits);
+      const user = await User.create({
+        id: randomUUID(), email: input.email, name: input.name, role: input.role, passwordHash, mustChangePassword, createdAt: new Date(), ...limitColumns(limits),
+      }, { transaction: tx });
+      await keepCaseList(tx, user.id, limits.cases);
+      await appendEntry(tx, WORKSHOP_CHAIN, actor, "user.created", { type: "user", id: user.id }, {
+        user: { id: user.id, name: user.name }, role: user.role,
+        ...(limits.cases ? { cases: await caseListInWords(tx, limits.cases) } : {}), ...(limits.endsOn ? { ends: limits.endsOn } : {}),
+      });
       return { user: { id: user.id, email: user.email }, password };
     });
   } catch (error) {

@@ -4,13 +4,13 @@ import { may } from "@/lib/core/policy";
 import { FORMAT_ENDING } from "@/lib/core/text-format";
 import { type Actor, type Format, readName } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
-import { Approval, inTransaction, Read } from "@/models";
+import { Approval, inTransaction } from "@/models";
 import { engine } from "@/lib/engine/pool";
 import { pathOfImage, verifiedStream } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { requireCleanChain } from "./chain-gate";
-import { driveLetter, placeOfChip } from "./place";
-import { allow, notFound } from "./refuse";
+import { driveLetter, readFor } from "./place";
+import { allow } from "./refuse";
 import { reportImage, requireSoundImage } from "./report-image";
 
 export interface HandOutInput {
@@ -28,9 +28,7 @@ export interface HandOut {
 
 /** Records that an image leaves the house, before its first byte leaves: what, to whom, why. */
 export async function handOutImage(actor: Actor, readId: string, input: HandOutInput): Promise<HandOut> {
-  const read = await Read.findByPk(readId);
-  if (!read) throw notFound("read");
-  const place = await placeOfChip(read.chipId);
+  const { read, place } = await readFor(actor, readId);
   const approval = await Approval.findOne({ where: { chipId: read.chipId, revokedAt: null, sha256: read.sha256 } });
   const free = read.stage === "donor" ? "the donor's own content" : approval && read.stage === "before" ? "the approved image, for writing" : null;
   if (free) allow(actor, "read.hand-out-approved");

@@ -17,7 +17,7 @@ import { appendEntry, lockChain } from "./append-entry";
 import { comparisonOnRecord } from "./compare-images";
 import { inspectImage, recordImage } from "./inspect-image";
 import { judge } from "./judge-read";
-import { type ChipPlace, placeOfChip } from "./place";
+import { chipFor, type ChipPlace, placeOfChip } from "./place";
 import { allow } from "./refuse";
 import { requireSoundImage } from "./report-image";
 import { revokeStanding } from "./revoke-approval";
@@ -37,7 +37,7 @@ interface Made {
  */
 export async function makeComposite(actor: Actor, chipId: string, input: CompositeInput): Promise<ReadView> {
   allow(actor, "composite.make");
-  const place = await placeOfChip(chipId);
+  const place = await chipFor(actor, chipId);
   if (place.board.role !== "original") throw new AppError("does-not-fit", "A composite is made of reads of the original's chip. Open that one.");
   const rows = await Read.findAll({ where: { chipId, stage: "before", number: input.reads }, order: ["number"] });
   const missing = input.reads.find((number) => !rows.some((r) => r.number === number));

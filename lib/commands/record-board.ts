@@ -6,13 +6,13 @@ import { AppError } from "@/lib/errors";
 import type { BoardInput } from "@/lib/schemas/board";
 import { Board, inTransaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
-import { placeOfDrive } from "./place";
+import { driveFor } from "./place";
 import { allow } from "./refuse";
 
 /** Records a board of a drive. A donor is compared with the original: another board number needs a lead and a reason. */
 export async function recordBoard(actor: Actor, driveId: string, input: BoardInput): Promise<{ id: string; fit: DonorFit | null }> {
   allow(actor, "board.record");
-  await placeOfDrive(driveId);
+  await driveFor(actor, driveId);
   return inTransaction(async (tx) => {
     await lockChain(tx, driveId);
     const originals = await Board.findAll({ where: { driveId, role: "original" }, transaction: tx });

@@ -6,12 +6,12 @@ import type { ChipInput } from "@/lib/schemas/chip";
 import { Chip, inTransaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { pairChip } from "./pair-chip";
-import { placeOfBoard } from "./place";
+import { boardFor } from "./place";
 import { allow } from "./refuse";
 
 export async function recordChip(actor: Actor, boardId: string, input: ChipInput): Promise<{ id: string; designator: string }> {
   allow(actor, "chip.record");
-  const place = await placeOfBoard(boardId);
+  const place = await boardFor(actor, boardId);
   const { board, drive } = place;
   if (input.pairedWith && board.role !== "donor") {
     throw new AppError("does-not-fit", "Only a donor's chip is paired: record it on the donor board and name the original's chip.", { errors: [{ path: "pairedWith", message: "Only on a donor's chip." }] });

@@ -4,7 +4,7 @@ import type { DriveInput } from "@/lib/schemas/drive";
 import { Case, Drive, inTransaction } from "@/models";
 import { appendEntry } from "./append-entry";
 import { driveLetter } from "./place";
-import { allow, notFound } from "./refuse";
+import { allow, allowCase, notFound } from "./refuse";
 
 export async function recordDrive(actor: Actor, caseId: string, input: DriveInput): Promise<{ id: string; letter: string }> {
   allow(actor, "drive.record");
@@ -12,6 +12,7 @@ export async function recordDrive(actor: Actor, caseId: string, input: DriveInpu
     // the case row is locked so that two drives cannot take one letter
     const found = await Case.findByPk(caseId, { transaction: tx, lock: tx.LOCK.UPDATE });
     if (!found) throw notFound("case");
+    allowCase(actor, caseId);
     const position = (await Drive.max<number, Drive>("position", { where: { caseId }, transaction: tx }) ?? 0) + 1;
     const facts = { partNumber: input.partNumber ?? null, model: input.model ?? null, serial: input.serial ?? null, interface: input.interface ?? null };
     const drive = await Drive.create({ id: randomUUID(), caseId, position, ...facts, createdAt: new Date() }, { transaction: tx });

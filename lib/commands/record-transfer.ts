@@ -5,7 +5,7 @@ import type { TransferInput } from "@/lib/schemas/approval";
 import { Approval, inTransaction, Transfer } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { requireCleanChain } from "./chain-gate";
-import { placeOfChip } from "./place";
+import { chipFor, placeOfChip } from "./place";
 import { allow, notFound } from "./refuse";
 
 /** Writes down that the approved image was written to the donor's chip, or that the chip itself was moved there. */
@@ -13,7 +13,7 @@ export async function recordTransfer(actor: Actor, approvalId: string, input: Tr
   allow(actor, "transfer.record");
   const known = await Approval.findByPk(approvalId);
   if (!known) throw notFound("approval");
-  const { drive, chip } = await placeOfChip(known.chipId);
+  const { drive, chip } = await chipFor(actor, known.chipId, undefined, "approval");
   return inTransaction(async (tx) => {
     await lockChain(tx, drive.id);
     const approval = (await Approval.findByPk(approvalId, { transaction: tx }))!;

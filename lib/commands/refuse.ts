@@ -1,4 +1,4 @@
-import { may, type Thing, type Verb } from "@/lib/core/policy";
+import { isHidden, may, type Thing, type Verb } from "@/lib/core/policy";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 
@@ -12,8 +12,12 @@ const WHO: Partial<Record<Verb, string>> = {
   "board.allow-other-number": "The donor's board number differs from the original's. Only a lead can record it, with a reason.",
 };
 
+/** What an address that leads nowhere answers. */
+export const NO_ADDRESS = "The interface has no such address. Check its spelling and the id in it.";
+
 /** Asks the policy and throws the refusal; `detail` names the way out where there is one. */
 export function allow(actor: Actor, verb: Verb, thing: Thing = {}): void {
+  if (isHidden(actor, verb)) throw new AppError("not-found", NO_ADDRESS);
   if (!may(actor, verb, thing)) throw new AppError("forbidden", WHO[verb] ?? `As ${actor.role} you can look at this, but this step is for others in the workshop.`);
 }
 
@@ -29,4 +33,9 @@ export function casesOf(actor: Actor): readonly string[] | null {
 /** A case outside an auditor's list is not there for them: 404, like one that never was. */
 export function allowCase(actor: Actor, caseId: string, what = "case"): void {
   if (actor.cases && !actor.cases.includes(caseId)) throw notFound(what);
+}
+
+/** The same as part of a query's condition; `column` holds a case's id. Nothing at all where there is no limit. */
+export function inCases<C extends "id" | "caseId">(actor: Actor, column: C): { [K in C]?: string[] } {
+  return (actor.cases ? { [column]: [...actor.cases] } : {}) as { [K in C]?: string[] };
 }

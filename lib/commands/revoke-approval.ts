@@ -2,7 +2,7 @@ import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { Approval, Chip, inTransaction, type Transaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
-import { placeOfChip } from "./place";
+import { chipFor, placeOfChip } from "./place";
 import { allow, notFound } from "./refuse";
 
 export type RevocationCause =
@@ -26,7 +26,7 @@ export async function revokeApproval(actor: Actor, approvalId: string, input: { 
   const approval = await Approval.findByPk(approvalId);
   const chip = approval && (await Chip.findByPk(approval.chipId));
   if (!approval || !chip) throw notFound("approval");
-  const { drive } = await placeOfChip(chip.id);
+  const { drive } = await chipFor(actor, chip.id, undefined, "approval");
   return inTransaction(async (tx) => {
     await lockChain(tx, drive.id);
     const now = await Approval.findByPk(approvalId, { transaction: tx });

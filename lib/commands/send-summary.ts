@@ -12,13 +12,13 @@ import { people } from "@/lib/queries/people";
 import { currentPolicy } from "@/lib/queries/policy";
 import { shareView } from "@/lib/queries/share-view";
 import type { ShareView } from "@/lib/views";
-import { Case, Customer, Drive, inTransaction, Share } from "@/models";
+import { Customer, Drive, inTransaction, Share } from "@/models";
 import { logKey } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { requireCleanChain } from "./chain-gate";
-import { driveLetter } from "./place";
+import { caseFor, driveLetter } from "./place";
 import { queueMail } from "./queue-mail";
-import { allow, notFound } from "./refuse";
+import { allow } from "./refuse";
 
 const DAY_MS = 86_400_000;
 const MASK = "(private link, hidden)";
@@ -26,8 +26,7 @@ const MASK = "(private link, hidden)";
 /** Makes a private link to the case's summary and sends it to the customer, once every chip that needs transfer is verified. */
 export async function sendSummary(actor: Actor, caseId: string): Promise<{ share: ShareView }> {
   allow(actor, "summary.send");
-  const found = await Case.findByPk(caseId);
-  if (!found) throw notFound("case");
+  const found = await caseFor(actor, caseId);
   for (const drive of await Drive.findAll({ where: { caseId } })) await requireCleanChain(drive.id);
   return inTransaction(async (tx) => {
     const drives = await Drive.findAll({ where: { caseId }, order: ["position"], transaction: tx });

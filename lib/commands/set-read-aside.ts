@@ -6,8 +6,8 @@ import { currentPolicy } from "@/lib/queries/policy";
 import { Approval, inTransaction, Read, type Transaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { judge, judgeChip, judgeSameImages } from "./judge-read";
-import { type ChipPlace, placeOfChip } from "./place";
-import { allow, notFound } from "./refuse";
+import { type ChipPlace, placeOfChip, readFor } from "./place";
+import { allow } from "./refuse";
 import { revokeStanding } from "./revoke-approval";
 
 /** Takes a read out of the count, with a reason; it stays where it is and can be counted again. */
@@ -20,13 +20,11 @@ export function countReadAgain(actor: Actor, readId: string, input: { reason: st
 }
 
 async function changeCount(actor: Actor, readId: string, reason: string, counted: boolean): Promise<{ id: string; counted: boolean }> {
-  const known = await Read.findByPk(readId);
-  if (!known) throw notFound("read");
+  const { read: known, place: { drive } } = await readFor(actor, readId);
   allow(actor, "read.set-aside", { operatorId: known.operatorId });
   if (known.stage === "after" && actor.role !== "lead") {
     throw new AppError("forbidden", "Only a lead can set a read-back aside or count it again. Or record a new write: the count then starts afresh.");
   }
-  const { drive } = await placeOfChip(known.chipId);
   const done = await inTransaction(async (tx) => {
     await lockChain(tx, drive.id);
     const place = await placeOfChip(known.chipId, tx);

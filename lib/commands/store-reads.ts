@@ -20,7 +20,7 @@ import { checkStage } from "./check-stage";
 import { compareIfStored } from "./compare-images";
 import { inspectImage, recordImage } from "./inspect-image";
 import { judge, judgeSameImages } from "./judge-read";
-import { type ChipPlace, placeOfChip } from "./place";
+import { chipFor, type ChipPlace, placeOfChip } from "./place";
 import { allow } from "./refuse";
 import { reportSound } from "./report-image";
 import { revokeStanding } from "./revoke-approval";
@@ -46,7 +46,7 @@ export interface StoredReads {
  */
 export async function storeReads(actor: Actor, chipId: string, fields: ReadFields, files: UploadedFile[]): Promise<StoredReads> {
   allow(actor, "read.store");
-  const place = await placeOfChip(chipId);
+  const place = await chipFor(actor, chipId);
   checkFiles(fields, files);
   await checkStage(place, fields.stage);
   const incoming = await Promise.all(files.map((file) => expandText(fields, file)));

@@ -4,13 +4,14 @@ import { shareView } from "@/lib/queries/share-view";
 import type { ShareView } from "@/lib/views";
 import { Drive, inTransaction, Share } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
-import { allow, notFound } from "./refuse";
+import { allow, allowCase, notFound } from "./refuse";
 
 /** Ends a customer's link at once; a link that has ended stays as it is. */
 export async function withdrawShare(actor: Actor, shareId: string): Promise<{ share: ShareView }> {
   allow(actor, "share.withdraw");
   const known = await Share.findByPk(shareId);
   if (!known) throw notFound("link");
+  allowCase(actor, known.caseId, "link");
   const drives = (await Drive.findAll({ where: { caseId: known.caseId } })).map((d) => d.id).sort();
   return inTransaction(async (tx) => {
     for (const id of drives) await lockChain(tx, id);

@@ -49,12 +49,23 @@ const RULES = {
 export type Verb = keyof typeof RULES;
 export const VERBS = Object.keys(RULES) as Verb[];
 
+/** What belongs to the workshop as a whole: for an auditor whose account carries a case list it isn't there at all. */
+const WORKSHOP_WIDE: ReadonlySet<Verb> = new Set<Verb>(["workshop-log.read", "user.manage", "outbox.read", "seal.make", "key.change"]);
+
+type Asker = Pick<Actor, "id" | "role" | "cases">;
+
+/** True when this is hidden from the actor like something that never was, rather than refused. */
+export function isHidden(actor: Asker, verb: Verb): boolean {
+  return actor.cases !== undefined && WORKSHOP_WIDE.has(verb);
+}
+
 export interface Thing {
   /** for read.set-aside: who took the read */
   operatorId?: string;
 }
 
-export function may(actor: Pick<Actor, "id" | "role">, verb: Verb, thing: Thing = {}): boolean {
+export function may(actor: Asker, verb: Verb, thing: Thing = {}): boolean {
+  if (isHidden(actor, verb)) return false;
   if (!(RULES[verb] as readonly string[]).includes(actor.role)) return false;
   if (verb === "read.set-aside" && actor.role === "technician") return thing.operatorId === actor.id;
   return true;

@@ -1,4 +1,4 @@
-import { allow } from "@/lib/commands/refuse";
+import { allow, inCases } from "@/lib/commands/refuse";
 import { may } from "@/lib/core/policy";
 import type { Actor, ChipStateCode, Policy } from "@/lib/core/words";
 import { env } from "@/lib/env";
@@ -10,6 +10,7 @@ import { chipState } from "./chip-state";
 import { originalSummary } from "./chip-summary";
 import { people } from "./people";
 import { currentPolicy } from "./policy";
+import { seenBy } from "./seen-by";
 import { dayIn } from "./workshop-day";
 
 /** `needs-reads` stands with `unread`: one group on the bench, by due date. */
@@ -18,7 +19,7 @@ const ORDER: ChipStateCode[] = ["unread", "reads-disagree", "held", "ready", "ap
 /** What lies on the bench: every chip of an open case that needs a transfer, in the order of its way. */
 export async function benchRows(actor: Actor): Promise<BenchRow[]> {
   allow(actor, "case.read");
-  const open = await Case.findAll({ where: { closedAt: null }, attributes: ["id"] });
+  const open = await Case.findAll({ where: { closedAt: null, ...inCases(actor, "id") }, attributes: ["id"] });
   const drives = await Drive.findAll({ where: { caseId: open.map((c) => c.id) }, attributes: ["id"] });
   const [{ records }, policy, who] = [await chipRecords(drives.map((d) => d.id)), await currentPolicy(), await people()];
   const leads = await User.findAll({ where: { role: "lead", disabledAt: null }, order: ["name"] });
@@ -37,7 +38,7 @@ export async function benchRows(actor: Actor): Promise<BenchRow[]> {
     };
   }));
   const place = ({ chip: { state } }: BenchRow) => ORDER.indexOf(state.state === "needs-reads" ? "unread" : state.state);
-  return rows.sort((a, b) => place(a) - place(b) || (a.dueOn ?? "9").localeCompare(b.dueOn ?? "9") || a.caseRef.localeCompare(b.caseRef));
+  return seenBy(actor, rows.sort((a, b) => place(a) - place(b) || (a.dueOn ?? "9").localeCompare(b.dueOn ?? "9") || a.caseRef.localeCompare(b.caseRef)));
 }
 
 /** Who acts next: leads who may sign while it waits for approval, else whoever did the last thing at the bench. */

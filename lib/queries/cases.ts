@@ -1,6 +1,6 @@
 import { Op, type Order, type WhereOptions } from "sequelize";
-import { allow, notFound } from "@/lib/commands/refuse";
-import { driveLetter } from "@/lib/commands/place";
+import { allow, inCases, notFound } from "@/lib/commands/refuse";
+import { caseFor, driveLetter } from "@/lib/commands/place";
 import { readCaseRef, withCheck } from "@/lib/core/case-number";
 import type { Actor } from "@/lib/core/words";
 import type { ListInput } from "@/lib/schemas/case";
@@ -11,6 +11,7 @@ import { chipRecords } from "./chip-records";
 import { chipState } from "./chip-state";
 import { people } from "./people";
 import { currentPolicy } from "./policy";
+import { seenBy } from "./seen-by";
 import { shareView } from "./share-view";
 
 const COLUMN: Record<string, string> = { ref: "ref", due: "dueOn", received: "receivedAt" };
@@ -23,20 +24,20 @@ export async function caseList(actor: Actor, input: ListInput): Promise<ListView
   const column = COLUMN[input.sort];
   const order: Order = [input.sort === "customer" ? [...byName] : column ? [column, direction] : ["receivedAt", "DESC"], ["ref", "DESC"]];
   const { rows, count } = await Case.findAndCountAll({
-    where: await matching(input.q), include: [{ model: Customer, as: "customer", required: true }], order,
+    where: { [Op.and]: [inCases(actor, "id"), await matching(actor, input.q)] }, include: [{ model: Customer, as: "customer", required: true }], order,
     limit: input.pageSize, offset: (input.page - 1) * input.pageSize, distinct: true,
   });
-  return { items: await caseRows(rows), total: count, page: input.page, pageSize: input.pageSize };
+  return { items: await seenBy(actor, await caseRows(rows)), total: count, page: input.page, pageSize: input.pageSize };
 }
 
 /** Case number, customer, damage, or a drive's part number, model or serial. */
-async function matching(q: string): Promise<WhereOptions> {
+async function matching(actor: Actor, q: string): Promise<WhereOptions> {
   const text = q.trim();
   if (!text) return {};
   const reading = readCaseRef(text);
   if (reading.kind === "ref") return { ref: reading.ref };
   const like = { [Op.like]: `%${text.replace(/[\\%_]/g, (c) => `\\${c}`)}%` };
-  const drives = await Drive.findAll({ attributes: ["caseId"], where: { [Op.or]: [{ partNumber: like }, { model: like }, { serial: like }] }, limit: 1000 });
+  const drives = await Drive.findAll({ attributes: ["caseId"], where: { ...inCases(actor, "caseId"), [Op.or]: [{ partNumber: like }, { model: like }, { serial: like }] }, limit: 1000 });
   return { [Op.or]: [{ ref: like }, { damage: like }, { "$customer.name$": like }, { id: drives.map((d) => d.caseId) }] } as WhereOptions;
 }
 
@@ -56,15 +57,15 @@ export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
 
 export async function caseView(actor: Actor, id: string): Promise<CaseView> {
   allow(actor, "case.read");
-  const found = await Case.findByPk(id);
-  const customer = found && (await Customer.findByPk(found.customerId));
-  if (!found || !customer) throw notFound("case");
+  const found = await caseFor(actor, id);
+  const customer = await Customer.findByPk(found.customerId);
+  if (!customer) throw notFound("case");
   const who = await people();
   const drives = await Drive.findAll({ where: { caseId: id }, order: ["position"] });
   const heads = new Map((await CustodyHead.findAll({ where: { chainId: drives.map((d) => d.id) } })).map((h) => [h.chainId, h.seq]));
   const boards = await boardViews(drives.map((d) => d.id));
   const shares = await Share.findAll({ where: { caseId: id }, order: [["createdAt", "DESC"]] });
-  return {
+  return seenBy(actor, {
     id, ref: found.ref, refChecked: withCheck(found.ref), state: found.closedAt ? "closed" : "open", closedReason: found.closedReason ?? null,
     customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
     damage: found.damage, note: found.note ?? null, dueOn: found.dueOn ?? null, receivedAt: found.receivedAt.toISOString(), createdBy: who(found.createdBy),
@@ -73,5 +74,5 @@ export async function caseView(actor: Actor, id: string): Promise<CaseView> {
       boards: boards.get(d.id) ?? [], custodyEntries: heads.get(d.id) ?? 0,
     })),
     shares: shares.map((s) => shareView(s, who)),
-  };
+  });
 }

@@ -1,6 +1,6 @@
 import { compareIfStored } from "@/lib/commands/compare-images";
 import { allow } from "@/lib/commands/refuse";
-import { driveLetter, placeOfChip } from "@/lib/commands/place";
+import { chipFor, driveLetter } from "@/lib/commands/place";
 import { chainIsClean } from "@/lib/commands/chain-gate";
 import { approvalConditions } from "@/lib/core/approval";
 import type { Actor, Stage } from "@/lib/core/words";
@@ -16,13 +16,14 @@ import { approvalView, requestView, transferView } from "./approval-views";
 import { people } from "./people";
 import { currentPolicy } from "./policy";
 import { readView } from "./read-view";
+import { seenBy } from "./seen-by";
 import { stripStack, stripView } from "./strips";
 import { why } from "./why";
 
 /** Everything the chip page shows. A donor's chip answers with its pair's state and its own reads. */
 export async function chipView(actor: Actor, chipId: string): Promise<ChipView> {
   allow(actor, "case.read");
-  const place = await placeOfChip(chipId);
+  const place = await chipFor(actor, chipId);
   const { chip, board, drive } = place;
   const [record, policy, who] = [await recordOfChip(chipId), await currentPolicy(), await people()];
   const isOriginal = board.role === "original";
@@ -35,7 +36,7 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
   const facts = record && approvalFacts(record, policy, await chainIsClean(drive.id));
   const takers = new Set(record?.before.map((r) => r.operatorId) ?? []);
   const leads = await User.findAll({ where: { role: "lead", disabledAt: null }, order: ["name"] });
-  return {
+  return seenBy(actor, {
     ...summary, marking: chip.marking ?? null, sizeSource: chip.sizeSource,
     drive: { id: drive.id, letter: driveLetter(drive), partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null },
     board: { id: board.id, role: board.role, boardNumber: board.boardNumber, revision: board.revision ?? null },
@@ -52,7 +53,7 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
     why: record ? await why(record, policy) : UNPAIRED.sentence,
     nextSeating: Object.fromEntries(STAGES.map((s) => [s, nextSeating(reads, s)])) as Record<Stage, number>,
     receivedAt: place.case.receivedAt.toISOString(),
-  };
+  });
 }
 
 function nextSeating(reads: Read[], stage: Stage): number {
@@ -100,7 +101,7 @@ export async function chipFlatView(actor: Actor, chipId: string) {
 /** Strips of a chip's counted reads over a window, for the loupe and the compare page. */
 export async function chipStrips(actor: Actor, chipId: string, { offset, length }: { offset: number; length?: number }): Promise<StripView> {
   allow(actor, "case.read");
-  const { chip, board } = await placeOfChip(chipId);
+  const { chip, board } = await chipFor(actor, chipId);
   const stage = board.role === "original" ? "before" : "donor";
   const reads = await Read.findAll({ where: { chipId, stage, counted: true }, order: ["number"] });
   if (offset >= chip.sizeBytes) throw new AppError("does-not-fit", "This address lies past the chip's end.");

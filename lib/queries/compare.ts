@@ -1,7 +1,7 @@
 import { stringify } from "csv-stringify/sync";
 import { compareIfStored, type Compared } from "@/lib/commands/compare-images";
-import { placeOfChip } from "@/lib/commands/place";
-import { allow, notFound } from "@/lib/commands/refuse";
+import { chipFor, readFor } from "@/lib/commands/place";
+import { allow } from "@/lib/commands/refuse";
 import { requireSoundImage } from "@/lib/commands/report-image";
 import { safeName } from "@/lib/core/bundle-layout";
 import { loneImage, type Third, threeWay, type ThreeWay, threeWayText } from "@/lib/core/compare-three";
@@ -16,6 +16,7 @@ import { imageWindow } from "@/storage";
 import { stripImage } from "./chip-summary";
 import { people } from "./people";
 import { readView } from "./read-view";
+import { seenBy } from "./seen-by";
 import { stripStack } from "./strips";
 
 interface Asked {
@@ -25,7 +26,7 @@ interface Asked {
 
 async function rowsOf(actor: Actor, chipId: string, { reads, stage }: Asked): Promise<{ rows: Read[]; chip: Chip }> {
   allow(actor, "case.read");
-  const { chip } = await placeOfChip(chipId);
+  const { chip } = await chipFor(actor, chipId);
   const rows = await Promise.all(reads.map((number) => Read.findOne({ where: { chipId, stage, number } })));
   const missing = rows.findIndex((r) => r === null);
   if (missing >= 0) throw new AppError("not-found", `${chip.designator} has no ${readName(stage, reads[missing])}. Choose from the chip's reads.`);
@@ -64,7 +65,7 @@ export async function comparison(actor: Actor, chipId: string, asked: Asked): Pr
 export async function comparedReads(actor: Actor, chipId: string, asked: Asked): Promise<ComparedReads> {
   const { rows, chip } = await rowsOf(actor, chipId, asked);
   const [a, b, c] = rows;
-  return c ? threeOf([a, b, c], chip.sizeBytes) : comparisonOf([a, b], chip.sizeBytes);
+  return seenBy(actor, c ? await threeOf([a, b, c], chip.sizeBytes) : await comparisonOf([a, b], chip.sizeBytes));
 }
 
 /** Two reads, of one chip or of an original and what was written from it. The caller has asked whether the actor may. */
@@ -111,8 +112,7 @@ export async function differencesCsv(actor: Actor, chipId: string, asked: Asked)
 /** A window of a read's bytes, for looking at; not a hand-out. */
 export async function readBytes(actor: Actor, readId: string, { offset, length }: { offset: number; length: number }): Promise<Buffer> {
   allow(actor, "read.bytes");
-  const read = await Read.findByPk(readId);
-  if (!read) throw notFound("read");
+  const { read } = await readFor(actor, readId);
   if (offset >= read.sizeBytes) throw new AppError("does-not-fit", `This image ends at byte ${read.sizeBytes.toLocaleString("en")}. Choose an offset before that.`);
   const image = await Image.findByPk(read.sha256);
   if (image?.state !== "sound") throw new AppError("rule-against", "The stored image no longer matches its digest, so its bytes aren't shown. Tell the lead.");

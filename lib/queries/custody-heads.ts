@@ -1,5 +1,5 @@
 import { driveLetter } from "@/lib/commands/place";
-import { allow } from "@/lib/commands/refuse";
+import { allow, inCases } from "@/lib/commands/refuse";
 import type { Actor } from "@/lib/core/words";
 import type { CustodyHeadRow, ListView } from "@/lib/views";
 import { Case, CustodyHead, Drive } from "@/models";
@@ -8,6 +8,7 @@ import { Case, CustodyHead, Drive } from "@/models";
 export async function custodyHeads(actor: Actor, { page, pageSize }: { page: number; pageSize: number }): Promise<ListView<CustodyHeadRow>> {
   allow(actor, "custody.read");
   const { rows, count } = await Drive.findAndCountAll({
+    where: inCases(actor, "caseId"),
     include: [{ model: Case, as: "case", required: true }], order: [[{ model: Case, as: "case" }, "ref", "DESC"], ["position", "ASC"]],
     limit: pageSize, offset: (page - 1) * pageSize, distinct: true,
   });

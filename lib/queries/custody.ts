@@ -2,11 +2,13 @@ import { createHash } from "node:crypto";
 import { type ChainFinding, checkChain } from "@/lib/core/custody";
 import { describe } from "@/lib/core/custody-actions";
 import { type Actor, type Stage, WORKSHOP_CHAIN } from "@/lib/core/words";
-import { allow, notFound } from "@/lib/commands/refuse";
+import { driveFor } from "@/lib/commands/place";
+import { allow } from "@/lib/commands/refuse";
 import type { CustodyCheckView, CustodyEntryView, PersonView } from "@/lib/views";
-import { CustodyEntry, CustodyHead, Drive, type Transaction } from "@/models";
+import { CustodyEntry, CustodyHead, type Transaction } from "@/models";
 import { logKey, verifySignature } from "@/storage";
 import { keyring } from "./keyring";
+import { seenBy } from "./seen-by";
 
 interface Body {
   at: string;
@@ -68,13 +70,13 @@ export async function checkCustody(chain: string, tx?: Transaction): Promise<Cus
 
 export async function custodyOfDrive(actor: Actor, driveId: string): Promise<{ entries: CustodyEntryView[] }> {
   allow(actor, "custody.read");
-  if (!(await Drive.findByPk(driveId))) throw notFound("drive");
-  return { entries: await chainEntries(driveId) };
+  await driveFor(actor, driveId);
+  return { entries: await seenBy(actor, await chainEntries(driveId)) };
 }
 
 export async function custodyCheckOfDrive(actor: Actor, driveId: string): Promise<CustodyCheckView> {
   allow(actor, "custody.read");
-  if (!(await Drive.findByPk(driveId))) throw notFound("drive");
+  await driveFor(actor, driveId);
   return checkCustody(driveId);
 }
 

@@ -5,6 +5,7 @@ import type { ChipView, ReadBackView, ReadView } from "@/lib/views";
 import { Read } from "@/models";
 import { chipView } from "./chip-view";
 import { comparisonOf } from "./compare";
+import { seenBy } from "./seen-by";
 import { type StripImage, stripStack } from "./strips";
 
 const DRAWN = 5;
@@ -25,7 +26,7 @@ export async function readBackComparison(actor: Actor, asked: ChipView, number: 
   const back = backs.find((r) => r.number === number);
   if (!approved || !back) return null;
   const [a, b] = [await Read.findByPk(approved.id), await Read.findByPk(back.id)];
-  return a && b ? comparisonOf([a, b], chip.sizeBytes) : null;
+  return a && b ? seenBy(actor, await comparisonOf([a, b], chip.sizeBytes)) : null;
 }
 
 async function latestTransfer(actor: Actor, asked: ChipView) {

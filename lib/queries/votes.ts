@@ -1,17 +1,18 @@
+import { readFor } from "@/lib/commands/place";
 import { allow, notFound } from "@/lib/commands/refuse";
 import { derivedFacts } from "@/lib/core/derived";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { VotesView } from "@/lib/views";
-import { Image, Read } from "@/models";
+import { Image } from "@/models";
 import { checkImage, imageChunks } from "@/storage";
 
 /** The votes behind a composite, from its stored report; the report is checked against the digest in the log first. */
 export async function votes(actor: Actor, readId: string): Promise<VotesView> {
   allow(actor, "case.read");
-  const read = await Read.findByPk(readId);
-  const derived = read && derivedFacts(read);
-  if (!read || !derived) throw notFound("composite");
+  const { read } = await readFor(actor, readId, "composite");
+  const derived = derivedFacts(read);
+  if (!derived) throw notFound("composite");
   const stored = await Image.findByPk(Buffer.from(derived.reportSha256, "hex"));
   if (!stored || (await checkImage(derived.reportSha256, stored.sizeBytes)) !== "sound") {
     throw new AppError("rule-against", "The stored report of this composite no longer matches its digest. Tell the lead; make the composite again from its reads.");

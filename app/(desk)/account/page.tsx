@@ -6,7 +6,7 @@ import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
 import { Note } from "@/components/ui/note";
 import { PageTitle, Section } from "@/components/ui/section";
-import { roleDoes } from "@/components/user/role-words";
+import { limitsText, roleDoes } from "@/components/user/role-words";
 import { signedIn } from "@/lib/auth/page";
 import { orNotFound } from "@/lib/http/page-errors";
 import { SESSION_ABSOLUTE_SECONDS, SESSION_IDLE_SECONDS } from "@/lib/limits";
@@ -17,11 +17,12 @@ export const metadata: Metadata = { title: "Account" };
 export default async function AccountPage() {
   const { actor, session } = await signedIn();
   const { user, tokens } = await orNotFound(() => accountView(actor));
+  const limits = limitsText(user);
   const mustChoose = user.mustChangePassword;
   return (
     <DeskShell session={session}>
       <PageMain className="pb-8">
-        <PageTitle note={`${user.email}, ${user.role}: ${roleDoes(user.role)}.`}>{user.name}</PageTitle>
+        <PageTitle note={limits ? `${user.email}, ${user.role}, ${limits}.` : `${user.email}, ${user.role}: ${roleDoes(user.role)}.`}>{user.name}</PageTitle>
         <Section title="Password" note="Another password ends your sign-ins elsewhere.">
           {mustChoose ? <Note kind="caution" title="Choose a password of your own first." className="mb-4 max-w-[76ch]">You signed in with a one-time password that an admin made, so somebody else has seen it. Everything else opens once you have chosen another.</Note> : null}
           <PasswordForm email={user.email} mustChoose={mustChoose} />

@@ -1,5 +1,5 @@
 import { allow } from "@/lib/commands/refuse";
-import { placeOfChip } from "@/lib/commands/place";
+import { chipFor } from "@/lib/commands/place";
 import { storeReads } from "@/lib/commands/store-reads";
 import { othersThan } from "@/lib/http/others-than";
 import { readFieldsOf } from "@/lib/http/read-fields";
@@ -10,7 +10,7 @@ export const POST = uploadHandler(
     status: 201, changes: true,
     before: async (actor, id) => {
       allow(actor, "read.store");
-      await placeOfChip(id);
+      await chipFor(actor, id);
     },
   },
   ({ actor, id, upload }) => storeReads(actor, id, readFieldsOf(upload), upload.files),
