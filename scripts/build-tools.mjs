@@ -11,6 +11,7 @@ const folder = path.join(root, "dist");
 export const TOOLS = {
   "engine-worker": "lib/engine/worker.ts",
   "inspect": "scripts/inspect.ts",
+  "check-bundle": "scripts/check-bundle.ts",
   "bench-engine": "scripts/bench/engine.ts",
 };
 

@@ -29,7 +29,7 @@ const ROOMS: Record<string, RegExp> = {
   "storage": /^lib\/(env|errors|core\/digest)$/,
   "scripts": /^(?!app\/|components\/)/,
 };
-const CORE_PACKAGES = ["zod", "canonicalize", "crc-32"];
+const CORE_PACKAGES = ["zod", "canonicalize", "crc-32", "@noble/curves/ed25519.js", "@noble/hashes/sha2.js", "@zip.js/zip.js/lib/zip-core-custom.js"];
 /** `import x from "y"`, `export * from "y"`, `import "y"`, `import("y")`, `require("y")` */
 const IMPORT = /(?:^|\n)\s*(import|export)\s+(type\s)?(?:[^"';]*?\sfrom\s*)?"([^"]+)"|\b(?:import|require)\(\s*"([^"]+)"\s*\)/g;
 

@@ -1,0 +1,4 @@
+import { launchTool } from "../launch-tool.mjs";
+
+// `npm run check:bundle`
+await launchTool("check-bundle");
