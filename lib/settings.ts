@@ -189,7 +189,7 @@ function smtpOf(read: Read, mailPort: number): SmtpSettings {
 }
 
 /** Where the witness file lies when no other place is set. */
-export const ownWitnessFile = (dataDir: string) => path.join(dataDir, "witness", "seals.jsonl");
+const ownWitnessFile = (dataDir: string) => path.join(dataDir, "witness", "seals.jsonl");
 
 /**
  * Parses all settings at once and throws one SettingsError that lists every problem. `root` is what a relative data folder

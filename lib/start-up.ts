@@ -1,5 +1,7 @@
 import { introduceKey } from "@/lib/commands/introduce-key";
 import { judgeAgain } from "@/lib/commands/judge-again";
+import { startScrub } from "@/lib/commands/scrub-loop";
+import { startSeals } from "@/lib/commands/seal-daily";
 import { startOutbox } from "@/lib/mail/outbox";
 import { env } from "@/lib/env";
 import { checkDatabase } from "@/models/check-database";
@@ -16,6 +18,8 @@ export async function startUp(): Promise<void> {
     await introduceKey();
     await clearIncoming(STALE_UPLOAD_MS);
     startOutbox();
+    startSeals();
+    startScrub();
     void judgeAgain();
   } catch (error) {
     console.error(`Twinread does not start: ${(error as Error).message}`);

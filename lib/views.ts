@@ -3,8 +3,9 @@
  * times RFC 3339 UTC text, ids UUIDs. Rows never leave; queries build these.
  */
 import type { DiagnosisView } from "./core/diagnosis";
+import type { SealProof } from "./core/seal";
 import type {
-  BoardRole, Bus, ChipStateCode, Finding, Format, Method, Policy, Range, Role, SizeSource, Stage, TransferKind,
+  BoardRole, Bus, ChipStateCode, Finding, Format, KeyPurpose, Method, Policy, Range, Role, SealCause, SizeSource, Stage, TransferKind,
 } from "./core/words";
 
 export interface PersonView {
@@ -440,6 +441,8 @@ export interface SummaryView {
     head: { seq: number; hash: string };
   }[];
   twoPersonRule: boolean;
+  /** the seal that was made when the link was sent; null for a link older than the first seal */
+  seal: { number: number; sha256: string; keyId: string } | null;
 }
 
 export interface SessionView {
@@ -464,4 +467,85 @@ export interface DecisionView {
   donorDiffers: number | null;
   /** per `before` read set aside: bytes that differ from the image, and where */
   setAside: { read: ReadView; differingBytes: number; place: string | null }[];
+}
+
+/** A seal in the list: what it states and why it was made. */
+export interface SealRow {
+  number: number;
+  /** RFC 3339 UTC, as the seal itself says */
+  at: string;
+  cause: SealCause;
+  chains: number;
+  root: string;
+  prev: string;
+  /** SHA-256 of the seal's text */
+  sha256: string;
+  keyId: string;
+}
+
+export interface SealView extends SealRow {
+  text: string;
+  /** base64 */
+  signature: string;
+  /** PEM; null when the log introduces no such key */
+  key: string | null;
+  /** the signature fits the text and the key is one that the log introduces */
+  signed: boolean;
+}
+
+export interface DriveProofView {
+  seal: SealView;
+  proof: SealProof;
+}
+
+export interface KeyRow {
+  keyId: string;
+  purpose: KeyPurpose;
+  /** RFC 3339 UTC, when the log introduced it */
+  since: string;
+  introducedBy: PersonView;
+  reason: string | null;
+  current: boolean;
+}
+
+export interface WitnessView {
+  path: string;
+  /** the highest seal number in the file; null when it holds none */
+  last: number | null;
+  /** a sentence about what is wrong; null when nothing is */
+  trouble: string | null;
+}
+
+/** A stored image that is damaged or gone, and what it is kept as. */
+export interface FaultyImageView {
+  sha256: string;
+  state: "damaged" | "missing";
+  sizeBytes: number;
+  /** RFC 3339, when it was last read whole */
+  checkedAt: string | null;
+  uses: { caseId: string; caseRef: string; driveId: string; chipId: string; name: string }[];
+}
+
+/** How the stored images are and how far reading them again has come. A limited auditor's numbers are of their cases. */
+export interface ScrubView {
+  images: number;
+  bytes: number;
+  states: { sound: number; damaged: number; missing: number };
+  /** not read again since they were stored */
+  neverChecked: number;
+  /** RFC 3339: when the image verified longest ago was verified, at its storing or since; null without images */
+  oldestAt: string | null;
+  /** the image read last, and when */
+  last: { sha256: string; at: string } | null;
+  /** each image is read again within so many days; 0: switched off */
+  days: number;
+  mebibytesPerSecond: number;
+  /** hours that one reading of the whole store takes at that pace */
+  hours: number;
+  state: "off" | "keeping-up" | "behind" | "stopped";
+  /** that state as one plain sentence */
+  sentence: string;
+  /** what is being read now */
+  now: { driveId: string | null; sha256: string } | null;
+  faulty: FaultyImageView[];
 }

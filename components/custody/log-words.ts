@@ -76,6 +76,7 @@ const PROBLEM: Record<string, string> = {
   prev: "doesn't carry the hash of the entry before: that one, or this one, was changed",
   "stored-hash": "doesn't give the hash that is stored beside it: its text was changed",
   "unknown-key": "is signed with a key that this workshop never introduced",
+  "old-key": "is signed with a key that had been replaced by then: whoever kept the former key may have written it",
   signature: "has a signature that doesn't fit its text: it was changed, or not written by Twinread",
   "could-not-check": "could not be checked",
 };

@@ -1,12 +1,13 @@
 import { createHash } from "node:crypto";
 import { Readable } from "node:stream";
 import {
-  bagInfoTxt, bagitTxt, CASE_JSON, compositePaths, custodyPath, LOG_KEY, MANIFEST, manifestLine, readmeTxt, TAG_MANIFEST, TAG_SIGNATURE, WORKSHOP_KEYS,
+  bagInfoTxt, bagitTxt, CASE_JSON, compositePaths, custodyPath, LOG_KEY, MANIFEST, manifestLine, readmeTxt, REPORT_PDF, SEAL_KEY, SEAL_PROOF, SEAL_SIGNATURE, SEAL_TEXT, TAG_MANIFEST, TAG_SIGNATURE, WORKSHOP_KEYS,
 } from "@/lib/core/bundle-layout";
 import { CHECK_SCRIPT } from "@/lib/core/check-script";
 import { logKey, verifiedStream } from "@/storage";
 import { bodyLines, keysPart, type LogPart, signatureLines } from "./bundle-log";
 import type { BundlePlan } from "./bundle-plan";
+import { bundleReport } from "./bundle-report";
 import { reportImage } from "./report-image";
 
 /** One file of the bundle. Its digest and size are known before its first byte flows. */
@@ -60,9 +61,11 @@ function imageFile(path: string, sha256: string, sizeBytes: number): BundleFile 
 
 /** Everything under data/, in the order in which it is sent. Another kind of payload is one more line here. */
 async function payload(plan: BundlePlan): Promise<BundleFile[]> {
-  const files = [textFile(CASE_JSON, plan.caseJson)];
+  const files = [textFile(CASE_JSON, plan.caseJson), textFile(REPORT_PDF, await bundleReport(plan))];
   for (const drive of plan.drives) files.push(...(await logFiles(custodyPath(drive.number), { chain: drive.id, upToSeq: drive.head.seq })));
   files.push(...(await logFiles(WORKSHOP_KEYS, keysPart(plan.workshopSeq))), textFile(LOG_KEY, logKey().publicKeyPem));
+  const { seal } = plan;
+  files.push(textFile(SEAL_TEXT, seal.text), textFile(SEAL_SIGNATURE, Buffer.from(seal.signature, "base64")), textFile(SEAL_KEY, seal.key), textFile(SEAL_PROOF, seal.proof));
   files.push(...plan.images.map((image) => imageFile(image.path, image.sha256, image.sizeBytes)));
   return files;
 }
@@ -77,7 +80,7 @@ export async function bundleFiles(plan: BundlePlan): Promise<{ files: BundleFile
     textFile("bagit.txt", bagitTxt()),
     textFile("bag-info.txt", bagInfoTxt({ date: plan.madeAt.slice(0, 10), ref: plan.ref, octets, files: data.length })),
     textFile(MANIFEST, manifest(data)),
-    textFile("README.txt", readmeTxt({ ...plan, drives: plan.drives.length, images: plan.images.length, composites: compositePaths(plan.images.map((image) => image.path)) })),
+    textFile("README.txt", readmeTxt({ ...plan, seal: plan.seal.number, drives: plan.drives.length, images: plan.images.length, composites: compositePaths(plan.images.map((image) => image.path)) })),
     { ...textFile("check.sh", CHECK_SCRIPT), executable: true as const },
   ];
   const tagText = manifest(tags);

@@ -1,11 +1,18 @@
+import { createHash } from "node:crypto";
+import { canonicalJson } from "@/lib/core/canonical";
+import { sealProof } from "@/lib/core/seal";
 import type { Actor } from "@/lib/core/words";
 import { WORKSHOP_CHAIN } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import { AppError } from "@/lib/errors";
 import { currentPolicy } from "@/lib/queries/policy";
-import { CustodyHead, Drive, inTransaction } from "@/models";
+import type { ReportCase, ReportDrawing } from "@/lib/report/report-facts";
+import { CustodyHead, Drive, inTransaction, type Transaction } from "@/models";
+import { sealKey } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { type BundleImage, recordOfCase } from "./bundle-case";
+import { drawingOf } from "./bundle-report";
+import { sealNow } from "./make-seal";
 import { caseFor } from "./place";
 
 /** What a bundle holds, fixed at the heads of its drives' logs: the same plan always gives the same bytes. */
@@ -20,6 +27,22 @@ export interface BundlePlan {
   caseJson: string;
   images: BundleImage[];
   twoPersonRule: boolean;
+  /** made when the bundle was started: over the last line of each drive's log in it */
+  seal: BundleSeal;
+  /** what the report's strips and verdicts show */
+  drawing: ReportDrawing;
+}
+
+export interface BundleSeal {
+  number: number;
+  sha256: string;
+  text: string;
+  /** base64 */
+  signature: string;
+  /** PEM of the key that signed it */
+  key: string;
+  /** canonical JSON of the inclusion proof of each drive */
+  proof: string;
 }
 
 /** Writes into each drive's log that a bundle leaves, and fixes what it holds while the logs are locked. */
@@ -43,13 +66,24 @@ export async function startBundle(actor: Actor, caseId: string): Promise<BundleP
     const { record, images, twoPersonRule } = await recordOfCase(tx, found, drives, heads);
     const workshop = env().workshop;
     const policy = await currentPolicy(tx);
+    const seal = await sealOfBundle(tx, actor, drives.map((drive) => drive.id));
     const keys = await CustodyHead.findByPk(WORKSHOP_CHAIN, { transaction: tx });
+    const caseJson = `${JSON.stringify({ format: "twinread-case/1", workshop, madeAt, policy, ...record }, null, 2)}\n`;
     return {
-      caseId, ref: found.ref, workshop, madeAt, workshopSeq: keys?.seq ?? 0, images, twoPersonRule: twoPersonRule && policy.twoPersonRule,
+      caseId, ref: found.ref, workshop, madeAt, workshopSeq: keys?.seq ?? 0, images, seal, twoPersonRule: twoPersonRule && policy.twoPersonRule,
       drives: drives.map((drive, i) => ({ number: i + 1, id: drive.id, head: heads.get(drive.id)! })),
-      caseJson: `${JSON.stringify({ format: "twinread-case/1", workshop, madeAt, policy, ...record }, null, 2)}\n`,
+      caseJson, drawing: await drawingOf(tx, JSON.parse(caseJson) as ReportCase, policy),
     };
   }, { receipt: false });
+}
+
+async function sealOfBundle(tx: Transaction, actor: Actor, driveIds: string[]): Promise<BundleSeal> {
+  const { seal, leaves } = await sealNow(tx, actor, "bundle");
+  const sha256 = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest();
+  return {
+    number: seal.number, sha256: seal.sha256, text: seal.text, signature: seal.signature, key: sealKey().publicKeyPem,
+    proof: canonicalJson(sealProof(seal.number, leaves, driveIds, sha256)),
+  };
 }
 
 /** After the last byte: which tag manifest left, and how far each log went with it. */

@@ -1,5 +1,7 @@
 import { randomUUID } from "node:crypto";
+import { withNewestSeal } from "@/lib/mail/seal-text";
 import { sealText } from "@/lib/mail/sealed-text";
+import { newestSeal } from "@/lib/queries/seals";
 import { connection, type Transaction } from "@/models";
 
 export interface MailInput {
@@ -14,10 +16,12 @@ export interface MailInput {
 /** Puts a mail into the outbox, in the transaction of what it tells about: it goes out if and only if that happened. */
 export async function queueMail(tx: Transaction, { to, subject, text, maskedText }: MailInput): Promise<{ id: string }> {
   const id = randomUUID();
+  // the newest seal leaves the house with every mail
+  const seal = await newestSeal(tx);
   await connection().query(
     `INSERT INTO mails (id, recipient, subject, text_masked, sealed, state, queued_at, next_attempt_at)
      VALUES (?, ?, ?, ?, ?, 'queued', UTC_TIMESTAMP(6), UTC_TIMESTAMP(6))`,
-    { replacements: [id, to, subject, maskedText, sealText(id, text)], transaction: tx },
+    { replacements: [id, to, subject, withNewestSeal(maskedText, seal), sealText(id, withNewestSeal(text, seal))], transaction: tx },
   );
   return { id };
 }

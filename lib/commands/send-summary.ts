@@ -16,6 +16,7 @@ import { Customer, Drive, inTransaction, Share } from "@/models";
 import { logKey } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { requireCleanChain } from "./chain-gate";
+import { makeSeal } from "./make-seal";
 import { caseFor, driveLetter } from "./place";
 import { queueMail } from "./queue-mail";
 import { allow } from "./refuse";
@@ -48,10 +49,12 @@ export async function sendSummary(actor: Actor, caseId: string): Promise<{ share
         caseRef: found.ref, share: share.id, expiresAt: share.expiresAt.toISOString(),
       }));
     }
+    // over the very heads that the mail names
+    const seal = await makeSeal(actor, "summary", tx);
     const text = (link: string) => summaryText({
       workshop: env().workshop, caseRef: found.ref, link, expiresAt: share.expiresAt, timeZone: env().timeZone,
       twoPersonRule: policy.twoPersonRule && records.every((r) => r.approvals.every((a) => a.twoPersonRule)),
-      drives: drives.map((d) => ({ letter: driveLetter(d), label: driveLabel(d), head: heads.get(d.id)! })), logKeyId: logKey().keyId,
+      drives: drives.map((d) => ({ letter: driveLetter(d), label: driveLabel(d), head: heads.get(d.id)! })), logKeyId: logKey().keyId, seal,
     });
     const page = `${env().publicUrl}/summary/`;
     await queueMail(tx, { to: customer.email, subject: summarySubject(found.ref), text: text(`${page}${token}`), maskedText: text(`${page}${MASK}`) });

@@ -12,6 +12,7 @@ export const TAG_MANIFEST = "tagmanifest-sha256.txt";
 /** raw Ed25519 signature by the log key over the tag manifest's bytes */
 export const TAG_SIGNATURE = "tagmanifest-sha256.sig";
 export const CASE_JSON = "data/case.json";
+export const REPORT_PDF = "data/report.pdf";
 export const WORKSHOP_KEYS = "data/workshop-keys";
 export const LOG_KEY = "data/seal/log-key.pem";
 /** the seal that was made when the bundle was started: its text, its raw Ed25519 signature, the key that signed it */
@@ -100,6 +101,8 @@ export interface ReadmeFacts {
   twoPersonRule: boolean;
   /** paths of images that are composites */
   composites: readonly string[];
+  /** number of the seal that was made when the bundle was started */
+  seal: number;
 }
 
 /** What lies beside the image of a composite: who voted what. Instead of the image's ".bin". */
@@ -123,7 +126,7 @@ repeats, not what is true.
 `;
 }
 
-export function readmeTxt({ ref, workshop, madeAt, drives, images, twoPersonRule, composites }: ReadmeFacts): string {
+export function readmeTxt({ ref, workshop, madeAt, drives, images, twoPersonRule, composites, seal }: ReadmeFacts): string {
   return `Case ${ref}, ${workshop}
 Made ${madeAt}
 
@@ -133,6 +136,8 @@ were read, the custody log of each drive, and what is needed to check both witho
 the program that made them. The folder is a BagIt bag (RFC 8493).
 ${compositeText(composites)}
   data/case.json                the case as recorded, original file names included
+  data/report.pdf               the case for reading: people, boards, chips, every read
+                                with digests and findings, approvals, transfers, log
   data/drives/N/custody.jsonl   the custody log, one entry a line
   data/drives/N/custody.sig     for each line: key id, space, signature in base64
   data/drives/N/...             the images: before = of the original chip,
@@ -141,6 +146,8 @@ ${compositeText(composites)}
   data/workshop-keys.jsonl      the entries that introduce the log's keys
   data/workshop-keys.sig        their signatures
   data/seal/log-key.pem         the public key that signs the log and this bundle
+  data/seal/seal.txt, seal.sig  seal ${seal} and its signature; seal-key.pem is its key
+  data/seal/proof.json          the way from each drive's log to the root in the seal
 
 HOW TO CHECK IT
   sh check.sh                    everything below, and prints what it checked
@@ -154,7 +161,10 @@ A forger could change check.sh as well; by hand, without it:
   openssl pkeyutl -verify -pubin -inkey data/seal/log-key.pem -rawin \\
     -in tagmanifest-sha256.txt -sigfile tagmanifest-sha256.sig
   openssl pkey -pubin -in data/seal/log-key.pem -outform DER | sha256sum
-The last one prints the key's fingerprint, which is also its key id.
+  openssl pkeyutl -verify -pubin -inkey data/seal/seal-key.pem -rawin \\
+    -in data/seal/seal.txt -sigfile data/seal/seal.sig
+The one with "sha256sum" at its end prints the key's fingerprint, which is also its
+key id; with seal-key.pem it prints that of the seal's key.
 
 THE LOG
 Each line is one entry in canonical JSON (RFC 8785). "prev" is the SHA-256 of the line
@@ -162,6 +172,15 @@ before without its newline, 64 zeros in the first; "seq" counts up by one. Each 
 is signed with Ed25519 (RFC 8032) over "twinread-custody/1", a newline and the line.
 It ends with the entry that says that this bundle was started. Compare its last number
 and hash with those in the mail: an earlier head must stand further up in the log.
+
+THE SEAL
+A signed statement of where all logs of the workshop stood when this bundle was
+started: number, time, number of logs, Merkle root (RFC 9162), SHA-256 of the seal
+before. A leaf of the tree is the SHA-256 of a zero byte and {"drive","head","seq"} in
+canonical JSON, a node that of a byte 1 and the two below it. "head" and "seq" are
+the SHA-256 and number of the last line of custody.jsonl; "path" in proof.json leads
+from there to the root. Later seals and mails name this one: a workshop that rewrites
+a log would have to take back every seal that has left the house.
 
 WHAT IT DOES NOT SHOW
 Equal reads show that the chip gave the same bytes each time, not that those bytes

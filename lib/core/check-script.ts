@@ -112,7 +112,7 @@ if split_log data/workshop-keys "$TMP/workshop"; then
     n=$((n + 1))
     line=$TMP/workshop/line/$n
     [ -f "$line" ] || break
-    new=$(sed -n 's/^{"action":"key\.introduced",.*,"facts":{[^{}]*"keyId":"\([0-9a-f]\{64\}\)","publicKeyPem":"[^"]*","purpose":"log"},.*/\1/p' "$line")
+    new=$(sed -n 's/^{"action":"key\.introduced",.*,"facts":{[^{}]*"keyId":"\([0-9a-f]\{64\}\)","publicKeyPem":"[^"]*","purpose":"log"[,}].*/\1/p' "$line")
     sed -n 's/.*"publicKeyPem":"\([-A-Za-z0-9+/= \\]*\)".*/\1/p' "$line" >"$TMP/pem"
     printf '%b' "$(cat "$TMP/pem")" >"$TMP/new.pem"
     if [ -n "$new" ] && [ "$(key_id "$TMP/new.pem")" != "$new" ]; then bad "data/workshop-keys.jsonl, line $n: the key's id is not its fingerprint."; continue; fi

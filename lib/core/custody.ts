@@ -39,7 +39,7 @@ export function signedBytes(body: string | Uint8Array): Uint8Array<ArrayBuffer> 
 
 export type ChainProblem =
   | "not-readable" | "not-canonical" | "wrong-shape" | "other-chain" | "sequence" | "time-went-back" | "prev" | "stored-hash"
-  | "unknown-key" | "signature" | "head" | "head-was-behind" | "tail-missing" | "could-not-check";
+  | "unknown-key" | "old-key" | "signature" | "head" | "head-was-behind" | "tail-missing" | "could-not-check";
 
 export interface ChainFinding {
   /** the entry's place in the chain; null for the head */
@@ -64,6 +64,8 @@ export interface ChainTools {
   verify(keyId: string, bytes: Uint8Array, signature: Uint8Array): Promise<boolean> | boolean;
   /** without it an unknown key shows as a signature that doesn't fit */
   knows?(keyId: string): boolean;
+  /** the key's place among the log keys in the order in which they were introduced; without it no key is too old */
+  order?(keyId: string): number | undefined;
 }
 
 const hash = z.string().regex(/^[0-9a-f]{64}$/);
@@ -117,15 +119,35 @@ function fromBase64(encoded: string): Uint8Array | null {
   }
 }
 
-async function checkSignature(line: ChainLine, tools: ChainTools, report: Report): Promise<void> {
+/** True when the signature holds. */
+async function checkSignature(line: ChainLine, tools: ChainTools, report: Report): Promise<boolean> {
   try {
-    if (tools.knows && !tools.knows(line.keyId)) return report("unknown-key", "a key introduced in the workshop's log", line.keyId);
-    const signature = fromBase64(line.signature);
-    if (!signature) return report("signature", "base64", "something else");
-    if (!(await tools.verify(line.keyId, signedBytes(line.body), signature))) report("signature", "a signature over this body", "one that doesn't fit");
+    if (tools.knows && !tools.knows(line.keyId)) report("unknown-key", "a key introduced in the workshop's log", line.keyId);
+    else {
+      const signature = fromBase64(line.signature);
+      if (!signature) report("signature", "base64", "something else");
+      else if (await tools.verify(line.keyId, signedBytes(line.body), signature)) return true;
+      else report("signature", "a signature over this body", "one that doesn't fit");
+    }
   } catch (error) {
     report("signature", "a signature over this body", sayError(error));
   }
+  return false;
+}
+
+/** The newest key that has signed in this chain so far; only a signature that holds moves it on. */
+interface NewestKey {
+  order: number;
+  keyId: string;
+}
+
+/** Whoever kept a replaced key could go on writing with it: from the first entry of a later key on that shows. */
+function checkKeyOrder(keyId: string, newest: NewestKey, tools: ChainTools, report: Report): NewestKey {
+  const order = tools.order?.(keyId);
+  if (order === undefined || order === newest.order) return newest;
+  if (order > newest.order) return { order, keyId };
+  report("old-key", newest.keyId, keyId);
+  return newest;
 }
 
 function checkHead(head: { seq: number; hash: string } | null, last: { seq: number; hash: string | null }, findings: ChainFinding[]): void {
@@ -152,6 +174,7 @@ export async function checkChain(
 ): Promise<ChainFinding[]> {
   const findings: ChainFinding[] = [];
   let previous: { seq: number; hash: string | null; at: string } = { seq: 0, hash: ZERO_HASH, at: "" };
+  let newest: NewestKey = { order: -1, keyId: "" };
   for (const line of lines) {
     const expectedSeq = previous.seq + 1;
     const here: ChainFinding[] = [];
@@ -177,7 +200,7 @@ export async function checkChain(
     } catch (error) {
       report("could-not-check", "a digest of the body", sayError(error));
     }
-    await checkSignature(line, tools, report);
+    if (await checkSignature(line, tools, report)) newest = checkKeyOrder(line.keyId, newest, tools, report);
     findings.push(...here.map((finding) => ({ ...finding, seq: next.seq })));
     previous = next;
   }

@@ -78,3 +78,9 @@ function read(body: Uint8Array): Introduced | null {
     return null;
   }
 }
+
+/** The place of each log key in the order of introduction, for the check of a chain. */
+export function keyOrder({ keys }: Pick<Keyring, "keys">): (keyId: string) => number | undefined {
+  const places = new Map([...keys.keys()].map((id, i) => [id, i]));
+  return (keyId) => places.get(keyId);
+}

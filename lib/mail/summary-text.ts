@@ -8,6 +8,7 @@ export interface SummaryMailFacts {
   twoPersonRule: boolean;
   drives: { letter: string; label: string; head: { seq: number; hash: string } }[];
   logKeyId: string;
+  seal: { number: number; sha256: string; keyId: string };
 }
 
 export const summarySubject = (caseRef: string) => `Verification summary of case ${caseRef}`;
@@ -33,6 +34,11 @@ written. A log that was changed later no longer fits these numbers.
 ${drives}
 Fingerprint of the key that signs the logs
 ${f.logKeyId}
+
+Seal ${f.seal.number} is the workshop's signed statement of where all its logs stood, these
+among them. SHA-256 of the seal, and the fingerprint of the key that signs seals:
+${f.seal.sha256}
+${f.seal.keyId}
 
 ${f.workshop}
 `;

@@ -1,6 +1,7 @@
 import { createTransport } from "nodemailer";
 import { env } from "@/lib/env";
 import type { SmtpSettings } from "@/lib/settings";
+import { newestSealIn } from "./seal-text";
 
 export interface OutgoingMail {
   id: string;
@@ -35,7 +36,7 @@ export function mailSender(smtp: SmtpSettings, publicUrl: string): SendMail {
     const sent = transport.sendMail({
       from: smtp.from, to: { name: "", address: to }, subject, text,
       // the same mail sent twice can be told by its id
-      messageId: `<${id}@${host}>`, headers: { "Auto-Submitted": "auto-generated" },
+      messageId: `<${id}@${host}>`, headers: { "Auto-Submitted": "auto-generated", ...sealHeader(text) },
     });
     sent.catch(() => {});
     try {
@@ -45,6 +46,12 @@ export function mailSender(smtp: SmtpSettings, publicUrl: string): SendMail {
       transport.close();
     }
   };
+}
+
+/** The newest seal that the text ends with, where a program finds it too. */
+function sealHeader(text: string): Record<string, string> {
+  const seal = newestSealIn(text);
+  return seal ? { "X-Twinread-Seal": `${seal.number} ${seal.sha256}` } : {};
 }
 
 export const sendMail: SendMail = (mail) => mailSender(env().smtp, env().publicUrl)(mail);

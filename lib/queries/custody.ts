@@ -1,8 +1,10 @@
 import { createHash } from "node:crypto";
 import { type ChainFinding, checkChain } from "@/lib/core/custody";
 import { describe } from "@/lib/core/custody-actions";
+import { keyOrder } from "@/lib/core/keyring";
 import { type Actor, type Stage, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { driveFor } from "@/lib/commands/place";
+import { recordChainCheck } from "@/lib/commands/record-chain-check";
 import { allow } from "@/lib/commands/refuse";
 import type { CustodyCheckView, CustodyEntryView, PersonView } from "@/lib/views";
 import { CustodyEntry, CustodyHead, type Transaction } from "@/models";
@@ -62,6 +64,7 @@ export async function checkCustody(chain: string, tx?: Transaction): Promise<Cus
         return pem !== undefined && verifySignature(pem, bytes, signature);
       },
       knows: (keyId) => keys.has(keyId),
+      order: keyOrder({ keys }),
     },
     chain,
   );
@@ -77,7 +80,9 @@ export async function custodyOfDrive(actor: Actor, driveId: string): Promise<{ e
 export async function custodyCheckOfDrive(actor: Actor, driveId: string): Promise<CustodyCheckView> {
   allow(actor, "custody.read");
   await driveFor(actor, driveId);
-  return checkCustody(driveId);
+  const check = await checkCustody(driveId);
+  await recordChainCheck(driveId, check);
+  return check;
 }
 
 

@@ -12,6 +12,7 @@ import { compositeBehind } from "./composite-behind";
 import { openShare } from "./open-share";
 import { people, type People } from "./people";
 import { currentPolicy } from "./policy";
+import { sealOver } from "./seals";
 import { cellsOf } from "./strips";
 
 /** What the customer sees: facts of this one case, no more of the workshop's people than who approved. */
@@ -24,13 +25,15 @@ export async function summaryByToken(token: string): Promise<SummaryView | null>
   const { records } = await chipRecords(drives.map((d) => d.id));
   const [who, policy] = [await people(), await currentPolicy()];
   const needed = records.filter((r) => r.chip.needsTransfer);
+  const sent = new Map(await Promise.all(drives.map(async (drive) => [drive.id, await sentEntry(drive.id, share.id)] as const)));
   return {
     workshop: env().workshop, caseRef: found.ref, customerName: customer.name, madeAt: share.createdAt.toISOString(), expiresAt: share.expiresAt.toISOString(),
     drives: await Promise.all(drives.map(async (drive) => ({
       letter: driveLetter(drive), label: driveLabel(drive),
       chips: await Promise.all(needed.filter((r) => r.drive.id === drive.id).map((record) => chipOf(record, policy, who))),
-      head: await headAt(drive.id, share.id),
+      head: await headAt(drive.id, sent.get(drive.id)),
     }))),
+    seal: await sealOf([...sent.values()].find((entry) => entry !== undefined)),
     twoPersonRule: policy.twoPersonRule && records.every((r) => r.approvals.every((a) => a.twoPersonRule)),
   };
 }
@@ -61,12 +64,22 @@ function verifiedAt(backs: Read[], policy: Policy): string | null {
   return last?.storedAt.toISOString() ?? null;
 }
 
-/** The log's head as the mail with this link names it: the entry that says that it was sent. */
-async function headAt(driveId: string, shareId: string): Promise<{ seq: number; hash: string }> {
+/** The entry that says that the mail with this link went out. */
+async function sentEntry(driveId: string, shareId: string): Promise<CustodyEntry | undefined> {
   const sent = await CustodyEntry.findAll({ where: { chainId: driveId, action: "summary.sent" }, order: ["seq"] });
-  const entry = sent.find((e) => e.body.includes(`"share":"${shareId}"`));
+  return sent.find((e) => e.body.includes(`"share":"${shareId}"`));
+}
+
+/** The log's head as the mail with this link names it. */
+async function headAt(driveId: string, entry: CustodyEntry | undefined): Promise<{ seq: number; hash: string }> {
   if (entry) return { seq: entry.seq, hash: entry.hash.toString("hex") };
   // a drive that was recorded after the mail went out
   const head = await CustodyHead.findByPk(driveId);
   return { seq: head?.seq ?? 0, hash: head?.hash.toString("hex") ?? "0".repeat(64) };
+}
+
+/** The seal that was made in the same step: the first one over this very entry. */
+async function sealOf(entry: CustodyEntry | undefined): Promise<SummaryView["seal"]> {
+  if (!entry) return null;
+  return sealOver(entry.hash.toString("hex"), (JSON.parse(entry.body.toString("utf8")) as { at: string }).at);
 }

@@ -7,7 +7,7 @@ const chip = (designator: string, more: Partial<SummaryChip> = {}): SummaryChip 
   approvedBy: "Ines Corvo", approvedAt: "2026-03-12T13:00:00Z", transferredAt: "2026-03-13T08:00:00Z", transferKind: "write", verifiedAt: "2026-03-13T09:00:00Z", cells: null, ...more,
 });
 const summary = (chips: SummaryChip[], more: Partial<SummaryView> = {}): SummaryView => ({
-  workshop: "Alder Lane Drive Bench", caseRef: "26-0183", customerName: "Harrow & Finch Surveyors", madeAt: "2026-03-16T10:00:00Z", expiresAt: "2026-06-14T10:00:00Z", twoPersonRule: true,
+  workshop: "Alder Lane Drive Bench", caseRef: "26-0183", customerName: "Harrow & Finch Surveyors", madeAt: "2026-03-16T10:00:00Z", expiresAt: "2026-06-14T10:00:00Z", twoPersonRule: true, seal: null,
   drives: [{ letter: "A", label: "PN 4471-0093-B", chips, head: { seq: 20, hash: "cd".repeat(32) } }], ...more,
 });
 

@@ -1,6 +1,6 @@
 import { spawnSync } from "node:child_process";
 import { describe, expect, it } from "vitest";
-import { LOG_KEY, MANIFEST, readmeTxt, TAG_MANIFEST, TAG_SIGNATURE, WORKSHOP_KEYS } from "@/lib/core/bundle-layout";
+import { LOG_KEY, MANIFEST, readmeTxt, SEAL_KEY, SEAL_PROOF, SEAL_SIGNATURE, SEAL_TEXT, TAG_MANIFEST, TAG_SIGNATURE, WORKSHOP_KEYS } from "@/lib/core/bundle-layout";
 import { CHECK_SCRIPT } from "@/lib/core/check-script";
 import { SIGNED_PREFIX } from "@/lib/core/custody";
 
@@ -24,8 +24,8 @@ describe("the bundle's check.sh", () => {
 
 describe("the bundle's README", () => {
   it("names each list and key that a person needs to check by hand", () => {
-    const text = readmeTxt({ ref: "26-0042", workshop: "Alder Lane", madeAt: "2026-03-12T14:00:00Z", drives: 2, images: 7, twoPersonRule: true, composites: [] });
-    for (const name of [MANIFEST, TAG_MANIFEST, TAG_SIGNATURE, LOG_KEY, "check.sh", "openssl pkeyutl -verify"]) expect(text).toContain(name);
-    expect(text).not.toMatch(/report\.pdf|photos|seal\.txt/);
+    const text = readmeTxt({ ref: "26-0042", workshop: "Alder Lane", madeAt: "2026-03-12T14:00:00Z", drives: 2, images: 7, twoPersonRule: true, composites: [], seal: 12 });
+    for (const name of [MANIFEST, TAG_MANIFEST, TAG_SIGNATURE, LOG_KEY, SEAL_TEXT, SEAL_SIGNATURE, SEAL_KEY, SEAL_PROOF, "seal 12", "check.sh", "openssl pkeyutl -verify"]) expect(text).toContain(name);
+    expect(text).not.toMatch(/photos/);
   });
 });
