@@ -1,15 +1,17 @@
 import { spawnSync } from "node:child_process";
-import { cpSync, mkdtempSync, readFileSync, rmSync, symlinkSync, writeFileSync } from "node:fs";
+import { appendFileSync, cpSync, existsSync, mkdtempSync, readFileSync, rmSync, symlinkSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
 import { CONTROL, RULES, THRESHOLDS_WITHOUT_EFFECT, type Mutant } from "./mutant-rules";
 
 /**
  * Breaks one rule or threshold of the engine at a time, in a copy, and sees whether the tests of tests/core notice.
- * Writes docs/engine-mutants.md. Stops starting new ones after the seconds given (330 unless said).
+ * Writes docs/engine-mutants.md. Stops starting new ones after the seconds given (330 unless said). A second argument names
+ * a file to go on from: what was noticed is kept there, one name a line, and not run again. Begin it afresh when rules change.
  */
 const root = path.join(import.meta.dirname, "../..");
 const budget = Number(process.argv[2] ?? 330) * 1000;
+const keptIn = process.argv[3] ?? null;
 const file = (name: string) => `tests/core/${name}.test.ts`;
 /** the quick ones first; real images only where those notice nothing */
 const QUICK = ["golden/golden", "thresholds", "family", "inspect", "single-findings", "diagnose-pair", "diagnose-read-back", "judge-set"].map(file);
@@ -65,18 +67,27 @@ try {
   const began = Date.now();
   const all = [CONTROL, ...RULES, ...thresholdMutants(readFileSync(path.join(root, "lib/core/thresholds.ts"), "utf8"))];
   const results: { mutant: Mutant; noticed: boolean }[] = [];
+  const left: Mutant[] = [];
+  const known = new Set(keptIn && existsSync(keptIn) ? readFileSync(keptIn, "utf8").split("\n") : []);
   for (const mutant of all) {
-    if (Date.now() - began > budget) break;
+    if (known.has(mutant.name)) {
+      results.push({ mutant, noticed: true });
+      continue;
+    }
+    if (Date.now() - began > budget) {
+      left.push(mutant);
+      continue;
+    }
     const target = path.join(home, "lib/core", mutant.file);
     const source = readFileSync(target, "utf8");
     if (!source.includes(mutant.from)) throw new Error(`${mutant.name}: ${mutant.file} no longer holds that text. Bring mutant-rules.ts up to date.`);
     writeFileSync(target, source.replace(mutant.from, () => mutant.to));
     results.push({ mutant, noticed: !passes(target) });
     writeFileSync(target, source);
+    if (keptIn && results[results.length - 1].noticed) appendFileSync(keptIn, `${mutant.name}\n`);
     process.stderr.write(`${results[results.length - 1].noticed ? "noticed " : "SURVIVES"} ${mutant.name}\n`);
   }
   const survivors = results.filter((one) => !one.noticed);
-  const left = all.slice(results.length);
   writeFileSync(path.join(root, "docs/engine-mutants.md"), `# Rules broken on purpose
 
 Made by \`node --import tsx scripts/engine/mutants.ts\`: each line of the engine below was changed alone, in a copy, and the engine's tests in tests/core were run. ${results.length} changes, ${results.length - survivors.length} noticed, ${survivors.length} not.${left.length > 0 ? ` Not run for want of time: ${left.length}.` : ""}

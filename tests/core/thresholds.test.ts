@@ -119,6 +119,11 @@ describe("stretches that differ", () => {
     const beside = (small: number) => code((b) => { spoil(b, 1003, 300); for (let i = 0; i < small; i += 1) spoil(b, 2003 + 40 * i, 2); });
     expect([beside(100), beside(225)]).toEqual(["foreign-blocks", "unclassified"]);
   });
+  it("are a buffer's edge within 8 bytes of a multiple of 256", () => {
+    const from = (residue: number) => code((b) => [1, 4, 16, 32].forEach((block) => spoil(b, 256 * block + residue, 2)));
+    expect([0, 7, 249].map(from)).toEqual(["buffer-edge", "buffer-edge", "buffer-edge"]);
+    expect([8, 128, 248].map(from)).toEqual(["unclassified", "unclassified", "unclassified"]);
+  });
   it("are a buffer's edge up to 64 bytes", () => {
     const edges = (length: number) => code((b) => [256, 1024, 4096, 8192].forEach((at) => spoil(b, at, length)));
     expect([edges(50), edges(64), edges(65)]).toEqual(["buffer-edge", "buffer-edge", "foreign-blocks"]);
