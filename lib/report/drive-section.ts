@@ -1,0 +1,59 @@
+import { sizeText } from "@/lib/core/quantity";
+import { code, type Span, plain, quiet, strong } from "./ink";
+import type { ReportBoard, ReportCase, ReportFacts } from "./report-facts";
+import { boardName, chipKind, driveName, FIT, momentText } from "./report-words";
+import type { Sheet } from "./sheet";
+import { Table } from "./table";
+
+/** Chapter 3: what lies on the bench. */
+export async function drives(sheet: Sheet, { record }: ReportFacts): Promise<void> {
+  sheet.heading(1, record.drives.length === 1 ? "The drive" : "The drives", { number: "3" });
+  for (const drive of record.drives) {
+    const name = [driveName(drive), drive.partNumber].filter(Boolean).join(", ");
+    sheet.heading(2, name, { number: `3.${drive.number}` });
+    sheet.facts([
+      ["Part number", known(drive.partNumber)], ["Model", known(drive.model)], ["Serial", known(drive.serial)], ["Interface", drive.interface ? [plain(drive.interface)] : null],
+      ["Recorded", [plain(momentText(drive.recordedAt))]],
+    ]);
+    if (drive.boards.length === 0) sheet.paragraph([plain("No board of this drive is recorded yet.")]);
+    for (const board of drive.boards) {
+      boardPart(sheet, board);
+      chipTable(sheet, record, board);
+      await sheet.breathe();
+    }
+  }
+}
+
+const known = (text: string | null): Span[] => (text ? [code(text)] : [quiet("not recorded")]);
+
+function boardPart(sheet: Sheet, board: ReportBoard): void {
+  sheet.heading(3, boardName(board));
+  sheet.facts([
+    ["Controller", board.controllerMarking ? [code(board.controllerMarking)] : null],
+    ["Motor driver", board.motorDriverMarking ? [code(board.motorDriverMarking)] : null],
+    ["Condition", board.condition ? [plain(board.condition)] : null],
+    ["Recorded", [plain(momentText(board.recordedAt))]],
+  ]);
+  if (!board.fit) return;
+  const { mark, text } = FIT[board.fit.verdict];
+  sheet.paragraph([strong(`${text} `), ...board.fit.differences.map((one) => plain(`${one} `)), ...(board.fit.reason ? [plain(`Used all the same: ${board.fit.reason}`)] : [])], { mark });
+}
+
+function chipTable(sheet: Sheet, record: ReportCase, board: ReportBoard): void {
+  if (board.chips.length === 0) {
+    sheet.paragraph([quiet("No chip of this board is recorded yet.")]);
+    return;
+  }
+  const all = record.drives.flatMap((drive) => drive.boards.flatMap((one) => one.chips.map((chip) => ({ board: one, chip }))));
+  const table = new Table(sheet, [{ head: "Chip", width: 76 }, { head: "Kind and size", width: 174 }, { head: "Marking, what it holds", width: 120 }, { head: "Pair", width: 0 }], { name: `Chips of ${boardName(board)}` });
+  for (const chip of board.chips) {
+    const pair = all.find((one) => one.chip.pairedWith === chip.id || one.chip.id === chip.pairedWith);
+    const paired = pair ? [plain(`with ${pair.chip.designator} of ${boardName(pair.board)}${pair.chip.sizeBytes === chip.sizeBytes ? "" : `, which holds ${sizeText(pair.chip.sizeBytes)}`}`)] : [quiet(chip.needsTransfer ? "not paired yet" : "none needed")];
+    table.row([
+      [strong(chip.designator, { face: "mono" })], [plain(chipKind(chip))],
+      chip.marking || chip.holds ? [...(chip.marking ? [code(chip.marking, { size: 8 })] : []), ...(chip.holds ? [plain(`${chip.marking ? "\n" : ""}${chip.holds}`)] : [])] : [quiet("not recorded")],
+      paired,
+    ]);
+  }
+  table.end();
+}

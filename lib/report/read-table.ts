@@ -1,0 +1,46 @@
+import { sizeText } from "@/lib/core/quantity";
+import { seatingLetter } from "@/lib/core/words";
+import { code, CAUTION, INK, INK_3, plain, quiet, strong } from "./ink";
+import type { ReportRead } from "./report-facts";
+import { findingMark, measuredText, momentText, originText, severityWord } from "./report-words";
+import { LEFT, type Sheet, type Struct } from "./sheet";
+import { Table } from "./table";
+
+const INDENT = LEFT + 14;
+
+/** Every read with its digests, where it came from and what was found on it; nothing is left out or cut. */
+export async function readTable(sheet: Sheet, name: string, reads: readonly ReportRead[]): Promise<void> {
+  const table = new Table(sheet, [
+    { head: "Read", width: 62 }, { head: "Seating", width: 42 }, { head: "Size", width: 66, align: "right" }, { head: "CRC-32", width: 62 },
+    { head: "Operator", width: 96 }, { head: "Taken; stored", width: 104 }, { head: "Counts", width: 0 },
+  ], { name });
+  for (const read of reads) {
+    const color = read.counted ? INK : INK_3;
+    table.row([
+      [strong(read.name, { color }), ...(read.derived ? [strong("\ncomposite", { size: 8, color: CAUTION })] : [])],
+      [plain(read.derived ? "none" : seatingLetter(read.seating), { color })],
+      [plain(sizeText(read.sizeBytes), { color })], [code(read.crc32.toUpperCase(), { color })], [plain(read.operator.name, { color })],
+      [plain(`${read.takenAt ? momentText(read.takenAt) : "not stated"}\n${momentText(read.storedAt)}`, { size: 8, color })],
+      [read.counted ? strong("Counted") : strong("Set aside", { color })],
+    ]);
+    table.below((cell) => details(sheet, read, cell));
+    await sheet.breathe();
+  }
+  table.end();
+}
+
+function details(sheet: Sheet, read: ReportRead, element: Struct): void {
+  const at = { x: INDENT, element, type: "TD", gap: 1.5 };
+  sheet.paragraph([quiet("SHA-256 ", { size: 8 }), code(read.sha256)], at);
+  sheet.paragraph([quiet(originText(read), { size: 8 }), quiet(`. File as it came: `, { size: 8 }), code(read.originalFileName, { size: 8 })], at);
+  if (read.source) {
+    sheet.paragraph([quiet(`Expanded from the text file with SHA-256 `, { size: 8 }), code(read.source.sha256, { size: 8 }), quiet(`, base 0x${read.source.base.toString(16).toUpperCase()}, empty space filled with ${read.source.fill.toString(16).toUpperCase().padStart(2, "0")}`, { size: 8 })], at);
+  }
+  if (read.note) sheet.paragraph([quiet(`“${read.note}”`, { size: 8 })], at);
+  if (read.setAside) sheet.paragraph([strong(`Set aside by ${read.setAside.by.name}, ${momentText(read.setAside.at)}: `), plain(read.setAside.reason)], { ...at, mark: "aside" });
+  if (read.findings.length === 0) sheet.paragraph([quiet("Nothing stands against it.", { size: 8 })], at);
+  for (const finding of read.findings) {
+    sheet.paragraph([strong(`${severityWord(finding)}: `), plain(finding.message), ...(finding.code === "verified" ? [] : [plain(` ${finding.advice}`)]), quiet(measuredText(finding), { size: 8 })], { ...at, mark: findingMark(finding) });
+  }
+  sheet.space(4);
+}

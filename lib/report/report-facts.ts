@@ -1,0 +1,135 @@
+import type { EntryKind } from "@/lib/core/custody-actions";
+import type { BoardRole, Bus, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
+import type { PersonView, ReadView } from "@/lib/views";
+
+/** What a report is made from: the case as in case.json, the logs up to their heads, and what the strips show. Plain data. */
+
+export type ReportRead = Omit<ReadView, "chipId" | "imageSound" | "fileName"> & { name: string; path: string; originalFileName: string };
+
+export interface ReportApproval {
+  id: string;
+  sha256: string;
+  crc32: string | null;
+  /** "Read 6" where the image is a composite */
+  composite: string | null;
+  donorChip: string;
+  approvedBy: PersonView;
+  givenAt: string;
+  statement: string;
+  reasons: Record<string, string>;
+  twoPersonRule: boolean;
+  revoked: { at: string; by: PersonView; cause: string | null; reason: string | null } | null;
+}
+
+export interface ReportTransfer {
+  id: string;
+  approval: string;
+  kind: TransferKind;
+  donorChip: string;
+  programmer: string | null;
+  toolVersion: string | null;
+  adapter: string | null;
+  note: string | null;
+  by: PersonView;
+  at: string;
+}
+
+export interface ReportChip {
+  designator: string;
+  id: string;
+  bus: Bus;
+  sizeBytes: number;
+  sizeSource: SizeSource;
+  supplyMillivolts: number | "unknown";
+  package: string | null;
+  marking: string | null;
+  holds: string | null;
+  needsTransfer: boolean;
+  pairedWith: string | null;
+  recordedAt: string;
+  reads: ReportRead[];
+  approvalRequests: { id: string; askedBy: PersonView; askedAt: string; message: string | null; sentBack: { by: PersonView; at: string; reason: string | null } | null }[];
+  approvals: ReportApproval[];
+  transfers: ReportTransfer[];
+}
+
+export interface ReportBoard {
+  label: string;
+  id: string;
+  role: BoardRole;
+  boardNumber: string;
+  revision: string | null;
+  controllerMarking: string | null;
+  motorDriverMarking: string | null;
+  condition: string | null;
+  recordedAt: string;
+  fit: { verdict: "fits" | "caution" | "other-number"; differences: string[]; reason: string | null } | null;
+  chips: ReportChip[];
+}
+
+export interface ReportDrive {
+  number: number;
+  letter: string;
+  id: string;
+  partNumber: string | null;
+  model: string | null;
+  serial: string | null;
+  interface: string | null;
+  recordedAt: string;
+  logUpTo: { seq: number; hash: string };
+  boards: ReportBoard[];
+}
+
+/** case.json */
+export interface ReportCase {
+  workshop: string;
+  madeAt: string;
+  policy: Policy;
+  ref: string;
+  id: string;
+  receivedAt: string;
+  recordedBy: PersonView;
+  damage: string;
+  note: string | null;
+  dueOn: string | null;
+  closedAt: string | null;
+  closedReason: string | null;
+  customer: { name: string; email: string; phone: string | null; contact: string | null };
+  drives: ReportDrive[];
+}
+
+export interface ReportEntry {
+  seq: number;
+  at: string;
+  who: string;
+  role: Role | "system";
+  action: string;
+  sentence: string;
+  kind: EntryKind;
+  /** SHA-256 of the body */
+  hash: string;
+  /** of the actions that a section of its own lists; null of the others */
+  facts: Record<string, unknown> | null;
+}
+
+/** What the pictures and verdicts of a case show, fixed when the bundle was started. */
+export interface ReportDrawing {
+  /** by the id of the original's chip */
+  states: Record<string, { label: string; sentence: string }>;
+  /** 256 cells over each image's own size, by SHA-256 */
+  strips: Record<string, string>;
+  /** differing bytes in each of 256 cells, by "A:B"; a pair that was never compared is missing */
+  lanes: Record<string, { differingBytes: number; cells: number[] }>;
+}
+
+export interface ReportFacts {
+  record: ReportCase;
+  drawing: ReportDrawing;
+  /** in the order of the record's drives */
+  logs: ReportEntry[][];
+  /** SHA-256 of the public keys */
+  logKey: string;
+  seal: { number: number; sha256: string; keyFingerprint: string } | null;
+  /** false when any approval of the case was given without it */
+  twoPersonRule: boolean;
+}
