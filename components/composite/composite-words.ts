@@ -1,4 +1,4 @@
-import { LEAST_READS, voteExclusion } from "@/lib/core/composite-rules";
+import { causeText, LEAST_READS, voteExclusion } from "@/lib/core/composite-rules";
 import { countOf, listText, readsText, sizeText, withCommas } from "@/lib/core/quantity";
 import { type FindingCode, readName, seatingLetter } from "@/lib/core/words";
 import type { ChipView, CompositeMark, ReadView, VotesView } from "@/lib/views";
@@ -76,11 +76,6 @@ export function candidateWords(read: ReadView, chip: Pick<ChipView, "sizeBytes" 
 export function countsText({ counts }: Pick<VotesView, "counts">): string {
   const parts = (["weak", "constructed", "undecided"] as const).filter((standing) => counts[standing] > 0).map((standing) => `${withCommas(counts[standing])} ${standing}`);
   return `${countOf(counts.disputed, "byte")} disputed: ${withCommas(counts.firm)} firm${parts.length > 0 ? `, ${parts.join(", ")}` : ""}.`;
-}
-
-/** The report's "it is blank (blank)" without the finding's code. */
-export function causeText(cause: string): string {
-  return cause.replace(/ \([a-z-]+\)$/, "");
 }
 
 /** Wrong bits to expect in the whole image; far below one bit the digits would only look exact. */

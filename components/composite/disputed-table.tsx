@@ -1,6 +1,6 @@
 "use client";
 
-import { useState } from "react";
+import { useMemo, useState } from "react";
 import { Button, Buttons } from "@/components/ui/button";
 import { FindingLine } from "@/components/ui/finding-line";
 import type { MarkKind } from "@/components/ui/mark";
@@ -19,7 +19,8 @@ const hex = (byte: number) => byte.toString(16).toUpperCase().padStart(2, "0");
 export function DisputedTable({ votes, sizeBytes }: { votes: VotesView; sizeBytes: number }) {
   const [shown, setShown] = useState(FIRST_SHOWN);
   const columns = columnsOf(votes);
-  const rows = [...votes.disputed].sort((a, b) => LEAST_SURE_FIRST.indexOf(a.standing) - LEAST_SURE_FIRST.indexOf(b.standing) || a.at - b.at);
+  // up to 10,000 bytes: sorted once, not at every "Show more"
+  const rows = useMemo(() => [...votes.disputed].sort((a, b) => LEAST_SURE_FIRST.indexOf(a.standing) - LEAST_SURE_FIRST.indexOf(b.standing) || a.at - b.at), [votes.disputed]);
   const rest = rows.length - shown;
   return (
     <div className="grid gap-2.5">

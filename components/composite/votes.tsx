@@ -5,9 +5,10 @@ import useSWR from "swr";
 import { FindingLine } from "@/components/ui/finding-line";
 import { Note } from "@/components/ui/note";
 import { fetcher, Refusal } from "@/lib/http/send";
+import { causeText } from "@/lib/core/composite-rules";
 import { readsText, sizeText } from "@/lib/core/quantity";
 import type { ReadView, VotesView } from "@/lib/views";
-import { bitRateText, causeText, columnsOf, countsText, expectedText, madeOf, readTitle, votesAnchor } from "./composite-words";
+import { bitRateText, columnsOf, countsText, expectedText, madeOf, readTitle, votesAnchor } from "./composite-words";
 import { DisputedTable } from "./disputed-table";
 
 /** What a composite rests on: its reads, the count, the odds with their limit, and each disputed byte. */

@@ -1,6 +1,6 @@
 import { randomUUID } from "node:crypto";
 import { Readable } from "node:stream";
-import { readsThatAreOff, voteExclusion } from "@/lib/core/composite-rules";
+import { causeText, readsThatAreOff, voteExclusion } from "@/lib/core/composite-rules";
 import type { DerivedFacts } from "@/lib/core/derived";
 import { crc32Hex } from "@/lib/core/digest";
 import { ENGINE_VERSION } from "@/lib/core/engine-version";
@@ -12,11 +12,12 @@ import { readView } from "@/lib/queries/read-view";
 import type { CompositeInput } from "@/lib/schemas/read";
 import type { ReadView } from "@/lib/views";
 import { inTransaction, Read, type Transaction } from "@/models";
-import { type Arrived, keep, pathOfImage, receive } from "@/storage";
+import { type Arrived, pathOfImage, receive } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { comparisonOnRecord } from "./compare-images";
 import { inspectImage, recordImage } from "./inspect-image";
 import { judge } from "./judge-read";
+import { keepImage } from "./keep-image";
 import { chipFor, type ChipPlace, placeOfChip } from "./place";
 import { allow } from "./refuse";
 import { requireSoundImage } from "./report-image";
@@ -84,7 +85,7 @@ async function vote(rows: Read[]): Promise<Made> {
   if ("refused" in result) throw new AppError("rule-against", result.refused);
   const image = await receive(Readable.from([Buffer.from(result.bytes)]));
   const report = await receive(Readable.from([Buffer.from(result.report, "utf8")]));
-  for (const arrived of [image, report]) await keep(arrived);
+  for (const arrived of [image, report]) await keepImage(arrived, "composite");
   return { image, report, derived: { ...result.derived, reportSha256: report.sha256 } };
 }
 
@@ -111,7 +112,7 @@ async function setVotersAside(tx: Transaction, actor: Actor, { chip, drive }: Ch
   const voters = await Read.findAll({ where: { chipId: chip.id, stage: "before", counted: true, number: [...derived.voters, ...derived.excluded].map((v) => v.number) }, order: ["number"], transaction: tx });
   for (const read of voters) {
     const left = cause.get(read.number);
-    const reason = left ? `Left out of the composite ${name}: ${left}.` : `Voted into the composite ${name}.`;
+    const reason = left ? `Left out of the composite ${name}: ${causeText(left)}.` : `Voted into the composite ${name}.`;
     await read.update({ counted: false, setAsideReason: reason, setAsideBy: actor.id, setAsideAt: new Date() }, { transaction: tx });
     await appendEntry(tx, drive.id, actor, "read.set-aside", { type: "read", id: read.id }, {
       read: { id: read.id, stage: read.stage, number: read.number }, chip: { id: chip.id, designator: chip.designator }, sha256: read.sha256.toString("hex"), reason,

@@ -64,10 +64,15 @@ interface LeftOut {
   cause: string;
 }
 
-/** "Read 2 may not vote because it is blank, and Read 4 because it repeats itself"; the finding's code is not for people. */
+/** "it is blank (blank)" without the finding's code. */
+export function causeText(cause: string): string {
+  return cause.replace(/ \([a-z-]+\)$/, "");
+}
+
+/** "Read 2 may not vote because it is blank, and Read 4 because it repeats itself". */
 function mayNotVote(excluded: readonly LeftOut[]): string {
   const causes = [...excluded].sort((a, b) => (a.number ?? 0) - (b.number ?? 0)).map(({ number, cause }, i) =>
-    `${number === null ? "one read" : readsText([number])} ${i === 0 ? "may not vote " : ""}because ${cause.replace(/ \([a-z-]+\)$/, "")}`);
+    `${number === null ? "one read" : readsText([number])} ${i === 0 ? "may not vote " : ""}because ${causeText(cause)}`);
   const text = listText(causes).replace(/ and (?=[^ ]+ \d+ because)/, ", and ");
   return text.charAt(0).toUpperCase() + text.slice(1);
 }
