@@ -33,7 +33,7 @@ export function CompareScreen({ compared, reads, start, csv }: {
   const [keys, setKeys] = useLetterKeysOn();
   const field = useRef<HTMLInputElement>(null);
   const current = rangeAt(ranges, at);
-  const names = compared.reads.map((r) => readName(r.stage, r.number));
+  const names = useMemo(() => compared.reads.map((r) => readName(r.stage, r.number)), [compared.reads]);
   const alone = useMemo(() => standsAlone(reads, compared.reads), [reads, compared.reads]);
 
   const go = useCallback((next: number) => {

@@ -49,13 +49,16 @@ function lineAt({ images, length, offset, alone }: HexWindow, from: number): Byt
   return { kind: "line", at: offset + from, bytes, marks: images.map((_, who) => columns.map((column) => column[who])), differing: columns.filter((column) => column !== ALL_EQUAL).length };
 }
 
+/** All lines of a window. */
+export function hexLines(view: HexWindow): ByteLine[] {
+  return Array.from({ length: Math.ceil(view.length / LINE) }, (_, i) => lineAt(view, i * LINE));
+}
+
 /**
- * All lines of a window, equal stretches folded to one row each. Kept open: lines that differ with one line around
- * them, the line of `here`, and every fold whose start is in `opened`.
+ * Equal stretches of lines folded to one row each. Kept open: lines that differ with one line around them, the line of
+ * `here`, and every fold whose start is in `opened`.
  */
-export function hexRows(view: HexWindow, { fold, here, opened }: { fold: boolean; here: number; opened: ReadonlySet<number> }): (ByteLine | Fold)[] {
-  const lines: ByteLine[] = [];
-  for (let from = 0; from < view.length; from += LINE) lines.push(lineAt(view, from));
+export function foldLines(lines: readonly ByteLine[], { fold, here, opened }: { fold: boolean; here: number; opened: ReadonlySet<number> }): readonly (ByteLine | Fold)[] {
   if (!fold) return lines;
   const keep = lines.map((line) => line.differing > 0 || (here >= line.at && here < line.at + LINE));
   const near = keep.map((_, i) => keep.slice(Math.max(0, i - CONTEXT), i + CONTEXT + 1).some(Boolean));

@@ -1,5 +1,6 @@
 "use client";
 
+import { memo } from "react";
 import { address, rangeText } from "@/lib/core/strip";
 import { countOf, listText } from "@/lib/core/quantity";
 import { type ByteLine, type ByteMark, type Fold, LINE, runsOf } from "./hex-rows";
@@ -19,6 +20,16 @@ function Bytes({ line, side, name }: { line: ByteLine; side: number; name: strin
     </td>
   );
 }
+
+// a line changes only when its bytes do: hundreds stand on the page while one is stepped to
+const Line = memo(function Line({ row, columns, here, sizeBytes }: { row: ByteLine; columns: readonly Column[]; here: boolean; sizeBytes: number }) {
+  return (
+    <tr id={`at-${row.at.toString(16)}`} className={`${row.differing > 0 ? "differs" : ""} ${here ? "is-here" : ""}`}>
+      <th scope="row" className="hex-at">{address(row.at, sizeBytes)}{row.differing > 0 ? <span className="sr-only">, {countOf(row.differing, "byte")} {row.differing === 1 ? "differs" : "differ"}</span> : null}</th>
+      {columns.map((column, side) => <Bytes key={column.name} line={row} side={side} name={column.name} />)}
+    </tr>
+  );
+});
 
 /** Two or three reads, 16 bytes a line; equal stretches fold to one row with their byte count. */
 export function HexTable({ rows, columns, here, under, sizeBytes, onOpen }: {
@@ -46,10 +57,7 @@ export function HexTable({ rows, columns, here, under, sizeBytes, onOpen }: {
             <td colSpan={columns.length + 1} className="hex-fold"><button type="button" onClick={() => onOpen(row.start)}>{countOf(row.length, "byte")} {equal}, <code>{rangeText(row.start, row.length, sizeBytes)}</code><span className="sr-only">. Show them.</span></button></td>
           </tr>
         ) : (
-          <tr key={row.at} id={`at-${row.at.toString(16)}`} className={`${row.differing > 0 ? "differs" : ""} ${here >= row.at && here < row.at + LINE ? "is-here" : ""}`}>
-            <th scope="row" className="hex-at">{address(row.at, sizeBytes)}{row.differing > 0 ? <span className="sr-only">, {countOf(row.differing, "byte")} {row.differing === 1 ? "differs" : "differ"}</span> : null}</th>
-            {columns.map((column, side) => <Bytes key={column.name} line={row} side={side} name={column.name} />)}
-          </tr>
+          <Line key={row.at} row={row} columns={columns} here={here >= row.at && here < row.at + LINE} sizeBytes={sizeBytes} />
         ))}
       </tbody>
     </table>

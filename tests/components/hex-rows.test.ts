@@ -1,9 +1,10 @@
 import { describe, expect, it } from "vitest";
-import { hexRows, runsOf } from "@/components/compare/hex-rows";
+import { foldLines, hexLines, type HexWindow, runsOf } from "@/components/compare/hex-rows";
 import { firstReads, parseAddress, rangeAt, stepRange } from "@/components/compare/places";
 import type { ReadView } from "@/lib/views";
 
 const filled = (length: number, value = 0) => new Uint8Array(length).fill(value);
+const hexRows = (view: HexWindow, how: Parameters<typeof foldLines>[1]) => foldLines(hexLines(view), how);
 const options = { fold: true, here: -1, opened: new Set<number>() };
 
 describe("hex rows", () => {
