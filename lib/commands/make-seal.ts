@@ -24,7 +24,7 @@ export interface MadeSeal {
 }
 
 /** Makes a seal over where every chain stands now; two at once give two that follow one another. */
-export function makeSeal(actor: Actor, cause: SealCause, tx?: Transaction): Promise<MadeSeal> {
+export async function makeSeal(actor: Actor, cause: SealCause, tx?: Transaction): Promise<MadeSeal> {
   if (cause === "asked") allow(actor, "seal.make");
   const make = async (within: Transaction) => (await sealNow(within, actor, cause)).seal;
   return tx ? make(tx) : inTransaction(make);

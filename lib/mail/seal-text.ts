@@ -32,8 +32,8 @@ checks it with
   openssl base64 -d -A -in signature.txt -out seal.sig
   openssl pkeyutl -verify -pubin -inkey seal-key.pem -rawin -in seal.txt -sigfile seal.sig
 Compare the fingerprint with the one in an earlier mail and in each bundle: it
-changes only when the workshop has told you why. The last line is the SHA-256 of
-the seal before this one. A log that was changed, cut or replaced after this seal
+changes only when the workshop has told you why. The sixth line is the SHA-256
+of the seal before this one. A log that was changed, cut or replaced after this seal
 no longer fits it: the workshop's own check takes this mail as it is.
 
 ${f.workshop}

@@ -12,16 +12,19 @@ import { retryMail } from "@/lib/commands/retry-mail";
 import { sendSummary } from "@/lib/commands/send-summary";
 import { withdrawShare } from "@/lib/commands/withdraw-share";
 import type { Actor } from "@/lib/core/words";
+import { newestSealIn } from "@/lib/mail/seal-text";
 import { openText, sealText } from "@/lib/mail/sealed-text";
 import { mailSender, type OutgoingMail } from "@/lib/mail/transport";
 import { chainEntries, checkCustody } from "@/lib/queries/custody";
 import { mailList } from "@/lib/queries/mails";
 import { summaryByToken } from "@/lib/queries/summary";
-import { connection, inTransaction, Mail, Share } from "@/models";
+import { connection, inTransaction, Mail, Seal, Share } from "@/models";
 import { logKey } from "@/storage";
 import { type MadeChip, makeChip, makeReady, makeUser, sha256, store, firmware } from "../support/factory";
 
 const SECRET = "https://bench.example/summary/AAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAA";
+/** the last lines of every mail, once there is a seal */
+const NEWEST = "(\\n\\nNewest seal of this workshop's logs: \\d+\\nSHA-256 [0-9a-f]{64}\\n)?";
 const list = { q: "", sort: "", order: "asc" as const, page: 1, pageSize: 50 };
 
 async function queue(to = `${randomUUID()}@customer.example`): Promise<{ id: string; to: string }> {
@@ -62,8 +65,8 @@ describe("the outbox", () => {
     expect(before.sealed!.includes(Buffer.from("summary"))).toBe(false);
     const { got, send } = keeper();
     await deliverMails(send);
-    expect(got.filter((m) => m.to === to)).toEqual([{ id, to, subject: "A subject, größer", text: `Open ${SECRET}` }]);
-    expect(await row(id)).toMatchObject({ state: "sent", sealed: null, attempts: 1, textMasked: "Open (hidden)", lastError: null });
+    expect(got.filter((m) => m.to === to)).toEqual([{ id, to, subject: "A subject, größer", text: expect.stringMatching(new RegExp(`^Open ${SECRET}${NEWEST}$`)) as string }]);
+    expect(await row(id)).toMatchObject({ state: "sent", sealed: null, attempts: 1, textMasked: expect.stringMatching(new RegExp(`^Open \\(hidden\\)${NEWEST}$`)) as string, lastError: null });
     await deliverMails(send);
     expect(got.filter((m) => m.to === to)).toHaveLength(1);
   });
@@ -223,6 +226,10 @@ describe("the verification summary", () => {
     const sentEntry = (await chainEntries(chip.driveId)).find((e) => e.action === "summary.sent")!;
     expect(mail.text).toContain(`entry ${sentEntry.seq}\n${sentEntry.hash}`);
     expect(mail.text).toContain(logKey().keyId);
+    const seal = (await Seal.findOne({ where: { cause: "summary" }, order: [["number", "DESC"]] }))!;
+    expect(seal.leaves.toString("utf8")).toContain(`{"drive":"${chip.driveId}","head":"${sentEntry.hash}","seq":${sentEntry.seq}}\n`);
+    expect(mail.text).toContain(`${seal.sha256.toString("hex")}\n${seal.keyId}\n`);
+    expect(newestSealIn(mail.text)).toEqual({ number: seal.number, sha256: seal.sha256.toString("hex") });
     const kept = (await row(mail.id)).textMasked;
     expect(kept).not.toContain(token);
     expect(kept).toContain("(private link, hidden)");
@@ -231,6 +238,7 @@ describe("the verification summary", () => {
     const view = (await summaryByToken(token))!;
     expect(view).toMatchObject({ caseRef: chip.ref, customerName: "Lindmoor Veterinary Practice", twoPersonRule: true });
     expect(view.drives[0].head).toEqual({ seq: sentEntry.seq, hash: sentEntry.hash });
+    expect(view.seal).toEqual({ number: seal.number, sha256: seal.sha256.toString("hex"), keyId: seal.keyId });
     expect(view.drives[0].chips).toEqual([expect.objectContaining({ verified: true, sha256: sha256(image), agreeingReads: 3, seatings: 2, readBacks: 2, approvedBy: "Ida Brandt", transferKind: "write" })]);
     expect(view.drives[0].chips[0].cells).toHaveLength(256);
     expect(JSON.stringify(view)).not.toMatch(/Nell Farrow|bench\.example/);
