@@ -1,6 +1,6 @@
 import { custodyPath, driveFolder, VOTES_ENDING } from "../bundle-layout";
-import { checkChain } from "../custody";
-import type { Keyring } from "../keyring";
+import { checkChain, type ChainProblem } from "../custody";
+import { keyOrder, type Keyring } from "../keyring";
 import { FORMAT_ENDING } from "../text-format";
 import { countOf } from "../quantity";
 import type { Files } from "./lists";
@@ -24,7 +24,7 @@ export interface LogEntry {
   facts: Record<string, unknown>;
 }
 
-const SENTENCE: Record<string, string> = {
+const SENTENCE: Partial<Record<ChainProblem, string>> = {
   "not-readable": "The entry can’t be read.",
   "not-canonical": "The entry’s text is not in its canonical form: something else wrote it.",
   "wrong-shape": "The entry does not have the parts that an entry has.",
@@ -55,11 +55,11 @@ export async function checkLog(files: Files, drive: number, ring: Keyring, tools
   if (lines.length === 0) return { step: notes.notChecked("There is no entry to check."), log: null };
   const entries = lines.map((line, i) => entryOf(line.body, i + 1));
   const chain = chainOf(lines[0].body);
-  const ages = new Map([...ring.keys.keys()].map((id, age) => [id, age]));
   let n = 0;
   const findings = await checkChain(lines, null, {
     sha256: (bytes) => sha256Hex(bytes, tools),
     knows: (keyId) => ring.keys.has(keyId),
+    order: keyOrder(ring),
     verify: (keyId, bytes, signature) => {
       onEntry((n += 1));
       return keyTools(tools).verify(ring.keys.get(keyId) ?? "", bytes, signature);
@@ -68,12 +68,6 @@ export async function checkLog(files: Files, drive: number, ring: Keyring, tools
   const at = (seq: number | null) => `${path}.jsonl, entry ${seq ?? lines.length}`;
   // a missing head is none here: the bundle's own end is looked at below
   for (const { seq, problem, expected, found } of findings) if (problem !== "head") notes.fault(at(seq), SENTENCE[problem] ?? "The entry is not in order.", expected, found);
-  let newest = 0;
-  lines.forEach(({ keyId }, i) => {
-    const age = ages.get(keyId) ?? newest;
-    if (age < newest && !findings.some((one) => (one.problem as string) === "old-key")) notes.fault(at(i + 1), SENTENCE["old-key"], [...ages.keys()][newest], keyId);
-    newest = Math.max(newest, age);
-  });
   if (entries[entries.length - 1].action !== "bundle.started") {
     notes.fault(`${path}.jsonl`, "It does not end with the start of this bundle: its end was cut, or something was added.", "bundle.started", entries[entries.length - 1].action);
   }

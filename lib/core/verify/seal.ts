@@ -1,5 +1,6 @@
 import { z } from "zod";
-import { LOG_KEY } from "../bundle-layout";
+import { canonicalJson } from "../canonical";
+import { LOG_KEY, SEAL_KEY, SEAL_PROOF, SEAL_SIGNATURE, SEAL_TEXT } from "../bundle-layout";
 import type { Keyring } from "../keyring";
 import { parseSeal, proofHolds, type SealFacts, type SealProof } from "../seal";
 import { countOf } from "../quantity";
@@ -8,11 +9,6 @@ import type { DriveLog } from "./log";
 import { textOf } from "./read-files";
 import { type Step, StepNotes } from "./report";
 import { keyTools, sha256Of, type VerifyTools } from "./tools";
-
-export const SEAL_TEXT = "data/seal/seal.txt";
-export const SEAL_SIGNATURE = "data/seal/seal.sig";
-export const SEAL_KEY = "data/seal/seal-key.pem";
-export const SEAL_PROOF = "data/seal/proof.json";
 
 export interface SealSeen {
   facts: SealFacts | null;
@@ -86,11 +82,11 @@ function proofOf(files: Files, notes: StepNotes): SealProof | null {
   }
   try {
     const parsed = proofShape.safeParse(JSON.parse(source));
-    if (parsed.success) return parsed.data;
+    if (parsed.success && canonicalJson(parsed.data) === source) return parsed.data;
   } catch {
     // falls through: what is no JSON is no proof either
   }
-  notes.fault(SEAL_PROOF, "It is not a proof twinread-proof/1.");
+  notes.fault(SEAL_PROOF, "It is not a proof twinread-proof/1 in its canonical form.");
   return null;
 }
 
@@ -108,7 +104,7 @@ export function checkFingerprint(expected: string | null, logKey: string | null,
   }
   if (expected === logKey) return notes.done("The log key has the fingerprint that you gave.");
   if (expected === sealKey) return notes.done("The seal key has the fingerprint that you gave.");
-  const replaced = ring.keys.has(expected) || ring.sealKeys.has(expected);
+  const replaced = [ring.keys, ring.sealKeys].some((keys) => keys.has(expected) && [...keys.keys()].at(-1) !== expected);
   notes.fault(logKey === null ? LOG_KEY : "The keys in the bundle", replaced
     ? "You gave the fingerprint of a key that was replaced before this bundle was made. Take it from a newer mail or summary."
     : "Neither the log key nor the seal key has the fingerprint that you gave: somebody else may have made this bundle.", expected, [logKey, sealKey].filter((key) => key !== null).join(" and ") || "no key");
