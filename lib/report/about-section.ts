@@ -21,12 +21,12 @@ export async function whereItStands(sheet: Sheet, { record, drawing }: ReportFac
     sheet.paragraph([plain("No chip of this case is recorded yet.")]);
     return;
   }
-  const table = new Table(sheet, [{ head: "Chip", width: 68 }, { head: "Of", width: 132 }, { head: "State", width: 96 }, { head: "What was found, and what comes next", width: 0 }], { name: "Where each chip stands" });
+  const table = new Table(sheet, [{ head: "Chip", width: 62 }, { head: "Of", width: 150 }, { head: "State", width: 92 }, { head: "What was found, and what comes next", width: 0 }], { name: "Where each chip stands" });
   for (const { drive, board, chip } of originals) {
     const state = drawing.states[chip.id];
     table.row([
       [strong(chip.designator, { face: "mono" })],
-      [plain(`${driveName(drive)}, ${boardName(board)}`), quiet(`\n${[chip.holds, sizeText(chip.sizeBytes)].filter(Boolean).join(", ")}`, { size: 8.5 })],
+      [plain(`${driveName(drive)}, ${boardName(board, true)}`), quiet(`\n${[chip.holds, sizeText(chip.sizeBytes)].filter(Boolean).join(", ")}`, { size: 8.5 })],
       [strong(state?.label ?? "Not judged")], [plain(state?.sentence ?? "")],
     ]);
     await sheet.breathe();
@@ -81,7 +81,7 @@ export function parties(sheet: Sheet, { record, logs }: ReportFacts): void {
     people.set(key, known);
   }
   sheet.heading(3, "Who acted, as the logs say");
-  const table = new Table(sheet, [{ head: "Name", width: 150 }, { head: "Role", width: 110 }, { head: "Entries", width: 48, align: "right" }, { head: "First", width: 96 }, { head: "Last", width: 0 }], { name: "Who acted" });
+  const table = new Table(sheet, [{ head: "Name", width: 130 }, { head: "Role", width: 96 }, { head: "Entries", width: 50, align: "right" }, { head: "First, UTC", width: 118 }, { head: "Last, UTC", width: 0 }], { name: "Who acted" });
   for (const one of people.values()) table.row([[plain(one.name)], [plain(one.role)], [plain(String(one.entries))], [plain(momentText(one.first))], [plain(momentText(one.last))]]);
   table.end();
   sheet.paragraph([quiet(`Policy when the bundle was made: at least ${countOf(record.policy.reads, "agreeing read")} from ${countOf(record.policy.seatings, "seating")}, then ${countOf(record.policy.readBacks, "equal read-back")} from ${countOf(record.policy.readBackSeatings, "seating")}.`, { size: 8.5, color: INK_3 })]);

@@ -43,7 +43,7 @@ export async function chips(sheet: Sheet, facts: ReportFacts): Promise<void> {
 
 function heading(sheet: Sheet, { drive, board, chip }: Place, number: string): void {
   sheet.heading(2, `${chip.designator} of the ${board.role === "original" ? "original" : "donor"} board, ${driveName(drive)}`, { number, plate: (x, y) => drawPlate(sheet, board.role, chip.designator, x, y), keep: 90 });
-  sheet.paragraph([quiet([chip.holds, chip.marking, chipKind(chip), boardName(board)].filter(Boolean).join("; "))]);
+  sheet.paragraph([quiet([chip.holds, chip.marking, chipKind(chip), boardName(board, true)].filter(Boolean).join("; "))]);
 }
 
 async function originalChip(sheet: Sheet, facts: ReportFacts, place: Place, number: string, shown: Set<string>): Promise<void> {
@@ -78,7 +78,7 @@ async function originalChip(sheet: Sheet, facts: ReportFacts, place: Place, numb
 }
 
 async function reads(sheet: Sheet, { drawing }: ReportFacts, name: string, list: readonly ReportRead[], stacks: readonly Stack[], chipBytes: number, shown: Set<string>): Promise<void> {
-  for (const stack of stacks) await drawStack(sheet, stack, chipBytes, drawing);
+  for (const stack of stacks) await drawStack(sheet, stack, chipBytes, drawing, stacks.length > 1);
   await readTable(sheet, name, list);
   for (const read of list) shown.add(read.id);
 }

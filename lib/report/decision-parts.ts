@@ -8,7 +8,7 @@ function chipName(record: ReportCase, id: string): string {
   for (const drive of record.drives) {
     for (const board of drive.boards) {
       const chip = board.chips.find((one) => one.id === id);
-      if (chip) return `${chip.designator} of ${boardName(board)}`;
+      if (chip) return `${chip.designator} of ${boardName(board, true)}`;
     }
   }
   return `a chip with the id ${id}`;

@@ -45,10 +45,10 @@ function chipTable(sheet: Sheet, record: ReportCase, board: ReportBoard): void {
     return;
   }
   const all = record.drives.flatMap((drive) => drive.boards.flatMap((one) => one.chips.map((chip) => ({ board: one, chip }))));
-  const table = new Table(sheet, [{ head: "Chip", width: 76 }, { head: "Kind and size", width: 174 }, { head: "Marking, what it holds", width: 120 }, { head: "Pair", width: 0 }], { name: `Chips of ${boardName(board)}` });
+  const table = new Table(sheet, [{ head: "Chip", width: 70 }, { head: "Kind and size", width: 160 }, { head: "Marking, what it holds", width: 124 }, { head: "Pair", width: 0 }], { name: `Chips of ${boardName(board)}` });
   for (const chip of board.chips) {
     const pair = all.find((one) => one.chip.pairedWith === chip.id || one.chip.id === chip.pairedWith);
-    const paired = pair ? [plain(`with ${pair.chip.designator} of ${boardName(pair.board)}${pair.chip.sizeBytes === chip.sizeBytes ? "" : `, which holds ${sizeText(pair.chip.sizeBytes)}`}`)] : [quiet(chip.needsTransfer ? "not paired yet" : "none needed")];
+    const paired = pair ? [plain(`with ${pair.chip.designator} of ${boardName(pair.board, true)}${pair.chip.sizeBytes === chip.sizeBytes ? "" : `, which holds ${sizeText(pair.chip.sizeBytes)}`}`)] : [quiet(chip.needsTransfer ? "not paired yet" : "none needed")];
     table.row([
       [strong(chip.designator, { face: "mono" })], [plain(chipKind(chip))],
       chip.marking || chip.holds ? [...(chip.marking ? [code(chip.marking, { size: 8 })] : []), ...(chip.holds ? [plain(`${chip.marking ? "\n" : ""}${chip.holds}`)] : [])] : [quiet("not recorded")],

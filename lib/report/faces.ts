@@ -1,6 +1,7 @@
 import { readFileSync } from "node:fs";
 import path from "node:path";
 import type { Style } from "./ink";
+import { sfntOf } from "./woff";
 
 /** A face of the type family in two parts: what the Latin file lacks stands in the second. */
 export interface Face {
@@ -29,7 +30,7 @@ export function fontFiles(): Map<string, Buffer> {
     for (const part of ["latin", "latin-ext"]) {
       for (const weight of Object.values(WEIGHT)) {
         const name = named(family, part, weight);
-        loaded.set(name, readFileSync(path.join(folder, `${name}.woff`)));
+        loaded.set(name, sfntOf(readFileSync(path.join(folder, `${name}.woff`))));
       }
     }
   }

@@ -26,11 +26,11 @@ export async function handOuts(sheet: Sheet, { record, logs }: ReportFacts): Pro
   const items = listed.filter(({ entry }) => entry.action !== "image.handed-out");
   sheet.paragraph([plain(images.length === 0 ? "No image of this case was handed out by itself." : "An image that leaves the house is recorded before its first byte does.")]);
   if (images.length > 0) {
-    const table = new Table(sheet, [{ head: "Time", width: 104 }, { head: "What", width: 104 }, { head: "By, to", width: 130 }, { head: "For what", width: 0 }], { name: "Images handed out" });
+    const table = new Table(sheet, [{ head: "Time, UTC", width: 112 }, { head: "What", width: 104 }, { head: "By, to", width: 130 }, { head: "For what", width: 0 }], { name: "Images handed out" });
     for (const { entry, drive } of images) {
       const out = imageLeft(entry.facts ?? {});
       const reason = text(entry.facts?.reason);
-      table.row([[plain(momentText(entry.at), { size: 8.5 })], [plain(`${out.what}, ${driveName(drive)}`)], [plain(`${entry.who}, to ${out.to}`)], [plain(`${text(entry.facts?.purpose)}${reason ? `: ${reason}` : ""}`)]]);
+      table.row([[plain(momentText(entry.at), { size: 8.5 })], [plain(`${out.what}, ${driveName(drive)}`)], [plain(`${entry.who}, to ${out.to}`)], [plain(`${text(entry.facts?.purpose)}${reason ? `: ${reason}` : ""}`)]], { keep: 18 });
       table.below((cell) => sheet.paragraph([quiet("SHA-256 ", { size: 8 }), code(out.sha256)], { x: LEFT + 14, element: cell, type: "TD" }));
       await sheet.breathe();
     }
@@ -55,7 +55,7 @@ export async function custodyLogs(sheet: Sheet, { record, logs }: ReportFacts): 
   for (const [i, drive] of record.drives.entries()) {
     const log = logs[i] ?? [];
     sheet.heading(2, `${driveName(drive)}: ${log.length} ${log.length === 1 ? "entry" : "entries"}`, { number: `6.${i + 1}`, keep: 80 });
-    const table = new Table(sheet, [{ head: "", width: 14 }, { head: "No.", width: 36, align: "right" }, { head: "Time, UTC", width: 66 }, { head: "Who", width: 84 }, { head: "What happened", width: 216 }, { head: "Hash", width: 0 }], { name: `Custody log of ${driveName(drive)}` });
+    const table = new Table(sheet, [{ head: "", width: 18 }, { head: "No.", width: 36, align: "right" }, { head: "Time, UTC", width: 66 }, { head: "Who", width: 86 }, { head: "What happened", width: 212 }, { head: "Hash", width: 0 }], { name: `Custody log of ${driveName(drive)}` });
     for (const [at, entry] of log.entries()) {
       table.row(cellsOf(entry), { beside: (top, bottom, first) => via(sheet, entry, { top, bottom, first, begins: at === 0, ends: at === log.length - 1 }) });
       await sheet.breathe();

@@ -21,10 +21,14 @@ export async function makeReport(facts: ReportFacts): Promise<Buffer> {
     title: `Case ${record.ref}: report of the case bundle`, workshop: record.workshop, ref: record.ref, madeAt: new Date(record.madeAt),
     foot: heads.length <= FOOT_HEADS ? `Head of ${heads.join("; ")}` : `Head of ${heads[0]}; heads of all ${heads.length} logs in chapter 1`,
   });
+  await sheet.breathe();
   opening(sheet, facts);
+  await sheet.breathe();
   await whereItStands(sheet, facts);
   howToCheck(sheet, facts);
+  await sheet.breathe();
   parties(sheet, facts);
+  await sheet.breathe();
   await drives(sheet, facts);
   await chips(sheet, facts);
   await handOuts(sheet, facts);

@@ -17,6 +17,6 @@ export function promises(sheet: Sheet, { record, twoPersonRule }: ReportFacts): 
     ...(twoPersonRule ? [] : ["That two people looked: the two-person rule was switched off for at least one approval, or is switched off now."]),
     `Anything about parts of the board other than ${designators.length > 0 ? listText(designators) : "the chips named here"}.`,
   ];
-  sheet.heading(1, "What this does not promise", { number: "7" });
+  sheet.heading(1, "What this does not promise", { number: "7", keep: 150 });
   for (const limit of limits) sheet.paragraph([plain(limit)], { mark: "dash", gap: 3 });
 }

@@ -11,8 +11,8 @@ const INDENT = LEFT + 14;
 /** Every read with its digests, where it came from and what was found on it; nothing is left out or cut. */
 export async function readTable(sheet: Sheet, name: string, reads: readonly ReportRead[]): Promise<void> {
   const table = new Table(sheet, [
-    { head: "Read", width: 62 }, { head: "Seating", width: 42 }, { head: "Size", width: 66, align: "right" }, { head: "CRC-32", width: 62 },
-    { head: "Operator", width: 96 }, { head: "Taken; stored", width: 104 }, { head: "Counts", width: 0 },
+    { head: "Read", width: 66 }, { head: "Seating", width: 44 }, { head: "Size", width: 64, align: "right" }, { head: "CRC-32", width: 62 },
+    { head: "Operator", width: 92 }, { head: "Taken; stored", width: 106 }, { head: "Counts", width: 0 },
   ], { name });
   for (const read of reads) {
     const color = read.counted ? INK : INK_3;
@@ -22,7 +22,7 @@ export async function readTable(sheet: Sheet, name: string, reads: readonly Repo
       [plain(sizeText(read.sizeBytes), { color })], [code(read.crc32.toUpperCase(), { color })], [plain(read.operator.name, { color })],
       [plain(`${read.takenAt ? momentText(read.takenAt) : "not stated"}\n${momentText(read.storedAt)}`, { size: 8, color })],
       [read.counted ? strong("Counted") : strong("Set aside", { color })],
-    ]);
+    ], { keep: 42 });
     table.below((cell) => details(sheet, read, cell));
     await sheet.breathe();
   }
@@ -32,7 +32,7 @@ export async function readTable(sheet: Sheet, name: string, reads: readonly Repo
 function details(sheet: Sheet, read: ReportRead, element: Struct): void {
   const at = { x: INDENT, element, type: "TD", gap: 1.5 };
   sheet.paragraph([quiet("SHA-256 ", { size: 8 }), code(read.sha256)], at);
-  sheet.paragraph([quiet(originText(read), { size: 8 }), quiet(`. File as it came: `, { size: 8 }), code(read.originalFileName, { size: 8 })], at);
+  sheet.paragraph([quiet(originText(read), { size: 8 }), ...(read.derived ? [] : [quiet(". File as it came: ", { size: 8 }), code(read.originalFileName, { size: 8 })])], at);
   if (read.source) {
     sheet.paragraph([quiet(`Expanded from the text file with SHA-256 `, { size: 8 }), code(read.source.sha256, { size: 8 }), quiet(`, base 0x${read.source.base.toString(16).toUpperCase()}, empty space filled with ${read.source.fill.toString(16).toUpperCase().padStart(2, "0")}`, { size: 8 })], at);
   }

@@ -42,9 +42,10 @@ export function chipKind(chip: ReportChip): string {
   return [BUS[chip.bus], `${sizeText(chip.sizeBytes)} (${SIZE_FROM[chip.sizeSource]})`, chip.package, supplyText(chip.supplyMillivolts)].filter(Boolean).join(", ");
 }
 
-export function boardName(board: ReportBoard): string {
-  const which = board.role === "original" ? "Original board" : `Donor board ${board.label.replace(/^donor-/, "")}`;
-  return `${which} ${[board.boardNumber, board.revision].filter(Boolean).join(" ")}`;
+/** "Donor board 1, BX 40-3179 rev C"; with a small letter inside a sentence. */
+export function boardName(board: ReportBoard, inside = false): string {
+  const which = board.role === "original" ? "original board" : `donor board ${board.label.replace(/^donor-/, "")}`;
+  return `${inside ? which : which.charAt(0).toUpperCase() + which.slice(1)}, ${[board.boardNumber, board.revision].filter(Boolean).join(" ")}`;
 }
 
 export const driveName = (drive: ReportDrive) => `Drive ${drive.letter}`;

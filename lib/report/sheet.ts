@@ -16,7 +16,8 @@ export const WIDTH = RIGHT - LEFT;
 export const MARGIN = 92;
 const TOP = 72;
 const BOTTOM = 782;
-const STEP = 24;
+/** how long other requests wait at most for a block to end, in ms and a little more */
+const TURN = 10;
 
 export interface SheetHead {
   title: string;
@@ -35,7 +36,9 @@ export class Sheet {
   private readonly root: Struct;
   private section: Struct;
   private readonly outline: PDFKit.PDFOutline[];
-  private steps = 0;
+  private since = performance.now();
+  /** where the last chapter's heading ended: a part that begins there needs no rule of its own */
+  private underChapter = -1;
 
   constructor(private readonly head: SheetHead) {
     const info = { Title: head.title, Author: head.workshop, Subject: `Case ${head.ref}`, Creator: "Twinread", Producer: "Twinread", CreationDate: head.madeAt, ModDate: head.madeAt };
@@ -51,8 +54,9 @@ export class Sheet {
 
   /** Lets other work have the thread; called between blocks. */
   async breathe(): Promise<void> {
-    this.steps += 1;
-    if (this.steps % STEP === 0) await new Promise<void>((done) => setImmediate(done));
+    if (performance.now() - this.since < TURN) return;
+    await new Promise<void>((done) => setImmediate(done));
+    this.since = performance.now();
   }
 
   get room(): number {
@@ -103,23 +107,29 @@ export class Sheet {
   heading(level: 1 | 2 | 3, text: string, { number = "", keep = 60, plate }: { number?: string; keep?: number; plate?: (x: number, y: number) => number } = {}): void {
     const size = [0, 15, 11.5, 9.5][level];
     const spans = [...(number ? [strong(`${number}  `, { size, color: COPPER })] : []), strong(text, { size })];
-    this.space([0, 20, 16, 10][level]);
+    const directly = level === 2 && this.y === this.underChapter;
+    this.space(directly ? 0 : [0, 20, 16, 10][level]);
     const lines = this.type.lines(spans, WIDTH - (plate ? 90 : 0));
     this.ensure(lines.reduce((sum, line) => sum + line.height, 0) + keep);
     if (level < 3) {
       if (level === 1) this.section = this.element("Sect", this.root);
-      this.rule(level === 1 ? RULE_2 : RULE, level === 1 ? 1.2 : 0.75);
-      this.y += level === 1 ? 8 : 6;
+      if (!directly) {
+        this.rule(level === 1 ? RULE_2 : RULE, level === 1 ? 1.2 : 0.75);
+        this.y += level === 1 ? 8 : 6;
+      }
       const parent = this.outline[level - 1];
       this.outline[level] = parent.addItem(number ? `${number} ${text}` : text, { expanded: level === 1 });
       this.outline.length = level + 1;
     }
     let x = LEFT;
     if (plate) this.artifact(() => (x += plate(LEFT, this.y) + 8));
-    const element = this.element(`H${level}`);
-    this.tagged(element, `H${level}`, () => this.put(lines, x));
+    // the report's title is the first of the headings
+    const tag = `H${level + 1}`;
+    const element = this.element(tag);
+    this.tagged(element, tag, () => this.put(lines, x));
     element.end();
     this.y += [0, 6, 4, 3][level];
+    if (level === 1) this.underChapter = this.y;
   }
 
   /** Draws lines that fit at the place where the sheet is. */
@@ -195,10 +205,11 @@ export class Sheet {
       this.doc.rect(0, 0, 595.28, 18).fill(MASK);
       this.doc.rect(0, 18, 595.28, 3).fill(BARE_EDGE);
     });
+    this.y = 46;
     this.paragraph([strong(this.head.workshop, { size: 10.5, color: COPPER })], { gap: 1 });
-    const title = this.element("Title");
+    const title = this.element("H1");
     const lines = this.type.lines([strong("Report of the case bundle", { size: 22 })], WIDTH);
-    this.tagged(title, "Title", () => this.put(lines, LEFT));
+    this.tagged(title, "H1", () => this.put(lines, LEFT));
     title.end();
     this.y += 4;
     this.facts(rows.map(([label, span]) => [label, [span]]));
@@ -215,7 +226,7 @@ export class Sheet {
     for (let i = start; i < start + count; i += 1) {
       this.doc.switchToPage(i);
       this.doc.markContent("Artifact", { type: "Pagination" });
-      if (i > start) this.side(34, [strong(this.head.workshop, { size: 8, color: COPPER })], [code(this.head.ref, { size: 8 }), quiet("  Report of the case bundle", { size: 8 })], 50);
+      if (i > start) this.side(34, [strong(this.head.workshop, { size: 8, color: COPPER })], [quiet("Case ", { size: 8 }), code(this.head.ref, { size: 8 }), quiet(", report of the case bundle", { size: 8 })], 50);
       this.side(800, [plain(this.head.foot, { face: "mono", size: 7.5, color: INK_3 })], [plain(`Page ${i - start + 1} of ${count}`, { size: 8, color: INK })], 796);
       this.doc.endMarkedContent();
       await this.breathe();

@@ -11,8 +11,6 @@ const CELL_WIDTH = (RIGHT - X) / CELLS;
 const STRIP = 20;
 const LANE = 10;
 const RULER = 17;
-/** of a cell's width, as on screen: 1 of 4 px */
-const GAP = 0.25;
 
 /** An image's own cells spread over a longer window: what lies past its end is not read, what is longer is joined. */
 export function cellsOver(cells: string, imageBytes: number, windowBytes: number): string {
@@ -61,7 +59,7 @@ function strip(sheet: Sheet, cells: string | undefined, y: number): void {
   const { doc } = sheet;
   doc.moveTo(X, y + STRIP).lineTo(RIGHT, y + STRIP).lineWidth(0.5).stroke(RULE);
   doc.save().translate(X, y);
-  for (const path of stripPaths(cells ?? "n".repeat(CELLS), { width: CELL_WIDTH, height: STRIP, gap: CELL_WIDTH * GAP })) doc.path(path.d).fill(CELL[path.cls]);
+  for (const path of stripPaths(cells ?? "n".repeat(CELLS), { width: CELL_WIDTH, height: STRIP })) doc.path(path.d).fill(CELL[path.cls]);
   doc.restore();
 }
 
@@ -78,11 +76,11 @@ function lane(sheet: Sheet, { cells }: Lane, y: number): void {
 }
 
 /** The strips of a stack with the lanes between them, over as many pages as they need. */
-export async function drawStack(sheet: Sheet, { title, rows }: Stack, chipBytes: number, { strips, lanes }: ReportDrawing): Promise<void> {
+export async function drawStack(sheet: Sheet, { title, rows }: Stack, chipBytes: number, { strips, lanes }: ReportDrawing, titled: boolean): Promise<void> {
   const sizeBytes = Math.max(chipBytes, ...rows.map((row) => row.sizeBytes));
   const between = rows.slice(1).map((row, i) => laneOf(rows[i], row, lanes));
   sheet.ensure(16 + RULER + 2 * (STRIP + LANE + 8));
-  sheet.paragraph([strong(title), quiet(`  256 cells over ${sizeText(sizeBytes)}`, { size: 8 })], { gap: 2 });
+  sheet.paragraph([...(titled ? [strong(`${title}. `)] : []), quiet(`Image strips, 256 cells over ${sizeText(sizeBytes)}`, { size: 8 })], { gap: 2 });
   const figure = sheet.element("Figure", undefined, { alt: [`${title}: ${countOf(rows.length, "image strip")} of 256 cells each.`, ...between.map((one, i) => `${rows[i].name} and ${rows[i + 1].name}: ${one.words}.`)].join(" ") });
   sheet.tagged(figure, "Figure", () => ruler(sheet, sizeBytes));
   for (const [i, row] of rows.entries()) {
@@ -121,7 +119,7 @@ export function drawLegend(sheet: Sheet): void {
     let x = LEFT;
     for (const [letter, word] of LEGEND) {
       sheet.doc.save().translate(x, sheet.y + 1);
-      for (const path of stripPaths(letter.repeat(6), { width: 2.6, height: 10, gap: 0.6 })) sheet.doc.path(path.d).fill(CELL[path.cls]);
+      for (const path of stripPaths(letter.repeat(6), { width: 2.6, height: 10 })) sheet.doc.path(path.d).fill(CELL[path.cls]);
       sheet.doc.restore();
       const [line] = sheet.type.lines([quiet(word, { size: 7.5 })], 80);
       sheet.type.draw(line, x + 20, sheet.y + 0.5);

@@ -10,14 +10,14 @@ export interface Column {
 }
 
 export interface RowOptions {
-  /** no rule above: it belongs to the row before */
-  joined?: boolean;
+  /** points that have to follow on the same page */
+  keep?: number;
   /** drawn beside each part of the row; `first` at its beginning */
   beside?: (top: number, bottom: number, first: boolean) => void;
 }
 
 const PAD = 3;
-const GUTTER = 8;
+const GUTTER = 12;
 
 /** A table whose rows may run over the end of a page; the heads come again there. */
 export class Table {
@@ -77,22 +77,22 @@ export class Table {
     this.underHeads(top);
   }
 
-  row(cells: readonly (readonly Span[])[], { joined = false, beside }: RowOptions = {}): void {
+  row(cells: readonly (readonly Span[])[], { keep = 0, beside }: RowOptions = {}): void {
     const { sheet } = this;
-    const laid = cells.map((spans, i) => sheet.type.lines(spans, this.at[i].width));
+    const laid = cells.map((spans, i) => sheet.type.lines(spans, this.at[i].width, 9));
     const row = sheet.element("TR", this.element);
     const elements = cells.map(() => sheet.element("TD", row));
     const done = laid.map(() => 0);
     // a row stays whole where a page has room for it; a longer one runs on
     const whole = Math.max(...laid.map(heightOf)) + 2 * PAD;
-    if (whole > sheet.room && (whole < 180 || sheet.room < 60)) this.turnPage();
+    if (whole + keep > sheet.room && (whole < 180 || sheet.room < 60)) this.turnPage();
     for (let first = true; first || laid.some((lines, i) => done[i] < lines.length); first = false) {
       if (!first) this.turnPage();
-      if (first && !joined && !this.fresh) sheet.rule(RULE, 0.5);
+      if (first && !this.fresh) sheet.rule(RULE, 0.5);
       this.fresh = false;
       const top = sheet.y;
       let bottom = top;
-      sheet.y = top + (joined ? 0 : PAD);
+      sheet.y = top + PAD;
       const from = sheet.y;
       laid.forEach((lines, i) => {
         if (done[i] >= lines.length) return;

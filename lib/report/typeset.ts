@@ -20,7 +20,14 @@ export interface Line {
 const LEADING = 1.36;
 const KEPT = 20_000;
 /** Figures of one width, as on screen. */
-const FEATURES: PDFKit.Mixins.OpenTypeFeatures[] = ["tnum"];
+const TABULAR: PDFKit.Mixins.OpenTypeFeatures[] = ["tnum"];
+const NONE: PDFKit.Mixins.OpenTypeFeatures[] = [];
+
+/** What pdfkit is asked for without features it keeps word by word: good for words, not for digests that never come again. */
+function featuresOf(text: string, font: string): PDFKit.Mixins.OpenTypeFeatures[] | undefined {
+  if (font.includes("-mono-")) return NONE;
+  return /\d/.test(text) ? TABULAR : undefined;
+}
 
 /** pdfkit's own view of an open font: the only way to ask which characters it has. */
 interface OpenFont {
@@ -51,7 +58,7 @@ export class Typesetter {
     const key = `${font}:${text}`;
     const known = this.widths.get(key);
     if (known !== undefined) return known;
-    const width = this.doc.font(font).fontSize(1).widthOfString(text, { features: FEATURES });
+    const width = this.doc.font(font).fontSize(1).widthOfString(text, { features: featuresOf(text, font) });
     if (this.widths.size > KEPT) this.widths.clear();
     this.widths.set(key, width);
     return width;
@@ -68,9 +75,10 @@ export class Typesetter {
     });
   }
 
-  lines(spans: readonly Span[], width: number): Line[] {
+  /** `leastSize`: lines are at least as high as for this size, so that cells side by side stand on one line. */
+  lines(spans: readonly Span[], width: number, leastSize = 6): Line[] {
     const lines: Line[] = [];
-    const least = Math.max(6, ...spans.map((span) => span.size)) * LEADING;
+    const least = Math.max(leastSize, ...spans.map((span) => span.size)) * LEADING;
     let line: Piece[] = [];
     let word: Piece[] = [];
     let space: Piece | null = null;
@@ -148,7 +156,7 @@ export class Typesetter {
   draw(line: Line, x: number, y: number): void {
     const baseline = y + line.height * 0.73;
     for (const { piece, x: at } of line.pieces) {
-      this.doc.font(piece.font).fontSize(piece.size).fillColor(piece.color).text(piece.text, x + at, baseline, { lineBreak: false, baseline: "alphabetic", features: FEATURES });
+      this.doc.font(piece.font).fontSize(piece.size).fillColor(piece.color).text(piece.text, x + at, baseline, { lineBreak: false, baseline: "alphabetic", features: featuresOf(piece.text, piece.font) });
     }
   }
 }
