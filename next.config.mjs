@@ -8,7 +8,7 @@ const everywhere = [
 
 /** @type {import("next").NextConfig} */
 const config = {
-  serverExternalPackages: ["sequelize", "mariadb", "@node-rs/argon2", "archiver", "nodemailer", "piscina"],
+  serverExternalPackages: ["sequelize", "mariadb", "@node-rs/argon2", "archiver", "nodemailer", "piscina", "pdfkit"],
   poweredByHeader: false,
   // types are a step of their own in npm test; a workshop's first start need not wait for them
   typescript: { ignoreBuildErrors: true },

@@ -38,10 +38,12 @@ const THERE = {
   ent: program("ent"),
   "ipxe-qemu": file("/usr/lib/ipxe/qemu/pxe-e1000.rom"),
   diffutils: program("cmp"),
+  "poppler-utils": program("pdftotext"),
+  qpdf: program("qpdf"),
 };
 
 export const DATABASE_PACKAGES = ["mariadb-server-core", "mariadb-client"];
-export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord", "ent", "ipxe-qemu", "diffutils"];
+export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord", "ent", "ipxe-qemu", "diffutils", "poppler-utils", "qpdf"];
 
 export const missingPackages = (wanted) => wanted.filter((name) => !THERE[name]());
 

@@ -7,13 +7,13 @@ import { expect, it } from "vitest";
  * Who may import whom: the table of DEVELOPERS.md. The longest room that fits a file decides; a room's own files are
  * always free to it.
  */
-const CHANGES = /^(models|storage)(\/|$)|^lib\/(core|schemas|commands|queries|mail|engine)\/|^lib\/(env|errors|limits|views|auth\/(password|token|attempts))$/;
+const CHANGES = /^(models|storage)(\/|$)|^lib\/(core|schemas|commands|queries|mail|engine|report)\/|^lib\/(env|errors|limits|views|auth\/(password|token|attempts))$/;
 const PARTS = "(components\\/(ui|shell|strip)|lib\\/core|lib\\/schemas)\\/|^lib\\/(limits|http\\/send)$";
 const ROOMS: Record<string, RegExp> = {
   "app": /^(components|lib)\//,
   "components": new RegExp(`^${PARTS}`),
   // a page about something larger is put together from the parts of what lies in it, never the other way round
-  ...Object.fromEntries(["case", "bench", "decision", "compare", "find"].map((noun) => [`components/${noun}`, new RegExp(`^components/(drive|custody|chip|composite)/|^${PARTS}`)])),
+  ...Object.fromEntries(["case", "bench", "decision", "compare", "find", "audit"].map((noun) => [`components/${noun}`, new RegExp(`^components/(drive|custody|chip|composite)/|^${PARTS}`)])),
   "components/drive": new RegExp(`^components/(custody|chip)/|^${PARTS}`),
   // a composite lies in a chip: its page shows the votes and makes one
   "components/chip": new RegExp(`^components/composite/|^${PARTS}`),
@@ -24,6 +24,8 @@ const ROOMS: Record<string, RegExp> = {
   "lib/auth": /^lib\/|^models(\/|$)/,
   "lib/http": /^lib\/|^(models|storage)(\/|$)/,
   "lib/engine": /^lib\/core\//,
+  // a document from plain data: nothing of rows or images
+  "lib/report": /^lib\/core\//,
   "lib/mail": /^lib\/|^models(\/|$)/,
   "models": /^lib\/(env|errors)$|^lib\/core\//,
   "storage": /^lib\/(env|errors|core\/digest)$/,
@@ -51,7 +53,7 @@ function refused(file: string): string[] {
     }
     const named = own.replace(/\.(ts|tsx|js|mjs|css)$/, "");
     // what a page gets is a view: components know its type, never how it is made
-    const viewType = room.startsWith("components") && typeOnly !== undefined && named === "lib/views";
+    const viewType = (room.startsWith("components") || room === "lib/report") && typeOnly !== undefined && named === "lib/views";
     // components are one folder per noun, each a room of its own
     const home = room.startsWith("components") ? path.posix.dirname(file) : room;
     const allowed = named.startsWith(`${home}/`) || named === home || viewType || ROOMS[room].test(named);
