@@ -40,7 +40,7 @@ function parsed(args: string[]) {
   try {
     return parseArgs({ args, allowPositionals: true, options: { json: { type: "boolean" }, help: { type: "boolean", short: "h" } } });
   } catch (error) {
-    throw new NotVerified(`${error instanceof Error ? error.message.split(". ")[0] : "The options can’t be read"}.\n${USAGE}`);
+    throw new NotVerified(`${error instanceof Error ? error.message.split(". ")[0] : "The options can't be read"}.\n${USAGE}`);
   }
 }
 

@@ -1,3 +1,4 @@
+import Link from "next/link";
 import type { ReactNode } from "react";
 import { Logo } from "@/components/ui/logo";
 import { DemoStrip } from "./demo-strip";
@@ -16,6 +17,9 @@ export function PublicShell({ workshop, line, demo, children }: { workshop: stri
         </div>
       </header>
       {children}
+      <footer className="no-print mx-auto flex max-w-[1120px] px-8 phone:px-4">
+        <p className="w-full border-t border-rule pt-3.5 pb-7 text-t2 text-ink-2">Have a case bundle or an image of a chip? <Link href="/verify" prefetch={false}>Check it here</Link>: nothing is sent.</p>
+      </footer>
     </>
   );
 }

@@ -1,5 +1,6 @@
 "use client";
 
+import Link from "next/link";
 import { signIn } from "next-auth/react";
 import { useState, type FormEvent } from "react";
 import { Button } from "@/components/ui/button";
@@ -50,7 +51,7 @@ export function SignInForm({ workshop, target }: { workshop: string; target: str
       <Input label="E-mail address" name="email" type="email" autoComplete="username" autoCapitalize="none" required />
       <Input label="Password" name="password" type="password" autoComplete="current-password" required aria-invalid={refused === WRONG || undefined} />
       <Button type="submit" variant="lead" disabled={busy}>Sign in</Button>
-      <p className="border-t border-rule pt-3.5 text-t2 text-ink-2">Customers need no account: the summary opens from the link in your e-mail.</p>
+      <p className="border-t border-rule pt-3.5 text-t2 text-ink-2">Customers need no account: the summary opens from the link in your e-mail. A case bundle or an image can be <Link href="/verify" prefetch={false}>checked here</Link> by anyone.</p>
     </form>
   );
 }

@@ -34,14 +34,14 @@ function factsOf(name: string): Stats {
     return lstatSync(name);
   } catch (error) {
     const code = error instanceof Error && "code" in error ? String(error.code) : String(error);
-    throw new NotVerified(`${name}: ${REASON[code] ?? `it can’t be read (${code})`}. Check the name and try again.`);
+    throw new NotVerified(`${name}: ${REASON[code] ?? `it can't be read (${code})`}. Check the name and try again.`);
   }
 }
 
 export async function openBundle(name: string): Promise<BundleSource> {
   const facts = factsOf(name);
   if (facts.isDirectory()) return { source: "folder", entries: entriesBelow(name), archiveFaults: [], close: () => Promise.resolve() };
-  if (!facts.isFile()) throw new NotVerified(`${name}: it is neither file nor folder. Name the bundle’s .zip or the folder it was unpacked to.`);
+  if (!facts.isFile()) throw new NotVerified(`${name}: it is neither file nor folder. Name the bundle's .zip or the folder it was unpacked to.`);
   const file = await open(name, "r").catch((error: NodeJS.ErrnoException) => {
     throw new NotVerified(`${name}: ${REASON[error.code ?? ""] ?? error.message}. Check the name and try again.`);
   });
@@ -51,7 +51,7 @@ export async function openBundle(name: string): Promise<BundleSource> {
   // with neither a first header nor a directory it was never an archive
   if (entries.length === 0 && !(head[0] === 0x50 && head[1] === 0x4b)) {
     await file.close();
-    throw new NotVerified(`${name}: it is no ZIP archive. Name the bundle’s .zip or the folder it was unpacked to.`);
+    throw new NotVerified(`${name}: it is no ZIP archive. Name the bundle's .zip or the folder it was unpacked to.`);
   }
   return { source: "archive", entries, archiveFaults: faults, close: () => file.close() };
 }
@@ -79,6 +79,6 @@ async function* bytesOf(file: string): AsyncGenerator<Uint8Array> {
   try {
     for await (const chunk of createReadStream(file, { highWaterMark: 1_048_576 })) yield chunk as Buffer;
   } catch (error) {
-    throw new EntryFault(`It can’t be read (${error instanceof Error ? error.message : String(error)}).`);
+    throw new EntryFault(`It can't be read (${error instanceof Error ? error.message : String(error)}).`);
   }
 }

@@ -9,21 +9,21 @@ configure({ useWebWorkers: false, chunkSize: 256 * 1024 });
 const SENTENCE: Record<string, string> = {
   "Invalid CRC-32": "Its bytes are not those that were packed: its CRC-32 differs.",
   "Invalid uncompressed size": "It is not as large as the archive says.",
-  "Local file header not found": "The archive’s directory points to it, and it does not begin there.",
+  "Local file header not found": "The archive's directory points to it, and it does not begin there.",
   "Entry data out of bounds": "The archive ends before it does.",
   "Overlapping entry found": "It lies over another file in the archive.",
   "Ambiguous archive": "The archive can be read in two ways: its directory and its files do not say the same.",
-  "Compression method not supported": "It is packed in a way that this check doesn’t know.",
-  "Invalid compressed data": "Its packed bytes can’t be unpacked.",
+  "Compression method not supported": "It is packed in a way that this check doesn't know.",
+  "Invalid compressed data": "Its packed bytes can't be unpacked.",
   "End of central directory not found": "Its directory is missing: it was cut short, or it is no ZIP archive.",
-  "Central directory header not found": "Its directory can’t be read.",
-  "File format is not recognized": "Its directory can’t be read.",
+  "Central directory header not found": "Its directory can't be read.",
+  "File format is not recognized": "Its directory can't be read.",
   "Split zip file": "It is one part of several.",
 };
 
 function wordsOf(error: unknown): string {
   const message = error instanceof Error ? error.message : String(error);
-  return SENTENCE[message] ?? `It can’t be read (${message}).`;
+  return SENTENCE[message] ?? `It can't be read (${message}).`;
 }
 
 function reasonOf(error: unknown): string | undefined {

@@ -42,7 +42,7 @@ export async function checkKeys(files: Files, tools: VerifyTools): Promise<{ ste
     // a part of a longer chain: numbers go up, and what lies between is not here
     const found = await checkChain([line], null, { sha256: (bytes) => sha256Hex(bytes, tools), verify: () => true }, WORKSHOP_CHAIN);
     for (const { problem, expected, found: is } of found) {
-      if (problem === "not-readable" || problem === "not-canonical" || problem === "wrong-shape" || problem === "other-chain") notes.fault(place(i + 1), "It is not an entry of the workshop’s log in its canonical form.", expected, is);
+      if (problem === "not-readable" || problem === "not-canonical" || problem === "wrong-shape" || problem === "other-chain") notes.fault(place(i + 1), "It is not an entry of the workshop's log in its canonical form.", expected, is);
     }
     const { seq, action } = headOf(line.body);
     if (action !== "key.introduced") notes.fault(place(i + 1), "It does not introduce a key.", "key.introduced", action);
@@ -53,10 +53,10 @@ export async function checkKeys(files: Files, tools: VerifyTools): Promise<{ ste
   for (const { seq, sentence } of ring.problems) notes.fault(place(seq), sentence);
   const key = logKeyOf(files, tools);
   const newest = [...ring.keys.keys()].at(-1);
-  if (key && !ring.keys.has(key.id)) notes.fault(LOG_KEY, "It is not among the keys that the workshop’s log introduces.", newest, key.id);
+  if (key && !ring.keys.has(key.id)) notes.fault(LOG_KEY, "It is not among the keys that the workshop's log introduces.", newest, key.id);
   else if (key && key.id !== newest) notes.fault(LOG_KEY, "It is a log key that was replaced before this bundle was made.", newest, key.id);
   const seals = ring.sealKeys.size > 0 ? ` and ${countOf(ring.sealKeys.size, "key")} for seals` : "";
-  return { step: notes.done(`${countOf(ring.keys.size, "log key")}${seals}, each introduced by a signed entry of the workshop’s log.`), ring };
+  return { step: notes.done(`${countOf(ring.keys.size, "log key")}${seals}, each introduced by a signed entry of the workshop's log.`), ring };
 }
 
 /** Hostile input: number and action of an entry, as far as it has them. */

@@ -12,7 +12,7 @@ const isList = (path: string) => /^(tag)?manifest-[^/]*$/.test(path);
 const LISTED_TAGS = ["bagit.txt", "bag-info.txt", MANIFEST, "README.txt", "check.sh"];
 
 export function checkDeclaration(files: Files): Step {
-  const notes = new StepNotes("bagit", "The bag’s declaration");
+  const notes = new StepNotes("bagit", "The bag's declaration");
   const text = textOf(files, "bagit.txt");
   if (!files.has("bagit.txt")) notes.fault("bagit.txt", "It is missing.");
   else if (text !== bagitTxt()) {
@@ -21,7 +21,7 @@ export function checkDeclaration(files: Files): Step {
   }
   for (const path of files.keys()) {
     if (path !== MANIFEST && path !== TAG_MANIFEST && path !== TAG_SIGNATURE && isList(path)) {
-      notes.fault(path, "It is a list of a kind that a bundle doesn’t have: two lists could say two things.");
+      notes.fault(path, "It is a list of a kind that a bundle doesn't have: two lists could say two things.");
     }
   }
   return notes.done("The folder says of itself that it is a BagIt 1.0 bag (RFC 8493) in UTF-8.");
@@ -47,7 +47,7 @@ export function checkCount(files: Files): Step {
   const octets = payload.reduce((sum, [, file]) => sum + file.sizeBytes, 0);
   const is = `${octets}.${payload.length}`;
   const said = lines.find((line) => line?.[1] === "Payload-Oxum")?.[2];
-  if (said !== undefined && said !== is) notes.fault("bag-info.txt", "The case’s files are not as many, or not as large, as it says.", said, is);
+  if (said !== undefined && said !== is) notes.fault("bag-info.txt", "The case's files are not as many, or not as large, as it says.", said, is);
   return notes.done(`${countOf(payload.length, "file")} of the case with ${withCommas(octets)} bytes, as bag-info.txt says.`);
 }
 
@@ -86,7 +86,7 @@ function compare(files: Files, list: string, listed: Listed[], notes: StepNotes)
 }
 
 export function checkManifest(files: Files): Step {
-  const notes = new StepNotes("manifest", "The case’s files");
+  const notes = new StepNotes("manifest", "The case's files");
   const listed = linesOf(files, MANIFEST, notes);
   if (!listed) return notes.done("");
   compare(files, MANIFEST, listed, notes);
@@ -104,7 +104,7 @@ export function checkTagManifest(files: Files): Step {
   const names = new Set(listed.map(({ path }) => path));
   for (const path of names) {
     if (inPayload(path)) notes.fault(TAG_MANIFEST, `It names ${path}, a file of the case: those stand in ${MANIFEST} alone.`);
-    if (path === TAG_MANIFEST || path === TAG_SIGNATURE) notes.fault(TAG_MANIFEST, `It names ${path}, which can’t be in its own list.`);
+    if (path === TAG_MANIFEST || path === TAG_SIGNATURE) notes.fault(TAG_MANIFEST, `It names ${path}, which can't be in its own list.`);
   }
   for (const path of LISTED_TAGS) if (!names.has(path)) notes.fault(TAG_MANIFEST, `It does not name ${path}.`);
   for (const path of files.keys()) {

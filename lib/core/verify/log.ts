@@ -1,5 +1,6 @@
 import { custodyPath, driveFolder, VOTES_ENDING } from "../bundle-layout";
-import { checkChain, type ChainProblem } from "../custody";
+import { CHAIN_PROBLEMS } from "../chain-words";
+import { checkChain } from "../custody";
 import { keyOrder, type Keyring } from "../keyring";
 import { FORMAT_ENDING } from "../text-format";
 import { countOf } from "../quantity";
@@ -23,20 +24,6 @@ export interface LogEntry {
   subject: string;
   facts: Record<string, unknown>;
 }
-
-const SENTENCE: Partial<Record<ChainProblem, string>> = {
-  "not-readable": "The entry can’t be read.",
-  "not-canonical": "The entry’s text is not in its canonical form: something else wrote it.",
-  "wrong-shape": "The entry does not have the parts that an entry has.",
-  "other-chain": "The entry belongs to another log.",
-  "sequence": "The entry’s number does not follow the one before.",
-  "time-went-back": "The entry claims a time before the one before it.",
-  "prev": "The entry does not follow from the line before: a line was cut, moved, put in or changed.",
-  "unknown-key": "The entry is signed with a key that nobody introduced.",
-  "old-key": "The entry is signed with a key that had been replaced by then.",
-  "signature": "The signature does not fit the entry: it was changed, or somebody else wrote it.",
-  "head-was-behind": "The log’s head had been turned back when this entry was written.",
-};
 
 /** Drives by the folders they have, in their order. */
 export function drivesIn(files: Files): number[] {
@@ -67,7 +54,7 @@ export async function checkLog(files: Files, drive: number, ring: Keyring, tools
   }, chain);
   const at = (seq: number | null) => `${path}.jsonl, entry ${seq ?? lines.length}`;
   // a missing head is none here: the bundle's own end is looked at below
-  for (const { seq, problem, expected, found } of findings) if (problem !== "head") notes.fault(at(seq), SENTENCE[problem] ?? "The entry is not in order.", expected, found);
+  for (const { seq, problem, expected, found } of findings) if (problem !== "head") notes.fault(at(seq), CHAIN_PROBLEMS[problem], expected, found);
   if (entries[entries.length - 1].action !== "bundle.started") {
     notes.fault(`${path}.jsonl`, "It does not end with the start of this bundle: its end was cut, or something was added.", "bundle.started", entries[entries.length - 1].action);
   }
@@ -141,6 +128,6 @@ function compareFiles(files: Files, drive: number, entries: readonly LogEntry[],
     if (!here?.length) notes.fault(`${custodyPath(drive)}.jsonl, entry ${seq}`, `It names ${name}, and the bundle does not hold it with this digest.`, sha256);
     else here.pop();
   }
-  for (const paths of kept.values()) for (const path of paths) notes.fault(path, "The drive’s custody log does not name this file.", undefined, files.get(path)?.sha256);
+  for (const paths of kept.values()) for (const path of paths) notes.fault(path, "The drive's custody log does not name this file.", undefined, files.get(path)?.sha256);
   return told.length;
 }

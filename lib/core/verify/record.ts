@@ -53,7 +53,7 @@ function compareDrive(said: z.infer<typeof drive>, log: DriveLog, ref: string, f
   if (said.id !== log.chain) notes.fault(where, "The log beside it is that of another drive.", said.id, log.chain);
   if (said.logUpTo.seq !== log.head.seq || said.logUpTo.hash !== log.head.hash) notes.fault(where, "The log ends elsewhere than it says.", `entry ${said.logUpTo.seq}, ${said.logUpTo.hash}`, `entry ${log.head.seq}, ${log.head.hash}`);
   const started = log.entries.at(-1)?.facts.caseRef;
-  if (started !== ref) notes.fault(where, "The log’s last entry starts a bundle of another case.", ref, text(started));
+  if (started !== ref) notes.fault(where, "The log's last entry starts a bundle of another case.", ref, text(started));
   const reads = said.boards.flatMap((b) => b.chips.flatMap((c) => c.reads));
   const logged = new Map(log.entries.filter(({ action }) => action === "read.stored" || action === "composite.made").map((entry) => [entry.subject, text(entry.facts.sha256)]));
   same("read", new Map(reads.map((one) => [one.id, one.sha256])), logged, where, notes);

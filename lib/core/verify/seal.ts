@@ -33,13 +33,13 @@ export function checkSeal(files: Files, ring: Keyring, tools: VerifyTools): { st
   const keyId = pem === null ? null : keyTools(tools).keyId(pem);
   if (files.has(SEAL_KEY) && keyId === null) notes.fault(SEAL_KEY, "It is not an Ed25519 public key in PEM.");
   const newest = [...ring.sealKeys.keys()].at(-1);
-  if (keyId !== null && !ring.sealKeys.has(keyId)) notes.fault(SEAL_KEY, "It is not among the seal keys that the workshop’s log introduces.", newest, keyId);
+  if (keyId !== null && !ring.sealKeys.has(keyId)) notes.fault(SEAL_KEY, "It is not among the seal keys that the workshop's log introduces.", newest, keyId);
   else if (keyId !== null && keyId !== newest) notes.fault(SEAL_KEY, "It is a seal key that was replaced before this bundle was made.", newest, keyId);
   const [bytes, signature] = [files.get(SEAL_TEXT)?.bytes, files.get(SEAL_SIGNATURE)?.bytes];
   if (pem !== null && keyId !== null && bytes && signature && !keyTools(tools).verify(pem, bytes, signature)) {
     notes.fault(SEAL_SIGNATURE, "It does not fit the seal and the seal key: one of the three was changed, or somebody else made this seal.");
   }
-  const words = facts ? `Seal ${facts.number} of ${facts.at} over ${countOf(facts.chains, "log")}, signed by a seal key that the workshop’s log introduces.` : "";
+  const words = facts ? `Seal ${facts.number} of ${facts.at} over ${countOf(facts.chains, "log")}, signed by a seal key that the workshop's log introduces.` : "";
   return { step: notes.done(words), seen: { facts, keyId, absent: false } };
 }
 
@@ -51,7 +51,7 @@ const proofShape = z.strictObject({
 
 /** Each drive's log, as it ends in this bundle, is among those that the seal was made over (RFC 9162, section 2.1.3). */
 export function checkProof(files: Files, seen: SealSeen, logs: readonly DriveLog[], tools: VerifyTools): Step {
-  const notes = new StepNotes("proof", "Each log’s place in the seal");
+  const notes = new StepNotes("proof", "Each log's place in the seal");
   if (seen.absent) return notes.notChecked("Without a seal there is nothing to prove.");
   const { facts } = seen;
   const proof = proofOf(files, notes);
@@ -68,10 +68,10 @@ export function checkProof(files: Files, seen: SealSeen, logs: readonly DriveLog
     if (one.seq !== log.head.seq || one.head !== log.head.hash) {
       notes.fault(`${SEAL_PROOF}, drive ${log.drive}`, "The log ends elsewhere than where the seal saw it.", `entry ${one.seq}, ${one.head}`, `entry ${log.head.seq}, ${log.head.hash}`);
     }
-    if (!proofHolds(facts, one, (bytes) => sha256Of(bytes, tools))) notes.fault(`${SEAL_PROOF}, drive ${log.drive}`, "The way from this log’s end does not lead to the seal’s root.", facts.root);
+    if (!proofHolds(facts, one, (bytes) => sha256Of(bytes, tools))) notes.fault(`${SEAL_PROOF}, drive ${log.drive}`, "The way from this log's end does not lead to the seal's root.", facts.root);
   }
   if (proof.proofs.length !== logs.length) notes.fault(SEAL_PROOF, "It has another number of proofs than the bundle has logs.", String(logs.length), String(proof.proofs.length));
-  return notes.done(`${countOf(logs.length, "log")}: the last entry of each is under the seal’s root.`);
+  return notes.done(`${countOf(logs.length, "log")}: the last entry of each is under the seal's root.`);
 }
 
 function proofOf(files: Files, notes: StepNotes): SealProof | null {

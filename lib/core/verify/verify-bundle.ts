@@ -83,7 +83,7 @@ function checkDrives(files: Files, logs: readonly DriveLog[]): Step {
   numbers.forEach((number, i) => {
     if (number !== i + 1) notes.fault(`data/drives/${number}`, "The drives are not counted from 1 without a gap.", String(i + 1), String(number));
   });
-  for (const path of files.keys()) if (path.startsWith("data/drives/") && !/^data\/drives\/[1-9]\d{0,4}\//.test(path)) notes.fault(path, "It lies in no drive’s folder.");
+  for (const path of files.keys()) if (path.startsWith("data/drives/") && !/^data\/drives\/[1-9]\d{0,4}\//.test(path)) notes.fault(path, "It lies in no drive's folder.");
   for (const log of logs) {
     const other = logs.find((one) => one.drive < log.drive && one.chain === log.chain);
     if (other) notes.fault(`data/drives/${log.drive}`, `It has the custody log of drive ${other.drive}.`);
