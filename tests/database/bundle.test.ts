@@ -9,18 +9,22 @@ import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { POST } from "@/app/api/cases/[id]/bundle/route";
 import { approveImage } from "@/lib/commands/approve-image";
 import { startBundle } from "@/lib/commands/bundle-plan";
+import { changeKey } from "@/lib/commands/change-key";
 import { createBenchToken } from "@/lib/commands/create-bench-token";
 import { createCase } from "@/lib/commands/create-case";
 import { makeBundle, writeBundle } from "@/lib/commands/make-bundle";
 import { recordDrive } from "@/lib/commands/record-drive";
 import { recordTransfer } from "@/lib/commands/record-transfer";
 import { setReadAside } from "@/lib/commands/set-read-aside";
+import { canonicalJson } from "@/lib/core/canonical";
+import { parseSeal, proofHolds, type SealProof } from "@/lib/core/seal";
 import type { Actor } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import { chipView } from "@/lib/queries/chip-view";
 import { chainEntries, checkCustody } from "@/lib/queries/custody";
 import { logKey } from "@/storage";
 import { type MadeChip, makeChip, makeReady, makeUser, sha256, store, firmware } from "../support/factory";
+import { opensslAccepts } from "../support/sealed";
 
 const run = promisify(execFile);
 const work = mkdtempSync(path.join(os.tmpdir(), "twinread-bundle-"));
@@ -112,6 +116,35 @@ describe("a case bundle", () => {
     expect(original.reads[3].originalFileName).toContain("x \"q\".bin");
     expect([original.approvals.length, original.transfers.length]).toEqual([1, 1]);
     expect(filesOf(bag).filter((name) => /photos/.test(name))).toEqual([]);
+  });
+
+  it("holds the seal over the last line of each log in it, which openssl and the proof confirm", async () => {
+    const [text, sig, pem] = ["seal.txt", "seal.sig", "seal-key.pem"].map((name) => readFileSync(path.join(bag, "data/seal", name)));
+    expect(opensslAccepts(text, sig, pem.toString())).toBe(true);
+    const seal = parseSeal(text.toString())!;
+    const source = readFileSync(path.join(bag, "data/seal/proof.json"), "utf8");
+    const proof = JSON.parse(source) as SealProof;
+    expect(canonicalJson(proof)).toBe(source);
+    expect(proof).toMatchObject({ format: "twinread-proof/1", seal: seal.number, chains: seal.chains });
+    expect(proof.proofs).toHaveLength(2);
+    proof.proofs.forEach((one, i) => {
+      const lines = readFileSync(path.join(bag, `data/drives/${i + 1}/custody.jsonl`), "utf8").trimEnd().split("\n");
+      expect([one.seq, one.head]).toEqual([lines.length, sha256(Buffer.from(lines.at(-1)!))]);
+      expect(proofHolds(seal, one, (bytes) => createHash("sha256").update(bytes).digest())).toBe(true);
+    });
+    const keys = readFileSync(path.join(bag, "data/workshop-keys.jsonl"), "utf8").trimEnd().split("\n").map((line) => (JSON.parse(line) as { facts: { purpose: string; publicKeyPem: string } }).facts);
+    expect(keys.filter((key) => key.purpose === "seal").map((key) => key.publicKeyPem)).toContain(pem.toString());
+    expect(readFileSync(path.join(bag, "README.txt"), "utf8")).toContain(`seal ${seal.number} and its signature`);
+  });
+
+  it("made after both keys were changed with a reason passes its own check, and says when a key is another", async () => {
+    const admin = await makeUser("admin");
+    for (const purpose of ["log", "seal"] as const) await changeKey(admin, { purpose, reason: 'Says {"purpose":"log"} and "keyId":"00"' });
+    const dir = await unpack(await pack("new-keys"));
+    const { status, text } = check(dir, logKey().keyId);
+    expect(text).not.toContain("NOT IN ORDER");
+    expect(status).toBe(0);
+    expect(check(bag, logKey().keyId).status).toBe(1);
   });
 
   it("is written down in each drive's log before and after", async () => {
