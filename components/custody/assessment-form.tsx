@@ -1,6 +1,7 @@
 "use client";
 
 import { zodResolver } from "@hookform/resolvers/zod";
+import { useRouter } from "next/navigation";
 import { useForm } from "react-hook-form";
 import type { z } from "zod";
 import { Button, Buttons } from "@/components/ui/button";
@@ -12,7 +13,8 @@ import { send } from "@/lib/http/send";
 import { assessmentInput } from "@/lib/schemas/policy";
 
 /** An auditor says what to think of a log that does not check out; work on the drive opens again after it. */
-export function AssessmentForm({ driveId, onDone }: { driveId: string; onDone(): void }) {
+export function AssessmentForm({ driveId, onDone }: { driveId: string; onDone?(): void }) {
+  const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
   const { register, handleSubmit, reset, formState: { errors } } = useForm<z.input<typeof assessmentInput>>({ resolver: zodResolver(assessmentInput), defaultValues: { text: "" } });
@@ -20,7 +22,8 @@ export function AssessmentForm({ driveId, onDone }: { driveId: string; onDone():
     if (!(await attempt(() => send("POST", `/api/drives/${driveId}/assessment`, input)))) return;
     reset();
     say({ text: "The assessment is in the log." });
-    onDone();
+    router.refresh();
+    onDone?.();
   });
   return (
     <form noValidate onSubmit={submit} className="grid max-w-[640px] gap-3">

@@ -5,7 +5,7 @@ import type { CustodyCheckView } from "@/lib/views";
 import { checkWords, problemWords } from "./log-words";
 
 /** What the check of one chain found, in plain words. */
-export function ChainCheck({ check, subject }: { check: CustodyCheckView; subject?: "workshop" }) {
+export function ChainCheck({ check, subject, onShow }: { check: CustodyCheckView; subject?: "workshop"; onShow?(seq: number): void }) {
   const { sentence, why } = checkWords(check);
   return (
     <>
@@ -16,7 +16,7 @@ export function ChainCheck({ check, subject }: { check: CustodyCheckView; subjec
           {check.findings.map((finding, i) => (
             <li key={i}>
               <FindingLine kind="block">
-                {finding.seq !== null ? <a href={`#entry-${finding.seq}`}>{problemWords(finding)}</a> : problemWords(finding)}
+                {finding.seq !== null ? <a href={`#entry-${finding.seq}`} onClick={onShow && ((event) => { event.preventDefault(); onShow(finding.seq!); })}>{problemWords(finding)}</a> : problemWords(finding)}
                 {finding.expected && finding.problem !== "tail-missing" ? <span className="block text-t2 text-ink-2 [overflow-wrap:anywhere]">Expected <code>{finding.expected}</code>{finding.found ? <>, found <code>{finding.found}</code></> : null}</span> : null}
               </FindingLine>
             </li>

@@ -8,7 +8,7 @@ import { Section } from "@/components/ui/section";
 import { exactText } from "@/components/ui/times";
 import { useChange } from "@/components/ui/use-change";
 import { entriesText } from "./entries-text";
-import { fetcher } from "@/lib/http/send";
+import { fetcher, send } from "@/lib/http/send";
 import type { CustodyCheckView, CustodyEntryView } from "@/lib/views";
 import { AssessmentForm } from "./assessment-form";
 import { ChainCheck } from "./chain-check";
@@ -16,17 +16,26 @@ import { LogTable } from "./log-table";
 import { ViaLegend } from "./via-legend";
 
 /** The log of one drive: its check on demand, then its entries. */
-export function DriveLog({ driveId, entries, timeZone, assesses }: { driveId: string; entries: CustodyEntryView[]; timeZone: string; assesses: boolean }) {
+export function DriveLog({ driveId, entries, timeZone, assesses, records }: {
+  driveId: string;
+  entries: CustodyEntryView[];
+  timeZone: string;
+  assesses: boolean;
+  /** the check is written down for the audit pages */
+  records: boolean;
+}) {
   const router = useRouter();
   const [check, setCheck] = useState<{ result: CustodyCheckView; at: string } | null>(null);
   const { refusal, busy, attempt } = useChange();
-  const run = () => attempt(async () => setCheck({ result: await fetcher<CustodyCheckView>(`/api/drives/${driveId}/custody/check`), at: new Date().toISOString() }));
+  const [show, setShow] = useState<{ seq: number } | null>(null);
+  const ask = () => (records ? send<CustodyCheckView>("POST", `/api/audit/checks/${driveId}`) : fetcher<CustodyCheckView>(`/api/drives/${driveId}/custody/check`));
+  const run = () => attempt(async () => setCheck({ result: await ask(), at: new Date().toISOString() }));
   const assessed = entries.at(-1)?.action === "log.assessed";
 
   return (
     <>
       <Section strong title="Chain check" note={check ? exactText(check.at, timeZone) : "Not checked on this page yet."}>
-        {check ? <ChainCheck check={check.result} /> : (
+        {check ? <ChainCheck check={check.result} onShow={(seq) => setShow({ seq })} /> : (
           <p className="max-w-[62ch] text-t4 text-ink-2">The log has {entriesText(entries.length)}. The check computes every hash again, checks every signature and compares the head. It reports and never repairs.</p>
         )}
         {refusal ? <Note kind="caution" role="alert" title="The log was not checked." className="mt-3">{refusal}</Note> : null}
@@ -39,7 +48,7 @@ export function DriveLog({ driveId, entries, timeZone, assesses }: { driveId: st
         ) : null}
       </Section>
       <Section title="Entries" aside={<ViaLegend />}>
-        <LogTable entries={entries} timeZone={timeZone} against={check?.result.findings.flatMap((f) => (f.seq === null ? [] : [f.seq])) ?? []} />
+        <LogTable entries={entries} timeZone={timeZone} show={show} against={check?.result.findings.flatMap((f) => (f.seq === null ? [] : [f.seq])) ?? []} />
       </Section>
     </>
   );

@@ -7,16 +7,19 @@ import type { CustodyEntryView } from "@/lib/views";
 import { LogFilterBar } from "./log-filter-bar";
 import { LogLine } from "./log-line";
 import { gapsOf, keeps, WHOLE_LOG } from "./log-words";
+import { useComeTo, useLogFilter } from "./use-log-filter";
 
 /** The chain as one trace through vias, newest first. A broken link leaves a gap; what the filter hides is dotted. */
-export function LogTable({ entries, timeZone, against = [] }: {
+export function LogTable({ entries, timeZone, against = [], show }: {
   /** the whole chain, oldest first */
   entries: readonly CustodyEntryView[];
   timeZone: string;
   /** numbers of entries that the check names */
   against?: readonly number[];
+  /** an entry to come to, whatever the filter hides; a new object each time it is asked for */
+  show?: { seq: number } | null;
 }) {
-  const [filter, setFilter] = useState(WHOLE_LOG);
+  const { filter, setFilter } = useLogFilter();
   const [open, setOpen] = useState<ReadonlySet<number>>(new Set());
   const gaps = useMemo(() => gapsOf(entries), [entries]);
   const before = useMemo(() => new Map(entries.map((entry, i) => [entry.seq, entries[i - 1]?.seq ?? null])), [entries]);
@@ -27,9 +30,11 @@ export function LogTable({ entries, timeZone, against = [] }: {
     return next;
   });
 
+  useComeTo(show ?? null, setFilter);
+
   return (
     <>
-      <LogFilterBar entries={entries} filter={filter} onChange={setFilter} />
+      <LogFilterBar entries={entries} shown={shown.length} filter={filter} onChange={setFilter} />
       {shown.length === 0 ? (
         <Empty title="No entry fits this choice." action={<Button onClick={() => setFilter(WHOLE_LOG)}>Show the whole log</Button>}>The log has {entries.length} entries.</Empty>
       ) : (

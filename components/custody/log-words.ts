@@ -3,7 +3,7 @@ import type { CustodyCheckView, CustodyEntryView } from "@/lib/views";
 
 export type LogKind = "all" | "reads" | "findings" | "signatures";
 export const LOG_KINDS: readonly { key: LogKind; label: string }[] = [
-  { key: "all", label: "All" }, { key: "reads", label: "Reads" }, { key: "findings", label: "Findings" }, { key: "signatures", label: "Signatures" },
+  { key: "all", label: "All" }, { key: "reads", label: "Reads" }, { key: "findings", label: "Something differed" }, { key: "signatures", label: "Signatures" },
 ];
 
 export function ofKind(entry: CustodyEntryView, kind: LogKind): boolean {
@@ -13,18 +13,53 @@ export function ofKind(entry: CustodyEntryView, kind: LogKind): boolean {
   return true;
 }
 
+/** Groups of steps, by the first word of the action; what none of them takes is "other". */
+const GROUPS: readonly { key: string; label: string; takes: RegExp }[] = [
+  { key: "records", label: "Drive, boards and chips", takes: /^(case|drive|board|chip)\./ },
+  { key: "reads", label: "Reads", takes: /^(read|composite)\./ },
+  { key: "approvals", label: "Approvals", takes: /^approval\./ },
+  { key: "transfers", label: "Transfers and read-backs", takes: /^(transfer|readback)\./ },
+  { key: "images", label: "Stored images", takes: /^images?\.(found|second|checked)/ },
+  { key: "outside", label: "Hand-outs, bundles, summaries", takes: /^(image\.handed-out|bundle\.|summary\.|share\.)/ },
+  { key: "items", label: "Hand-overs of items", takes: /^item\./ },
+  { key: "accounts", label: "Accounts and tokens", takes: /^(user|token|sign-in)\./ },
+  { key: "rules", label: "Policy, keys and seals", takes: /^(policy|key|seal)\./ },
+  { key: "assessments", label: "Assessments", takes: /^log\.assessed$/ },
+];
+
+export function groupOf(action: string): string {
+  return GROUPS.find((group) => group.takes.test(action))?.key ?? "other";
+}
+
+/** The groups that a log has entries of, with how many. */
+export function groupsIn(entries: readonly CustodyEntryView[]): { key: string; label: string; count: number }[] {
+  return [...GROUPS, { key: "other", label: "Other" }].map(({ key, label }) => ({ key, label, count: entries.filter((entry) => groupOf(entry.action) === key).length })).filter((group) => group.count > 0);
+}
+
 export interface LogFilter {
   kind: LogKind;
+  group: string;
   who: string;
   where: string;
   words: string;
 }
 
-export const WHOLE_LOG: LogFilter = { kind: "all", who: "", where: "", words: "" };
+export const WHOLE_LOG: LogFilter = { kind: "all", group: "", who: "", where: "", words: "" };
+
+/** The filter as words of an address; empty for the whole log. */
+export function filterQuery(filter: LogFilter): string {
+  return new URLSearchParams(Object.entries(filter).filter(([key, value]) => value !== WHOLE_LOG[key as keyof LogFilter])).toString();
+}
+
+/** The filter of an address; words that make no sense there are left out. */
+export function filterOf(query: URLSearchParams): LogFilter {
+  const word = (key: keyof LogFilter) => (query.get(key) ?? "").slice(0, 200);
+  return { kind: LOG_KINDS.find(({ key }) => key === word("kind"))?.key ?? "all", group: word("group"), who: word("who"), where: word("where"), words: word("words") };
+}
 
 /** Every word typed has to be found somewhere in the entry, in any case. */
-export function keeps(entry: CustodyEntryView, { kind, who, where, words }: LogFilter): boolean {
-  if (!ofKind(entry, kind) || (who && entry.actor.name !== who) || (where && entry.where !== where)) return false;
+export function keeps(entry: CustodyEntryView, { kind, group, who, where, words }: LogFilter): boolean {
+  if (!ofKind(entry, kind) || (group && groupOf(entry.action) !== group) || (who && entry.actor.name !== who) || (where && entry.where !== where)) return false;
   const text = `${entry.sentence} ${entry.action} ${entry.actor.name} ${entry.where} ${entry.hash} ${entry.body}`.toLowerCase();
   return words.toLowerCase().split(/\s+/).every((word) => text.includes(word));
 }

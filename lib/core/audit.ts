@@ -2,7 +2,7 @@ import { ACTIONS, type Action, describe, type EntryKind } from "./custody-action
 import { readName, type Stage } from "./words";
 
 /** What the audit pages list. Each name is one table, one address and one file. */
-export const AUDIT_LISTS = ["drives", "images", "hand-outs", "refusals", "sessions", "tokens", "limits", "assessments", "clock"] as const;
+export const AUDIT_LISTS = ["drives", "images", "hand-outs", "refusals", "sessions", "tokens", "limits", "assessments", "clock", "seals"] as const;
 export type AuditList = (typeof AUDIT_LISTS)[number];
 
 /** Lists of what stands in the logs, by the actions that they take from it; the clock's takes all. */

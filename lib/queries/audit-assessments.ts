@@ -1,27 +1,13 @@
 import { Op } from "sequelize";
 import { covers } from "@/lib/commands/chain-gate";
 import { casesOf } from "@/lib/commands/refuse";
+import type { AssessmentRow, LogFinding, WaitingDrive } from "@/lib/core/audit-rows";
 import type { Actor } from "@/lib/core/words";
 import type { AuditInput } from "@/lib/schemas/audit";
-import type { CustodyCheckView } from "@/lib/views";
 import { Case, ChainCheck, CustodyEntry, Drive } from "@/models";
-import { auditEntries, type AuditEntryRow, type ChainPlace, type EntryPage, placeOfChain } from "./audit-entries";
+import { auditEntries, type EntryPage, placeOfChain } from "./audit-entries";
 import { allowAudit } from "./audit-rights";
 import { checkCustody } from "./custody";
-
-type Finding = CustodyCheckView["findings"][number];
-
-export interface AssessmentRow extends AuditEntryRow {
-  /** what the check still finds that this assessment was the first to cover */
-  covered: Finding[];
-}
-
-export interface WaitingDrive extends ChainPlace {
-  checkedAt: string;
-  /** what no assessment covers, the first twenty */
-  findings: Finding[];
-  count: number;
-}
 
 const MOST_WAITING = 50;
 const MOST_FINDINGS = 20;
@@ -31,7 +17,7 @@ export async function auditAssessments(actor: Actor, input: AuditInput): Promise
   const list = await auditEntries(actor, "assessments", input);
   const chains = [...new Set(list.items.map((row) => row.chainId))];
   const entries = await CustodyEntry.findAll({ attributes: ["chainId", "seq"], where: { chainId: chains, action: "log.assessed" }, order: ["seq"] });
-  const findings = new Map<string, Finding[]>();
+  const findings = new Map<string, LogFinding[]>();
   for (const chain of chains) findings.set(chain, (await checkCustody(chain)).findings);
   const items = list.items.map((row): AssessmentRow => {
     const earlier = entries.filter((entry) => entry.chainId === row.chainId && entry.seq < row.seq);

@@ -1,31 +1,12 @@
 import { QueryTypes } from "sequelize";
 import { casesOf } from "@/lib/commands/refuse";
+import type { ChainCounts, ChainRow } from "@/lib/core/audit-rows";
 import { readCaseRef } from "@/lib/core/case-number";
 import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import type { AuditInput } from "@/lib/schemas/audit";
 import { connection } from "@/models";
-import { type ChainPlace, placeOfChain } from "./audit-entries";
+import { placeOfChain } from "./audit-entries";
 import { allowAudit } from "./audit-rights";
-
-export interface ChainRow extends ChainPlace {
-  /** part number, model or serial */
-  label: string;
-  entries: number;
-  /** hash of the last entry; empty where the log has no head */
-  hash: string;
-  lastAt: string;
-  /** the last check of the whole log; null while there was none */
-  check: { at: string; entries: number; findings: number; first: string | null } | null;
-}
-
-export interface ChainCounts {
-  total: number;
-  clean: number;
-  findings: number;
-  unchecked: number;
-  /** when the log that was checked longest ago was checked; null while one was never checked, or there is none */
-  oldestCheck: string | null;
-}
 
 // Every chain that there is any sign of: a drive without a head, and a head whose drive is gone, are what an auditor looks for.
 const CHAINS = `(SELECT id AS chain FROM drives UNION SELECT chain_id FROM custody_heads UNION SELECT DISTINCT chain_id FROM custody_entries UNION SELECT '${WORKSHOP_CHAIN}') x

@@ -1,27 +1,14 @@
 import { QueryTypes } from "sequelize";
 import { casesOf, notFound } from "@/lib/commands/refuse";
-import { dayStart, ENTRY_LISTS, type EntryList, readEntry, type EntryReading, WORKSHOP_LISTS } from "@/lib/core/audit";
+import { dayStart, ENTRY_LISTS, type EntryList, readEntry, WORKSHOP_LISTS } from "@/lib/core/audit";
+import type { AuditEntryRow, ChainPlace } from "@/lib/core/audit-rows";
 import { readCaseRef } from "@/lib/core/case-number";
 import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import type { AuditInput } from "@/lib/schemas/audit";
 import { connection } from "@/models";
 import { allowAudit } from "./audit-rights";
-
-/** Where an entry stands; a chain that is no drive's on record has neither letter nor case. */
-export interface ChainPlace {
-  chainId: string;
-  workshop: boolean;
-  driveId: string | null;
-  letter: string;
-  caseId: string | null;
-  caseRef: string;
-}
-
-export interface AuditEntryRow extends EntryReading, ChainPlace {
-  seq: number;
-  hash: string;
-}
+import { seenBy } from "./seen-by";
 
 export interface EntryPage {
   items: AuditEntryRow[];
@@ -95,7 +82,7 @@ export async function auditEntries(actor: Actor, list: EntryList, input: AuditIn
      ORDER BY ${SORT[input.sort] ?? at} ${direction}, ${at} ${direction}, e.chain_id, e.seq ${direction} LIMIT :limit OFFSET :offset`,
     { replacements: { ...replacements, limit: input.pageSize, offset: (input.page - 1) * input.pageSize }, type: QueryTypes.SELECT },
   );
-  return { items: rows.map(entryRow), total: Number(n), page: input.page, pageSize: input.pageSize };
+  return { items: await seenBy(actor, rows.map(entryRow)), total: Number(n), page: input.page, pageSize: input.pageSize };
 }
 
 function entryRow(row: Row): AuditEntryRow {

@@ -1,14 +1,16 @@
 import { type AuditList, END_WORD } from "@/lib/core/audit";
+import type { AssessmentRow, AuditEntryRow, AuditSealRow, ChainPlace, ChainRow, SessionRow, StoredImageRow, TokenRow } from "@/lib/core/audit-rows";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { MAX_CSV_ROWS } from "@/lib/limits";
 import type { AuditInput } from "@/lib/schemas/audit";
-import { auditAssessments, type AssessmentRow } from "./audit-assessments";
-import { auditDrives, type ChainRow } from "./audit-drives";
-import { auditEntries, type AuditEntryRow, type ChainPlace } from "./audit-entries";
-import { auditImages, type StoredImageRow } from "./audit-images";
+import { auditAssessments } from "./audit-assessments";
+import { auditDrives } from "./audit-drives";
+import { auditEntries } from "./audit-entries";
+import { auditImages } from "./audit-images";
 import { type CsvColumn, csvStream } from "./csv";
-import { auditSessions, auditTokens, type SessionRow, type TokenRow } from "./audit-sign-ins";
+import { auditSeals } from "./audit-seals";
+import { auditSessions, auditTokens } from "./audit-sign-ins";
 
 const A_BATCH = 200;
 
@@ -57,7 +59,12 @@ const LISTS = {
   ]),
   images: list<StoredImageRow>(auditImages, "stored", [
     { header: "sha-256", cell: (row) => row.sha256 }, { header: "bytes", cell: (row) => row.sizeBytes }, { header: "state", cell: (row) => row.state }, { header: "stored", cell: (row) => row.storedAt },
-    { header: "checked", cell: (row) => row.checkedAt }, { header: "used by", cell: (row) => row.uses.map((use) => `${use.caseRef} ${use.designator} ${use.name}`).join("; ") }, { header: "uses", cell: (row) => row.useCount },
+    { header: "checked", cell: (row) => row.checkedAt }, { header: "used by", cell: (row) => row.uses.map((use) => use.name).join("; ") }, { header: "uses", cell: (row) => row.useCount },
+  ]),
+  seals: list<AuditSealRow>(auditSeals, "number", [
+    { header: "number", cell: (row) => row.number }, { header: "time", cell: (row) => row.at }, { header: "cause", cell: (row) => row.cause }, { header: "logs", cell: (row) => row.chains }, { header: "root", cell: (row) => row.root },
+    { header: "sha-256", cell: (row) => row.sha256 }, { header: "sha-256 of the one before", cell: (row) => row.prev }, { header: "key", cell: (row) => row.keyId }, { header: "faults", cell: (row) => row.faults.join(" ") },
+    { header: "mails sent", cell: (row) => row.mailed.sent }, { header: "mails not sent", cell: (row) => row.mailed.waiting + row.mailed.givenUp },
   ]),
   "hand-outs": entries("hand-outs", [thing, digest("sha-256"), { header: "to", cell: (row) => row.to }, reason]),
   refusals: entries("refusals", [{ ...thing, header: "chip" }, digest("image sha-256"), reason]),

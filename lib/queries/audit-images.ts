@@ -1,72 +1,60 @@
 import { QueryTypes } from "sequelize";
 import { casesOf } from "@/lib/commands/refuse";
-import { type Actor, readName, type Stage } from "@/lib/core/words";
+import type { ImageCounts, StoredImageRow } from "@/lib/core/audit-rows";
+import type { Actor } from "@/lib/core/words";
 import type { AuditInput } from "@/lib/schemas/audit";
 import { connection } from "@/models";
 import { allowAudit } from "./audit-rights";
+import { imagesOfDrives, usesOfImages } from "./image-uses";
 
-export interface ImageUse {
-  name: string;
-  chipId: string;
-  designator: string;
-  caseId: string;
-  caseRef: string;
-}
-
-export interface StoredImageRow {
-  sha256: string;
-  sizeBytes: number;
-  state: "sound" | "damaged" | "missing";
-  storedAt: string;
-  /** when its bytes were last read whole; null since it was stored */
-  checkedAt: string | null;
-  /** at most the first six */
-  uses: ImageUse[];
-  useCount: number;
-}
-
-const SORT: Record<string, string> = { checked: "COALESCE(i.checked_at, i.stored_at)", stored: "i.stored_at", size: "i.size_bytes", state: "i.state" };
+/** the last time all of its bytes were seen to be right: a check, or the upload itself */
+const VERIFIED = "COALESCE(i.checked_at, i.stored_at)";
+const SORT: Record<string, string> = { checked: VERIFIED, stored: "i.stored_at", size: "i.size_bytes", state: "i.state" };
+const STATES = ["sound", "damaged", "missing"];
 const USES = 6;
-const BEHIND = "FROM `reads` r JOIN chips ch ON ch.id = r.chip_id JOIN boards b ON b.id = ch.board_id JOIN drives d ON d.id = b.drive_id JOIN cases c ON c.id = d.case_id";
+
+function scope(actor: Actor): { where: string; cases: readonly string[] | null } {
+  allowAudit(actor);
+  const cases = casesOf(actor);
+  if (!cases) return { where: "TRUE", cases };
+  return { where: cases.length > 0 ? `i.sha256 IN (SELECT u.sha256 FROM (${imagesOfDrives("d.case_id IN (:cases)")}) u WHERE u.sha256 IS NOT NULL)` : "FALSE", cases };
+}
 
 /** The stored images, the one unverified for longest first; for a limited auditor those that their cases use. */
 export async function auditImages(actor: Actor, input: AuditInput): Promise<{ items: StoredImageRow[]; total: number; page: number; pageSize: number }> {
-  allowAudit(actor);
-  const cases = casesOf(actor);
-  const mine = cases ? (cases.length > 0 ? "c.id IN (:cases)" : "FALSE") : "TRUE";
-  const conditions = [cases ? `EXISTS (SELECT 1 ${BEHIND} WHERE r.sha256 = i.sha256 AND ${mine})` : "TRUE"];
-  if (["sound", "damaged", "missing"].includes(input.what)) conditions.push("i.state = :what");
+  const { where, cases } = scope(actor);
+  const conditions = [where];
+  if (STATES.includes(input.what)) conditions.push("i.state = :what");
   if (input.what === "not-sound") conditions.push("i.state <> 'sound'");
-  const digits = input.q.replace(/[^0-9a-f]/gi, "").toLowerCase().slice(0, 64);
+  const digits = /^[0-9a-f\s…]+$/i.test(input.q) ? input.q.replace(/[^0-9a-f]/gi, "").slice(0, 64) : "";
   if (digits) conditions.push("HEX(i.sha256) LIKE :digits");
   else if (input.q.trim()) conditions.push("FALSE");
   const replacements = { cases, what: input.what, digits: `${digits}%`, limit: input.pageSize, offset: (input.page - 1) * input.pageSize };
-  const [{ n }] = await connection().query<{ n: number }>(`SELECT COUNT(*) AS n FROM images i WHERE ${conditions.join(" AND ")}`, { replacements, type: QueryTypes.SELECT });
+  const condition = conditions.join(" AND ");
+  const [{ n }] = await connection().query<{ n: number }>(`SELECT COUNT(*) AS n FROM images i WHERE ${condition}`, { replacements, type: QueryTypes.SELECT });
   const rows = await connection().query<{ sha256: Buffer; sizeBytes: number; state: StoredImageRow["state"]; storedAt: Date; checkedAt: Date | null }>(
-    `SELECT i.sha256, i.size_bytes AS sizeBytes, i.state, i.stored_at AS storedAt, i.checked_at AS checkedAt FROM images i WHERE ${conditions.join(" AND ")}
-     ORDER BY ${SORT[input.sort] ?? SORT.checked} ${input.order === "desc" ? "DESC" : "ASC"}, i.sha256 LIMIT :limit OFFSET :offset`,
+    `SELECT i.sha256, i.size_bytes AS sizeBytes, i.state, i.stored_at AS storedAt, i.checked_at AS checkedAt FROM images i WHERE ${condition}
+     ORDER BY ${SORT[input.sort] ?? VERIFIED} ${input.order === "desc" ? "DESC" : "ASC"}, i.sha256 LIMIT :limit OFFSET :offset`,
     { replacements, type: QueryTypes.SELECT },
   );
-  const uses = await usesOf(rows.map((row) => row.sha256), mine, cases);
+  const uses = (await usesOfImages(rows.map((row) => row.sha256))).filter((use) => !cases || cases.includes(use.caseId));
   const items = rows.map((row): StoredImageRow => {
     const sha256 = row.sha256.toString("hex");
-    const all = uses.get(sha256) ?? [];
-    return { sha256, sizeBytes: row.sizeBytes, state: row.state, storedAt: row.storedAt.toISOString(), checkedAt: row.checkedAt?.toISOString() ?? null, uses: all.slice(0, USES), useCount: all.length };
+    const mine = uses.filter((use) => use.sha256 === sha256);
+    return {
+      sha256, sizeBytes: row.sizeBytes, state: row.state, storedAt: row.storedAt.toISOString(), checkedAt: row.checkedAt?.toISOString() ?? null,
+      uses: mine.slice(0, USES).map(({ name, chipId }) => ({ name, chipId })), useCount: mine.length,
+    };
   });
   return { items, total: Number(n), page: input.page, pageSize: input.pageSize };
 }
 
-async function usesOf(digests: Buffer[], mine: string, cases: readonly string[] | null): Promise<Map<string, ImageUse[]>> {
-  const found = new Map<string, ImageUse[]>();
-  if (digests.length === 0) return found;
-  const rows = await connection().query<{ sha256: Buffer; stage: Stage; number: number; chipId: string; designator: string; caseId: string; caseRef: string }>(
-    `SELECT r.sha256, r.stage, r.number, ch.id AS chipId, ch.designator, c.id AS caseId, c.ref AS caseRef ${BEHIND}
-     WHERE r.sha256 IN (:digests) AND ${mine} ORDER BY c.ref, ch.designator, r.stage, r.number`,
-    { replacements: { digests, cases }, type: QueryTypes.SELECT },
+/** How many there are, how many are not whole, and since when the one unverified for longest is. */
+export async function imageCounts(actor: Actor): Promise<ImageCounts> {
+  const { where, cases } = scope(actor);
+  const [row] = await connection().query<{ total: number; damaged: number; missing: number; oldest: Date | null }>(
+    `SELECT COUNT(*) AS total, COALESCE(SUM(i.state = 'damaged'), 0) AS damaged, COALESCE(SUM(i.state = 'missing'), 0) AS missing, MIN(${VERIFIED}) AS oldest FROM images i WHERE ${where}`,
+    { replacements: { cases }, type: QueryTypes.SELECT },
   );
-  for (const { sha256, stage, number, ...place } of rows) {
-    const key = sha256.toString("hex");
-    found.set(key, [...(found.get(key) ?? []), { name: readName(stage, number), ...place }]);
-  }
-  return found;
+  return { total: Number(row.total), damaged: Number(row.damaged), missing: Number(row.missing), oldest: row.oldest?.toISOString() ?? null };
 }

@@ -1,31 +1,12 @@
 import { Op, type Order, type WhereOptions } from "sequelize";
-import { dayStart, sessionEnd, type SessionEnd } from "@/lib/core/audit";
-import type { Actor, Role } from "@/lib/core/words";
+import { dayStart, sessionEnd } from "@/lib/core/audit";
+import type { SessionRow, TokenRow } from "@/lib/core/audit-rows";
+import type { Actor } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import { SESSION_ABSOLUTE_SECONDS, SESSION_IDLE_SECONDS } from "@/lib/limits";
 import type { AuditInput } from "@/lib/schemas/audit";
 import { BenchToken, Session, User } from "@/models";
 import { allowWorkshopAudit } from "./audit-rights";
-
-/** One session: who, from when to when. Its id stays here: the cookie carries it. */
-export interface SessionRow {
-  who: string;
-  role: Role;
-  from: string;
-  lastStep: string;
-  ended: string | null;
-  how: SessionEnd;
-}
-
-/** A bench token by its name, never the token or its hash. */
-export interface TokenRow {
-  name: string;
-  who: string;
-  role: Role;
-  made: string;
-  lastUsed: string | null;
-  withdrawn: string | null;
-}
 
 const like = (q: string) => ({ [Op.like]: `%${q.trim().replace(/[\\%_]/g, (c) => `\\${c}`)}%` });
 const user = { model: User, as: "user", attributes: ["name", "role"], required: true };

@@ -20,8 +20,8 @@ export type AuditInput = z.infer<typeof auditInput>;
 export const auditAsked = auditInput.extend({ format: z.enum(["json", "csv"]).default("json") });
 export type AuditAsked = z.infer<typeof auditAsked>;
 
-/** Words of an address that may be nonsense: such a list begins at its beginning. */
-export function auditInputOf(query: Record<string, string | string[] | undefined>): AuditInput {
-  const parsed = auditInput.safeParse(query);
-  return parsed.success ? parsed.data : auditInput.parse({});
+/** Words of an address that may be nonsense: such a list begins at its beginning, in its own order. */
+export function auditInputOf(query: Record<string, string | string[] | undefined>, own: { sort: string; order: "asc" | "desc" }): AuditInput {
+  const parsed = auditInput.safeParse({ ...own, ...query });
+  return parsed.success ? parsed.data : auditInput.parse(own);
 }

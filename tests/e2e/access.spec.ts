@@ -7,6 +7,8 @@ import { openDesk, signIn } from "./support/desk";
 const RULES = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa", "best-practice"];
 const VIEWS = [{ width: 1440, theme: "light" }, { width: 1440, theme: "dark" }, { width: 390, theme: "light" }] as const;
 
+const AUDIT = ["", "/drives", "/seals", "/images", "/assessments", "/hand-outs", "/refusals", "/sign-ins", "/sign-ins/tokens", "/sign-ins/limits", "/clock"];
+
 /** Every page: nothing axe finds in either theme, and on a phone nothing wider than the window. */
 async function look(page: Page, paths: readonly string[]): Promise<void> {
   for (const { width, theme } of VIEWS) {
@@ -54,9 +56,9 @@ test("a lead's decision sheets", async ({ browser }) => {
 });
 
 test("an admin's and an auditor's pages", async ({ browser }) => {
-  test.setTimeout(200_000);
+  test.setTimeout(400_000);
   await look((await signIn(browser, "odile")).page, ["/users", "/policy", "/outbox"]);
-  await look((await signIn(browser, "rhys")).page, ["/custody/workshop", "/bench"]);
+  await look((await signIn(browser, "rhys")).page, ["/custody/workshop", "/bench", ...AUDIT.map((path) => `/audit${path}`)]);
 });
 
 test("a dialog takes the focus into its first field and gives it back", async ({ browser }) => {

@@ -29,7 +29,7 @@ export default async function DriveLogPage({ params }: { params: Promise<{ id: s
           <PageTitle note={<span className="flex flex-wrap gap-x-4 font-mono">{facts.map((fact) => <span key={fact}>{fact}</span>)}</span>}>Custody log of Drive {drive.letter}</PageTitle>
           <div className="no-print flex gap-3 pb-5"><PrintButton />{may(actor, "bundle.make") ? <MakeBundle caseId={drive.case.id} /> : null}</div>
         </div>
-        <DriveLog driveId={id} entries={entries} timeZone={session.timeZone} assesses={may(actor, "assessment.record")} />
+        <DriveLog driveId={id} entries={entries} timeZone={session.timeZone} assesses={may(actor, "assessment.record")} records={may(actor, "audit.read")} />
       </PageMain>
     </DeskShell>
   );

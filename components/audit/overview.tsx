@@ -1,0 +1,32 @@
+import Link from "next/link";
+import { FindingLine } from "@/components/ui/finding-line";
+import { Section } from "@/components/ui/section";
+import { exactText } from "@/components/ui/times";
+import { Verdict } from "@/components/ui/verdict";
+import type { AuditOverview } from "@/lib/core/audit-rows";
+import { auditVerdict, overviewLines } from "./audit-words";
+
+/** Is anything wrong, and where: one sentence, then a line for each subject. */
+export function Overview({ facts, timeZone }: { facts: AuditOverview; timeZone: string }) {
+  const { mark, sentence, why } = auditVerdict(facts);
+  return (
+    <>
+      <Section strong title="Verdict" note={exactText(facts.now, timeZone)}><Verdict mark={mark} sentence={sentence} why={why} /></Section>
+      <Section title="Where" note="What was found, subject by subject.">
+        <table className="ruled lines">
+          <caption className="sr-only">Subjects of the audit</caption>
+          <thead><tr><th scope="col">Subject</th><th scope="col">What was found</th><th scope="col">Latest, or longest ago</th></tr></thead>
+          <tbody>
+            {overviewLines(facts).map((line) => (
+              <tr key={line.key} className={line.mark === "block" ? "is-odd" : ""}>
+                <th scope="row" className="whitespace-nowrap"><Link href={line.href}>{line.title}</Link></th>
+                <td className="l-full [overflow-wrap:anywhere]"><FindingLine kind={line.mark}><span className="line-clamp-3 max-w-[90ch]">{line.sentence}</span></FindingLine></td>
+                <td className="l-row whitespace-nowrap text-ink-2">{line.at ? exactText(line.at, timeZone) : <span className="text-ink-3">none</span>}</td>
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      </Section>
+    </>
+  );
+}
