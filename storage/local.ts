@@ -1,9 +1,9 @@
 import { createHash } from "node:crypto";
-import { createReadStream } from "node:fs";
-import { open, readdir, rm, stat, statfs } from "node:fs/promises";
+import { constants, createReadStream, type Stats } from "node:fs";
+import { lstat, open, readdir, rm, stat, statfs } from "node:fs/promises";
 import path from "node:path";
 import { Readable } from "node:stream";
-import { imagePath, incomingDir } from "./paths";
+import { imagePath, imagesDir, incomingDir } from "./paths";
 
 const CHUNK = 1024 * 1024;
 
@@ -43,18 +43,88 @@ export async function imageWindow(dataDir: string, sha256: string, offset: numbe
 
 /** Reads the whole stored image and compares it with its name. It reports; it never repairs. */
 export async function checkImage(dataDir: string, sha256: string, sizeBytes: number): Promise<ImageState> {
+  return (await lookAtImage(dataDir, sha256, sizeBytes)).state;
+}
+
+/** What a whole reading of a stored image showed. */
+export interface Look {
+  state: ImageState;
+  /** what is wrong, as the end of a sentence that begins with "It"; null when sound or missing */
+  why: string | null;
+  /** which file it was, at what time of its life: the same mark later means the same file, untouched in between */
+  mark: string;
+}
+
+/** Faults of the machine, not of the image: nothing is known of it then. */
+const NOT_THE_IMAGE = new Set(["EMFILE", "ENFILE", "ENOMEM", "EAGAIN"]);
+const NOTHING_THERE = "none";
+
+/**
+ * The same with the reason. What stands in the image's place and is no plain file (a folder, a link) is damage; so is a
+ * file that can't be read (EIO, EACCES). `passed` is told of each chunk's bytes and may hold the reading back.
+ */
+export async function lookAtImage(dataDir: string, sha256: string, sizeBytes: number, passed?: (bytes: number) => Promise<void>): Promise<Look> {
   const file = imagePath(dataDir, sha256);
+  let mark = NOTHING_THERE;
   try {
-    const found = await stat(file);
-    if (!found.isFile()) return "missing";
-    if (found.size !== sizeBytes) return "damaged";
-    const sha = createHash("sha256");
-    for await (const chunk of createReadStream(file, { highWaterMark: CHUNK })) sha.update(chunk as Buffer);
-    return sha.digest("hex") === sha256 ? "sound" : "damaged";
+    const found = await lstat(file);
+    mark = markOf(found);
+    if (!found.isFile()) return { state: "damaged", why: `is a ${found.isDirectory() ? "folder" : found.isSymbolicLink() ? "link to somewhere else" : "thing of another kind"}, not a file`, mark };
+    if (found.size !== sizeBytes) return { state: "damaged", why: `is ${found.size.toLocaleString("en")} bytes long and should be ${sizeBytes.toLocaleString("en")}`, mark };
+    return { ...(await digestLook(file, sha256, passed)), mark };
   } catch (error) {
-    if ((error as NodeJS.ErrnoException).code === "ENOENT") return "missing";
-    return "damaged";
+    const { code } = error as NodeJS.ErrnoException;
+    if (code === undefined || NOT_THE_IMAGE.has(code)) throw error;
+    if (code === "ENOENT" || code === "ENOTDIR") return { state: "missing", why: null, mark };
+    return { state: "damaged", why: `could not be read (${code})`, mark };
   }
+}
+
+async function digestLook(file: string, sha256: string, passed?: (bytes: number) => Promise<void>): Promise<Pick<Look, "state" | "why">> {
+  const handle = await open(file, constants.O_RDONLY | constants.O_NOFOLLOW);
+  const sha = createHash("sha256");
+  try {
+    for await (const chunk of handle.createReadStream({ highWaterMark: CHUNK, autoClose: false })) {
+      sha.update(chunk as Buffer);
+      await passed?.((chunk as Buffer).length);
+    }
+  } finally {
+    await handle.close();
+  }
+  const digest = sha.digest("hex");
+  return digest === sha256 ? { state: "sound", why: null } : { state: "damaged", why: `has the SHA-256 ${digest} now: its bytes were changed` };
+}
+
+const markOf = (found: Stats) => [found.dev, found.ino, found.size, found.mtimeMs, found.ctimeMs].join(":");
+
+/** The mark of what lies under the image's name now; to be compared with the one of a look. */
+export async function markOfImage(dataDir: string, sha256: string): Promise<string> {
+  return lstat(imagePath(dataDir, sha256)).then(markOf, () => NOTHING_THERE);
+}
+
+const REMEMBERED_MS = 10_000;
+const REMEMBERED = 500;
+const remembered = new Map<string, { mark: string; until: number }>();
+
+/**
+ * Whether the image is sound now, for whoever opens it many times in a row: a look that found it sound holds for ten
+ * seconds while the file stays untouched. What was read then is what the system holds in memory and gives out.
+ */
+export async function stateNow(dataDir: string, sha256: string, sizeBytes: number): Promise<ImageState> {
+  const known = remembered.get(sha256);
+  if (known && known.until > performance.now() && known.mark === (await markOfImage(dataDir, sha256))) return "sound";
+  const { state, mark } = await lookAtImage(dataDir, sha256, sizeBytes);
+  remembered.delete(sha256);
+  if (state !== "sound") return state;
+  remembered.set(sha256, { mark, until: performance.now() + REMEMBERED_MS });
+  if (remembered.size > REMEMBERED) remembered.delete(remembered.keys().next().value!);
+  return state;
+}
+
+/** False when the images as a whole are away (a disk that is not mounted): then no single image is to blame. */
+export async function storeIsThere(dataDir: string): Promise<boolean> {
+  const names = await readdir(imagesDir(dataDir)).catch(() => [] as string[]);
+  return names.length > 0;
 }
 
 /**

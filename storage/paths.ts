@@ -12,3 +12,13 @@ export function imagePath(dataDir: string, sha256: string): string {
 export function incomingDir(dataDir: string): string {
   return path.join(dataDir, "images", "incoming");
 }
+
+/** What all images lie in. */
+export function imagesDir(dataDir: string): string {
+  return path.join(dataDir, "images", "sha256");
+}
+
+/** Where a damaged image goes when its right bytes take its place: put aside, never deleted. */
+export function damagedDir(dataDir: string): string {
+  return path.join(dataDir, "images", "damaged");
+}

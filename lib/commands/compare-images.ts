@@ -4,6 +4,7 @@ import { engine } from "@/lib/engine/pool";
 import type { Compared } from "@/lib/engine/worker";
 import { ComparisonRow, type Transaction } from "@/models";
 import { pathOfImage } from "@/storage";
+import { ImageNotSound, requireSoundNow } from "./require-sound-now";
 
 export type { Compared } from "@/lib/engine/worker";
 
@@ -22,6 +23,7 @@ export async function compareImages(a: ImageRef, b: ImageRef, tx?: Transaction, 
   if (isTurned(a, b)) return turned(await compareImages(b, a, tx, chipBytes));
   const known = await comparisonOnRecord(a, b, tx, chipBytes);
   if (known) return known;
+  await requireSoundNow([a, b], "comparison", tx);
   const made = await engine("compare", { fileA: pathOfImage(a.sha256), fileB: pathOfImage(b.sha256), chipBytes });
   await ComparisonRow.bulkCreate([{ ...keyOf(a, b, chipBytes), result: JSON.stringify(made) }], { ignoreDuplicates: true, transaction: tx });
   return made;
@@ -50,12 +52,12 @@ function turned(c: Compared): Compared {
   };
 }
 
-/** The same, or null when one of the stored images is gone: a lost image must not keep new reads out. */
+/** The same, or null when one of the stored images is damaged or gone: a lost image must not keep new reads out. */
 export async function compareIfStored(a: ImageRef, b: ImageRef, tx?: Transaction, chipBytes?: number): Promise<Compared | null> {
   try {
     return await compareImages(a, b, tx, chipBytes);
   } catch (error) {
-    if ((error as NodeJS.ErrnoException).code === "ENOENT") return null;
+    if (error instanceof ImageNotSound || (error as NodeJS.ErrnoException).code === "ENOENT") return null;
     throw error;
   }
 }

@@ -4,11 +4,14 @@ import type { ImageFacts } from "@/lib/core/inspect";
 import { engine } from "@/lib/engine/pool";
 import { Image, type Transaction } from "@/models";
 import { type Arrived, pathOfImage } from "@/storage";
+import { requireSoundNow } from "./require-sound-now";
 
 /** What one image shows by itself; worked out once per distinct digest and engine version, kept with the image's row. */
 export async function inspectImage(sha256: string, tx?: Transaction): Promise<ImageFacts> {
   const known = await Image.findByPk(Buffer.from(sha256, "hex"), { transaction: tx });
   if (known && known.engineVersion === ENGINE_VERSION) return known.facts;
+  // one that was stored long ago is not judged unseen
+  if (known) await requireSoundNow([{ sha256, sizeBytes: known.sizeBytes }], "judging", tx);
   return engine("inspect", { file: pathOfImage(sha256) });
 }
 

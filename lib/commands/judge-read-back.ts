@@ -7,6 +7,7 @@ import { Approval, Image, Read, type Transaction, Transfer } from "@/models";
 import { pathOfImage } from "@/storage";
 import { type Compared, compareIfStored } from "./compare-images";
 import { type ChipPlace, placeOfChip } from "./place";
+import { ImageNotSound, requireSoundNow } from "./require-sound-now";
 
 /** Judges a read-back against the image that was approved for its transfer and the donor's saved content. */
 export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: Read, facts: ImageFacts): Promise<Finding[]> {
@@ -19,7 +20,7 @@ export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: R
   const equal = read.sha256.equals(approval.sha256);
   const old = saved.find((r) => r.sizeBytes === approved.sizeBytes);
   const comparison = equal ? null : await compareIfStored({ sha256: approvedSha256, sizeBytes: approved.sizeBytes }, { sha256, sizeBytes: read.sizeBytes }, tx);
-  const diagnosis = comparison ? await diagnosisOf(approvedSha256, old?.sha256.toString("hex") ?? null, sha256, comparison) : undefined;
+  const diagnosis = comparison ? await diagnosisOf(tx, [approved, read], old ?? null, comparison) : undefined;
   return judgeReadBack({
     facts, read: { sha256, sizeBytes: read.sizeBytes }, approved: { sha256: approvedSha256, sizeBytes: approved.sizeBytes },
     donorSaved: saved.map((r) => r.sha256.toString("hex")),
@@ -29,12 +30,17 @@ export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: R
   });
 }
 
-/** How the write went as far as the bytes tell, with the comparison as it was counted; undefined when an image is gone. */
-async function diagnosisOf(approved: string, old: string | null, readBack: string, comparison: Compared): Promise<ReadBackDiagnosis | undefined> {
+type Stored = Pick<Image, "sha256" | "sizeBytes">;
+
+/** How the write went as far as the bytes tell, with the comparison as it was counted; undefined when an image is damaged or gone. */
+async function diagnosisOf(tx: Transaction, [approved, readBack]: [Stored, Stored], old: Stored | null, comparison: Compared): Promise<ReadBackDiagnosis | undefined> {
+  const path = ({ sha256 }: Stored) => pathOfImage(sha256.toString("hex"));
   try {
-    return await engine("readBack", { approved: pathOfImage(approved), old: old && pathOfImage(old), readBack: pathOfImage(readBack), comparison });
+    const images = [approved, readBack, ...(old ? [old] : [])];
+    await requireSoundNow(images.map(({ sha256, sizeBytes }) => ({ sha256: sha256.toString("hex"), sizeBytes })), "judging a read-back", tx);
+    return await engine("readBack", { approved: path(approved), old: old && path(old), readBack: path(readBack), comparison });
   } catch (error) {
-    if ((error as NodeJS.ErrnoException).code === "ENOENT") return undefined;
+    if (error instanceof ImageNotSound || (error as NodeJS.ErrnoException).code === "ENOENT") return undefined;
     throw error;
   }
 }

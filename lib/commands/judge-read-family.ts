@@ -8,6 +8,7 @@ import { engine } from "@/lib/engine/pool";
 import { Board, Chip, ComparisonRow, Read, type Transaction } from "@/models";
 import { pathOfImage } from "@/storage";
 import { type ChipPlace, placeOfChip } from "./place";
+import { ImageNotSound, requireSoundNow } from "./require-sound-now";
 
 /** Chips looked at, the newest; so that the work stays the same however many a workshop has seen. */
 const MOST = 4;
@@ -19,8 +20,16 @@ const VERSION = `${ENGINE_VERSION}:like`;
 
 const pairOf = (a: Buffer, b: Buffer) => (Buffer.compare(a, b) < 0 ? { sha256A: a, sha256B: b } : { sha256A: b, sha256B: a });
 
+/** A damaged image is like nothing: what its bytes say now is not kept under its digest. */
+async function isSound(tx: Transaction, sha256: Buffer, sizeBytes: number): Promise<boolean> {
+  return requireSoundNow([{ sha256: sha256.toString("hex"), sizeBytes }], "judging", tx).then(() => true, (error: unknown) => {
+    if (error instanceof ImageNotSound) return false;
+    throw error;
+  });
+}
+
 /** How alike one image is to others of its size, each pair worked out once and then kept; null for one that is gone. */
-async function likenesses(tx: Transaction, sha256: Buffer, others: readonly Buffer[]): Promise<(Likeness | null)[]> {
+async function likenesses(tx: Transaction, sha256: Buffer, others: readonly Buffer[], sizeBytes: number): Promise<(Likeness | null)[]> {
   const rows = others.length === 0 ? [] : await ComparisonRow.findAll({
     where: { engineVersion: VERSION, [Op.or]: others.map((other) => pairOf(sha256, other)) }, transaction: tx,
   });
@@ -29,7 +38,8 @@ async function likenesses(tx: Transaction, sha256: Buffer, others: readonly Buff
     const row = rows.find((one) => one.sha256A.equals(sha256A) && one.sha256B.equals(sha256B));
     return row ? (JSON.parse(row.result) as Likeness) : null;
   };
-  const missing = others.filter((other) => kept(other) === null);
+  const missing: Buffer[] = [];
+  for (const other of others) if (kept(other) === null && (await isSound(tx, other, sizeBytes))) missing.push(other);
   if (missing.length === 0) return others.map(kept);
   const made = await engine("likeness", { file: pathOfImage(sha256.toString("hex")), others: missing.map((other) => pathOfImage(other.toString("hex"))) });
   await ComparisonRow.bulkCreate(missing.flatMap((other, i) => (made[i] ? [{ ...pairOf(sha256, other), engineVersion: VERSION, result: JSON.stringify(made[i]) }] : [])), {
@@ -64,7 +74,7 @@ export async function familyOf(tx: Transaction, place: ChipPlace, read: Read, fa
   const found: Read[] = [];
   const relatives: Relative[] = [];
   const reads = await candidates(tx, place, read);
-  const likeness = await likenesses(tx, read.sha256, reads.map((one) => one.sha256));
+  const likeness = await likenesses(tx, read.sha256, reads.map((one) => one.sha256), read.sizeBytes);
   for (const [i, other] of reads.entries()) {
     const there = await placeOfChip(other.chipId, tx);
     const known = likeness[i];
@@ -72,14 +82,14 @@ export async function familyOf(tx: Transaction, place: ChipPlace, read: Read, fa
     found.push(other);
     relatives.push({ ...known, readName: readName(other.stage, other.number), designator: there.chip.designator, caseRef: there.case.ref });
   }
-  return { relatives, among: alike(nearest(relatives)) ? null : await nearestAmong(tx, found.map((one) => one.sha256)) };
+  return { relatives, among: alike(nearest(relatives)) ? null : await nearestAmong(tx, found.map((one) => one.sha256), read.sizeBytes) };
 }
 
-async function nearestAmong(tx: Transaction, images: readonly Buffer[]): Promise<Likeness | null> {
+async function nearestAmong(tx: Transaction, images: readonly Buffer[], sizeBytes: number): Promise<Likeness | null> {
   const distinct = images.filter((one, i) => images.findIndex((other) => other.equals(one)) === i);
   let best: Likeness | null = null;
   for (const [i, image] of distinct.entries()) {
-    const pairs = await likenesses(tx, image, distinct.slice(i + 1));
+    const pairs = await likenesses(tx, image, distinct.slice(i + 1), sizeBytes);
     best = nearest([best, ...pairs].filter((one) => one !== null));
     if (alike(best)) return best;
   }

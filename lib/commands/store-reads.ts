@@ -14,15 +14,15 @@ import type { ReadFields } from "@/lib/schemas/read";
 import type { ReadView, StateView } from "@/lib/views";
 import { engine } from "@/lib/engine/pool";
 import { Approval, inTransaction, Read, type Transaction, Transfer } from "@/models";
-import { type Arrived, keep, receive } from "@/storage";
+import { type Arrived, receive } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { checkStage } from "./check-stage";
 import { compareIfStored } from "./compare-images";
 import { inspectImage, recordImage } from "./inspect-image";
 import { judge, judgeSameImages } from "./judge-read";
+import { keepImage } from "./keep-image";
 import { chipFor, type ChipPlace, placeOfChip } from "./place";
 import { allow } from "./refuse";
-import { reportSound } from "./report-image";
 import { revokeStanding } from "./revoke-approval";
 
 export interface UploadedFile {
@@ -52,8 +52,7 @@ export async function storeReads(actor: Actor, chipId: string, fields: ReadField
   const incoming = await Promise.all(files.map((file) => expandText(fields, file)));
   const facts = new Map<string, ImageFacts>();
   for (const arrived of incoming.flatMap((file) => (file.source ? [file.source, file.arrived] : [file.arrived]))) {
-    await keep(arrived);
-    await reportSound(arrived.sha256, "upload");
+    await keepImage(arrived, "upload");
     facts.set(arrived.sha256, await inspectImage(arrived.sha256));
   }
   await compareAhead(chipId, fields, incoming);

@@ -12,7 +12,6 @@ export const CHAIN_PROBLEMS: Record<ChainProblem, string> = {
   "stored-hash": "The entry is not the one whose digest was stored: it was changed.",
   "unknown-key": "The entry is signed with a key that no log introduces.",
   "old-key": "The entry is signed with a key that had been replaced: whoever kept it may have written this.",
-  "old-key": "The entry is signed with a key that had been replaced by then.",
   signature: "The signature does not fit the entry: it was changed, or somebody else wrote it.",
   head: "The log's head does not stand at its last entry.",
   "head-was-behind": "The log's head had been turned back when this entry was written.",

@@ -12,7 +12,7 @@ import { type Actor, type Range, readName, type Stage } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { ComparedReads, ComparisonView } from "@/lib/views";
 import { type Chip, Image, Read } from "@/models";
-import { imageWindow } from "@/storage";
+import { imageWindow, stateNow } from "@/storage";
 import { stripImage } from "./chip-summary";
 import { people } from "./people";
 import { readView } from "./read-view";
@@ -40,7 +40,7 @@ async function pairOf(rows: readonly [Read, Read], sizeBytes: number): Promise<C
   const [a, b] = rows.map(refOf);
   for (const image of [a, b]) {
     const row = await Image.findByPk(Buffer.from(image.sha256, "hex"));
-    if (row?.state !== "sound") await requireSoundImage(image.sha256, image.sizeBytes, "comparison");
+    if (row?.state !== "sound" || (await stateNow(image.sha256, image.sizeBytes)) !== "sound") await requireSoundImage(image.sha256, image.sizeBytes, "comparison");
   }
   const c = await compareIfStored(a, b, undefined, sizeBytes);
   if (c) return c;
@@ -116,10 +116,11 @@ export async function readBytes(actor: Actor, readId: string, { offset, length }
   if (offset >= read.sizeBytes) throw new AppError("does-not-fit", `This image ends at byte ${read.sizeBytes.toLocaleString("en")}. Choose an offset before that.`);
   const image = await Image.findByPk(read.sha256);
   if (image?.state !== "sound") throw new AppError("rule-against", "The stored image no longer matches its digest, so its bytes aren't shown. Tell the lead.");
+  if ((await stateNow(read.sha256.toString("hex"), read.sizeBytes)) !== "sound") await requireSoundImage(read.sha256.toString("hex"), read.sizeBytes, "a look at its bytes");
   try {
     return await imageWindow(read.sha256.toString("hex"), offset, Math.min(length, read.sizeBytes - offset));
   } catch (error) {
-    // gone since its row was written: found out, written down and refused
+    // gone since it was looked at: found out, written down and refused
     await requireSoundImage(read.sha256.toString("hex"), read.sizeBytes, "a look at its bytes");
     throw error;
   }

@@ -1,5 +1,6 @@
 import { readFor } from "@/lib/commands/place";
 import { allow, notFound } from "@/lib/commands/refuse";
+import { reportImage } from "@/lib/commands/report-image";
 import { derivedFacts } from "@/lib/core/derived";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
@@ -14,7 +15,8 @@ export async function votes(actor: Actor, readId: string): Promise<VotesView> {
   const derived = derivedFacts(read);
   if (!derived) throw notFound("composite");
   const stored = await Image.findByPk(Buffer.from(derived.reportSha256, "hex"));
-  if (!stored || (await checkImage(derived.reportSha256, stored.sizeBytes)) !== "sound") {
+  const first = stored ? await checkImage(derived.reportSha256, stored.sizeBytes) : "missing";
+  if (first !== "sound" && (await reportImage(derived.reportSha256, first, "a look at the votes")) !== "sound") {
     throw new AppError("rule-against", "The stored report of this composite no longer matches its digest. Tell the lead; make the composite again from its reads.");
   }
   const chunks: Buffer[] = [];

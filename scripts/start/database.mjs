@@ -69,6 +69,8 @@ async function start(dataDir, port, control) {
     args: [
       "--no-defaults", ...asUser, `--datadir=${path.join(dataDir, "db")}`, `--socket=${socketPath(dataDir)}`,
       `--pid-file=${path.join(dataDir, "run/db.pid")}`, `--port=${port}`, "--bind-address=127.0.0.1", "--skip-name-resolve",
+      // a server that starts clears this folder of temporary tables: in /tmp they may be another's, in use
+      `--tmpdir=${path.join(dataDir, "run")}`,
       `--init-file=${initFile}`, "--character-set-server=utf8mb4", "--collation-server=utf8mb4_unicode_ci",
       "--default-time-zone=+00:00",
       "--sql-mode=STRICT_TRANS_TABLES,ERROR_FOR_DIVISION_BY_ZERO,NO_ENGINE_SUBSTITUTION,ONLY_FULL_GROUP_BY",
