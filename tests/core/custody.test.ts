@@ -127,6 +127,30 @@ describe("a chain's check", () => {
     lines[2] = { ...lines[2], body: Uint8Array.of(0xff, 0xfe, 0x00) };
     expect(await problems()).toContain("3 not-readable");
   });
+  describe("with several keys", () => {
+    // three keys in the order of their introduction; one pair signs for all
+    const order = (keyId: string) => ({ "key-1": 0, "key-2": 1, "key-3": 2 })[keyId];
+    const several = { ...tools, knows: (keyId: string) => order(keyId) !== undefined, verify: (_: string, bytes: Uint8Array, signature: Uint8Array) => verify(null, bytes, keys.publicKey, signature), order };
+    const signedWith = async (...ids: string[]) => {
+      const found = await checkChain(lines.map((one, i) => ({ ...one, keyId: ids[i] ?? ids.at(-1)! })), head, several, DRIVE);
+      return found.map((one) => `${one.seq ?? "head"} ${one.problem}`);
+    };
+    it("finds an entry of a key that a later one had followed, and that entry alone", async () => {
+      expect(await signedWith("key-1", "key-1", "key-2", "key-2", "key-3")).toEqual([]);
+      expect(await signedWith("key-1", "key-3", "key-3")).toEqual([]);
+      expect(await signedWith("key-1", "key-2", "key-1", "key-2", "key-2")).toEqual(["3 old-key"]);
+      expect(await signedWith("key-3", "key-1", "key-2", "key-3", "key-3")).toEqual(["2 old-key", "3 old-key"]);
+    });
+    it("takes a later key's word only where its signature holds: a forged entry makes no honest one look old", async () => {
+      lines[1] = { ...lines[1], signature: Buffer.alloc(64).toString("base64") };
+      expect(await signedWith("key-1", "key-3", "key-1", "key-1", "key-1")).toEqual(["2 signature"]);
+      expect(await signedWith("key-1", "key-9", "key-1", "key-1", "key-1")).toEqual(["2 unknown-key"]);
+    });
+    it("says nothing of a key's age where no order is known", async () => {
+      const found = await checkChain(lines.map((one, i) => ({ ...one, keyId: i === 1 ? "key-2" : "key-1" })), head, { ...several, order: undefined }, DRIVE);
+      expect(found).toEqual([]);
+    });
+  });
   it("says what was expected and what was found", async () => {
     lines.splice(2, 1);
     const [sequence] = await checkChain(lines, head, tools, DRIVE);

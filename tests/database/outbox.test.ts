@@ -12,7 +12,8 @@ import { retryMail } from "@/lib/commands/retry-mail";
 import { sendSummary } from "@/lib/commands/send-summary";
 import { withdrawShare } from "@/lib/commands/withdraw-share";
 import type { Actor } from "@/lib/core/words";
-import { newestSealIn } from "@/lib/mail/seal-text";
+import { sealText as textOfSeal } from "@/lib/core/seal";
+import { newestSealIn, sealMailText, withNewestSeal } from "@/lib/mail/seal-text";
 import { openText, sealText } from "@/lib/mail/sealed-text";
 import { mailSender, type OutgoingMail } from "@/lib/mail/transport";
 import { chainEntries, checkCustody } from "@/lib/queries/custody";
@@ -59,6 +60,11 @@ describe("a mail's text", () => {
 });
 
 describe("the outbox", () => {
+  // what other tests have left queued would stand in front
+  beforeAll(async () => {
+    while ((await deliverMails(() => Promise.resolve())).sent > 0);
+  });
+
   it("sends with the full text, then wipes it", async () => {
     const { id, to } = await queue();
     const before = await row(id);
@@ -185,6 +191,20 @@ describe("the mail server's side", () => {
     expect(mail.text).toContain(SECRET);
     expect(mail.messageId).toBe("<42@bench.example>");
     expect(mail.headers.has("bcc")).toBe(false);
+  });
+
+  it("gets the newest seal as a header and as the last lines, and a seal's lines unbroken", async () => {
+    const seal = textOfSeal({ number: 41, at: "2026-11-03T09:14:05.123456Z", chains: 3, root: "ab".repeat(32), prev: "cd".repeat(32) });
+    const signature = Buffer.alloc(64, 0xfb).toString("base64");
+    const text = withNewestSeal(sealMailText({ workshop: "Größer Bench", number: 41, text: seal, signature, keyId: "ef".repeat(32), sha256: "12".repeat(32) }), { number: 41, sha256: "12".repeat(32) });
+    await sender()({ id: "43", to: "a@auditor.example", subject: "Seal 41", text });
+    const mail = await simpleParser(arrived.at(-1)!);
+    expect(mail.headers.get("x-twinread-seal")).toBe(`41 ${"12".repeat(32)}`);
+    expect(mail.text).toContain(`\n${seal}`);
+    expect(mail.text!.split("\n")).toContain(signature);
+    expect(mail.text!.trimEnd().endsWith(`Newest seal of this workshop's logs: 41\nSHA-256 ${"12".repeat(32)}`)).toBe(true);
+    await sender()({ id: "44", to: "a@customer.example", subject: "s", text: "before the first seal\n" });
+    expect((await simpleParser(arrived.at(-1)!)).headers.has("x-twinread-seal")).toBe(false);
   });
 
   it("is believed when it refuses for good", async () => {
