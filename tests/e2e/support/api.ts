@@ -8,8 +8,8 @@ async function post<T>(page: Page, path: string, data: object): Promise<T> {
 }
 
 /** A case with one drive, both boards and a pair of chips. */
-export async function makePair(page: Page, { customer, sizeBytes }: { customer: string; sizeBytes: number }): Promise<{ caseId: string; chipId: string; donorChipId: string }> {
-  const made = await post<{ id: string }>(page, "/api/cases", { customer: { name: customer, email: "bench@oddreads.example" }, damage: "Power surge" });
+export async function makePair(page: Page, { customer, sizeBytes, email = "bench@oddreads.example" }: { customer: string; sizeBytes: number; email?: string }): Promise<{ caseId: string; chipId: string; donorChipId: string }> {
+  const made = await post<{ id: string }>(page, "/api/cases", { customer: { name: customer, email }, damage: "Power surge" });
   const drive = await post<{ id: string }>(page, `/api/cases/${made.id}/drives`, { partNumber: "PN 9001-0001-A" });
   const board = { boardNumber: "BX 90-0001", revision: "rev A" };
   const original = await post<{ id: string }>(page, `/api/drives/${drive.id}/boards`, { role: "original", ...board });
