@@ -2,8 +2,8 @@
 
 import { useEffect, useState } from "react";
 
-const FIRST = 48;
-const MORE = 48;
+const FIRST = 24;
+const MORE = 32;
 
 /**
  * How many of so many lines stand on the page by now: some at once, the others a few at a time, so that keys and pointer

@@ -23,7 +23,7 @@ export function SummaryChip({ chip, timeZone, both }: { chip: Chip; timeZone: st
       </div>
       {chip.cells ? (
         <div className="sheet-strips">
-          <span>{chip.composite ? `Put together from ${countOf(chip.composite.reads, "read")} of your board` : "Read from your board"}</span><StripSvg cells={chip.cells} height={22} />
+          <span>{chip.composite ? `Put together from ${countOf(chip.composite.reads, "read")}` : "Read from your board"}</span><StripSvg cells={chip.cells} height={22} />
           {chip.verified && both ? (
             <Fragment>
               <span className="text-green">equal in all {countOf(chip.sizeBytes, "byte")}</span><LaneSvg counts={null} length={chip.cells.length} height={8} />

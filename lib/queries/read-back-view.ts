@@ -16,7 +16,7 @@ export async function readBackView(actor: Actor, asked: ChipView): Promise<ReadB
   if (!approved || backs.length === 0) return null;
   const differing: ReadBackView["backs"] = [];
   for (const back of backs) differing.push({ number: back.number, name: nameOf(back), differs: await differs(approved, back) });
-  const rows = [{ ...image(approved), name: "Approved", note: readsText(holders.map((r) => r.number)) }, ...backs.slice(-DRAWN).map(image)];
+  const rows = [{ ...image(approved), name: "Approved", note: `${readsText(holders.map((r) => r.number))}${holders.every((r) => r.derived) ? ", composite" : ""}` }, ...backs.slice(-DRAWN).map(image)];
   return { chipId: chip.id, backs: differing, stack: await stripStack(rows, chip.sizeBytes) };
 }
 

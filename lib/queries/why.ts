@@ -18,7 +18,7 @@ export async function why(record: ChipRecord, policy: Policy): Promise<string> {
     const backs = record.backs.filter((r) => r.transferId === latest.id && r.counted).map(stateRead);
     const composite = compositeBehind(record, imageAtStake(record));
     const seatings = new Set(backs.map((b) => b.seating)).size;
-    return `${plural(backs.length, "read-back")} of the latest transfer counted, in ${plural(seatings, "seating")}; the workshop's policy asks for ${policy.readBacks} in ${policy.readBackSeatings}, each equal to the approved image in every byte.${composite ? ` That image is a composite of ${composite.reads} reads, ${readsText([composite.number])}: a majority shows what repeats, not what is true.` : ""}`;
+    return `${plural(backs.length, "read-back")} of the latest transfer counted, in ${plural(seatings, "seating")}; the workshop's policy asks for ${policy.readBacks} in ${policy.readBackSeatings}, each equal to the approved image in every byte.${composite ? ` That image, ${readsText([composite.number])}, is a composite of ${composite.reads} reads: a majority shows what repeats, not what is true.` : ""}`;
   }
   const reads = record.before.filter((r) => r.counted).map(stateRead);
   if (reads.length === 0) return `The workshop's policy asks for ${policy.reads} equal reads in ${policy.seatings} seatings. Take power away before the clip goes on, and wear the wrist strap.`;

@@ -32,7 +32,7 @@ it("an approved composite says so on the bench, the case, the chip and to the cu
   for (const seating of [1, 2]) await store(technician, chip.donorChipId, "after", image, seating);
   const view = await chipView(technician, chip.chipId);
   expect(view).toMatchObject({ state: { state: "verified" }, composite: mark });
-  expect(view.why).toContain("That image is a composite of 3 reads, Read 4: a majority shows what repeats, not what is true.");
+  expect(view.why).toContain("That image, Read 4, is a composite of 3 reads: a majority shows what repeats, not what is true.");
 
   await sendSummary(other, chip.caseId);
   const sent: string[] = [];
