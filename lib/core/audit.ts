@@ -77,7 +77,7 @@ export function readEntry(body: string, column: string): EntryReading {
   const time = AT.test(at) && !Number.isNaN(Date.parse(at)) ? at : "";
   const known = Object.hasOwn(ACTIONS, action) && ACTIONS[action as Action].facts.safeParse(facts).success;
   const trouble = action !== column ? `The row beside it says ${column}, the signed body says ${action || "nothing"}.`
-    : !known ? "Its facts have another shape than this version of Twinread writes." : time === "" ? "It carries no time that can be read." : null;
+    : !known ? "Its facts have another shape than this version of Twinread writes." : time === "" ? "It carries no time that can be read." : text(actor.name) === "" ? "It names nobody who did it." : null;
   return {
     at: time, who: text(actor.name), role: text(actor.role), action: action || column, ...(known ? describe(action, facts) : { sentence: action || column, kind: "differs" as const }),
     ...(known ? details(action, facts) : { what: "", digest: "", to: "", reason: "" }),
