@@ -1,5 +1,5 @@
 import { createHash, createPrivateKey, createPublicKey, generateKeyPairSync, type KeyObject, sign, verify } from "node:crypto";
-import { closeSync, fsyncSync, mkdirSync, openSync, readFileSync, renameSync, rmSync, statSync, writeSync } from "node:fs";
+import { closeSync, existsSync, fsyncSync, mkdirSync, openSync, readFileSync, renameSync, rmSync, statSync, writeSync } from "node:fs";
 import path from "node:path";
 import { env } from "@/lib/env";
 
@@ -20,6 +20,7 @@ const loaded = () => (shared.twinreadKeys ??= new Map());
 const folder = () => path.join(env().dataDir, "keys");
 const fileOf = (use: KeyUse) => path.join(folder(), `${use}-key.pem`);
 const publicFileOf = (use: KeyUse) => path.join(folder(), `${use}-key.pub.pem`);
+const oldFileOf = (keyId: string) => path.join(folder(), "old", `${keyId}.pub.pem`);
 const nextFileOf = (use: KeyUse) => path.join(folder(), `${use}-key.next.pem`);
 
 export const logKey = () => keyInUse("log");
@@ -28,7 +29,8 @@ export const sealKey = () => keyInUse("seal");
 function keyInUse(use: KeyUse): SigningKey {
   const file = fileOf(use);
   let key = loaded().get(file);
-  if (!key) loaded().set(file, (key = load(file)));
+  // another process of this data folder may have changed it: its public half then lies among the old ones
+  if (!key || existsSync(oldFileOf(key.keyId))) loaded().set(file, (key = load(file)));
   return key;
 }
 
@@ -79,9 +81,8 @@ export function placeNextKey(use: KeyUse, keyId: string): boolean {
   const former = load(fileOf(use));
   const next = load(nextFileOf(use));
   if (former.keyId !== keyId) {
-    const old = path.join(folder(), "old");
-    mkdirSync(old, { recursive: true, mode: 0o700 });
-    replace(path.join(old, `${former.keyId}.pub.pem`), former.publicKeyPem);
+    mkdirSync(path.dirname(oldFileOf(former.keyId)), { recursive: true, mode: 0o700 });
+    replace(oldFileOf(former.keyId), former.publicKeyPem);
   }
   replace(publicFileOf(use), next.publicKeyPem);
   renameSync(nextFileOf(use), fileOf(use));

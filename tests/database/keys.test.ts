@@ -64,6 +64,14 @@ describe("a change of the log's key", () => {
     expect(logKey().keyId).toBe(changed.keyId);
   });
 
+  it("reaches another process that had the former key in its memory", async () => {
+    const former = logKey();
+    const { keyId } = await changeKey(admin, { purpose: "log", reason: REASON });
+    (globalThis as unknown as { twinreadKeys: Map<string, unknown> }).twinreadKeys.set(path.join(folder, "log-key.pem"), former);
+    await note(WORKSHOP_CHAIN);
+    expect(await lastKeyId(WORKSHOP_CHAIN)).toBe(keyId);
+  });
+
   it("asked for by four at once is four that follow one another", async () => {
     const before = (await logKeys()).size;
     const { won, lost } = await race(times(4, () => () => changeKey(admin, { purpose: "log", reason: REASON })));
