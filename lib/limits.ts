@@ -5,6 +5,7 @@ export const MIB = 1024 * KIB;
 export const MAX_IMAGE_BYTES = 64 * MIB;
 export const MAX_CALL_BYTES = 512 * MIB;
 export const MAX_FILES_A_CALL = 16;
+export const MAX_FILE_NAME_CHARACTERS = 1024;
 export const MAX_FIELDS_A_CALL = 80;
 export const MAX_FIELD_BYTES = 16 * KIB;
 export const MAX_JSON_BYTES = 1 * MIB;

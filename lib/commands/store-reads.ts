@@ -4,7 +4,9 @@ import { ENGINE_VERSION } from "@/lib/core/engine-version";
 import type { ImageFacts } from "@/lib/core/inspect";
 import { type Actor, readName, SYSTEM } from "@/lib/core/words";
 import { crc32Hex } from "@/lib/core/digest";
+import { withCommas } from "@/lib/core/quantity";
 import { AppError } from "@/lib/errors";
+import { MAX_FILE_NAME_CHARACTERS } from "@/lib/limits";
 import { recordOfChip } from "@/lib/queries/chip-records";
 import { chipState } from "@/lib/queries/chip-state";
 import { people } from "@/lib/queries/people";
@@ -93,6 +95,9 @@ function checkFiles(fields: ReadFields, files: UploadedFile[]): void {
     }
   }
   for (const [index, { arrived, fileName }] of files.entries()) {
+    // evidence is kept whole or not at all: a name is never cut
+    const long = [...fileName].length;
+    if (long > MAX_FILE_NAME_CHARACTERS) throw new AppError("does-not-fit", `A file’s name has ${withCommas(long)} characters; up to ${withCommas(MAX_FILE_NAME_CHARACTERS)} are kept with a read. Rename the file and send it again; nothing was stored.`);
     if (arrived.sizeBytes === 0) throw new AppError("does-not-fit", `${fileName} is empty: 0 bytes. Read the chip again and save the image; nothing was stored.`);
     const declared = fields.sha256[index];
     if (declared && declared !== arrived.sha256) {
