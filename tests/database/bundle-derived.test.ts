@@ -29,7 +29,7 @@ it("a bundle holds the texts as they came and the votes behind a composite, and 
   execFileSync("unzip", ["-q", "case.zip"], { cwd: folder });
   const bag = path.join(folder, `twinread-${chip.ref}`);
   const said = execFileSync("sh", ["check.sh"], { cwd: bag, encoding: "utf8" });
-  expect(said).toContain("8 images, each as the log names it");
+  expect(said).toContain("10 images, each as the log and the record name it");
   const listed = execFileSync("grep", ["-c", "-e", "before-5\\.hex$", "-e", "before-6-votes\\.json$", "manifest-sha256.txt"], { cwd: bag, encoding: "utf8" });
   expect(listed.trim()).toBe("2");
   // whoever has nothing but the bundle learns that the approved image was never read as a whole
