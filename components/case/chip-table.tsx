@@ -24,7 +24,7 @@ function Row({ chip, drive, policy, corrects }: { chip: ChipSummary; drive: Driv
   return (
     <tr>
       <th scope="row">{original ? <DesignatorPlate designator={chip.designator} board="original" /> : <span className="font-normal text-ink-3">not paired</span>}</th>
-      <td>{chipKind(chip)}{isPowerOfTwo(chip.sizeBytes) ? null : <span className="block text-t2 text-ink-2">size is not a power of two</span>}{chip.supplyMillivolts === null ? <FindingLine kind="caution">Look the supply up first</FindingLine> : null}</td>
+      <td className="min-w-[14ch]">{chipKind(chip)}{isPowerOfTwo(chip.sizeBytes) ? null : <span className="block text-t2 text-ink-2">size is not a power of two</span>}{chip.supplyMillivolts === null ? <FindingLine kind="caution">Look the supply up first</FindingLine> : null}</td>
       <td className="whitespace-nowrap" data-l="Reads">{!original ? "own content only" : chip.composite ? <b className="font-semibold text-caution">{readsWords(chip, policy)}</b> : readsWords(chip, policy)}</td>
       <td className="l-row"><StripThumb thumbnail={chip.thumbnail} /></td>
       <td className="text-center phone:text-left">{original && chip.needsTransfer ? <MiniRoute state={chip.state.state} /> : <span className="text-ink-3">{original ? "kept for reference" : ""}</span>}</td>

@@ -21,7 +21,7 @@ function ChipStep({ chip, drive, lead, acts }: { chip: ChipSummary; drive: strin
   return (
     <li>
       <Mark kind={stateMark(chip.state.state)} className="[--hole:var(--paper)]" />
-      <span><b>{chip.designator}{drive ? ` of Drive ${drive}` : ""}, {chip.state.label.toLowerCase()}.</b> {chip.state.sentence}{chip.composite ? ` The image is a ${compositeWords(chip.composite)}.` : ""}{chip.pair ? null : <span className="text-ink-2"> No donor chip is paired yet: add it on the donor board.</span>}</span>
+      <span><b>{chip.designator}{drive ? ` of Drive ${drive}` : ""}, {chip.state.label.toLowerCase()}.</b> {chip.state.sentence}{chip.composite && !chip.state.sentence.includes("composite") ? ` The image is a ${compositeWords(chip.composite)}.` : ""}{chip.pair ? null : <span className="text-ink-2"> No donor chip is paired yet: add it on the donor board.</span>}</span>
       <ButtonLink variant={lead ? "lead" : "plain"} href={`/chips/${chip.id}${at}`}>{word}<span className="sr-only">, {chip.designator}</span></ButtonLink>
     </li>
   );

@@ -99,7 +99,7 @@ async function store(tx: Transaction, actor: Actor, { chip, drive }: ChipPlace, 
   await appendEntry(tx, drive.id, actor, "composite.made", { type: "read", id: row.id }, {
     read: { id: row.id, stage: "before", number }, chip: { id: chip.id, designator: chip.designator }, sha256: image.sha256, sizeBytes: image.sizeBytes,
     crc32: crc32Hex(image.crc32), method: derived.method, version: derived.version, reportSha256: derived.reportSha256, reason,
-    voters: derived.voters.map((v) => ({ name: readName("before", v.number), seating: v.seating, sha256: v.sha256 })),
+    voters: [...derived.voters].sort((a, b) => a.number - b.number).map((v) => ({ name: readName("before", v.number), seating: v.seating, sha256: v.sha256 })),
     excluded: derived.excluded.map((e) => ({ name: readName("before", e.number), cause: e.cause })),
     disputedBytes: derived.disputedBytes, weak: derived.counts.weak, constructed: derived.counts.constructed,
   });
