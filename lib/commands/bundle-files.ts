@@ -4,6 +4,7 @@ import {
   bagInfoTxt, bagitTxt, CASE_JSON, compositePaths, custodyPath, LOG_KEY, MANIFEST, manifestLine, readmeTxt, REPORT_PDF, SEAL_KEY, SEAL_PROOF, SEAL_SIGNATURE, SEAL_TEXT, TAG_MANIFEST, TAG_SIGNATURE, WORKSHOP_KEYS,
 } from "@/lib/core/bundle-layout";
 import { CHECK_SCRIPT } from "@/lib/core/check-script";
+import { AppError } from "@/lib/errors";
 import { logKey, verifiedStream } from "@/storage";
 import { bodyLines, keysPart, type LogPart, signatureLines } from "./bundle-log";
 import type { BundlePlan } from "./bundle-plan";
@@ -60,10 +61,10 @@ function imageFile(path: string, sha256: string, sizeBytes: number): BundleFile 
 }
 
 /** Everything under data/, in the order in which it is sent. Another kind of payload is one more line here. */
-async function payload(plan: BundlePlan): Promise<BundleFile[]> {
+async function payload(plan: BundlePlan, logKeyPem: string): Promise<BundleFile[]> {
   const files = [textFile(CASE_JSON, plan.caseJson), textFile(REPORT_PDF, await bundleReport(plan))];
   for (const drive of plan.drives) files.push(...(await logFiles(custodyPath(drive.number), { chain: drive.id, upToSeq: drive.head.seq })));
-  files.push(...(await logFiles(WORKSHOP_KEYS, keysPart(plan.workshopSeq))), textFile(LOG_KEY, logKey().publicKeyPem));
+  files.push(...(await logFiles(WORKSHOP_KEYS, keysPart(plan.workshopSeq))), textFile(LOG_KEY, logKeyPem));
   const { seal } = plan;
   files.push(textFile(SEAL_TEXT, seal.text), textFile(SEAL_SIGNATURE, Buffer.from(seal.signature, "base64")), textFile(SEAL_KEY, seal.key), textFile(SEAL_PROOF, seal.proof));
   files.push(...plan.images.map((image) => imageFile(image.path, image.sha256, image.sizeBytes)));
@@ -74,7 +75,9 @@ const manifest = (files: BundleFile[]) => [...files].sort((a, b) => (a.path < b.
 
 /** The whole bag, lists first. The same plan gives the same bytes: Ed25519 signatures are deterministic (RFC 8032). */
 export async function bundleFiles(plan: BundlePlan): Promise<{ files: BundleFile[]; tagManifestSha256: string }> {
-  const data = await payload(plan);
+  const key = logKey();
+  if (key.keyId !== plan.logKeyId) throw new AppError("rule-against", "The key that signs the log was changed while this bundle was put together. Ask for it again.");
+  const data = await payload(plan, key.publicKeyPem);
   const octets = data.reduce((sum, file) => sum + file.sizeBytes, 0);
   const tags = [
     textFile("bagit.txt", bagitTxt()),
@@ -85,6 +88,6 @@ export async function bundleFiles(plan: BundlePlan): Promise<{ files: BundleFile
   ];
   const tagText = manifest(tags);
   const tagManifest = textFile(TAG_MANIFEST, tagText);
-  const signature = textFile(TAG_SIGNATURE, logKey().sign(Buffer.from(tagText)));
+  const signature = textFile(TAG_SIGNATURE, key.sign(Buffer.from(tagText)));
   return { files: [...tags, tagManifest, signature, ...data], tagManifestSha256: tagManifest.sha256 };
 }

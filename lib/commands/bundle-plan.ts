@@ -8,7 +8,7 @@ import { AppError } from "@/lib/errors";
 import { currentPolicy } from "@/lib/queries/policy";
 import type { ReportCase, ReportDrawing } from "@/lib/report/report-facts";
 import { CustodyHead, Drive, inTransaction, type Transaction } from "@/models";
-import { sealKey } from "@/storage";
+import { logKey, sealKey } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
 import { type BundleImage, recordOfCase } from "./bundle-case";
 import { drawingOf } from "./bundle-report";
@@ -27,6 +27,8 @@ export interface BundlePlan {
   caseJson: string;
   images: BundleImage[];
   twoPersonRule: boolean;
+  /** the key that signs the lists: the newest one that its workshop-keys.jsonl introduces */
+  logKeyId: string;
   /** made when the bundle was started: over the last line of each drive's log in it */
   seal: BundleSeal;
   /** what the report's strips and verdicts show */
@@ -70,7 +72,7 @@ export async function startBundle(actor: Actor, caseId: string): Promise<BundleP
     const keys = await CustodyHead.findByPk(WORKSHOP_CHAIN, { transaction: tx });
     const caseJson = `${JSON.stringify({ format: "twinread-case/1", workshop, madeAt, policy, ...record }, null, 2)}\n`;
     return {
-      caseId, ref: found.ref, workshop, madeAt, workshopSeq: keys?.seq ?? 0, images, seal, twoPersonRule: twoPersonRule && policy.twoPersonRule,
+      caseId, ref: found.ref, workshop, madeAt, workshopSeq: keys?.seq ?? 0, images, seal, logKeyId: logKey().keyId, twoPersonRule: twoPersonRule && policy.twoPersonRule,
       drives: drives.map((drive, i) => ({ number: i + 1, id: drive.id, head: heads.get(drive.id)! })),
       caseJson, drawing: await drawingOf(tx, JSON.parse(caseJson) as ReportCase, policy),
     };

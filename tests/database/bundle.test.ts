@@ -139,7 +139,10 @@ describe("a case bundle", () => {
 
   it("made after both keys were changed with a reason passes its own check, and says when a key is another", async () => {
     const admin = await makeUser("admin");
+    const plan = await startBundle(lead, chip.caseId);
     for (const purpose of ["log", "seal"] as const) await changeKey(admin, { purpose, reason: 'Says {"purpose":"log"} and "keyId":"00"' });
+    // the former key can sign no more: nothing goes out with one that its own key entries don't name
+    await expect(writeBundle(lead, plan)).rejects.toMatchObject({ code: "rule-against" });
     const dir = await unpack(await pack("new-keys"));
     const { status, text } = check(dir, logKey().keyId);
     expect(text).not.toContain("NOT IN ORDER");
