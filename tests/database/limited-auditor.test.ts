@@ -7,7 +7,10 @@ import { correctBoard } from "@/lib/commands/correct-board";
 import { correctChip } from "@/lib/commands/correct-chip";
 import { correctDrive } from "@/lib/commands/correct-drive";
 import { handOutImage, openHandedOut } from "@/lib/commands/hand-out-image";
+import { changeKey } from "@/lib/commands/change-key";
+import { checkChain } from "@/lib/commands/check-chain";
 import { makeBundle } from "@/lib/commands/make-bundle";
+import { makeSeal } from "@/lib/commands/make-seal";
 import { makeComposite } from "@/lib/commands/make-composite";
 import { recordBoard } from "@/lib/commands/record-board";
 import { recordChip } from "@/lib/commands/record-chip";
@@ -18,7 +21,10 @@ import { sendSummary } from "@/lib/commands/send-summary";
 import { countReadAgain, setReadAside } from "@/lib/commands/set-read-aside";
 import { storeReads } from "@/lib/commands/store-reads";
 import { withdrawShare } from "@/lib/commands/withdraw-share";
-import type { Actor } from "@/lib/core/words";
+import { AUDIT_LISTS, WORKSHOP_LISTS } from "@/lib/core/audit";
+import { type Actor, SYSTEM } from "@/lib/core/words";
+import { auditPage } from "@/lib/queries/audit-files";
+import { auditOverview } from "@/lib/queries/audit-overview";
 import { benchRows } from "@/lib/queries/bench";
 import { caseList, caseView } from "@/lib/queries/cases";
 import { chipFlatView, chipStrips, chipView } from "@/lib/queries/chip-view";
@@ -31,9 +37,12 @@ import { findDigest, findText } from "@/lib/queries/find";
 import { mailList } from "@/lib/queries/mails";
 import { policyView } from "@/lib/queries/policy";
 import { readBackView } from "@/lib/queries/read-back-view";
+import { scrubState } from "@/lib/queries/scrub-state";
+import { driveProof } from "@/lib/queries/seals";
 import { sessionView } from "@/lib/queries/session";
 import { userList } from "@/lib/queries/users";
 import { votes } from "@/lib/queries/votes";
+import { auditInput } from "@/lib/schemas/audit";
 import { listInput } from "@/lib/schemas/case";
 import { readFields } from "@/lib/schemas/read";
 import { CustodyHead, Read } from "@/models";
@@ -54,6 +63,7 @@ beforeAll(async () => {
   other = await makeFullCase(technician, lead);
   limited = await makeLimited([own.chip.caseId]);
   whole = await makeUser("auditor");
+  await makeSeal(SYSTEM, "daily");
 }, 120_000);
 
 /** The same places of a case that never was. */
@@ -90,6 +100,8 @@ const LOOKS: [string, (actor: Actor, at: FullCase) => Promise<unknown>][] = [
   ["votes", (a, { compositeId }) => votes(a, compositeId)],
   ["custody log", (a, { chip }) => custodyOfDrive(a, chip.driveId)],
   ["check of the log", (a, { chip }) => custodyCheckOfDrive(a, chip.driveId)],
+  ["proof of a seal", (a, { chip }) => driveProof(a, chip.driveId)],
+  ["check of the log as a whole", (a, { chip }) => checkChain(a, chip.driveId)],
   ["hand-out", (a, { readId }) => handOutImage(a, readId, reason)],
   ["hand-out without a reason", async (a, at) => {
     if (at.readId !== own.readId) await handOutImage(a, at.readId, {});
@@ -195,6 +207,20 @@ describe("lists of an auditor with a case list", () => {
     expect((await findDigest(limited, sha256(own.image))).hits.length).toBe(3);
   });
 
+  it("of the audit pages hold no other case, and what belongs to no case isn't there", async () => {
+    const tells = [other.chip.ref, other.chip.caseId, other.chip.driveId, other.chip.chipId, other.readId, sha256(other.image)];
+    for (const list of AUDIT_LISTS) {
+      const run = () => auditPage(limited, list, auditInput.parse({ pageSize: 200 }));
+      if (WORKSHOP_LISTS.includes(list)) expect(await answerOf(run), list).toMatchObject({ code: "not-found" });
+      else {
+        const text = JSON.stringify(await run());
+        expect(tells.filter((part) => text.includes(part)), list).toEqual([]);
+      }
+    }
+    for (const view of [await auditOverview(limited), await scrubState(limited)]) expect(tells.filter((part) => JSON.stringify(view).includes(part))).toEqual([]);
+    expect((await auditPage(limited, "drives", auditInput.parse({}))).total).toBe(2);
+  });
+
   it("are empty where the list is", async () => {
     const nobody: Actor = { ...limited, cases: [] };
     expect((await caseList(nobody, all())).total).toBe(0);
@@ -209,7 +235,7 @@ describe("lists of an auditor with a case list", () => {
 
 describe("what belongs to the workshop as a whole", () => {
   it("is as if it had no address; the policy stays readable", async () => {
-    for (const [name, run] of [["workshop log", () => workshopLog(limited)], ["users", () => userList(limited)], ["outbox", () => mailList(limited, all())]] as const) {
+    for (const [name, run] of [["workshop log", () => workshopLog(limited)], ["users", () => userList(limited)], ["outbox", () => mailList(limited, all())], ["seal", () => makeSeal(limited, "asked")], ["key", () => changeKey(limited, { purpose: "seal", reason: "Tried." })]] as const) {
       expect(await answerOf(run), name).toEqual({ code: "not-found", status: 404, detail: "The interface has no such address. Check its spelling and the id in it.", errors: undefined });
     }
     expect((await policyView(limited)).reads).toBeGreaterThan(1);

@@ -1,5 +1,8 @@
-/** Who asks: nobody, each role, and two who hold something that is worth nothing any more. */
-export const WHO = ["anonymous", "technician", "lead", "auditor", "admin", "disabled", "garbage"] as const;
+/**
+ * Who asks: nobody, each role, two who hold something that is worth nothing any more, and an auditor with a case list,
+ * here of the case that is asked for. What that one gets of another case stands in authorization-limited.spec.ts.
+ */
+export const WHO = ["anonymous", "technician", "lead", "auditor", "admin", "disabled", "garbage", "limited"] as const;
 export type Who = (typeof WHO)[number];
 export type Cells = Record<Who, number>;
 
@@ -27,16 +30,17 @@ export interface ApiRow {
   cells: Cells;
 }
 
-/** The four roles in order; whoever is not signed in is 401. */
-const roles = (technician: number, lead: number, auditor: number, admin: number): Cells => ({
-  anonymous: 401, technician, lead, auditor, admin, disabled: 401, garbage: 401,
+/** The four roles in order; whoever is not signed in is 401. A limited auditor is an auditor unless said otherwise. */
+const roles = (technician: number, lead: number, auditor: number, admin: number, limited = auditor): Cells => ({
+  anonymous: 401, technician, lead, auditor, admin, disabled: 401, garbage: 401, limited,
 });
 const everyRole = (status: number): Cells => roles(status, status, status, status);
 const anyone = (status: number): Cells => ({ ...everyRole(status), anonymous: status, disabled: status, garbage: status });
 /** Changes are tried on what does not exist: who may gets 404, who may not gets 403 and does not learn that. */
 const BENCH = roles(404, 404, 403, 403);
 const LEAD = roles(403, 404, 403, 403);
-const ADMIN = roles(403, 403, 403, 404);
+/** What belongs to the workshop as a whole is for a limited auditor as if it had no address. */
+const ADMIN = roles(403, 403, 403, 404, 404);
 
 const reason = () => ({ reason: "Tried by the authorization matrix." });
 const onUnknown = (route: string) => (things: Things) => route.replace("[id]", things.unknown);
@@ -100,13 +104,22 @@ export const API: ApiRow[] = [
   { method: "GET", route: "/api/find", at: () => "/api/find?digest=00000000", cells: everyRole(200) },
   { method: "POST", route: "/api/find", multipart: true, cells: everyRole(200) },
 
-  { method: "GET", route: "/api/mails", cells: roles(403, 403, 403, 200) },
+  { method: "GET", route: "/api/audit/[list]", at: () => "/api/audit/sessions?format=csv", cells: roles(403, 200, 200, 200, 404) },
+  change("POST", "/api/audit/checks/[id]", roles(403, 404, 404, 404)),
+  { method: "GET", route: "/api/seals", cells: roles(403, 200, 200, 200) },
+  { method: "POST", route: "/api/seals", cells: roles(403, 201, 201, 201, 404) },
+  { method: "GET", route: "/api/seals/[number]", at: () => "/api/seals/1", cells: roles(403, 200, 200, 200) },
+  // the newest seal may be older than this drive: asked of one that is not there
+  look("/api/drives/[id]/proof", (t) => `/api/drives/${t.driveId}/proof?seal=4000000000`, everyRole(404)),
+  { method: "GET", route: "/api/keys", cells: roles(403, 200, 200, 200) },
+  { method: "POST", route: "/api/keys", body: () => ({ purpose: "seal", ...reason() }), cells: roles(403, 403, 403, 201, 404) },
+  { method: "GET", route: "/api/mails", cells: roles(403, 403, 403, 200, 404) },
   change("POST", "/api/mails/[id]/retry", ADMIN),
   { method: "GET", route: "/api/policy", cells: everyRole(200) },
   { method: "PUT", route: "/api/policy", body: (t) => t.policy, cells: roles(403, 403, 403, 422) },
   change("DELETE", "/api/shares/[id]", LEAD),
-  { method: "GET", route: "/api/users", cells: roles(403, 403, 403, 200) },
-  { method: "POST", route: "/api/users", body: (t) => ({ email: t.adminEmail, name: "Twice", role: "admin" }), cells: roles(403, 403, 403, 409) },
+  { method: "GET", route: "/api/users", cells: roles(403, 403, 403, 200, 404) },
+  { method: "POST", route: "/api/users", body: (t) => ({ email: t.adminEmail, name: "Twice", role: "admin" }), cells: roles(403, 403, 403, 409, 404) },
   change("PATCH", "/api/users/[id]", ADMIN, () => ({ name: "Nobody" })),
 ];
 
@@ -117,8 +130,8 @@ export interface PageRow {
 }
 
 /** Who is not signed in is sent to the sign-in page. */
-const pages = (technician: number, lead: number, auditor: number, admin: number): Cells => ({
-  anonymous: 307, technician, lead, auditor, admin, disabled: 307, garbage: 307,
+const pages = (technician: number, lead: number, auditor: number, admin: number, limited = auditor): Cells => ({
+  anonymous: 307, technician, lead, auditor, admin, disabled: 307, garbage: 307, limited,
 });
 const everyDesk = pages(200, 200, 200, 200);
 
@@ -127,6 +140,8 @@ export const PAGES: PageRow[] = [
   { route: "/sign-in", cells: anyone(200) },
   { route: "/summary/[token]", at: () => `/summary/${"x".repeat(43)}`, cells: anyone(404) },
   { route: "/account", cells: everyDesk },
+  ...["", "/drives", "/seals", "/images", "/assessments", "/hand-outs", "/refusals", "/clock"].map((path): PageRow => ({ route: `/audit${path}`, cells: pages(404, 200, 200, 200) })),
+  ...["/sign-ins", "/sign-ins/tokens", "/sign-ins/limits"].map((path): PageRow => ({ route: `/audit${path}`, cells: pages(404, 200, 200, 200, 404) })),
   { route: "/bench", cells: everyDesk },
   { route: "/cases", cells: everyDesk },
   { route: "/cases/new", cells: pages(200, 200, 307, 307) },
@@ -135,7 +150,7 @@ export const PAGES: PageRow[] = [
   { route: "/chips/[id]/compare", at: (t) => `/chips/${t.chipId}/compare?reads=1,2`, cells: everyDesk },
   { route: "/chips/[id]/decision", at: (t) => `/chips/${t.chipId}/decision`, cells: everyDesk },
   { route: "/custody", cells: everyDesk },
-  { route: "/custody/workshop", cells: pages(404, 200, 200, 200) },
+  { route: "/custody/workshop", cells: pages(404, 200, 200, 200, 404) },
   { route: "/drives/[id]", at: (t) => `/drives/${t.driveId}`, cells: everyDesk },
   { route: "/drives/[id]/custody", at: (t) => `/drives/${t.driveId}/custody`, cells: everyDesk },
   { route: "/find", cells: everyDesk },

@@ -44,8 +44,8 @@ const cookies = new Map<Who, string>();
 const people = new Map<Who, Newcomer>();
 
 test.beforeAll(async () => {
-  for (const who of ["technician", "lead", "auditor", "admin"] as const) {
-    const newcomer = await makeNewcomerToken(who);
+  for (const who of ["technician", "lead", "auditor", "admin", "limited"] as const) {
+    const newcomer = await makeNewcomerToken(who === "limited" ? "auditor" : who);
     tokens.set(who, newcomer.token);
     people.set(who, newcomer);
   }
@@ -61,6 +61,7 @@ test.beforeAll(async () => {
     caseId: pair.caseId, driveId: pair.driveId, chipId: pair.chipId, readId: reads[0].id, unknown: UNKNOWN, adminEmail: emailOf("odile"),
     policy: await done<object>("GET", "/api/policy", { token: mira }),
   };
+  await changeAccount(people.get("limited")!.id, { cases: [pair.caseId], endsOn: "2099-12-31" });
 });
 
 const REFUSALS = [401, 403, 404, 409, 422];

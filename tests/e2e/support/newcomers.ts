@@ -33,6 +33,6 @@ export async function makeNewcomerToken(role: Role): Promise<Newcomer & { cookie
   return { ...newcomer, token, tokenId: id };
 }
 
-export async function changeAccount(id: string, change: { role?: Role; disabled?: boolean; newPassword?: true }): Promise<{ password?: string }> {
+export async function changeAccount(id: string, change: { role?: Role; disabled?: boolean; newPassword?: true; cases?: string[] | null; endsOn?: string | null }): Promise<{ password?: string }> {
   return done("PATCH", `/api/users/${id}`, { token: await tokenOf("odile"), json: change });
 }
