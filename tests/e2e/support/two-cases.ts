@@ -19,8 +19,8 @@ async function partsOf(ready: Ready, approvalId: string): Promise<CaseParts> {
   const { ref } = await done<{ ref: string }>("GET", `/api/cases/${ready.caseId}`, { token });
   const ids = {
     cases: ready.caseId, drives: ready.driveId, boards: ready.boardId, chips: ready.chipId, reads: ready.reads[0].id, approvals: approvalId, checks: ready.driveId,
-    // a link is made with a verified case only: here what isn't there is asked for, which an auditor may not either way
-    shares: NEVER,
+    // a link needs a verified case, a hand-over two people: what isn't there is asked for, which an auditor may not either way
+    shares: NEVER, "hand-overs": NEVER,
   };
   return {
     ids, ref, sha256: ready.sha256, image: ready.image, caseId: ready.caseId, driveId: ready.driveId, chipId: ready.chipId, readId: ready.reads[0].id, unknown: NEVER,
