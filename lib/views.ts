@@ -5,7 +5,7 @@
 import type { DiagnosisView } from "./core/diagnosis";
 import type { SealProof } from "./core/seal";
 import type {
-  BoardRole, Bus, ChipStateCode, Finding, Format, KeyPurpose, Method, Policy, Range, Role, SealCause, SizeSource, Stage, TransferKind,
+  BoardRole, Bus, ChipStateCode, Finding, Format, ItemType, KeyPurpose, Method, Policy, Range, Role, SealCause, SizeSource, Stage, TransferKind,
 } from "./core/words";
 
 export interface PersonView {
@@ -250,6 +250,37 @@ export interface BoardView {
   condition: string | null;
   fit: { verdict: "fits" | "caution" | "other-number"; differences: string[]; reason: string | null } | null;
   chips: ChipSummary[];
+}
+
+export interface HandOverView {
+  id: string;
+  from: { person: string; place: string };
+  to: { person: string; place: string };
+  /** the receiver's account; they confirm themselves */
+  toUserId: string | null;
+  condition: string;
+  sealNumber: string | null;
+  note: string | null;
+  givenBy: PersonView;
+  givenAt: string;
+  confirmed: { received: boolean; by: PersonView; at: string; text: string | null } | null;
+}
+
+/** A drive, board or lifted chip: where it is by the last confirmed hand-over, and the one that waits. */
+export interface ItemView {
+  type: ItemType;
+  id: string;
+  name: string;
+  at: HandOverView | null;
+  open: HandOverView | null;
+  /** how many hand-overs there were */
+  past: number;
+}
+
+export interface PlacedItem {
+  driveId: string;
+  item: string;
+  handOver: HandOverView;
 }
 
 export interface DriveView {

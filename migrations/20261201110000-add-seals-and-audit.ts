@@ -67,6 +67,7 @@ export async function up({ context: q }: { context: QueryInterface }): Promise<v
     note TEXT NULL,
     given_by ${ID} NOT NULL,
     given_at DATETIME(6) NOT NULL,
+    received BOOLEAN NULL,
     confirmed_by ${ID} NULL,
     confirmed_at DATETIME(6) NULL,
     confirmation VARCHAR(500) NULL,

@@ -8,7 +8,7 @@ export const GRANTS: { table: string; grants: string[] }[] = [
   { table: "seals", grants: ["SELECT", "INSERT"] },
   { table: "chain_checks", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "user_cases", grants: ["SELECT", "INSERT", "DELETE"] },
-  { table: "hand_overs", grants: ["SELECT", "INSERT", "UPDATE (confirmed_by, confirmed_at, confirmation)"] },
+  { table: "hand_overs", grants: ["SELECT", "INSERT", "UPDATE (received, confirmed_by, confirmed_at, confirmation)"] },
   { table: "users", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "sessions", grants: ["SELECT", "INSERT", "UPDATE", "DELETE"] },
   { table: "sign_in_attempts", grants: ["SELECT", "INSERT", "DELETE"] },

@@ -1,4 +1,4 @@
-import { type CreationOptional, type InferAttributes, type InferCreationAttributes, Model, type Sequelize } from "sequelize";
+import { type CreationOptional, DataTypes, type InferAttributes, type InferCreationAttributes, Model, type Sequelize } from "sequelize";
 import type { ItemType } from "@/lib/core/words";
 import { id, longText, reference, text, time } from "./columns";
 
@@ -19,6 +19,8 @@ export class HandOver extends Model<InferAttributes<HandOver>, InferCreationAttr
   declare note: string | null;
   declare givenBy: string;
   declare givenAt: Date;
+  /** false: the receiver, or the giver, says that it did not arrive; null while it is open */
+  declare received: CreationOptional<boolean | null>;
   declare confirmedBy: CreationOptional<string | null>;
   declare confirmedAt: CreationOptional<Date | null>;
   declare confirmation: CreationOptional<string | null>;
@@ -40,6 +42,7 @@ export function initHandOver(sequelize: Sequelize): void {
     note: longText(true),
     givenBy: reference(),
     givenAt: time(),
+    received: { type: DataTypes.BOOLEAN, allowNull: true },
     confirmedBy: reference(true),
     confirmedAt: time(true),
     confirmation: text(500, true),

@@ -10,7 +10,7 @@ import { Empty } from "@/components/ui/empty";
 import { Note } from "@/components/ui/note";
 import { may } from "@/lib/core/policy";
 import { backgroundFetcher, Refusal } from "@/lib/http/send";
-import type { BenchRow, SessionView } from "@/lib/views";
+import type { BenchRow, PlacedItem, SessionView } from "@/lib/views";
 import { BenchRoute } from "./bench-route";
 import { BenchTable } from "./bench-table";
 import { benchGroups, capital, dateSentence, dueWords, lateWords } from "./bench-words";
@@ -18,7 +18,7 @@ import { benchGroups, capital, dateSentence, dueWords, lateWords } from "./bench
 const REFRESH_MS = 20_000;
 
 /** What lies on the bench, refreshed in the background: two people at two benches see the same. */
-export function BenchScreen({ rows: given, session, mine, now: loadedAt }: { rows: BenchRow[]; session: SessionView; mine: boolean; now: string }) {
+export function BenchScreen({ rows: given, waiting, session, mine, now: loadedAt }: { rows: BenchRow[]; waiting: PlacedItem[]; session: SessionView; mine: boolean; now: string }) {
   const [now, setNow] = useState(loadedAt);
   const { data, error } = useSWR<{ items: BenchRow[] }, Error>("/api/bench", backgroundFetcher, {
     fallbackData: { items: given }, refreshInterval: REFRESH_MS, keepPreviousData: true, revalidateOnMount: false,
@@ -50,6 +50,13 @@ export function BenchScreen({ rows: given, session, mine, now: loadedAt }: { row
       </BoardPanel>
       <PageMain>
         {error ? <div className="pt-4"><Note kind="caution" role="status" title="This page is not being refreshed.">{error instanceof Refusal && error.status === 401 ? "Your sign-in has ended. Reload the page to sign in again." : error.message}</Note></div> : null}
+        {waiting.length > 0 ? (
+          <div className="pt-4">
+            <Note kind="note" title={waiting.length === 1 ? "Something was handed over to you." : `${waiting.length} things were handed over to you.`}>
+              Confirm that you have {waiting.length === 1 ? "it" : "them"}: {waiting.map((one, i) => <span key={one.handOver.id}>{i > 0 ? ", " : ""}<Link href={`/drives/${one.driveId}#items`}>{one.item}</Link></span>)}.
+            </Note>
+          </div>
+        ) : null}
         {rows.length > 0 ? <BenchTable groups={groups} acts={acts} signs={may(session.user, "approval.give")} /> : (
           <div className="py-8">
             {all.length > 0

@@ -90,6 +90,8 @@ export const ACTIONS = {
     (f) => `Handed ${f.item.name} over from ${f.from.person}, ${f.from.place}, to ${f.to.person}, ${f.to.place}: ${f.condition}${f.sealNumber ? `; seal ${f.sealNumber}` : ""}`),
   "item.received": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, condition: words, sealNumber: optional, confirmation: optional },
     (f) => `${f.to.person} confirmed having ${f.item.name} at ${f.to.place}${f.confirmation ? `: ${f.confirmation}` : ""}`),
+  "item.not-received": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, reason: words },
+    (f) => `${f.item.name} did not go to ${f.to.person}; it is still with ${f.from.person}, ${f.from.place}: ${f.reason}`, "differs"),
   "bundle.started": spec({ caseRef: words, head: z.object({ seq: z.int(), hash: sha }) }, (f) => `Started the case bundle of ${f.caseRef}`),
   "bundle.completed": spec({ caseRef: words, tagManifestSha256: sha, upToSeq: z.int() }, (f) => `Completed the case bundle of ${f.caseRef}, tag manifest ${short(f.tagManifestSha256)}`, "signed"),
   "summary.sent": spec({ caseRef: words, share: uuid, expiresAt: words }, (f) => `Sent the verification summary of ${f.caseRef} to the customer`),

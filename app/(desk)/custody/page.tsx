@@ -23,6 +23,9 @@ export default async function CustodyPage({ searchParams }: { searchParams: Prom
         <Section title="Drives" note="One chain for each drive.">
           {list.total > 0 ? <HeadList list={list} timeZone={session.timeZone} /> : <Empty title="No drive yet.">A log begins when the first drive of a case is recorded.</Empty>}
         </Section>
+        <Section title="Items" note="Drives, boards and lifted chips, from person to person and place to place.">
+          <ButtonLink href="/items">Where things are</ButtonLink>
+        </Section>
         {may(actor, "workshop-log.read") ? (
           <Section title="Workshop" note="What belongs to no drive: cases received, accounts, tokens, policy, keys.">
             <ButtonLink href="/custody/workshop">Open the log of the workshop</ButtonLink>

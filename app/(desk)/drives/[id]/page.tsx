@@ -5,6 +5,7 @@ import { BoardTable } from "@/components/drive/board-table";
 import { originalOf } from "@/components/drive/drive-words";
 import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
+import { ItemsTable } from "@/components/item/items-table";
 import { Crumbs } from "@/components/ui/crumbs";
 import { PageTitle, Section } from "@/components/ui/section";
 import { signedIn } from "@/lib/auth/page";
@@ -12,6 +13,7 @@ import { may } from "@/lib/core/policy";
 import { orNotFound } from "@/lib/http/page-errors";
 import { custodyOfDrive } from "@/lib/queries/custody";
 import { driveView } from "@/lib/queries/drives";
+import { itemsOfDrive, receivers } from "@/lib/queries/items";
 import { policyView } from "@/lib/queries/policy";
 
 export const metadata: Metadata = { title: "Drive" };
@@ -20,7 +22,7 @@ export default async function DrivePage({ params }: { params: Promise<{ id: stri
   const { actor, session } = await signedIn();
   const { id } = await params;
   const drive = await orNotFound(() => driveView(actor, id));
-  const [policy, { entries }] = await Promise.all([policyView(actor), custodyOfDrive(actor, id)]);
+  const [policy, { entries }, { items }, others] = await Promise.all([policyView(actor), custodyOfDrive(actor, id), itemsOfDrive(actor, id), receivers()]);
   return (
     <DeskShell session={session} current="cases">
       <PageMain>
@@ -32,6 +34,9 @@ export default async function DrivePage({ params }: { params: Promise<{ id: stri
             <BoardTable boards={drive.boards} original={originalOf(drive)} corrects={may(actor, "fact.correct")} isLead={may(actor, "board.allow-other-number")} />
           </Section>
         ) : null}
+        <Section id="items" title="Where things are" note="By the last hand-over that both sides confirmed.">
+          <ItemsTable driveId={id} items={items} user={session.user} receivers={others} acts={may(actor, "item.hand-over")} timeZone={session.timeZone} />
+        </Section>
         <Section title="Custody log" note="Each entry carries the hash of the one before.">
           <LatestEntries driveId={id} letter={drive.letter} entries={entries} timeZone={session.timeZone} />
         </Section>

@@ -1,0 +1,55 @@
+"use client";
+
+import { useState } from "react";
+import { Button } from "@/components/ui/button";
+import { Mark } from "@/components/ui/mark";
+import { momentText } from "@/components/ui/times";
+import type { HandOverView, ItemView, PersonView } from "@/lib/views";
+import { ConfirmForm } from "./confirm-form";
+import { HandOverForm } from "./hand-over-form";
+import { handOverSteps, itemWords, waitsWords } from "./item-words";
+
+type Open = { kind: "hand-over"; item: ItemView } | { kind: "confirm" | "deny"; item: ItemView; handOver: HandOverView } | null;
+
+/** Where each item of a drive is, and what can be done about it. */
+export function ItemsTable({ driveId, items, user, receivers, acts, timeZone }: { driveId: string; items: ItemView[]; user: { id: string; name: string; role: string }; receivers: PersonView[]; acts: boolean; timeZone: string }) {
+  const [open, setOpen] = useState<Open>(null);
+  const close = () => setOpen(null);
+  return (
+    <>
+      <table className="ruled lines">
+        <caption className="sr-only">Where each item is</caption>
+        <thead><tr><th scope="col">Item</th><th scope="col">Where it is</th><th scope="col">Condition</th><th scope="col">Seal</th><th scope="col">Since</th>{acts ? <th scope="col"><span className="sr-only">Steps</span></th> : null}</tr></thead>
+        <tbody>
+          {items.map((item) => (
+            <tr key={item.id}>
+              <th scope="row" className={item.type === "chip" ? "!pl-5" : ""}>{item.name}</th>
+              <td data-l="Where it is" className="l-full">
+                {itemWords(item)}
+                {item.open ? <span className="flex items-start gap-1.5 text-t2 text-ink-2"><Mark kind="run" />{waitsWords(item.open)}</span> : null}
+              </td>
+              <td data-l="Condition" className="[overflow-wrap:anywhere]">{(item.open ?? item.at)?.condition ?? <span className="text-ink-3">as recorded</span>}</td>
+              <td data-l="Seal" className="font-mono">{(item.open ?? item.at)?.sealNumber ?? <span className="font-sans text-ink-3">none</span>}</td>
+              <td data-l="Since" className="whitespace-nowrap">{item.at ? momentText(item.at.confirmed!.at, timeZone) : ""}</td>
+              {acts ? <td className="l-full"><Steps item={item} user={user} onOpen={setOpen} /></td> : null}
+            </tr>
+          ))}
+        </tbody>
+      </table>
+      {open?.kind === "hand-over" ? <HandOverForm driveId={driveId} item={open.item} user={user} receivers={receivers} onClose={close} /> : null}
+      {open && open.kind !== "hand-over" ? <ConfirmForm item={open.item.name} handOver={open.handOver} received={open.kind === "confirm"} onClose={close} /> : null}
+    </>
+  );
+}
+
+function Steps({ item, user, onOpen }: { item: ItemView; user: { id: string; role: string }; onOpen(open: Open): void }) {
+  if (!item.open) return <Button size="small" onClick={() => onOpen({ kind: "hand-over", item })}>Hand over…</Button>;
+  const handOver = item.open;
+  const { confirms, denies } = handOverSteps(handOver, user);
+  return (
+    <span className="flex flex-wrap gap-2">
+      {confirms ? <Button size="small" onClick={() => onOpen({ kind: "confirm", item, handOver })}>Confirm…</Button> : null}
+      {denies ? <Button size="small" onClick={() => onOpen({ kind: "deny", item, handOver })}>Did not arrive…</Button> : null}
+    </span>
+  );
+}
