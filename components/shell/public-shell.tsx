@@ -4,7 +4,14 @@ import { Logo } from "@/components/ui/logo";
 import { DemoStrip } from "./demo-strip";
 
 /** Pages for customers: the workshop comes first, Twinread only signs the work. The page brings its own `<main id="main">`. */
-export function PublicShell({ workshop, line, demo, children }: { workshop: string; line?: string; demo: boolean; children: ReactNode }) {
+export function PublicShell({ workshop, line, demo, checking = false, children }: {
+  workshop: string;
+  line?: string;
+  demo: boolean;
+  /** this is the page for checking itself */
+  checking?: boolean;
+  children: ReactNode;
+}) {
   return (
     <>
       <a href="#main" className="skip-link sr-only focus:not-sr-only focus:absolute focus:top-2 focus:left-2 focus:z-50 focus:bg-sheet focus:px-4 focus:py-3 focus:text-ink">Go to the main part</a>
@@ -17,9 +24,11 @@ export function PublicShell({ workshop, line, demo, children }: { workshop: stri
         </div>
       </header>
       {children}
-      <footer className="no-print mx-auto flex max-w-[1120px] px-8 phone:px-4">
-        <p className="w-full border-t border-rule pt-3.5 pb-7 text-t2 text-ink-2">Have a case bundle or an image of a chip? <Link href="/verify" prefetch={false}>Check it here</Link>: nothing is sent.</p>
-      </footer>
+      {checking ? null : (
+        <footer className="no-print mx-auto flex max-w-[1120px] px-8 phone:px-4">
+          <p className="w-full border-t border-rule pt-3.5 pb-7 text-t2 text-ink-2">Have a case bundle or an image of a chip? <Link href="/verify" prefetch={false}>Check it here</Link>: nothing is sent.</p>
+        </footer>
+      )}
     </>
   );
 }

@@ -17,5 +17,6 @@ function stepLines({ state, title, sentence, faults }: Step): string[] {
 export function bundlePage(report: VerifyReport): string {
   const { facts } = report;
   const keys = [["log key", facts.logKey], ["seal key", facts.sealKey]].flatMap(([name, key]) => (key ? [`fingerprint of the ${name}  ${key}`] : []));
-  return [...report.steps.flatMap(stepLines), "", ...keys, report.sentence, ""].join("\n");
+  const heads = facts.heads.map(({ drive, seq, hash }) => `log of drive ${drive} ends with entry ${seq}  ${hash}`);
+  return [...report.steps.flatMap(stepLines), "", ...keys, ...heads, report.sentence, ""].join("\n");
 }

@@ -157,7 +157,7 @@ export function withLists(payload: Bag, key: TestKey = logKeyA): Bag {
     ["bagit.txt", Buffer.from(bagitTxt())],
     ["bag-info.txt", Buffer.from(bagInfoTxt({ date: "2026-03-12", ref: REF, octets: data.reduce((sum, [, bytes]) => sum + bytes.length, 0), files: data.length }))],
     [MANIFEST, list(data)],
-    ["README.txt", Buffer.from(readmeTxt({ ref: REF, workshop: "Alder Lane", madeAt: "2026-03-12T14:00:00Z", drives: 1, images: 3, twoPersonRule: true, composites: [] }))],
+    ["README.txt", Buffer.from(readmeTxt({ ref: REF, workshop: "Alder Lane", madeAt: "2026-03-12T14:00:00Z", drives: 1, images: 3, twoPersonRule: true, composites: [], seal: 7 }))],
     ["check.sh", Buffer.from(CHECK_SCRIPT)],
   ];
   const tagList = list(tags);

@@ -9,7 +9,7 @@ export const metadata: Metadata = { title: "Check a case bundle" };
 export default function VerifyPage() {
   const { workshop, demo } = env();
   return (
-    <PublicShell workshop={workshop} demo={demo} line="No account is needed here">
+    <PublicShell workshop={workshop} demo={demo} checking line="No account is needed here">
       <main id="main" tabIndex={-1} className="mx-auto max-w-[1120px] px-8 pb-12 outline-none phone:px-4 print:max-w-none print:p-0">
         <PageTitle note="Its files, its custody logs, their signatures and the seal over them, each part by itself.">Check a case bundle</PageTitle>
         <VerifyScreen />

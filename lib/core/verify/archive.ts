@@ -1,4 +1,5 @@
 import { configure, type Entry, type Reader, ZipReader } from "@zip.js/zip.js/lib/zip-core-custom.js";
+import { type DirectoryEntry, headerFault, type ReadAt } from "./archive-headers";
 import { type BagEntry, EntryFault } from "./bag";
 import type { Fault } from "./report";
 
@@ -31,24 +32,35 @@ function reasonOf(error: unknown): string | undefined {
   return typeof reason === "string" ? reason : typeof reason?.reason === "string" ? reason.reason : undefined;
 }
 
-async function* contentOf(entry: Entry): AsyncGenerator<Uint8Array> {
+async function* contentOf(entry: Entry, readAt: ReadAt): AsyncGenerator<Uint8Array> {
   if (entry.directory) return;
   const { readable, writable } = new TransformStream<Uint8Array, Uint8Array>();
   const whole = entry.getData(writable, { checkSignature: true, checkAmbiguity: true }).then(() => null, (error: unknown) => ({ error }));
+  // what goes wrong before the first byte never reaches the stream: it would be waited for without end
+  const broken = whole.then((found) => found ?? new Promise<never>(() => {}));
   const reader = readable.getReader();
   try {
     for (;;) {
-      const { done, value } = await reader.read();
-      if (done) break;
-      yield value;
+      const step = await Promise.race([reader.read(), broken]);
+      if ("error" in step) throw step.error;
+      if (step.done) break;
+      yield step.value;
     }
+    const late = await whole;
+    if (late) throw late.error;
+    const fault = await headerFault(directoryEntry(entry), readAt);
+    if (fault !== null) throw new EntryFault(fault);
   } catch (error) {
-    throw new EntryFault(wordsOf((await whole)?.error ?? error));
+    throw error instanceof EntryFault ? error : new EntryFault(wordsOf(error));
   } finally {
-    await reader.cancel().catch(() => {});
+    reader.cancel().catch(() => {});
   }
-  const broken = await whole;
-  if (broken) throw new EntryFault(wordsOf(broken.error));
+}
+
+function directoryEntry(entry: Entry): DirectoryEntry {
+  return {
+    offset: entry.offset, rawBitFlag: entry.rawBitFlag, crc32: entry.signature ?? 0, packedBytes: entry.compressedSize, sizeBytes: entry.uncompressedSize, zip64: entry.zip64 === true,
+  };
 }
 
 function kindOf(entry: Entry): BagEntry["kind"] {
@@ -64,11 +76,12 @@ function kindOf(entry: Entry): BagEntry["kind"] {
  */
 export async function openArchive<T>(reader: Reader<T>): Promise<{ entries: BagEntry[]; faults: Fault[] }> {
   const faults: Fault[] = [];
+  const readAt: ReadAt = (offset, length) => reader.readUint8Array(offset, length);
   for (const strictness of ["strict", "tolerant"] as const) {
     try {
       const found = await new ZipReader(reader, { strictness, filenameValidation: "tolerant", useWebWorkers: false }).getEntries();
       return { faults, entries: found.map((entry) => ({
-        path: entry.filename, sizeBytes: entry.uncompressedSize, kind: kindOf(entry), encrypted: entry.encrypted, open: () => contentOf(entry),
+        path: entry.filename, sizeBytes: entry.uncompressedSize, kind: kindOf(entry), encrypted: entry.encrypted, open: () => contentOf(entry, readAt),
       })) };
     } catch (error) {
       const reason = reasonOf(error);

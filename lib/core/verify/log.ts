@@ -60,7 +60,7 @@ export async function checkLog(files: Files, drive: number, ring: Keyring, tools
   }
   const compared = compareFiles(files, drive, entries, notes);
   const log: DriveLog = { drive, chain, head: { seq: entries[entries.length - 1].seq, hash: sha256Hex(lines[lines.length - 1].body, tools) }, entries };
-  return { step: notes.done(`${entriesText(lines.length)}, each following from the one before and each signed; ${countOf(compared, "image file")}, each as the log names it. Ends with entry ${log.head.seq}, ${log.head.hash}.`), log };
+  return { step: notes.done(`${entriesText(lines.length)}, each following from the one before and each signed; ${countOf(compared, "image file")}, each as the log names it.`), log };
 }
 
 /** Hostile input: what an entry has of its parts. */

@@ -37,7 +37,9 @@ export interface VerifyInput {
 export async function verifyBundle({ entries, source, archiveFaults = [], tools, expectedKey = null, onProgress, signal }: VerifyInput): Promise<VerifyReport> {
   if (entries.length > MOST_ENTRIES) throw new NotVerified(`It holds ${entries.length} files, more than any bundle. Check that it is one.`);
   const container = new StepNotes("archive", source === "archive" ? "The archive" : "The folder");
-  const { folder, files: found } = layOut(entries, container);
+  // an archive without a readable directory is just that; what it would hold is not known
+  const unreadable = entries.length === 0 && archiveFaults.length > 0;
+  const { folder, files: found } = unreadable ? { folder: "", files: new Map<string, BagEntry>() } : layOut(entries, container);
   const say = (what: string, doneBytes = 0, totalBytes = 0) => onProgress?.({ what, doneBytes, totalBytes });
   const files = await readFiles(found, tools, container, ({ path, doneBytes, totalBytes }) => say(path, doneBytes, totalBytes), signal);
   for (const { place, sentence, expected, found: is } of archiveFaults) container.fault(place, sentence, expected, is);
