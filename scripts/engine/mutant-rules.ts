@@ -38,7 +38,7 @@ export const RULES: Mutant[] = [
   { name: "F12 from one byte later", file: "diagnose-order.ts", from: "leastRotation(a) - leastRotation(b) + n", to: "leastRotation(a) - leastRotation(b) + n + 1" },
   { name: "F14 without reversed bits", file: "diagnose-cause.ts", from: "return isBitReversed(a.bytes, b.bytes) ?", to: "return a === b ?" },
   { name: "F14 without inversion", file: "diagnose-cause.ts", from: "if (isInverted(a.bytes, b.bytes))", to: "if (a === b)" },
-  { name: "F15 before the shift", file: "diagnose-cause.ts", from: "(same ? orderCause(a, b, () => shifted().shift) : null)", to: '(same ? orderCause(a, b, () => shifted().shift) ?? ({ code: "rearranged", confidence: "likely", faulty: null, counts: {} } as Cause) : null)', why: "a slip with the same bytes comes only in nearly empty images" },
+  { name: "F15 before the shift", file: "diagnose-cause.ts", from: "(same ? orderCause(a, b, () => shifted().shift) : null)", to: '(same ? orderCause(a, b, () => shifted().shift) ?? ({ code: "rearranged", confidence: "likely", faulty: null, counts: {} } as Cause) : null)' },
   { name: "F06 in both reads", file: "diagnose-cause.ts", from: "filter(({ line }) => !covers(b, line))", to: "filter(() => true)" },
   { name: "F06 names the sound read", file: "diagnose-cause.ts", from: 'const side: Side = onlyA.length > 0 ? "a" : "b";', to: 'const side: Side = onlyA.length > 0 ? "b" : "a";' },
   { name: "F21 as a plain slip", file: "diagnose-shift.ts", from: "b[0] !== 0x03", to: "b[0] !== 0x02" },

@@ -48,6 +48,10 @@ describe("images of one size", () => {
   it("with two stretches exchanged hold the same bytes in another order", () => {
     expect(between(good, joined(good.subarray(0, 4096), good.subarray(8192, 12_288), good.subarray(4096, 8192), good.subarray(12_288))).code).toBe("rearranged");
   });
+  it("that lost a byte of fill hold the same bytes, and have slipped all the same", () => {
+    const apart = joined(stream("one", 1000), fill(504, 0xff), stream("two", 4000), fill(2688, 0xff));
+    expect(between(apart, loseBits(apart, 1200 * 8, 8))).toMatchObject({ code: "byte-slip", counts: { shiftBits: 8 } });
+  });
   it("exchanged in halves of 32 bits", () => expect(between(good, good.map((_, i) => good[i ^ 2]))).toMatchObject({ code: "byte-swapped", counts: { bits: 32 } }));
   it("of odd length keep their last byte when swapped", () => {
     const odd = good.slice(0, 1001);
