@@ -97,7 +97,7 @@ try {
   await house.migrate();
   await house.app({});
   const tokenFile = path.join(folder, "token");
-  await once(process.execPath, tsArgs("scripts/bench/make-technician.ts", [tokenFile]), { env: appVariables(settings) });
+  await once(process.execPath, tsArgs("scripts/bench/make-person.ts", [tokenFile]), { env: appVariables(settings) });
   const token = readFileSync(tokenFile, "utf8").trim();
   const pid = runningMark(settings.dataDir, "app").pid;
   await ratio(token, MIB, 1);
