@@ -79,7 +79,7 @@ async function originalChip(sheet: Sheet, facts: ReportFacts, place: Place, numb
 
 async function reads(sheet: Sheet, { drawing }: ReportFacts, name: string, list: readonly ReportRead[], stacks: readonly Stack[], chipBytes: number, shown: Set<string>): Promise<void> {
   for (const stack of stacks) await drawStack(sheet, stack, chipBytes, drawing, stacks.length > 1);
-  await readTable(sheet, name, list);
+  await readTable(sheet, name, list, drawing.lanes);
   for (const read of list) shown.add(read.id);
 }
 

@@ -47,7 +47,7 @@ describe("the report of a case", () => {
     for (const words of [
       "Lindmoor Veterinary Practice", "Zoë Šimková", "Mira Hollis", "Ines Okafor", "PN 4471-0093-B", "Donor board 1, BX 40-3179 rev D", "Another revision: rev D; the original has rev C.", "512 KiB (taken from the marking)",
       "Both read-backs equal the approved image in all 524,288 bytes.", "“Looked at each strip;", "This family keeps its parameters in few bytes.", "Derived, not read: nothing ever read this image as a whole.", "by bit majority, n=3",
-      "The clip sat badly", "Seal 12", "What this does not promise", "File as it came: u12 first try.bin", "8192CC68",
+      "The clip sat badly", "Seal 12", "What this does not promise", "Equals Reads 3 and 4 byte for byte.", "Equals Read 5 byte for byte. Differs from Read 1 in 214 bytes.", "Equals Own 2 byte for byte.", "File as it came: u12 first try.bin", "8192CC68",
     ]) expect(bare(text)).toContain(bare(words));
   });
 
