@@ -8,8 +8,8 @@ import { sum } from "./test/counts.mjs";
 import { forgetOwnSettings } from "./test/variables.mjs";
 
 // `npm test`: everything from an empty machine to the line "N passed, N failed". Plain JavaScript: it runs before the
-// packages are there. --only=<path> runs some vitest files, --browser=<path> some browser tests, --long the long ones,
-// --keep leaves a test database running and --stop ends it.
+// packages are there. --only=<path> runs some vitest files (with --long, of the long ones), --browser=<path> some browser
+// tests, --long the long ones, --keep leaves a test database running and --stop ends it.
 const option = (name) => process.argv.find((word) => word.startsWith(`--${name}=`))?.slice(name.length + 3) ?? null;
 const flag = (name) => process.argv.includes(`--${name}`);
 const LOCK = path.join(root, ".data/checkout.lock");
@@ -40,7 +40,7 @@ async function run() {
   if (flag("keep")) return steps.keepDatabaseRunning();
   if (flag("stop")) return steps.stopKeptDatabase();
   const only = option("only");
-  if (only !== null) return [await steps.vitest({ filter: only })];
+  if (only !== null) return [await steps.vitest({ filter: only, long: flag("long") })];
   if (flag("long")) {
     if (steps.hasLongTests()) return [await steps.vitest({ long: true })];
     say("There are no long tests in tests/long yet.");

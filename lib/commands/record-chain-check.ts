@@ -20,15 +20,16 @@ export interface ChainChecked {
 export async function recordChainCheck(chainId: string, { entries, findings }: ChainChecked): Promise<void> {
   const first = findings[0] ? chainFindingSentence(findings[0]).slice(0, LONGEST) : null;
   await inTransaction(async (tx) => {
+    // the row is there before it is locked: two first checks at once must not both tell
+    await connection().query("INSERT IGNORE INTO chain_checks (chain_id, checked_at, entries, findings) VALUES (?, UTC_TIMESTAMP(6), 0, 0)", { replacements: [chainId], transaction: tx });
     const [before] = await connection().query<{ findings: number }>("SELECT findings FROM chain_checks WHERE chain_id = ? FOR UPDATE", {
       replacements: [chainId], transaction: tx, type: QueryTypes.SELECT,
     });
     await connection().query(
-      `INSERT INTO chain_checks (chain_id, checked_at, entries, findings, first_finding) VALUES (?, UTC_TIMESTAMP(6), ?, ?, ?)
-       ON DUPLICATE KEY UPDATE checked_at = VALUES(checked_at), entries = VALUES(entries), findings = VALUES(findings), first_finding = VALUES(first_finding)`,
-      { replacements: [chainId, entries, findings.length, first], transaction: tx },
+      "UPDATE chain_checks SET checked_at = UTC_TIMESTAMP(6), entries = ?, findings = ?, first_finding = ? WHERE chain_id = ?",
+      { replacements: [entries, findings.length, first, chainId], transaction: tx },
     );
-    if (findings.length > 0 && (before?.findings ?? 0) === 0) await tell(tx, chainId, findings.length, first!);
+    if (findings.length > 0 && before.findings === 0) await tell(tx, chainId, findings.length, first!);
   }, { receipt: false });
 }
 

@@ -2,11 +2,12 @@ import { randomUUID } from "node:crypto";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { TransferInput } from "@/lib/schemas/approval";
-import { Approval, inTransaction, Transfer } from "@/models";
+import { Approval, Image, inTransaction, Transfer } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { requireCleanChain } from "./chain-gate";
 import { chipFor, placeOfChip } from "./place";
 import { allow, notFound } from "./refuse";
+import { requireSoundImage } from "./report-image";
 
 /** Writes down that the approved image was written to the donor's chip, or that the chip itself was moved there. */
 export async function recordTransfer(actor: Actor, approvalId: string, input: TransferInput): Promise<{ id: string; donorChipId: string }> {
@@ -14,6 +15,9 @@ export async function recordTransfer(actor: Actor, approvalId: string, input: Tr
   const known = await Approval.findByPk(approvalId);
   if (!known) throw notFound("approval");
   const { drive, chip } = await chipFor(actor, known.chipId, undefined, "approval");
+  // the read-back will be held against this image
+  const image = known.revokedAt ? null : await Image.findByPk(known.sha256);
+  if (image) await requireSoundImage(known.sha256.toString("hex"), image.sizeBytes, "transfer");
   return inTransaction(async (tx) => {
     await lockChain(tx, drive.id);
     const approval = (await Approval.findByPk(approvalId, { transaction: tx }))!;

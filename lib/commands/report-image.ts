@@ -91,6 +91,8 @@ async function lockDrivesOf(tx: Transaction, digest: Buffer): Promise<{ drives: 
   return { drives, uses };
 }
 
+const ROUND_ACTIONS = ["images.checked", "image.found-damaged"] as const;
+
 export interface FoundByScrub {
   sha256: string;
   state: "damaged" | "missing";
@@ -99,7 +101,7 @@ export interface FoundByScrub {
 /** What the scrub wrote into a drive's log since the entry that closed the round before. */
 export async function foundByScrub(tx: Transaction, drive: string): Promise<FoundByScrub[]> {
   const found: FoundByScrub[] = [];
-  const rows = await CustodyEntry.findAll({ where: { chainId: drive, action: ["images.checked", "image.found-damaged"] }, order: [["seq", "DESC"]], transaction: tx });
+  const rows = await CustodyEntry.findAll({ where: { chainId: drive, action: [...ROUND_ACTIONS] }, order: [["seq", "DESC"]], transaction: tx });
   for (const row of rows) {
     if (row.action === "images.checked") break;
     const facts = factsOf(row.body);
@@ -117,8 +119,13 @@ function factsOf(body: Buffer): (FoundByScrub & { where: string }) | null {
   }
 }
 
+/** Asked for each image that is found: the newest entry mostly tells, however many lie before it. */
 async function foundInRound(tx: Transaction, drives: string[]): Promise<boolean> {
-  for (const drive of drives) if ((await foundByScrub(tx, drive)).length > 0) return true;
+  for (const drive of drives) {
+    const newest = await CustodyEntry.findOne({ where: { chainId: drive, action: [...ROUND_ACTIONS] }, order: [["seq", "DESC"]], transaction: tx });
+    if (!newest || newest.action === "images.checked") continue;
+    if (factsOf(newest.body)?.where === SCRUB || (await foundByScrub(tx, drive)).length > 0) return true;
+  }
   return false;
 }
 

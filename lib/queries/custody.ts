@@ -1,5 +1,6 @@
 import { createHash } from "node:crypto";
-import { type ChainFinding, checkChain } from "@/lib/core/custody";
+import { Transaction as Isolation } from "sequelize";
+import { type ChainFinding, checkChain, type ChainLine } from "@/lib/core/custody";
 import { describe } from "@/lib/core/custody-actions";
 import { keyOrder } from "@/lib/core/keyring";
 import { type Actor, type Stage, WORKSHOP_CHAIN } from "@/lib/core/words";
@@ -7,7 +8,7 @@ import { driveFor } from "@/lib/commands/place";
 import { recordChainCheck } from "@/lib/commands/record-chain-check";
 import { allow } from "@/lib/commands/refuse";
 import type { CustodyCheckView, CustodyEntryView, PersonView } from "@/lib/views";
-import { CustodyEntry, CustodyHead, type Transaction } from "@/models";
+import { connection, CustodyEntry, CustodyHead, type Transaction } from "@/models";
 import { logKey, verifySignature } from "@/storage";
 import { keyring } from "./keyring";
 import { seenBy } from "./seen-by";
@@ -49,13 +50,25 @@ export async function logKeys(tx?: Transaction): Promise<Map<string, string>> {
   return keyring(rows, logKey().publicKeyPem).keys;
 }
 
-/** Checks one chain: links, numbers, hashes, signatures, head. It reports and never repairs. */
+/** A row of the log as its check takes it. */
+export function chainLine(row: CustodyEntry): ChainLine {
+  return {
+    body: row.body, hash: row.hash.toString("hex"), signature: row.signature.toString("base64"), keyId: row.keyId,
+    beside: { seq: row.seq, prev: row.prev.toString("hex"), action: row.action },
+  };
+}
+
+/**
+ * Checks one chain: links, numbers, hashes, signatures, head. It reports and never repairs. Without `tx` entries and head
+ * come from one look at the database: an entry appended in between must not look like a head without its entry.
+ */
 export async function checkCustody(chain: string, tx?: Transaction): Promise<CustodyCheckView & { findings: ChainFinding[] }> {
+  if (!tx) return connection().transaction({ isolationLevel: Isolation.ISOLATION_LEVELS.REPEATABLE_READ }, (look) => checkCustody(chain, look));
   const rows = await CustodyEntry.findAll({ where: { chainId: chain }, order: ["seq"], transaction: tx });
   const head = await CustodyHead.findByPk(chain, { transaction: tx });
   const keys = await logKeys(tx);
   const findings = await checkChain(
-    rows.map((row) => ({ body: row.body, hash: row.hash.toString("hex"), signature: row.signature.toString("base64"), keyId: row.keyId })),
+    rows.map(chainLine),
     head && { seq: head.seq, hash: head.hash.toString("hex") },
     {
       sha256: (bytes) => createHash("sha256").update(bytes).digest("hex"),

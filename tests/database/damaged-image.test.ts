@@ -6,6 +6,7 @@ import { afterEach, describe, expect, it } from "vitest";
 import { openHandedOut } from "@/lib/commands/hand-out-image";
 import { makeBundle } from "@/lib/commands/make-bundle";
 import { makeComposite } from "@/lib/commands/make-composite";
+import { recordTransfer } from "@/lib/commands/record-transfer";
 import { reportImage, requireSoundImage } from "@/lib/commands/report-image";
 import { chipStrips } from "@/lib/queries/chip-view";
 import { comparedReads, comparison, readBytes } from "@/lib/queries/compare";
@@ -157,7 +158,9 @@ describe("a stored image that changes", () => {
   }
 
   it("is refused by every way that opens it, before anybody has noticed, and no wrong byte is shown", async () => {
-    const ways: Record<string, (bench: Bench, odd: Buffer) => Promise<unknown>> = {
+    const approvals = new Map<string, string>();
+    const approvalOf = (bench: Bench) => Promise.resolve(approvals.get(bench.chip.chipId)!);
+    const ways: Record<string, (bench: Bench) => Promise<unknown>> = {
       "its bytes": async (bench) => readBytes(bench.technician, (await readNamed(bench, "before", 1)).id, { offset: 0, length: 16 }),
       comparison: (bench) => comparison(bench.technician, bench.chip.chipId, { reads: [1, 4], stage: "before" }),
       "compare page": (bench) => comparedReads(bench.technician, bench.chip.chipId, { reads: [1, 4], stage: "before" }),
@@ -165,15 +168,17 @@ describe("a stored image that changes", () => {
       "hand-out as text": async (bench) => openHandedOut(bench.lead, (await readNamed(bench, "before", 1)).id, { reason: "To look at it.", format: "intel-hex" }),
       approval: (bench) => approve(bench.lead, bench.chip, bench.image),
       composite: (bench) => makeComposite(bench.lead, bench.chip.chipId, { reads: [1, 2, 4], reason: "Three reads." }),
+      transfer: async (bench) => recordTransfer(bench.technician, await approvalOf(bench), { kind: "write", donorChipId: bench.chip.donorChipId }),
       bundle: (bench) => makeBundle(bench.lead, bench.chip.caseId),
     };
     for (const [way, ask] of Object.entries(ways)) {
       const bench = await makeReadyBench();
-      await store(bench.technician, bench.chip.chipId, "before", freshImage(), 3);
+      approvals.set(bench.chip.chipId, way === "transfer" ? (await approve(bench.lead, bench.chip, bench.image)).id : "");
+      if (way !== "transfer") await store(bench.technician, bench.chip.chipId, "before", freshImage(), 3);
       // strips and comparisons that were made before are in memory and on record: they do not help
       await view(bench);
       harm.damaged(sha256(bench.image));
-      expect([way, await refusal(ask(bench, bench.image))]).toEqual([way, expect.objectContaining({ status: 409, detail: expect.stringContaining("no longer matches its digest") as string })]);
+      expect([way, await refusal(ask(bench))]).toEqual([way, expect.objectContaining({ status: 409, detail: expect.stringContaining("no longer matches its digest") as string })]);
       expect(await logged(bench.chip.driveId, "image.found-damaged")).toHaveLength(1);
       const { rows } = await chipStrips(bench.technician, bench.chip.chipId, { offset: 0, length: 8192 });
       expect(rows.filter((row) => row.name !== "Read 4").every((row) => /^n+$/.test(row.cells))).toBe(true);

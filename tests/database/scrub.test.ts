@@ -1,4 +1,4 @@
-import { chmodSync, linkSync, lstatSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, symlinkSync, truncateSync, writeFileSync } from "node:fs";
+import { chmodSync, linkSync, lstatSync, mkdirSync, readFileSync, renameSync, rmSync, symlinkSync, truncateSync, writeFileSync } from "node:fs";
 import path from "node:path";
 import { Op } from "sequelize";
 import { afterEach, beforeEach, describe, expect, it } from "vitest";
@@ -10,6 +10,7 @@ import { Image, Mail } from "@/models";
 import { lookAtImage } from "@/storage";
 import { flipped, logged } from "../support/bench-steps";
 import { approve, type Bench, firmware, freshImage, logOf, makeChip, makeReady, makeUser, sha256, stateOf, store } from "../support/factory";
+import { manyReads } from "../support/many-images";
 import { asAdmin, imageFile } from "../support/tamper";
 
 const DAYS = 7;
@@ -167,7 +168,7 @@ describe("the scrub of stored images", () => {
     const images = Array.from({ length: 512 }, (_, bit) => firmware(`bit-${bit}-${Math.random()}`, 64));
     await store(technician, chip.chipId, "before", images[0]);
     const read = (await logOf(chip.driveId)).find((entry) => entry.action === "read.stored")!;
-    await manyReads(read.facts.read as { id: string }, images.slice(1));
+    await manyReads((read.facts.read as { id: string }).id, images.slice(1));
     images.forEach((image, bit) => {
       const wrong = Buffer.from(image);
       wrong[bit >> 3] ^= 1 << (bit & 7);
@@ -317,23 +318,3 @@ describe("the scrub of stored images", () => {
     await expect(scrubState(bench.technician)).rejects.toThrow();
   });
 });
-
-/** Rows like the first read's with other images: what the upload would take long for. */
-async function manyReads({ id }: { id: string }, images: Buffer[]): Promise<void> {
-  for (const image of images) {
-    const file = imageFile(sha256(image));
-    mkdirSync(path.dirname(file), { recursive: true });
-    if (!readdirSync(path.dirname(file)).includes(path.basename(file))) writeFileSync(file, image, { mode: 0o440 });
-  }
-  await asAdmin(async (db) => {
-    await db.query("DROP TEMPORARY TABLE IF EXISTS more");
-    await db.query("CREATE TEMPORARY TABLE more AS SELECT * FROM `reads` WHERE id = ?", [id]);
-    const [first] = await db.query<{ sha256: Buffer }[]>("SELECT sha256 FROM more");
-    for (const [i, image] of images.entries()) {
-      await db.query("INSERT INTO images (sha256, size_bytes, crc32, facts, engine_version, state, stored_at) SELECT ?, ?, crc32, facts, engine_version, 'sound', UTC_TIMESTAMP(6) FROM images WHERE sha256 = ?", [hex(image), image.length, first.sha256]);
-      await db.query("UPDATE more SET id = UUID(), number = ?, sha256 = ?", [i + 2, hex(image)]);
-      await db.query("INSERT INTO `reads` SELECT * FROM more");
-    }
-  });
-}
-
