@@ -42,7 +42,7 @@ export function AddUser() {
         <form onSubmit={submit} noValidate className="grid gap-4">
           <Input label="Name" hint="As it stands in the custody log." autoComplete="off" error={errorOf("name")} {...register("name")} />
           <Input label="E-mail address" type="email" hint="To sign in with." autoComplete="off" error={errorOf("email")} {...register("email")} />
-          <Select label="Role" options={ROLE_OPTIONS} hint={roleHint(role)} error={errorOf("role")} {...register("role")} />
+          <Select label="Role" options={ROLE_OPTIONS} hint={roleHint(role, role === "auditor" && cases !== null)} error={errorOf("role")} {...register("role")} />
           {role === "auditor" ? <AccountLimits cases={cases} onCases={changeCases} onOpen={onOpen} endsOn={register("endsOn")} errors={{ cases: errorOf("cases"), endsOn: errorOf("endsOn") }} /> : null}
           {refusal ? <Note kind="block" role="alert" title="No account was made.">{refusal}</Note> : null}
           <Buttons><Button type="submit" variant="lead" disabled={isSubmitting}>Add and show a one-time password</Button><Button onClick={close}>Leave it</Button></Buttons>

@@ -63,7 +63,7 @@ export function CasePicker({ chosen, error, onChange, onOpen }: { chosen: readon
             {...control} ref={input} type="text" role="combobox" autoComplete="off" value={q} placeholder="26-0042"
             aria-expanded={open} aria-controls={listId} aria-autocomplete="list" aria-activedescendant={current >= 0 ? `${listId}-${current}` : undefined}
             onChange={(event) => { setQ(event.target.value); setAt(0); show(true); }}
-            onClick={() => show(true)} onBlur={() => show(false)} onKeyDown={onKeyDown} className={controlClass(Boolean(error), false, "min-h-control")}
+            onClick={() => show(true)} onBlur={() => { show(false); setQ(""); }} onKeyDown={onKeyDown} className={controlClass(Boolean(error), false, "min-h-control")}
           />
         )}
       </Field>

@@ -49,7 +49,7 @@ export function ChangeUser({ user, onClose }: { user: UserView; onClose(): void 
     <Dialog open onOpenChange={(open) => { if (!open && !isListOpen()) onClose(); }} title={`Change ${user.name}`} description={user.email}>
       <form onSubmit={submit} noValidate className="grid gap-4">
         <Input label="Name" hint="Entries already in the log keep the former name." autoComplete="off" error={errorOf("name")} {...register("name")} />
-        <Select label="Role" options={ROLE_OPTIONS} hint={roleHint(role)} error={errorOf("role")} {...register("role")} />
+        <Select label="Role" options={ROLE_OPTIONS} hint={roleHint(role, role === "auditor" && cases !== null)} error={errorOf("role")} {...register("role")} />
         {role === "auditor" ? <AccountLimits cases={cases} onCases={changeCases} onOpen={onOpen} endsOn={register("endsOn")} errors={{ cases: errorOf("cases"), endsOn: errorOf("endsOn") }} /> : null}
         {takenAway ? <Note kind="caution" title="With this role the limits of the account go.">{`It is ${takenAway}. As ${role} it carries neither a case list nor a last day.`}</Note> : null}
         {refusal ? <Note kind="block" role="alert" title="Nothing was changed.">{refusal}</Note> : null}

@@ -16,13 +16,22 @@ export function roleDoes(role: Role): string {
 }
 
 /** The sentence under the field: "An auditor reads …". */
-export function roleHint(role: string): string {
-  return `A ${role} ${DOES[role as Role]}.`.replace(/^A a/, "An a");
+export function roleHint(role: string, limited = false): string {
+  const does = limited ? DOES.auditor.replace("everything", "the cases of their list") : DOES[role as Role];
+  return `A ${role} ${does}.`.replace(/^A a/, "An a");
+}
+
+const NAMED = 6;
+
+/** The first few numbers of a case list, and how many more there are. */
+export function namedCases(cases: readonly { ref: string }[]): { refs: string[]; more: number } {
+  return { refs: cases.slice(0, NAMED).map((one) => one.ref), more: Math.max(0, cases.length - NAMED) };
 }
 
 /** "limited to 26-0003 and 26-0007, until 31 January 2027"; null for an account without limits. */
 export function limitsText({ cases, endsOn }: Pick<UserView, "cases" | "endsOn">): string | null {
-  const only = cases && (cases.length > 0 ? `limited to ${listText(cases.map((one) => one.ref))}` : "limited to no case");
+  const { refs, more } = namedCases(cases ?? []);
+  const only = cases && `limited to ${listText(more > 0 ? [...refs, `${more} more`] : refs) || "no case"}`;
   return [only, endsOn && `${only ? "" : "open "}until ${dayInWords(endsOn)}`].filter(Boolean).join(", ") || null;
 }
 

@@ -1,7 +1,7 @@
 "use client";
 
 import { useRouter } from "next/navigation";
-import { useState } from "react";
+import { Fragment, useState } from "react";
 import { Button, Buttons } from "@/components/ui/button";
 import { Mark } from "@/components/ui/mark";
 import { momentText } from "@/components/ui/times";
@@ -12,6 +12,7 @@ import type { UserView } from "@/lib/views";
 import { ChangeUser } from "./change-user";
 import { ConfirmChange } from "./confirm-change";
 import { OneTimePassword } from "./one-time-password";
+import { namedCases } from "./role-words";
 
 type Ask = { user: UserView; what: "change" | "password" | "switch" };
 
@@ -73,10 +74,11 @@ export function UserTable({ users, ownId, timeZone }: { users: readonly UserView
 
 /** The role with what the account carries: the only cases it sees, and its last day. */
 function RoleCell({ user: { role, cases, endsOn, ended } }: { user: UserView }) {
+  const { refs, more } = namedCases(cases ?? []);
   return (
     <>
       {role}
-      {cases ? <span className="block max-w-[30ch] text-t2 text-ink-2">only {cases.length > 0 ? <span className="font-mono">{cases.map((one) => one.ref).join(", ")}</span> : "an empty list of cases"}</span> : null}
+      {cases ? <span className="block max-w-[30ch] text-t2 text-ink-2">only {cases.length > 0 ? refs.map((ref, i) => <Fragment key={ref}>{i > 0 ? ", " : ""}<span className="font-mono">{ref}</span></Fragment>) : "an empty list of cases"}{more > 0 ? ` and ${more} more` : ""}</span> : null}
       {endsOn ? <span className="block text-t2 text-ink-2">{ended ? "ended on" : "until"} {dayInWords(endsOn)}</span> : null}
     </>
   );
