@@ -19,7 +19,7 @@ export function BundleResult({ file, report, onAnother }: { file: File; report: 
           why={good && stranger ? "The bundle fits together in every part. Whether it is the workshop’s own shows when you compare a key’s fingerprint with the one in the mail or on the summary." : undefined}
           buttons={<><Button onClick={() => window.print()}><Icon name="print" />Print</Button><Button variant="text" onClick={onAnother}>Check another file</Button></>} />
       </Section>
-      <Section title="What was checked" note={`${withCommas(report.steps.length)} parts, in the order in which each leans on the one before.`}><StepList steps={report.steps} /></Section>
+      <Section title="What was checked" note={`${countOf(report.steps.length, "part")}, in the order in which each leans on the one before.`}><StepList steps={report.steps} /></Section>
       {facts.logKey || facts.heads.length > 0 ? (
         <Section title="To compare" note="With the mail of the daily seal, with the summary, or with an earlier bundle of this case.">
           <dl className="grid gap-3">

@@ -19,7 +19,7 @@ export function FileResult({ file, digests, onAnother }: { file: File; digests: 
   const exact = `${withCommas(digests.sizeBytes)} bytes`;
   return (
     <Section title="One file" note={<span className="[overflow-wrap:anywhere]">{file.name}</span>} strong>
-      <p className="max-w-[62ch] text-t4">It is no ZIP archive, so it was taken as a single file, such as a chip image. Compare its SHA-256 with the one on the summary, in the report or on the chip’s page.</p>
+      <p className="max-w-[62ch] text-t4">It is no ZIP archive, so it was taken as a single file, such as a chip image. Compare its <span className="whitespace-nowrap">SHA-256</span> with the one on the summary, in the report or on the chip’s page.</p>
       <dl className="my-4 grid gap-3">
         <div><dt className="text-t2 text-ink-2">Size</dt><dd>{sizeText(digests.sizeBytes) === exact ? exact : `${sizeText(digests.sizeBytes)}, ${exact}`}</dd></div>
         <div><dt className="text-t2 text-ink-2">CRC-32</dt><dd><code>{digests.crc32.toUpperCase()}</code></dd></div>

@@ -16,9 +16,9 @@ const SENTENCE: Record<string, string> = {
   "Ambiguous archive": "The archive can be read in two ways: its directory and its files do not say the same.",
   "Compression method not supported": "It is packed in a way that this check doesn't know.",
   "Invalid compressed data": "Its packed bytes can't be unpacked.",
-  "End of central directory not found": "Its directory is missing: it was cut short, or it is no ZIP archive.",
+  "End of central directory not found": "It has no directory: it was cut short, or it is no ZIP archive.",
   "Central directory header not found": "Its directory can't be read.",
-  "File format is not recognized": "Its directory can't be read.",
+  "File format is not recognized": "It has no directory: it was cut short, or it is no ZIP archive.",
   "Split zip file": "It is one part of several.",
 };
 
@@ -59,7 +59,7 @@ async function* contentOf(entry: Entry, readAt: ReadAt): AsyncGenerator<Uint8Arr
 
 function directoryEntry(entry: Entry): DirectoryEntry {
   return {
-    offset: entry.offset, rawBitFlag: entry.rawBitFlag, crc32: entry.signature ?? 0, packedBytes: entry.compressedSize, sizeBytes: entry.uncompressedSize, zip64: entry.zip64 === true,
+    offset: entry.offset ?? 0, rawBitFlag: entry.rawBitFlag ?? 0, crc32: entry.signature ?? 0, packedBytes: entry.compressedSize, sizeBytes: entry.uncompressedSize, zip64: entry.zip64 === true,
   };
 }
 
