@@ -19,9 +19,17 @@ export function agoText(iso: string, now: string): string {
   return `${countOf(Math.floor(minutes / 1440), "day")} ago`;
 }
 
-/** 1234.5 is "1.235 s", 12.3 is "12 ms". */
+/** 12.3 is "12 ms", 1234.5 is "1.234 s", 3725400 is "1 h 2 min 5 s". */
 export function lengthText(ms: number): string {
+  const seconds = Math.floor(ms / 1000);
+  if (seconds >= 120) return [seconds >= 3600 ? `${withCommas(Math.floor(seconds / 3600))} h` : "", `${Math.floor(seconds / 60) % 60} min`, `${seconds % 60} s`].filter(Boolean).join(" ");
   return ms >= 1000 ? `${withCommas(Math.floor(ms / 1000))}.${String(Math.floor(ms) % 1000).padStart(3, "0")} s` : `${Math.round(ms)} ms`;
+}
+
+/** Hours as a number: "under a minute", "12 minutes", "3 hours". */
+export function hoursText(hours: number): string {
+  const minutes = Math.ceil(hours * 60);
+  return minutes < 1 || hours * 3600 < 60 ? "under a minute" : minutes < 120 ? countOf(minutes, "minute") : `about ${countOf(Math.round(hours), "hour")}`;
 }
 
 export function clockSentence({ offsetMs, withinMs }: AuditOverview["clock"]): string {
@@ -43,8 +51,9 @@ export interface OverviewLine {
   mark: MarkKind;
   sentence: string;
   href: string;
-  /** when the latest of it was */
+  /** when the latest of it was, or since when all of it was looked at */
   at: string;
+  since?: true;
 }
 
 const logsText = (n: number) => `${withCommas(n)} ${n === 1 ? "log" : "logs"}`;
@@ -61,10 +70,11 @@ function logs({ logs: { total, findings, unchecked, oldestCheck }, waiting, now 
   return { mark: late ? "caution" : "ok", sentence: `${total === 1 ? "The one log checks out" : `All ${logsText(total)} check out`}${late ? `, but one was last checked ${agoText(oldestCheck, now)}` : ""}.`, at };
 }
 
-export function imagesSentence({ total, damaged, missing, oldest }: ImageCounts, now: string): { mark: MarkKind; sentence: string } {
+export function imagesSentence({ total, damaged, missing, oldest, keeping, keepingSentence }: ImageCounts, now: string): { mark: MarkKind; sentence: string } {
   if (total === 0) return { mark: "wait", sentence: "No image is stored yet." };
   const bad = [damaged > 0 ? `${withCommas(damaged)} damaged` : "", missing > 0 ? `${withCommas(missing)} missing` : ""].filter(Boolean);
   if (bad.length > 0) return { mark: "block", sentence: `Of ${countOf(total, "stored image")}, ${listText(bad)}. See where they are used.` };
+  if (keeping !== "keeping-up") return { mark: "caution", sentence: keepingSentence };
   return { mark: "ok", sentence: `${total === 1 ? "The one stored image equals its digest" : `All ${withCommas(total)} stored images equal their digests`}; the oldest look at one was ${oldest ? agoText(oldest, now) : "never"}.` };
 }
 
@@ -72,9 +82,11 @@ export function sealsSentence({ total, newest, today, faulty }: SealState): { ma
   if (total === 0 || !newest) return { mark: "wait", sentence: "No seal was made yet. Make one now, so that a copy can leave the house." };
   if (faulty.length > 0) return { mark: "block", sentence: `Something is wrong with the chain of seals at ${faulty.length === 1 ? "seal" : "seals"} ${listText(faulty.map(String))}.` };
   const { sent, waiting, givenUp } = newest.mailed;
-  const mail = givenUp > 0 ? "could not be mailed to everybody" : waiting > 0 ? "waits to be mailed" : sent > 0 ? "is mailed" : "was mailed to nobody";
+  const leftWith = newest.cause === "bundle" ? "left with a bundle" : newest.cause === "summary" ? "left with a summary" : null;
+  const mail = givenUp > 0 ? "could not be mailed to everybody" : waiting > 0 ? "waits to be mailed" : sent > 0 ? "is mailed" : leftWith ?? "was mailed to nobody, because no auditor has an account";
+  const kept = givenUp === 0 && today && (sent + waiting > 0 || leftWith !== null);
   const links = total === 1 ? "Seal 1 is the first" : `All ${withCommas(total)} seals link`;
-  return { mark: givenUp > 0 || !today ? "caution" : "ok", sentence: `${links}; seal ${newest.number}${today ? " of today" : ""} ${mail}${today ? "" : ", and today has none yet"}.` };
+  return { mark: kept ? "ok" : "caution", sentence: `${links}; seal ${newest.number}${today ? " of today" : ""} ${mail}${today ? "" : ", and today has none yet"}.` };
 }
 
 const one = (n: number, singular: string, plural: string) => (n === 1 ? singular : plural.replace("#", withCommas(n)));
@@ -83,9 +95,9 @@ const one = (n: number, singular: string, plural: string) => (n === 1 ? singular
 export function overviewLines(facts: AuditOverview): OverviewLine[] {
   const { handOuts, refusals, assessments, limits, clock, clockEntries, openSessions, waiting, now } = facts;
   const lines: OverviewLine[] = [
-    { key: "drives", title: "Logs", href: "/audit/drives", ...logs(facts) },
+    { key: "drives", title: "Logs", href: "/audit/drives", since: true, ...logs(facts) },
     ...(facts.seals ? [{ key: "seals", title: "Seals", href: "/audit/seals", at: facts.seals.newest?.at ?? "", ...sealsSentence(facts.seals) }] : []),
-    { key: "images", title: "Stored images", href: "/audit/images", at: facts.images.oldest ?? "", ...imagesSentence(facts.images, now) },
+    { key: "images", title: "Stored images", href: "/audit/images", since: true, at: facts.images.oldest ?? "", ...imagesSentence(facts.images, now) },
     { key: "assessments", title: "Assessments", href: "/audit/assessments", at: assessments.at, mark: waiting.length > 0 ? "block" : "ok",
       sentence: waiting.length > 0 ? one(waiting.length, "One drive waits for an assessment; work on it is closed.", "# drives wait for an assessment; work on them is closed.") : assessments.total === 0 ? "No drive waits, and none ever needed one." : `No drive waits. ${one(assessments.total, "One assessment is on record.", "# assessments are on record.")}` },
     { key: "hand-outs", title: "Hand-outs", href: "/audit/hand-outs", at: handOuts.at, mark: handOuts.total > 0 ? "note" : "wait", sentence: handOuts.total > 0 ? `Latest: ${handOuts.sentence}` : "No image, bundle or summary has left the house yet." },

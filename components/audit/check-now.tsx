@@ -17,5 +17,5 @@ export function CheckNow({ chainId, name }: { chainId: string; name: string }) {
     say({ text: check.ok ? `${name}: the log checks out.` : `${name}: ${check.findings.length === 1 ? "one finding" : `${check.findings.length} findings`}. See the list.` });
     router.refresh();
   });
-  return <Button size="small" disabled={busy} reason={refusal} onClick={() => void run()}>{busy ? "Checking" : "Check now"}<span className="sr-only">: {name}</span></Button>;
+  return <Button size="small" className="whitespace-nowrap" disabled={busy} reason={refusal} onClick={() => void run()}>{busy ? "Checking" : "Check now"}<span className="sr-only">: {name}</span></Button>;
 }

@@ -11,18 +11,17 @@ import { lengthText } from "./audit-words";
 import { LogPlace } from "./log-place";
 
 const column = columnsFor<AuditEntryRow | AssessmentRow>();
-const PHONE = { what: "bare l-full", time: "bare", who: "bare", case: "bare l-row", digest: "bare l-row", reason: "bare l-row", covered: "l-row", clock: "bare l-row", action: "bare l-top" };
+const PHONE = { what: "bare l-full", time: "bare", who: "bare", case: "bare l-row", digest: "bare l-row", to: "bare", reason: "bare l-row", covered: "l-row", clock: "bare l-row", action: "bare l-top" };
 
 export type EntryColumn = "action" | "what" | "to" | "reason" | "digest" | "clock" | "covered";
 
 const HEAD = { what: "What", to: "To", reason: "Reason", digest: "SHA-256", clock: "By how much", covered: "Findings it covered" } as const;
 
 function cell(kind: EntryColumn, row: AuditEntryRow | AssessmentRow): ReactNode {
-  if (row.trouble && kind === "reason") return <FindingLine kind="block">{row.trouble}</FindingLine>;
   switch (kind) {
     case "action": return actionWord(row.action);
     case "what": return row.what || row.sentence;
-    case "to": return row.to;
+    case "to": return row.to ? <><span className="hidden phone:inline">to </span>{row.to}</> : null;
     case "reason": return <span className="block max-w-[60ch] whitespace-pre-wrap [overflow-wrap:anywhere]">{row.reason}</span>;
     case "digest": return row.digest ? <Digest sha256={row.digest} /> : null;
     case "clock": return <>{row.clockBehindMs === null ? null : <span className="block">clock back by {lengthText(row.clockBehindMs)}</span>}{row.headBehind === null ? null : <span className="block">head had been turned back to entry {row.headBehind}</span>}</>;
@@ -53,7 +52,7 @@ export function EntryList({ list, caption, columns, sort, order, timeZone, empty
       column.accessor("at", { id: "time", header: "Time", cell: ({ row }) => <span className="whitespace-nowrap font-normal">{row.original.at ? exactText(row.original.at, timeZone) : "unknown time"}</span> }),
       column.accessor("who", { id: "who", header: "Who", cell: ({ row }) => <>{row.original.who || "unknown"}{row.original.role && row.original.role !== "system" ? <span className="text-ink-3">, {row.original.role}</span> : null}</> }),
       ...(wanted.split(" ") as EntryColumn[]).map((kind) => column.display({ id: kind, header: own[kind] ?? (kind === "action" ? "Step" : HEAD[kind]), enableSorting: kind === "action", cell: ({ row }) => cell(kind, row.original) })),
-      column.accessor("caseRef", { id: "case", header: "Log", cell: ({ row }) => <LogPlace place={row.original} seq={row.original.seq} /> }),
+      column.accessor("caseRef", { id: "case", header: "Log", cell: ({ row }) => <><LogPlace place={row.original} seq={row.original.seq} />{row.original.trouble ? <FindingLine kind="block">{row.original.trouble}</FindingLine> : null}</> }),
     ]);
   }, [wanted, headText, timeZone]);
   return (

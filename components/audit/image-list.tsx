@@ -12,6 +12,18 @@ import { sizeText } from "@/lib/core/quantity";
 const column = columnsFor<StoredImageRow>();
 const STATE = { sound: { mark: "ok", word: "Equals its digest" }, damaged: { mark: "block", word: "Damaged" }, missing: { mark: "block", word: "Missing" } } as const;
 
+/** "Case 26-0042, Drive A, Orig U12" with all of its reads in one line. */
+function byChip(uses: StoredImageRow["uses"]): { chipId: string; place: string; reads: string[] }[] {
+  const chips = new Map<string, { chipId: string; place: string; reads: string[] }>();
+  for (const { chipId, name } of uses) {
+    const words = name.split(", ");
+    const chip = chips.get(chipId) ?? { chipId, place: words.slice(0, 3).join(", "), reads: [] };
+    chip.reads.push(words.slice(3).join(", "));
+    chips.set(chipId, chip);
+  }
+  return [...chips.values()];
+}
+
 /** Stored images by when their bytes were last read whole, the longest ago first. */
 export function ImageList({ list, sort, order, timeZone, empty }: {
   list: { items: StoredImageRow[]; total: number; page: number; pageSize: number };
@@ -28,7 +40,7 @@ export function ImageList({ list, sort, order, timeZone, empty }: {
     column.accessor("storedAt", { id: "stored", header: "Stored", cell: ({ row }) => <span className="whitespace-nowrap">{exactText(row.original.storedAt, timeZone)}</span> }),
     column.display({
       id: "uses", header: "Used by", enableSorting: false, cell: ({ row: { original: { uses, useCount } } }) => (
-        <>{uses.map((use) => <span key={`${use.chipId}${use.name}`} className="block"><Link href={`/chips/${use.chipId}`}>{use.name}</Link></span>)}
+        <>{byChip(uses).map(({ chipId, place, reads }) => <span key={chipId} className="block"><Link href={`/chips/${chipId}`}>{place}</Link>: {reads.join("; ")}</span>)}
           {useCount > uses.length ? <span className="block text-ink-2">and {useCount - uses.length} more</span> : useCount === 0 ? <span className="text-ink-2">no read</span> : null}</>
       ),
     }),

@@ -26,7 +26,7 @@ export function SessionList({ list, sort, order, timeZone, empty }: Shown<Sessio
     session.accessor("who", { id: "who", header: "Who", cell: ({ row }) => person(row.original) }),
     session.accessor("from", { id: "from", header: "Signed in", cell: ({ row }) => time(row.original.from, timeZone, "") }),
     session.accessor("lastStep", { id: "last", header: "Last step", cell: ({ row }) => time(row.original.lastStep, timeZone, "") }),
-    session.accessor("ended", { id: "ended", header: "Ended", cell: ({ row }) => time(row.original.ended, timeZone, row.original.how === "open" ? "still open" : "ran out") }),
+    session.accessor("ended", { id: "ended", header: "Ended", cell: ({ row }) => time(row.original.ended, timeZone, "") }),
     session.display({ id: "how", header: "How", enableSorting: false, cell: ({ row }) => <FindingLine kind={row.original.how === "open" ? "run" : "done"}>{END_WORD[row.original.how]}</FindingLine> }),
   ]), [timeZone]);
   return <DataTable caption="Sessions" columns={columns} list={list} sort={sort} order={order} rowId={(row) => `${row.who} ${row.from}`} empty={empty} phone={{ how: "bare l-full" }} />;

@@ -9,7 +9,7 @@ const LISTS = [
 /** The three lists about signing in. */
 export function SignInLists({ current }: { current: (typeof LISTS)[number]["key"] }) {
   return (
-    <nav aria-label="Lists about signing in" className="no-print pt-5">
+    <nav aria-label="Lists about signing in" className="no-print pb-4">
       <span className="seg">{LISTS.map(({ key, label, href }) => <Link key={key} href={href} aria-current={key === current ? "true" : undefined}>{label}</Link>)}</span>
     </nav>
   );

@@ -85,7 +85,7 @@ export interface StoredImageRow {
   storedAt: string;
   /** when its bytes were last read whole; null since it was stored */
   checkedAt: string | null;
-  /** at most the first six, "Case 26-0042, Drive A, Orig U12, Read 2" */
+  /** at most the first twelve, "Case 26-0042, Drive A, Orig U12, Read 2" */
   uses: { name: string; chipId: string }[];
   useCount: number;
 }
@@ -96,6 +96,14 @@ export interface ImageCounts {
   missing: number;
   /** when the bytes that were verified longest ago were verified; null without an image */
   oldest: string | null;
+  neverChecked: number;
+  /** whether the reading again keeps up with its settings, and that as a sentence */
+  keeping: "off" | "stopped" | "behind" | "keeping-up";
+  keepingSentence: string;
+  /** days within which each is read again, 0 for never; MiB a second at most; hours that one reading of all takes */
+  days: number;
+  mebibytesPerSecond: number;
+  hours: number;
 }
 
 export interface AuditSealRow {

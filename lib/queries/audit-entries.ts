@@ -1,13 +1,17 @@
+import { createHash } from "node:crypto";
 import { QueryTypes } from "sequelize";
 import { casesOf, notFound } from "@/lib/commands/refuse";
 import { dayStart, ENTRY_LISTS, type EntryList, readEntry, WORKSHOP_LISTS } from "@/lib/core/audit";
 import type { AuditEntryRow, ChainPlace } from "@/lib/core/audit-rows";
+import { signedBytes } from "@/lib/core/custody";
 import { readCaseRef } from "@/lib/core/case-number";
 import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import type { AuditInput } from "@/lib/schemas/audit";
 import { connection } from "@/models";
+import { verifySignature } from "@/storage";
 import { allowAudit } from "./audit-rights";
+import { logKeys } from "./custody";
 import { seenBy } from "./seen-by";
 
 export interface EntryPage {
@@ -65,6 +69,8 @@ interface Row {
   action: string;
   body: Buffer;
   hash: Buffer;
+  signature: Buffer;
+  keyId: string;
   driveId: string | null;
   position: number | null;
   caseId: string | null;
@@ -78,15 +84,25 @@ export async function auditEntries(actor: Actor, list: EntryList, input: AuditIn
   const [{ n }] = await connection().query<{ n: number }>(`SELECT COUNT(*) AS n ${FROM} WHERE ${condition}`, { replacements, type: QueryTypes.SELECT });
   const direction = input.order === "asc" ? "ASC" : "DESC";
   const rows = await connection().query<Row>(
-    `SELECT e.chain_id AS chain, e.seq, e.action, e.body, e.hash, d.id AS driveId, d.position, c.id AS caseId, c.ref ${FROM} WHERE ${condition}
+    `SELECT e.chain_id AS chain, e.seq, e.action, e.body, e.hash, e.signature, e.key_id AS keyId, d.id AS driveId, d.position, c.id AS caseId, c.ref ${FROM} WHERE ${condition}
      ORDER BY ${SORT[input.sort] ?? at} ${direction}, ${at} ${direction}, e.chain_id, e.seq ${direction} LIMIT :limit OFFSET :offset`,
     { replacements: { ...replacements, limit: input.pageSize, offset: (input.page - 1) * input.pageSize }, type: QueryTypes.SELECT },
   );
-  return { items: await seenBy(actor, rows.map(entryRow)), total: Number(n), page: input.page, pageSize: input.pageSize };
+  const keys = await logKeys();
+  return { items: await seenBy(actor, rows.map((row) => entryRow(row, keys))), total: Number(n), page: input.page, pageSize: input.pageSize };
 }
 
-function entryRow(row: Row): AuditEntryRow {
-  return { ...readEntry(row.body.toString("utf8"), row.action), ...placeOfChain(row), seq: row.seq, hash: row.hash.toString("hex") };
+function entryRow(row: Row, keys: ReadonlyMap<string, string>): AuditEntryRow {
+  const reading = readEntry(row.body.toString("utf8"), row.action);
+  return { ...reading, trouble: reading.trouble ?? forged(row, keys), ...placeOfChain(row), seq: row.seq, hash: row.hash.toString("hex") };
+}
+
+/** A row stands here by itself, without its neighbours: its own hash and signature are what can be held against it. */
+function forged({ body, hash, signature, keyId }: Row, keys: ReadonlyMap<string, string>): string | null {
+  if (!createHash("sha256").update(body).digest().equals(hash)) return "Its text was changed: it doesn't give the hash beside it.";
+  const pem = keys.get(keyId);
+  if (pem === undefined) return "It is signed with a key that the workshop never introduced.";
+  return verifySignature(pem, signedBytes(body), signature) ? null : "Its signature doesn't fit its text.";
 }
 
 export function placeOfChain(row: { chain: string; driveId: string | null; position: number | null; caseId: string | null; ref: string | null }): ChainPlace {

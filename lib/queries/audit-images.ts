@@ -6,12 +6,13 @@ import type { AuditInput } from "@/lib/schemas/audit";
 import { connection } from "@/models";
 import { allowAudit } from "./audit-rights";
 import { imagesOfDrives, usesOfImages } from "./image-uses";
+import { scrubState } from "./scrub-state";
 
 /** the last time all of its bytes were seen to be right: a check, or the upload itself */
 const VERIFIED = "COALESCE(i.checked_at, i.stored_at)";
 const SORT: Record<string, string> = { checked: VERIFIED, stored: "i.stored_at", size: "i.size_bytes", state: "i.state" };
 const STATES = ["sound", "damaged", "missing"];
-const USES = 6;
+const USES = 12;
 
 function scope(actor: Actor): { where: string; cases: readonly string[] | null } {
   allowAudit(actor);
@@ -49,12 +50,8 @@ export async function auditImages(actor: Actor, input: AuditInput): Promise<{ it
   return { items, total: Number(n), page: input.page, pageSize: input.pageSize };
 }
 
-/** How many there are, how many are not whole, and since when the one unverified for longest is. */
+/** How many there are, how many are not whole, since when the one unverified for longest is, and how the reading again goes. */
 export async function imageCounts(actor: Actor): Promise<ImageCounts> {
-  const { where, cases } = scope(actor);
-  const [row] = await connection().query<{ total: number; damaged: number; missing: number; oldest: Date | null }>(
-    `SELECT COUNT(*) AS total, COALESCE(SUM(i.state = 'damaged'), 0) AS damaged, COALESCE(SUM(i.state = 'missing'), 0) AS missing, MIN(${VERIFIED}) AS oldest FROM images i WHERE ${where}`,
-    { replacements: { cases }, type: QueryTypes.SELECT },
-  );
-  return { total: Number(row.total), damaged: Number(row.damaged), missing: Number(row.missing), oldest: row.oldest?.toISOString() ?? null };
+  const { images, states, oldestAt, neverChecked, state, sentence, days, mebibytesPerSecond, hours } = await scrubState(actor);
+  return { total: images, damaged: states.damaged, missing: states.missing, oldest: oldestAt, neverChecked, keeping: state, keepingSentence: sentence, days, mebibytesPerSecond, hours };
 }

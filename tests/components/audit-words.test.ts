@@ -10,8 +10,9 @@ const seal = (more: Partial<AuditSealRow> = {}): AuditSealRow => ({
   number: 41, at: "2026-11-04T02:00:00.000000Z", cause: "daily", chains: 12, root: "ab".repeat(32), prev: "cd".repeat(32), sha256: "ef".repeat(32), keyId: "01".repeat(32), faults: [], mailed: { sent: 1, waiting: 0, givenUp: 0 }, ...more,
 });
 const none = { at: "", sentence: "", total: 0 };
+const images = { total: 30, damaged: 0, missing: 0, oldest: "2026-11-01T11:00:00.000Z", neverChecked: 0, keeping: "keeping-up", keepingSentence: "", days: 7, mebibytesPerSecond: 20, hours: 1 } as const;
 const clean = (more: Partial<AuditOverview> = {}): AuditOverview => ({
-  now: NOW, logs: { total: 12, clean: 12, findings: 0, unchecked: 0, oldestCheck: "2026-11-04T02:10:00.000Z" }, waiting: [], images: { total: 30, damaged: 0, missing: 0, oldest: "2026-11-01T11:00:00.000Z" },
+  now: NOW, logs: { total: 12, clean: 12, findings: 0, unchecked: 0, oldestCheck: "2026-11-04T02:10:00.000Z" }, waiting: [], images,
   seals: { total: 41, newest: seal(), today: true, faulty: [] }, clock: { offsetMs: 0.4, withinMs: 1 }, handOuts: none, refusals: none, assessments: none, clockEntries: none, limits: none, openSessions: 1, ...more,
 });
 const waiting: WaitingDrive = { chainId: "x", workshop: false, driveId: "x", letter: "B", caseId: "y", caseRef: "26-0042", checkedAt: NOW, findings: [], count: 1 };
@@ -21,7 +22,7 @@ describe("the verdict", () => {
     expect(auditVerdict(clean())).toMatchObject({ mark: "ok", sentence: "All 12 logs check out; the oldest look at a stored image was 3 days ago; seal 41 of today is mailed." });
   });
   it("names what is wrong before anything else, and where", () => {
-    const found = auditVerdict(clean({ logs: { total: 12, clean: 11, findings: 1, unchecked: 0, oldestCheck: NOW }, waiting: [waiting], images: { total: 30, damaged: 2, missing: 0, oldest: NOW } }));
+    const found = auditVerdict(clean({ logs: { total: 12, clean: 11, findings: 1, unchecked: 0, oldestCheck: NOW }, waiting: [waiting], images: { ...images, damaged: 2 } }));
     expect(found).toMatchObject({ mark: "block", sentence: "1 of 12 logs doesn't check out. Drive B of case 26-0042 waits for an assessment." });
     expect(found.why).toContain("under Logs, Stored images and Assessments");
   });
@@ -35,6 +36,9 @@ describe("the verdict", () => {
   });
   it("says nothing of sign-ins to whom they are not shown", () => {
     expect(overviewLines(clean({ limits: null, openSessions: null })).map((line) => line.key)).not.toContain("sign-ins");
+  });
+  it("says when images are no longer read again as they should be", () => {
+    expect(auditVerdict(clean({ images: { ...images, keeping: "stopped", keepingSentence: "Reading stored images again waits: the disk is away." } }))).toMatchObject({ mark: "caution", sentence: "Reading stored images again waits: the disk is away." });
   });
   it("marks a clock that is off", () => {
     expect(auditVerdict(clean({ clock: { offsetMs: -4000, withinMs: 3 } }))).toMatchObject({ mark: "caution", sentence: expect.stringContaining("4.000 s behind the app's") as string });
@@ -53,7 +57,7 @@ describe("the chain of seals", () => {
 });
 
 it("writes lengths and ages as people say them", () => {
-  expect([12.4, 999, 1000, 1234.9, 65_000].map(lengthText)).toEqual(["12 ms", "999 ms", "1.000 s", "1.234 s", "65.000 s"]);
+  expect([12.4, 999, 1000, 1234.9, 65_000, 125_000, 3_725_400].map(lengthText)).toEqual(["12 ms", "999 ms", "1.000 s", "1.234 s", "65.000 s", "2 min 5 s", "1 h 2 min 5 s"]);
   expect(["2026-11-04T11:59:40.000Z", "2026-11-04T11:59:00.000Z", "2026-11-04T09:30:00.000Z", "2026-11-02T11:00:00.000Z"].map((at) => agoText(at, NOW))).toEqual(["just now", "1 minute ago", "2 hours ago", "2 days ago"]);
   expect(clockSentence({ offsetMs: 0.4, withinMs: 1 })).toBe("The clocks of app and database agree.");
 });

@@ -2,8 +2,10 @@ import { execFileSync } from "node:child_process";
 import { describe, expect, it } from "vitest";
 import { appendEntry } from "@/lib/commands/append-entry";
 import { assessLog } from "@/lib/commands/assess-log";
+import { checkChain } from "@/lib/commands/check-chain";
 import { createBenchToken } from "@/lib/commands/create-bench-token";
 import { handOutImage } from "@/lib/commands/hand-out-image";
+import { makeSeal } from "@/lib/commands/make-seal";
 import { revokeApproval } from "@/lib/commands/revoke-approval";
 import { AUDIT_LISTS, WORKSHOP_LISTS } from "@/lib/core/audit";
 import { SYSTEM, WORKSHOP_CHAIN, type Actor } from "@/lib/core/words";
@@ -13,12 +15,13 @@ import { auditDrives, chainCounts } from "@/lib/queries/audit-drives";
 import { auditEntries, auditPersons } from "@/lib/queries/audit-entries";
 import { auditFile, auditPage } from "@/lib/queries/audit-files";
 import { auditImages } from "@/lib/queries/audit-images";
+import { auditSeals, sealState } from "@/lib/queries/audit-seals";
 import { auditSessions, auditTokens } from "@/lib/queries/audit-sign-ins";
 import { auditInput, type AuditInput } from "@/lib/schemas/audit";
 import { ChainCheck, CustodyHead, inTransaction, Session } from "@/models";
 import { readNamed, refusal } from "../support/bench-steps";
 import { approve, makeApprovedBench, makeChip, makeReadyBench, makeUser, sha256 } from "../support/factory";
-import { changeBody } from "../support/tamper";
+import { changeBody, withoutTriggers } from "../support/tamper";
 
 const asked = (more: Partial<AuditInput> = {}) => auditInput.parse({ pageSize: 200, ...more });
 const only = (actor: Actor, ...cases: string[]): Actor => ({ ...actor, cases });
@@ -230,7 +233,8 @@ describe("sign-ins and the clock", () => {
     const undo = await changeBody(driveId, seq, (body) => Buffer.from(body.toString().replace(/"facts":\{/, '"facts":{"clockBehindMs":1234,')));
     try {
       const { items } = await auditEntries(bench.lead, "clock", asked({ q: bench.chip.ref }));
-      expect(items).toMatchObject([{ seq, clockBehindMs: 1234, headBehind: null }]);
+      // the fact was put in by somebody without the key: it is shown, and what is wrong with it
+      expect(items).toMatchObject([{ seq, clockBehindMs: 1234, headBehind: null, trouble: expect.stringContaining("text was changed") as string }]);
     } finally {
       await undo();
     }
@@ -240,5 +244,56 @@ describe("sign-ins and the clock", () => {
     const clock = await clockNow(bench.lead);
     expect(Math.abs(clock.offsetMs)).toBeLessThan(1000);
     expect(clock.withinMs).toBeLessThan(500);
+  });
+});
+
+describe("the chain of seals", () => {
+  it("names the seal that was changed and the one that no longer links to it, and a gap", async () => {
+    const auditor = await makeUser("auditor");
+    const made: number[] = [];
+    for (let i = 0; i < 3; i += 1) made.push((await makeSeal(auditor, "asked")).number);
+    const rows = async () => (await auditSeals(auditor, asked())).items;
+    expect((await rows()).slice(0, 3)).toMatchObject(made.toReversed().map((number) => ({ number, cause: "asked", faults: [] })));
+    expect(await sealState(auditor)).toMatchObject({ today: true, faulty: [], newest: { number: made[2], mailed: { waiting: expect.any(Number) as number } } });
+    // the second one's text says other logs than it did
+    const change = (from: string, to: string) => withoutTriggers(["seals"], (db) => db.query("UPDATE seals SET text = REPLACE(text, ?, ?) WHERE number = ?", [from, to, made[1]]));
+    await change("twinread-seal/1", "twinread-seal/2");
+    try {
+      const faults = new Map((await rows()).map((row) => [row.number, row.faults.join(" ")]));
+      expect(faults.get(made[1])).toContain("not a seal");
+      expect(faults.get(made[2])).toContain(`does not carry the SHA-256 of seal ${made[1]}`);
+      expect((await sealState(auditor)).faulty).toEqual([made[1], made[2]]);
+      expect((await csv(auditor, "seals")).find((row) => row.number === String(made[1]))?.faults).toContain("not a seal");
+    } finally {
+      await change("twinread-seal/2", "twinread-seal/1");
+    }
+    const copy = await withoutTriggers(["seals"], async (db) => {
+      const [row] = await db.query<Record<string, unknown>[]>("SELECT * FROM seals WHERE number = ?", [made[1]]);
+      await db.query("DELETE FROM seals WHERE number = ?", [made[1]]);
+      return row;
+    });
+    try {
+      expect((await rows()).find((row) => row.number === made[2])?.faults).toEqual([`Seal ${made[1]} is missing before it.`]);
+      expect((await sealState(auditor)).faulty).toEqual([made[2]]);
+    } finally {
+      await withoutTriggers(["seals"], (db) => db.query(`INSERT INTO seals (${Object.keys(copy).join(", ")}) VALUES (${Object.keys(copy).map(() => "?").join(", ")})`, Object.values(copy)));
+    }
+    expect((await sealState(auditor)).faulty).toEqual([]);
+  });
+});
+
+describe("a check that somebody asks for", () => {
+  it("is written down for the list, and is refused for a case that is not theirs", async () => {
+    const bench = await makeReadyBench();
+    const other = await makeReadyBench();
+    const auditor = await makeUser("auditor");
+    expect(await checkChain(auditor, bench.chip.driveId)).toMatchObject({ ok: true });
+    expect((await auditDrives(auditor, asked({ q: bench.chip.ref }))).items[0].check).toMatchObject({ findings: 0 });
+    expect(await checkChain(auditor, WORKSHOP_CHAIN)).toMatchObject({ entries: expect.any(Number) as number });
+    const limited = only(auditor, bench.chip.caseId);
+    await checkChain(limited, bench.chip.driveId);
+    for (const chain of [other.chip.driveId, WORKSHOP_CHAIN, crypto.randomUUID()]) expect(await refusal(checkChain(limited, chain))).toMatchObject({ status: 404 });
+    expect(await refusal(checkChain(auditor, crypto.randomUUID()))).toMatchObject({ status: 404 });
+    expect(await refusal(checkChain(bench.technician, bench.chip.driveId))).toMatchObject({ status: 403 });
   });
 });

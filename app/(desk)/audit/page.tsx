@@ -11,7 +11,7 @@ export default async function AuditOverviewPage() {
   const { actor, session } = await signedIn();
   const facts = await orNotFound(() => auditOverview(actor));
   return (
-    <AuditPage session={session} current={null} title="Audit" note="Is anything wrong, and where. Everything here comes from the logs themselves.">
+    <AuditPage session={session} current={null} title="Audit" note="Is anything wrong, and where.">
       <Overview facts={facts} timeZone={session.timeZone} />
     </AuditPage>
   );

@@ -27,7 +27,7 @@ export default async function AuditClockPage({ searchParams }: { searchParams: P
   return (
     <AuditPage session={session} current="clock" title="Clock" note="Times in the logs are the database’s. The order of truth is the entry’s number, never its time.">
       <Section strong title="Right now" note={exactText(clock.measuredAt, session.timeZone)}>
-        <Verdict mark={clockMark(clock)} sentence={clockSentence(clock)} why={`Measured just now: ${clock.offsetMs < 0 ? "−" : "+"}${lengthText(Math.abs(clock.offsetMs))}, known to within ${lengthText(Math.max(1, clock.withinMs))}, the way there and back taken off.`} />
+        <Verdict mark={clockMark(clock)} sentence={clockSentence(clock)} why={`Measured just now, the database against the app: ${lengthText(Math.abs(clock.offsetMs))}${Math.abs(clock.offsetMs) < 0.5 ? "" : clock.offsetMs < 0 ? " behind" : " ahead"}, known to within ${lengthText(Math.max(1, clock.withinMs))}, the way there and back taken off.`} />
       </Section>
       <Section title="Turned back" note="Entries written while the clock, or the log’s head, had been turned back.">
         <AuditFilter list="clock" path="/audit/clock" input={input} total={list.total} words={{ label: "Words or case" }} days />

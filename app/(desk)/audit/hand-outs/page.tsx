@@ -24,7 +24,7 @@ export default async function AuditHandOutsPage({ searchParams }: { searchParams
     : <Empty title="Nothing has left the house yet.">Each image, bundle and summary that leaves is an entry before its first byte does.</Empty>;
   return (
     <AuditPage session={session} current="hand-outs" title="Hand-outs" note="What left the house, to whom and why: images, case bundles, summaries.">
-      <Section first title="Entries" note="From the logs of the drives, the newest first.">
+      <Section title="Entries" note="From the logs of the drives, the newest first.">
         <AuditFilter list="hand-outs" path="/audit/hand-outs" input={input} total={list.total} words={{ label: "Words or case" }} what={{ label: "Step", options: STEPS }} who={who} days />
         <EntryList list={list} caption="Hand-outs" columns={["action", "what", "digest", "to", "reason"]} sort={input.sort} order={input.order} timeZone={session.timeZone} empty={empty} />
       </Section>

@@ -24,7 +24,7 @@ export default async function AuditRefusalsPage({ searchParams }: { searchParams
     : <Empty title="No approval was refused, sent back or revoked.">A refusal by a rule is an entry too, with the rule.</Empty>;
   return (
     <AuditPage session={session} current="refusals" title="Refusals" note="Approvals that a rule refused, that a lead sent back, or that fell.">
-      <Section first title="Entries" note="From the logs of the drives, the newest first.">
+      <Section title="Entries" note="From the logs of the drives, the newest first.">
         <AuditFilter list="refusals" path="/audit/refusals" input={input} total={list.total} words={{ label: "Words or case" }} what={{ label: "Step", options: STEPS }} who={who} days />
         <EntryList list={list} caption="Refusals" columns={["action", "what", "digest", "reason"]} sort={input.sort} order={input.order} timeZone={session.timeZone} empty={empty} heads={{ what: "Chip", digest: "Image", reason: "Rule or reason" }} />
       </Section>

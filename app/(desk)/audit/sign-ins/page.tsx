@@ -21,8 +21,8 @@ export default async function AuditSignInsPage({ searchParams }: { searchParams:
   const empty = isFiltered(input) ? <Empty title="No session fits this choice." action={<ButtonLink href="/audit/sign-ins">Show all sessions</ButtonLink>} /> : <Empty title="Nobody has signed in yet." />;
   return (
     <AuditPage session={session} current="sign-ins" title="Sign-ins" note="Who was signed in, from when to when. Passwords and tokens are kept as hashes and shown to nobody.">
-      <SignInLists current="sessions" />
-      <Section first title="Sessions" note="Opened with a right password, the latest first.">
+      <Section title="Sessions" note="Opened with a right password, the latest first.">
+        <SignInLists current="sessions" />
         <AuditFilter list="sessions" path="/audit/sign-ins" input={input} total={list.total} words={{ label: "Name" }} what={{ label: "State", options: STATES }} days />
         <SessionList list={list} sort={input.sort} order={input.order} timeZone={session.timeZone} empty={empty} />
       </Section>

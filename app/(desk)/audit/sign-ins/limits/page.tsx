@@ -20,8 +20,8 @@ export default async function AuditLimitsPage({ searchParams }: { searchParams: 
   const empty = isFiltered(input) ? <Empty title="No entry fits this choice." action={<ButtonLink href="/audit/sign-ins/limits">Show all</ButtonLink>} /> : <Empty title="No sign-in was ever refused for too many tries.">The first try past a limit is an entry; those after it leave no trace of their own.</Empty>;
   return (
     <AuditPage session={session} current="sign-ins" title="Sign-ins" note="Where somebody tried too many passwords. The account is kept as a digest, because people mistype passwords into that field.">
-      <SignInLists current="limits" />
-      <Section first title="Refused for too many tries" note="From the workshop's log, the newest first.">
+      <Section title="Refused for too many tries" note="From the workshop's log, the newest first.">
+        <SignInLists current="limits" />
         <AuditFilter list="limits" path="/audit/sign-ins/limits" input={input} total={list.total} words={{ label: "Address" }} days />
         <EntryList list={list} caption="Sign-ins refused for too many tries" columns={["what", "digest"]} heads={{ what: "From", digest: "Account, as SHA-256" }} sort={input.sort} order={input.order} timeZone={session.timeZone} empty={empty} />
       </Section>

@@ -21,8 +21,8 @@ export default async function AuditTokensPage({ searchParams }: { searchParams: 
   const empty = isFiltered(input) ? <Empty title="No token fits this choice." action={<ButtonLink href="/audit/sign-ins/tokens">Show all tokens</ButtonLink>} /> : <Empty title="No bench token was made yet.">A technician makes one for a bench station, on the account page.</Empty>;
   return (
     <AuditPage session={session} current="sign-ins" title="Sign-ins" note="Bench stations sign in with tokens: made, last used and withdrawn when.">
-      <SignInLists current="tokens" />
-      <Section first title="Bench tokens" note="By name; the token itself is kept as a hash.">
+      <Section title="Bench tokens" note="By name; the token itself is kept as a hash.">
+        <SignInLists current="tokens" />
         <AuditFilter list="tokens" path="/audit/sign-ins/tokens" input={input} total={list.total} words={{ label: "Token or name" }} what={{ label: "State", options: STATES }} days />
         <TokenList list={list} sort={input.sort} order={input.order} timeZone={session.timeZone} empty={empty} />
       </Section>
