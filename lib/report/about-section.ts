@@ -10,7 +10,7 @@ export function opening(sheet: Sheet, { record }: ReportFacts): void {
   sheet.opening([
     ["Case", code(record.ref, { bold: true, size: 10 })],
     ["For", plain(record.customer.name)],
-    ["Received", plain(dayText(record.receivedAt))],
+    ["Received", plain(record.receivedAt ? dayText(record.receivedAt) : "not received yet")],
     ["Bundle made", plain(`${momentText(record.madeAt)} UTC`)],
   ]);
 }
@@ -64,7 +64,7 @@ export function parties(sheet: Sheet, { record, logs }: ReportFacts): void {
     ["Phone", customer.phone ? [plain(customer.phone)] : null],
     ["Contact", customer.contact ? [plain(customer.contact)] : null],
     ["Workshop", [strong(record.workshop)]],
-    ["Received", [plain(`${momentText(record.receivedAt)}, recorded by ${record.recordedBy.name}`)]],
+    ["Received", [plain(`${record.receivedAt ? momentText(record.receivedAt) : "not yet"}, recorded by ${record.recordedBy.name}`)]],
     ["Damage", [plain(record.damage)]],
     ["Note", record.note ? [plain(record.note)] : null],
     ["Due", record.dueOn ? [plain(dayText(record.dueOn))] : null],

@@ -87,7 +87,8 @@ export interface ReportCase {
   policy: Policy;
   ref: string;
   id: string;
-  receivedAt: string;
+  /** null while the drives are still on their way */
+  receivedAt: string | null;
   recordedBy: PersonView;
   damage: string;
   note: string | null;
