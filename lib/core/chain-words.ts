@@ -10,6 +10,7 @@ export const CHAIN_PROBLEMS: Record<ChainProblem, string> = {
   "time-went-back": "The entry claims a time before the one before it.",
   prev: "The entry does not continue the one before it: one of the two was changed, or one is missing.",
   "stored-hash": "The entry is not the one whose digest was stored: it was changed.",
+  "stored-beside": "The entry stands in the database under another number, kind or link than it names itself.",
   "unknown-key": "The entry is signed with a key that no log introduces.",
   "old-key": "The entry is signed with a key that had been replaced: whoever kept it may have written this.",
   signature: "The signature does not fit the entry: it was changed, or somebody else wrote it.",

@@ -38,7 +38,7 @@ export function signedBytes(body: string | Uint8Array): Uint8Array<ArrayBuffer> 
 }
 
 export type ChainProblem =
-  | "not-readable" | "not-canonical" | "wrong-shape" | "other-chain" | "sequence" | "time-went-back" | "prev" | "stored-hash"
+  | "not-readable" | "not-canonical" | "wrong-shape" | "other-chain" | "sequence" | "time-went-back" | "prev" | "stored-hash" | "stored-beside"
   | "unknown-key" | "old-key" | "signature" | "head" | "head-was-behind" | "tail-missing" | "could-not-check";
 
 export interface ChainFinding {
@@ -56,6 +56,8 @@ export interface ChainLine {
   /** base64 */
   signature: string;
   keyId: string;
+  /** what the database says of the entry beside its body, where it comes from one */
+  beside?: { seq: number; prev: string; action: string };
 }
 
 export interface ChainTools {
@@ -135,6 +137,14 @@ async function checkSignature(line: ChainLine, tools: ChainTools, report: Report
   return false;
 }
 
+/** Entries are looked up by these: one that stands under another number or name than its own would not be found. */
+function checkBeside({ beside }: ChainLine, body: Partial<CustodyBody>, report: Report): void {
+  if (!beside) return;
+  for (const name of ["seq", "action", "prev"] as const) {
+    if (beside[name] !== body[name]) return report("stored-beside", `${name} ${text(body[name])}`, `${name} ${text(beside[name])}`);
+  }
+}
+
 /** The newest key that has signed in this chain so far; only a signature that holds moves it on. */
 interface NewestKey {
   order: number;
@@ -193,6 +203,7 @@ export async function checkChain(
       const behind = body.facts?.headBehind;
       if (behind !== undefined) report("head-was-behind", `the head at entry ${expectedSeq - 1}`, `at entry ${text(behind)}`);
       if (previous.hash !== null && body.prev !== previous.hash) report("prev", previous.hash, text(body.prev));
+      checkBeside(line, body, report);
     }
     try {
       next.hash = await tools.sha256(line.body);

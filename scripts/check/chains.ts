@@ -1,22 +1,17 @@
 import { createHash } from "node:crypto";
 import type { Transaction } from "sequelize";
+import { chainLine } from "@/lib/queries/custody";
 import { CHAIN_PROBLEMS } from "@/lib/core/chain-words";
-import { checkChain } from "@/lib/core/custody";
+import { checkChain, signedBytes } from "@/lib/core/custody";
 import { keyOrder } from "@/lib/core/keyring";
 import { WORKSHOP_CHAIN } from "@/lib/core/words";
 import { CustodyEntry, CustodyHead } from "@/models";
 import { verifySignature } from "@/storage";
 import { keyring, type Keyring } from "@/lib/queries/keyring";
+import type { Ledger, LoggedSeal } from "./ledger";
+import { noteEntry, type Logged, newLogged } from "./logged";
 import type { Places } from "./places";
 import type { Damage, StoreReport } from "./report";
-
-/** What the log says was stored or approved: the facts that a row must agree with. */
-export interface Logged {
-  reads: Map<string, { chain: string; seq: number; sha256: string; sizeBytes: number; crc32: string }>;
-  approvals: Map<string, { chain: string; seq: number; sha256: string }>;
-  /** ids of revoked approvals */
-  revoked: Set<string>;
-}
 
 export interface ChainsChecked {
   chains: StoreReport["chains"];
@@ -24,12 +19,18 @@ export interface ChainsChecked {
   keys: string[];
   damage: Damage[];
   logged: Logged;
+  ledger: Ledger;
+}
+
+interface Gathered extends Omit<ChainsChecked, "ledger"> {
+  entries: Map<string, Map<number, string>>;
+  sealsMade: LoggedSeal[];
 }
 
 const sha256 = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");
 
 export async function checkChains(tx: Transaction, places: Places, keyInFolder: string | null): Promise<ChainsChecked> {
-  const found: ChainsChecked = { chains: [], signatures: 0, keys: [], damage: [], logged: { reads: new Map(), approvals: new Map(), revoked: new Set() } };
+  const found: Gathered = { chains: [], signatures: 0, keys: [], damage: [], logged: newLogged(), entries: new Map(), sealsMade: [] };
   const heads = new Map((await CustodyHead.findAll({ transaction: tx, raw: true })).map((row) => [row.chainId, { seq: row.seq, hash: row.hash.toString("hex") }]));
   const inLog = await CustodyEntry.findAll({ attributes: ["chainId"], group: ["chainId"], transaction: tx, raw: true });
   const chains = new Set([WORKSHOP_CHAIN, ...heads.keys(), ...inLog.map((row) => row.chainId), ...places.driveIds]);
@@ -37,7 +38,8 @@ export async function checkChains(tx: Transaction, places: Places, keyInFolder: 
   found.keys = [...ring.keys.keys()];
   for (const { seq, sentence } of ring.problems) found.damage.push(damage(places, WORKSHOP_CHAIN, seq, "key", sentence));
   for (const chain of [...chains].sort()) await checkOne(tx, chain, heads.get(chain) ?? null, ring, places, found);
-  return found;
+  const { entries, sealsMade, ...rest } = found;
+  return { ...rest, ledger: { entries, sealsMade, ring, place: (chain) => places.chain(chain) } };
 }
 
 async function keys(tx: Transaction, fromFolder: string | null): Promise<Keyring> {
@@ -45,10 +47,10 @@ async function keys(tx: Transaction, fromFolder: string | null): Promise<Keyring
   return keyring(rows, fromFolder);
 }
 
-async function checkOne(tx: Transaction, chain: string, head: { seq: number; hash: string } | null, ring: Keyring, places: Places, found: ChainsChecked): Promise<void> {
+async function checkOne(tx: Transaction, chain: string, head: { seq: number; hash: string } | null, ring: Keyring, places: Places, found: Gathered): Promise<void> {
   const rows = await CustodyEntry.findAll({ where: { chainId: chain }, order: ["seq"], transaction: tx, raw: true });
   const findings = await checkChain(
-    rows.map((row) => ({ body: row.body, hash: row.hash.toString("hex"), signature: row.signature.toString("base64"), keyId: row.keyId })),
+    rows.map(chainLine),
     head, {
       sha256,
       knows: (keyId) => ring.keys.has(keyId),
@@ -62,22 +64,21 @@ async function checkOne(tx: Transaction, chain: string, head: { seq: number; has
   if (rows.length === 0 && !head && chain !== WORKSHOP_CHAIN) found.damage.push(damage(places, chain, null, "no-log", "The drive has no log at all."));
   found.chains.push({ chain, place: places.chain(chain), entries: rows.length, head, findings: findings.length });
   found.signatures += rows.length;
-  for (const row of rows) note(row, found.logged);
+  found.entries.set(chain, new Map(rows.map((row) => [row.seq, sha256(row.body)])));
+  for (const row of rows) {
+    const signed = () => verifySignature(ring.keys.get(row.keyId) ?? "", signedBytes(row.body), row.signature);
+    noteEntry(row, found.logged);
+    // whoever can put rows in must not make up seals: only a signed entry tells of one
+    if (chain === WORKSHOP_CHAIN) found.sealsMade.push(...sealIn(row, signed));
+  }
 }
 
-const NOTED = new Set(["read.stored", "approval.given", "approval.revoked"]);
-
-/** Remembers what the entry says; one that cannot be read says nothing, and is named by the chain's check. */
-function note(row: CustodyEntry, logged: Logged): void {
-  if (!NOTED.has(row.action)) return;
+function sealIn(row: CustodyEntry, signed: () => boolean): LoggedSeal[] {
   try {
-    const { subject, facts } = JSON.parse(row.body.toString("utf8")) as { subject: { id: string }; facts: { sha256: string; sizeBytes: number; crc32: string } };
-    const common = { chain: row.chainId, seq: row.seq, sha256: facts.sha256 };
-    if (row.action === "read.stored") logged.reads.set(subject.id, { ...common, sizeBytes: facts.sizeBytes, crc32: facts.crc32 });
-    else if (row.action === "approval.given") logged.approvals.set(subject.id, common);
-    else logged.revoked.add(subject.id);
+    const { action, facts } = JSON.parse(row.body.toString("utf8")) as { action: string; facts: LoggedSeal };
+    return action === "seal.made" && signed() ? [{ ...facts, seq: row.seq }] : [];
   } catch {
-    return;
+    return [];
   }
 }
 

@@ -2,9 +2,9 @@ import { readdir } from "node:fs/promises";
 import path from "node:path";
 import type { Transaction } from "sequelize";
 import { env } from "@/lib/env";
-import { Approval, Image } from "@/models";
+import { Image } from "@/models";
 import { checkImage } from "@/storage";
-import type { Logged } from "./chains";
+import type { Logged } from "./logged";
 import type { Places, PlacedRead } from "./places";
 import type { Damage, StoreReport } from "./report";
 
@@ -46,7 +46,7 @@ function grouped(reads: PlacedRead[]): Map<string, PlacedRead[]> {
 }
 
 /** Every read has its image's row and its log entry, all three say the same, and no logged read is without its row. */
-export function checkReads(images: StoredImage[], places: Places, logged: Logged): Damage[] {
+export function checkReads(images: StoredImage[], places: Places, logged: Pick<Logged, "reads">): Damage[] {
   const found: Damage[] = [];
   const bySha = new Map(images.map((image) => [image.sha256, image]));
   const say = (read: PlacedRead, seq: number | null, problem: Damage["problem"], sentence: string, expected?: string, is?: string) =>
@@ -67,24 +67,6 @@ export function checkReads(images: StoredImage[], places: Places, logged: Logged
   for (const [id, entry] of logged.reads) {
     if (known.has(id)) continue;
     found.push({ place: places.chain(entry.chain), seq: entry.seq, problem: "read-missing", sentence: "The log says that a read was stored, and the read is gone from the database.", chain: entry.chain, sha256: entry.sha256, reads: [] });
-  }
-  return found;
-}
-
-/** Every approval is in the log, for the same image. */
-export async function checkApprovals(tx: Transaction, places: Places, logged: Logged): Promise<Damage[]> {
-  const found: Damage[] = [];
-  for (const row of await Approval.findAll({ attributes: ["id", "chipId", "sha256", "revokedAt"], transaction: tx, raw: true })) {
-    const chain = places.driveOfChip.get(row.chipId) ?? "";
-    const sha256 = row.sha256.toString("hex");
-    const entry = logged.approvals.get(row.id);
-    const say = (problem: Damage["problem"], sentence: string, expected?: string) =>
-      found.push({ place: places.chain(chain), seq: entry?.seq ?? null, problem, sentence, chain, sha256, reads: [], expected, found: expected && sha256 });
-    if (!entry) say("approval-not-in-log", "An approval stands in the database that no entry of the log gives.");
-    else if (entry.sha256 !== sha256 || entry.chain !== chain) say("approval-differs-from-log", "The approval is for another image or drive than the log says.", entry.sha256);
-    else if (logged.revoked.has(row.id) !== (row.revokedAt !== null)) {
-      say("approval-differs-from-log", row.revokedAt ? "The approval is revoked in the database, and no entry of the log revokes it." : "The log revokes the approval, and in the database it stands.");
-    }
   }
   return found;
 }

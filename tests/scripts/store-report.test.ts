@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import type { Logged } from "@/scripts/check/chains";
+import type { Logged } from "@/scripts/check/logged";
 import { checkReads, type StoredImage } from "@/scripts/check/images";
 import type { PlacedRead, Places } from "@/scripts/check/places";
 import { type Damage, exitCode, page, type StoreReport } from "@/scripts/check/report";
@@ -9,7 +9,7 @@ const image: StoredImage = { sha256, sizeBytes: 8192, crc32: "0000000f" };
 const read: PlacedRead = { id: "read-1", driveId: "drive-1", name: "Case 26-0042, Drive A, Orig U12, Read 2", ...image };
 const entry = { chain: "drive-1", seq: 5, ...image };
 const places = (reads: PlacedRead[]): Places => ({ driveIds: ["drive-1"], chain: (id) => (id === "drive-1" ? "Case 26-0042, Drive A" : `Log ${id}`), reads, driveOfChip: new Map() });
-const logged = (reads: [string, typeof entry][]): Logged => ({ reads: new Map(reads), approvals: new Map(), revoked: new Set() });
+const logged = (reads: [string, typeof entry][]): Pick<Logged, "reads"> => ({ reads: new Map(reads) });
 const problems = (images: StoredImage[], reads: PlacedRead[], log: [string, typeof entry][]) => checkReads(images, places(reads), logged(log)).map((found) => found.problem);
 
 describe("reads against the log", () => {
@@ -30,6 +30,7 @@ describe("the report", () => {
   const damage: Damage = { place: "Case 26-0042, Drive A", seq: 7, problem: "signature", sentence: "The signature does not fit the entry.", chain: "drive-1", sha256: null, reads: [read.name] };
   const clean: StoreReport = {
     checkedAt: "2026-12-01T10:00:00.000Z", clean: true, chains: [{ chain: "drive-1", place: "Case 26-0042, Drive A", entries: 7, head: null, findings: 0 }], signatures: 7, keys: [],
+    seals: { checked: 0, newest: null, heads: 0, keys: [] }, witness: null, against: [], notes: [],
     images: { checked: 1, bytes: 8192, damaged: 0, missing: 0 }, reads: 1, damage: [], notChecked: [], unknownFiles: 0,
   };
 
