@@ -148,8 +148,10 @@ function constantBitFinding(facts: ImageFacts, whole: WholeFacts): Finding | nul
   const low = [7, 6, 5, 4, 3, 2, 1, 0].filter((bit) => ((whole.everOne >> bit) & 1) === 0);
   if (high.length + low.length === 0) return null;
   const said = [...high.map((bit) => `bit ${bit} is always 1`), ...low.map((bit) => `bit ${bit} is always 0`)].join(", ");
+  // a few bytes in a blank chip may well share a bit: real stores of settings do (READ-FAULTS, F04: never block on it)
+  const severity = facts.sizeBytes >= CONSTANT_BIT_BLOCKS_BYTES && !nearlyBlank(facts) ? "blocks" : "reason";
   return {
-    code: "constant-bit", severity: facts.sizeBytes >= CONSTANT_BIT_BLOCKS_BYTES ? "blocks" : "reason",
+    code: "constant-bit", severity,
     message: `In every byte ${said}.`,
     advice: "Looks like a data pin of a parallel adapter without contact, or plain text. Clean the adapter's pins and read again.",
     measured: said, threshold: `no bit constant over ${CONSTANT_BIT_LEAST_BYTES} bytes or more`,

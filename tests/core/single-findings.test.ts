@@ -68,6 +68,10 @@ describe("content", () => {
     expect(said(low(256))).toEqual(["constant-bit reason"]);
     expect(said(low(4095))).toEqual(["constant-bit reason"]);
     expect(said(low(4096))).toEqual(["constant-bit blocks"]);
+    // a store of settings: blank but for 100 bytes of text
+    const store = Buffer.alloc(131_072, 0xff);
+    store.fill("setting", 0x1000, 0x1064);
+    expect(said(store)).toEqual(["nearly-blank note", "constant-bit reason"]);
     expect(alone(plain(4096).map((value) => value | 0x02))[0].message).toBe("In every byte bit 1 is always 1.");
   });
   it("that is text or an archive is no image", () => {
