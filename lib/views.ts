@@ -294,19 +294,25 @@ export interface DriveView {
   custodyEntries: number;
 }
 
+/** `requested`: asked for on the public form, the parcel is not here yet. */
+export type CaseState = "requested" | "open" | "closed";
+
 export interface CaseView {
   id: string;
   ref: string;
   /** with the ISO 7064 MOD 37,36 check character: 26-0183.4 */
   refChecked: string;
-  state: "open" | "closed";
+  state: CaseState;
   closedReason: string | null;
   customer: { name: string; email: string; phone: string | null; contact: string | null };
   damage: string;
   note: string | null;
   dueOn: string | null;
-  receivedAt: string;
-  createdBy: PersonView;
+  /** null while a request waits for its parcel */
+  receivedAt: string | null;
+  requestedAt: string | null;
+  /** null for a request that came through the public form */
+  createdBy: PersonView | null;
   drives: DriveView[];
   shares: ShareView[];
 }
@@ -328,8 +334,10 @@ export interface CaseRow {
   partNumbers: string;
   damage: string;
   dueOn: string | null;
-  receivedAt: string;
-  state: "open" | "closed";
+  /** null while a request waits for its parcel */
+  receivedAt: string | null;
+  requestedAt: string | null;
+  state: CaseState;
   chips: { state: ChipStateCode; label: string; designator: string }[];
 }
 

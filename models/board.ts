@@ -1,6 +1,6 @@
 import { type CreationOptional, type InferAttributes, type InferCreationAttributes, Model, type Sequelize } from "sequelize";
 import type { BoardRole } from "@/lib/core/words";
-import { id, reference, text, longText, time } from "./columns";
+import { id, reference, text, longText, time, yes } from "./columns";
 
 export class Board extends Model<InferAttributes<Board>, InferCreationAttributes<Board>> {
   declare id: string;
@@ -12,6 +12,8 @@ export class Board extends Model<InferAttributes<Board>, InferCreationAttributes
   declare motorDriverMarking: CreationOptional<string | null>;
   declare condition: CreationOptional<string | null>;
   declare fitReason: CreationOptional<string | null>;
+  /** its unique data lies inside the main controller: there is no chip to move */
+  declare dataInController: CreationOptional<boolean>;
   declare createdAt: Date;
 }
 
@@ -26,6 +28,7 @@ export function initBoard(sequelize: Sequelize): void {
     motorDriverMarking: text(120, true),
     condition: longText(true),
     fitReason: longText(true),
+    dataInController: yes(false),
     createdAt: time(),
   }, { sequelize, modelName: "Board", tableName: "boards" });
 }

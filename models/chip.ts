@@ -19,6 +19,9 @@ export class Chip extends Model<InferAttributes<Chip>, InferCreationAttributes<C
   declare sfdp: CreationOptional<string | null>;
   declare needsTransfer: boolean;
   declare pairedWithId: CreationOptional<string | null>;
+  /** where it sits on the board's picture, in thousandths from the left and from the top */
+  declare placeX: CreationOptional<number | null>;
+  declare placeY: CreationOptional<number | null>;
   declare createdAt: Date;
 }
 
@@ -38,6 +41,8 @@ export function initChip(sequelize: Sequelize): void {
     sfdp: text(4096, true),
     needsTransfer: yes(true),
     pairedWithId: reference(true),
+    placeX: whole(true),
+    placeY: whole(true),
     createdAt: time(),
   }, { sequelize, modelName: "Chip", tableName: "chips" });
 }

@@ -1,5 +1,5 @@
 import { type CreationOptional, type InferAttributes, type InferCreationAttributes, Model, type Sequelize } from "sequelize";
-import { id, text, time } from "./columns";
+import { id, longText, text, time } from "./columns";
 
 export class Customer extends Model<InferAttributes<Customer>, InferCreationAttributes<Customer>> {
   declare id: string;
@@ -7,6 +7,8 @@ export class Customer extends Model<InferAttributes<Customer>, InferCreationAttr
   declare email: string;
   declare phone: CreationOptional<string | null>;
   declare contact: CreationOptional<string | null>;
+  declare company: CreationOptional<string | null>;
+  declare returnAddress: CreationOptional<string | null>;
   declare createdAt: Date;
 }
 
@@ -17,6 +19,8 @@ export function initCustomer(sequelize: Sequelize): void {
     email: text(254),
     phone: text(60, true),
     contact: text(200, true),
+    company: text(200, true),
+    returnAddress: longText(true),
     createdAt: time(),
   }, { sequelize, modelName: "Customer", tableName: "customers" });
 }

@@ -22,6 +22,13 @@ import { Seal, initSeal } from "./seal";
 import { ChainCheck, initChainCheck } from "./chain-check";
 import { HandOver, initHandOver } from "./hand-over";
 import { UserCase, initUserCase } from "./user-case";
+import { Request, initRequest } from "./request";
+import { Receipt, initReceipt } from "./receipt";
+import { ShelfBoard, initShelfBoard } from "./shelf-board";
+import { Photo, initPhoto } from "./photo";
+import { Note, initNote } from "./note";
+import { StartUpTest, initStartUpTest } from "./start-up-test";
+import { CaseReturn, initCaseReturn } from "./case-return";
 import { Mail, initMail } from "./mail";
 import { Share, initShare } from "./share";
 import { IdempotencyKey, initIdempotencyKey } from "./idempotency-key";
@@ -51,6 +58,13 @@ for (const init of [
   initChainCheck,
   initHandOver,
   initUserCase,
+  initRequest,
+  initReceipt,
+  initShelfBoard,
+  initPhoto,
+  initNote,
+  initStartUpTest,
+  initCaseReturn,
   initMail,
   initShare,
   initIdempotencyKey,
@@ -93,6 +107,13 @@ export {
   ChainCheck,
   HandOver,
   UserCase,
+  Request,
+  Receipt,
+  ShelfBoard,
+  Photo,
+  Note,
+  StartUpTest,
+  CaseReturn,
   Mail,
   Share,
   IdempotencyKey,

@@ -7,6 +7,8 @@ export class Mail extends Model<InferAttributes<Mail>, InferCreationAttributes<M
   declare subject: string;
   declare textMasked: string;
   declare sealed: CreationOptional<Buffer | null>;
+  /** which template made it */
+  declare kind: CreationOptional<string>;
   declare state: "queued" | "sending" | "sent" | "dead";
   declare attempts: CreationOptional<number>;
   declare queuedAt: Date;
@@ -24,6 +26,7 @@ export function initMail(sequelize: Sequelize): void {
     subject: text(255),
     textMasked: longText(),
     sealed: { type: DataTypes.BLOB("medium"), allowNull: true },
+    kind: { ...text(40), defaultValue: "other" },
     state: text(10),
     attempts: { ...whole(), defaultValue: 0 },
     queuedAt: time(),

@@ -42,7 +42,7 @@ export function CaseList({ list, sort, order, q, timeZone, today, records }: {
         return <span className={`whitespace-nowrap ${late ? "font-strong text-block" : ""}`}>{dueText(row.dueOn)}{late ? ", late" : row.state === "open" && row.dueOn === today ? ", today" : ""}</span>;
       },
     }),
-    column.accessor("receivedAt", { id: "received", header: "Received", cell: ({ row }) => <span className="whitespace-nowrap">{dayText(row.original.receivedAt, timeZone)}</span> }),
+    column.accessor("receivedAt", { id: "received", header: "Received", cell: ({ row }) => <span className="whitespace-nowrap">{row.original.receivedAt ? dayText(row.original.receivedAt, timeZone) : "not yet"}</span> }),
     column.display({ id: "chips", header: "Chips", enableSorting: false, cell: ({ row }) => <Chips row={row.original} /> }),
   ]), [timeZone, today]);
   const empty = q

@@ -21,7 +21,7 @@ export function Ticket({ view, timeZone, today }: { view: CaseView; timeZone: st
         </div>
         <dl>
           <div><dt>Due</dt><dd>{view.dueOn ? dueText(view.dueOn) : "No date"}{late ? <span className="text-block">, late</span> : null}</dd></div>
-          <div><dt>Received</dt><dd>{momentText(view.receivedAt, timeZone)}</dd></div>
+          <div><dt>Received</dt><dd>{view.receivedAt ? momentText(view.receivedAt, timeZone) : "not yet"}</dd></div>
           <div><dt>State</dt><dd className={mark === "block" ? "text-block" : ""}><Mark kind={mark} className="mr-1.5 [--hole:var(--sheet)]" />{words}</dd></div>
         </dl>
         <div className="no-print mt-auto"><PrintButton /></div>
@@ -29,7 +29,7 @@ export function Ticket({ view, timeZone, today }: { view: CaseView; timeZone: st
       <dl className="boxes">
         <div className="w4"><dt>Customer</dt><dd><b>{view.customer.name}</b>{view.customer.contact ? <><br />{view.customer.contact}</> : null}</dd></div>
         <div className="w4"><dt>Reach by</dt><dd>{view.customer.email}{view.customer.phone ? <><br />{view.customer.phone}</> : null}</dd></div>
-        <div className="w4 e"><dt>Recorded by</dt><dd>{view.createdBy.name}</dd></div>
+        <div className="w4 e"><dt>Recorded by</dt><dd>{view.createdBy?.name ?? "the customer, on the form"}</dd></div>
         <div className="w8"><dt>Damage</dt><dd>{view.damage}</dd></div>
         <div className="w4 e"><dt>Summary goes to</dt><dd>{view.customer.email}{waits ? `; ${waits}` : ""}</dd></div>
         <div className="w8 l"><dt>Bench note</dt><dd>{view.note ?? <span className="text-ink-3">none</span>}</dd></div>

@@ -52,7 +52,7 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
   const customer = (await Customer.findByPk(found.customerId, at))!;
   const images: BundleImage[] = [];
   const record = {
-    ref: found.ref, id: found.id, receivedAt: found.receivedAt.toISOString(), recordedBy: rows.who(found.createdBy), damage: found.damage, note: found.note ?? null,
+    ref: found.ref, id: found.id, requestedAt: found.requestedAt?.toISOString() ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, recordedBy: found.createdBy ? rows.who(found.createdBy) : null, damage: found.damage, note: found.note ?? null,
     dueOn: found.dueOn ?? null, closedAt: found.closedAt?.toISOString() ?? null, closedReason: found.closedReason ?? null,
     customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
     drives: drives.map((drive, i) => ({

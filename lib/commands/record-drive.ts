@@ -1,6 +1,7 @@
 import { randomUUID } from "node:crypto";
 import type { Actor } from "@/lib/core/words";
 import type { DriveInput } from "@/lib/schemas/drive";
+import { AppError } from "@/lib/errors";
 import { Case, Drive, inTransaction } from "@/models";
 import { appendEntry } from "./append-entry";
 import { driveLetter } from "./place";
@@ -13,6 +14,7 @@ export async function recordDrive(actor: Actor, caseId: string, input: DriveInpu
     const found = await Case.findByPk(caseId, { transaction: tx, lock: tx.LOCK.UPDATE });
     if (!found) throw notFound("case");
     allowCase(actor, caseId);
+    if (!found.receivedAt) throw new AppError("rule-against", "The parcel of this case has not been received yet. Receive it first; then record the drive that is in it.");
     const position = (await Drive.max<number, Drive>("position", { where: { caseId }, transaction: tx }) ?? 0) + 1;
     const facts = { partNumber: input.partNumber ?? null, model: input.model ?? null, serial: input.serial ?? null, interface: input.interface ?? null };
     const drive = await Drive.create({ id: randomUUID(), caseId, position, ...facts, createdAt: new Date() }, { transaction: tx });

@@ -1,6 +1,7 @@
 import { z } from "zod";
 import {
-  BOARD_ROLES, BUSES, FORMATS, ITEM_TYPES, KEY_PURPOSES, METHODS, readName, ROLES, SEAL_CAUSES, seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS,
+  AS_SENT, BOARD_ROLES, BUSES, CLOSED_KINDS, FORMATS, ITEM_TYPES, KEY_PURPOSES, METHODS, PHOTO_KINDS, PHOTO_SUBJECTS, readName, ROLES, SEAL_CAUSES,
+  seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS, WAITING_FOR,
 } from "./words";
 
 /**
@@ -92,6 +93,26 @@ export const ACTIONS = {
     (f) => `${f.to.person} confirmed having ${f.item.name} at ${f.to.place}${f.confirmation ? `: ${f.confirmation}` : ""}`),
   "item.not-received": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, reason: words },
     (f) => `${f.item.name} did not go to ${f.to.person}; it is still with ${f.from.person}, ${f.from.place}: ${f.reason}`, "differs"),
+  "request.received": spec({ caseRef: words, request: uuid, damage: words, consents: z.array(words), photos: z.int() }, (f) => `Received the request for case ${f.caseRef}: ${f.damage}`),
+  "request.deletion-asked": spec({ caseRef: words, request: uuid }, (f) => `The customer of case ${f.caseRef} asked for deletion`, "differs"),
+  "parcel.received": spec({ caseRef: words, receipt: uuid, carrier: optional, tracking: optional, sealAsSent: z.enum(AS_SENT), sealNumber: optional, smallBoard: z.enum(AS_SENT), condition: words, accessories: optional, differs: optional },
+    (f) => `Received the parcel of case ${f.caseRef}: ${f.condition}${f.sealAsSent === "no" ? "; the seal is not as it was sent" : ""}${f.differs ? `; differs from the request: ${f.differs}` : ""}`, (f) => (f.sealAsSent === "no" || f.differs ? "differs" : "entry")),
+  "photo.added": spec({ photo: uuid, of: z.object({ type: z.enum(PHOTO_SUBJECTS), id: uuid, name: words }), kind: z.enum(PHOTO_KINDS), sha256: sha, sizeBytes: size, mediaType: words, caption: optional, by: z.enum(["workshop", "customer"]) },
+    (f) => `Added a ${f.kind} of ${f.of.name}${f.caption ? `: ${f.caption}` : ""}, SHA-256 ${short(f.sha256)}`),
+  "shelf.recorded": spec({ shelfBoard: uuid, number: words, boardNumber: words, revision: optional, origin: optional, place: optional }, (f) => `Put ${f.number} on the donor shelf: ${f.boardNumber}${f.revision ? ` ${f.revision}` : ""}`),
+  "shelf.changed": spec({ shelfBoard: uuid, number: words, changes: z.array(change), reason: optional }, (f) => `Changed ${f.number} on the donor shelf: ${changes(f.changes)}${f.reason ? `. Reason: ${f.reason}` : ""}`),
+  "board.taken-from-shelf": spec({ board: uuid, shelfBoard: uuid, number: words, boardNumber: words }, (f) => `Took ${f.number}, ${f.boardNumber}, from the donor shelf for this drive`),
+  "case.held": spec({ caseRef: words, waitingFor: z.enum(WAITING_FOR), reason: words }, (f) => `Put case ${f.caseRef} on hold, waiting for ${f.waitingFor}: ${f.reason}`),
+  "case.resumed": spec({ caseRef: words, waitingFor: z.enum(WAITING_FOR), reason: optional }, (f) => `Went on with case ${f.caseRef}${f.reason ? `: ${f.reason}` : ""}`),
+  "case.corrected": spec({ caseRef: words, changes: z.array(change), reason: words }, (f) => `Corrected case ${f.caseRef}: ${changes(f.changes)}. Reason: ${f.reason}`),
+  "note.added": spec({ caseRef: words, note: uuid, text: words, happenedAt: optional, lateByHours: z.int().optional(), corrects: uuid.nullable() },
+    (f) => `${f.corrects ? "Corrected a note" : "Noted"}${f.lateByHours !== undefined ? ` ${f.lateByHours} h later` : ""}: ${f.text}`),
+  "start-up.tested": spec({ test: uuid, spins: z.boolean(), ready: z.boolean(), reportedSerial: optional, serialMatches: z.boolean().nullable(), attempts: z.int(), note: optional },
+    (f) => `Tested the start-up: ${f.spins ? "spins" : "does not spin"}, ${f.ready ? "ready" : "not ready"}${f.serialMatches === null ? "" : f.serialMatches ? ", reports the serial of its label" : `, reports another serial than its label: ${f.reportedSerial}`}`,
+    (f) => (f.serialMatches === false || !f.ready ? "differs" : "entry")),
+  "case.returned": spec({ caseRef: words, items: z.array(words), carrier: optional, tracking: optional, sealNumber: optional, note: optional }, (f) => `Returned ${f.items.join(", ")} of case ${f.caseRef}${f.tracking ? `, tracking ${f.tracking}` : ""}`),
+  "case.closed": spec({ caseRef: words, kind: z.enum(CLOSED_KINDS), reason: optional, unverified: z.array(words), eraseOn: optional }, (f) => `Closed case ${f.caseRef} (${f.kind.replaceAll("-", " ")})${f.unverified.length ? `, not verified: ${f.unverified.join(", ")}` : ""}${f.reason ? `: ${f.reason}` : ""}`, "signed"),
+  "case.reopened": spec({ caseRef: words, reason: words }, (f) => `Opened case ${f.caseRef} again: ${f.reason}`),
   "bundle.started": spec({ caseRef: words, head: z.object({ seq: z.int(), hash: sha }) }, (f) => `Started the case bundle of ${f.caseRef}`),
   "bundle.completed": spec({ caseRef: words, tagManifestSha256: sha, upToSeq: z.int() }, (f) => `Completed the case bundle of ${f.caseRef}, tag manifest ${short(f.tagManifestSha256)}`, "signed"),
   "summary.sent": spec({ caseRef: words, share: uuid, expiresAt: words }, (f) => `Sent the verification summary of ${f.caseRef} to the customer`),

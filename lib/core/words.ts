@@ -49,6 +49,30 @@ export type ItemType = (typeof ITEM_TYPES)[number];
 export const KEY_PURPOSES = ["log", "seal"] as const;
 export type KeyPurpose = (typeof KEY_PURPOSES)[number];
 
+/** Answers at the desk: as it was sent, not so, or there is none. */
+export const AS_SENT = ["yes", "no", "none"] as const;
+export type AsSent = (typeof AS_SENT)[number];
+
+/** Whom or what a case waits for. */
+export const WAITING_FOR = ["customer", "donor", "parts", "workshop", "other"] as const;
+export type WaitingFor = (typeof WAITING_FOR)[number];
+
+export const CLOSED_KINDS = ["returned", "without-transfer", "cancelled"] as const;
+export type ClosedKind = (typeof CLOSED_KINDS)[number];
+
+export const ENCRYPTIONS = ["none", "suspected", "yes"] as const;
+export type Encryption = (typeof ENCRYPTIONS)[number];
+
+export const PHOTO_SUBJECTS = ["case", "drive", "board", "chip", "shelf-board"] as const;
+export type PhotoSubject = (typeof PHOTO_SUBJECTS)[number];
+
+export const PHOTO_KINDS = ["photo", "document"] as const;
+export type PhotoKind = (typeof PHOTO_KINDS)[number];
+
+/** What happened to the drive, as the public form asks it. */
+export const DAMAGES = ["power-surge", "wrong-supply", "liquid", "connector", "just-stopped", "unknown"] as const;
+export type Damage = (typeof DAMAGES)[number];
+
 export const SEVERITIES = ["blocks", "reason", "note"] as const;
 export type Severity = (typeof SEVERITIES)[number];
 

@@ -4,7 +4,7 @@ import { caseFor, driveLetter } from "@/lib/commands/place";
 import { readCaseRef, withCheck } from "@/lib/core/case-number";
 import type { Actor } from "@/lib/core/words";
 import type { ListInput } from "@/lib/schemas/case";
-import type { CaseRow, CaseView, ListView } from "@/lib/views";
+import type { CaseRow, CaseState, CaseView, ListView } from "@/lib/views";
 import { Case, CustodyHead, Customer, Drive, Share } from "@/models";
 import { boardViews } from "./boards";
 import { chipRecords } from "./chip-records";
@@ -41,6 +41,11 @@ async function matching(actor: Actor, q: string): Promise<WhereOptions> {
   return { [Op.or]: [{ ref: like }, { damage: like }, { "$customer.name$": like }, { id: drives.map((d) => d.caseId) }] } as WhereOptions;
 }
 
+function caseState(row: Case): CaseState {
+  if (row.closedAt) return "closed";
+  return row.receivedAt ? "open" : "requested";
+}
+
 export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
   const customers = new Map((await Customer.findAll({ where: { id: rows.map((r) => r.customerId) } })).map((c) => [c.id, c]));
   const drives = await Drive.findAll({ where: { caseId: rows.map((r) => r.id) }, order: ["position"] });
@@ -50,7 +55,7 @@ export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
   return rows.map((row) => ({
     id: row.id, ref: row.ref, customerName: customers.get(row.customerId)?.name ?? "", damage: row.damage, dueOn: row.dueOn ?? null,
     partNumbers: drives.filter((d) => d.caseId === row.id).map((d) => d.partNumber ?? d.model ?? d.serial).join(", "),
-    receivedAt: row.receivedAt.toISOString(), state: row.closedAt ? "closed" : "open",
+    receivedAt: row.receivedAt?.toISOString() ?? null, requestedAt: row.requestedAt?.toISOString() ?? null, state: caseState(row),
     chips: states.filter((s) => s.caseId === row.id).map(({ state, label, designator }) => ({ state, label, designator })),
   }));
 }
@@ -66,9 +71,9 @@ export async function caseView(actor: Actor, id: string): Promise<CaseView> {
   const boards = await boardViews(drives.map((d) => d.id));
   const shares = await Share.findAll({ where: { caseId: id }, order: [["createdAt", "DESC"]] });
   return seenBy(actor, {
-    id, ref: found.ref, refChecked: withCheck(found.ref), state: found.closedAt ? "closed" : "open", closedReason: found.closedReason ?? null,
+    id, ref: found.ref, refChecked: withCheck(found.ref), state: caseState(found), closedReason: found.closedReason ?? null,
     customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
-    damage: found.damage, note: found.note ?? null, dueOn: found.dueOn ?? null, receivedAt: found.receivedAt.toISOString(), createdBy: who(found.createdBy),
+    damage: found.damage, note: found.note ?? null, dueOn: found.dueOn ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, requestedAt: found.requestedAt?.toISOString() ?? null, createdBy: found.createdBy ? who(found.createdBy) : null,
     drives: drives.map((d) => ({
       id: d.id, letter: driveLetter(d), partNumber: d.partNumber ?? null, model: d.model ?? null, serial: d.serial ?? null, interface: d.interface ?? null,
       boards: boards.get(d.id) ?? [], custodyEntries: heads.get(d.id) ?? 0,

@@ -52,7 +52,7 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
     transfers: record?.transfers.map((t) => transferView(t, who)) ?? [],
     why: record ? await why(record, policy) : UNPAIRED.sentence,
     nextSeating: Object.fromEntries(STAGES.map((s) => [s, nextSeating(reads, s)])) as Record<Stage, number>,
-    receivedAt: place.case.receivedAt.toISOString(),
+    receivedAt: (place.case.receivedAt ?? place.chip.createdAt).toISOString(),
   });
 }
 
