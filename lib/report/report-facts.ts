@@ -87,9 +87,12 @@ export interface ReportCase {
   policy: Policy;
   ref: string;
   id: string;
+  /** when the customer asked, where that came first */
+  requestedAt?: string | null;
   /** null while the drives are still on their way */
   receivedAt: string | null;
-  recordedBy: PersonView;
+  /** null where the customer's own request made it */
+  recordedBy: PersonView | null;
   damage: string;
   note: string | null;
   dueOn: string | null;
