@@ -151,10 +151,11 @@ ${compositeText(composites)}
 
 HOW TO CHECK IT
   sh check.sh                    everything below, and prints what it checked
-  sh check.sh KEY-FINGERPRINT    the same, and compares the key
+  sh check.sh KEY-FINGERPRINT    the same, and compares the log's or the seal's key
 It needs a POSIX shell, sha256sum, OpenSSL 3 and standard tools, and ends with 0 when
 all is in order, 1 when something is not, 2 when it could not check. Take the
 fingerprint from somewhere else than this bundle: the mail with the summary has it.
+The page /verify of any Twinread checks the same in your browser and sends nothing.
 A forger could change check.sh as well; by hand, without it:
   sha256sum -c manifest-sha256.txt       each file of the case is as it was packed
   sha256sum -c tagmanifest-sha256.txt    so are the lists and this page
