@@ -40,10 +40,11 @@ const THERE = {
   diffutils: program("cmp"),
   "poppler-utils": program("pdftotext"),
   qpdf: program("qpdf"),
+  "zbar-tools": program("zbarimg"),
 };
 
 export const DATABASE_PACKAGES = ["mariadb-server-core", "mariadb-client"];
-export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord", "ent", "ipxe-qemu", "diffutils", "poppler-utils", "qpdf"];
+export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord", "ent", "ipxe-qemu", "diffutils", "poppler-utils", "qpdf", "zbar-tools"];
 
 export const missingPackages = (wanted) => wanted.filter((name) => !THERE[name]());
 

@@ -8,7 +8,7 @@ import { expect, it } from "vitest";
  * always free to it.
  */
 const CHANGES = /^(models|storage)(\/|$)|^lib\/(core|schemas|commands|queries|mail|engine|report)\/|^lib\/(env|errors|limits|views|auth\/(password|token|attempts))$/;
-const PARTS = "(components\\/(ui|shell|strip)|lib\\/core|lib\\/schemas)\\/|^lib\\/(limits|http\\/send)$";
+const PARTS = "(components\\/(ui|shell|strip|print)|lib\\/core|lib\\/schemas)\\/|^lib\\/(limits|http\\/send)$";
 const ROOMS: Record<string, RegExp> = {
   "app": /^(components|lib)\//,
   "components": new RegExp(`^${PARTS}`),
