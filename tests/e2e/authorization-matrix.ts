@@ -141,6 +141,7 @@ const everyDesk = pages(200, 200, 200, 200);
 export const PAGES: PageRow[] = [
   { route: "/", cells: anyone(307) },
   { route: "/sign-in", cells: anyone(200) },
+  { route: "/verify", cells: anyone(200) },
   { route: "/summary/[token]", at: () => `/summary/${"x".repeat(43)}`, cells: anyone(404) },
   { route: "/account", cells: everyDesk },
   ...["", "/drives", "/seals", "/images", "/assessments", "/hand-outs", "/refusals", "/clock"].map((path): PageRow => ({ route: `/audit${path}`, cells: pages(404, 200, 200, 200) })),
