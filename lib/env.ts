@@ -1,7 +1,7 @@
 import { readFileSync, statSync } from "node:fs";
 import path from "node:path";
 import packageJson from "../package.json";
-import { readSettings, type SmtpSettings } from "./settings";
+import { readSettings, type SmtpSettings, type WorkshopContact } from "./settings";
 
 /** What the app's process knows. The migrating user's address is not among it. */
 export interface Env {
@@ -15,6 +15,10 @@ export interface Env {
   readonly databaseUrl: string;
   demo: boolean;
   workshop: string;
+  /** lines; empty when not set */
+  workshopAddress: string[];
+  workshopHours: string | null;
+  workshopContact: WorkshopContact;
   /** IANA name */
   timeZone: string;
   smtp: SmtpSettings;
@@ -33,9 +37,9 @@ let known: Env | undefined;
 export function env(): Env {
   if (known) return known;
   const settings = readSettings(process.env, /* turbopackIgnore: true */ process.cwd(), false);
-  const { port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, witnessFile, scrubDays, scrubMebibytesPerSecond, dbPort, databaseUrl } = settings;
+  const { port, host, publicUrl, dataDir, demo, workshop, workshopAddress, workshopHours, workshopContact, timeZone, smtp, witnessFile, scrubDays, scrubMebibytesPerSecond, dbPort, databaseUrl } = settings;
   known = {
-    port, host, publicUrl, dataDir, demo, workshop, timeZone, smtp, witnessFile, scrubDays, scrubMebibytesPerSecond,
+    port, host, publicUrl, dataDir, demo, workshop, workshopAddress, workshopHours, workshopContact, timeZone, smtp, witnessFile, scrubDays, scrubMebibytesPerSecond,
     appVersion: packageJson.version,
     get databaseUrl() {
       return databaseUrl ?? `mariadb://twinread_app:${secretIn(dataDir, "db-app-password")}@127.0.0.1:${dbPort}/twinread`;

@@ -16,9 +16,31 @@ export const MAX_CUSTODY_BODY_BYTES = 1 * MIB;
 export const FREE_SPACE_FLOOR_BYTES = 256 * MIB;
 export const UPLOADS_IN_FLIGHT = 16;
 
+export const MAX_PHOTO_BYTES = 20 * MIB;
+export const MAX_PHOTOS_A_CALL = 16;
+/** width times height; more could fill the memory when it is opened */
+export const MAX_PHOTO_PIXELS = 100_000_000;
+export const MAX_PHOTO_NAME_CHARACTERS = 255;
+export const MAX_CAPTION_CHARACTERS = 300;
+/** what a customer may send with a request */
+export const MAX_REQUEST_PHOTOS = 8;
+export const MAX_REQUEST_BYTES = 64 * MIB;
+
 export const SESSION_IDLE_SECONDS = 30 * 60;
 export const SESSION_ABSOLUTE_SECONDS = 8 * 3600;
 export const IDEMPOTENCY_DAYS = 7;
 export const MIN_PASSWORD_CHARACTERS = 15;
 /** rows of one CSV file; more has to be narrowed down */
 export const MAX_CSV_ROWS = 20_000;
+
+/** requests that come in within an hour */
+export const REQUESTS_AN_HOUR_PER_ADDRESS = 20;
+export const REQUESTS_AN_HOUR = 120;
+/** tries from one address within an hour, refused ones too */
+export const REQUEST_TRIES_AN_HOUR = 80;
+/** a person needs longer than this to fill the form in */
+export const REQUEST_FILL_SECONDS = 3;
+/** how old the form may be when it is sent */
+export const REQUEST_FORM_HOURS = 48;
+/** days within which a customer who asked for deletion hears from a lead */
+export const DELETION_ANSWER_DAYS = 30;

@@ -16,6 +16,11 @@ export interface SmtpSettings {
   fake: boolean;
 }
 
+export interface WorkshopContact {
+  email: string | null;
+  phone: string | null;
+}
+
 export interface Settings {
   port: number;
   host: string;
@@ -29,6 +34,12 @@ export interface Settings {
   databaseUrl: string | null;
   databaseAdminUrl: string | null;
   workshop: string;
+  /** lines of the postal address, as on the slip; empty when not set */
+  workshopAddress: string[];
+  /** opening hours as customers read them */
+  workshopHours: string | null;
+  /** whom customers ask, also about their data */
+  workshopContact: WorkshopContact;
   /** IANA name */
   timeZone: string;
   smtp: SmtpSettings;
@@ -119,6 +130,24 @@ const schema = z.object({
     context.addIssue(`WORKSHOP_NAME has ${value.length} characters. Shorten it to 80 at most.`);
     return z.NEVER;
   }),
+  WORKSHOP_ADDRESS: text.transform((value, context) => {
+    const lines = linesOf(value ?? "");
+    if (lines.length <= 6 && lines.every((one) => one.length <= 60)) return lines;
+    context.addIssue("WORKSHOP_ADDRESS doesn't fit the address label. Write at most 6 lines of 60 characters, with | between them.");
+    return z.NEVER;
+  }),
+  WORKSHOP_HOURS: text.transform((value, context) => {
+    if (value === undefined || value.length <= 80) return value;
+    context.addIssue(`WORKSHOP_HOURS has ${value.length} characters. Shorten it to 80 at most.`);
+    return z.NEVER;
+  }),
+  WORKSHOP_CONTACT: text.transform((value, context) => {
+    if (value === undefined) return undefined;
+    const contact = contactOf(value);
+    if (contact) return contact;
+    context.addIssue(`WORKSHOP_CONTACT is "${value}". Write an e-mail address, a telephone number, or both with a comma between them.`);
+    return z.NEVER;
+  }),
   WORKSHOP_TIME_ZONE: text.transform((value, context) => {
     try {
       return new Intl.DateTimeFormat("en", { timeZone: value }).resolvedOptions().timeZone;
@@ -147,6 +176,21 @@ const schema = z.object({
 });
 
 type Read = z.output<typeof schema>;
+
+const CONTACT_EMAIL = /^[\x21-\x7e]+@[A-Za-z0-9-]+(\.[A-Za-z0-9-]+)+$/;
+const CONTACT_PHONE = /^[+(]?\d[\d ()/.-]{3,40}$/;
+
+/** "desk@workshop.example, 01632 960 100": an e-mail address, a telephone number, or both in any order. */
+function contactOf(value: string): WorkshopContact | null {
+  const parts = value.split(",").map((part) => part.trim()).filter(Boolean);
+  const emails = parts.filter((part) => CONTACT_EMAIL.test(part) && !/[",;<>()\\]/.test(part));
+  const phones = parts.filter((part) => CONTACT_PHONE.test(part));
+  if (parts.length === 0 || emails.length > 1 || phones.length > 1 || emails.length + phones.length !== parts.length) return null;
+  return { email: emails[0] ?? null, phone: phones[0] ?? null };
+}
+
+/** Lines of an address: divided by "|", by line breaks, or by the two characters "\\n". */
+const linesOf = (value: string) => value.split(/\||\r?\n|\\n/).map((one) => one.trim()).filter(Boolean);
 
 /** What no single variable can show: those that need or exclude one another. */
 function together(read: Read, whole: boolean): string[] {
@@ -188,6 +232,8 @@ function smtpOf(read: Read, mailPort: number): SmtpSettings {
   return { host: "127.0.0.1", port: mailPort, secure: false, user: null, password: null, from, fake: true };
 }
 
+const DEMO_ADDRESS = ["12 Alder Lane", "Fennick ZZ0 8BD"];
+
 /** Where the witness file lies when no other place is set. */
 const ownWitnessFile = (dataDir: string) => path.join(dataDir, "witness", "seals.jsonl");
 
@@ -215,6 +261,9 @@ export function readSettings(variables: Variables, root: string, whole: boolean)
     databaseUrl: read.DATABASE_URL ?? null,
     databaseAdminUrl: read.DATABASE_ADMIN_URL ?? null,
     workshop: read.WORKSHOP_NAME ?? (read.DEMO ? "Alder Lane Drive Bench" : "Twinread"),
+    workshopAddress: read.WORKSHOP_ADDRESS.length > 0 ? read.WORKSHOP_ADDRESS : read.DEMO ? DEMO_ADDRESS : [],
+    workshopHours: read.WORKSHOP_HOURS ?? (read.DEMO ? "Mon to Fri, 9 to 17" : null),
+    workshopContact: read.WORKSHOP_CONTACT ?? (read.DEMO ? { email: "desk@alderlane.example", phone: "01632 960 100" } : { email: null, phone: null }),
     timeZone: read.WORKSHOP_TIME_ZONE,
     smtp: smtpOf(read, mailPort),
     scrubDays: read.SCRUB_DAYS,

@@ -4,6 +4,7 @@ import CredentialsProvider from "next-auth/providers/credentials";
 import { SESSION_ABSOLUTE_SECONDS } from "@/lib/limits";
 import { Session, User } from "@/models";
 import { hasEnded, lastDayInWords } from "./account";
+import { addressOf } from "./address";
 import { clearAttempts, mayTry } from "./attempts";
 import { passwordFits } from "./password";
 
@@ -21,14 +22,6 @@ declare module "next-auth/jwt" {
   }
 }
 
-const printable = (text: string) => text.replace(/[^\x20-\x7e]/g, "").slice(0, 64);
-
-/** Next puts the peer's address here; a proxy in front appends the one it saw, so the last one is the nearest. */
-function addressOf(headers: Record<string, unknown> | undefined): string {
-  const forwarded = String(headers?.["x-forwarded-for"] ?? "");
-  return printable(forwarded.split(",").at(-1)!.trim()) || "unknown";
-}
-
 /**
  * next-auth, behind this one file. The JWT carries nothing but the id of a session row: role, disabling and idle time
  * are read from the database at each request (see actor.ts).
@@ -43,7 +36,7 @@ export const authOptions: NextAuthOptions = {
       async authorize(credentials, request) {
         const email = String(credentials?.email ?? "").trim().slice(0, 254);
         const password = String(credentials?.password ?? "").slice(0, 1024);
-        const address = addressOf(request?.headers as Record<string, unknown> | undefined);
+        const address = addressOf((request?.headers as Record<string, string> | undefined)?.["x-forwarded-for"]);
         if (!(await mayTry(email, address))) throw new Error("limited");
         const found = email ? await User.findOne({ where: { email } }) : null;
         // the database takes é for e: such an address would have a count of guesses of its own for the same account
