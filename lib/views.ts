@@ -3,9 +3,12 @@
  * times RFC 3339 UTC text, ids UUIDs. Rows never leave; queries build these.
  */
 import type { DiagnosisView } from "./core/diagnosis";
+import type { DriveWarning } from "./core/drive-warnings";
+import type { Sibling } from "./core/two-chips";
 import type { SealProof } from "./core/seal";
+import type { AskedDrive } from "./core/drive-from-request";
 import type {
-  BoardRole, Bus, ChipStateCode, Finding, Format, ItemType, KeyPurpose, Method, Policy, Range, Role, SealCause, SizeSource, Stage, TransferKind,
+  AsSent, BoardRole, Bus, ChipStateCode, Encryption, Finding, Format, ItemType, KeyPurpose, Method, PhotoKind, PhotoSubject, Policy, Range, Role, SealCause, SizeSource, Stage, TransferKind,
 } from "./core/words";
 
 export interface PersonView {
@@ -141,6 +144,8 @@ export interface ChipSummary {
   idBytes: string | null;
   sfdp: string | null;
   needsTransfer: boolean;
+  /** where it sits on the picture of its board, in thousandths from the left and from the top; null until placed */
+  place: { x: number; y: number } | null;
   state: StateView;
   /** the paired chip, if any */
   pair: { id: string; designator: string; boardId: string; boardNumber: string; sizeBytes: number } | null;
@@ -155,7 +160,9 @@ export interface ChipSummary {
 }
 
 export interface ChipView extends ChipSummary {
-  drive: { id: string; letter: string; partNumber: string | null; model: string | null; serial: string | null };
+  drive: { id: string; letter: string; partNumber: string | null; model: string | null; serial: string | null; encryption: Encryption | null };
+  /** the other chips of the original that are moved together with this one, for a donor's chip with its pair */
+  siblings: Sibling[];
   board: { id: string; role: BoardRole; boardNumber: string; revision: string | null };
   case: { id: string; ref: string; dueOn: string | null; customerName: string };
   policy: Policy;
@@ -248,8 +255,42 @@ export interface BoardView {
   controllerMarking: string | null;
   motorDriverMarking: string | null;
   condition: string | null;
+  /** the unique data lies inside the main controller: there is no chip to move */
+  dataInController: boolean;
   fit: { verdict: "fits" | "caution" | "other-number"; differences: string[]; reason: string | null } | null;
   chips: ChipSummary[];
+}
+
+/** A photo or document as it is shown: by its reduced copies, never by the original. */
+export interface PhotoView {
+  id: string;
+  of: { type: PhotoSubject; id: string };
+  kind: PhotoKind;
+  /** of the original, which is kept unchanged */
+  sha256: string;
+  sizeBytes: number;
+  mediaType: string;
+  /** as it came */
+  fileName: string;
+  caption: string | null;
+  /** pixels as it is seen, turned the right way up; null for a document */
+  width: number | null;
+  height: number | null;
+  /** the original carries the place where it was taken */
+  hadLocation: boolean;
+  /** null: the customer, with the request */
+  by: PersonView | null;
+  storedAt: string;
+  /** false: the original is damaged or missing */
+  sound: boolean;
+}
+
+/** Photos of one thing, with the word for it. */
+export interface PhotoGroup {
+  of: { type: PhotoSubject; id: string };
+  /** "Original board BX 40-3179 rev C" */
+  name: string;
+  photos: PhotoView[];
 }
 
 export interface HandOverView {
@@ -290,6 +331,13 @@ export interface DriveView {
   model: string | null;
   serial: string | null;
   interface: string | null;
+  capacity: string | null;
+  made: string | null;
+  firmware: string | null;
+  /** null where nobody has said */
+  encryption: Encryption | null;
+  /** what speaks against the label data, as far as the asker may see the other cases */
+  warnings: DriveWarning[];
   boards: BoardView[];
   custodyEntries: number;
 }
@@ -587,4 +635,80 @@ export interface ScrubView {
   /** what is being read now */
   now: { driveId: string | null; sha256: string } | null;
   faulty: FaultyImageView[];
+}
+
+/** The parcel as it came. */
+export interface ReceiptView {
+  carrier: string | null;
+  tracking: string | null;
+  sealAsSent: AsSent;
+  sealNumber: string | null;
+  smallBoard: AsSent;
+  parcelCondition: string;
+  accessories: string | null;
+  /** what is not as the request said; null when all is */
+  differs: string | null;
+  by: PersonView;
+  at: string;
+}
+
+/** A case that was asked for and whose parcel is not here yet. */
+export interface ToReceiveRow {
+  caseId: string;
+  caseRef: string;
+  customerName: string;
+  damage: string;
+  dueOn: string | null;
+  /** part number, model or serial number, as the customer gave it */
+  partNumber: string | null;
+  requestedAt: string;
+}
+
+/** What the customer said would be in the parcel. */
+export interface ParcelView {
+  caseId: string;
+  caseRef: string;
+  refChecked: string;
+  customerName: string;
+  damage: string;
+  note: string | null;
+  requestedAt: string | null;
+  receivedAt: string | null;
+  closed: boolean;
+  asked: AskedDrive;
+}
+
+/** One printed label: which plate it carries, the large word on it, and the lines below. */
+export interface LabelView {
+  key: string;
+  kind: "drive" | "original" | "donor" | "chip";
+  refChecked: string;
+  /** "Drive A", "Original board", "U12" */
+  title: string;
+  /** of a chip: whose board it sits on, and what may be put on its supply pin */
+  chip: { board: BoardRole; supplyMillivolts: number | null; pins: number } | null;
+  lines: { name: string; value: string }[];
+}
+
+/** What goes to the programmer by hand: the approval that stands, or the last one, revoked. */
+export interface WriteTicketView {
+  refChecked: string;
+  driveLetter: string;
+  designator: string;
+  holds: string | null;
+  donor: { designator: string; boardNumber: string; revision: string | null; marking: string | null };
+  /** the name under which the image is handed out */
+  imageName: string;
+  sha256: string;
+  crc32: string;
+  sizeBytes: number;
+  supplyMillivolts: number | null;
+  /** the reader or programmer that was used last */
+  programmer: string | null;
+  approvedBy: string;
+  approvedAt: string;
+  statement: string;
+  twoPersonRule: boolean;
+  composite: boolean;
+  revoked: { by: string; at: string; cause: string; reason: string } | null;
 }

@@ -1,8 +1,9 @@
 import { createHash } from "node:crypto";
 import { Readable } from "node:stream";
+import { handOutName } from "@/lib/core/hand-out-name";
 import { may } from "@/lib/core/policy";
 import { FORMAT_ENDING } from "@/lib/core/text-format";
-import { type Actor, type Format, readName } from "@/lib/core/words";
+import type { Actor, Format } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { Approval, inTransaction } from "@/models";
 import { engine } from "@/lib/engine/pool";
@@ -52,8 +53,8 @@ export async function handOutImage(actor: Actor, readId: string, input: HandOutI
       ...(input.format && input.format !== "raw" ? { format: input.format } : {}),
     });
   });
-  const name = readName(read.stage, read.number).replace(" ", "-");
-  return { sha256, sizeBytes: read.sizeBytes, fileName: `${place.case.ref}_${driveLetter(place.drive)}_${place.chip.designator}_${name}_${sha256.slice(-8)}.${FORMAT_ENDING[input.format ?? "raw"]}` };
+  const image = { caseRef: place.case.ref, drive: driveLetter(place.drive), designator: place.chip.designator, stage: read.stage, number: read.number, sha256 };
+  return { sha256, sizeBytes: read.sizeBytes, fileName: handOutName(image, FORMAT_ENDING[input.format ?? "raw"]) };
 }
 
 /**
