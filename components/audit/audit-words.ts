@@ -113,21 +113,21 @@ export function overviewLines(facts: AuditOverview): OverviewLine[] {
 }
 
 /** The verdict: what is wrong first, else that nothing is, in one sentence that names logs, images and seal. */
-export function auditVerdict(facts: AuditOverview): { mark: MarkKind; sentence: string; why: string } {
+export function auditVerdict(facts: AuditOverview): { mark: MarkKind; sentence: string; why: string; go: { href: string; label: string } | null } {
   const lines = overviewLines(facts);
   const [blocks, cautions] = (["block", "caution"] as const).map((mark) => lines.filter((line) => line.mark === mark));
   if (blocks.length > 0) {
     const [first] = blocks;
-    return { mark: "block", sentence: first.sentence, why: `Something is wrong under ${listText(blocks.map((line) => line.title))}${cautions.length > 0 ? `, and something wants a look under ${listText(cautions.map((line) => line.title))}` : ""}. Nothing was repaired; each list names what was found.` };
+    return { mark: "block", sentence: first.sentence, why: `Something is wrong under ${listText(blocks.map((line) => line.title))}${cautions.length > 0 ? `, and something wants a look under ${listText(cautions.map((line) => line.title))}` : ""}. Nothing was repaired; each list names what was found.`, go: { href: first.href, label: `Open ${first.title}` } };
   }
   const { logs: { total, unchecked }, images, seals, now } = facts;
-  if (cautions.length > 0) return { mark: "caution", sentence: cautions[0].sentence, why: `Nothing was found changed or damaged. Look under ${listText(cautions.map((line) => line.title))}.` };
-  if (total === unchecked) return { mark: "wait", sentence: logs(facts).sentence, why: "A check computes every hash again, checks every signature and compares the head. It reports and never repairs." };
+  if (cautions.length > 0) return { mark: "caution", sentence: cautions[0].sentence, why: `Nothing was found changed or damaged. Look under ${listText(cautions.map((line) => line.title))}.`, go: { href: cautions[0].href, label: `Open ${cautions[0].title}` } };
+  if (total === unchecked) return { mark: "wait", sentence: logs(facts).sentence, why: "A check computes every hash again, checks every signature and compares the head. It reports and never repairs.", go: { href: "/audit/drives", label: "Check the logs…" } };
   const parts = [total === 1 ? "The one log checks out" : `All ${logsText(total)} check out`];
   if (images.total > 0 && images.oldest) parts.push(`the oldest look at a stored image was ${agoText(images.oldest, now)}`);
   if (seals?.newest) parts.push(sealsSentence(seals).sentence.split("; ").at(-1)!.replace(/\.$/, ""));
   else if (seals) parts.push("no seal was made yet");
-  return { mark: "ok", sentence: `${parts.join("; ")}.`, why: "As of the last check of each. A cut end shows only against what left the house: a bundle, a summary, a mail or the witness file." };
+  return { mark: "ok", sentence: `${parts.join("; ")}.`, why: "As of the last check of each. A cut end shows only against what left the house: a bundle, a summary, a mail or the witness file.", go: null };
 }
 
 /** "Drive A of case 26-0042", "The workshop" */

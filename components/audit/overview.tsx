@@ -14,11 +14,10 @@ function CaseNumbers({ text }: { text: string }) {
 
 /** Is anything wrong, and where: one sentence, then a line for each subject. */
 export function Overview({ facts, timeZone }: { facts: AuditOverview; timeZone: string }) {
-  const { mark, sentence, why } = auditVerdict(facts);
-  const unsure = facts.logs.unchecked > 0;
+  const { mark, sentence, why, go } = auditVerdict(facts);
   return (
     <>
-      <Section strong title="Verdict" note={exactText(facts.now, timeZone)}><Verdict mark={mark} sentence={<CaseNumbers text={sentence} />} why={why} buttons={unsure ? <ButtonLink variant="lead" href="/audit/drives">Check the logs…</ButtonLink> : null} /></Section>
+      <Section strong title="Verdict" note={exactText(facts.now, timeZone)}><Verdict mark={mark} sentence={<CaseNumbers text={sentence} />} why={why} buttons={go ? <ButtonLink variant="lead" href={go.href}>{go.label}</ButtonLink> : null} /></Section>
       <Section title="Where" note="What was found, subject by subject.">
         <table className="ruled lines">
           <caption className="sr-only">Subjects of the audit</caption>

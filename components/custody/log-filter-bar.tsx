@@ -19,10 +19,10 @@ export function LogFilterBar({ entries, shown, filter, onChange }: { entries: re
           </button>
         ))}
       </div>
-      <Select label="Steps" className="w-[200px]" value={filter.group} options={[{ value: "", label: "All steps" }, ...groupsIn(entries).map(({ key, label, count }) => ({ value: key, label: `${label} (${count})` }))]} onChange={(event) => onChange({ ...filter, group: event.target.value })} />
-      <Select label="Who" className="w-[170px]" value={filter.who} options={options("Anyone", entries.map((e) => e.actor.name))} onChange={(event) => onChange({ ...filter, who: event.target.value })} />
-      <Select label="Where" className="w-[170px]" value={filter.where} options={options("Anywhere", entries.map((e) => e.where))} onChange={(event) => onChange({ ...filter, where: event.target.value })} />
-      <Input label="Words" className="w-[200px]" value={filter.words} onChange={(event) => onChange({ ...filter, words: event.target.value })} />
+      <Select label="Steps" className="w-[190px]" value={filter.group} options={[{ value: "", label: "All steps" }, ...groupsIn(entries).map(({ key, label, count }) => ({ value: key, label: `${label} (${count})` }))]} onChange={(event) => onChange({ ...filter, group: event.target.value })} />
+      <Select label="Who" className="w-[150px]" value={filter.who} options={options("Anyone", entries.map((e) => e.actor.name))} onChange={(event) => onChange({ ...filter, who: event.target.value })} />
+      <Select label="Where" className="w-[150px]" value={filter.where} options={options("Anywhere", entries.map((e) => e.where))} onChange={(event) => onChange({ ...filter, where: event.target.value })} />
+      <Input label="Words" className="w-[160px]" value={filter.words} onChange={(event) => onChange({ ...filter, words: event.target.value })} />
       <p className="flex w-full flex-wrap items-center gap-x-4 gap-y-1 text-t2 text-ink-2" role="status">
         <span>{filtered ? `${shown} of ${entriesText(entries.length)}` : entriesText(entries.length)}, newest first</span>
         {filtered ? <><button type="button" className="min-h-6 text-green underline underline-offset-3" onClick={() => onChange(WHOLE_LOG)}>Show the whole log</button><a href={`?${filterQuery(filter)}`}>Link to this choice</a></> : null}

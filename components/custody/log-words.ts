@@ -3,7 +3,7 @@ import type { CustodyCheckView, CustodyEntryView } from "@/lib/views";
 
 export type LogKind = "all" | "reads" | "findings" | "signatures";
 export const LOG_KINDS: readonly { key: LogKind; label: string }[] = [
-  { key: "all", label: "All" }, { key: "reads", label: "Reads" }, { key: "findings", label: "Something differed" }, { key: "signatures", label: "Signatures" },
+  { key: "all", label: "All" }, { key: "reads", label: "Reads" }, { key: "findings", label: "Differed" }, { key: "signatures", label: "Signatures" },
 ];
 
 export function ofKind(entry: CustodyEntryView, kind: LogKind): boolean {
@@ -15,10 +15,10 @@ export function ofKind(entry: CustodyEntryView, kind: LogKind): boolean {
 
 /** Groups of steps, by the first word of the action; what none of them takes is "other". */
 const GROUPS: readonly { key: string; label: string; takes: RegExp }[] = [
-  { key: "records", label: "Drive, boards and chips", takes: /^(case|drive|board|chip)\./ },
+  { key: "records", label: "Drive, boards and chips", takes: /^(case|request|parcel|photo|note|shelf|drive|board|chip)\./ },
   { key: "reads", label: "Reads", takes: /^(read|composite)\./ },
   { key: "approvals", label: "Approvals", takes: /^approval\./ },
-  { key: "transfers", label: "Transfers and read-backs", takes: /^(transfer|readback)\./ },
+  { key: "transfers", label: "Transfers and read-backs", takes: /^(transfer|readback|start-up)\./ },
   { key: "images", label: "Stored images", takes: /^images?\.(found|second|checked)/ },
   { key: "outside", label: "Hand-outs, bundles, summaries", takes: /^(image\.handed-out|bundle\.|summary\.|share\.)/ },
   { key: "items", label: "Hand-overs of items", takes: /^item\./ },

@@ -32,7 +32,7 @@ export default async function AuditImagesPage({ searchParams }: { searchParams: 
       <Section strong title="Stored bytes" note={counts.oldest ? `Longest ago: ${exactText(counts.oldest, session.timeZone)}` : undefined}>
         <Verdict mark={mark} sentence={sentence} why="A fault is read a second time before it is called one. It is written into the log of every drive that has the image; its approval falls and the image is not handed out." />
       </Section>
-      <Section title="Reading again" note="Set where the server runs: SCRUB_DAYS and SCRUB_MEBIBYTES_A_SECOND.">
+      <Section title="Reading again" note="Set where the server runs.">
         <FindingLine kind={counts.keeping === "keeping-up" ? "ok" : "caution"}>{counts.keepingSentence}</FindingLine>
         <p className="mt-1 max-w-[76ch] text-ink-2">
           {counts.days > 0 ? `Each is read again within ${countOf(counts.days, "day")}, at ${withCommas(counts.mebibytesPerSecond)} MiB a second at most: one reading of all takes ${hoursText(counts.hours)}. ` : ""}
