@@ -35,7 +35,7 @@ function reasonOf(error: unknown): string | undefined {
 async function* contentOf(entry: Entry, readAt: ReadAt): AsyncGenerator<Uint8Array> {
   if (entry.directory) return;
   const { readable, writable } = new TransformStream<Uint8Array, Uint8Array>();
-  const whole = entry.getData(writable, { checkSignature: true, checkAmbiguity: true }).then(() => null, (error: unknown) => ({ error }));
+  const whole = entry.getData(writable, { checkSignature: true, checkAmbiguity: true, checkOverlappingEntry: true }).then(() => null, (error: unknown) => ({ error }));
   // what goes wrong before the first byte never reaches the stream: it would be waited for without end
   const broken = whole.then((found) => found ?? new Promise<never>(() => {}));
   const reader = readable.getReader();

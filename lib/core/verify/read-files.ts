@@ -46,6 +46,7 @@ export async function readFiles(
         hash.update(chunk);
         sizeBytes += chunk.length;
         doneBytes += chunk.length;
+        if (sizeBytes > entry.sizeBytes) throw new EntryFault("It is longer than it says of itself.");
         if (chunks) {
           held += chunk.length;
           if (sizeBytes > mostBytes(path) || held > MOST_HELD_BYTES) throw new NotVerified(`${path} is larger than this check can hold. Unpack the bundle and run its check.sh.`);
