@@ -59,10 +59,12 @@ async function elsewhere(tx: Transaction, place: ChipPlace, read: Read): Promise
   if (read.stage !== "before") return [];
   const same = await Read.findAll({ where: { sha256: read.sha256, counted: true, chipId: { [Op.ne]: place.chip.id } }, order: ["storedAt"], transaction: tx });
   const own = new Set((await Transfer.findAll({ attributes: ["id"], where: { chipId: place.chip.id }, transaction: tx })).map((t) => t.id));
+  const places = new Map<string, ChipPlace>();
+  for (const id of new Set(same.map((other) => other.chipId))) places.set(id, await placeOfChip(id, tx));
   const found: JudgeInput["elsewhere"] = [];
   for (const other of same) {
     if (other.transferId && own.has(other.transferId)) continue;
-    const there = await placeOfChip(other.chipId, tx);
+    const there = places.get(other.chipId)!;
     const relation = other.stage === "donor" ? "donor-content" : there.drive.id === place.drive.id ? "other-chip" : "other-drive";
     found.push({
       relation, readName: readName(other.stage, other.number), designator: there.chip.designator,
