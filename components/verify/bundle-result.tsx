@@ -15,11 +15,11 @@ export function BundleResult({ file, report, onAnother }: { file: File; report: 
   return (
     <>
       <Section title="Verdict" note={<span className="[overflow-wrap:anywhere]">{file.name}, {countOf(file.size, "byte")}</span>} strong>
-        <Verdict mark={good ? "ok" : "block"} sentence={report.sentence}
+        <Verdict mark={good ? "ok" : "block"} sentence={<span className="[overflow-wrap:anywhere]">{report.sentence}</span>}
           why={good && stranger ? "The bundle fits together in every part. Whether it is the workshop’s own shows when you compare a key’s fingerprint with the one in the mail or on the summary." : undefined}
           buttons={<><Button onClick={() => window.print()}><Icon name="print" />Print</Button><Button variant="text" onClick={onAnother}>Check another file</Button></>} />
       </Section>
-      <Section title="What was checked" note={`${countOf(report.steps.length, "part")}, in the order in which each leans on the one before.`}><StepList steps={report.steps} /></Section>
+      <Section title="What was checked" note={report.steps.length > 1 ? `${countOf(report.steps.length, "part")}, in the order in which each leans on the one before.` : "Nothing behind it could be looked at."}><StepList steps={report.steps} /></Section>
       {facts.logKey || facts.heads.length > 0 ? (
         <Section title="To compare" note="With the mail of the daily seal, with the summary, or with an earlier bundle of this case.">
           <dl className="grid gap-3">
