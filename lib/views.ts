@@ -610,7 +610,7 @@ export interface FaultyImageView {
   sizeBytes: number;
   /** RFC 3339, when it was last read whole */
   checkedAt: string | null;
-  uses: { caseId: string; caseRef: string; driveId: string; chipId: string; name: string }[];
+  uses: { caseId: string | null; caseRef: string | null; driveId: string | null; chipId: string | null; name: string }[];
 }
 
 /** How the stored images are and how far reading them again has come. A limited auditor's numbers are of their cases. */
@@ -676,6 +676,9 @@ export interface ParcelView {
   receivedAt: string | null;
   closed: boolean;
   asked: AskedDrive;
+  /** a word of lib/core/request-words.ts; null for a case made at the desk */
+  enclosure: string | null;
+  boardHidden: boolean;
 }
 
 /** One printed label: which plate it carries, the large word on it, and the lines below. */
@@ -711,4 +714,38 @@ export interface WriteTicketView {
   twoPersonRule: boolean;
   composite: boolean;
   revoked: { by: string; at: string; cause: string; reason: string } | null;
+}
+
+/** A case and what its papers say besides. */
+export interface PrintCaseView {
+  case: CaseView;
+  receipt: ReceiptView | null;
+  returned: { items: string[]; toPerson: string; carrier: string | null; tracking: string | null; sealNumber: string | null; note: string | null; by: PersonView; at: string } | null;
+  policy: Policy;
+  workshop: string;
+  workshopAddress: string[];
+  timeZone: string;
+  printedAt: string;
+  company: string | null;
+  returnAddress: string | null;
+}
+
+/** A sheet for the bench without a screen: the chip, its reads so far, room for more. */
+export interface ReadSheetView {
+  key: string;
+  refChecked: string;
+  driveLetter: string;
+  board: BoardRole;
+  boardNumber: string;
+  revision: string | null;
+  designator: string;
+  bus: Bus;
+  package: string | null;
+  marking: string | null;
+  sizeBytes: number;
+  supplyMillivolts: number | null;
+  stages: {
+    stage: Stage;
+    reads: { number: number; seating: number; reader: string; supplyMillivolts: number | null; crc32: string; sha256: string; operator: string; at: string; counted: boolean }[];
+  }[];
 }

@@ -3,6 +3,7 @@ import type { Readable } from "node:stream";
 import { env } from "@/lib/env";
 import * as local from "./local";
 import { imagePath } from "./paths";
+import * as reduced from "./reduced";
 import * as writeOnce from "./write-once";
 
 export type { Arrived } from "./write-once";
@@ -24,5 +25,8 @@ export const storeIsThere = () => local.storeIsThere(env().dataDir);
 export const verifiedStream = (sha256: string) => local.verifiedStream(env().dataDir, sha256);
 export const freeBytes = () => local.freeBytes(env().dataDir);
 export const clearIncoming = (olderThanMs: number) => local.clearIncoming(env().dataDir, olderThanMs);
+/** Copies of photos for the screen, by the digest of the original and their longer edge. */
+export const readReduced = (sha256: string, edge: number) => reduced.readReduced(env().dataDir, sha256, edge);
+export const writeReduced = (sha256: string, edge: number, bytes: Buffer) => reduced.writeReduced(env().dataDir, sha256, edge, bytes);
 export { dropNextKey, keyIdOf, type KeyUse, logKey, makeNextKey, nextKeyId, placeNextKey, sealKey, verifySignature } from "./keys";
 export { appendWitness, readWitness, witnessMark } from "./witness-file";

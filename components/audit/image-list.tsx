@@ -12,16 +12,27 @@ import { sizeText } from "@/lib/core/quantity";
 const column = columnsFor<StoredImageRow>();
 const STATE = { sound: { mark: "ok", word: "Equals its digest" }, damaged: { mark: "block", word: "Damaged" }, missing: { mark: "block", word: "Missing" } } as const;
 
-/** "Case 26-0042, Drive A, Orig U12" with all of its reads in one line. */
-function byChip(uses: StoredImageRow["uses"]): { chipId: string; place: string; reads: string[] }[] {
-  const chips = new Map<string, { chipId: string; place: string; reads: string[] }>();
-  for (const { chipId, name } of uses) {
+interface UsedBy {
+  place: string;
+  /** the page of the chip, else of the drive, else of the case; null for a board on the shelf */
+  href: string | null;
+  /** "Read 2", "photo" */
+  as: string[];
+}
+
+/** "Case 26-0042, Drive A, Orig U12" with all that is kept of it in one line. */
+function byPlace(uses: StoredImageRow["uses"]): UsedBy[] {
+  const places = new Map<string, UsedBy>();
+  for (const { chipId, driveId, caseId, name } of uses) {
     const words = name.split(", ");
-    const chip = chips.get(chipId) ?? { chipId, place: words.slice(0, 3).join(", "), reads: [] };
-    chip.reads.push(words.slice(3).join(", "));
-    chips.set(chipId, chip);
+    // what follows the thing's name: a read's number and what its text was, or the word for a photo
+    const split = chipId ? 3 : words.length - 1;
+    const place = words.slice(0, split).join(", ");
+    const known = places.get(place) ?? { place, href: chipId ? `/chips/${chipId}` : driveId ? `/drives/${driveId}` : caseId ? `/cases/${caseId}` : null, as: [] };
+    known.as.push(words.slice(split).join(", "));
+    places.set(place, known);
   }
-  return [...chips.values()];
+  return [...places.values()];
 }
 
 /** Stored images by when their bytes were last read whole, the longest ago first. */
@@ -40,8 +51,8 @@ export function ImageList({ list, sort, order, timeZone, empty }: {
     column.accessor("storedAt", { id: "stored", header: "Stored", cell: ({ row }) => <span className="whitespace-nowrap">{exactText(row.original.storedAt, timeZone)}</span> }),
     column.display({
       id: "uses", header: "Used by", enableSorting: false, cell: ({ row: { original: { uses, useCount } } }) => (
-        <>{byChip(uses).map(({ chipId, place, reads }) => <span key={chipId} className="block"><Link href={`/chips/${chipId}`}>{place}</Link>: {reads.join("; ")}</span>)}
-          {useCount > uses.length ? <span className="block text-ink-2">and {useCount - uses.length} more</span> : useCount === 0 ? <span className="text-ink-2">no read</span> : null}</>
+        <>{byPlace(uses).map(({ place, href, as }) => <span key={place} className="block">{href ? <Link href={href}>{place}</Link> : place}: {as.join("; ")}</span>)}
+          {useCount > uses.length ? <span className="block text-ink-2">and {useCount - uses.length} more</span> : useCount === 0 ? <span className="text-ink-2">nothing on record</span> : null}</>
       ),
     }),
   ]), [timeZone]);

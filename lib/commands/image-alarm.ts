@@ -5,7 +5,7 @@ import { type Alarm, queueAlarm } from "./queue-alarm";
 
 const LISTED = 40;
 const ROLES = ["lead", "admin"] as const;
-const TO_DO = "What to do: put the image back from a backup, or read the chip again: a new read with the same bytes takes its place. Until then it is not shown, compared, approved, handed out or put into a bundle.";
+const TO_DO = "What to do: put the image back from a backup, or read the chip again: a new read with the same bytes takes its place. A photo comes back when the same file is sent once more. Until then it is not shown, compared, approved, handed out or put into a bundle.";
 
 export interface Faulty {
   sha256: string;
@@ -15,17 +15,18 @@ export interface Faulty {
 }
 
 const list = (uses: ImageUse[]) => [...uses.slice(0, LISTED).map((use) => `  ${use.name}`), ...(uses.length > LISTED ? [`  and ${uses.length - LISTED} more`] : [])];
-const link = (uses: ImageUse[]) => (uses[0] ? [`${env().publicUrl}/chips/${uses[0].chipId}`] : []);
+const pageOf = ({ chipId, driveId, caseId }: ImageUse) => (chipId ? `/chips/${chipId}` : driveId ? `/drives/${driveId}` : caseId ? `/cases/${caseId}` : null);
+const link = (uses: ImageUse[]) => uses.slice(0, 1).map(pageOf).filter((page) => page !== null).map((page) => `${env().publicUrl}${page}`);
 const fell = (approvals: number) => (approvals === 0 ? [] : [approvals === 1 ? "The approval that stood on it fell." : `The ${approvals} approvals that stood on it fell.`]);
 
 /** Says to the leads and admins that one stored image is not what was stored: which, what it is kept as, what to do. */
 export async function mailFaulty(tx: Transaction, { sha256, state, why }: Faulty, where: string, uses: ImageUse[], approvals: number): Promise<void> {
   const alarm: Alarm = {
-    roles: ROLES, caseId: null, subject: `A stored image is ${state}: ${uses[0]?.name ?? `${sha256.slice(0, 8)}…, of no read`}`,
+    roles: ROLES, caseId: null, subject: `A stored image is ${state}: ${uses[0]?.name ?? `${sha256.slice(0, 8)}…, of nothing on record`}`,
     text: [
       state === "missing" ? "A stored image is gone: under its name lies no file. Twinread looked twice." : "A stored image is no longer what was stored. Twinread read it twice.",
       "", `SHA-256  ${sha256}`, ...(why ? [`Found    It ${why}.`] : []), `Found by ${where}`, `File     images/sha256/${sha256.slice(0, 2)}/${sha256} in the data folder`,
-      "", uses.length === 0 ? "No read is kept in it." : "It is kept as", ...list(uses), "", ...fell(approvals), TO_DO, ...link(uses),
+      "", uses.length === 0 ? "Nothing on record is kept in it." : "It is kept as", ...list(uses), "", ...fell(approvals), TO_DO, ...link(uses),
     ].join("\n"),
   };
   await queueAlarm(tx, alarm);

@@ -1,9 +1,11 @@
-/** One heavy judgement at a time in this process, so that other requests stay quick. Waiters go in order. */
-const shared = globalThis as unknown as { twinreadTurn?: Promise<unknown> };
+type Line = "judging" | "photos";
+const shared = globalThis as unknown as { twinreadTurns?: Map<Line, Promise<unknown>> };
 
-export function inTurn<T>(run: () => Promise<T>): Promise<T> {
-  const turn = (shared.twinreadTurn ?? Promise.resolve()).then(run, run);
-  shared.twinreadTurn = turn.catch(() => {});
+/** One heavy work of a line at a time in this process, so that other requests stay quick. Waiters go in order. */
+export function inTurn<T>(run: () => Promise<T>, line: Line = "judging"): Promise<T> {
+  const turns = (shared.twinreadTurns ??= new Map());
+  const turn = (turns.get(line) ?? Promise.resolve()).then(run, run);
+  turns.set(line, turn.catch(() => {}));
   return turn;
 }
 

@@ -86,7 +86,7 @@ export const checkedNow = () => ({ checkedAt: connection().literal("UTC_TIMESTAM
 /** Locks the chain of every drive that has this image, in the order of their ids. */
 async function lockDrivesOf(tx: Transaction, digest: Buffer): Promise<{ drives: string[]; uses: ImageUse[] }> {
   const uses = await usesOfImages([digest], tx);
-  const drives = [...new Set(uses.map((use) => use.driveId))].sort();
+  const drives = [...new Set(uses.flatMap((use) => (use.driveId ? [use.driveId] : [])))].sort();
   for (const drive of drives) await lockChain(tx, drive);
   return { drives, uses };
 }

@@ -86,7 +86,7 @@ export interface StoredImageRow {
   /** when its bytes were last read whole; null since it was stored */
   checkedAt: string | null;
   /** at most the first twelve, "Case 26-0042, Drive A, Orig U12, Read 2" */
-  uses: { name: string; chipId: string }[];
+  uses: { name: string; chipId: string | null; driveId: string | null; caseId: string | null }[];
   useCount: number;
 }
 

@@ -2,7 +2,9 @@ import { Readable } from "node:stream";
 import type { Request as ExpressRequest, Response as ExpressResponse } from "express";
 import multer from "multer";
 import { AppError } from "@/lib/errors";
-import { FREE_SPACE_FLOOR_BYTES, MAX_CALL_BYTES, MAX_FIELD_BYTES, MAX_FIELDS_A_CALL, MAX_FILES_A_CALL, MAX_IMAGE_BYTES, UPLOADS_IN_FLIGHT } from "@/lib/limits";
+import {
+  FREE_SPACE_FLOOR_BYTES, MAX_CALL_BYTES, MAX_FIELD_BYTES, MAX_FIELDS_A_CALL, MAX_FILES_A_CALL, MAX_IMAGE_BYTES, MAX_PHOTO_BYTES, MAX_PHOTOS_A_CALL, MAX_REQUEST_BYTES, MAX_REQUEST_PHOTOS, MIB, UPLOADS_IN_FLIGHT,
+} from "@/lib/limits";
 import { type Arrived, discard, freeBytes, receive } from "@/storage";
 
 export interface Upload {
@@ -11,13 +13,37 @@ export interface Upload {
   fields: Map<string, string[]>;
 }
 
-const SLACK = 1024 * 1024;
-const MULTER: Record<string, [code: "too-large" | "malformed", detail: string]> = {
-  LIMIT_FILE_SIZE: ["too-large", "A file is larger than 64 MiB, the largest chip here. Nothing was stored; check what the reader saved."],
-  LIMIT_FILE_COUNT: ["malformed", `At most ${MAX_FILES_A_CALL} files a call. Nothing was stored; send them in several calls.`],
-  LIMIT_UNEXPECTED_FILE: ["malformed", `Files go into parts named file, at most ${MAX_FILES_A_CALL} a call. Nothing was stored.`],
+/** What one kind of upload may bring. Bytes. */
+export interface UploadLimits {
+  /** "images", for sentences */
+  what: string;
+  fileBytes: number;
+  tooLarge: string;
+  files: number;
+  callBytes: number;
+  /** calls of this kind that may be under way at once */
+  atOnce: number;
+}
+
+export const READS: UploadLimits = {
+  what: "images", fileBytes: MAX_IMAGE_BYTES, tooLarge: "A file is larger than 64 MiB, the largest chip here. Nothing was stored; check what the reader saved.",
+  files: MAX_FILES_A_CALL, callBytes: MAX_CALL_BYTES, atOnce: UPLOADS_IN_FLIGHT,
 };
-let inFlight = 0;
+const PHOTO_TOO_LARGE = "A file is larger than 20 MiB. Nothing was stored; take the photo with a lower resolution, or send a smaller copy.";
+export const PHOTOS: UploadLimits = {
+  what: "photos", fileBytes: MAX_PHOTO_BYTES, tooLarge: PHOTO_TOO_LARGE, files: MAX_PHOTOS_A_CALL, callBytes: MAX_PHOTO_BYTES * MAX_PHOTOS_A_CALL, atOnce: 8,
+};
+/** By people without an account: never so many that the bench has to wait. */
+export const REQUEST_PHOTOS: UploadLimits = { what: "photos", fileBytes: MAX_PHOTO_BYTES, tooLarge: PHOTO_TOO_LARGE, files: MAX_REQUEST_PHOTOS, callBytes: MAX_REQUEST_BYTES, atOnce: 3 };
+
+const SLACK = 1024 * 1024;
+const refusals = ({ files, tooLarge }: UploadLimits): Record<string, [code: "too-large" | "malformed", detail: string]> => ({
+  LIMIT_FILE_SIZE: ["too-large", tooLarge],
+  LIMIT_FILE_COUNT: ["malformed", `At most ${files} files a call. Nothing was stored; send them in several calls.`],
+  LIMIT_UNEXPECTED_FILE: ["malformed", `Files go into parts named file, at most ${files} a call. Nothing was stored.`],
+});
+const tooMuch = ({ callBytes }: UploadLimits) => new AppError("too-large", `A call carries at most ${callBytes / MIB} MiB. Nothing was stored; send fewer files a call.`);
+const inFlight = new Map<UploadLimits, number>();
 
 /** multer's storage engine: the store itself receives the stream, hashing while it writes. */
 class IntoStore implements multer.StorageEngine {
@@ -30,32 +56,32 @@ class IntoStore implements multer.StorageEngine {
 }
 
 /** Ends the body once it passes the limit: multer itself would read a refused upload to its end. */
-async function* capped(body: ReadableStream<Uint8Array>): AsyncGenerator<Uint8Array> {
+async function* capped(body: ReadableStream<Uint8Array>, limits: UploadLimits): AsyncGenerator<Uint8Array> {
   let size = 0;
   for await (const chunk of body as unknown as AsyncIterable<Uint8Array>) {
     size += chunk.length;
-    if (size > MAX_CALL_BYTES + SLACK) throw new AppError("too-large", "A call carries at most 512 MiB. Nothing was stored; send fewer files a call.");
+    if (size > limits.callBytes + SLACK) throw tooMuch(limits);
     yield chunk;
   }
 }
 
 /** Takes a multipart call into the store's incoming folder. Hostile input: every count and size has a limit. */
-export async function takeUpload<T>(request: Request, run: (upload: Upload) => Promise<T>): Promise<T> {
+export async function takeUpload<T>(request: Request, run: (upload: Upload) => Promise<T>, limits = READS): Promise<T> {
   const type = request.headers.get("content-type") ?? "";
-  if (!type.toLowerCase().startsWith("multipart/form-data")) throw new AppError("wrong-media-type", "Send the images as multipart/form-data, each as a part named file.");
+  if (!type.toLowerCase().startsWith("multipart/form-data")) throw new AppError("wrong-media-type", `Send the ${limits.what} as multipart/form-data, each as a part named file.`);
   if (!/boundary=/i.test(type)) throw new AppError("malformed", "The multipart boundary is missing. Let your program set the Content-Type itself.");
-  if (request.headers.get("content-encoding")) throw new AppError("wrong-media-type", "Send the images without Content-Encoding.");
+  if (request.headers.get("content-encoding")) throw new AppError("wrong-media-type", `Send the ${limits.what} without Content-Encoding.`);
   const declared = Number(request.headers.get("content-length") ?? 0);
-  if (declared > MAX_CALL_BYTES + SLACK) throw new AppError("too-large", "A call carries at most 512 MiB. Nothing was stored; send fewer files a call.");
-  if (inFlight >= UPLOADS_IN_FLIGHT) throw new AppError("too-many", "Many uploads are under way. Send again in a few seconds; nothing was stored.", { retryAfterSeconds: 5 });
+  if (declared > limits.callBytes + SLACK) throw tooMuch(limits);
+  if ((inFlight.get(limits) ?? 0) >= limits.atOnce) throw new AppError("too-many", "Many uploads are under way. Send again in a few seconds; nothing was stored.", { retryAfterSeconds: 5 });
   if ((await freeBytes()) < FREE_SPACE_FLOOR_BYTES + declared) throw new AppError("no-room", "The disk that holds the images is nearly full. Nothing was stored; free some space and send again.");
-  inFlight += 1;
+  inFlight.set(limits, (inFlight.get(limits) ?? 0) + 1);
   let upload: Upload | undefined;
   try {
-    upload = await parse(request);
+    upload = await parse(request, limits);
     return await run(upload);
   } finally {
-    inFlight -= 1;
+    inFlight.set(limits, inFlight.get(limits)! - 1);
     // what became an image is linked under its digest by now; what is still here belongs to nobody
     for (const file of upload?.files ?? []) await discard(file.arrived);
   }
@@ -82,9 +108,9 @@ export async function readOut(request: Request): Promise<void> {
   }
 }
 
-async function parse(request: Request): Promise<Upload> {
-  if (!request.body) throw new AppError("malformed", "The request has no body. Send 1 to 16 parts named file.");
-  const stream = Readable.from(capped(request.body), { objectMode: false, highWaterMark: 256 * 1024 }) as Readable & {
+async function parse(request: Request, limits: UploadLimits): Promise<Upload> {
+  if (!request.body) throw new AppError("malformed", `The request has no body. Send 1 to ${limits.files} parts named file.`);
+  const stream = Readable.from(capped(request.body, limits), { objectMode: false, highWaterMark: 256 * 1024 }) as Readable & {
     headers: Record<string, string>; files?: (Express.Multer.File & { arrived?: Arrived })[]; body?: Record<string, string | string[]>;
   };
   stream.headers = Object.fromEntries(request.headers);
@@ -94,8 +120,8 @@ async function parse(request: Request): Promise<Upload> {
     // the name is evidence and kept as it came; no path is ever made of it
     preservePath: true,
     // fieldNestingDepth: a field called note[4294967290] would become a list of that length
-    limits: { fileSize: MAX_IMAGE_BYTES, files: MAX_FILES_A_CALL, fields: MAX_FIELDS_A_CALL, fieldSize: MAX_FIELD_BYTES, fieldNameSize: 100, parts: MAX_FILES_A_CALL + MAX_FIELDS_A_CALL, headerPairs: 20, fieldNestingDepth: 0 },
-  }).array("file", MAX_FILES_A_CALL);
+    limits: { fileSize: limits.fileBytes, files: limits.files, fields: MAX_FIELDS_A_CALL, fieldSize: MAX_FIELD_BYTES, fieldNameSize: 100, parts: limits.files + MAX_FIELDS_A_CALL, headerPairs: 20, fieldNestingDepth: 0 },
+  }).array("file", limits.files);
   const onAbort = () => stream.destroy(new Error("the sender went away"));
   request.signal.addEventListener("abort", onAbort, { once: true });
   try {
@@ -106,7 +132,7 @@ async function parse(request: Request): Promise<Upload> {
   } catch (error) {
     // what broke off within a file leaves an entry that never arrived
     for (const file of stream.files ?? []) if (file.arrived) await discard(file.arrived);
-    throw refusal(error);
+    throw refusal(error, limits);
   } finally {
     request.signal.removeEventListener("abort", onAbort);
     if (!stream.readableEnded) stream.destroy();
@@ -115,10 +141,10 @@ async function parse(request: Request): Promise<Upload> {
   return { files: (stream.files ?? []).map((file) => ({ arrived: file.arrived!, fileName: file.originalname })), fields };
 }
 
-function refusal(error: unknown): unknown {
+function refusal(error: unknown, limits: UploadLimits): unknown {
   if (error instanceof AppError) return error;
   if (error instanceof multer.MulterError) {
-    const [code, detail] = MULTER[error.code] ?? ["malformed", `The upload has too many or too long parts (${error.message}). Nothing was stored.`];
+    const [code, detail] = refusals(limits)[error.code] ?? ["malformed", `The upload has too many or too long parts (${error.message}). Nothing was stored.`];
     return new AppError(code, detail);
   }
   const fault = error as NodeJS.ErrnoException;

@@ -38,13 +38,13 @@ export async function auditImages(actor: Actor, input: AuditInput): Promise<{ it
      ORDER BY ${SORT[input.sort] ?? VERIFIED} ${input.order === "desc" ? "DESC" : "ASC"}, i.sha256 LIMIT :limit OFFSET :offset`,
     { replacements, type: QueryTypes.SELECT },
   );
-  const uses = (await usesOfImages(rows.map((row) => row.sha256))).filter((use) => !cases || cases.includes(use.caseId));
+  const uses = (await usesOfImages(rows.map((row) => row.sha256))).filter((use) => !cases || (use.caseId !== null && cases.includes(use.caseId)));
   const items = rows.map((row): StoredImageRow => {
     const sha256 = row.sha256.toString("hex");
     const mine = uses.filter((use) => use.sha256 === sha256);
     return {
       sha256, sizeBytes: row.sizeBytes, state: row.state, storedAt: row.storedAt.toISOString(), checkedAt: row.checkedAt?.toISOString() ?? null,
-      uses: mine.slice(0, USES).map(({ name, chipId }) => ({ name, chipId })), useCount: mine.length,
+      uses: mine.slice(0, USES).map(({ name, chipId, driveId, caseId }) => ({ name, chipId, driveId, caseId })), useCount: mine.length,
     };
   });
   return { items, total: Number(n), page: input.page, pageSize: input.pageSize };

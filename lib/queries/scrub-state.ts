@@ -72,7 +72,7 @@ async function placed(seen: Seen[], cases: readonly string[] | null): Promise<Fa
   const uses = await usesOfImages(seen.map((one) => one.sha256));
   return seen.map(({ sha256, ...rest }) => {
     const hex = sha256.toString("hex");
-    const mine = uses.filter((use) => use.sha256 === hex && (cases === null || cases.includes(use.caseId)));
+    const mine = uses.filter((use) => use.sha256 === hex && (cases === null || (use.caseId !== null && cases.includes(use.caseId))));
     return { ...rest, sha256: hex, uses: mine.map(({ caseId, caseRef, driveId, chipId, name }) => ({ caseId, caseRef, driveId, chipId, name })) };
   });
 }

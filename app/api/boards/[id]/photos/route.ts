@@ -1,0 +1,3 @@
+import { photoRoute } from "@/lib/http/photo-upload";
+
+export const { GET, POST, PUT, PATCH, DELETE, OPTIONS } = photoRoute("board");
