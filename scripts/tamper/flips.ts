@@ -80,7 +80,7 @@ export interface ZipFlip {
 }
 
 /** The page's check on the archive with single bytes flipped, and `unzip -t` beside it. */
-export async function flipArchive(zip: Buffer, places: Iterable<number>, withUnzip: boolean): Promise<ZipFlip[]> {
+export async function flipArchive(zip: Buffer, places: Iterable<number>, withUnzip: (at: number) => boolean): Promise<ZipFlip[]> {
   const tools = rememberingTools();
   const file = path.join(mkdtempSync(path.join(os.tmpdir(), "twinread-zip-")), `${FOLDER}.zip`);
   const flips: ZipFlip[] = [];
@@ -88,7 +88,7 @@ export async function flipArchive(zip: Buffer, places: Iterable<number>, withUnz
     const other = flipped(zip, at);
     const report = await verifyZip(other, tools);
     let unzip: boolean | null = null;
-    if (withUnzip) {
+    if (withUnzip(at)) {
       writeFileSync(file, other);
       unzip = (await exitOf("unzip", ["-tqq", file])) !== 0;
     }
