@@ -2,6 +2,8 @@
  * What leaves the house: plain, minimal objects for pages and API. Sizes in bytes, digests lower-case hex,
  * times RFC 3339 UTC text, ids UUIDs. Rows never leave; queries build these.
  */
+import type { RequestState } from "./core/request-state";
+import type { RequestAnswers } from "./schemas/request";
 import type { DiagnosisView } from "./core/diagnosis";
 import type { DriveWarning } from "./core/drive-warnings";
 import type { Sibling } from "./core/two-chips";
@@ -748,4 +750,49 @@ export interface ReadSheetView {
     stage: Stage;
     reads: { number: number; seating: number; reader: string; supplyMillivolts: number | null; crc32: string; sha256: string; operator: string; at: string; counted: boolean }[];
   }[];
+}
+
+/** The customer's private page. */
+export interface RequestPageView {
+  workshop: string;
+  /** lines of the workshop's address; may be empty */
+  address: string[];
+  hours: string | null;
+  contact: { email: string | null; phone: string | null };
+  refChecked: string;
+  state: RequestState;
+  answers: RequestAnswers;
+  /** how many the customer sent */
+  photos: number;
+  requestedAt: string;
+  receivedAt: string | null;
+  /** the slip is still of use */
+  slip: boolean;
+  /** the request can still be taken back */
+  withdraws: boolean;
+  deletion: { askedAt: string; answerBy: string } | null;
+  summarySentAt: string | null;
+  /** when this page ends, once that is known */
+  ends: string | null;
+}
+
+/** The page that travels with the board. */
+export interface RequestSlipView {
+  workshop: string;
+  address: string[];
+  hours: string | null;
+  refChecked: string;
+  answers: RequestAnswers;
+}
+
+/** A request as the desk sees it on its case. */
+export interface RequestSectionView {
+  id: string;
+  answers: RequestAnswers;
+  requestedAt: string;
+  /** the sentence that the customer's page shows */
+  shown: string;
+  closed: boolean;
+  link: { ends: string | null; works: boolean };
+  deletion: { askedAt: string; answerBy: string; message: string | null } | null;
 }

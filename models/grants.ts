@@ -9,7 +9,7 @@ export const GRANTS: { table: string; grants: string[] }[] = [
   { table: "chain_checks", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "user_cases", grants: ["SELECT", "INSERT", "DELETE"] },
   { table: "hand_overs", grants: ["SELECT", "INSERT", "UPDATE (received, confirmed_by, confirmed_at, confirmation)"] },
-  { table: "requests", grants: ["SELECT", "INSERT", "UPDATE (expires_at, deletion_asked_at, deletion_message)"] },
+  { table: "requests", grants: ["SELECT", "INSERT", "UPDATE (token_hash, expires_at, deletion_asked_at, deletion_message)"] },
   { table: "receipts", grants: ["SELECT", "INSERT"] },
   { table: "shelf_boards", grants: ["SELECT", "INSERT", "UPDATE"] },
   { table: "photos", grants: ["SELECT", "INSERT", "UPDATE (caption)"] },

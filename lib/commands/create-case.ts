@@ -1,11 +1,9 @@
 import { randomUUID } from "node:crypto";
-import { QueryTypes } from "sequelize";
-import { caseRef } from "@/lib/core/case-number";
 import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
-import { env } from "@/lib/env";
 import type { CaseInput } from "@/lib/schemas/case";
-import { Case, connection, Customer, inTransaction, type Transaction } from "@/models";
+import { Case, Customer, inTransaction } from "@/models";
 import { appendEntry } from "./append-entry";
+import { nextCaseRef } from "./next-case-ref";
 import { allow } from "./refuse";
 
 /** Records a case with its customer; its number counts up per year in the workshop's time zone. */
@@ -13,7 +11,7 @@ export async function createCase(actor: Actor, input: CaseInput): Promise<{ id: 
   allow(actor, "case.create");
   return inTransaction(async (tx) => {
     const now = new Date();
-    const ref = await nextRef(tx, now);
+    const ref = await nextCaseRef(tx, now);
     const customer = await Customer.create({
       id: randomUUID(), name: input.customer.name, email: input.customer.email,
       phone: input.customer.phone ?? null, contact: input.customer.contact ?? null, createdAt: now,
@@ -27,16 +25,4 @@ export async function createCase(actor: Actor, input: CaseInput): Promise<{ id: 
     });
     return { id: made.id, ref };
   });
-}
-
-async function nextRef(tx: Transaction, now: Date): Promise<string> {
-  const year = Number(new Intl.DateTimeFormat("en", { timeZone: env().timeZone, year: "numeric" }).format(now));
-  await connection().query(
-    "INSERT INTO case_counters (year, last_number) VALUES (?, 1) ON DUPLICATE KEY UPDATE last_number = last_number + 1",
-    { replacements: [year], transaction: tx },
-  );
-  const [row] = await connection().query<{ n: number }>("SELECT last_number AS n FROM case_counters WHERE year = ?", {
-    replacements: [year], transaction: tx, type: QueryTypes.SELECT,
-  });
-  return caseRef(year, row.n);
 }

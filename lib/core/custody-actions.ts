@@ -1,6 +1,6 @@
 import { z } from "zod";
 import {
-  AS_SENT, BOARD_ROLES, BUSES, CLOSED_KINDS, FORMATS, ITEM_TYPES, KEY_PURPOSES, METHODS, PHOTO_KINDS, PHOTO_SUBJECTS, readName, ROLES, SEAL_CAUSES,
+  AS_SENT, BOARD_ROLES, BUSES, CLOSED_KINDS, ENCRYPTIONS, FORMATS, ITEM_TYPES, KEY_PURPOSES, METHODS, PHOTO_KINDS, PHOTO_SUBJECTS, readName, ROLES, SEAL_CAUSES,
   seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS, WAITING_FOR,
 } from "./words";
 
@@ -30,6 +30,12 @@ const kib = (n: number) => (n % 1024 === 0 ? `${(n / 1024).toLocaleString("en")}
 const changes = (list: { field: string; from: unknown; to: unknown }[]) =>
   list.map((c) => `${c.field} from ${c.from ?? "nothing"} to ${c.to ?? "nothing"}`).join(", ");
 
+/** "Placed U12 on the picture of its board": a correction of nothing but the place. */
+function placed(list: { field: string; to: unknown }[], designator: string): string | null {
+  if (list.length === 0 || list.some((c) => c.field !== "placeX" && c.field !== "placeY")) return null;
+  return list.some((c) => c.to === null) ? `Took ${designator} off the picture of its board` : `Placed ${designator} on the picture of its board`;
+}
+
 export type EntryKind = "entry" | "differs" | "signed" | "set-aside";
 
 interface Spec<S extends z.ZodObject> {
@@ -43,16 +49,17 @@ function spec<S extends z.ZodRawShape>(shape: S, sentence: (f: z.infer<z.ZodObje
 
 export const ACTIONS = {
   "case.received": spec({ ref: words, damage: words, dueOn: optional, receivedAt: words }, (f) => `Received case ${f.ref}: ${f.damage}`),
-  "drive.recorded": spec({ caseRef: words, letter: words, partNumber: optional, model: optional, serial: optional, interface: optional, caseReceivedAt: words },
-    (f) => `Recorded Drive ${f.letter} of case ${f.caseRef}${f.partNumber ? `, ${f.partNumber}` : ""}${f.serial ? `, serial ${f.serial}` : ""}`),
+  "drive.recorded": spec({ caseRef: words, letter: words, partNumber: optional, model: optional, serial: optional, interface: optional, caseReceivedAt: words,
+    capacity: optional.optional(), made: optional.optional(), firmware: optional.optional(), encryption: z.enum(ENCRYPTIONS).nullable().optional() },
+    (f) => `Recorded Drive ${f.letter} of case ${f.caseRef}${f.partNumber ? `, ${f.partNumber}` : ""}${f.serial ? `, serial ${f.serial}` : ""}${f.encryption === "yes" ? ", encrypted" : f.encryption === "suspected" ? ", encryption suspected" : ""}`),
   "drive.corrected": spec({ changes: z.array(change), reason: words }, (f) => `Corrected the drive: ${changes(f.changes)}. Reason: ${f.reason}`),
-  "board.recorded": spec({ role: z.enum(BOARD_ROLES), boardNumber: words, revision: optional, controllerMarking: optional, motorDriverMarking: optional, condition: optional,
+  "board.recorded": spec({ role: z.enum(BOARD_ROLES), boardNumber: words, revision: optional, controllerMarking: optional, motorDriverMarking: optional, condition: optional, dataInController: z.boolean().optional(),
     fit: z.object({ verdict: words, differences: z.array(words), reason: optional }).nullable() },
-    (f) => `Recorded the ${f.role} board ${f.boardNumber}${f.revision ? ` ${f.revision}` : ""}${f.fit?.differences.length ? `; ${f.fit.differences.join("; ")}` : ""}${f.fit?.reason ? `. Reason: ${f.fit.reason}` : ""}`),
+    (f) => `Recorded the ${f.role} board ${f.boardNumber}${f.revision ? ` ${f.revision}` : ""}${f.dataInController ? "; its unique data lies inside the main controller" : ""}${f.fit?.differences.length ? `; ${f.fit.differences.join("; ")}` : ""}${f.fit?.reason ? `. Reason: ${f.fit.reason}` : ""}`),
   "board.corrected": spec({ changes: z.array(change), reason: words }, (f) => `Corrected the board: ${changes(f.changes)}. Reason: ${f.reason}`),
   "chip.recorded": spec({ ...chipRef, boardRole: z.enum(BOARD_ROLES), bus: z.enum(BUSES), sizeBytes: size, sizeSource: z.enum(SIZE_SOURCES), supplyMillivolts: z.union([z.int(), z.literal("unknown")]), package: optional, marking: optional, holds: optional, idBytes: optional.optional(), sfdp: optional.optional(), needsTransfer: z.boolean() },
     (f) => `Recorded ${f.chip.designator} on the ${f.boardRole} board, ${kib(f.sizeBytes)} (${f.sizeSource}), supply ${f.supplyMillivolts === "unknown" ? "unknown" : `${f.supplyMillivolts} mV`}`),
-  "chip.corrected": spec({ ...chipRef, changes: z.array(change), reason: words }, (f) => `Corrected ${f.chip.designator}: ${changes(f.changes)}. Reason: ${f.reason}`),
+  "chip.corrected": spec({ ...chipRef, changes: z.array(change), reason: words }, (f) => placed(f.changes, f.chip.designator) ?? `Corrected ${f.chip.designator}: ${changes(f.changes)}. Reason: ${f.reason}`),
   "chip.paired": spec({ ...chipRef, ...donorRef, before: z.object({ id: uuid, designator: words }).nullable() },
     (f) => `Paired ${f.chip.designator} with donor ${f.donorChip.designator} on ${f.donorChip.boardNumber}${f.before ? ", in place of another donor chip" : ""}`),
   "read.stored": spec({ ...readRef, seating: z.int(), sizeBytes: size, crc32: crc, sha256: sha, format: words, fileName: words, reader: words, method: z.enum(METHODS).nullable(), toolVersion: optional, adapter: optional,
@@ -70,7 +77,9 @@ export const ACTIONS = {
     disputedBytes: z.int(), weak: z.int(), constructed: z.int() },
     (f) => `Made ${name(f)}, a composite of ${f.voters.map((v) => v.name).join(", ")}: ${f.disputedBytes} disputed bytes, ${f.weak} of them weak: ${f.reason}`, "differs"),
   "approval.asked": spec({ ...chipRef, sha256: sha.nullable(), message: optional }, (f) => `Asked for approval of ${f.chip.designator}${f.message ? `: ${f.message}` : ""}`),
-  "approval.given": spec({ ...chipRef, ...donorRef, sha256: sha, sizeBytes: size, crc32: crc, reads: z.array(words), seatings: z.array(z.int()), statement: words, reasons: z.record(z.string(), z.string()), lookedAt: z.array(words), twoPersonRule: z.boolean(), readsTakenBy: z.array(person) },
+  "approval.given": spec({ ...chipRef, ...donorRef, sha256: sha, sizeBytes: size, crc32: crc, reads: z.array(words), seatings: z.array(z.int()), statement: words, reasons: z.record(z.string(), z.string()), lookedAt: z.array(words), twoPersonRule: z.boolean(), readsTakenBy: z.array(person),
+    /** the other chips of the unit and how far they were */
+    siblings: z.array(z.object({ designator: words, state: words })).optional() },
     (f) => `Approved SHA-256 ${short(f.sha256)} for writing to donor ${f.donorChip.designator}${f.twoPersonRule ? "" : " (two-person rule switched off)"}: ${f.statement}`, "signed"),
   "approval.sent-back": spec({ ...chipRef, reason: words }, (f) => `Sent the approval of ${f.chip.designator} back: ${f.reason}`),
   "approval.refused": spec({ ...chipRef, sha256: sha, rule: words }, (f) => `An approval of ${f.chip.designator} was refused: ${f.rule}`, "differs"),
@@ -95,6 +104,8 @@ export const ACTIONS = {
     (f) => `${f.item.name} did not go to ${f.to.person}; it is still with ${f.from.person}, ${f.from.place}: ${f.reason}`, "differs"),
   "request.received": spec({ caseRef: words, request: uuid, damage: words, consents: z.array(words), photos: z.int() }, (f) => `Received the request for case ${f.caseRef}: ${f.damage}`),
   "request.deletion-asked": spec({ caseRef: words, request: uuid }, (f) => `The customer of case ${f.caseRef} asked for deletion`, "differs"),
+  "request.link-sent": spec({ caseRef: words, request: uuid }, (f) => `Sent the customer of case ${f.caseRef} a new private link; the former one shows nothing any more`),
+  "request.link-withdrawn": spec({ caseRef: words, request: uuid }, (f) => `Withdrew the private link of the customer of case ${f.caseRef}`),
   "parcel.received": spec({ caseRef: words, receipt: uuid, carrier: optional, tracking: optional, sealAsSent: z.enum(AS_SENT), sealNumber: optional, smallBoard: z.enum(AS_SENT), condition: words, accessories: optional, differs: optional },
     (f) => `Received the parcel of case ${f.caseRef}: ${f.condition}${f.sealAsSent === "no" ? "; the seal is not as it was sent" : ""}${f.differs ? `; differs from the request: ${f.differs}` : ""}`, (f) => (f.sealAsSent === "no" || f.differs ? "differs" : "entry")),
   "photo.added": spec({ photo: uuid, of: z.object({ type: z.enum(PHOTO_SUBJECTS), id: uuid, name: words }), kind: z.enum(PHOTO_KINDS), sha256: sha, sizeBytes: size, mediaType: words, caption: optional, by: z.enum(["workshop", "customer"]) },

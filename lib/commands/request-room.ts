@@ -1,0 +1,46 @@
+import { Op } from "sequelize";
+import { env } from "@/lib/env";
+import { AppError } from "@/lib/errors";
+import { REQUEST_TRIES_AN_HOUR, REQUESTS_AN_HOUR, REQUESTS_AN_HOUR_PER_ADDRESS } from "@/lib/limits";
+import { Request, type Transaction } from "@/models";
+
+const HOUR_MS = 3_600_000;
+const MOST_ADDRESSES = 10_000;
+
+/** Tries of the last hour by address digest, refused ones too; in memory, because they decide nothing but a pause. */
+const tries = new Map<string, number[]>();
+
+function refusal(why: string, waitMs: number): AppError {
+  const { email, phone } = env().workshopContact;
+  const way = phone ? `phone us: ${phone}` : email ? `write to ${email}` : "phone us";
+  const minutes = Math.max(1, Math.ceil(waitMs / 60_000));
+  return new AppError("too-many", `${why} Try again in ${minutes} ${minutes === 1 ? "minute" : "minutes"}, or ${way}.`, { retryAfterSeconds: Math.max(1, Math.ceil(waitMs / 1000)) });
+}
+
+/** Counts a try before its body is taken in. */
+export function noteTry(address: Buffer, now = Date.now()): void {
+  const key = address.toString("hex");
+  const recent = (tries.get(key) ?? []).filter((at) => at > now - HOUR_MS);
+  if (recent.length >= REQUEST_TRIES_AN_HOUR) throw refusal("Many tries came from where you are within the last hour.", recent[0] + HOUR_MS - now);
+  // the map forgets the oldest addresses first: a flood from many can't fill the memory
+  tries.delete(key);
+  tries.set(key, [...recent, now]);
+  for (const oldest of tries.keys()) {
+    if (tries.size <= MOST_ADDRESSES) break;
+    tries.delete(oldest);
+  }
+}
+
+/** Whether one more request may come in from here, and at all. Inside a transaction that holds the case counter it is exact. */
+export async function requireRequestRoom(address: Buffer, tx?: Transaction, now = Date.now()): Promise<void> {
+  const since = { requestedAt: { [Op.gt]: new Date(now - HOUR_MS) } };
+  const limits = [
+    { where: { ...since, addressDigest: address }, most: REQUESTS_AN_HOUR_PER_ADDRESS, why: "Many requests came from where you are within the last hour." },
+    { where: since, most: REQUESTS_AN_HOUR, why: "Very many requests came in within the last hour." },
+  ];
+  for (const { where, most, why } of limits) {
+    if ((await Request.count({ where, transaction: tx })) < most) continue;
+    const oldest = await Request.findOne({ where, order: [["requestedAt", "DESC"]], offset: most - 1, transaction: tx });
+    throw refusal(why, (oldest?.requestedAt.getTime() ?? now) + HOUR_MS - now);
+  }
+}
