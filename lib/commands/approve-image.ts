@@ -2,12 +2,13 @@ import { randomUUID } from "node:crypto";
 import { UniqueConstraintError } from "sequelize";
 import { approvalRefusal } from "@/lib/core/approval";
 import { crc32Hex } from "@/lib/core/digest";
-import { type Actor, readName } from "@/lib/core/words";
+import { type Actor, type Policy, readName } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { approvalFacts } from "@/lib/queries/chip-facts";
-import { type ChipRecord, recordOfChip } from "@/lib/queries/chip-records";
+import { type ChipRecord, chipRecords, recordOfChip } from "@/lib/queries/chip-records";
 import { people } from "@/lib/queries/people";
 import { currentPolicy } from "@/lib/queries/policy";
+import { siblingsOfRecord } from "@/lib/queries/siblings";
 import type { ApprovalInput } from "@/lib/schemas/approval";
 import { Approval, inTransaction, Read, type Transaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
@@ -39,7 +40,7 @@ export async function approveImage(actor: Actor, chipId: string, input: Approval
       const facts = approvalFacts(record, policy, await chainIsClean(drive.id, tx));
       const refusal = approvalRefusal(facts, actor, input);
       if (refusal) throw new AgainstRule(refusal);
-      return give(tx, actor, record, input, policy.twoPersonRule);
+      return give(tx, actor, record, input, policy);
     });
   } catch (error) {
     const rule = error instanceof AgainstRule ? error.message : error instanceof UniqueConstraintError ? "Another approval of this chip stands already." : null;
@@ -58,9 +59,11 @@ async function requireSoundDonor(donorChipId: string): Promise<void> {
   for (const [sha256, sizeBytes] of sizes) await requireSoundImage(sha256, sizeBytes, "approval");
 }
 
-async function give(tx: Transaction, actor: Actor, record: ChipRecord, input: ApprovalInput, twoPersonRule: boolean): Promise<{ id: string; sha256: string }> {
+async function give(tx: Transaction, actor: Actor, record: ChipRecord, input: ApprovalInput, policy: Policy): Promise<{ id: string; sha256: string }> {
   const held = record.before.filter((r) => r.counted && r.sha256.toString("hex") === input.sha256);
   const who = await people(tx);
+  const { twoPersonRule } = policy;
+  const siblings = await siblingsOfRecord((await chipRecords([record.drive.id], tx)).records, record, policy, tx);
   const donor = record.donor!;
   const approval = await Approval.create({
     id: randomUUID(), chipId: record.chip.id, donorChipId: input.donorChipId, sha256: Buffer.from(input.sha256, "hex"), approvedBy: actor.id,
@@ -72,6 +75,7 @@ async function give(tx: Transaction, actor: Actor, record: ChipRecord, input: Ap
     sha256: input.sha256, sizeBytes: held[0].sizeBytes, crc32: crc32Hex(held[0].crc32), reads: held.map((r) => readName("before", r.number)),
     seatings: [...new Set(held.map((r) => r.seating))].sort((a, b) => a - b), statement: input.statement, reasons: input.reasons, lookedAt: input.lookedAt, twoPersonRule,
     readsTakenBy: [...new Set(record.before.map((r) => r.operatorId))].map((id) => ({ id, name: who(id).name })),
+    ...(siblings.length > 0 ? { siblings: siblings.map(({ designator, label }) => ({ designator, state: label })) } : {}),
   });
   return { id: approval.id, sha256: input.sha256 };
 }

@@ -57,7 +57,8 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
     customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
     drives: drives.map((drive, i) => ({
       number: i + 1, letter: driveLetter(drive), id: drive.id, partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null,
-      interface: drive.interface ?? null, recordedAt: drive.createdAt.toISOString(), logUpTo: heads.get(drive.id)!, boards: boardRecords(rows, drive.id, i + 1, images),
+      interface: drive.interface ?? null, capacity: drive.capacity ?? null, made: drive.made ?? null, firmware: drive.firmware ?? null, encryption: drive.encryption ?? null,
+      recordedAt: drive.createdAt.toISOString(), logUpTo: heads.get(drive.id)!, boards: boardRecords(rows, drive.id, i + 1, images),
     })),
   };
   return { record, images, twoPersonRule: rows.approvals.every((a) => a.twoPersonRule) };
@@ -79,7 +80,7 @@ function boardRecords(rows: Rows, driveId: string, drive: number, images: Bundle
     const label = boardLabel(board.role, mine.filter((b) => b.role === board.role).indexOf(board) + 1);
     return {
       label, id: board.id, role: board.role, boardNumber: board.boardNumber, revision: board.revision ?? null, controllerMarking: board.controllerMarking ?? null,
-      motorDriverMarking: board.motorDriverMarking ?? null, condition: board.condition ?? null, recordedAt: board.createdAt.toISOString(),
+      motorDriverMarking: board.motorDriverMarking ?? null, condition: board.condition ?? null, dataInController: board.dataInController ?? false, recordedAt: board.createdAt.toISOString(),
       fit: board.role === "donor" && original ? { ...donorFit(original, board), reason: board.fitReason ?? null } : null,
       chips: rows.chips.filter((c) => c.boardId === board.id).map((chip) => chipRecord(rows, chip, { drive, board: label, designator: chip.designator }, images)),
     };
@@ -91,7 +92,8 @@ function chipRecord(rows: Rows, chip: Chip, place: { drive: number; board: strin
   return {
     designator: chip.designator, id: chip.id, folder: chipFolder(place), bus: chip.bus, sizeBytes: chip.sizeBytes, sizeSource: chip.sizeSource,
     supplyMillivolts: chip.supplyMillivolts ?? "unknown", package: chip.package ?? null, marking: chip.marking ?? null, holds: chip.holds ?? null,
-    needsTransfer: chip.needsTransfer, pairedWith: chip.pairedWithId ?? null, recordedAt: chip.createdAt.toISOString(),
+    needsTransfer: chip.needsTransfer, pairedWith: chip.pairedWithId ?? null,
+    place: chip.placeX == null || chip.placeY == null ? null : { x: chip.placeX, y: chip.placeY }, recordedAt: chip.createdAt.toISOString(),
     reads: rows.reads.filter((r) => r.chipId === chip.id).map((row) => {
       const path = imagePath({ ...place, stage: row.stage, number: row.number });
       images.push({ path, sha256: row.sha256.toString("hex"), sizeBytes: row.sizeBytes });

@@ -1,4 +1,5 @@
 import { UniqueConstraintError } from "sequelize";
+import { NO_CHIP_REFUSAL } from "@/lib/core/no-chip";
 import { type Actor, SYSTEM } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { ChipCorrection } from "@/lib/schemas/chip";
@@ -9,6 +10,7 @@ import { judgeChip } from "./judge-read";
 import { pairChip } from "./pair-chip";
 import { chipFor, placeOfChip } from "./place";
 import { allow } from "./refuse";
+import { requireOpen } from "./require-open";
 import { revokeStanding } from "./revoke-approval";
 
 /** Corrects what was typed about a chip; its reads are judged again and an approval that stood on the old facts falls. */
@@ -22,6 +24,8 @@ export async function correctChip(actor: Actor, chipId: string, input: ChipCorre
       await lockChain(tx, drive.id);
       const place = await placeOfChip(chipId, tx);
       const { chip, board } = place;
+      requireOpen(place.case);
+      if (board.dataInController && wanted.needsTransfer === true) throw new AppError("rule-against", NO_CHIP_REFUSAL);
       const changes = changesOf(chip, wanted);
       const repair = pairedWith !== undefined && (pairedWith ?? null) !== (chip.pairedWithId ?? null);
       if (changes.length === 0 && !repair) throw new AppError("does-not-fit", "Nothing would change: these are the values on record.");
@@ -37,7 +41,8 @@ export async function correctChip(actor: Actor, chipId: string, input: ChipCorre
         await revokeStanding(tx, SYSTEM, originalId, "size-changed", `The size of ${chip.designator} was corrected.`);
       }
       if (repair) await pairChip(tx, actor, { donorChip: chip, donorBoard: board, driveId: drive.id, originalChipId: pairedWith ?? null });
-      await judgeChip(tx, place);
+      // where a chip sits on a picture says nothing about its reads
+      if (repair || changes.some((c) => c.field !== "placeX" && c.field !== "placeY")) await judgeChip(tx, place);
       return { id: chip.id };
     });
   } catch (error) {

@@ -1,12 +1,13 @@
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { DriveCorrection } from "@/lib/schemas/drive";
-import { Board, Chip, Drive, inTransaction, Read, type Transaction } from "@/models";
+import { Board, Chip, inTransaction, Read, type Transaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { changesOf } from "./correct-facts";
 import { judge, judgeSameImages } from "./judge-read";
-import { driveFor, placeOfChip } from "./place";
+import { driveFor, placeOfChip, placeOfDrive } from "./place";
 import { allow } from "./refuse";
+import { requireOpen } from "./require-open";
 
 /** Corrects what was typed about a drive. Two drives of one serial are one drive recorded twice, so a new serial is judged at once. */
 export async function correctDrive(actor: Actor, driveId: string, input: DriveCorrection): Promise<{ id: string }> {
@@ -14,7 +15,8 @@ export async function correctDrive(actor: Actor, driveId: string, input: DriveCo
   await driveFor(actor, driveId);
   const judged = await inTransaction(async (tx) => {
     await lockChain(tx, driveId);
-    const drive = (await Drive.findByPk(driveId, { transaction: tx }))!;
+    const { drive, case: found } = await placeOfDrive(driveId, tx);
+    requireOpen(found);
     const changes = changesOf(drive, input.changes);
     if (changes.length === 0) throw new AppError("does-not-fit", "Nothing would change: these are the values on record.");
     drive.set(input.changes);

@@ -1,13 +1,15 @@
 import { randomUUID } from "node:crypto";
 import { type DonorFit, donorFit } from "@/lib/core/donor-fit";
+import { NO_DONOR_REFUSAL } from "@/lib/core/no-chip";
 import { may } from "@/lib/core/policy";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { BoardInput } from "@/lib/schemas/board";
 import { Board, inTransaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
-import { driveFor } from "./place";
+import { driveFor, placeOfDrive } from "./place";
 import { allow } from "./refuse";
+import { requireOpen } from "./require-open";
 
 /** Records a board of a drive. A donor is compared with the original: another board number needs a lead and a reason. */
 export async function recordBoard(actor: Actor, driveId: string, input: BoardInput): Promise<{ id: string; fit: DonorFit | null }> {
@@ -15,6 +17,7 @@ export async function recordBoard(actor: Actor, driveId: string, input: BoardInp
   await driveFor(actor, driveId);
   return inTransaction(async (tx) => {
     await lockChain(tx, driveId);
+    requireOpen((await placeOfDrive(driveId, tx)).case);
     const originals = await Board.findAll({ where: { driveId, role: "original" }, transaction: tx });
     if (input.role === "original" && originals.length > 0) {
       throw new AppError("rule-against", "This drive has its original board already. Correct that one, or record this board as a donor.");
@@ -22,9 +25,11 @@ export async function recordBoard(actor: Actor, driveId: string, input: BoardInp
     if (input.role === "donor" && originals.length === 0) {
       throw new AppError("rule-against", "Record the original board first; the donor is compared with it.");
     }
+    if (input.role === "donor" && originals[0].dataInController) throw new AppError("rule-against", NO_DONOR_REFUSAL);
+    if (input.role === "donor" && input.dataInController) throw onlyOnOriginal();
     const facts = {
       boardNumber: input.boardNumber, revision: input.revision ?? null, controllerMarking: input.controllerMarking ?? null,
-      motorDriverMarking: input.motorDriverMarking ?? null, condition: input.condition ?? null,
+      motorDriverMarking: input.motorDriverMarking ?? null, condition: input.condition ?? null, dataInController: input.dataInController ?? false,
     };
     const fit = input.role === "donor" ? donorFit(originals[0], facts) : null;
     if (fit?.verdict === "other-number") checkOtherNumber(actor, input.reason ?? null);
@@ -36,6 +41,10 @@ export async function recordBoard(actor: Actor, driveId: string, input: BoardInp
     });
     return { id: board.id, fit };
   });
+}
+
+export function onlyOnOriginal(): AppError {
+  return new AppError("does-not-fit", "Where the unique data lies is a fact of the original board. Record it there.", { errors: [{ path: "dataInController", message: "Only on the original board." }] });
 }
 
 function checkOtherNumber(actor: Actor, reason: string | null): void {

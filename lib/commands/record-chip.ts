@@ -1,24 +1,28 @@
 import { randomUUID } from "node:crypto";
 import { UniqueConstraintError } from "sequelize";
+import { NO_CHIP_REFUSAL } from "@/lib/core/no-chip";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { ChipInput } from "@/lib/schemas/chip";
 import { Chip, inTransaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { pairChip } from "./pair-chip";
-import { boardFor } from "./place";
+import { boardFor, placeOfBoard } from "./place";
 import { allow } from "./refuse";
+import { requireOpen } from "./require-open";
 
 export async function recordChip(actor: Actor, boardId: string, input: ChipInput): Promise<{ id: string; designator: string }> {
   allow(actor, "chip.record");
-  const place = await boardFor(actor, boardId);
-  const { board, drive } = place;
+  const { board, drive } = await boardFor(actor, boardId);
   if (input.pairedWith && board.role !== "donor") {
     throw new AppError("does-not-fit", "Only a donor's chip is paired: record it on the donor board and name the original's chip.", { errors: [{ path: "pairedWith", message: "Only on a donor's chip." }] });
   }
   try {
     return await inTransaction(async (tx) => {
       await lockChain(tx, drive.id);
+      const now = await placeOfBoard(boardId, tx);
+      requireOpen(now.case);
+      if (now.board.dataInController && input.needsTransfer) throw new AppError("rule-against", NO_CHIP_REFUSAL, { errors: [{ path: "needsTransfer", message: "Take the tick off: the chip is kept for reference." }] });
       const supply = input.supplyMillivolts;
       const facts = {
         bus: input.bus, sizeBytes: input.sizeBytes, sizeSource: input.sizeSource, package: input.package ?? null,

@@ -24,7 +24,7 @@ export async function boardViews(driveIds: string[]): Promise<Map<string, BoardV
     const fit = board.role === "donor" && original ? donorFit(original, board) : null;
     const view: BoardView = {
       id: board.id, role: board.role, boardNumber: board.boardNumber, revision: board.revision ?? null, controllerMarking: board.controllerMarking ?? null,
-      motorDriverMarking: board.motorDriverMarking ?? null, condition: board.condition ?? null,
+      motorDriverMarking: board.motorDriverMarking ?? null, condition: board.condition ?? null, dataInController: board.dataInController ?? false,
       fit: fit && { verdict: fit.verdict, differences: fit.differences, reason: board.fitReason ?? null }, chips: chips.get(board.id) ?? [],
     };
     result.set(board.driveId, [...(result.get(board.driveId) ?? []), view]);

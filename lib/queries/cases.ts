@@ -1,12 +1,13 @@
 import { Op, type Order, type WhereOptions } from "sequelize";
 import { allow, inCases, notFound } from "@/lib/commands/refuse";
-import { caseFor, driveLetter } from "@/lib/commands/place";
+import { caseFor } from "@/lib/commands/place";
 import { readCaseRef, withCheck } from "@/lib/core/case-number";
 import type { Actor } from "@/lib/core/words";
 import type { ListInput } from "@/lib/schemas/case";
 import type { CaseRow, CaseState, CaseView, ListView } from "@/lib/views";
 import { Case, CustodyHead, Customer, Drive, Share } from "@/models";
 import { boardViews } from "./boards";
+import { driveFactsView, warningsOf } from "./drives";
 import { chipRecords } from "./chip-records";
 import { chipState } from "./chip-state";
 import { people } from "./people";
@@ -74,10 +75,9 @@ export async function caseView(actor: Actor, id: string): Promise<CaseView> {
     id, ref: found.ref, refChecked: withCheck(found.ref), state: caseState(found), closedReason: found.closedReason ?? null,
     customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
     damage: found.damage, note: found.note ?? null, dueOn: found.dueOn ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, requestedAt: found.requestedAt?.toISOString() ?? null, createdBy: found.createdBy ? who(found.createdBy) : null,
-    drives: drives.map((d) => ({
-      id: d.id, letter: driveLetter(d), partNumber: d.partNumber ?? null, model: d.model ?? null, serial: d.serial ?? null, interface: d.interface ?? null,
-      boards: boards.get(d.id) ?? [], custodyEntries: heads.get(d.id) ?? 0,
-    })),
+    drives: await Promise.all(drives.map(async (d) => ({
+      ...driveFactsView(d), warnings: await warningsOf(actor, d), boards: boards.get(d.id) ?? [], custodyEntries: heads.get(d.id) ?? 0,
+    }))),
     shares: shares.map((s) => shareView(s, who)),
   });
 }

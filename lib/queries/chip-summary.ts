@@ -59,6 +59,7 @@ function base(chip: Chip, board: Board) {
     id: chip.id, designator: chip.designator, boardRole: board.role, bus: chip.bus, sizeBytes: chip.sizeBytes, sizeSource: chip.sizeSource,
     supplyMillivolts: chip.supplyMillivolts ?? null, package: chip.package ?? null, marking: chip.marking ?? null, holds: chip.holds ?? null,
     idBytes: chip.idBytes ?? null, sfdp: chip.sfdp ?? null, needsTransfer: chip.needsTransfer,
+    place: chip.placeX == null || chip.placeY == null ? null : { x: chip.placeX, y: chip.placeY },
   };
 }
 

@@ -9,8 +9,9 @@ import { AppError } from "@/lib/errors";
 import type { ChipView, GroupView, MatrixView, StripView } from "@/lib/views";
 import { Read, User } from "@/models";
 import { approvalFacts } from "./chip-facts";
-import { recordOfChip } from "./chip-records";
+import { chipRecords } from "./chip-records";
 import { chipState } from "./chip-state";
+import { siblingsOfRecord } from "./siblings";
 import { donorSummary, originalSummary, stripImage, UNPAIRED, worthDrawing } from "./chip-summary";
 import { approvalView, requestView, transferView } from "./approval-views";
 import { people } from "./people";
@@ -25,7 +26,8 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
   allow(actor, "case.read");
   const place = await chipFor(actor, chipId);
   const { chip, board, drive } = place;
-  const [record, policy, who] = [await recordOfChip(chipId), await currentPolicy(), await people()];
+  const [{ records }, policy, who] = [await chipRecords([drive.id]), await currentPolicy(), await people()];
+  const record = records.find((r) => r.chip.id === chipId || r.donor?.chip.id === chipId) ?? null;
   const isOriginal = board.role === "original";
   const own = record && isOriginal ? [] : await Read.findAll({ where: { chipId }, order: ["stage", "number"] });
   const reads = record && isOriginal ? [...record.before, ...record.own, ...record.backs] : own;
@@ -38,7 +40,8 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
   const leads = await User.findAll({ where: { role: "lead", disabledAt: null }, order: ["name"] });
   return seenBy(actor, {
     ...summary, marking: chip.marking ?? null, sizeSource: chip.sizeSource,
-    drive: { id: drive.id, letter: driveLetter(drive), partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null },
+    drive: { id: drive.id, letter: driveLetter(drive), partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null, encryption: drive.encryption ?? null },
+    siblings: record ? await siblingsOfRecord(records, record, policy) : [],
     board: { id: board.id, role: board.role, boardNumber: board.boardNumber, revision: board.revision ?? null },
     case: { id: place.case.id, ref: place.case.ref, dueOn: place.case.dueOn ?? null, customerName: record?.customer.name ?? "" },
     policy, reads: reads.map((r) => readView(r, who, !unsound.has(r.sha256.toString("hex")))), groups: groupsOf(reads),

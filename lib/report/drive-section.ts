@@ -1,4 +1,7 @@
+import { ENCRYPTION_WORDS, encryptionCaution } from "@/lib/core/encryption";
+import { NO_CHIP_TEXT, NO_CHIP_TITLE } from "@/lib/core/no-chip";
 import { sizeText } from "@/lib/core/quantity";
+import { unitWords } from "@/lib/core/two-chips";
 import { code, type Span, plain, quiet, strong } from "./ink";
 import type { ReportBoard, ReportCase, ReportFacts } from "./report-facts";
 import { boardName, chipKind, driveName, FIT, momentText } from "./report-words";
@@ -13,8 +16,13 @@ export async function drives(sheet: Sheet, { record }: ReportFacts): Promise<voi
     sheet.heading(2, name, { number: `3.${drive.number}` });
     sheet.facts([
       ["Part number", known(drive.partNumber)], ["Model", known(drive.model)], ["Serial", known(drive.serial)], ["Interface", drive.interface ? [plain(drive.interface)] : null],
+      ["Capacity", drive.capacity ? [plain(drive.capacity)] : null], ["Made", drive.made ? [plain(drive.made)] : null], ["Firmware", drive.firmware ? [code(drive.firmware)] : null],
+      ["Encrypted", drive.encryption ? [plain(ENCRYPTION_WORDS[drive.encryption])] : null],
       ["Recorded", [plain(momentText(drive.recordedAt))]],
     ]);
+    const caution = encryptionCaution(drive.encryption ?? null);
+    if (caution) sheet.paragraph([strong(`${caution.title} `), plain(caution.text)], { mark: "caution" });
+    unitPart(sheet, drive.boards);
     if (drive.boards.length === 0) sheet.paragraph([plain("No board of this drive is recorded yet.")]);
     for (const board of drive.boards) {
       boardPart(sheet, board);
@@ -26,6 +34,12 @@ export async function drives(sheet: Sheet, { record }: ReportFacts): Promise<voi
 
 const known = (text: string | null): Span[] => (text ? [code(text)] : [quiet("not recorded")]);
 
+/** Chips of the original that belong together, and that both go to the donor. */
+function unitPart(sheet: Sheet, boards: readonly ReportBoard[]): void {
+  const together = boards.filter((board) => board.role === "original").flatMap((board) => board.chips).filter((chip) => chip.needsTransfer);
+  if (together.length > 1) sheet.paragraph([plain(unitWords(together.map((chip) => chip.designator)))]);
+}
+
 function boardPart(sheet: Sheet, board: ReportBoard): void {
   sheet.heading(3, boardName(board));
   sheet.facts([
@@ -34,6 +48,7 @@ function boardPart(sheet: Sheet, board: ReportBoard): void {
     ["Condition", board.condition ? [plain(board.condition)] : null],
     ["Recorded", [plain(momentText(board.recordedAt))]],
   ]);
+  if (board.dataInController) sheet.paragraph([strong(`${NO_CHIP_TITLE} `), plain(NO_CHIP_TEXT[0])], { mark: "note" });
   if (!board.fit) return;
   const { mark, text } = FIT[board.fit.verdict];
   sheet.paragraph([strong(`${text} `), ...board.fit.differences.map((one) => plain(`${one} `)), ...(board.fit.reason ? [plain(`Used all the same: ${board.fit.reason}`)] : [])], { mark });

@@ -1,5 +1,5 @@
 import type { EntryKind } from "@/lib/core/custody-actions";
-import type { BoardRole, Bus, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
+import type { BoardRole, Bus, Encryption, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
 import type { PersonView, ReadView } from "@/lib/views";
 
 /** What a report is made from: the case as in case.json, the logs up to their heads, and what the strips show. Plain data. */
@@ -46,6 +46,8 @@ export interface ReportChip {
   holds: string | null;
   needsTransfer: boolean;
   pairedWith: string | null;
+  /** thousandths of the picture of its board */
+  place?: { x: number; y: number } | null;
   recordedAt: string;
   reads: ReportRead[];
   approvalRequests: { id: string; askedBy: PersonView; askedAt: string; message: string | null; sentBack: { by: PersonView; at: string; reason: string | null } | null }[];
@@ -62,6 +64,7 @@ export interface ReportBoard {
   controllerMarking: string | null;
   motorDriverMarking: string | null;
   condition: string | null;
+  dataInController?: boolean;
   recordedAt: string;
   fit: { verdict: "fits" | "caution" | "other-number"; differences: string[]; reason: string | null } | null;
   chips: ReportChip[];
@@ -75,6 +78,10 @@ export interface ReportDrive {
   model: string | null;
   serial: string | null;
   interface: string | null;
+  capacity?: string | null;
+  made?: string | null;
+  firmware?: string | null;
+  encryption?: Encryption | null;
   recordedAt: string;
   logUpTo: { seq: number; hash: string };
   boards: ReportBoard[];

@@ -9,6 +9,7 @@ const facts = {
   controllerMarking: maybe(line(120, "the marking of the main controller")),
   motorDriverMarking: maybe(line(120, "the marking of the motor driver")),
   condition: maybe(prose(4000, "the condition")),
+  dataInController: z.boolean(),
 };
 
 export const boardInput = z.strictObject({
@@ -18,6 +19,7 @@ export const boardInput = z.strictObject({
   controllerMarking: facts.controllerMarking.optional(),
   motorDriverMarking: facts.motorDriverMarking.optional(),
   condition: facts.condition.optional(),
+  dataInController: facts.dataInController.optional(),
   reason: maybe(reason).optional(),
 });
 export type BoardInput = z.infer<typeof boardInput>;

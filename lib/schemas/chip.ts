@@ -10,6 +10,9 @@ export const millivolts = z.union([z.literal("unknown"), z.coerce.number().int("
 const hexText = (what: string) => z.string({ error: `Give ${what}.` }).max(20_000).transform((s) => s.toLowerCase().replace(/0x|[\s,:;-]/g, ""))
   .refine((s) => /^([0-9a-f]{2})+$/.test(s), `Give ${what} as hex digits, two a byte.`);
 
+/** Thousandths of the picture's width or height. */
+const place = z.int("A place is a whole number from 0 to 1000.").min(0, "A place is a whole number from 0 to 1000.").max(1000, "A place is a whole number from 0 to 1000.").nullable();
+
 const facts = {
   designator: line(16, "the reference designator, such as U12").regex(/^[A-Za-z]{1,4}[0-9]{1,5}[A-Za-z]?$/, "A designator is letters and a number, such as U12.").transform((s) => s.toUpperCase()),
   bus: z.enum(BUSES, "Choose the bus."),
@@ -38,7 +41,8 @@ export const chipInput = z.strictObject({
 export type ChipInput = z.infer<typeof chipInput>;
 
 export const chipCorrection = z.strictObject({
-  changes: z.strictObject({ ...facts, pairedWith: maybe(uuid) }).partial().refine((c) => Object.keys(c).length > 0, NO_CHANGE),
+  changes: z.strictObject({ ...facts, pairedWith: maybe(uuid), placeX: place, placeY: place }).partial().refine((c) => Object.keys(c).length > 0, NO_CHANGE)
+    .refine((c) => (c.placeX === undefined) === (c.placeY === undefined) && (c.placeX == null) === (c.placeY == null), { message: "Give both numbers of the place, or neither.", path: ["placeX"] }),
   reason,
 });
 export type ChipCorrection = z.infer<typeof chipCorrection>;

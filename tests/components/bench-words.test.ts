@@ -8,11 +8,11 @@ import type { BenchRow, BoardView, ChipSummary, DriveView } from "@/lib/views";
 function chip(id: string, state: ChipStateCode, more: Partial<ChipSummary> = {}): ChipSummary {
   return {
     id, designator: id.toUpperCase(), boardRole: "original", bus: "spi", sizeBytes: 8192, sizeSource: "typed", supplyMillivolts: 3300, package: null, marking: null, holds: null, idBytes: null, sfdp: null,
-    needsTransfer: true, state: { state, label: state, sentence: "" }, pair: null, countedReads: 0, agreeingReads: 0, donorSaved: false, composite: null, thumbnail: { images: [], lane: null, shows: "reads" }, ...more,
+    needsTransfer: true, place: null, state: { state, label: state, sentence: "" }, pair: null, countedReads: 0, agreeingReads: 0, donorSaved: false, composite: null, thumbnail: { images: [], lane: null, shows: "reads" }, ...more,
   };
 }
-const board = (role: "original" | "donor", chips: ChipSummary[]): BoardView => ({ id: role, role, boardNumber: "BX 40-3179", revision: null, controllerMarking: null, motorDriverMarking: null, condition: null, fit: null, chips });
-const drive = (...boards: BoardView[]): DriveView => ({ id: "d", letter: "A", partNumber: "PN 1", model: null, serial: null, interface: null, boards, custodyEntries: 0 });
+const board = (role: "original" | "donor", chips: ChipSummary[]): BoardView => ({ id: role, role, boardNumber: "BX 40-3179", revision: null, controllerMarking: null, motorDriverMarking: null, condition: null, dataInController: false, fit: null, chips });
+const drive = (...boards: BoardView[]): DriveView => ({ id: "d", letter: "A", partNumber: "PN 1", model: null, serial: null, interface: null, capacity: null, made: null, firmware: null, encryption: null, warnings: [], boards, custodyEntries: 0 });
 const row = (state: ChipStateCode, more: Partial<BenchRow> = {}): BenchRow => ({ chip: chip("u3", state), caseId: "c", caseRef: "26-0183", customerName: "", partNumber: "", dueOn: null, late: null, lateDays: 0, next: "", nextWhy: null, with: "", mine: false, ...more });
 
 describe("the bench", () => {

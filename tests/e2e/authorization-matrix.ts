@@ -69,6 +69,7 @@ export const API: ApiRow[] = [
   { method: "POST", route: "/api/cases", body: () => ({ customer: { name: "Authorization matrix", email: "matrix@apitests.example" }, damage: "None" }), cells: roles(201, 201, 403, 403) },
   look("/api/cases/[id]", (t) => `/api/cases/${t.caseId}`),
   change("POST", "/api/cases/[id]/drives", BENCH, () => ({ partNumber: "PN 1" })),
+  look("/api/cases/[id]/drive-warnings", (t) => `/api/cases/${t.caseId}/drive-warnings?serial=S1`, roles(200, 200, 403, 403)),
   change("POST", "/api/cases/[id]/bundle", roles(403, 404, 404, 403)),
   change("POST", "/api/cases/[id]/summary", LEAD),
 
