@@ -1,11 +1,12 @@
 import { allow, inCases } from "@/lib/commands/refuse";
 import { caseFor } from "@/lib/commands/place";
 import { parseCaseRef, withCheck } from "@/lib/core/case-number";
-import { driveFromRequest } from "@/lib/core/drive-from-request";
+import { answerOf, driveFromRequest } from "@/lib/core/drive-from-request";
 import type { Actor } from "@/lib/core/words";
 import type { ParcelView, ReceiptView, ToReceiveRow } from "@/lib/views";
 import { Case, Customer, Receipt, Request } from "@/models";
 import { people } from "./people";
+import { seenBy } from "./seen-by";
 
 /** What was found when the parcel came; null while there is no receipt. */
 export async function receiptView(actor: Actor, caseId: string): Promise<ReceiptView | null> {
@@ -14,10 +15,10 @@ export async function receiptView(actor: Actor, caseId: string): Promise<Receipt
   const row = await Receipt.findOne({ where: { caseId } });
   if (!row) return null;
   const who = await people();
-  return {
+  return seenBy(actor, {
     carrier: row.carrier ?? null, tracking: row.tracking ?? null, sealAsSent: row.sealAsSent, sealNumber: row.sealNumber ?? null, smallBoard: row.smallBoard,
     parcelCondition: row.parcelCondition, accessories: row.accessories ?? null, differs: row.differs ?? null, by: who(row.byUserId), at: row.at.toISOString(),
-  };
+  });
 }
 
 /** Cases that were asked for and are not here yet, the oldest first. */
@@ -51,10 +52,10 @@ export async function parcelView(actor: Actor, caseId: string): Promise<ParcelVi
   const found = await caseFor(actor, caseId);
   const customer = (await Customer.findByPk(found.customerId))!;
   const request = await Request.findOne({ where: { caseId }, attributes: ["answers"] });
-  const asked = request ? driveFromRequest(answersOf(request.answers)) : {};
+  const answers = request ? answersOf(request.answers) : null;
   return {
     caseId, caseRef: found.ref, refChecked: withCheck(found.ref), customerName: customer.name, damage: found.damage, note: found.note ?? null,
-    requestedAt: found.requestedAt?.toISOString() ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, closed: Boolean(found.closedAt), asked,
+    requestedAt: found.requestedAt?.toISOString() ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, closed: Boolean(found.closedAt), asked: driveFromRequest(answers), enclosure: answerOf(answers, "enclosure"), boardHidden: answerOf(answers, "boardHidden") === "yes",
   };
 }
 
