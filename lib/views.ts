@@ -287,6 +287,20 @@ export interface PhotoView {
   sound: boolean;
 }
 
+/** One photo on a page of its own, among the others of the same thing. */
+export interface PhotoPageView {
+  photo: PhotoView;
+  /** "Drive A of case 26-0042" */
+  place: string;
+  crumbs: { label: string; href: string }[];
+  back: { label: string; href: string };
+  /** ids of the neighbours */
+  prev: string | null;
+  next: string | null;
+  number: number;
+  of: number;
+}
+
 /** Photos of one thing, with the word for it. */
 export interface PhotoGroup {
   of: { type: PhotoSubject; id: string };
@@ -328,6 +342,7 @@ export interface PlacedItem {
 
 export interface DriveView {
   id: string;
+  caseId: string;
   letter: string;
   partNumber: string | null;
   model: string | null;

@@ -1,7 +1,7 @@
 "use client";
 
 import { useRouter } from "next/navigation";
-import { useEffect } from "react";
+import { type ReactNode, useEffect } from "react";
 import useSWR from "swr";
 import { compositesOf, offersComposite } from "@/components/composite/composite-words";
 import { MakeComposite } from "@/components/composite/make-composite";
@@ -31,13 +31,15 @@ import { contentsOf } from "./upload-form";
 const REFRESH_MS = 5_000;
 
 /** The whole page of one chip; refreshed in the background, so that two people at two benches see the same. */
-export function ChipScreen({ chip: given, readBack, session, today }: {
+export function ChipScreen({ chip: given, readBack, session, today, photos }: {
   chip: ChipView;
   /** after a write, what came back against the approved image takes the place of the reads */
   readBack: ReadBackView | null;
   session: SessionView;
   /** the workshop's calendar day, "2026-03-12" */
   today: string;
+  /** the section with the chip's photos, made by the page */
+  photos: ReactNode;
 }) {
   const router = useRouter();
   const { data, error, mutate } = useSWR<ChipView, Error>(`/api/chips/${given.id}/view`, backgroundFetcher, { fallbackData: given, refreshInterval: REFRESH_MS, keepPreviousData: true, revalidateOnMount: false });
@@ -102,6 +104,7 @@ export function ChipScreen({ chip: given, readBack, session, today }: {
             </Section>
           </>
         ) : null}
+        {photos}
       </PageMain>
     </>
   );

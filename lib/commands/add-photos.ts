@@ -13,6 +13,7 @@ import { keepImage } from "./keep-image";
 import { lookAtPhoto, type PhotoLook } from "./photo-look";
 import { drivesToTell, type PhotoPlace, photoPlaceFor } from "./photo-place";
 import { allow } from "./refuse";
+import { requireOpen } from "./require-open";
 
 export interface PhotoFile {
   arrived: Arrived;
@@ -44,7 +45,7 @@ export async function addPhotos(actor: Actor, type: PhotoSubject, id: string, fi
 export async function requirePhotoPlace(actor: Actor, type: PhotoSubject, id: string): Promise<PhotoPlace> {
   allow(actor, "photo.add");
   const place = await photoPlaceFor(actor, type, id);
-  requireOpen(place);
+  if (place.case) requireOpen(place.case);
   return place;
 }
 
@@ -80,17 +81,13 @@ function checkTexts({ fileName, caption }: PhotoFile): void {
   if ([...(caption ?? "")].length > MAX_CAPTION_CHARACTERS) throw new AppError("does-not-fit", `A caption has up to ${MAX_CAPTION_CHARACTERS} characters. Shorten it; nothing was stored.`, { errors: [{ path: "caption", message: `Up to ${MAX_CAPTION_CHARACTERS} characters.` }] });
 }
 
-function requireOpen({ case: found }: PhotoPlace): void {
-  if (found?.closedAt) throw new AppError("rule-against", `Case ${found.ref} is closed, so nothing is added to it. Reopen it first.`);
-}
-
 /** Rows and entries, in the caller's transaction. The bytes are in the store already. */
 async function writePhotos(tx: Transaction, actor: Actor, by: "workshop" | "customer", place: PhotoPlace, ready: ReadyPhoto[]): Promise<Photo[]> {
   const drives = await drivesToTell(place, tx);
   const chains = drives.length > 0 ? drives : [WORKSHOP_CHAIN];
   for (const chain of chains) await lockChain(tx, chain);
   await place.case?.reload({ transaction: tx });
-  requireOpen(place);
+  if (place.case) requireOpen(place.case);
   const rows: Photo[] = [];
   for (const { arrived, fileName, caption, look } of ready) {
     const sha256 = Buffer.from(arrived.sha256, "hex");

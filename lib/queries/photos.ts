@@ -1,10 +1,12 @@
 import { Op } from "sequelize";
 import { boardsOf, photoPlaceFor } from "@/lib/commands/photo-place";
 import { driveFor, driveLetter } from "@/lib/commands/place";
-import { allow } from "@/lib/commands/refuse";
+import { allow, notFound } from "@/lib/commands/refuse";
 import { boardName } from "@/lib/core/board-name";
+import { may } from "@/lib/core/policy";
 import type { Actor, PhotoSubject } from "@/lib/core/words";
-import type { PhotoGroup, PhotoView } from "@/lib/views";
+import { AppError } from "@/lib/errors";
+import type { PhotoGroup, PhotoPageView, PhotoView } from "@/lib/views";
 import { Board, Chip, Drive, Image, Photo, ShelfBoard } from "@/models";
 import { people } from "./people";
 import { photoView } from "./photo-view";
@@ -16,6 +18,11 @@ export async function photosOf(actor: Actor, type: PhotoSubject, id: string): Pr
   await photoPlaceFor(actor, type, id);
   const shelf = type === "board" ? await ShelfBoard.findOne({ attributes: ["id"], where: { takenBoardId: id } }) : null;
   return seenBy(actor, await views([[type, id], ...(shelf ? [["shelf-board", shelf.id] as const] : [])]));
+}
+
+/** Whether this person may add photos there now; the page shows no place for them otherwise. */
+export async function addsPhotos(actor: Actor, type: PhotoSubject, id: string): Promise<boolean> {
+  return may(actor, "photo.add") && !(await photoPlaceFor(actor, type, id)).case?.closedAt;
 }
 
 type Key = readonly [type: PhotoSubject, id: string];
@@ -45,6 +52,43 @@ export async function photosOfDrive(actor: Actor, driveId: string): Promise<Phot
     })),
   ]);
 }
+
+/** The newest photo of each board of these drives, which stands as the ground of its picture. */
+export async function boardPhotos(actor: Actor, driveIds: readonly string[]): Promise<Map<string, PhotoView>> {
+  const groups = (await Promise.all(driveIds.map((id) => photosOfDrive(actor, id)))).flat();
+  const newest = groups.flatMap(({ of, photos }) => {
+    const photo = of.type === "board" ? photos.findLast((one) => one.kind === "photo") : undefined;
+    return photo ? [[of.id, photo] as const] : [];
+  });
+  return new Map(newest);
+}
+
+/** One photo with where it belongs and its neighbours. */
+export async function photoPage(actor: Actor, id: string): Promise<PhotoPageView> {
+  allow(actor, "photo.read");
+  const row = await Photo.findByPk(id);
+  if (!row) throw notFound("photo");
+  const place = await photoPlaceFor(actor, row.subjectType, row.subjectId).catch((error: unknown) => {
+    throw error instanceof AppError && error.code === "not-found" ? notFound("photo") : error;
+  });
+  const list = await views([[row.subjectType, row.subjectId]]);
+  const at = list.findIndex((photo) => photo.id === id);
+  const [{ case: found, driveId, type }, first] = [place, list[at]];
+  const pages = [
+    ...(found ? [{ label: `Case ${found.ref}`, href: `/cases/${found.id}` }] : []),
+    ...(driveId ? [{ label: type === "drive" ? place.name : "Drive", href: `/drives/${driveId}` }] : []),
+    ...(type === "chip" ? [{ label: place.name, href: `/chips/${place.id}` }] : []),
+    ...(type === "shelf-board" ? [{ label: "Donor shelf", href: "/shelf" }] : []),
+  ];
+  const last = pages[pages.length - 1];
+  return seenBy(actor, {
+    photo: first, place: found && type !== "case" ? `${capital(place.name)}, case ${found.ref}` : capital(place.name), crumbs: pages,
+    back: { href: `${last.href}${type === "shelf-board" ? "" : "#photos"}`, label: type === "case" ? `case ${found!.ref}` : type === "board" ? "the drive" : type === "shelf-board" ? "the donor shelf" : place.name },
+    prev: list[at - 1]?.id ?? null, next: list[at + 1]?.id ?? null, number: at + 1, of: list.length,
+  });
+}
+
+const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
 
 /** How many photos lie on the drives of a case, their boards and chips, for a line that leads there. */
 export async function photoCounts(actor: Actor, caseId: string): Promise<{ driveId: string; photos: number }[]> {

@@ -13,10 +13,10 @@ const ROOMS: Record<string, RegExp> = {
   "app": /^(components|lib)\//,
   "components": new RegExp(`^${PARTS}`),
   // a page about something larger is put together from the parts of what lies in it, never the other way round
-  ...Object.fromEntries(["case", "bench", "decision", "compare", "find", "audit"].map((noun) => [`components/${noun}`, new RegExp(`^components/(drive|custody|chip|composite)/|^${PARTS}`)])),
-  "components/drive": new RegExp(`^components/(custody|chip)/|^${PARTS}`),
+  ...Object.fromEntries(["case", "bench", "decision", "compare", "find", "audit"].map((noun) => [`components/${noun}`, new RegExp(`^components/(drive|custody|chip|composite|photo)/|^${PARTS}`)])),
+  "components/drive": new RegExp(`^components/(custody|chip|photo)/|^${PARTS}`),
   // a composite lies in a chip: its page shows the votes and makes one
-  "components/chip": new RegExp(`^components/composite/|^${PARTS}`),
+  "components/chip": new RegExp(`^components/(composite|photo)/|^${PARTS}`),
   "lib/commands": CHANGES,
   "lib/queries": CHANGES,
   "lib/core": /^lib\/core\//,

@@ -85,6 +85,14 @@ export const API: ApiRow[] = [
   change("PATCH", "/api/boards/[id]", BENCH, () => ({ changes: { revision: "rev B" }, ...reason() })),
   change("POST", "/api/boards/[id]/chips", BENCH, () => chip),
 
+  look("/api/cases/[id]/photos", (t) => `/api/cases/${t.caseId}/photos`),
+  look("/api/drives/[id]/photos", (t) => `/api/drives/${t.driveId}/photos`),
+  look("/api/boards/[id]/photos", onUnknown("/api/boards/[id]/photos"), everyRole(404)),
+  look("/api/chips/[id]/photos", (t) => `/api/chips/${t.chipId}/photos`),
+  look("/api/shelf-boards/[id]/photos", onUnknown("/api/shelf-boards/[id]/photos"), everyRole(404)),
+  ...["cases", "drives", "boards", "chips", "shelf-boards"].map((things): ApiRow => ({ ...change("POST", `/api/${things}/[id]/photos`, BENCH), multipart: true })),
+  look("/api/photos/[id]", onUnknown("/api/photos/[id]"), everyRole(404)),
+
   look("/api/chips/[id]", (t) => `/api/chips/${t.chipId}`),
   change("PATCH", "/api/chips/[id]", BENCH, () => ({ changes: { package: "SOIC-8" }, ...reason() })),
   look("/api/chips/[id]/view", (t) => `/api/chips/${t.chipId}/view`),
@@ -161,6 +169,7 @@ export const PAGES: PageRow[] = [
   { route: "/drives/[id]/custody", at: (t) => `/drives/${t.driveId}/custody`, cells: everyDesk },
   { route: "/find", cells: everyDesk },
   { route: "/outbox", cells: pages(404, 404, 404, 200) },
+  { route: "/photos/[id]", at: (t) => `/photos/${t.unknown}`, cells: pages(404, 404, 404, 404) },
   { route: "/policy", cells: everyDesk },
   { route: "/users", cells: pages(404, 404, 404, 200) },
 ];

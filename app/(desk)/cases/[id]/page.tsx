@@ -5,6 +5,8 @@ import { ShareList } from "@/components/case/share-list";
 import { Ticket } from "@/components/case/ticket";
 import { LatestEntries } from "@/components/custody/latest-entries";
 import { AddDrive } from "@/components/drive/add-drive";
+import { CasePhotos } from "@/components/photo/case-photos";
+import { ParcelSection } from "@/components/receive/parcel-section";
 import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
 import { Empty } from "@/components/ui/empty";
@@ -14,28 +16,41 @@ import { may } from "@/lib/core/policy";
 import { orNotFound } from "@/lib/http/page-errors";
 import { caseView } from "@/lib/queries/cases";
 import { custodyOfDrive } from "@/lib/queries/custody";
+import { addsPhotos, photoCounts, photosOf } from "@/lib/queries/photos";
+import { driveToRecord } from "@/lib/queries/drives";
 import { policyView } from "@/lib/queries/policy";
+import { receiptView } from "@/lib/queries/receipts";
 import { dayIn } from "@/lib/queries/workshop-day";
 
 export const metadata: Metadata = { title: "Case" };
 
-export default async function CasePage({ params }: { params: Promise<{ id: string }> }) {
+export default async function CasePage({ params, searchParams }: { params: Promise<{ id: string }>; searchParams: Promise<Record<string, string | string[] | undefined>> }) {
   const { actor, session } = await signedIn();
   const { id } = await params;
   const view = await orNotFound(() => caseView(actor, id));
   const policy = await policyView(actor);
   const logs = await Promise.all(view.drives.map(async (drive) => ({ drive, ...(await custodyOfDrive(actor, drive.id)) })));
+  const [photos, counts, addsPhoto] = await Promise.all([photosOf(actor, "case", id), photoCounts(actor, id), addsPhotos(actor, "case", id)]);
   const { user, timeZone } = session;
   const now = new Date();
+  const receipt = await receiptView(actor, id);
+  const parcel = <ParcelSection caseId={id} state={view.state} receipt={receipt} receives={may(actor, "parcel.receive")} timeZone={timeZone} />;
   const adds = may(actor, "drive.record") && view.state === "open";
+  const drive = { caseId: id, userId: user.id, isLead: may(actor, "board.allow-other-number"), ...(await driveToRecord(actor, view, await searchParams)) };
   return (
     <DeskShell session={session} current="cases">
       <PageMain>
         <Ticket view={view} timeZone={timeZone} today={dayIn(timeZone, now)} />
-        {view.drives.map((drive) => <DriveBlock key={drive.id} drive={drive} policy={policy} user={user} />)}
-        {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive caseId={id} lead /> : null}>Type what its label says. An external drive may show only a part number on the enclosure: that is enough.</Empty></div> : null}
-        {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive caseId={id} /></div> : null}
+        {view.state === "requested" ? parcel : null}
+        {view.drives.map((drive) => <DriveBlock key={drive.id} drive={drive} policy={policy} user={user} open={view.state === "open"} />)}
+        {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive {...drive} lead /> : null}>Type what its label says. An external drive may show only a part number on the enclosure: that is enough.</Empty></div> : null}
+        {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive {...drive} /></div> : null}
         <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} /></Section>
+        {view.state === "requested" ? null : parcel}
+        <Section id="photos" title="Photos" note="Of the parcel, its papers and what came along. Kept as they came; copies are shown.">
+          <CasePhotos caseId={id} caseRef={view.ref} photos={photos} adds={addsPhoto} timeZone={timeZone}
+            drives={view.drives.map(({ id: driveId, letter }) => ({ id: driveId, letter, photos: counts.find((one) => one.driveId === driveId)?.photos ?? 0 }))} />
+        </Section>
         {view.shares.length > 0 ? (
           <Section title="Summary links" note="Private links to the verification summary."><ShareList shares={view.shares} timeZone={timeZone} withdraws={may(actor, "share.withdraw")} now={now.toISOString()} /></Section>
         ) : null}

@@ -1,9 +1,12 @@
 import type { Metadata } from "next";
 import { ChipScreen } from "@/components/chip/chip-screen";
+import { Photos } from "@/components/photo/photos";
 import { DeskShell } from "@/components/shell/desk-shell";
+import { Section } from "@/components/ui/section";
 import { signedIn } from "@/lib/auth/page";
 import { orNotFound } from "@/lib/http/page-errors";
 import { chipView } from "@/lib/queries/chip-view";
+import { addsPhotos, photosOf } from "@/lib/queries/photos";
 import { readBackView } from "@/lib/queries/read-back-view";
 import { dayIn } from "@/lib/queries/workshop-day";
 
@@ -15,9 +18,15 @@ export default async function ChipPage({ params }: { params: Promise<{ id: strin
   const { id } = await params;
   const chip = await orNotFound(() => chipView(actor, id));
   const readBack = await readBackView(actor, chip);
+  const [photos, addsPhoto] = await Promise.all([photosOf(actor, "chip", id), addsPhotos(actor, "chip", id)]);
+  const gallery = (
+    <Section id="photos" title="Photos" note="Of the chip: its marking, and how the clip sits.">
+      <Photos of={{ type: "chip", id }} name={chip.designator} photos={photos} adds={addsPhoto} timeZone={session.timeZone} />
+    </Section>
+  );
   return (
     <DeskShell session={session} current="bench">
-      <ChipScreen chip={chip} readBack={readBack} session={session} today={dayIn(session.timeZone, new Date())} />
+      <ChipScreen chip={chip} readBack={readBack} session={session} today={dayIn(session.timeZone, new Date())} photos={gallery} />
     </DeskShell>
   );
 }
