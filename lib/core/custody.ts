@@ -194,8 +194,6 @@ export async function checkChain(
     if (body) {
       if (body.drive !== chain) report("other-chain", chain, text(body.drive));
       if (body.seq !== expectedSeq) report("sequence", String(expectedSeq), text(body.seq));
-      // after a gap go on from what is there, so that one missing entry is one finding
-      if (typeof body.seq === "number" && Number.isSafeInteger(body.seq) && body.seq > expectedSeq) next.seq = body.seq;
       if (typeof body.at === "string") {
         if (body.at < previous.at) report("time-went-back", `${previous.at} or later`, body.at);
         next.at = body.at;
@@ -211,7 +209,11 @@ export async function checkChain(
     } catch (error) {
       report("could-not-check", "a digest of the body", sayError(error));
     }
-    if (await checkSignature(line, tools, report)) newest = checkKeyOrder(line.keyId, newest, tools, report);
+    if (await checkSignature(line, tools, report)) {
+      newest = checkKeyOrder(line.keyId, newest, tools, report);
+      // after a gap go on from what is there, so that one missing entry is one finding; only a signed number counts
+      if (body && Number.isSafeInteger(body.seq) && body.seq! > expectedSeq) next.seq = body.seq!;
+    }
     findings.push(...here.map((finding) => ({ ...finding, seq: next.seq })));
     previous = next;
   }

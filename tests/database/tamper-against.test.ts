@@ -13,6 +13,7 @@ import type { Here } from "@/scripts/check/against-bundle";
 import { exitCode } from "@/scripts/check/report";
 import { checkStore } from "@/scripts/check/store";
 import { lookNow } from "../support/check-here";
+import { emptyHouse } from "../support/empty-house";
 import { type Bench, makeApprovedBench, makeUser } from "../support/factory";
 import { withoutTriggers } from "../support/tamper";
 
@@ -38,6 +39,7 @@ async function against(file: string, look: Here = here) {
 }
 
 beforeAll(async () => {
+  await emptyHouse();
   bench = await makeApprovedBench();
   const auditor = await makeUser("auditor");
   early = await makeSeal(auditor, "asked");

@@ -1,0 +1,70 @@
+import type { Mutant } from "@/scripts/engine/mutant-rules";
+
+const CHAIN = "lib/core/custody.ts";
+const SEALS = "scripts/check/seals.ts";
+const OUTSIDE = "scripts/check/outside-seal.ts";
+const BUNDLE = "scripts/check/against-bundle.ts";
+const leave = (name: string, file: string, from: string, to: string): Mutant => ({ name, file, from, to });
+
+/** Each check left out alone. */
+export const CHECK_MUTANTS: Mutant[] = [
+  leave("an entry that cannot be read", CHAIN, `report("not-readable", "JSON in UTF-8", sayError(error));`, ""),
+  leave("the canonical form", CHAIN, "if (canonicalJson(value) !== source)", "if (false)"),
+  leave("text that has no canonical form", CHAIN, `report("not-canonical", "the RFC 8785 form", sayError(error));`, "void error;"),
+  leave("the shape of an entry", CHAIN, "if (!shape.success)", "if (false && !shape.success)"),
+  leave("another log's entry", CHAIN, "if (body.drive !== chain)", "if (false)"),
+  leave("the number", CHAIN, "if (body.seq !== expectedSeq)", "if (false)"),
+  leave("going on after a gap", CHAIN, "next.seq = body.seq!;", ";"),
+  leave("an unsigned number counts", CHAIN, "if (await checkSignature(line, tools, report)) {", "if ((await checkSignature(line, tools, report)) || true) {"),
+  leave("the time", CHAIN, "if (body.at < previous.at)", "if (false)"),
+  leave("a head that was behind", CHAIN, "if (behind !== undefined)", "if (false)"),
+  leave("the link", CHAIN, "if (previous.hash !== null && body.prev !== previous.hash)", "if (false)"),
+  leave("what stands beside", CHAIN, "      checkBeside(line, body, report);\n", ""),
+  leave("the number beside", CHAIN, `["seq", "action", "prev"] as const`, `["action", "prev"] as const`),
+  leave("the kind beside", CHAIN, `["seq", "action", "prev"] as const`, `["seq", "prev"] as const`),
+  leave("the link beside", CHAIN, `["seq", "action", "prev"] as const`, `["seq", "action"] as const`),
+  leave("the stored hash", CHAIN, "if (line.hash !== undefined && line.hash !== next.hash)", "if (false)"),
+  leave("a digest that cannot be taken", CHAIN, `report("could-not-check", "a digest of the body", sayError(error));`, "void error;"),
+  leave("an unknown key", CHAIN, "if (tools.knows && !tools.knows(line.keyId))", "if (tools.knows && !tools.knows(line.keyId)) return false; else if (false)"),
+  leave("the signature", CHAIN, "else if (await tools.verify(line.keyId, signedBytes(line.body), signature)) return true;", "else return true;"),
+  leave("a signature that is no base64", CHAIN, `if (!signature) report("signature", "base64", "something else");`, "if (!signature) return false;"),
+  leave("a signature that cannot be checked", CHAIN, `report("signature", "a signature over this body", sayError(error));`, "void error;"),
+  leave("a replaced key", CHAIN, `report("old-key", newest.keyId, keyId);`, ""),
+  leave("no head", CHAIN, "if (last.seq > 0) findings.push({ seq: null", "if (false) findings.push({ seq: null"),
+  leave("the cut tail", CHAIN, "if (head.seq > last.seq)", "if (false)"),
+  leave("a head behind", CHAIN, "} else if (head.seq < last.seq) {", "} else if (false) {"),
+  leave("the head's hash", CHAIN, "} else if (last.hash !== null && head.hash !== last.hash) {", "} else if (false) {"),
+  leave("a seal's text", SEALS, "if (!facts) say(", "if (false) say("),
+  leave("a seal's key", SEALS, "if (pem === undefined) say(", "if (pem === undefined) void ("),
+  leave("a seal's signature", SEALS, "else if (!verifySignature(pem, text, signature)) say(", "else if (!verifySignature(pem, text, signature)) void ("),
+  leave("a seal by a replaced key", SEALS, "if (keyPlace >= 0 && keyPlace < before.keyPlace)", "if (false)"),
+  leave("what stands beside a seal's text", SEALS, "      checkRow(row, facts, sha256, say);\n", ""),
+  leave("a seal that the numbers leave out", SEALS, "if (!logged) found.damage.push(", "if (false) found.damage.push("),
+  leave("the seal before", SEALS, `if (before.sha256 !== "" && facts.prev !== before.sha256)`, "if (false)"),
+  leave("a seal's time", SEALS, "if (facts.at < before.at)", "if (false)"),
+  leave("the order of the leaves", SEALS, "&& (i === 0 || leaves[i - 1].drive < leaf.drive)", ""),
+  leave("the leaves to the letter", SEALS, "leafText(leaf) === lines[i] && ", ""),
+  leave("leaves that cannot be read", SEALS, "if (!leaves) say(", "if (!leaves) void ("),
+  leave("the root", SEALS, "sealRoot(leaves, digest) !== facts.root) say(", "false) say("),
+  leave("the number of leaves", SEALS, "leaves.length !== facts.chains || ", ""),
+  leave("a seal without an entry", SEALS, `if (!logged) say("seal-not-in-log"`, `if (!logged) void ("seal-not-in-log"`),
+  leave("a seal other than its entry", SEALS, "if (logged.sha256 !== sha256)", "if (false)"),
+  leave("the occasion", SEALS, "if (logged.cause !== row.cause)", "if (false)"),
+  leave("the key beside against the entry", SEALS, "if (logged.keyId !== row.keyId)", "if (false)"),
+  leave("root and number of logs against the entry", SEALS, "if (facts && (logged.root !== facts.root || logged.chains !== facts.chains))", "if (false)"),
+  leave("two entries of one number", SEALS, "return before === sha256 ? [] :", "return before !== undefined ? [] :"),
+  leave("an entry without its seal", SEALS, "if (known.has(number)) return [];", "return [];"),
+  leave("a sealed entry that is another", SEALS, "} else if (ours !== leaf.head &&", "} else if (false &&"),
+  leave("a sealed entry that is gone", SEALS, "if ((this.missing.get(leaf.drive)?.leaf.seq ?? -1) < leaf.seq) this", "if (false) this"),
+  leave("a seal that saw less than the one before", SEALS, "if (!now || now.seq < former.seq)", "if (false)"),
+  leave("the signature of a seal from outside", OUTSIDE, `if (signature === "does not fit") say(`, "if (false) say("),
+  leave("a seal from outside that is not here", OUTSIDE, "if (here === undefined) {", "if (here === undefined) return { copy: { number: seal.number, sha256: seal.sha256, signature }, damage }; else if (false) { const told = false;"),
+  leave("a seal from outside that is another here", OUTSIDE, "} else if (here !== seal.sha256) say(", "} else if (false) say("),
+  leave("a bundle that is not in order", BUNDLE, `if (report.verdict !== "in-order")`, "if (false)"),
+  leave("a bundle's key", BUNDLE, "if (keyId === null || ledger.ring.keys.has(keyId)) return [];", "if (keyId !== undefined) return [];"),
+  leave("a bundle's entry that is another here", BUNDLE, "if (ours !== undefined) return [{", "if (ours !== undefined) return []; if (ours !== undefined) return [{"),
+  leave("a bundle's entry that is gone here", BUNDLE, `return [{ ...common, problem: "outside-entry-missing"`, `return []; return [{ ...common, problem: "outside-entry-missing"`),
+  leave("a bundle's image", BUNDLE, "!here.images.has(image.sha256)", "false"),
+];
+
+export const CONTROL: Mutant = { name: "nothing at all (a control)", file: CHAIN, from: "/** True when the signature holds. */", to: "/** True when the signature holds. */ " };

@@ -1,0 +1,34 @@
+import { describe, expect, it } from "vitest";
+import { honestHouse } from "@/scripts/tamper/honest-logs";
+import { falseAlarms } from "@/scripts/tamper/judge-house";
+import { eightEntries, sweepLog, sweepSeal } from "@/scripts/tamper/log-flips";
+
+describe("an honest log", () => {
+  // 1,000 of them in tests/long/tamper-logs.test.ts
+  it("is clean in 60 random workshops, whatever the text, the clock, the keys and the heads did", async () => {
+    for (let seed = 1; seed <= 60; seed += 1) expect([seed, await falseAlarms(honestHouse(seed))]).toEqual([seed, []]);
+  });
+
+  it("takes in what it is meant to: repaired heads, changed keys, clocks that stepped back, several seals", () => {
+    const houses = Array.from({ length: 60 }, (_, i) => honestHouse(i + 1));
+    const bodies = houses.flatMap(({ chains }) => [...chains.values()].flatMap(({ lines }) => lines.map(({ body }) => Buffer.from(body).toString())));
+    expect(houses.some(({ repaired }) => repaired.size > 0)).toBe(true);
+    expect(houses.some(({ seals }) => seals.length > 2)).toBe(true);
+    for (const sign of ["clockBehindMs", '"purpose":"log","reason"', '"purpose":"seal","reason"', "\u202e"]) expect(bodies.some((body) => body.includes(sign)), sign).toBe(true);
+  });
+});
+
+// every single one in tests/long/tamper-logs.test.ts
+describe("one flipped bit", () => {
+  const eight = eightEntries();
+
+  it("of a log of eight entries is found, and its entry or the head named first", async () => {
+    const { flips, missed } = await sweepLog(eight, 9);
+    expect(missed).toEqual([]);
+    expect(flips).toBeGreaterThan(800);
+  });
+
+  it("of a seal, its list of heads or what stands beside it is found, and the seal named first", async () => {
+    expect((await sweepSeal(eight, 9)).missed).toEqual([]);
+  });
+});
