@@ -1,6 +1,8 @@
 import type { BenchGroup } from "./bench-words";
 
-function Stop({ group }: { group: BenchGroup }) {
+type Stopped = Pick<BenchGroup, "key" | "label" | "late"> & { rows: readonly unknown[] };
+
+function Stop({ group }: { group: Stopped }) {
   const inside = (
     <>
       <i className="hole" aria-hidden="true" />
@@ -12,10 +14,11 @@ function Stop({ group }: { group: BenchGroup }) {
   return group.rows.length > 0 ? <a className="stop" href={`#${group.key}`}>{inside}</a> : <div className="stop">{inside}</div>;
 }
 
-/** The way of every chip in the shop, with how many stand where. */
-export function BenchRoute({ groups }: { groups: readonly BenchGroup[] }) {
+/** The way of every chip in the shop, with how many stand where; before it the parcels that are still to come. */
+export function BenchRoute({ groups, toReceive }: { groups: readonly BenchGroup[]; toReceive: readonly unknown[] }) {
   return (
-    <ol className="bus" aria-label="Chips on the bench, by what has to be done next">
+    <ol className="bus" aria-label="Parcels and chips, by what has to be done next">
+      <li className={toReceive.length === 0 ? "none" : ""}><Stop group={{ key: "to-receive", label: "To receive", late: 0, rows: toReceive }} /></li>
       {groups.map((group) => <li key={group.key} className={`${group.detour ? "detour" : ""} ${group.rows.length === 0 ? "none" : ""}`}><Stop group={group} /></li>)}
     </ol>
   );

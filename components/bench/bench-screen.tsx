@@ -10,7 +10,7 @@ import { Empty } from "@/components/ui/empty";
 import { Note } from "@/components/ui/note";
 import { may } from "@/lib/core/policy";
 import { backgroundFetcher, Refusal } from "@/lib/http/send";
-import type { BenchRow, PlacedItem, SessionView } from "@/lib/views";
+import type { BenchRow, PlacedItem, SessionView, ToReceiveRow } from "@/lib/views";
 import { BenchRoute } from "./bench-route";
 import { BenchTable } from "./bench-table";
 import { benchGroups, capital, dateSentence, dueWords, lateWords } from "./bench-words";
@@ -18,13 +18,14 @@ import { benchGroups, capital, dateSentence, dueWords, lateWords } from "./bench
 const REFRESH_MS = 20_000;
 
 /** What lies on the bench, refreshed in the background: two people at two benches see the same. */
-export function BenchScreen({ rows: given, waiting, session, mine, now: loadedAt }: { rows: BenchRow[]; waiting: PlacedItem[]; session: SessionView; mine: boolean; now: string }) {
+export function BenchScreen({ rows: given, toReceive: due, waiting, session, mine, now: loadedAt }: { rows: BenchRow[]; toReceive: ToReceiveRow[]; waiting: PlacedItem[]; session: SessionView; mine: boolean; now: string }) {
   const [now, setNow] = useState(loadedAt);
-  const { data, error } = useSWR<{ items: BenchRow[] }, Error>("/api/bench", backgroundFetcher, {
-    fallbackData: { items: given }, refreshInterval: REFRESH_MS, keepPreviousData: true, revalidateOnMount: false,
+  const { data, error } = useSWR<{ items: BenchRow[]; toReceive: ToReceiveRow[] }, Error>("/api/bench", backgroundFetcher, {
+    fallbackData: { items: given, toReceive: due }, refreshInterval: REFRESH_MS, keepPreviousData: true, revalidateOnMount: false,
     onSuccess: () => setNow(new Date().toISOString()),
   });
   const all = data?.items ?? given;
+  const toReceive = data?.toReceive ?? due;
   const own = all.filter((row) => row.mine);
   const rows = mine ? own : all;
   const groups = benchGroups(rows);
@@ -46,7 +47,7 @@ export function BenchScreen({ rows: given, waiting, session, mine, now: loadedAt
             <Link href="/bench?who=mine" aria-current={mine ? "true" : undefined}>Mine {own.length}</Link>
           </nav>
         </div>
-        <BenchRoute groups={groups} />
+        <BenchRoute groups={groups} toReceive={toReceive} />
       </BoardPanel>
       <PageMain>
         {error ? <div className="pt-4"><Note kind="caution" role="status" title="This page is not being refreshed.">{error instanceof Refusal && error.status === 401 ? "Your sign-in has ended. Reload the page to sign in again." : error.message}</Note></div> : null}
@@ -57,7 +58,7 @@ export function BenchScreen({ rows: given, waiting, session, mine, now: loadedAt
             </Note>
           </div>
         ) : null}
-        {rows.length > 0 ? <BenchTable groups={groups} acts={acts} signs={may(session.user, "approval.give")} /> : (
+        {rows.length + toReceive.length > 0 ? <BenchTable groups={groups} toReceive={toReceive} acts={acts} signs={may(session.user, "approval.give")} now={now} /> : (
           <div className="py-8">
             {all.length > 0
               ? <Empty title="Nothing is with you." action={<ButtonLink href="/bench">Show everyone’s work</ButtonLink>}>The chips in the shop are with others now.</Empty>

@@ -1,10 +1,12 @@
+import type { ToReceiveRow } from "@/lib/views";
 import { BenchLine } from "./bench-line";
 import type { BenchGroup } from "./bench-words";
+import { ReceiveRows } from "./receive-rows";
 
 const HEADS = ["Due", "Case", "Customer, part number", "Chip", "Do this next", "With", "Image"];
 
 /** One table with row groups, in the order of the route. */
-export function BenchTable({ groups, acts, signs }: { groups: readonly BenchGroup[]; acts: boolean; signs: boolean }) {
+export function BenchTable({ groups, toReceive, acts, signs, now }: { groups: readonly BenchGroup[]; toReceive: readonly ToReceiveRow[]; acts: boolean; signs: boolean; now: string }) {
   return (
     <table className="queue">
       <caption className="sr-only">Work on the bench, by what has to be done next</caption>
@@ -15,6 +17,7 @@ export function BenchTable({ groups, acts, signs }: { groups: readonly BenchGrou
           <th scope="col"><span className="sr-only">Open</span></th>
         </tr>
       </thead>
+      <ReceiveRows rows={toReceive} acts={acts} now={now} />
       {groups.filter((group) => group.rows.length > 0).map((group) => (
         <tbody key={group.key} id={group.key}>
           {group.rows.map((row, i) => (

@@ -13,11 +13,11 @@ import { send } from "@/lib/http/send";
 import { type CaseInput, caseInput } from "@/lib/schemas/case";
 
 /** Records a case and opens it, where its drives are added. */
-export function CaseForm() {
+export function CaseForm({ note = "" }: { note?: string }) {
   const router = useRouter();
   const { refusal, busy, attempt } = useChange();
   const { register, handleSubmit, formState: { errors, isSubmitSuccessful } } = useForm<z.input<typeof caseInput>, unknown, CaseInput>({
-    resolver: zodResolver(caseInput), defaultValues: { customer: { name: "", email: "", phone: "", contact: "" }, damage: "", note: "", dueOn: "" },
+    resolver: zodResolver(caseInput), defaultValues: { customer: { name: "", email: "", phone: "", contact: "" }, damage: "", note, dueOn: "" },
   });
   const submit = handleSubmit(async (input) => {
     await attempt(async () => {

@@ -1,5 +1,6 @@
 import { stateMark } from "@/components/chip/chip-words";
-import { PrintButton } from "@/components/custody/print-button";
+import { PrintMenu } from "@/components/print/print-menu";
+import { casePrints } from "@/components/print/print-words";
 import { Mark } from "@/components/ui/mark";
 import { dueText, momentText } from "@/components/ui/times";
 import type { CaseView } from "@/lib/views";
@@ -24,7 +25,7 @@ export function Ticket({ view, timeZone, today }: { view: CaseView; timeZone: st
           <div><dt>Received</dt><dd>{view.receivedAt ? momentText(view.receivedAt, timeZone) : "not yet"}</dd></div>
           <div><dt>State</dt><dd className={mark === "block" ? "text-block" : ""}><Mark kind={mark} className="mr-1.5 [--hole:var(--sheet)]" />{words}</dd></div>
         </dl>
-        <div className="no-print mt-auto"><PrintButton /></div>
+        <div className="no-print mt-auto"><PrintMenu links={casePrints(view.id)} /></div>
       </div>
       <dl className="boxes">
         <div className="w4"><dt>Customer</dt><dd><b>{view.customer.name}</b>{view.customer.contact ? <><br />{view.customer.contact}</> : null}</dd></div>

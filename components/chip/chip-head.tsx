@@ -1,6 +1,8 @@
 import type { ReactNode } from "react";
 import { BoardPanel } from "@/components/shell/board-panel";
 import { boardName } from "@/lib/core/board-name";
+import { PrintMenu } from "@/components/print/print-menu";
+import { chipPrints } from "@/components/print/print-words";
 import { Crumbs } from "@/components/ui/crumbs";
 import { Mark } from "@/components/ui/mark";
 import { dueText } from "@/components/ui/times";
@@ -67,6 +69,7 @@ export function ChipHead({ chip, timeZone, today }: { chip: ChipView; timeZone: 
           <span className="flex items-center gap-[9px] text-t5 font-strong phone:text-t4"><Mark kind={stateMark(chip.state.state)} size={20} /><span className={stateMark(chip.state.state) === "block" ? "text-block" : ""}>{chip.state.label}</span></span>
           {chip.case.dueOn ? <span>{dueWords(chip.case.dueOn.slice(0, 10), today)}</span> : null}
           {original ? null : <span className="text-silk-2">State of the original it is paired with</span>}
+          <PrintMenu links={chipPrints(chip.case.id, chip.id, chip.boardRole)} atRight />
         </div>
       </div>
       <Route chip={chip} timeZone={timeZone} />

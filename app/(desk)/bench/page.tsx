@@ -4,6 +4,7 @@ import { DeskShell } from "@/components/shell/desk-shell";
 import { signedIn } from "@/lib/auth/page";
 import { benchRows } from "@/lib/queries/bench";
 import { waitingFor } from "@/lib/queries/items";
+import { toReceive } from "@/lib/queries/receipts";
 
 export const metadata: Metadata = { title: "Bench" };
 
@@ -12,7 +13,7 @@ export default async function BenchPage({ searchParams }: { searchParams: Promis
   const { who } = await searchParams;
   return (
     <DeskShell session={session} current="bench">
-      <BenchScreen rows={await benchRows(actor)} waiting={(await waitingFor(actor)).items} session={session} mine={who === "mine"} now={new Date().toISOString()} />
+      <BenchScreen rows={await benchRows(actor)} toReceive={await toReceive(actor)} waiting={(await waitingFor(actor)).items} session={session} mine={who === "mine"} now={new Date().toISOString()} />
     </DeskShell>
   );
 }
