@@ -56,6 +56,12 @@ export const API: ApiRow[] = [
   { method: "GET", route: "/api/auth/[...nextauth]", at: () => "/api/auth/csrf", cells: anyone(200) },
   { method: "POST", route: "/api/auth/[...nextauth]", at: () => "/api/auth/callback/credentials", cells: anyone(302) },
   { method: "GET", route: "/api/health", cells: anyone(200) },
+  // multipart is asked for first; the private link's secret is no account of anybody
+  { method: "POST", route: "/api/requests", body: () => ({}), cells: anyone(415) },
+  { method: "POST", route: "/api/requests/deletion", body: () => ({ token: "x".repeat(43) }), cells: anyone(404) },
+  { method: "POST", route: "/api/requests/withdrawal", body: () => ({ token: "x".repeat(43) }), cells: anyone(404) },
+  change("POST", "/api/requests/[id]/link", roles(403, 404, 403, 404)),
+  change("DELETE", "/api/requests/[id]/link", roles(403, 404, 403, 404)),
   { method: "POST", route: "/api/shares/opened", body: () => ({ token: "x".repeat(43) }), cells: anyone(404) },
 
   { method: "POST", route: "/api/account/password", body: () => ({ current: "not the present one", next: "another long password of mine" }), cells: everyRole(422) },
@@ -152,6 +158,9 @@ export const PAGES: PageRow[] = [
   { route: "/sign-in", cells: anyone(200) },
   { route: "/verify", cells: anyone(200) },
   { route: "/summary/[token]", at: () => `/summary/${"x".repeat(43)}`, cells: anyone(404) },
+  { route: "/request", cells: anyone(200) },
+  { route: "/request/[token]", at: () => `/request/${"x".repeat(43)}`, cells: anyone(404) },
+  { route: "/request/[token]/slip", at: () => `/request/${"x".repeat(43)}/slip`, cells: anyone(404) },
   { route: "/account", cells: everyDesk },
   ...["", "/drives", "/seals", "/images", "/assessments", "/hand-outs", "/refusals", "/clock"].map((path): PageRow => ({ route: `/audit${path}`, cells: pages(404, 200, 200, 200) })),
   ...["/sign-ins", "/sign-ins/tokens", "/sign-ins/limits"].map((path): PageRow => ({ route: `/audit${path}`, cells: pages(404, 200, 200, 200, 404) })),

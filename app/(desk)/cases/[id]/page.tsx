@@ -7,6 +7,7 @@ import { LatestEntries } from "@/components/custody/latest-entries";
 import { AddDrive } from "@/components/drive/add-drive";
 import { CasePhotos } from "@/components/photo/case-photos";
 import { ParcelSection } from "@/components/receive/parcel-section";
+import { RequestSection } from "@/components/request/request-section";
 import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
 import { Empty } from "@/components/ui/empty";
@@ -20,6 +21,7 @@ import { addsPhotos, photoCounts, photosOf } from "@/lib/queries/photos";
 import { driveToRecord } from "@/lib/queries/drives";
 import { policyView } from "@/lib/queries/policy";
 import { receiptView } from "@/lib/queries/receipts";
+import { requestSection } from "@/lib/queries/requests";
 import { dayIn } from "@/lib/queries/workshop-day";
 
 export const metadata: Metadata = { title: "Case" };
@@ -34,6 +36,7 @@ export default async function CasePage({ params, searchParams }: { params: Promi
   const { user, timeZone } = session;
   const now = new Date();
   const receipt = await receiptView(actor, id);
+  const request = await requestSection(actor, id);
   const parcel = <ParcelSection caseId={id} state={view.state} receipt={receipt} receives={may(actor, "parcel.receive")} timeZone={timeZone} />;
   const adds = may(actor, "drive.record") && view.state === "open";
   const drive = { caseId: id, userId: user.id, isLead: may(actor, "board.allow-other-number"), ...(await driveToRecord(actor, view, await searchParams)) };
@@ -47,6 +50,7 @@ export default async function CasePage({ params, searchParams }: { params: Promi
         {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive {...drive} /></div> : null}
         <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} /></Section>
         {view.state === "requested" ? null : parcel}
+        {request ? <RequestSection view={request} timeZone={timeZone} answers={may(actor, "request.answer")} /> : null}
         <Section id="photos" title="Photos" note="Of the parcel, its papers and what came along. Kept as they came; copies are shown.">
           <CasePhotos caseId={id} caseRef={view.ref} photos={photos} adds={addsPhoto} timeZone={timeZone}
             drives={view.drives.map(({ id: driveId, letter }) => ({ id: driveId, letter, photos: counts.find((one) => one.driveId === driveId)?.photos ?? 0 }))} />

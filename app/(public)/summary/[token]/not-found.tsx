@@ -1,15 +1,7 @@
-import { PublicShell } from "@/components/shell/public-shell";
+import { LinkShowsNothing } from "@/components/shell/link-shows-nothing";
 import { env } from "@/lib/env";
 
-/** The same page for a link that never was, is past its date or was withdrawn: it tells nothing more. */
 export default function SummaryNotFound() {
   const { workshop, demo } = env();
-  return (
-    <PublicShell workshop={workshop} demo={demo}>
-      <main id="main" className="mx-auto grid max-w-[1120px] gap-3 px-8 py-10 phone:px-4">
-        <h1 className="text-t7 font-bold tracking-[-0.012em] phone:text-[1.625rem] phone:leading-8">This link shows nothing.</h1>
-        <p className="max-w-[62ch] text-t4">It may be cut short, past its date, or withdrawn. Open it from the e-mail once more; if it still shows nothing, ask the workshop for a new one.</p>
-      </main>
-    </PublicShell>
-  );
+  return <LinkShowsNothing workshop={workshop} demo={demo} />;
 }

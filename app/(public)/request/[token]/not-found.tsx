@@ -1,0 +1,7 @@
+import { LinkShowsNothing } from "@/components/shell/link-shows-nothing";
+import { env } from "@/lib/env";
+
+export default function RequestNotFound() {
+  const { workshop, demo } = env();
+  return <LinkShowsNothing workshop={workshop} demo={demo} />;
+}

@@ -1,0 +1,8 @@
+"use client";
+
+import { Button } from "@/components/ui/button";
+import { Icon } from "@/components/ui/icon";
+
+export function PrintSlip() {
+  return <Button onClick={() => window.print()}><Icon name="print" />Print</Button>;
+}
