@@ -403,6 +403,8 @@ export interface CaseRow {
   receivedAt: string | null;
   requestedAt: string | null;
   state: CaseState;
+  /** the day from which the images of a closed case are due for erasure */
+  eraseOn: string | null;
   chips: { state: ChipStateCode; label: string; designator: string }[];
 }
 

@@ -1,9 +1,11 @@
 import { createHash } from "node:crypto";
 import { Op, QueryTypes } from "sequelize";
+import { isAllowedOnClosed } from "@/lib/core/closing";
 import { type Action, ACTIONS, type Facts } from "@/lib/core/custody-actions";
 import { type CustodyBody, custodyText, signedBytes, ZERO_HASH } from "@/lib/core/custody";
-import type { Actor } from "@/lib/core/words";
+import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { env } from "@/lib/env";
+import { AppError } from "@/lib/errors";
 import { MAX_CUSTODY_BODY_BYTES } from "@/lib/limits";
 import { connection, CustodyEntry, CustodyHead, type Transaction } from "@/models";
 import { logKey } from "@/storage";
@@ -54,6 +56,15 @@ async function selectHead(tx: Transaction, chain: string): Promise<Head | undefi
   return head;
 }
 
+/** The one place that keeps a closed case as it is: every change of it is an entry, and closing takes the same lock. */
+async function refuseOnClosed(tx: Transaction, chain: string): Promise<void> {
+  const [closed] = await connection().query<{ ref: string }>(
+    "SELECT cases.ref FROM drives JOIN cases ON cases.id = drives.case_id WHERE drives.id = ? AND cases.closed_at IS NOT NULL",
+    { replacements: [chain], transaction: tx, type: QueryTypes.SELECT },
+  );
+  if (closed) throw new AppError("rule-against", `Case ${closed.ref} is closed. Reopen it first; then make the change.`);
+}
+
 /**
  * Appends one entry to a chain, in the transaction of the change itself (CUSTODY.md, "Append"): lock, build the
  * canonical body, sign, insert, move the head. If the entry cannot be written the change does not happen.
@@ -62,6 +73,7 @@ export async function appendEntry<A extends Action>(
   tx: Transaction, chain: string, actor: Actor, action: A, subject: Subject, facts: Facts<A>,
 ): Promise<{ seq: number; hash: string }> {
   const head = await lockChain(tx, chain);
+  if (actor.role !== "system" && chain !== WORKSHOP_CHAIN && !isAllowedOnClosed(action)) await refuseOnClosed(tx, chain);
   const [{ now }] = await connection().query<{ now: string }>(
     "SELECT DATE_FORMAT(UTC_TIMESTAMP(6), '%Y-%m-%dT%H:%i:%s.%fZ') AS now", { transaction: tx, type: QueryTypes.SELECT },
   );

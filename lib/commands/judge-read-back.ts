@@ -1,9 +1,10 @@
 import { Op } from "sequelize";
 import { judgeReadBack, type ReadBackDiagnosis } from "@/lib/core/findings";
 import type { ImageFacts } from "@/lib/core/inspect";
+import { afterPowerOn } from "@/lib/core/start-up";
 import type { Finding } from "@/lib/core/words";
 import { engine } from "@/lib/engine/pool";
-import { Approval, Image, Read, type Transaction, Transfer } from "@/models";
+import { Approval, Image, Read, StartUpTest, type Transaction, Transfer } from "@/models";
 import { pathOfImage } from "@/storage";
 import { type Compared, compareIfStored } from "./compare-images";
 import { type ChipPlace, placeOfChip } from "./place";
@@ -27,7 +28,13 @@ export async function judgeReadBackOf(tx: Transaction, place: ChipPlace, read: R
     equalsAnd: diagnosis?.code === "not-erased" && !diagnosis.ranges, diagnosis,
     otherApproved: equal ? null : await otherApproved(tx, read.sha256, transfer.chipId),
     comparison: comparison && { differingBytes: comparison.differingBytes, first: comparison.first, last: comparison.last },
+    poweredOn: !equal && await startedBefore(tx, place.drive.id, transfer, read),
   });
+}
+
+async function startedBefore(tx: Transaction, driveId: string, transfer: Transfer, read: Read): Promise<boolean> {
+  const tests = await StartUpTest.findAll({ where: { driveId }, attributes: ["at"], transaction: tx });
+  return afterPowerOn({ takenAt: read.takenAt?.getTime() ?? null, storedAt: read.storedAt.getTime() }, transfer.at.getTime(), tests.map((test) => test.at.getTime()));
 }
 
 type Stored = Pick<Image, "sha256" | "sizeBytes">;

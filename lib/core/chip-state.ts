@@ -109,7 +109,7 @@ function transferState(policy: Policy, sizeBytes: number, transfer: StateTransfe
   const equal = transfer.readBacks.filter((read) => read.counted && read.sha256 === transfer.approvedSha256);
   const seatings = new Set(equal.map((read) => read.seating)).size;
   if (equal.length >= policy.readBacks && seatings >= policy.readBackSeatings) {
-    return { state: "verified", sentence: verifiedSentence(equal.length, sizeBytes) };
+    return { state: "verified", sentence: verifiedSentence(equal.length, sizeBytes, transfer.poweredOn) };
   }
   return { state: "written", sentence: writtenSentence(policy, equal.length, seatings) };
 }

@@ -8,9 +8,10 @@ import { readName, type Policy } from "./words";
 
 const inSeatings = (n: number) => (n > 1 ? ` in ${n} seatings` : "");
 
-export function verifiedSentence(equal: number, sizeBytes: number): string {
+/** `started`: the board has been started on the drive since. */
+export function verifiedSentence(equal: number, sizeBytes: number, started: boolean): string {
   const all = equal === 1 ? "The read-back equals" : equal === 2 ? "Both read-backs equal" : `All ${equal} read-backs equal`;
-  return `${all} the approved image in all ${countOf(sizeBytes, "byte")}. Pack the donor board with the drive.`;
+  return `${all} the approved image in all ${countOf(sizeBytes, "byte")}. ${started ? "Pack the donor board with the drive." : "Fit the donor board to the drive and test its start-up."}`;
 }
 
 export function failedSentence(approvalStands: boolean, against: StateRead | null, clearedAnew: boolean): string {

@@ -53,6 +53,7 @@ function inWhoseHands(record: ChipRecord, state: StateView, policy: Policy, lead
 }
 
 function nextStep(record: ChipRecord, state: StateView): { next: string; nextWhy: string | null } {
+  if (record.case.returnedAt) return { next: state.sentence, nextWhy: "It has gone back: a lead closes the case." };
   if (["unread", "needs-reads", "ready"].includes(state.state) && record.donor && !donorContentSaved(record)) {
     return { next: state.sentence, nextWhy: `Also save the content of donor ${record.donor.chip.designator}: two equal reads.` };
   }

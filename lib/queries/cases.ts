@@ -1,9 +1,9 @@
-import { Op, type Order, type WhereOptions } from "sequelize";
+import { col, fn, Op, type Order, type WhereOptions } from "sequelize";
 import { allow, inCases, notFound } from "@/lib/commands/refuse";
 import { caseFor } from "@/lib/commands/place";
 import { readCaseRef, withCheck } from "@/lib/core/case-number";
 import type { Actor } from "@/lib/core/words";
-import type { ListInput } from "@/lib/schemas/case";
+import type { CaseListInput } from "@/lib/schemas/case";
 import type { CaseRow, CaseState, CaseView, ListView } from "@/lib/views";
 import { Case, CustodyHead, Customer, Drive, Share } from "@/models";
 import { boardViews } from "./boards";
@@ -15,17 +15,22 @@ import { currentPolicy } from "./policy";
 import { seenBy } from "./seen-by";
 import { shareView } from "./share-view";
 
-const COLUMN: Record<string, string> = { ref: "ref", due: "dueOn", received: "receivedAt" };
+const COLUMN: Record<string, string> = { ref: "ref", due: "dueOn" };
+/** a request without a parcel stands where it came in */
+const CAME = fn("COALESCE", col("Case.received_at"), col("Case.requested_at"));
+const STATES: Record<CaseState, WhereOptions> = {
+  requested: { receivedAt: null, closedAt: null }, open: { receivedAt: { [Op.ne]: null }, closedAt: null }, closed: { closedAt: { [Op.ne]: null } },
+};
 
 /** The cases as a list: searched, sorted and paged by the database. */
-export async function caseList(actor: Actor, input: ListInput): Promise<ListView<CaseRow>> {
+export async function caseList(actor: Actor, input: CaseListInput): Promise<ListView<CaseRow>> {
   allow(actor, "case.read");
   const direction = input.order === "asc" ? "ASC" : "DESC";
   const byName = [{ model: Customer, as: "customer" }, "name", direction] as const;
   const column = COLUMN[input.sort];
-  const order: Order = [input.sort === "customer" ? [...byName] : column ? [column, direction] : ["receivedAt", "DESC"], ["ref", "DESC"]];
+  const order: Order = [input.sort === "customer" ? [...byName] : column ? [column, direction] : [CAME, input.sort === "received" ? direction : "DESC"], ["ref", "DESC"]];
   const { rows, count } = await Case.findAndCountAll({
-    where: { [Op.and]: [inCases(actor, "id"), await matching(actor, input.q)] }, include: [{ model: Customer, as: "customer", required: true }], order,
+    where: { [Op.and]: [inCases(actor, "id"), await matching(actor, input.q), input.state ? STATES[input.state] : {}] }, include: [{ model: Customer, as: "customer", required: true }], order,
     limit: input.pageSize, offset: (input.page - 1) * input.pageSize, distinct: true,
   });
   return { items: await seenBy(actor, await caseRows(rows)), total: count, page: input.page, pageSize: input.pageSize };
@@ -56,7 +61,7 @@ export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
   return rows.map((row) => ({
     id: row.id, ref: row.ref, customerName: customers.get(row.customerId)?.name ?? "", damage: row.damage, dueOn: row.dueOn ?? null,
     partNumbers: drives.filter((d) => d.caseId === row.id).map((d) => d.partNumber ?? d.model ?? d.serial).join(", "),
-    receivedAt: row.receivedAt?.toISOString() ?? null, requestedAt: row.requestedAt?.toISOString() ?? null, state: caseState(row),
+    receivedAt: row.receivedAt?.toISOString() ?? null, requestedAt: row.requestedAt?.toISOString() ?? null, state: caseState(row), eraseOn: row.eraseOn ?? null,
     chips: states.filter((s) => s.caseId === row.id).map(({ state, label, designator }) => ({ state, label, designator })),
   }));
 }

@@ -23,7 +23,7 @@ export function stateFacts(record: ChipRecord, policy: Policy, worst: StateFacts
     policy, sizeBytes: record.chip.sizeBytes, reads: record.before.map(stateRead), worst,
     approval: record.standing && { sha256: record.standing.sha256.toString("hex"), donorChipId: record.standing.donorChipId },
     transfer: latest && behind ? {
-      approvedSha256: behind.sha256.toString("hex"), approvalStands: !behind.revokedAt, poweredOn: false,
+      approvedSha256: behind.sha256.toString("hex"), approvalStands: !behind.revokedAt, poweredOn: record.started.some((at) => at > latest.at),
       readBacks: record.backs.filter((r) => r.transferId === latest.id).map(stateRead),
     } : null,
   };

@@ -1,6 +1,6 @@
 import { Op } from "sequelize";
 import {
-  Approval, ApprovalRequest, Board, Case, Chip, Customer, Drive, Image, Read, type Transaction, Transfer,
+  Approval, ApprovalRequest, Board, Case, Chip, Customer, Drive, Image, Read, StartUpTest, type Transaction, Transfer,
 } from "@/models";
 
 /** Everything on record about one chip of an original board, its pair and what was done with them. */
@@ -22,12 +22,14 @@ export interface ChipRecord {
   /** in order; the last one is the latest */
   transfers: Transfer[];
   request: ApprovalRequest | null;
+  /** when the drive was tested on a donor board, in order */
+  started: Date[];
   /** digests whose stored image is damaged or missing */
   unsound: Set<string>;
 }
 
 /**
- * Records of the original's chips on these drives, in seven queries however many chips there are.
+ * Records of the original's chips on these drives, in a dozen queries however many chips there are.
  * `lone` are donor chips without a pair.
  */
 export async function chipRecords(driveIds: string[], tx?: Transaction): Promise<{ records: ChipRecord[]; lone: { chip: Chip; board: Board; reads: Read[] }[] }> {
@@ -45,6 +47,7 @@ export async function chipRecords(driveIds: string[], tx?: Transaction): Promise
   const transfers = await Transfer.findAll({ where: { chipId: ids }, order: ["at"], ...at });
   const requests = await ApprovalRequest.findAll({ where: { chipId: ids }, order: ["askedAt"], ...at });
   const images = await Image.findAll({ attributes: ["sha256"], where: { state: { [Op.ne]: "sound" } }, ...at });
+  const tests = await StartUpTest.findAll({ where: { driveId: driveIds }, attributes: ["driveId", "at"], order: [["at", "ASC"]], ...at });
   const unsound = new Set(images.map((i) => i.sha256.toString("hex")));
 
   const boardOf = new Map(boards.map((b) => [b.id, b]));
@@ -73,7 +76,8 @@ export async function chipRecords(driveIds: string[], tx?: Transaction): Promise
       before: of(reads, (r) => r.chipId === chip.id && r.stage === "before"),
       own: donorChip ? of(reads, (r) => r.chipId === donorChip.id && r.stage === "donor") : [],
       backs: of(reads, (r) => r.stage === "after" && mine.some((t) => t.id === r.transferId)),
-      approvals: given, standing: given.find((a) => !a.revokedAt) ?? null, transfers: mine, request: asked.at(-1) ?? null, unsound,
+      approvals: given, standing: given.find((a) => !a.revokedAt) ?? null, transfers: mine, request: asked.at(-1) ?? null,
+      started: of(tests, (t) => t.driveId === drive.id).map((t) => t.at), unsound,
     });
   }
   return { records, lone };
