@@ -1,15 +1,16 @@
 import { randomUUID } from "node:crypto";
 import { differsText } from "@/lib/core/receipt-words";
-import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
+import type { Actor } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import { AppError } from "@/lib/errors";
 import { parcelSubject, parcelText } from "@/lib/mail/parcel-text";
 import type { ReceiptInput } from "@/lib/schemas/receipt";
-import { Case, Customer, Drive, inTransaction, Receipt, type Transaction } from "@/models";
-import { appendEntry, lockChain } from "./append-entry";
+import { type Case, Customer, inTransaction, Receipt, type Transaction } from "@/models";
+import { appendToCase, lockCase } from "./append-to-case";
 import { caseFor } from "./place";
 import { queueMail } from "./queue-mail";
-import { allow, notFound } from "./refuse";
+import { allow } from "./refuse";
+import { requireOpen } from "./require-open";
 
 /**
  * The parcel is here: what it is like beside what was asked for. From now on drives can be recorded. A case made at the
@@ -19,11 +20,8 @@ export async function receiveParcel(actor: Actor, caseId: string, input: Receipt
   allow(actor, "parcel.receive");
   await caseFor(actor, caseId);
   return inTransaction(async (tx) => {
-    const drives = await Drive.findAll({ where: { caseId }, attributes: ["id"], transaction: tx });
-    const chains = drives.length > 0 ? drives.map((d) => d.id).sort() : [WORKSHOP_CHAIN];
-    for (const chain of chains) await lockChain(tx, chain);
-    const found = await Case.findByPk(caseId, { transaction: tx, lock: tx.LOCK.UPDATE });
-    if (!found) throw notFound("case");
+    const { found, chains } = await lockCase(tx, caseId);
+    requireOpen(found);
     await refuseSecond(found, tx);
     const now = new Date();
     const requested = found.receivedAt === null;
@@ -34,12 +32,10 @@ export async function receiveParcel(actor: Actor, caseId: string, input: Receipt
       differs: differsText(input.lines ?? [], input.differs), byUserId: actor.id, at: now,
     }, { transaction: tx });
     if (requested) await found.update({ receivedAt }, { transaction: tx });
-    for (const chain of chains) {
-      await appendEntry(tx, chain, actor, "parcel.received", { type: "case", id: caseId }, {
-        caseRef: found.ref, receipt: receipt.id, carrier: receipt.carrier ?? null, tracking: receipt.tracking ?? null, sealAsSent: receipt.sealAsSent, sealNumber: receipt.sealNumber ?? null,
-        smallBoard: receipt.smallBoard, condition: receipt.parcelCondition, accessories: receipt.accessories ?? null, differs: receipt.differs ?? null,
-      });
-    }
+    await appendToCase(tx, chains, actor, "parcel.received", { type: "case", id: caseId }, {
+      caseRef: found.ref, receipt: receipt.id, carrier: receipt.carrier ?? null, tracking: receipt.tracking ?? null, sealAsSent: receipt.sealAsSent, sealNumber: receipt.sealNumber ?? null,
+      smallBoard: receipt.smallBoard, condition: receipt.parcelCondition, accessories: receipt.accessories ?? null, differs: receipt.differs ?? null,
+    });
     // whoever stood at the desk knows that it is here
     if (requested) await tellCustomer(found, receivedAt, tx);
     return { id: receipt.id, receivedAt: receivedAt.toISOString() };
@@ -47,7 +43,6 @@ export async function receiveParcel(actor: Actor, caseId: string, input: Receipt
 }
 
 async function refuseSecond(found: Case, tx: Transaction): Promise<void> {
-  if (found.closedAt) throw new AppError("rule-against", `Case ${found.ref} is closed. Have a lead reopen it first, or record a new case for what came.`);
   if (await Receipt.findOne({ where: { caseId: found.id }, transaction: tx })) {
     throw new AppError("rule-against", `The parcel of case ${found.ref} has been received already. See its receipt; what came later goes into a note on the case.`);
   }
