@@ -9,22 +9,26 @@ import { Empty } from "@/components/ui/empty";
 import { FindingLine } from "@/components/ui/finding-line";
 import { dayText, dueText } from "@/components/ui/times";
 import type { CaseRow, ListView } from "@/lib/views";
+import type { ShownState } from "./case-search";
 
 const column = columnsFor<CaseRow>();
+const NONE: Record<Exclude<ShownState, "">, string> = { requested: "No parcel is awaited.", open: "No case is open.", closed: "No case is closed." };
 const PHONE = { customer: "bare l-top", damage: "bare l-full", drives: "bare l-row", chips: "bare l-row" };
 
 function Chips({ row }: { row: CaseRow }) {
   if (row.state === "closed") return <span className="text-ink-2">Closed</span>;
+  if (row.state === "requested") return <FindingLine kind="wait">Requested, parcel not here yet</FindingLine>;
   if (row.chips.length === 0) return <span className="text-ink-3">No chip recorded yet</span>;
   return <>{row.chips.map((chip, i) => <FindingLine key={i} kind={stateMark(chip.state)}><span className="font-mono">{chip.designator}</span> {chip.label}</FindingLine>)}</>;
 }
 
 /** The cases: searched, sorted and paged by the database. */
-export function CaseList({ list, sort, order, q, timeZone, today, records }: {
+export function CaseList({ list, sort, order, q, state, timeZone, today, records }: {
   list: ListView<CaseRow>;
   sort: string;
   order: "asc" | "desc";
   q: string;
+  state: ShownState;
   timeZone: string;
   /** the workshop's calendar day */
   today: string;
@@ -47,6 +51,8 @@ export function CaseList({ list, sort, order, q, timeZone, today, records }: {
   ]), [timeZone, today]);
   const empty = q
     ? <Empty title={`No case fits “${q}”.`} action={<ButtonLink href="/cases">Show all cases</ButtonLink>}>The search looks at case number, customer, damage and the drives’ part numbers, models and serials.</Empty>
+    : state
+    ? <Empty title={NONE[state]} action={<ButtonLink href="/cases">Show all cases</ButtonLink>}>{state === "requested" ? "Customers ask on the public form, /request. What they sent waits here until its parcel comes." : "The other cases are in the whole list."}</Empty>
     : <Empty title="No case yet." action={records ? <ButtonLink href="/cases/new">Record a case</ButtonLink> : null}>{records ? "Record the first one; then its drive, boards and chips." : "A technician or a lead records the first one."}</Empty>;
   return <DataTable caption="Cases" columns={columns} list={list} sort={sort} order={order} rowId={(row) => row.id} empty={empty} phone={PHONE} rowClass={(row) => (row.state === "closed" ? "is-aside" : "")} />;
 }

@@ -20,11 +20,16 @@ export function allVerified(drives: readonly DriveView[]): boolean {
   return chips.length > 0 && chips.every((chip) => chip.state.state === "verified");
 }
 
+/** The drive ends here: its own data lies inside the main controller. */
+export function hasNoChipToMove(drive: Pick<DriveView, "boards">): boolean {
+  return drive.boards.some((board) => board.role === "original" && board.dataInController);
+}
+
 /** "opens when U3 and U12 are verified", or null when nothing is open. */
 export function waitsFor(drives: readonly DriveView[]): string | null {
   const chips = chipsToTransfer(drives);
   const open = chips.filter((chip) => chip.state.state !== "verified");
-  if (chips.length === 0) return "opens when a chip is recorded and verified";
+  if (chips.length === 0) return drives.some(hasNoChipToMove) ? "there is no chip to move, so nothing to verify" : "opens when a chip is recorded and verified";
   if (open.length === 0) return null;
   return `opens when ${listText(open.map((chip) => chip.designator))} ${open.length === 1 ? "is" : "are"} verified`;
 }
@@ -47,8 +52,9 @@ export function ownContentWords(donor: Pick<ChipSummary, "countedReads" | "agree
 /** The worst state in the case, for the ticket's stub: "Reads disagree (U3)". */
 export function caseState(view: Pick<CaseView, "state" | "drives">): { state: ChipStateCode | null; words: string } {
   if (view.state === "closed") return { state: null, words: "Closed" };
+  if (view.state === "requested") return { state: null, words: "Requested, parcel not here yet" };
   const [first] = byUrgency(chipsToTransfer(view.drives));
-  if (!first) return { state: null, words: view.drives.length === 0 ? "No drive recorded yet" : "No chip recorded yet" };
+  if (!first) return { state: null, words: view.drives.length === 0 ? "No drive recorded yet" : view.drives.some(hasNoChipToMove) ? "No chip to move" : "No chip recorded yet" };
   return { state: first.state.state, words: `${first.state.label} (${first.designator})` };
 }
 

@@ -22,3 +22,7 @@ export const listInput = z.object({
   pageSize: z.coerce.number().int().min(1).max(200).default(25),
 });
 export type ListInput = z.infer<typeof listInput>;
+
+/** `requested`: the parcel is not here yet */
+export const caseListInput = listInput.extend({ state: z.enum(["", "requested", "open", "closed"]).default("") });
+export type CaseListInput = z.input<typeof caseListInput> & ListInput;

@@ -9,15 +9,15 @@ import { signedIn } from "@/lib/auth/page";
 import { may } from "@/lib/core/policy";
 import { caseList } from "@/lib/queries/cases";
 import { dayIn } from "@/lib/queries/workshop-day";
-import { listInput } from "@/lib/schemas/case";
+import { caseListInput } from "@/lib/schemas/case";
 
 export const metadata: Metadata = { title: "Cases" };
 
 export default async function CasesPage({ searchParams }: { searchParams: Promise<Record<string, string | string[] | undefined>> }) {
   const { actor, session } = await signedIn();
   // an address that makes no sense shows the list from its beginning
-  const parsed = listInput.safeParse({ sort: "received", order: "desc", ...(await searchParams) });
-  const input = parsed.success ? parsed.data : listInput.parse({ sort: "received", order: "desc" });
+  const parsed = caseListInput.safeParse({ sort: "received", order: "desc", ...(await searchParams) });
+  const input = parsed.success ? parsed.data : caseListInput.parse({ sort: "received", order: "desc" });
   const list = await caseList(actor, input);
   const records = may(actor, "case.create");
   return (
@@ -27,8 +27,8 @@ export default async function CasesPage({ searchParams }: { searchParams: Promis
           <PageTitle>Cases</PageTitle>
           {records ? <div className="no-print pb-5"><ButtonLink variant="lead" href="/cases/new">Record a case</ButtonLink></div> : null}
         </div>
-        <CaseSearch q={input.q} sort={input.sort} order={input.order} />
-        <CaseList list={list} sort={input.sort} order={input.order} q={input.q} timeZone={session.timeZone} today={dayIn(session.timeZone, new Date())} records={records} />
+        <CaseSearch q={input.q} sort={input.sort} order={input.order} state={input.state} />
+        <CaseList list={list} sort={input.sort} order={input.order} q={input.q} state={input.state} timeZone={session.timeZone} today={dayIn(session.timeZone, new Date())} records={records} />
       </PageMain>
     </DeskShell>
   );
