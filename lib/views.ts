@@ -813,3 +813,49 @@ export interface RequestSectionView {
   link: { ends: string | null; works: boolean };
   deletion: { askedAt: string; answerBy: string; message: string | null } | null;
 }
+
+export interface StartUpView extends StartUpFacts {
+  id: string;
+  note: string | null;
+  by: PersonView;
+  at: string;
+}
+
+export interface DriveStartUps {
+  driveId: string;
+  /** newest first */
+  tests: StartUpView[];
+  /** why it may not be started yet */
+  refusal: string | null;
+  /** serial on the label */
+  label: string | null;
+  /** the case is closed */
+  closed: boolean;
+}
+
+export interface ReturnView {
+  items: string[];
+  toPerson: string;
+  carrier: string | null;
+  tracking: string | null;
+  sealNumber: string | null;
+  note: string | null;
+  by: PersonView;
+  at: string;
+}
+
+/** The end of a case: tests, what goes back, how it was closed. */
+export interface ClosingView {
+  facts: ClosingFacts;
+  /** the latest test of each drive, and why it may not be started yet */
+  drives: { id: string; letter: string; test: StartUpFacts | null; refusal: string | null }[];
+  /** what could go back */
+  items: string[];
+  customerName: string;
+  returned: ReturnView | null;
+  closed: { at: string; kind: ClosedKind | null; reason: string | null } | null;
+  /** calendar day of the workshop; set when the case is closed */
+  eraseOn: string | null;
+  /** how many days images are kept after the return, as the customer was told */
+  keepDays: number;
+}

@@ -1,10 +1,10 @@
 import type { BoardView } from "@/lib/views";
-import { SLOTS } from "./board-place";
+import type { Spot } from "./board-place";
 
 const PINS = 4;
 
 /** Two rows of four pins above and below a chip. */
-function pinPath({ x, y, width, height }: (typeof SLOTS)[number]): string {
+function pinPath({ x, y, width, height }: Spot): string {
   const [step, pin, tall] = [width / PINS, width > 50 ? 7 : 5, width > 50 ? 10 : 7];
   return Array.from({ length: PINS }, (_, i) => {
     const left = x + step * i + (step - pin) / 2;
@@ -13,7 +13,14 @@ function pinPath({ x, y, width, height }: (typeof SLOTS)[number]): string {
 }
 
 /** A board as we draw it, not a photo: the chips on record carry their real designators and lead to their pages. */
-export function BoardDrawing({ board, slots }: { board: BoardView; slots: ReadonlyMap<string, number> }) {
+export function BoardDrawing({ board, spots, still = false, moving }: {
+  board: BoardView;
+  spots: ReadonlyMap<string, Spot>;
+  /** without ways to the chips' pages: while they are being placed */
+  still?: boolean;
+  /** the chip that is being placed */
+  moving?: string;
+}) {
   const name = [board.boardNumber, board.revision].filter(Boolean).join(" ").toUpperCase();
   return (
     <svg className={`pcb pcb-${board.role}`} viewBox="0 0 560 250" role="group" aria-label={`Drawing of the ${board.role} board with its chips`}>
@@ -25,19 +32,24 @@ export function BoardDrawing({ board, slots }: { board: BoardView; slots: Readon
       <g fill="var(--paper)" stroke="var(--p)" strokeWidth="5"><circle cx="24" cy="24" r="7.500"/><circle cx="534" cy="46" r="7.500"/><circle cx="26" cy="224" r="7.500"/><circle cx="532" cy="222" r="7.500"/></g>
       <text x="250" y="22" fontSize="11" fontWeight="500" fill="var(--s)" {...(name.length > 21 ? { textLength: 142, lengthAdjust: "spacingAndGlyphs" } : {})}>{name}</text>
       {board.chips.map((chip) => {
-        const slot = slots.get(chip.id);
-        if (slot === undefined) return null;
-        const at = SLOTS[slot];
-        return (
-          <a key={chip.id} href={`/chips/${chip.id}`} aria-label={`${chip.designator}, ${board.role}`}>
-            <path d={pinPath(at)} fill="var(--p)" />
-            <rect className="hot" x={at.x} y={at.y} width={at.width} height={at.height} />
-            <circle cx={at.x + 6} cy={at.y + at.height - 6} r="2.5" fill="var(--s)" />
-            <text x={at.x + at.width / 2 + 2} y={at.y + at.height / 2 + 5} textAnchor="middle" fontSize={slot === 0 ? 16 : 13} fontWeight="700" fill="var(--s)"
-              {...(chip.designator.length > 4 ? { textLength: at.width - 14, lengthAdjust: "spacingAndGlyphs" } : {})}>{chip.designator}</text>
-          </a>
-        );
+        const at = spots.get(chip.id);
+        if (!at) return null;
+        const drawn = <Drawn designator={chip.designator} at={at} moving={chip.id === moving} />;
+        return still ? <g key={chip.id}>{drawn}</g> : <a key={chip.id} href={`/chips/${chip.id}`} aria-label={`${chip.designator}, ${board.role}`}>{drawn}</a>;
       })}
     </svg>
+  );
+}
+
+function Drawn({ designator, at, moving }: { designator: string; at: Spot; moving: boolean }) {
+  return (
+    <>
+      <path d={pinPath(at)} fill="var(--p)" />
+      {moving ? <rect x={at.x - 6} y={at.y - 12} width={at.width + 12} height={at.height + 24} fill="none" stroke="var(--p)" strokeWidth="2" strokeDasharray="5 4" /> : null}
+      <rect className="hot" x={at.x} y={at.y} width={at.width} height={at.height} />
+      <circle cx={at.x + 6} cy={at.y + at.height - 6} r="2.5" fill="var(--s)" />
+      <text x={at.x + at.width / 2 + 2} y={at.y + at.height / 2 + 5} textAnchor="middle" fontSize={at.width > 50 ? 16 : 13} fontWeight="700" fill="var(--s)"
+        {...(designator.length > 4 ? { textLength: at.width - 14, lengthAdjust: "spacingAndGlyphs" } : {})}>{designator}</text>
+    </>
   );
 }

@@ -6,8 +6,9 @@ import { ButtonLink } from "@/components/ui/button";
 import { FindingLine } from "@/components/ui/finding-line";
 import { DesignatorPlate } from "@/components/ui/plate";
 import type { Policy } from "@/lib/core/words";
-import { isPowerOfTwo } from "@/lib/core/quantity";
+import { isPowerOfTwo, listText } from "@/lib/core/quantity";
 import type { ChipSummary, DriveView } from "@/lib/views";
+import { unitOf } from "@/lib/core/two-chips";
 import { donorOf, ownContentWords, readsWords } from "./case-words";
 import { MiniRoute } from "./mini-route";
 
@@ -21,9 +22,11 @@ function Row({ chip, drive, policy, corrects }: { chip: ChipSummary; drive: Driv
   const original = chip.boardRole === "original";
   const donor = original ? donorOf(chip, drive) : chip;
   const mark = stateMark(chip.state.state);
+  const unit = unitOf(originalOf(drive)?.chips ?? []);
+  const others = unit.some((one) => one.id === chip.id) ? unit.filter((one) => one.id !== chip.id).map((one) => one.designator) : [];
   return (
     <tr>
-      <th scope="row">{original ? <DesignatorPlate designator={chip.designator} board="original" /> : <span className="font-normal text-ink-3">not paired</span>}</th>
+      <th scope="row">{original ? <><DesignatorPlate designator={chip.designator} board="original" />{others.length > 0 ? <span className="mt-1 block text-t1 font-normal text-ink-2">with {listText(others)}</span> : null}</> : <span className="font-normal text-ink-3">not paired</span>}</th>
       <td className="min-w-[14ch]">{chipKind(chip)}{isPowerOfTwo(chip.sizeBytes) ? null : <span className="block text-t2 text-ink-2">size is not a power of two</span>}{chip.supplyMillivolts === null ? <FindingLine kind="caution">Look the supply up first</FindingLine> : null}</td>
       <td className="whitespace-nowrap" data-l="Reads">{!original ? "own content only" : chip.composite ? <b className="font-semibold text-caution">{readsWords(chip, policy)}</b> : readsWords(chip, policy)}</td>
       <td className="l-row"><StripThumb thumbnail={chip.thumbnail} /></td>

@@ -23,9 +23,11 @@ import { AddReads } from "./add-reads";
 import { ApprovalSection } from "./approval-section";
 import { ChipHead } from "./chip-head";
 import { ChipVerdict } from "./chip-verdict";
+import { EncryptionNote } from "./encryption-note";
 import { compareHref, nameOf, readBackKey } from "./chip-words";
 import { ReadsTable } from "./reads-table";
 import { TransferSection } from "./transfer-section";
+import { SiblingNote } from "./unit-note";
 import { contentsOf } from "./upload-form";
 
 const REFRESH_MS = 5_000;
@@ -64,6 +66,7 @@ export function ChipScreen({ chip: given, readBack, session, today, photos }: {
       <ChipHead chip={chip} timeZone={timeZone} today={today} />
       <PageMain>
         {error ? <div className="pt-4"><Note kind="caution" role="status" title="This page is not being refreshed.">{error instanceof Refusal && error.status === 401 ? "Your sign-in has ended. Reload the page to sign in again." : error.message}</Note></div> : null}
+        {chip.drive.encryption || chip.siblings.length > 0 ? <div className="grid gap-2 pt-4 empty:hidden"><EncryptionNote encryption={chip.drive.encryption} /><SiblingNote chip={chip} /></div> : null}
         <Section first title="What was found" note={latest ? `After ${nameOf(latest)}, ${momentText(latest.storedAt, timeZone)}` : "No read is stored yet."}>
           <ChipVerdict chip={chip} readBack={readBack} user={user} onChanged={changed} />
         </Section>

@@ -6,6 +6,7 @@ import type { Format } from "@/lib/core/words";
 import { save, send } from "@/lib/http/send";
 import type { ChipView, ReadView } from "@/lib/views";
 import { nameOf } from "./chip-words";
+import { EncryptionNote } from "./encryption-note";
 import { FormatChoice } from "./format-choice";
 import { ReasonDialog } from "./reason-dialog";
 
@@ -54,6 +55,7 @@ export function ReadDialogs({ asked, chip, onClose, onChanged }: {
         const file = await save(`/api/reads/${read.id}/download`, { reason, format });
         say({ text: `${name} was saved as ${file}.` });
       }}>
+      <EncryptionNote encryption={chip.drive.encryption} />
       <FormatChoice label="As what" value={format} onChoose={setFormat} />
     </ReasonDialog>
   );

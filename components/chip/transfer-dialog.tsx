@@ -14,6 +14,8 @@ import { useSay } from "@/components/ui/toast";
 import { Refusal, send } from "@/lib/http/send";
 import { transferInput, type TransferInput } from "@/lib/schemas/approval";
 import type { ApprovalView, ChipView } from "@/lib/views";
+import { EncryptionNote } from "./encryption-note";
+import { SiblingNote } from "./unit-note";
 
 /** Records what was done at the bench: the image was written, or the chip itself was moved. */
 export function TransferDialog({ open, onClose, chip, approval, onChanged }: { open: boolean; onClose(): void; chip: ChipView; approval: ApprovalView; onChanged(): Promise<unknown> }) {
@@ -49,6 +51,8 @@ export function TransferDialog({ open, onClose, chip, approval, onChanged }: { o
           <Checkbox type="radio" value="write" label={<><b>The approved image was written</b> to donor {donor}</>} {...register("kind")} />
           <Checkbox type="radio" value="chip-moved" label={<><b>The original chip was moved</b> to the donor board; the stored image is the safety copy</>} error={errors.kind?.message} {...register("kind")} />
         </fieldset>
+        <SiblingNote chip={chip} />
+        <EncryptionNote encryption={chip.drive.encryption} />
         <Input label="Programmer or tool" autoComplete="off" error={errors.programmer?.message} {...register("programmer")} />
         <Input label="Tool version" autoComplete="off" error={errors.toolVersion?.message} {...register("toolVersion")} />
         <Input label="Adapter" autoComplete="off" error={errors.adapter?.message} {...register("adapter")} />

@@ -12,6 +12,7 @@ import { countOf, sizeText } from "@/lib/core/quantity";
 import { seatingLetter } from "@/lib/core/words";
 import type { ChipView, SessionView, TransferView } from "@/lib/views";
 import { approvedRead, nameOf } from "./chip-words";
+import { EncryptionNote } from "./encryption-note";
 import { HandOut } from "./hand-out";
 import { TransferDialog } from "./transfer-dialog";
 
@@ -45,6 +46,7 @@ export function TransferSection({ chip, user, timeZone, onChanged }: { chip: Chi
       </ul>
       <div className="grid content-start gap-3.5">
         {writeNow ? <Note kind="caution" title={`Write to the donor only: donor ${donor}.`}>Never to the original chip. A wrong image can leave a drive beyond repair: compare the digest of the downloaded file before writing.</Note> : null}
+        {mayTake ? <EncryptionNote encryption={chip.drive.encryption} /> : null}
         <Buttons>
           {image && mayTake ? <HandOut readId={image.id} lead={writeNow}>{`Approved ${image.derived ? "composite" : "image"}, ${sizeText(image.sizeBytes)}`}</HandOut> : null}
           {own && mayTake && chip.donorSaved ? <HandOut readId={own.id}>Donor’s own content</HandOut> : null}

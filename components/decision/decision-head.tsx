@@ -1,3 +1,5 @@
+import { EncryptionNote } from "@/components/chip/encryption-note";
+import { SiblingNote } from "@/components/chip/unit-note";
 import { compositeBehind, madeOf, votesAnchor } from "@/components/composite/composite-words";
 import { Crumbs } from "@/components/ui/crumbs";
 import { Mark } from "@/components/ui/mark";
@@ -39,6 +41,7 @@ export function DecisionHead({ view: { chip, image }, timeZone }: { view: Decisi
           {chip.pair ? <DesignatorPlate designator={chip.pair.designator} board="donor" word large /> : <span className="text-ink-2">no donor chip yet</span>}
         </div>
       </header>
+      <div className="grid gap-2 pb-4 empty:hidden"><EncryptionNote encryption={chip.drive.encryption} /><SiblingNote chip={chip} /></div>
     </>
   );
 }

@@ -1,41 +1,24 @@
 "use client";
 
-import { zodResolver } from "@hookform/resolvers/zod";
-import { useRouter } from "next/navigation";
 import { useState } from "react";
-import { useForm } from "react-hook-form";
-import type { z } from "zod";
 import { Button } from "@/components/ui/button";
-import { FormDialog } from "@/components/ui/form-dialog";
-import { Note } from "@/components/ui/note";
-import { useChange } from "@/components/ui/use-change";
-import { send } from "@/lib/http/send";
-import { type DriveInput, driveInput } from "@/lib/schemas/drive";
-import { DriveFields } from "./drive-fields";
+import type { DriveProposal } from "./drive-step";
+import { RecordFlow } from "./record-flow";
 
-function AddDriveForm({ caseId, onClose }: { caseId: string; onClose(): void }) {
-  const router = useRouter();
-  const { refusal, busy, attempt } = useChange();
-  const { register, handleSubmit, formState: { errors } } = useForm<z.input<typeof driveInput>, unknown, DriveInput>({ resolver: zodResolver(driveInput) });
-  const submit = handleSubmit(async (input) => {
-    if (!(await attempt(() => send("POST", `/api/cases/${caseId}/drives`, input)))) return;
-    router.refresh();
-    onClose();
-  });
-  return (
-    <FormDialog onClose={onClose} title="Add a drive" description="Type what the label says, exactly." action="Add the drive" busy={busy} refusal={refusal} onSubmit={() => void submit()}>
-      <DriveFields register={register} errors={errors} />
-      <Note kind="caution" title="Keep the enclosure's small board with the drive.">It may hold the key to the data.</Note>
-    </FormDialog>
-  );
-}
-
-export function AddDrive({ caseId, lead }: { caseId: string; lead?: boolean }) {
-  const [open, setOpen] = useState(false);
+/** Opens the way from the label to the donor's chip; `opened` when the page was called for it. */
+export function AddDrive({ caseId, userId, isLead, lead, opened = false, proposed }: {
+  caseId: string;
+  userId: string;
+  isLead: boolean;
+  lead?: boolean;
+  opened?: boolean;
+  proposed?: DriveProposal & { boardNumber?: string; revision?: string };
+}) {
+  const [open, setOpen] = useState(opened);
   return (
     <>
       <Button variant={lead ? "lead" : "plain"} onClick={() => setOpen(true)}>Add a drive…</Button>
-      {open ? <AddDriveForm caseId={caseId} onClose={() => setOpen(false)} /> : null}
+      {open ? <RecordFlow start={{ kind: "drive" }} drive={null} caseId={caseId} userId={userId} isLead={isLead} proposed={proposed} onClose={() => setOpen(false)} /> : null}
     </>
   );
 }

@@ -36,7 +36,7 @@ function CorrectChipForm({ chip, originals, onClose }: Given & { onClose(): void
     resolver: zodResolver(chipCorrectionForm),
     defaultValues: { ...before, sizeBytes: String(chip.sizeBytes), supplyMillivolts: String(before.supplyMillivolts), pairedWith: before.pairedWith ?? "", reason: "" },
   });
-  const [size, supply, marking, idBytes, sfdp] = useWatch({ control, name: ["sizeBytes", "supplyMillivolts", "marking", "idBytes", "sfdp"] }).map(typed);
+  const [size, supply, marking, idBytes, sfdp, designator, pairedWith] = useWatch({ control, name: ["sizeBytes", "supplyMillivolts", "marking", "idBytes", "sfdp", "designator", "pairedWith"] }).map(typed);
   const submit = handleSubmit(async ({ reason, ...after }) => {
     const changes = changedFields(before, after);
     if (Object.keys(changes).length === 0) return setError("designator", { message: "These are the values on record. Change a field first." });
@@ -46,7 +46,7 @@ function CorrectChipForm({ chip, originals, onClose }: Given & { onClose(): void
   });
   return (
     <FormDialog onClose={onClose} title={`Correct ${chip.designator}, ${chip.boardRole}`} description="The log keeps what was there before, what is there now and why. The reads are judged again." action="Record the correction" busy={busy} refusal={refusal} onSubmit={() => void submit()}>
-      <ChipFields role={chip.boardRole} originals={originals} register={register} errors={errors} typed={{ size, supply, marking, idBytes, sfdp }}
+      <ChipFields board={{ role: chip.boardRole, dataInController: false }} originals={originals} register={register} errors={errors} typed={{ size, supply, marking, idBytes, sfdp, designator, pairedWith }}
         onTakeSize={({ bytes, source }) => {
           setValue("sizeBytes", String(bytes), { shouldValidate: true });
           setValue("sizeSource", source);

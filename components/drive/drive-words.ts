@@ -15,6 +15,11 @@ export function driveFacts(drive: Pick<DriveView, "partNumber" | "model" | "seri
   return [drive.partNumber, drive.model, drive.serial && `SN ${drive.serial}`, drive.interface].filter((fact): fact is string => Boolean(fact));
 }
 
+/** What else is on the label, and whether somebody looked for encryption. */
+export function lesserFacts({ capacity, made, firmware, encryption }: Pick<DriveView, "capacity" | "made" | "firmware" | "encryption">): string[] {
+  return [capacity, made && `made ${made}`, firmware && `firmware ${firmware}`, encryption === "none" && "not encrypted"].filter((fact): fact is string => Boolean(fact));
+}
+
 export function originalOf(drive: Pick<DriveView, "boards">): BoardView | null {
   return drive.boards.find((board) => board.role === "original") ?? null;
 }

@@ -1,15 +1,21 @@
 "use client";
 
-import type { ReactNode } from "react";
+import type { KeyboardEvent, ReactNode } from "react";
 import { Button, Buttons, type ButtonVariant } from "./button";
 import { Dialog } from "./dialog";
 import { Note } from "./note";
 
 /** A form that asks before it does something. A refusal stays here, with what was typed. Mount it only while it is open. */
-export function FormDialog({ onClose, title, description, action, variant = "lead", busy, refusal, reason, onSubmit, children }: {
+export function FormDialog({ title, description, ...form }: FormWords & { title: ReactNode; description?: ReactNode }) {
+  return (
+    <Dialog open onOpenChange={(next) => { if (!next) form.onClose(); }} title={title} description={description}>
+      <FormBody {...form} />
+    </Dialog>
+  );
+}
+
+interface FormWords {
   onClose(): void;
-  title: ReactNode;
-  description?: ReactNode;
   /** the button's words */
   action: string;
   variant?: ButtonVariant;
@@ -18,18 +24,27 @@ export function FormDialog({ onClose, title, description, action, variant = "lea
   /** why it can't be done yet */
   reason?: string | null;
   onSubmit(): void;
+  /** further buttons, between the first and "Leave it" */
+  also?: ReactNode;
   children?: ReactNode;
-}) {
+}
+
+/** The form by itself, for a dialog that goes from one form to the next. Ctrl and Enter submit from a text of several lines, too. */
+export function FormBody({ onClose, action, variant = "lead", busy, refusal, reason, also, onSubmit, children }: FormWords) {
+  function onKeyDown(event: KeyboardEvent<HTMLFormElement>) {
+    if (event.key !== "Enter" || !(event.ctrlKey || event.metaKey)) return;
+    event.preventDefault();
+    event.currentTarget.requestSubmit();
+  }
   return (
-    <Dialog open onOpenChange={(next) => { if (!next) onClose(); }} title={title} description={description}>
-      <form noValidate className="grid gap-4" onSubmit={(event) => { event.preventDefault(); onSubmit(); }}>
-        {children}
-        {refusal ? <Note kind="block" role="alert" title="This was not done.">{refusal}</Note> : null}
-        <Buttons>
-          <Button type="submit" variant={variant} disabled={busy} reason={reason}>{action}</Button>
-          <Button onClick={onClose}>Leave it</Button>
-        </Buttons>
-      </form>
-    </Dialog>
+    <form noValidate className="grid gap-4" onKeyDown={onKeyDown} onSubmit={(event) => { event.preventDefault(); if (!busy && !reason) onSubmit(); }}>
+      {children}
+      {refusal ? <Note kind="block" role="alert" title="This was not done.">{refusal}</Note> : null}
+      <Buttons>
+        <Button type="submit" variant={variant} disabled={busy} reason={reason}>{action}</Button>
+        {also}
+        <Button onClick={onClose}>Leave it</Button>
+      </Buttons>
+    </form>
   );
 }

@@ -1,30 +1,30 @@
 import { QueryTypes } from "sequelize";
 import { caseFor, driveFor, driveLetter } from "@/lib/commands/place";
 import { allow, casesOf } from "@/lib/commands/refuse";
-import { type AskedDrive, driveFromRequest } from "@/lib/core/drive-from-request";
+import { type AskedDrive, answerOf, driveFromRequest } from "@/lib/core/drive-from-request";
 import { type DriveWarning, driveWarnings, foldedSerial, type KnownDrive, LOOK_ALIKES } from "@/lib/core/drive-warnings";
-import type { Actor } from "@/lib/core/words";
+import type { Actor, Encryption } from "@/lib/core/words";
 import type { DriveLook } from "@/lib/schemas/drive";
-import type { DriveView } from "@/lib/views";
+import type { CaseView, DriveView } from "@/lib/views";
 import { connection, CustodyHead, Customer, type Drive, Request } from "@/models";
 import { boardViews } from "./boards";
 import { seenBy } from "./seen-by";
 
-export async function driveView(actor: Actor, id: string): Promise<DriveView & { case: { id: string; ref: string; customerName: string } }> {
+export async function driveView(actor: Actor, id: string): Promise<DriveView & { case: { id: string; ref: string; customerName: string; open: boolean } }> {
   allow(actor, "case.read");
   const { drive, case: found } = await driveFor(actor, id);
   const customer = await Customer.findByPk(found.customerId);
   const head = await CustodyHead.findByPk(id);
   return seenBy(actor, {
     ...driveFactsView(drive), warnings: await warningsOf(actor, drive),
-    boards: (await boardViews([id])).get(id) ?? [], custodyEntries: head?.seq ?? 0, case: { id: found.id, ref: found.ref, customerName: customer?.name ?? "" },
+    boards: (await boardViews([id])).get(id) ?? [], custodyEntries: head?.seq ?? 0, case: { id: found.id, ref: found.ref, customerName: customer?.name ?? "", open: !found.closedAt },
   });
 }
 
 /** What is typed of a drive, for the page of the drive and that of its case. */
 export function driveFactsView(drive: Drive): Omit<DriveView, "warnings" | "boards" | "custodyEntries"> {
   return {
-    id: drive.id, letter: driveLetter(drive), partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null, interface: drive.interface ?? null,
+    id: drive.id, caseId: drive.caseId, letter: driveLetter(drive), partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null, interface: drive.interface ?? null,
     capacity: drive.capacity ?? null, made: drive.made ?? null, firmware: drive.firmware ?? null, encryption: drive.encryption ?? null,
   };
 }
@@ -60,9 +60,25 @@ export async function warningsWhileTyping(actor: Actor, caseId: string, { partNu
 }
 
 /** Label data as the customer typed it in the request; empty where the case came another way. */
-export async function askedDrive(actor: Actor, caseId: string): Promise<AskedDrive> {
+export async function askedDrive(actor: Actor, caseId: string): Promise<AskedDrive & { encryption?: Encryption }> {
   allow(actor, "case.read");
   await caseFor(actor, caseId);
   const request = await Request.findOne({ where: { caseId }, attributes: ["answers"] });
-  return request ? driveFromRequest(JSON.parse(request.answers)) : {};
+  if (!request) return {};
+  const answers: unknown = JSON.parse(request.answers);
+  const lock = answerOf(answers, "lock");
+  // a password may be of the computer only: somebody looks before it counts as encrypted
+  return { ...driveFromRequest(answers), ...(lock === "known" || lock === "lost" ? { encryption: "suspected" as const } : {}) };
+}
+
+const FROM_ADDRESS = ["partNumber", "model", "serial", "interface"] as const;
+
+/**
+ * How the drive form begins on the page of a case: open when the address asks for it (`?record=drive`), filled in with
+ * what the address carries and what the customer asked with. The request speaks of one drive, so only the first is filled in.
+ */
+export async function driveToRecord(actor: Actor, view: Pick<CaseView, "id" | "drives">, query: Record<string, string | string[] | undefined>): Promise<{ opened: boolean; proposed: Awaited<ReturnType<typeof askedDrive>> }> {
+  const opened = query.record === "drive";
+  const given = Object.fromEntries(FROM_ADDRESS.flatMap((name) => (opened && typeof query[name] === "string" ? [[name, query[name].slice(0, 120)]] : [])));
+  return { opened, proposed: { ...(view.drives.length === 0 ? await askedDrive(actor, view.id) : {}), ...given } };
 }

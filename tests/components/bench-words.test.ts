@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { benchGroups, dateSentence, dueWords, lateWords, rowAction } from "@/components/bench/bench-words";
-import { placeChips } from "@/components/case/board-place";
+import { placeChips, SLOTS, spotAt } from "@/components/case/board-place";
 import { readsWords, waitsFor } from "@/components/case/case-words";
 import { type ChipStateCode, DEFAULT_POLICY } from "@/lib/core/words";
 import type { BenchRow, BoardView, ChipSummary, DriveView } from "@/lib/views";
@@ -12,7 +12,7 @@ function chip(id: string, state: ChipStateCode, more: Partial<ChipSummary> = {})
   };
 }
 const board = (role: "original" | "donor", chips: ChipSummary[]): BoardView => ({ id: role, role, boardNumber: "BX 40-3179", revision: null, controllerMarking: null, motorDriverMarking: null, condition: null, dataInController: false, fit: null, chips });
-const drive = (...boards: BoardView[]): DriveView => ({ id: "d", letter: "A", partNumber: "PN 1", model: null, serial: null, interface: null, capacity: null, made: null, firmware: null, encryption: null, warnings: [], boards, custodyEntries: 0 });
+const drive = (...boards: BoardView[]): DriveView => ({ id: "d", caseId: "c", letter: "A", partNumber: "PN 1", model: null, serial: null, interface: null, capacity: null, made: null, firmware: null, encryption: null, warnings: [], boards, custodyEntries: 0 });
 const row = (state: ChipStateCode, more: Partial<BenchRow> = {}): BenchRow => ({ chip: chip("u3", state), caseId: "c", caseRef: "26-0183", customerName: "", partNumber: "", dueOn: null, late: null, lateDays: 0, next: "", nextWhy: null, with: "", mine: false, ...more });
 
 describe("the bench", () => {
@@ -52,8 +52,22 @@ describe("a case", () => {
   it("draws a donor's chip where its pair is, and never two in one place", () => {
     const original = board("original", [chip("u3", "unread"), chip("u12", "unread")]);
     const donor = board("donor", [chip("x1", "unread", { boardRole: "donor" }), chip("d12", "unread", { boardRole: "donor", pair: { id: "u12", designator: "U12", boardId: "original", boardNumber: "", sizeBytes: 8192 } })]);
-    const slots = placeChips(original, donor);
-    expect(slots.get("d12")).toBe(slots.get("u12"));
-    expect(slots.get("x1")).not.toBe(slots.get("d12"));
+    const spots = placeChips(original, donor);
+    expect(spots.get("d12")).toEqual(spots.get("u12"));
+    expect(spots.get("x1")).not.toEqual(spots.get("d12"));
+  });
+  it("draws a chip where it was placed, wholly on the board, and its pair there too", () => {
+    const original = board("original", [chip("u3", "unread"), chip("u12", "unread", { place: { x: 1000, y: 0 } })]);
+    const donor = board("donor", [chip("d12", "unread", { boardRole: "donor", pair: { id: "u12", designator: "U12", boardId: "original", boardNumber: "", sizeBytes: 8192 } })]);
+    const spots = placeChips(original, donor);
+    expect(spots.get("u12")).toEqual({ x: 506, y: 16, width: 44, height: 25 });
+    expect(spots.get("d12")).toEqual(spots.get("u12"));
+    expect(spotAt({ x: 500, y: 500 })).toEqual({ x: 258, y: 113, width: 44, height: 25 });
+  });
+  it("gives a slot that a placed chip covers to nobody", () => {
+    const [first] = SLOTS;
+    const at = { x: Math.round(((first.x + 22) / 560) * 1000), y: Math.round(((first.y + 12) / 250) * 1000) };
+    const spots = placeChips(board("original", [chip("u1", "unread", { place: at }), chip("u2", "unread")]), null);
+    expect(spots.get("u2")).toEqual(SLOTS[1]);
   });
 });

@@ -78,8 +78,8 @@ describe("a drive's label", () => {
     const made = await newCase();
     expect(await askedDrive(technician, made.id)).toEqual({});
     const day = new Date();
-    await Request.create({ id: crypto.randomUUID(), caseId: made.id, tokenHash: Buffer.from(sha256(Buffer.from(made.id)), "hex"), answers: JSON.stringify({ partNumber: "PN 7", serial: "S-7" }), addressDigest: Buffer.alloc(32), requestedAt: day, expiresAt: day });
-    expect(await askedDrive(technician, made.id)).toEqual({ partNumber: "PN 7", serial: "S-7" });
+    await Request.create({ id: crypto.randomUUID(), caseId: made.id, tokenHash: Buffer.from(sha256(Buffer.from(made.id)), "hex"), answers: JSON.stringify({ partNumber: "PN 7", serial: "S-7", lock: "lost" }), addressDigest: Buffer.alloc(32), requestedAt: day, expiresAt: day });
+    expect(await askedDrive(technician, made.id)).toEqual({ partNumber: "PN 7", serial: "S-7", encryption: "suspected" });
   });
 });
 
