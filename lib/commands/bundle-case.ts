@@ -7,6 +7,7 @@ import { readView } from "@/lib/queries/read-view";
 import { derivedFacts } from "@/lib/core/derived";
 import { FORMAT_ENDING } from "@/lib/core/text-format";
 import { Approval, ApprovalRequest, Board, type Case, Chip, Customer, type Drive, Image, Read, type Transaction, Transfer } from "@/models";
+import { bundlePhotos } from "./bundle-photos";
 import { driveLetter } from "./place";
 
 export interface BundleImage {
@@ -19,6 +20,8 @@ export interface CaseRecord {
   /** the content of case.json, in a fixed order */
   record: Record<string, unknown>;
   images: BundleImage[];
+  /** photos and documents, as they came */
+  photos: BundleImage[];
   /** false when any approval of the case was given without it */
   twoPersonRule: boolean;
 }
@@ -51,6 +54,7 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
   };
   const customer = (await Customer.findByPk(found.customerId, at))!;
   const images: BundleImage[] = [];
+  const photos = await bundlePhotos(tx, { caseId: found.id, drives, boards, chips, who: rows.who });
   const record = {
     ref: found.ref, id: found.id, requestedAt: found.requestedAt?.toISOString() ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, recordedBy: found.createdBy ? rows.who(found.createdBy) : null, damage: found.damage, note: found.note ?? null,
     dueOn: found.dueOn ?? null, closedAt: found.closedAt?.toISOString() ?? null, closedReason: found.closedReason ?? null,
@@ -58,10 +62,11 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
     drives: drives.map((drive, i) => ({
       number: i + 1, letter: driveLetter(drive), id: drive.id, partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null,
       interface: drive.interface ?? null, capacity: drive.capacity ?? null, made: drive.made ?? null, firmware: drive.firmware ?? null, encryption: drive.encryption ?? null,
-      recordedAt: drive.createdAt.toISOString(), logUpTo: heads.get(drive.id)!, boards: boardRecords(rows, drive.id, i + 1, images),
+      recordedAt: drive.createdAt.toISOString(), logUpTo: heads.get(drive.id)!, boards: boardRecords(rows, drive.id, i + 1, images), photos: photos.ofDrive.get(drive.id) ?? [],
     })),
+    photos: photos.ofCase,
   };
-  return { record, images, twoPersonRule: rows.approvals.every((a) => a.twoPersonRule) };
+  return { record, images, photos: photos.files, twoPersonRule: rows.approvals.every((a) => a.twoPersonRule) };
 }
 
 /** What is kept beside a read's image: the text it came as, the report of the vote. */

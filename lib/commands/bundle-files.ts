@@ -67,7 +67,7 @@ async function payload(plan: BundlePlan, logKeyPem: string): Promise<BundleFile[
   files.push(...(await logFiles(WORKSHOP_KEYS, keysPart(plan.workshopSeq))), textFile(LOG_KEY, logKeyPem));
   const { seal } = plan;
   files.push(textFile(SEAL_TEXT, seal.text), textFile(SEAL_SIGNATURE, Buffer.from(seal.signature, "base64")), textFile(SEAL_KEY, seal.key), textFile(SEAL_PROOF, seal.proof));
-  files.push(...plan.images.map((image) => imageFile(image.path, image.sha256, image.sizeBytes)));
+  files.push(...[...plan.images, ...plan.photos].map((image) => imageFile(image.path, image.sha256, image.sizeBytes)));
   return files;
 }
 

@@ -12,6 +12,7 @@ import { keyIdOf, logKey } from "@/storage";
 import { bodyLines } from "./bundle-log";
 import type { BundlePlan } from "./bundle-plan";
 import { comparisonOnRecord } from "./compare-images";
+import { reducedOf } from "./photo-open";
 
 /** What the report's pictures and verdicts show, while the drives' logs are locked. No image is opened. */
 export async function drawingOf(tx: Transaction, record: ReportCase, policy: Policy): Promise<ReportDrawing> {
@@ -53,6 +54,11 @@ function entryOf(line: Buffer, seq: number): ReportEntry {
   }
 }
 
+/** of the copies in the report, in pixels: they are printed about 55 mm wide */
+const PICTURE_EDGE = 400;
+
+const photosIn = (record: ReportCase) => [...(record.photos ?? []), ...record.drives.flatMap((drive) => drive.photos ?? [])].filter((photo) => photo.kind === "photo" && photo.file !== null);
+
 /** data/report.pdf: the same plan gives the same bytes. */
 export async function bundleReport(plan: BundlePlan): Promise<Buffer> {
   const logs: ReportEntry[][] = [];
@@ -62,8 +68,13 @@ export async function bundleReport(plan: BundlePlan): Promise<Buffer> {
     logs.push(entries);
   }
   const record = JSON.parse(plan.caseJson) as ReportCase;
+  const pictures = new Map<string, Buffer>();
+  for (const { sha256, sizeBytes } of photosIn(record)) {
+    const copy = await reducedOf(sha256, sizeBytes, PICTURE_EDGE).catch(() => null);
+    if (copy) pictures.set(sha256, copy);
+  }
   const { number, sha256, key } = plan.seal;
   return makeReport({
-    record, logs, drawing: plan.drawing, logKey: logKey().keyId, seal: { number, sha256, keyFingerprint: keyIdOf(createPublicKey(key)) }, twoPersonRule: plan.twoPersonRule,
+    record, logs, drawing: plan.drawing, logKey: logKey().keyId, seal: { number, sha256, keyFingerprint: keyIdOf(createPublicKey(key)) }, twoPersonRule: plan.twoPersonRule, pictures,
   });
 }

@@ -20,7 +20,7 @@ export interface Bundle {
 export async function makeBundle(actor: Actor, caseId: string): Promise<Bundle> {
   allow(actor, "bundle.make");
   const plan = await startBundle(actor, caseId);
-  const distinct = new Map(plan.images.map((image) => [image.sha256, image.sizeBytes]));
+  const distinct = new Map([...plan.images, ...plan.photos].map((image) => [image.sha256, image.sizeBytes]));
   for (const [sha256, sizeBytes] of distinct) await requireSoundImage(sha256, sizeBytes, "bundle");
   return writeBundle(actor, plan);
 }

@@ -72,6 +72,16 @@ export function imagePath(place: ImagePlace): string {
   return `${chipFolder(place)}/${place.stage}-${place.number}.bin`;
 }
 
+/** Photos and documents of the case itself: "data/photos/case-1.jpg". */
+export function casePhotoPath(number: number, ending: string): string {
+  return `data/photos/case-${number}.${ending}`;
+}
+
+/** "data/drives/1/photos/drive-1.jpg", "…/original-2.png", "…/original.U12-1.jpg": `place` leads from the drive to the thing. */
+export function drivePhotoPath(drive: number, place: readonly string[], number: number, ending: string): string {
+  return `${driveFolder(drive)}/photos/${place.map(safeName).join(".")}-${number}.${ending}`;
+}
+
 export function bagitTxt(): string {
   return "BagIt-Version: 1.0\nTag-File-Character-Encoding: UTF-8\n";
 }
@@ -143,6 +153,8 @@ ${compositeText(composites)}
   data/drives/N/...             the images: before = of the original chip,
                                 donor = the donor chip's own content,
                                 after = read back after the transfer
+  data/drives/N/photos/         photos and documents of the drive, its boards and chips,
+                                as they came; data/photos/ holds those of the case
   data/workshop-keys.jsonl      the entries that introduce the log's keys
   data/workshop-keys.sig        their signatures
   data/seal/log-key.pem         the public key that signs the log and this bundle

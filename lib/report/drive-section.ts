@@ -3,13 +3,15 @@ import { NO_CHIP_TEXT, NO_CHIP_TITLE } from "@/lib/core/no-chip";
 import { sizeText } from "@/lib/core/quantity";
 import { unitWords } from "@/lib/core/two-chips";
 import { code, type Span, plain, quiet, strong } from "./ink";
+import { photoPart } from "./photo-section";
 import type { ReportBoard, ReportCase, ReportFacts } from "./report-facts";
 import { boardName, chipKind, driveName, FIT, momentText } from "./report-words";
 import type { Sheet } from "./sheet";
 import { Table } from "./table";
 
 /** Chapter 3: what lies on the bench. */
-export async function drives(sheet: Sheet, { record }: ReportFacts): Promise<void> {
+export async function drives(sheet: Sheet, facts: ReportFacts): Promise<void> {
+  const { record } = facts;
   sheet.heading(1, record.drives.length === 1 ? "The drive" : "The drives", { number: "3" });
   for (const drive of record.drives) {
     const name = [driveName(drive), drive.partNumber].filter(Boolean).join(", ");
@@ -29,6 +31,14 @@ export async function drives(sheet: Sheet, { record }: ReportFacts): Promise<voi
       chipTable(sheet, record, board);
       await sheet.breathe();
     }
+    if (drive.photos?.length) {
+      sheet.heading(3, `Photos and documents of ${driveName(drive)}`, { keep: 130 });
+      await photoPart(sheet, facts, drive.photos);
+    }
+  }
+  if (record.photos?.length) {
+    sheet.heading(2, "Photos and documents of the case", { number: `3.${record.drives.length + 1}`, keep: 130 });
+    await photoPart(sheet, facts, record.photos);
   }
 }
 

@@ -1,5 +1,5 @@
 import type { EntryKind } from "@/lib/core/custody-actions";
-import type { BoardRole, Bus, Encryption, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
+import type { BoardRole, Bus, Encryption, PhotoKind, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
 import type { PersonView, ReadView } from "@/lib/views";
 
 /** What a report is made from: the case as in case.json, the logs up to their heads, and what the strips show. Plain data. */
@@ -70,6 +70,23 @@ export interface ReportBoard {
   chips: ReportChip[];
 }
 
+/** a photo or document; the originals lie in the bundle */
+export interface ReportPhoto {
+  /** its id */
+  photo: string;
+  /** where in the bundle; null where the original is damaged or missing */
+  file: string | null;
+  sha256: string;
+  sizeBytes: number;
+  kind: PhotoKind;
+  /** "the original board BX 40-3179" */
+  of: string;
+  originalFileName: string;
+  caption: string | null;
+  storedAt: string;
+  by: PersonView | "customer";
+}
+
 export interface ReportDrive {
   number: number;
   letter: string;
@@ -85,6 +102,7 @@ export interface ReportDrive {
   recordedAt: string;
   logUpTo: { seq: number; hash: string };
   boards: ReportBoard[];
+  photos?: ReportPhoto[];
 }
 
 /** case.json */
@@ -107,6 +125,7 @@ export interface ReportCase {
   closedReason: string | null;
   customer: { name: string; email: string; phone: string | null; contact: string | null };
   drives: ReportDrive[];
+  photos?: ReportPhoto[];
 }
 
 export interface ReportEntry {
@@ -143,4 +162,6 @@ export interface ReportFacts {
   seal: { number: number; sha256: string; keyFingerprint: string } | null;
   /** false when any approval of the case was given without it */
   twoPersonRule: boolean;
+  /** small JPEG copies of photos by the original's digest, without metadata */
+  pictures?: ReadonlyMap<string, Buffer>;
 }
