@@ -33,13 +33,17 @@ export interface Logged {
   told: { reads: Map<string, Told>; counts: Map<string, Told>; approvals: Map<string, Told>; revocations: Map<string, Told>; transfers: Map<string, Told> };
   /** accounts by id, as their entries leave them */
   users: Map<string, { seq: number; name: string; role: string; off: boolean }>;
+  /** drives, boards and chips by id, as their entries leave them: plain values by the name of their column */
+  things: Map<string, { chain: string; seq: number; noun: string; facts: Record<string, unknown> }>;
+  /** of each donor's chip: the original's chip that it is paired with */
+  pairs: Map<string, string | null>;
   /** fields of the policy that an entry has changed, as the last one leaves them */
   policy: Map<string, { seq: number; value: unknown }>;
 }
 
 export function newLogged(): Logged {
   return {
-    reads: new Map(), approvals: new Map(), revoked: new Set(), users: new Map(), policy: new Map(),
+    reads: new Map(), approvals: new Map(), revoked: new Set(), users: new Map(), policy: new Map(), things: new Map(), pairs: new Map(),
     told: { reads: new Map(), counts: new Map(), approvals: new Map(), revocations: new Map(), transfers: new Map() },
   };
 }
@@ -70,6 +74,28 @@ function changedUser(logged: Logged, id: string, told: Told): void {
   user.seq = told.seq;
 }
 
+const plain = (facts: Record<string, unknown>) => Object.fromEntries(Object.entries(facts).filter(([, value]) => value === null || typeof value !== "object"));
+
+function recorded(logged: Logged, id: string, { chain, seq, action, facts }: Told): void {
+  const designator = (facts.chip as { designator?: unknown } | undefined)?.designator;
+  logged.things.set(id, { chain, seq, noun: action.split(".")[0], facts: { ...plain(facts), ...(designator === undefined ? {} : { designator }) } });
+}
+
+function corrected(logged: Logged, id: string, told: Told): void {
+  const thing = logged.things.get(id);
+  for (const { field, to } of told.facts.changes as { field: string; to: unknown }[]) {
+    if (field === "pairedWith") logged.pairs.set(id, to === null ? null : logged.pairs.get(id) ?? null);
+    else if (thing) thing.facts[field] = to;
+  }
+  if (thing) thing.seq = told.seq;
+}
+
+function paired(logged: Logged, id: string, { facts }: Told): void {
+  const { donorChip, before } = facts as { donorChip: { id: string }; before: { id: string } | null };
+  if (before) logged.pairs.set(before.id, null);
+  logged.pairs.set(donorChip.id, id);
+}
+
 const NOTED: Record<string, Noter> = {
   "read.stored": storedRead,
   "read.set-aside": count,
@@ -84,6 +110,13 @@ const NOTED: Record<string, Noter> = {
   },
   "composite.made": storedRead,
   "transfer.recorded": (logged, id, told) => void logged.told.transfers.set(id, told),
+  "drive.recorded": recorded,
+  "board.recorded": recorded,
+  "chip.recorded": recorded,
+  "drive.corrected": corrected,
+  "board.corrected": corrected,
+  "chip.corrected": corrected,
+  "chip.paired": paired,
   "user.created": (logged, id, told) => {
     const { user, role } = told.facts as { user: { name: string }; role: string };
     logged.users.set(id, { seq: told.seq, name: user.name, role, off: false });

@@ -3,7 +3,8 @@ import type { ChainProblem } from "@/lib/core/custody";
 type ImageProblem = "image-damaged" | "image-missing" | "image-record";
 type RecordProblem =
   | "read-differs-from-log" | "read-not-in-log" | "read-missing" | "approval-differs-from-log" | "approval-not-in-log" | "approval-missing"
-  | "transfer-differs-from-log" | "transfer-not-in-log" | "transfer-missing" | "account-differs-from-log" | "account-not-in-log" | "policy-differs-from-log";
+  | "transfer-differs-from-log" | "transfer-not-in-log" | "transfer-missing" | "account-differs-from-log" | "account-not-in-log" | "policy-differs-from-log"
+  | "thing-differs-from-log" | "thing-not-in-log" | "thing-missing";
 type SealProblem = "seal" | "seal-row" | "seal-missing" | "seal-not-in-log" | "seal-chain" | "seal-leaves" | "sealed-entry" | "sealed-entry-missing" | "witness";
 type OutsideProblem = "outside-file" | "outside-key" | "outside-seal" | "outside-seal-missing" | "outside-entry" | "outside-entry-missing" | "outside-image";
 

@@ -25,7 +25,7 @@ export interface Cell {
 const OWN_ACCOUNT = "The columns are not in the log: an e-mail address is never written there, a password has no digest there. The account's role and name are.";
 const ROW_ALONE = "The check compares what decides anything. This row is for the eye: the log keeps what was recorded, and the log page and the bundle's report show it from there.";
 const UNSEEN: Record<string, string> = {
-  "drive: another serial number": ROW_ALONE, "board: another revision": ROW_ALONE, "chip: another designator": ROW_ALONE, "chip: paired with another donor": ROW_ALONE, "case: another damage": ROW_ALONE,
+  "case: another damage": ROW_ALONE,
   "account: another e-mail address": OWN_ACCOUNT, "account: another password": OWN_ACCOUNT,
 };
 

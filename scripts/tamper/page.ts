@@ -70,6 +70,7 @@ function unseenList(results: readonly Result[]): string[] {
 
 export function matrixPage({ results, agreements, mutants, honest }: { results: readonly Result[]; agreements: readonly BundleAgreement[]; mutants: string; honest: string }): string {
   const times = results.flatMap(({ outcome }) => (outcome && outcome.ms > 0 ? [outcome.ms] : [])).sort((a, b) => a - b);
+  const made = agreements.filter((one) => one.page !== "not made");
   const unseen = results.filter((one) => layersOf(one).length === 0).length;
   return `# What tampering is noticed, and by what
 
@@ -85,7 +86,7 @@ ${countTable(results).join("\n")}
 
 ## The window
 
-Whoever is root of the database server can make an earlier state of it look sound: cut the log's tail and the seals with it, or put a dump back. Whoever has both signing keys can write any past anew. Against both only copies help that have left the house: mails with a seal, bundles, a witness file on another disk (\`WITNESS_FILE\`), all taken by \`npm run check:store -- --against FILE…\`. What is **younger than the newest such copy** can be taken away unseen. A seal is made each day, with each bundle and summary and when asked, so the window is at most a day, and as short as a lead or auditor makes it by asking for a seal. \`head\` moves and forged entries inside the window are still seen by chain and signature unless the attacker also has the keys.
+Whoever is root of the database server can make an earlier state of it look sound: cut the log's tail and the seals with it, or put a dump back. Whoever has both signing keys can write any past anew. Against both only copies help that have left the house: mails with a seal, bundles, a witness file on another disk (\`WITNESS_FILE\`), all taken by \`npm run check:store -- --against FILE…\`. What is **younger than the newest such copy** can be taken away unseen. A seal is made each day, with each bundle and summary and when asked, so the window is at most a day, and as short as a lead or auditor makes it by asking for a seal. Moved heads and forged entries inside the window are still seen by chain and signature unless the attacker also has the keys.
 
 ## Seen by nobody
 
@@ -93,7 +94,7 @@ ${unseenList(results).join("\n")}
 
 ## The bundle's checks agree
 
-On bundles that the app made after an attack, the page's check and check.sh came to the same verdict in **${agreements.filter((one) => one.page === one.script).length} of ${agreements.length}**. Asked of these attacks, because each alters what a bundle holds: changed rows of the log at first, middle and last place, forged appends, another key, cut tails, changed rows that the record is made from. Not asked of attacks on seals, accounts, heads and other drives: a bundle of this case is the same with and without them, byte for byte but for its seal.
+On bundles that the app made after an attack, the page's check and check.sh came to the same verdict in **${made.filter((one) => one.page === one.script).length} of ${made.length}**.${made.length < agreements.length ? ` After ${agreements.length - made.length} more the app could not append to the log any more, so there was no bundle: an entry that somebody puts behind the last one with the hash of an earlier one leaves no place for the next.` : ""} Asked of these attacks, because each alters what a bundle holds: changed rows of the log at first, middle and last place, forged appends, another key, cut tails, changed rows that the record is made from. Not asked of attacks on seals, accounts, heads and other drives: a bundle of this case is the same with and without them, byte for byte but for its seal.
 
 | attack | the page | check.sh | first fault that the page names |
 |---|---|---|---|
