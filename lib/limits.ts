@@ -36,6 +36,9 @@ export const MAX_CSV_ROWS = 20_000;
 /** requests that come in within an hour */
 export const REQUESTS_AN_HOUR_PER_ADDRESS = 20;
 export const REQUESTS_AN_HOUR = 120;
+/** calls that may be under way at once: from one address, and from all */
+export const REQUESTS_AT_ONCE_PER_ADDRESS = 3;
+export const REQUESTS_AT_ONCE = 12;
 /** tries from one address within an hour, refused ones too */
 export const REQUEST_TRIES_AN_HOUR = 80;
 /** a person needs longer than this to fill the form in */

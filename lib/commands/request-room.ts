@@ -1,7 +1,7 @@
 import { Op } from "sequelize";
 import { env } from "@/lib/env";
 import { AppError } from "@/lib/errors";
-import { REQUEST_TRIES_AN_HOUR, REQUESTS_AN_HOUR, REQUESTS_AN_HOUR_PER_ADDRESS } from "@/lib/limits";
+import { REQUEST_TRIES_AN_HOUR, REQUESTS_AN_HOUR, REQUESTS_AN_HOUR_PER_ADDRESS, REQUESTS_AT_ONCE_PER_ADDRESS } from "@/lib/limits";
 import { Request, type Transaction } from "@/models";
 
 const HOUR_MS = 3_600_000;
@@ -31,9 +31,27 @@ export function noteTry(address: Buffer, now = Date.now()): void {
   }
 }
 
+const underWay = new Map<string, number>();
+
+/** Runs while at most a few other calls from the same address are under way: nobody keeps the form busy alone. */
+export async function inAddressTurn<T>(address: Buffer, run: () => Promise<T>): Promise<T> {
+  const key = address.toString("hex");
+  const count = underWay.get(key) ?? 0;
+  if (count >= REQUESTS_AT_ONCE_PER_ADDRESS) throw new AppError("too-many", "Other requests from where you are are still on their way. Send again in a few seconds; nothing was stored.", { retryAfterSeconds: 5 });
+  underWay.set(key, count + 1);
+  try {
+    return await run();
+  } finally {
+    const left = underWay.get(key)! - 1;
+    if (left > 0) underWay.set(key, left);
+    else underWay.delete(key);
+  }
+}
+
 /** Whether one more request may come in from here, and at all. Inside a transaction that holds the case counter it is exact. */
 export async function requireRequestRoom(address: Buffer, tx?: Transaction, now = Date.now()): Promise<void> {
-  const since = { requestedAt: { [Op.gt]: new Date(now - HOUR_MS) } };
+  // what a clock that was wrong for a while has dated ahead counts for nothing
+  const since = { requestedAt: { [Op.gt]: new Date(now - HOUR_MS), [Op.lte]: new Date(now + 60_000) } };
   const limits = [
     { where: { ...since, addressDigest: address }, most: REQUESTS_AN_HOUR_PER_ADDRESS, why: "Many requests came from where you are within the last hour." },
     { where: since, most: REQUESTS_AN_HOUR, why: "Very many requests came in within the last hour." },

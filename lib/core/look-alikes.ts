@@ -11,7 +11,7 @@ export function lookAlikeHint(text: string): string | null {
 
 /** A likely address for one that isn't one, such as "edda@harrow,example "; null when nothing comes to mind. */
 export function likelyEmail(text: string): string | null {
-  const cleaned = text.normalize("NFKC").replace(/^mailto:/i, "").replace(/\s+/g, "").replace(/,/g, ".").replace(/;/g, "").replace(/\.{2,}/g, ".").replace(/^[<("'.]+|[>)"'.]+$/g, "").replace(/\.?\((at)\)\.?|\[at\]/i, "@");
+  const cleaned = text.normalize("NFKC").replace(/\s+/g, "").replace(/^mailto:/i, "").replace(/,/g, ".").replace(/;/g, "").replace(/\.{2,}/g, ".").replace(/^[<("'.]+|[>)"'.]+$/g, "").replace(/\.?\((at)\)\.?|\[at\]/i, "@");
   if (cleaned === text || !/^[\w.+-]+@[a-z0-9-]+(\.[a-z0-9-]+)+$/i.test(cleaned)) return null;
   return cleaned;
 }

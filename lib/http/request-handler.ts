@@ -1,6 +1,6 @@
 import { randomBytes } from "node:crypto";
 import { addressOf } from "@/lib/auth/address";
-import { noteTry, requireRequestRoom } from "@/lib/commands/request-room";
+import { inAddressTurn, noteTry, requireRequestRoom } from "@/lib/commands/request-room";
 import { addressDigest, checkStamp, keptKey, tokenFor } from "@/lib/commands/request-secrets";
 import { type MadeRequest, requestTransfer } from "@/lib/commands/request-transfer";
 import { NIL } from "@/lib/core/words";
@@ -28,7 +28,7 @@ export function requestHandler() {
       await requireRequestRoom(address);
       const key = request.headers.get("idempotency-key");
       if (key !== null && (key.length < 16 || key.length > 200)) throw new AppError("malformed", "An Idempotency-Key of a request has 16 to 200 characters that nobody can guess.");
-      return await takeUpload(request, async (upload) => {
+      return await inAddressTurn(address, () => takeUpload(request, async (upload) => {
         const { answers, stamp } = requestFieldsOf(upload);
         const hash = hashOf(upload);
         const token = key === null ? randomBytes(32).toString("base64url") : tokenFor(key, hash);
@@ -39,7 +39,7 @@ export function requestHandler() {
         });
         const { ref, refChecked } = body as MadeRequest;
         return Response.json({ ref, refChecked, link: `${env().publicUrl}/request/${token}` }, { status });
-      }, REQUEST_PHOTOS);
+      }, REQUEST_PHOTOS));
     } catch (error) {
       const response = answerTo(error);
       // closing on a sender who is still sending would lose the answer on its way

@@ -3,7 +3,7 @@ import type { Request as ExpressRequest, Response as ExpressResponse } from "exp
 import multer from "multer";
 import { AppError } from "@/lib/errors";
 import {
-  FREE_SPACE_FLOOR_BYTES, MAX_CALL_BYTES, MAX_FIELD_BYTES, MAX_FIELDS_A_CALL, MAX_FILES_A_CALL, MAX_IMAGE_BYTES, MAX_PHOTO_BYTES, MAX_PHOTOS_A_CALL, MAX_REQUEST_BYTES, MAX_REQUEST_PHOTOS, MIB, UPLOADS_IN_FLIGHT,
+  FREE_SPACE_FLOOR_BYTES, MAX_CALL_BYTES, MAX_FIELD_BYTES, MAX_FIELDS_A_CALL, MAX_FILES_A_CALL, MAX_IMAGE_BYTES, MAX_PHOTO_BYTES, MAX_PHOTOS_A_CALL, MAX_REQUEST_BYTES, MAX_REQUEST_PHOTOS, MIB, REQUESTS_AT_ONCE, UPLOADS_IN_FLIGHT,
 } from "@/lib/limits";
 import { type Arrived, discard, freeBytes, receive } from "@/storage";
 
@@ -34,7 +34,7 @@ export const PHOTOS: UploadLimits = {
   what: "photos", fileBytes: MAX_PHOTO_BYTES, tooLarge: PHOTO_TOO_LARGE, files: MAX_PHOTOS_A_CALL, callBytes: MAX_PHOTO_BYTES * MAX_PHOTOS_A_CALL, atOnce: 8,
 };
 /** By people without an account: never so many that the bench has to wait. */
-export const REQUEST_PHOTOS: UploadLimits = { what: "photos", fileBytes: MAX_PHOTO_BYTES, tooLarge: PHOTO_TOO_LARGE, files: MAX_REQUEST_PHOTOS, callBytes: MAX_REQUEST_BYTES, atOnce: 3 };
+export const REQUEST_PHOTOS: UploadLimits = { what: "photos", fileBytes: MAX_PHOTO_BYTES, tooLarge: PHOTO_TOO_LARGE, files: MAX_REQUEST_PHOTOS, callBytes: MAX_REQUEST_BYTES, atOnce: REQUESTS_AT_ONCE };
 
 const SLACK = 1024 * 1024;
 const refusals = ({ files, tooLarge }: UploadLimits): Record<string, [code: "too-large" | "malformed", detail: string]> => ({

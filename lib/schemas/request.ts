@@ -1,14 +1,17 @@
 import { z } from "zod";
 import { ENCLOSURES, IMPORTANCES, LOCKS } from "@/lib/core/request-words";
 import { DAMAGES } from "@/lib/core/words";
-import { day, email, line, maybe, prose } from "./text";
+import { day, email, line, prose } from "./text";
 
 /** Characters that turn the reading direction around or break a line unseen: they could make a field say something else. */
 const UNSEEN = /[\u0080-\u009f\u200e\u200f\u2028-\u202e\u2066-\u2069\ufeff]/;
 const unseen = "Some invisible characters are in here. Type it again instead of pasting it.";
 const typed = (max: number, what: string) => line(max, what).refine((s) => !UNSEEN.test(s), unseen);
-const told = (max: number, what: string) => prose(max, what).refine((s) => !UNSEEN.test(s), unseen);
-const other = (max: number, what: string) => maybe(typed(max, what)).optional();
+/** Forms send line breaks as CR LF; one character is kept. */
+const told = (max: number, what: string) => z.preprocess((value) => (typeof value === "string" ? value.replace(/\r\n?/g, "\n") : value), prose(max, what).refine((s) => !UNSEEN.test(s), unseen));
+/** A field of nothing but spaces is one that was left out. */
+const filled = <T extends z.ZodType>(schema: T) => z.preprocess((value) => (value === undefined || (typeof value === "string" && value.trim() === "") ? null : value), schema.nullable());
+const other = (max: number, what: string) => filled(typed(max, what)).optional();
 
 /** A box is ticked or not: forms send "yes", nothing, or an empty field. */
 const tick = (say: string) => z.preprocess((value) => (value === true || value === "yes" ? "yes" : undefined), z.literal("yes", say));
@@ -33,10 +36,10 @@ const shape = {
   enclosure: choice(ENCLOSURES, "Say whether the drive sat in an enclosure."),
   lock: choice(LOCKS, "Say whether a password or encryption is on the drive."),
   damage: choice(DAMAGES, "Say what happened. “I don’t know” is an answer, too."),
-  happened: maybe(told(2000, "what happened")).optional(),
-  tried: maybe(told(2000, "what was tried")).optional(),
+  happened: filled(told(2000, "what happened")).optional(),
+  tried: filled(told(2000, "what was tried")).optional(),
   importance: choice(IMPORTANCES, "Say how much hangs on it."),
-  neededBy: maybe(day).optional(),
+  neededBy: filled(day).optional(),
   consentOwner: tick("We can work only for the owner, or for whoever acts for the owner. Tick the line if that is you."),
   consentRead: tick("Without this leave we can’t read the chips. Tick the line, or ask us first."),
   consentWrite: tick("Without this leave there is nothing we could write the image to. Tick the line, or ask us first."),
@@ -69,5 +72,5 @@ export const requestInput = z.strictObject({ ...shape, ...guard }).refine(labell
 export type RequestInput = z.output<typeof requestInput>;
 
 export const requestToken = z.string().max(100);
-export const deletionInput = z.strictObject({ token: requestToken, message: maybe(told(2000, "a message")).optional() });
+export const deletionInput = z.strictObject({ token: requestToken, message: filled(told(2000, "a message")).optional() });
 export const withdrawalInput = z.strictObject({ token: requestToken });
