@@ -29,10 +29,12 @@ interface FormWords {
   children?: ReactNode;
 }
 
-/** The form by itself, for a dialog that goes from one form to the next. Ctrl and Enter submit from a text of several lines, too. */
+/** The form by itself, for a dialog that goes from one form to the next. Enter submits from every field, from a text of several lines with Ctrl. */
 export function FormBody({ onClose, action, variant = "lead", busy, refusal, reason, also, onSubmit, children }: FormWords) {
   function onKeyDown(event: KeyboardEvent<HTMLFormElement>) {
-    if (event.key !== "Enter" || !(event.ctrlKey || event.metaKey)) return;
+    // a closed list would only open by Enter: Space and the arrow keys do that, and Enter means the same in every field
+    const submits = event.target instanceof HTMLSelectElement || event.ctrlKey || event.metaKey;
+    if (event.key !== "Enter" || !submits) return;
     event.preventDefault();
     event.currentTarget.requestSubmit();
   }
