@@ -2,7 +2,9 @@
  * What leaves the house: plain, minimal objects for pages and API. Sizes in bytes, digests lower-case hex,
  * times RFC 3339 UTC text, ids UUIDs. Rows never leave; queries build these.
  */
+import type { ClosingFacts } from "./core/closing";
 import type { RequestState } from "./core/request-state";
+import type { StartUpFacts } from "./core/start-up";
 import type { RequestAnswers } from "./schemas/request";
 import type { DiagnosisView } from "./core/diagnosis";
 import type { DriveWarning } from "./core/drive-warnings";
@@ -10,7 +12,8 @@ import type { Sibling } from "./core/two-chips";
 import type { SealProof } from "./core/seal";
 import type { AskedDrive } from "./core/drive-from-request";
 import type {
-  AsSent, BoardRole, Bus, ChipStateCode, Encryption, Finding, Format, ItemType, KeyPurpose, Method, PhotoKind, PhotoSubject, Policy, Range, Role, SealCause, SizeSource, Stage, TransferKind,
+  AsSent, BoardRole, Bus, ChipStateCode, ClosedKind, Encryption, Finding, Format, ItemType, KeyPurpose, Method, PhotoKind, PhotoSubject, Policy,
+  Range, Role, SealCause, SizeSource, Stage, TransferKind, WaitingFor,
 } from "./core/words";
 
 export interface PersonView {
@@ -334,6 +337,29 @@ export interface ItemView {
   past: number;
 }
 
+/** `number` counts the notes of a case. */
+export interface NoteView {
+  id: string;
+  number: number;
+  text: string;
+  /** the drive's letter, where it is about one */
+  drive: string | null;
+  by: PersonView;
+  at: string;
+  happenedAt: string | null;
+  /** set when it was written long after what it tells of */
+  lateByHours: number | null;
+  corrects: number | null;
+  correctedBy: number | null;
+}
+
+/** Whom or what a case waits for, and since when. */
+export interface HoldView {
+  waitingFor: WaitingFor;
+  since: string;
+  reason: string;
+}
+
 export interface PlacedItem {
   driveId: string;
   item: string;
@@ -369,7 +395,9 @@ export interface CaseView {
   refChecked: string;
   state: CaseState;
   closedReason: string | null;
-  customer: { name: string; email: string; phone: string | null; contact: string | null };
+  customer: { name: string; email: string; phone: string | null; contact: string | null; company: string | null; returnAddress: string | null };
+  /** null when it is not on hold */
+  hold: HoldView | null;
   damage: string;
   note: string | null;
   dueOn: string | null;
@@ -421,6 +449,8 @@ export interface BenchRow {
   nextWhy: string | null;
   with: string;
   mine: boolean;
+  /** null when its case is not on hold */
+  hold: HoldView | null;
 }
 
 export interface ListView<T> {
@@ -541,12 +571,20 @@ export interface SummaryView {
       approvedAt: string | null;
       transferredAt: string | null;
       transferKind: TransferKind | null;
+      /** how the agreeing reads were taken, each once; empty where nobody said */
+      readBy: Method[];
+      /** the tool that wrote it, and the adapter, as recorded */
+      writtenWith: string | null;
       verifiedAt: string | null;
       cells: CellString | null;
     }[];
+    /** the latest start-up test since the transfer */
+    startUp: (StartUpFacts & { at: string }) | null;
     head: { seq: number; hash: string };
   }[];
   twoPersonRule: boolean;
+  /** what goes back, or went back where `at` is set */
+  comesBack: { items: string[]; at: string | null };
   /** the seal that was made when the link was sent; null for a link older than the first seal */
   seal: { number: number; sha256: string; keyId: string } | null;
 }

@@ -1,3 +1,4 @@
+import type { ReactNode } from "react";
 import { stateMark } from "@/components/chip/chip-words";
 import { compositeWords } from "@/components/composite/composite-words";
 import { originalOf } from "@/components/drive/drive-words";
@@ -27,10 +28,13 @@ function ChipStep({ chip, drive, lead, acts }: { chip: ChipSummary; drive: strin
   );
 }
 
-/** What is to be done on this case, the most urgent first; what can't be done yet says why. */
-export function NextSteps({ view, policy, user }: { view: CaseView; policy: Policy; user: SessionView["user"] }) {
+/**
+ * What is to be done on this case, the most urgent first; what can't be done yet says why. `tests` stand after the chips,
+ * `end` after the summary. A closed case has only what leaves the house.
+ */
+export function NextSteps({ view, policy, user, tests, end }: { view: CaseView; policy: Policy; user: SessionView["user"]; tests?: ReactNode; end?: ReactNode }) {
   const acts = may(user, "read.store");
-  const open = byUrgency(chipsToTransfer(view.drives)).filter((chip) => chip.state.state !== "verified");
+  const open = view.state === "closed" ? [] : byUrgency(chipsToTransfer(view.drives)).filter((chip) => chip.state.state !== "verified");
   const several = view.drives.length > 1;
   const letterOf = (chip: ChipSummary) => (several ? view.drives.find((drive) => originalOf(drive)?.chips.some((one) => one.id === chip.id))?.letter ?? null : null);
   const waits = waitsFor(view.drives);
@@ -38,11 +42,13 @@ export function NextSteps({ view, policy, user }: { view: CaseView; policy: Poli
   return (
     <ol className="next-steps">
       {open.map((chip, i) => <ChipStep key={chip.id} chip={chip} drive={letterOf(chip)} lead={i === 0 && acts} acts={acts} />)}
+      {tests}
       <li>
         <Mark kind={waits ? "wait" : "run"} />
         <span><b>Send the summary to the customer</b>{waits ? <span className="text-ink-2">; {waits}</span> : null}{sends ? null : <span className="text-ink-2">{waits ? ", and a lead sends it" : "; a lead sends it"}</span>}</span>
-        {sends && !waits ? <SendSummary view={view} policy={policy} lead={open.length === 0} /> : <Button disabled>Send summary…</Button>}
+        {sends && !waits ? <SendSummary view={view} policy={policy} lead={false} /> : <Button disabled>Send summary…</Button>}
       </li>
+      {end}
       {may(user, "bundle.make") ? (
         <li>
           <Mark kind="note" />

@@ -4,5 +4,5 @@ import { Button } from "@/components/ui/button";
 import { Icon } from "@/components/ui/icon";
 
 export function PrintButton() {
-  return <Button onClick={() => window.print()}><Icon name="print" />Print or save as PDF</Button>;
+  return <Button onClick={() => window.print()}><Icon name="print" />Print</Button>;
 }

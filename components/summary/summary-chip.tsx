@@ -5,7 +5,10 @@ import { Mark } from "@/components/ui/mark";
 import { DesignatorPlate } from "@/components/ui/plate";
 import { dayText } from "@/components/ui/times";
 import { countOf, sizeText } from "@/lib/core/quantity";
-import { compositeSentences, seatingsText, type SummaryChip as Chip } from "./summary-words";
+import { compositeSentences, readByText, seatingsText } from "@/lib/core/summary-words";
+import type { SummaryView } from "@/lib/views";
+
+type Chip = SummaryView["drives"][number]["chips"][number];
 
 function Fact({ term, children, whole, mono }: { term: string; children: ReactNode; whole?: boolean; mono?: boolean }) {
   return <div className={whole ? "whole" : ""}><dt>{term}</dt><dd className={mono ? "font-mono" : ""}>{children}</dd></div>;
@@ -14,6 +17,7 @@ function Fact({ term, children, whole, mono }: { term: string; children: ReactNo
 /** One chip: state, the drawn image, and every number somebody may want to compare, in full. */
 export function SummaryChip({ chip, timeZone, both }: { chip: Chip; timeZone: string; both: boolean }) {
   const moved = chip.transferKind === "chip-moved";
+  const read = readByText(chip);
   return (
     <section className="sheet-chip grid gap-[7px] border-t border-rule-2 pt-2">
       <div className="flex flex-wrap items-center gap-2.5">
@@ -36,7 +40,7 @@ export function SummaryChip({ chip, timeZone, both }: { chip: Chip; timeZone: st
       <dl className="sheet-facts">
         {chip.composite
           ? <Fact term="Put together from">{countOf(chip.composite.reads, "read")}, in {countOf(chip.composite.seatings, "seating")}</Fact>
-          : <Fact term="Reads that agree">{seatingsText(chip)}</Fact>}
+          : <Fact term="Reads that agree">{seatingsText(chip)}{read ? <span className="block font-normal">{read}</span> : null}</Fact>}
         <Fact term="Approved">{chip.approvedAt ? `${dayText(chip.approvedAt, timeZone)}${chip.approvedBy ? `, ${chip.approvedBy}` : ""}` : "not yet"}</Fact>
         <Fact term={moved ? "Chip moved" : "Written"}>{chip.transferredAt ? dayText(chip.transferredAt, timeZone) : "not yet"}</Fact>
         <Fact term="Equal read-backs">{chip.readBacks}</Fact>

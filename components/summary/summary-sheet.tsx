@@ -1,9 +1,8 @@
 import { Mark } from "@/components/ui/mark";
-import { dayYearText } from "@/components/ui/times";
-import { listText } from "@/lib/core/quantity";
+import { dayText, dayYearText } from "@/components/ui/times";
+import { chipsOf, comesBackSentence, leadSentence, notStarted, ownBoardSentence, promiseLimits, steps } from "@/lib/core/summary-words";
 import type { SummaryView } from "@/lib/views";
 import { SummaryChip } from "./summary-chip";
-import { chipsOf, leadSentence, steps } from "./summary-words";
 
 /** From three chips on each keeps one strip, so that the sheet stays one page. */
 const BOTH_STRIPS_TO = 2;
@@ -13,7 +12,8 @@ export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView
   const chips = chipsOf(summary);
   const verified = chips.length > 0 && chips.every((c) => c.verified);
   const made = chips.filter((c) => c.composite);
-  const done = steps(summary, timeZone);
+  const untested = notStarted(summary);
+  const done = steps(summary, (iso) => dayText(iso, timeZone));
   return (
     <main id="main" className="sheet">
       <header className="flex flex-wrap items-end justify-between gap-x-6 gap-y-2 border-b-[3px] border-double border-rule-2 pb-3">
@@ -27,7 +27,7 @@ export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView
       <p className="grid grid-cols-[24px_minmax(0,1fr)] gap-3 text-[1.0625rem] leading-6 font-semibold print:text-[0.9375rem] print:leading-5"><Mark kind={verified ? "ok" : "run"} size={24} /><span>{leadSentence(summary)}</span></p>
       {summary.drives.map((drive) => (
         <div key={drive.letter} className="grid gap-[11px]">
-          <p><b>{summary.drives.length > 1 ? `Drive ${drive.letter}` : "Your drive"}</b> <span className="font-mono">{drive.label}</span>. Its own board was only read, never written to.</p>
+          <p><b>{summary.drives.length > 1 ? `Drive ${drive.letter}` : "Your drive"}</b> <span className="font-mono">{drive.label}</span>. {ownBoardSentence(drive)}</p>
           {drive.chips.map((chip) => <SummaryChip key={chip.designator} chip={chip} timeZone={timeZone} both={chips.length <= BOTH_STRIPS_TO} />)}
         </div>
       ))}
@@ -35,16 +35,18 @@ export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView
         <section>
           <h2>What was done</h2>
           {done.length > 0 ? <ol>{done.map((step) => <li key={step.text} className="grid grid-cols-[76px_minmax(0,1fr)] py-0.5"><b className="font-semibold">{step.day}</b><span>{step.text}</span></li>)}</ol> : <p>Reading has begun; nothing is approved or written yet.</p>}
+          {untested ? <p className="pt-1">{untested}</p> : null}
           {summary.twoPersonRule ? null : <p className="pt-1">In this workshop one person may both read and approve: no second person checked the image.</p>}
         </section>
         <section>
           <h2>What this does not promise</h2>
           <ul className="sheet-dashes">
-            <li>That the drive will start or keep starting, or that your files can be read. The chips are one part of the drive.</li>
-            <li>That the content was sound before we read it. We show that it was moved unchanged, not that the fault left it unharmed.</li>
-            {made.length > 0 ? <li>That the composite of {listText(made.map((c) => c.designator))} holds what the chip held before the fault: it holds what most reads say.</li> : null}
-            <li>Anything about parts of the board other than {chips.length > 0 ? listText(chips.map((c) => c.designator)) : "the chips named here"}.</li>
+            {promiseLimits(summary).map((limit) => <li key={limit}>{limit}</li>)}
           </ul>
+        </section>
+        <section className="sheet-back">
+          <h2>What comes back to you</h2>
+          <p>{comesBackSentence(summary, (iso) => dayYearText(iso, timeZone))} Keep your original board.</p>
         </section>
       </div>
       <footer className="sheet-foot">

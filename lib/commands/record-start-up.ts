@@ -1,11 +1,10 @@
 import { randomUUID } from "node:crypto";
-import { deriveChipState } from "@/lib/core/chip-state";
-import { serialMatches, startUpRefusal } from "@/lib/core/start-up";
+import { serialMatches } from "@/lib/core/start-up";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
-import { stateFacts } from "@/lib/queries/chip-facts";
 import { chipRecords } from "@/lib/queries/chip-records";
 import { currentPolicy } from "@/lib/queries/policy";
+import { startUpRefusalOf } from "@/lib/queries/start-up";
 import type { StartUpInput } from "@/lib/schemas/start-up";
 import { Case, Drive, inTransaction, StartUpTest } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
@@ -24,9 +23,7 @@ export async function recordStartUp(actor: Actor, driveId: string, input: StartU
     requireOpen((await Case.findByPk(drive.caseId, { transaction: tx }))!);
     await requireCleanChain(driveId, tx);
     const [policy, { records }] = [await currentPolicy(tx), await chipRecords([driveId], tx)];
-    const refusal = startUpRefusal(records.filter((r) => r.chip.needsTransfer).map((record) => ({
-      designator: record.chip.designator, transferKind: record.transfers.at(-1)?.kind ?? null, ...deriveChipState(stateFacts(record, policy)),
-    })));
+    const refusal = startUpRefusalOf(records, policy);
     if (refusal) throw new AppError("rule-against", refusal);
     const reportedSerial = input.reportedSerial ?? null;
     const facts = { spins: input.spins, ready: input.ready, reportedSerial, serialMatches: serialMatches(drive.serial, reportedSerial), attempts: input.attempts, note: input.note ?? null };

@@ -11,6 +11,7 @@ import { shareHash } from "@/lib/queries/open-share";
 import { people } from "@/lib/queries/people";
 import { currentPolicy } from "@/lib/queries/policy";
 import { shareView } from "@/lib/queries/share-view";
+import { summaryFacts } from "@/lib/queries/summary";
 import type { ShareView } from "@/lib/views";
 import { Customer, Drive, inTransaction, Share } from "@/models";
 import { logKey } from "@/storage";
@@ -51,13 +52,14 @@ export async function sendSummary(actor: Actor, caseId: string): Promise<{ share
     }
     // over the very heads that the mail names
     const seal = await makeSeal(actor, "summary", tx);
+    const facts = await summaryFacts(caseId, drives, records, policy, tx);
     const text = (link: string) => summaryText({
       workshop: env().workshop, caseRef: found.ref, link, expiresAt: share.expiresAt, timeZone: env().timeZone,
-      twoPersonRule: policy.twoPersonRule && records.every((r) => r.approvals.every((a) => a.twoPersonRule)),
+      summary: facts,
       drives: drives.map((d) => ({ letter: driveLetter(d), label: driveLabel(d), head: heads.get(d.id)! })), logKeyId: logKey().keyId, seal,
     });
     const page = `${env().publicUrl}/summary/`;
-    await queueMail(tx, { to: customer.email, subject: summarySubject(found.ref), text: text(`${page}${token}`), maskedText: text(`${page}${MASK}`) });
+    await queueMail(tx, { kind: "summary", to: customer.email, subject: summarySubject(found.ref), text: text(`${page}${token}`), maskedText: text(`${page}${MASK}`) });
     return { share: shareView(share, await people(tx)) };
   });
 }

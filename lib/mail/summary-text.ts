@@ -1,3 +1,5 @@
+import { comesBackSentence, leadSentence, notStarted, ownBoardSentence, promiseLimits, steps, type Summary } from "@/lib/core/summary-words";
+
 export interface SummaryMailFacts {
   workshop: string;
   caseRef: string;
@@ -5,7 +7,7 @@ export interface SummaryMailFacts {
   expiresAt: Date;
   /** IANA name */
   timeZone: string;
-  twoPersonRule: boolean;
+  summary: Summary;
   drives: { letter: string; label: string; head: { seq: number; hash: string } }[];
   logKeyId: string;
   seal: { number: number; sha256: string; keyId: string };
@@ -17,17 +19,39 @@ export const summarySubject = (caseRef: string) => `Verification summary of case
 export function summaryText(f: SummaryMailFacts): string {
   const until = new Intl.DateTimeFormat("en-GB", { dateStyle: "long", timeZone: f.timeZone }).format(f.expiresAt);
   const drives = f.drives.map((d) => `Drive ${d.letter}${d.label ? `, ${d.label}` : ""}: entry ${d.head.seq}\n${d.head.hash}\n`).join("\n");
+  const format = new Intl.DateTimeFormat("en-GB", { day: "numeric", month: "short", year: "numeric", timeZone: f.timeZone });
+  const day = (iso: string) => format.format(new Date(iso));
+  const several = f.summary.drives.length > 1;
+  const untested = notStarted(f.summary);
+  const done = [
+    ...f.summary.drives.map((drive) => `${several ? `Drive ${drive.letter}: ` : ""}${ownBoardSentence(drive)}`),
+    ...steps(f.summary, day).map((step) => `${step.day}: ${step.text}`), ...(untested ? [untested] : []),
+  ];
   return `Hello,
 
-the chip transfer of your case ${f.caseRef} is done. Afterwards the chip on the donor
-board was read again, and what it holds equals the approved image in every byte.
-The summary shows it on one sheet that you can print:
+the chip transfer of your case ${f.caseRef} is done.
+
+${wrapped(leadSentence(f.summary))}
+
+The summary shows it on one sheet that you can print or download as a PDF:
 
 ${f.link}
 
 The link is private: whoever has it can open the summary. It works until
 ${until}.
-${f.twoPersonRule ? "" : "\nThe two-person rule was switched off: one person could read and approve.\n"}
+${f.summary.twoPersonRule ? "" : "\nThe two-person rule was switched off: one person could read and approve.\n"}
+What was done
+
+${list(done)}
+
+What comes back to you
+
+${wrapped(comesBackSentence(f.summary, day))}
+
+What this does not promise
+
+${list(promiseLimits(f.summary))}
+
 Keep this mail. Below is where the custody log of each drive stood when it was
 written. A log that was changed later no longer fits these numbers.
 
@@ -43,3 +67,18 @@ ${f.seal.keyId}
 ${f.workshop}
 `;
 }
+
+const WIDTH = 76;
+
+/** Lines of a readable length; a word longer than one stays whole. */
+function wrapped(text: string, indent = ""): string {
+  const lines: string[] = [];
+  for (const word of text.split(" ")) {
+    const last = lines.at(-1);
+    if (last !== undefined && last.length + 1 + word.length <= WIDTH - indent.length) lines[lines.length - 1] = `${last} ${word}`;
+    else lines.push(word);
+  }
+  return lines.join(`\n${indent}`);
+}
+
+const list = (items: readonly string[]) => items.map((item) => `- ${wrapped(item, "  ")}`).join("\n");

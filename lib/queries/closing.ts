@@ -4,56 +4,32 @@ import { boardName } from "@/lib/core/board-name";
 import { deriveChipState } from "@/lib/core/chip-state";
 import { type ClosingFacts, returnItems } from "@/lib/core/closing";
 import { driveLabel } from "@/lib/core/drive-label";
-import type { StartUpFacts } from "@/lib/core/start-up";
-import type { Actor, ClosedKind } from "@/lib/core/words";
-import type { PersonView } from "@/lib/views";
+import type { Actor } from "@/lib/core/words";
+import type { ClosingView } from "@/lib/views";
 import { Board, type Case, CaseReturn, Customer, Drive, Receipt, Request, type Transaction } from "@/models";
 import { stateFacts } from "./chip-facts";
 import { chipRecords, type ChipRecord } from "./chip-records";
 import { people } from "./people";
 import { currentPolicy } from "./policy";
 import { seenBy } from "./seen-by";
-import { latestStartUps, startUpFacts } from "./start-up";
+import { latestStartUps, sinceTransfer, startUpFacts, startUpRefusalOf } from "./start-up";
 
-export interface ReturnView {
-  items: string[];
-  toPerson: string;
-  carrier: string | null;
-  tracking: string | null;
-  sealNumber: string | null;
-  note: string | null;
-  by: PersonView;
-  at: string;
-}
-
-/** The end of a case: tests, what goes back, how it was closed. */
-export interface ClosingView {
-  facts: ClosingFacts;
-  drives: { id: string; letter: string; test: StartUpFacts | null }[];
-  /** what could go back */
-  items: string[];
-  customerName: string;
-  returned: ReturnView | null;
-  closed: { at: string; kind: ClosedKind | null; reason: string | null } | null;
-  /** calendar day of the workshop; set when the case is closed */
-  eraseOn: string | null;
-  /** how many days the customer was told that images are kept after the return */
-  keepDays: number;
-}
-
+/** The end of a case as its page shows it. */
 export async function closingView(actor: Actor, caseId: string): Promise<ClosingView> {
   allow(actor, "case.read");
   const found = await caseFor(actor, caseId);
   const drives = await Drive.findAll({ where: { caseId }, order: ["position"] });
-  const tests = await latestStartUps(drives.map((d) => d.id));
+  const ids = drives.map((d) => d.id);
+  const [tests, policy, { records }] = [await latestStartUps(ids), await currentPolicy(), await chipRecords(ids)];
   const who = await people();
   const row = await CaseReturn.findOne({ where: { caseId } });
   const customer = await Customer.findByPk(found.customerId);
   return seenBy(actor, {
     facts: await closingFacts(found),
     drives: drives.map((drive) => {
-      const test = tests.get(drive.id);
-      return { id: drive.id, letter: driveLetter(drive), test: test ? startUpFacts(test) : null };
+      const mine = records.filter((r) => r.drive.id === drive.id);
+      const test = sinceTransfer(tests.get(drive.id), mine);
+      return { id: drive.id, letter: driveLetter(drive), test: test ? startUpFacts(test) : null, refusal: startUpRefusalOf(mine, policy) };
     }),
     items: await expectedItems(caseId), customerName: customer?.name ?? "",
     returned: row ? { items: itemsOf(row), toPerson: row.toPerson, carrier: row.carrier ?? null, tracking: row.tracking ?? null, sealNumber: row.sealNumber ?? null, note: row.note ?? null, by: who(row.byUserId), at: row.at.toISOString() } : null,
@@ -90,12 +66,12 @@ export function itemsOf(row: CaseReturn): string[] {
 }
 
 /** What usually goes back, from what is on record. */
-export async function expectedItems(caseId: string): Promise<string[]> {
-  const drives = await Drive.findAll({ where: { caseId }, order: ["position"] });
+export async function expectedItems(caseId: string, tx?: Transaction): Promise<string[]> {
+  const drives = await Drive.findAll({ where: { caseId }, order: ["position"], transaction: tx });
   const ids = drives.map((d) => d.id);
-  const boards = await Board.findAll({ where: { driveId: ids, role: "original" }, order: ["createdAt"] });
-  const { records } = await chipRecords(ids);
-  const receipt = await Receipt.findOne({ where: { caseId } });
+  const boards = await Board.findAll({ where: { driveId: ids, role: "original" }, order: ["createdAt"], transaction: tx });
+  const { records } = await chipRecords(ids, tx);
+  const receipt = await Receipt.findOne({ where: { caseId }, transaction: tx });
   return returnItems({
     drives: drives.map((drive) => {
       const done = records.filter((r) => r.drive.id === drive.id && r.transfers.length > 0);

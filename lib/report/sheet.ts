@@ -24,6 +24,8 @@ export interface SheetHead {
   workshop: string;
   ref: string;
   madeAt: Date;
+  /** what the document is, as its title says it; "Report of the case bundle" when left out */
+  name?: string;
   /** short form of the logs' heads, on every page */
   foot: string;
 }
@@ -208,7 +210,7 @@ export class Sheet {
     this.y = 46;
     this.paragraph([strong(this.head.workshop, { size: 10.5, color: COPPER })], { gap: 1 });
     const title = this.element("H1");
-    const lines = this.type.lines([strong("Report of the case bundle", { size: 22 })], WIDTH);
+    const lines = this.type.lines([strong(this.head.name ?? "Report of the case bundle", { size: 22 })], WIDTH);
     this.tagged(title, "H1", () => this.put(lines, LEFT));
     title.end();
     this.y += 4;
@@ -226,7 +228,7 @@ export class Sheet {
     for (let i = start; i < start + count; i += 1) {
       this.doc.switchToPage(i);
       this.doc.markContent("Artifact", { type: "Pagination" });
-      if (i > start) this.side(34, [strong(this.head.workshop, { size: 8, color: COPPER })], [quiet("Case ", { size: 8 }), code(this.head.ref, { size: 8 }), quiet(", report of the case bundle", { size: 8 })], 50);
+      if (i > start) this.side(34, [strong(this.head.workshop, { size: 8, color: COPPER })], [quiet("Case ", { size: 8 }), code(this.head.ref, { size: 8 }), quiet(`, ${(this.head.name ?? "Report of the case bundle").replace(/^./, (first) => first.toLowerCase())}`, { size: 8 })], 50);
       this.side(800, [plain(this.head.foot, { face: "mono", size: 7.5, color: INK_3 })], [plain(`Page ${i - start + 1} of ${count}`, { size: 8, color: INK })], 796);
       this.doc.endMarkedContent();
       await this.breathe();

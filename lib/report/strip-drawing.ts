@@ -55,11 +55,11 @@ function ruler(sheet: Sheet, sizeBytes: number): void {
   sheet.y = top + RULER;
 }
 
-function strip(sheet: Sheet, cells: string | undefined, y: number): void {
+function strip(sheet: Sheet, cells: string | undefined, y: number, height = STRIP): void {
   const { doc } = sheet;
-  doc.moveTo(X, y + STRIP).lineTo(RIGHT, y + STRIP).lineWidth(0.5).stroke(RULE);
+  doc.moveTo(X, y + height).lineTo(RIGHT, y + height).lineWidth(0.5).stroke(RULE);
   doc.save().translate(X, y);
-  for (const path of stripPaths(cells ?? "n".repeat(CELLS), { width: CELL_WIDTH, height: STRIP })) doc.path(path.d).fill(CELL[path.cls]);
+  for (const path of stripPaths(cells ?? "n".repeat(CELLS), { width: CELL_WIDTH, height })) doc.path(path.d).fill(CELL[path.cls]);
   doc.restore();
 }
 
@@ -107,6 +107,31 @@ export async function drawStack(sheet: Sheet, { title, rows }: Stack, chipBytes:
   }
   figure.end();
   sheet.space(10);
+}
+
+const LOW = 15;
+
+/** One image as a low strip, and below it the same again where it was read back equal; without a ruler. */
+export function drawEqual(sheet: Sheet, cells: string, above: string, below: string | null): void {
+  const { doc } = sheet;
+  sheet.ensure(below ? 2 * LOW + LANE + 8 : LOW + 6);
+  const figure = sheet.element("Figure", undefined, { alt: below ? `Two image strips of 256 cells: ${above}; ${below}. They are equal all over.` : `Image strip of 256 cells: ${above}.` });
+  sheet.tagged(figure, "Figure", () => {
+    const named = (text: string, y: number) => sheet.type.draw(sheet.type.lines([plain(text, { size: 8 })], MARGIN - 4)[0], LEFT, y + 2);
+    const top = sheet.y + 1;
+    named(above, top);
+    strip(sheet, cells, top, LOW);
+    sheet.y = top + LOW + 4;
+    if (!below) return;
+    lane(sheet, { words: "equal", cells: null }, top + LOW + 1);
+    const [words] = sheet.type.lines([plain("equal", { size: 7.5, color: GREEN })], MARGIN);
+    sheet.type.draw(words, LEFT, top + LOW + 1);
+    doc.fillColor(INK_2);
+    named(below, top + LOW + LANE + 2);
+    strip(sheet, cells, top + LOW + LANE + 2, LOW);
+    sheet.y = top + 2 * LOW + LANE + 6;
+  });
+  figure.end();
 }
 
 const LEGEND = [["d", "dense, packed"], ["o", "ordinary data"], ["t", "text-like"], ["z", "zeros (00)"], ["b", "blank (FF)"], ["n", "not read"]] as const;

@@ -162,7 +162,7 @@ describe("a closed case", () => {
     ["a start-up test", ({ technician, chip }) => recordStartUp(technician, chip.driveId, TEST)],
     ["a return", ({ technician, chip }) => returnCase(technician, chip.caseId, GOES_BACK)],
     ["a board", ({ technician, chip }) => recordBoard(technician, chip.driveId, { role: "donor", boardNumber: "BX 40-3179", revision: "rev C" })],
-    ["a correction", ({ technician, chip }) => correctDrive(technician, chip.driveId, { interface: "SATA", reason: "Tried on a closed case." })],
+    ["a correction", ({ technician, chip }) => correctDrive(technician, chip.driveId, { changes: { interface: "SATA" }, reason: "Tried on a closed case." })],
   ];
   it.each(tries)("refuses %s", async (_, run) => {
     const before = (await logged(bench.chip.driveId, "read.stored")).length;
@@ -179,6 +179,12 @@ describe("a closed case", () => {
     await handOutImage(bench.lead, (await readNamed(bench, "before", 1)).id, { reason: "The insurer asked for it." });
     await startBundle(bench.lead, bench.chip.caseId);
     await sendSummary(bench.lead, bench.chip.caseId);
+    const mail = (await Mail.findOne({ where: { subject: `Verification summary of case ${bench.chip.ref}` } }))!;
+    expect(mail.kind).toBe("summary");
+    expect(mail.textMasked).toMatch(/We wrote the image of U12 to the donor board/);
+    expect(mail.textMasked).toContain("We have not started the drive with the donor board.");
+    expect(mail.textMasked).toMatch(/What comes back to you\n\nSent or handed over on .*: Drive A; Original board\./);
+    expect(mail.textMasked).toContain("What this does not promise\n\n- That the drive will start or keep starting");
   });
 
   it("is opened again by a lead with a reason, and then takes changes", async () => {

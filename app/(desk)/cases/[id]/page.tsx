@@ -4,7 +4,10 @@ import { NextSteps } from "@/components/case/next-steps";
 import { ShareList } from "@/components/case/share-list";
 import { Ticket } from "@/components/case/ticket";
 import { LatestEntries } from "@/components/custody/latest-entries";
+import { ClosingSection } from "@/components/closing/closing-section";
+import { ReturnSteps, StartUpSteps } from "@/components/closing/closing-steps";
 import { AddDrive } from "@/components/drive/add-drive";
+import { NotesSection } from "@/components/note/notes-section";
 import { CasePhotos } from "@/components/photo/case-photos";
 import { ParcelSection } from "@/components/receive/parcel-section";
 import { RequestSection } from "@/components/request/request-section";
@@ -16,9 +19,11 @@ import { signedIn } from "@/lib/auth/page";
 import { may } from "@/lib/core/policy";
 import { orNotFound } from "@/lib/http/page-errors";
 import { caseView } from "@/lib/queries/cases";
+import { closingView } from "@/lib/queries/closing";
 import { custodyOfDrive } from "@/lib/queries/custody";
 import { addsPhotos, photoCounts, photosOf } from "@/lib/queries/photos";
 import { driveToRecord } from "@/lib/queries/drives";
+import { notesOf } from "@/lib/queries/notes";
 import { policyView } from "@/lib/queries/policy";
 import { receiptView } from "@/lib/queries/receipts";
 import { requestSection } from "@/lib/queries/requests";
@@ -35,8 +40,10 @@ export default async function CasePage({ params, searchParams }: { params: Promi
   const [photos, counts, addsPhoto] = await Promise.all([photosOf(actor, "case", id), photoCounts(actor, id), addsPhotos(actor, "case", id)]);
   const { user, timeZone } = session;
   const now = new Date();
+  const closing = await closingView(actor, id);
   const receipt = await receiptView(actor, id);
   const request = await requestSection(actor, id);
+  const { items: notes } = await notesOf(actor, id);
   const parcel = <ParcelSection caseId={id} state={view.state} receipt={receipt} receives={may(actor, "parcel.receive")} timeZone={timeZone} />;
   const adds = may(actor, "drive.record") && view.state === "open";
   const drive = { caseId: id, userId: user.id, isLead: may(actor, "board.allow-other-number"), ...(await driveToRecord(actor, view, await searchParams)) };
@@ -48,8 +55,10 @@ export default async function CasePage({ params, searchParams }: { params: Promi
         {view.drives.map((drive) => <DriveBlock key={drive.id} drive={drive} policy={policy} user={user} open={view.state === "open"} />)}
         {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive {...drive} lead /> : null}>Type what its label says. An external drive may show only a part number on the enclosure: that is enough.</Empty></div> : null}
         {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive {...drive} /></div> : null}
-        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} /></Section>
+        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} tests={<StartUpSteps closing={closing} user={user} />} end={<ReturnSteps view={view} closing={closing} user={user} />} /></Section>
+        <ClosingSection caseId={id} caseRef={view.ref} closing={closing} releases={may(actor, "case.release")} timeZone={timeZone} />
         {view.state === "requested" ? null : parcel}
+        <NotesSection view={view} notes={notes} user={user} timeZone={timeZone} />
         {request ? <RequestSection view={request} timeZone={timeZone} answers={may(actor, "request.answer")} /> : null}
         <Section id="photos" title="Photos" note="Of the parcel, its papers and what came along. Kept as they came; copies are shown.">
           <CasePhotos caseId={id} caseRef={view.ref} photos={photos} adds={addsPhoto} timeZone={timeZone}

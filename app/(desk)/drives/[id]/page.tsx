@@ -2,6 +2,7 @@ import type { Metadata } from "next";
 import { DriveBlock } from "@/components/case/drive-block";
 import { LatestEntries } from "@/components/custody/latest-entries";
 import { BoardTable } from "@/components/drive/board-table";
+import { StartUpSection } from "@/components/closing/start-up-section";
 import { originalOf } from "@/components/drive/drive-words";
 import { PhotoGroups } from "@/components/photo/photos";
 import { PrintMenu } from "@/components/print/print-menu";
@@ -19,6 +20,7 @@ import { driveView } from "@/lib/queries/drives";
 import { itemsOfDrive, receivers } from "@/lib/queries/items";
 import { addsPhotos, photosOfDrive } from "@/lib/queries/photos";
 import { policyView } from "@/lib/queries/policy";
+import { startUpsOfDrive } from "@/lib/queries/start-up";
 
 export const metadata: Metadata = { title: "Drive" };
 
@@ -28,6 +30,7 @@ export default async function DrivePage({ params }: { params: Promise<{ id: stri
   const drive = await orNotFound(() => driveView(actor, id));
   const [policy, { entries }, { items }, others] = await Promise.all([policyView(actor), custodyOfDrive(actor, id), itemsOfDrive(actor, id), receivers()]);
   const [photos, addsPhoto] = await Promise.all([photosOfDrive(actor, id), addsPhotos(actor, "drive", id)]);
+  const startUps = await startUpsOfDrive(actor, id);
   return (
     <DeskShell session={session} current="cases">
       <PageMain>
@@ -43,6 +46,7 @@ export default async function DrivePage({ params }: { params: Promise<{ id: stri
         <Section id="photos" title="Photos" note="Kept as they came, with their digests. What is shown here are copies, upright and without the place where they were taken.">
           <PhotoGroups groups={photos} adds={addsPhoto} timeZone={session.timeZone} />
         </Section>
+        <StartUpSection startUps={startUps} acts={may(actor, "start-up.record")} timeZone={session.timeZone} />
         <Section id="items" title="Where things are" note="By the last hand-over that both sides confirmed.">
           <ItemsTable driveId={id} items={items} user={session.user} receivers={others} acts={may(actor, "item.hand-over")} timeZone={session.timeZone} />
         </Section>

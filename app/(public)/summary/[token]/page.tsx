@@ -4,6 +4,7 @@ import { PublicShell } from "@/components/shell/public-shell";
 import { PrintButton } from "@/components/summary/print-button";
 import { SayOpened } from "@/components/summary/say-opened";
 import { SummarySheet } from "@/components/summary/summary-sheet";
+import { buttonClass } from "@/components/ui/button";
 import { dayYearText } from "@/components/ui/times";
 import { env } from "@/lib/env";
 import { summaryByToken } from "@/lib/queries/summary";
@@ -19,8 +20,8 @@ export default async function SummaryPage({ params }: { params: Promise<{ token:
   return (
     <PublicShell workshop={summary.workshop} demo={demo} line={`Shown to anyone who holds this link, until ${dayYearText(summary.expiresAt, timeZone)}`}>
       <div role="region" aria-label="Printing" className="no-print mx-auto flex w-[794px] max-w-full items-center justify-between gap-4 py-3.5 text-ink-2 phone:px-4">
-        <p>Made to be printed.</p>
-        <PrintButton />
+        <p>Made to be printed or kept.</p>
+        <span className="flex flex-wrap items-center gap-3"><a className={buttonClass({})} href={`/summary/${token}/pdf`} download>Download as PDF</a><PrintButton /></span>
       </div>
       <SummarySheet summary={summary} link={`${publicUrl}/summary/${token}`} timeZone={timeZone} />
       <SayOpened token={token} />
