@@ -58,7 +58,7 @@ export function BenchScreen({ rows: given, toReceive: due, waiting, session, min
             </Note>
           </div>
         ) : null}
-        {rows.length + toReceive.length > 0 ? <BenchTable groups={groups} toReceive={toReceive} acts={acts} signs={may(session.user, "approval.give")} now={now} /> : (
+        {rows.length + toReceive.length > 0 ? <BenchTable groups={groups} toReceive={toReceive} acts={acts} signs={may(session.user, "approval.give")} now={now} timeZone={session.timeZone} /> : (
           <div className="py-8">
             {all.length > 0
               ? <Empty title="Nothing is with you." action={<ButtonLink href="/bench">Show everyone’s work</ButtonLink>}>The chips in the shop are with others now.</Empty>

@@ -6,7 +6,7 @@ import { ReceiveRows } from "./receive-rows";
 const HEADS = ["Due", "Case", "Customer, part number", "Chip", "Do this next", "With", "Image"];
 
 /** One table with row groups, in the order of the route. */
-export function BenchTable({ groups, toReceive, acts, signs, now }: { groups: readonly BenchGroup[]; toReceive: readonly ToReceiveRow[]; acts: boolean; signs: boolean; now: string }) {
+export function BenchTable({ groups, toReceive, acts, signs, now, timeZone }: { groups: readonly BenchGroup[]; toReceive: readonly ToReceiveRow[]; acts: boolean; signs: boolean; now: string; timeZone: string }) {
   return (
     <table className="queue">
       <caption className="sr-only">Work on the bench, by what has to be done next</caption>
@@ -28,7 +28,7 @@ export function BenchTable({ groups, toReceive, acts, signs, now }: { groups: re
                   <span className="mt-0.5 text-t2 text-ink-2">{group.note}</span>
                 </th>
               ) : null}
-              <BenchLine row={row} acts={acts} signs={signs} />
+              <BenchLine row={row} acts={acts} signs={signs} timeZone={timeZone} />
             </tr>
           ))}
         </tbody>

@@ -6,6 +6,7 @@ import type { BenchRow, StateView } from "@/lib/views";
 import { Case, Drive, User } from "@/models";
 import { donorContentSaved } from "./chip-facts";
 import { type ChipRecord, chipRecords } from "./chip-records";
+import { holdOf } from "./cases";
 import { chipState } from "./chip-state";
 import { originalSummary } from "./chip-summary";
 import { people } from "./people";
@@ -33,7 +34,7 @@ export async function benchRows(actor: Actor): Promise<BenchRow[]> {
       chip: await originalSummary(record, state), caseId: record.case.id, caseRef: record.case.ref, customerName: record.customer.name,
       partNumber: record.drive.partNumber ?? record.drive.model ?? record.drive.serial ?? "", dueOn: due,
       late: due === null ? null : lateDays > 0 ? "late" : lateDays === 0 ? "today" : null, lateDays: Math.max(0, lateDays),
-      ...nextStep(record, state), with: hand.length > 0 ? who(hand[0]).name : "anyone",
+      ...nextStep(record, state), with: hand.length > 0 ? who(hand[0]).name : "anyone", hold: holdOf(record.case),
       mine: hand.includes(actor.id) || (hand.length === 0 && may(actor, "read.store")),
     };
   }));

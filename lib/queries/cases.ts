@@ -4,7 +4,7 @@ import { caseFor } from "@/lib/commands/place";
 import { readCaseRef, withCheck } from "@/lib/core/case-number";
 import type { Actor } from "@/lib/core/words";
 import type { CaseListInput } from "@/lib/schemas/case";
-import type { CaseRow, CaseState, CaseView, ListView } from "@/lib/views";
+import type { CaseRow, CaseState, CaseView, HoldView, ListView } from "@/lib/views";
 import { Case, CustodyHead, Customer, Drive, Share } from "@/models";
 import { boardViews } from "./boards";
 import { driveFactsView, warningsOf } from "./drives";
@@ -52,6 +52,11 @@ function caseState(row: Case): CaseState {
   return row.receivedAt ? "open" : "requested";
 }
 
+/** Whom a case waits for; the bench says it too. */
+export function holdOf({ waitingFor, waitingSince, holdReason }: Case): HoldView | null {
+  return waitingFor && waitingSince ? { waitingFor, since: waitingSince.toISOString(), reason: holdReason ?? "" } : null;
+}
+
 export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
   const customers = new Map((await Customer.findAll({ where: { id: rows.map((r) => r.customerId) } })).map((c) => [c.id, c]));
   const drives = await Drive.findAll({ where: { caseId: rows.map((r) => r.id) }, order: ["position"] });
@@ -78,7 +83,8 @@ export async function caseView(actor: Actor, id: string): Promise<CaseView> {
   const shares = await Share.findAll({ where: { caseId: id }, order: [["createdAt", "DESC"]] });
   return seenBy(actor, {
     id, ref: found.ref, refChecked: withCheck(found.ref), state: caseState(found), closedReason: found.closedReason ?? null,
-    customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
+    customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null, company: customer.company ?? null, returnAddress: customer.returnAddress ?? null },
+    hold: holdOf(found),
     damage: found.damage, note: found.note ?? null, dueOn: found.dueOn ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, requestedAt: found.requestedAt?.toISOString() ?? null, createdBy: found.createdBy ? who(found.createdBy) : null,
     drives: await Promise.all(drives.map(async (d) => ({
       ...driveFactsView(d), warnings: await warningsOf(actor, d), boards: boards.get(d.id) ?? [], custodyEntries: heads.get(d.id) ?? 0,

@@ -13,7 +13,7 @@ function chip(id: string, state: ChipStateCode, more: Partial<ChipSummary> = {})
 }
 const board = (role: "original" | "donor", chips: ChipSummary[]): BoardView => ({ id: role, role, boardNumber: "BX 40-3179", revision: null, controllerMarking: null, motorDriverMarking: null, condition: null, dataInController: false, fit: null, chips });
 const drive = (...boards: BoardView[]): DriveView => ({ id: "d", caseId: "c", letter: "A", partNumber: "PN 1", model: null, serial: null, interface: null, capacity: null, made: null, firmware: null, encryption: null, warnings: [], boards, custodyEntries: 0 });
-const row = (state: ChipStateCode, more: Partial<BenchRow> = {}): BenchRow => ({ chip: chip("u3", state), caseId: "c", caseRef: "26-0183", customerName: "", partNumber: "", dueOn: null, late: null, lateDays: 0, next: "", nextWhy: null, with: "", mine: false, ...more });
+const row = (state: ChipStateCode, more: Partial<BenchRow> = {}): BenchRow => ({ chip: chip("u3", state), caseId: "c", caseRef: "26-0183", customerName: "", partNumber: "", dueOn: null, late: null, lateDays: 0, next: "", nextWhy: null, with: "", mine: false, hold: null, ...more });
 
 describe("the bench", () => {
   it("keeps empty groups on the route and counts the late ones in theirs", () => {

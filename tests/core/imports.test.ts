@@ -13,7 +13,7 @@ const ROOMS: Record<string, RegExp> = {
   "app": /^(components|lib)\//,
   "components": new RegExp(`^${PARTS}`),
   // a page about something larger is put together from the parts of what lies in it, never the other way round
-  ...Object.fromEntries(["case", "bench", "decision", "compare", "find", "audit"].map((noun) => [`components/${noun}`, new RegExp(`^components/(drive|custody|chip|composite|photo)/|^${PARTS}`)])),
+  ...Object.fromEntries(["case", "bench", "decision", "compare", "find", "audit"].map((noun) => [`components/${noun}`, new RegExp(`^components/(drive|custody|chip|composite|photo|note)/|^${PARTS}`)])),
   "components/drive": new RegExp(`^components/(custody|chip|photo)/|^${PARTS}`),
   // a composite lies in a chip: its page shows the votes and makes one
   "components/chip": new RegExp(`^components/(composite|photo)/|^${PARTS}`),
