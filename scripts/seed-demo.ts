@@ -7,6 +7,7 @@ import { connection } from "@/models";
 import { makeFinished } from "./demo/finished";
 import { makeOpen } from "./demo/open";
 import { makeStaff } from "./demo/people";
+import { makeShelf } from "./demo/shelf";
 
 // Fills an empty database with the demo workshop, through the commands that the pages use. `npm start` runs it once.
 try {
@@ -14,6 +15,7 @@ try {
   const { staff, lines } = await makeStaff();
   const { summaryFor } = await makeFinished(staff);
   await makeOpen(staff);
+  await makeShelf(staff);
   await sendSummary(staff.ines, summaryFor);
   writeFileSync(path.join(env().dataDir, "first-sign-in.txt"), `${lines.join("\n")}\n`, { mode: 0o600 });
 } finally {

@@ -5,7 +5,7 @@ import { may } from "@/lib/core/policy";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { BoardInput } from "@/lib/schemas/board";
-import { Board, inTransaction } from "@/models";
+import { Board, inTransaction, type Transaction } from "@/models";
 import { appendEntry, lockChain } from "./append-entry";
 import { driveFor, placeOfDrive } from "./place";
 import { allow } from "./refuse";
@@ -15,32 +15,35 @@ import { requireOpen } from "./require-open";
 export async function recordBoard(actor: Actor, driveId: string, input: BoardInput): Promise<{ id: string; fit: DonorFit | null }> {
   allow(actor, "board.record");
   await driveFor(actor, driveId);
-  return inTransaction(async (tx) => {
-    await lockChain(tx, driveId);
-    requireOpen((await placeOfDrive(driveId, tx)).case);
-    const originals = await Board.findAll({ where: { driveId, role: "original" }, transaction: tx });
-    if (input.role === "original" && originals.length > 0) {
-      throw new AppError("rule-against", "This drive has its original board already. Correct that one, or record this board as a donor.");
-    }
-    if (input.role === "donor" && originals.length === 0) {
-      throw new AppError("rule-against", "Record the original board first; the donor is compared with it.");
-    }
-    if (input.role === "donor" && originals[0].dataInController) throw new AppError("rule-against", NO_DONOR_REFUSAL);
-    if (input.role === "donor" && input.dataInController) throw onlyOnOriginal();
-    const facts = {
-      boardNumber: input.boardNumber, revision: input.revision ?? null, controllerMarking: input.controllerMarking ?? null,
-      motorDriverMarking: input.motorDriverMarking ?? null, condition: input.condition ?? null, dataInController: input.dataInController ?? false,
-    };
-    const fit = input.role === "donor" ? donorFit(originals[0], facts) : null;
-    if (fit?.verdict === "other-number") checkOtherNumber(actor, input.reason ?? null);
-    const board = await Board.create({
-      id: randomUUID(), driveId, role: input.role, ...facts, fitReason: input.reason ?? null, createdAt: new Date(),
-    }, { transaction: tx });
-    await appendEntry(tx, driveId, actor, "board.recorded", { type: "board", id: board.id }, {
-      role: input.role, ...facts, fit: fit && { verdict: fit.verdict, differences: fit.differences, reason: input.reason ?? null },
-    });
-    return { id: board.id, fit };
+  return inTransaction((tx) => writeBoard(tx, actor, driveId, input));
+}
+
+/** The same within a change that does more, such as taking a board from the shelf. */
+export async function writeBoard(tx: Transaction, actor: Actor, driveId: string, input: BoardInput): Promise<{ id: string; fit: DonorFit | null }> {
+  await lockChain(tx, driveId);
+  requireOpen((await placeOfDrive(driveId, tx)).case);
+  const originals = await Board.findAll({ where: { driveId, role: "original" }, transaction: tx });
+  if (input.role === "original" && originals.length > 0) {
+    throw new AppError("rule-against", "This drive has its original board already. Correct that one, or record this board as a donor.");
+  }
+  if (input.role === "donor" && originals.length === 0) {
+    throw new AppError("rule-against", "Record the original board first; the donor is compared with it.");
+  }
+  if (input.role === "donor" && originals[0].dataInController) throw new AppError("rule-against", NO_DONOR_REFUSAL);
+  if (input.role === "donor" && input.dataInController) throw onlyOnOriginal();
+  const facts = {
+    boardNumber: input.boardNumber, revision: input.revision ?? null, controllerMarking: input.controllerMarking ?? null,
+    motorDriverMarking: input.motorDriverMarking ?? null, condition: input.condition ?? null, dataInController: input.dataInController ?? false,
+  };
+  const fit = input.role === "donor" ? donorFit(originals[0], facts) : null;
+  if (fit?.verdict === "other-number") checkOtherNumber(actor, input.reason ?? null);
+  const board = await Board.create({
+    id: randomUUID(), driveId, role: input.role, ...facts, fitReason: input.reason ?? null, createdAt: new Date(),
+  }, { transaction: tx });
+  await appendEntry(tx, driveId, actor, "board.recorded", { type: "board", id: board.id }, {
+    role: input.role, ...facts, fit: fit && { verdict: fit.verdict, differences: fit.differences, reason: input.reason ?? null },
   });
+  return { id: board.id, fit };
 }
 
 export function onlyOnOriginal(): AppError {

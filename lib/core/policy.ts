@@ -61,7 +61,7 @@ export type Verb = keyof typeof RULES;
 export const VERBS = Object.keys(RULES) as Verb[];
 
 /** What belongs to the workshop as a whole: for an auditor whose account carries a case list it isn't there at all. */
-const WORKSHOP_WIDE: ReadonlySet<Verb> = new Set<Verb>(["workshop-log.read", "user.manage", "outbox.read", "seal.make", "key.change"]);
+const WORKSHOP_WIDE: ReadonlySet<Verb> = new Set<Verb>(["workshop-log.read", "user.manage", "outbox.read", "seal.make", "key.change", "shelf.read", "shelf.change"]);
 
 type Asker = Pick<Actor, "id" | "role" | "cases">;
 

@@ -99,6 +99,13 @@ export const API: ApiRow[] = [
   look("/api/chips/[id]/photos", (t) => `/api/chips/${t.chipId}/photos`),
   look("/api/shelf-boards/[id]/photos", onUnknown("/api/shelf-boards/[id]/photos"), everyRole(404)),
   ...["cases", "drives", "boards", "chips", "shelf-boards"].map((things): ApiRow => ({ ...change("POST", `/api/${things}/[id]/photos`, BENCH), multipart: true })),
+  // the shelf belongs to the workshop as a whole
+  { method: "GET", route: "/api/shelf-boards", cells: roles(200, 200, 200, 200, 404) },
+  { method: "POST", route: "/api/shelf-boards", body: () => ({ boardNumber: "BX 1" }), cells: roles(201, 201, 403, 403, 404) },
+  { method: "POST", route: "/api/shelf-boards/import", multipart: true, cells: roles(422, 422, 403, 403, 404) },
+  look("/api/shelf-boards/[id]", onUnknown("/api/shelf-boards/[id]"), everyRole(404)),
+  change("PATCH", "/api/shelf-boards/[id]", roles(404, 404, 403, 403, 404), () => ({ changes: { place: "Drawer 1" } })),
+  change("POST", "/api/shelf-boards/[id]/taking", roles(404, 404, 403, 403, 404), (t) => ({ driveId: t.driveId })),
   look("/api/photos/[id]", onUnknown("/api/photos/[id]"), everyRole(404)),
 
   look("/api/chips/[id]", (t) => `/api/chips/${t.chipId}`),
@@ -195,5 +202,8 @@ export const PAGES: PageRow[] = [
   { route: "/outbox", cells: pages(404, 404, 404, 200) },
   { route: "/photos/[id]", at: (t) => `/photos/${t.unknown}`, cells: pages(404, 404, 404, 404) },
   { route: "/policy", cells: everyDesk },
+  { route: "/shelf", cells: pages(200, 200, 200, 200, 404) },
+  { route: "/shelf/[id]", at: (t) => `/shelf/${t.unknown}`, cells: pages(404, 404, 404, 404) },
+  { route: "/shelf/import", cells: pages(200, 200, 404, 404) },
   { route: "/users", cells: pages(404, 404, 404, 200) },
 ];

@@ -17,10 +17,12 @@ const NEVER = "0badc0de-0000-4000-8000-00000badc0de";
 async function partsOf(ready: Ready, approvalId: string): Promise<CaseParts> {
   const token = await tokenOf("ines");
   const { ref } = await done<{ ref: string }>("GET", `/api/cases/${ready.caseId}`, { token });
+  const shelf = await done<{ id: string }>("POST", "/api/shelf-boards", { token: await tokenOf("mira"), json: { boardNumber: "BX 40-3179", reservedFor: ref } });
   const ids = {
     cases: ready.caseId, drives: ready.driveId, boards: ready.boardId, chips: ready.chipId, reads: ready.reads[0].id, approvals: approvalId, checks: ready.driveId,
     // a link needs a verified case, a hand-over two people: what isn't there is asked for, which an auditor may not either way
     shares: NEVER, "hand-overs": NEVER,
+    "shelf-boards": shelf.id,
   };
   return {
     ids, ref, sha256: ready.sha256, image: ready.image, caseId: ready.caseId, driveId: ready.driveId, chipId: ready.chipId, readId: ready.reads[0].id, unknown: NEVER,

@@ -7,6 +7,7 @@ import { originalOf } from "@/components/drive/drive-words";
 import { PhotoGroups } from "@/components/photo/photos";
 import { PrintMenu } from "@/components/print/print-menu";
 import { drivePrints } from "@/components/print/print-words";
+import { FittingBoards } from "@/components/shelf/fitting-boards";
 import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
 import { ItemsTable } from "@/components/item/items-table";
@@ -20,6 +21,7 @@ import { driveView } from "@/lib/queries/drives";
 import { itemsOfDrive, receivers } from "@/lib/queries/items";
 import { addsPhotos, photosOfDrive } from "@/lib/queries/photos";
 import { policyView } from "@/lib/queries/policy";
+import { boardsThatFit } from "@/lib/queries/shelf";
 import { startUpsOfDrive } from "@/lib/queries/start-up";
 
 export const metadata: Metadata = { title: "Drive" };
@@ -31,6 +33,8 @@ export default async function DrivePage({ params }: { params: Promise<{ id: stri
   const [policy, { entries }, { items }, others] = await Promise.all([policyView(actor), custodyOfDrive(actor, id), itemsOfDrive(actor, id), receivers()]);
   const [photos, addsPhoto] = await Promise.all([photosOfDrive(actor, id), addsPhotos(actor, "drive", id)]);
   const startUps = await startUpsOfDrive(actor, id);
+  // nothing comes from the shelf where there is no chip to move
+  const fitting = may(actor, "shelf.read") && !originalOf(drive)?.dataInController ? await boardsThatFit(actor, id) : null;
   return (
     <DeskShell session={session} current="cases">
       <PageMain>
@@ -43,6 +47,7 @@ export default async function DrivePage({ params }: { params: Promise<{ id: stri
             <BoardTable boards={drive.boards} original={originalOf(drive)} corrects={drive.case.open && may(actor, "fact.correct")} isLead={may(actor, "board.allow-other-number")} />
           </Section>
         ) : null}
+        {fitting ? <Section id="shelf" title="Boards that fit this drive" note="From the donor shelf: the same board number. What differs is said; another revision is a caution."><FittingBoards view={fitting} driveId={id} takes={drive.case.open && may(actor, "shelf.change")} isLead={may(actor, "board.allow-other-number")} /></Section> : null}
         <Section id="photos" title="Photos" note="Kept as they came, with their digests. What is shown here are copies, upright and without the place where they were taken.">
           <PhotoGroups groups={photos} adds={addsPhoto} timeZone={session.timeZone} />
         </Section>
