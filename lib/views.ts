@@ -523,6 +523,10 @@ export interface MailView {
   subject: string;
   /** secret links masked */
   text: string;
+  /** the same as mail programs show it */
+  html: string;
+  /** it may have arrived twice: a server stopped between the receiver's yes and our note of it */
+  possibleDuplicate: boolean;
   state: "queued" | "sending" | "sent" | "dead";
   attempts: number;
   queuedAt: string;
@@ -770,6 +774,10 @@ export interface WriteTicketView {
   statement: string;
   twoPersonRule: boolean;
   composite: boolean;
+  /** the other chips that are moved with this one and how far they are; null for a chip that stands alone */
+  together: string | null;
+  /** the drive is, or may be, encrypted: keep its small board with it */
+  encrypted: boolean;
   revoked: { by: string; at: string; cause: string; reason: string } | null;
 }
 

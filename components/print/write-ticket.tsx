@@ -48,10 +48,11 @@ export function WriteTicket({ ticket, size, workshop, timeZone }: { ticket: Writ
           <Fact name="Approved by" wide="w6">{shorten(ticket.approvedBy, 60).text}{ticket.twoPersonRule ? "" : " (two-person rule switched off)"}</Fact>
           <Fact name="On" wide="w6">{exactText(ticket.approvedAt, timeZone)}</Fact>
           <Fact name="Statement" wide="w12">{shorten(ticket.statement, STATEMENT[size]).text}{ticket.composite ? " The image is a composite: put together from several reads." : ""}</Fact>
+          {ticket.together ? <Fact name="Moved together" wide="w12">{shorten(ticket.together, STATEMENT[size]).text}</Fact> : null}
           <Fact name="Programmer" wide="w6">{ticket.programmer ? shorten(ticket.programmer, 40).text : null}</Fact>
           <Fact name="Written by, day and time" wide="w6" />
         </dl>
-        <p className="foot">Look whether the approval still stands before you write: this paper does not change when it is revoked.</p>
+        <p className="foot">{ticket.encrypted ? "Encrypted drive: keep the enclosure’s small board and the drive together; this image may hold key material. " : ""}Look whether the approval still stands before you write: this paper does not change when it is revoked.</p>
       </div>
     </Sheet>
   );

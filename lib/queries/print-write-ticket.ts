@@ -3,7 +3,9 @@ import { chipFor, driveLetter } from "@/lib/commands/place";
 import { withCheck } from "@/lib/core/case-number";
 import { crc32Hex } from "@/lib/core/digest";
 import { handOutName } from "@/lib/core/hand-out-name";
+import { encryptionCaution } from "@/lib/core/encryption";
 import { FORMAT_ENDING } from "@/lib/core/text-format";
+import { siblingWords } from "@/lib/core/two-chips";
 import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { uuid } from "@/lib/schemas/text";
@@ -12,12 +14,14 @@ import { type Approval, Board, Chip } from "@/models";
 import { type ChipRecord, chipRecords } from "./chip-records";
 import { compositeBehind } from "./composite-behind";
 import { people } from "./people";
+import { currentPolicy } from "./policy";
 import { seenBy } from "./seen-by";
+import { siblingsOfRecord } from "./siblings";
 
 const NONE = "No image of this chip is approved, so there is nothing to take to the programmer. A lead approves one on the chip's decision sheet; then the ticket can be printed.";
 
 /** The chip of this case whose ticket was asked for, with its approval: the one that stands, else the last one. */
-async function approved(actor: Actor, caseId: string, chipId: string): Promise<{ record: ChipRecord; approval: Approval } | null> {
+async function approved(actor: Actor, caseId: string, chipId: string): Promise<{ record: ChipRecord; records: ChipRecord[]; approval: Approval } | null> {
   allow(actor, "case.read");
   if (!uuid.safeParse(chipId).success) throw notFound("chip");
   const place = await chipFor(actor, chipId);
@@ -25,7 +29,7 @@ async function approved(actor: Actor, caseId: string, chipId: string): Promise<{
   const { records } = await chipRecords([place.drive.id]);
   const record = records.find((one) => one.chip.id === chipId || one.donor?.chip.id === chipId);
   const approval = record?.standing ?? record?.approvals.at(-1);
-  return record && approval ? { record, approval } : null;
+  return record && approval ? { record, records, approval } : null;
 }
 
 /** Why there is no ticket; null when there is one. */
@@ -38,7 +42,8 @@ export async function ticketRefusal(actor: Actor, caseId: string, chipId?: strin
 export async function printWriteTicket(actor: Actor, caseId: string, chipId: string): Promise<WriteTicketView> {
   const found = await approved(actor, caseId, chipId);
   if (!found) throw new AppError("rule-against", NONE);
-  const { record, approval } = found;
+  const { record, records, approval } = found;
+  const siblings = await siblingsOfRecord(records, record, await currentPolicy());
   const [donorChip, who] = [(await Chip.findByPk(approval.donorChipId))!, await people()];
   const donorBoard = (await Board.findByPk(donorChip.boardId))!;
   const sha256 = approval.sha256.toString("hex");
@@ -51,7 +56,7 @@ export async function printWriteTicket(actor: Actor, caseId: string, chipId: str
     sha256, crc32: crc32Hex(image.crc32), sizeBytes: image.sizeBytes, supplyMillivolts: donorChip.supplyMillivolts ?? null,
     programmer: record.transfers.at(-1)?.programmer ?? image.reader,
     approvedBy: who(approval.approvedBy).name, approvedAt: approval.givenAt.toISOString(), statement: approval.statement, twoPersonRule: approval.twoPersonRule,
-    composite: compositeBehind(record, sha256) !== null,
+    composite: compositeBehind(record, sha256) !== null, together: siblingWords(record.chip.designator, siblings), encrypted: encryptionCaution(record.drive.encryption ?? null) !== null,
     revoked: approval.revokedAt ? { by: who(approval.revokedBy ?? null).name, at: approval.revokedAt.toISOString(), cause: approval.revokedCause ?? "", reason: approval.revokedReason ?? "" } : null,
   });
 }
