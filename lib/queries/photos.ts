@@ -78,12 +78,12 @@ export async function photoPage(actor: Actor, id: string): Promise<PhotoPageView
     ...(found ? [{ label: `Case ${found.ref}`, href: `/cases/${found.id}` }] : []),
     ...(driveId ? [{ label: type === "drive" ? place.name : "Drive", href: `/drives/${driveId}` }] : []),
     ...(type === "chip" ? [{ label: place.name, href: `/chips/${place.id}` }] : []),
-    ...(type === "shelf-board" ? [{ label: "Donor shelf", href: "/shelf" }] : []),
+    ...(type === "shelf-board" ? [{ label: "Donor shelf", href: "/shelf" }, { label: "The board", href: `/shelf/${place.id}` }] : []),
   ];
   const last = pages[pages.length - 1];
   return seenBy(actor, {
     photo: first, place: found && type !== "case" ? `${capital(place.name)}, case ${found.ref}` : capital(place.name), crumbs: pages,
-    back: { href: `${last.href}${type === "shelf-board" ? "" : "#photos"}`, label: type === "case" ? `case ${found!.ref}` : type === "board" ? "the drive" : type === "shelf-board" ? "the donor shelf" : place.name },
+    back: { href: `${last.href}#photos`, label: type === "case" ? `case ${found!.ref}` : type === "board" ? "the drive" : type === "shelf-board" ? "the board on the shelf" : place.name },
     prev: list[at - 1]?.id ?? null, next: list[at + 1]?.id ?? null, number: at + 1, of: list.length,
   });
 }
