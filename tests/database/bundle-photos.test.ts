@@ -12,7 +12,8 @@ import { makeBundle } from "@/lib/commands/make-bundle";
 import type { Actor, PhotoSubject } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import { freshImage, makeChip, makeReady, makeUser } from "../support/factory";
-import { arrivedPhoto, pdf, picture } from "../support/photos";
+import { arrivedPhoto } from "../support/photos";
+import { pdf, picture } from "../support/pictures";
 import { damageImage } from "../support/tamper";
 import { runCheckScript, verifyZip } from "../support/verify-bag";
 

@@ -20,7 +20,8 @@ import { Case, Image, inTransaction, Photo, Read, ShelfBoard } from "@/models";
 import { filesArriving } from "@/storage";
 import { logOf, type MadeChip, makeChip, makeUser, refusalOf, store } from "../support/factory";
 import { makeLimited } from "../support/limited";
-import { arrivedPhoto, ftyp, pdf, picture, polyglot } from "../support/photos";
+import { arrivedPhoto } from "../support/photos";
+import { ftyp, pdf, picture, polyglot } from "../support/pictures";
 import { asAdmin, imageFile } from "../support/tamper";
 
 vi.setConfig({ testTimeout: 60_000 });
