@@ -10,6 +10,7 @@ import { useSay } from "@/components/ui/toast";
 import { useChange } from "@/components/ui/use-change";
 import { send } from "@/lib/http/send";
 import type { MailView } from "@/lib/views";
+import { MailPreview } from "./mail-preview";
 
 const STATE: Record<MailView["state"], { mark: MarkKind; word: string }> = {
   queued: { mark: "wait", word: "Waiting to be sent" }, sending: { mark: "run", word: "Being sent" }, sent: { mark: "done", word: "Sent" }, dead: { mark: "block", word: "Given up" },
@@ -38,7 +39,7 @@ export function MailLine({ mail, timeZone }: { mail: MailView; timeZone: string 
         <div className="grid gap-2 pt-2.5">
           {mail.lastError ? <Note kind={mail.state === "dead" ? "block" : "caution"} title="What the mail server said last:">{mail.lastError}</Note> : null}
           <p className="text-t2 text-ink-2">Written {momentText(mail.queuedAt, timeZone)}{mail.sentAt ? `, sent ${momentText(mail.sentAt, timeZone)}` : ""}. Secret links are masked here.</p>
-          <pre className="max-w-[92ch] bg-sheet px-4 py-3 font-mono text-t2 whitespace-pre-wrap [overflow-wrap:anywhere]">{mail.text}</pre>
+          <MailPreview subject={mail.subject} text={mail.text} html={mail.html} />
         </div>
       </details>
       {refusal ? <Note kind="block" role="alert" title="It was not put back." className="mt-2">{refusal}</Note> : null}

@@ -1,6 +1,6 @@
 import { QueryTypes } from "sequelize";
 import { openText } from "@/lib/mail/sealed-text";
-import { refusedForGood, type SendMail, sendMail, WHOLE_MS } from "@/lib/mail/transport";
+import { maybeTaken, refusedForGood, type SendMail, sendMail, WHOLE_MS } from "@/lib/mail/transport";
 import { connection, inTransaction, Mail } from "@/models";
 
 export const MAX_TRIES = 8;
@@ -68,9 +68,9 @@ async function deliver({ mail, attempt }: Claimed, send: SendMail): Promise<keyo
     await send({ id: mail.id, to: mail.recipient, subject: mail.subject, text });
   } catch (error) {
     const last = attempt >= MAX_TRIES || refusedForGood(error);
-    return give(mail, attempt, last ? "dead" : "again", sayWhy(error));
+    return give(mail, attempt, last ? "dead" : "again", sayWhy(error), maybeTaken(error));
   }
-  return give(mail, attempt, "sent", mail.possibleDuplicate ? "The server stopped during an earlier try: this mail may have arrived twice." : null);
+  return give(mail, attempt, "sent", mail.possibleDuplicate ? "An earlier try broke off before its end was known: this mail may have arrived twice." : null);
 }
 
 /** Doubles from half a minute to an hour, give or take a quarter, so that many mails don't come back at once. */
@@ -79,13 +79,13 @@ export function waitSeconds(attempt: number, chance: number): number {
   return Math.round(base * (0.75 + chance / 2));
 }
 
-async function give(mail: Mail, attempt: number, result: keyof Delivered, why: string | null): Promise<keyof Delivered> {
+async function give(mail: Mail, attempt: number, result: keyof Delivered, why: string | null, doubtful = false): Promise<keyof Delivered> {
   const state = { sent: "sent", again: "queued", dead: "dead" }[result];
   const sent = result === "sent" ? ", sealed = NULL, sent_at = UTC_TIMESTAMP(6)" : "";
   await connection().query(
-    `UPDATE mails SET state = ?, last_error = ?, leased_until = NULL, next_attempt_at = UTC_TIMESTAMP(6) + INTERVAL ? SECOND${sent}
+    `UPDATE mails SET possible_duplicate = possible_duplicate OR ?, state = ?, last_error = ?, leased_until = NULL, next_attempt_at = UTC_TIMESTAMP(6) + INTERVAL ? SECOND${sent}
      WHERE id = ? AND state = 'sending' AND attempts = ?`,
-    { replacements: [state, why, result === "again" ? waitSeconds(attempt, Math.random()) : 0, mail.id, attempt] },
+    { replacements: [doubtful, state, why, result === "again" ? waitSeconds(attempt, Math.random()) : 0, mail.id, attempt] },
   );
   return result;
 }

@@ -183,7 +183,7 @@ describe("the mail server's side", () => {
     port = (server.server.address() as { port: number }).port;
   });
   afterAll(() => new Promise<void>((done) => server.close(done)));
-  const sender = () => mailSender({ host: "127.0.0.1", port, secure: false, user: null, password: null, from: "desk@bench.example", fake: true }, "https://bench.example");
+  const sender = () => mailSender({ host: "127.0.0.1", port, secure: false, user: null, password: null, from: "desk@bench.example", fake: true }, "https://bench.example", "Größer Bench");
 
   it("gets the whole link, the outbox's id as Message-ID and no extra header", async () => {
     await sender()({ id: "42", to: "a@customer.example", subject: "Größe\r\nBcc: b@customer.example", text: `Link\n${SECRET}\n` });

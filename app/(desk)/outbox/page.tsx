@@ -1,15 +1,16 @@
 import type { Metadata } from "next";
 import { MailLine } from "@/components/outbox/mail-line";
+import { TemplateList } from "@/components/outbox/template-list";
 import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
 import { Button } from "@/components/ui/button";
 import { Empty } from "@/components/ui/empty";
 import { Input } from "@/components/ui/input";
 import { Pages } from "@/components/ui/pages";
-import { PageTitle } from "@/components/ui/section";
+import { PageTitle, Section } from "@/components/ui/section";
 import { signedIn } from "@/lib/auth/page";
 import { orNotFound } from "@/lib/http/page-errors";
-import { mailList } from "@/lib/queries/mails";
+import { mailList, templateList } from "@/lib/queries/mails";
 import { listInput } from "@/lib/schemas/case";
 
 export const metadata: Metadata = { title: "Outbox" };
@@ -28,12 +29,13 @@ export default async function OutboxPage({ searchParams }: { searchParams: Promi
           <Input key={input.q} className="flex-1" label="Address or subject" name="q" defaultValue={input.q} maxLength={200} autoComplete="off" />
           <Button type="submit">Look</Button>
         </form>
-        {list.items.length === 0 ? <Empty title={input.q ? `No mail matches “${input.q}”.` : "No mail yet."}>A mail is written when a lead sends a summary to a customer.</Empty> : (
+        {list.items.length === 0 ? <Empty title={input.q ? `No mail matches “${input.q}”.` : "No mail yet."}>What is written when is listed below.</Empty> : (
           <>
             <ul className="border-t border-rule-2">{list.items.map((mail) => <MailLine key={mail.id} mail={mail} timeZone={session.timeZone} />)}</ul>
             <Pages total={list.total} page={list.page} pageSize={list.pageSize} href={(page) => `/outbox?${new URLSearchParams({ q: input.q, page: String(page) })}`} />
           </>
         )}
+        <div className="pt-8"><Section title="What is written when" note="Each kind of mail, with invented facts."><TemplateList templates={templateList(actor)} /></Section></div>
       </PageMain>
     </DeskShell>
   );
