@@ -15,10 +15,10 @@ export class MailSink {
   private constructor(private readonly server: Server, readonly port: number) {}
 
   static async open(): Promise<MailSink> {
-    let sink: MailSink | undefined;
-    const server = createServer((socket) => sink?.serve(socket));
+    const server = createServer();
     await new Promise<void>((done) => server.listen(0, "127.0.0.1", done));
-    sink = new MailSink(server, (server.address() as { port: number }).port);
+    const sink = new MailSink(server, (server.address() as { port: number }).port);
+    server.on("connection", (socket) => sink.serve(socket));
     return sink;
   }
 
