@@ -27,7 +27,7 @@ function DriveRows({ drive }: { drive: DriveView }) {
           <td className="mono font-bold">{chip.designator}</td>
           <td>{board.role}</td>
           <td className="mono">{boardName(board)}</td>
-          <td>{sizeText(chip.sizeBytes)}, {chip.supplyMillivolts === null ? "supply unknown" : `${chip.supplyMillivolts / 1000} V`}{chip.needsTransfer ? "" : ", kept for reference"}</td>
+          <td>{sizeText(chip.sizeBytes)}, {chip.supplyMillivolts === null ? "supply unknown" : `${chip.supplyMillivolts / 1000} V`}{chip.needsTransfer || board.role === "donor" ? "" : ", kept for reference"}</td>
         </tr>
       ))}
     </>
@@ -46,7 +46,7 @@ export function JobTicket({ view }: { view: PrintCaseView }) {
   ];
   return (
     <Sheet paper="a5" flows label="Job ticket">
-      <div className="stack">
+      <div className="sheet-rows">
         <PrintHead workshop={view.workshop} title="Job ticket" refChecked={job.refChecked} />
         <dl className="print-facts">
           <Fact name="Customer">{job.customer.name}{view.company ? `\n${view.company}` : ""}{job.customer.contact ? `\n${job.customer.contact}` : ""}</Fact>

@@ -32,13 +32,13 @@ export function LabelPlate({ kind, title }: { kind: Kind; title: string }) {
 }
 
 /** The chip seen from above: notch at the top, pin 1 at the upper left with its dot; filled for the customer's, outlined for the donor's. */
-export function PinOne({ pins, board, height }: { pins: number; board: "original" | "donor"; height: string }) {
+export function PinOne({ pins, board, width, height }: { pins: number; board: "original" | "donor"; width: string; height: string }) {
   const side = pins / 2;
   const [step, top] = [14, 12];
   const body = side * step + 8;
   const filled = board === "original";
   return (
-    <svg viewBox={`0 0 84 ${body + 24}`} style={{ height, width: "auto" }} className="block" role="img" aria-label={`The chip seen from above, ${pins} pins, pin 1 at the upper left`}>
+    <svg viewBox={`0 0 84 ${body + 24}`} style={{ width, height }} className="block" role="img" aria-label={`The chip seen from above, ${pins} pins, pin 1 at the upper left`}>
       {Array.from({ length: side }, (_, i) => top + 8 + i * step).map((y, i) => (
         <g key={y}>
           <rect x="14" y={y - 3.5} width="12" height="7" fill={i === 0 ? "var(--ink)" : "none"} stroke="var(--ink)" strokeWidth="1.6" />

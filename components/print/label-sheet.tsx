@@ -33,7 +33,7 @@ export function LabelSheet({ label, size }: { label: LabelView; size: LabelSize 
   const { height } = insideOf(size);
   return (
     <Sheet paper={size} label={`Label: ${label.title}`}>
-      <div className="label" style={{ "--code": `${CODE[size]}mm` } as CSSProperties}>
+      <div className="sticker" style={{ "--code": `${CODE[size]}mm` } as CSSProperties}>
         <div className="code">
           <Qr text={label.refChecked} size={`${CODE[size]}mm`} />
           <b>{label.refChecked}</b>
@@ -44,7 +44,7 @@ export function LabelSheet({ label, size }: { label: LabelView; size: LabelSize 
             <Lines label={label} size={size} />
             {label.chip ? (
               <div className="grid content-between justify-items-center" style={{ width: `${DRAWING}mm` }}>
-                <PinOne pins={Math.min(label.chip.pins, 16)} board={label.chip.board} height={`${height - PLATE - GAP - 4}mm`} />
+                <PinOne pins={Math.min(label.chip.pins, 16)} board={label.chip.board} width={`${DRAWING}mm`} height={`${height - PLATE - GAP - 4}mm`} />
                 <span className="label-supply">{volts(label.chip.supplyMillivolts)}</span>
               </div>
             ) : null}

@@ -10,7 +10,7 @@ import { Fact, PrintHead, Sheet } from "./sheet";
 type Row = ReadSheetView["stages"][number]["reads"][number];
 
 /** Lines on the sheet: all of one stage, or what two stages share. At least `ROOM` of them are free for a hand. */
-const LINES: Record<Stage, number> = { before: 14, donor: 7, after: 6 };
+const LINES: Record<Stage, number> = { before: 18, donor: 8, after: 8 };
 const ROOM = 4;
 const TITLE: Record<Stage, string> = { before: "Reads of the original", donor: "The donor’s own content, before anything is written", after: "Read-backs, after the write" };
 const WORD: Record<Stage, string> = { before: "Read", donor: "Own", after: "Back" };
@@ -40,7 +40,7 @@ function Lines({ stage, reads, timeZone }: { stage: Stage; reads: Row[]; timeZon
     <section>
       <h2>{TITLE[stage]}</h2>
       <table className="print-table read-lines">
-        <colgroup>{[7, 21, 12, 25, 12, 28, 58].map((width, i) => <col key={i} style={{ width: `${width}mm` }} />)}<col /></colgroup>
+        <colgroup>{[9, 24, 12, 22, 10, 28, 57].map((width, i) => <col key={i} style={{ width: `${width}mm` }} />)}<col /></colgroup>
         <thead><tr><th scope="col">{WORD[stage]}</th><th scope="col">Day, time</th><th scope="col">Seating</th><th scope="col">Tool, adapter</th><th scope="col">Volt</th><th scope="col">CRC-32</th><th scope="col">SHA-256, first 8 and last 8</th><th scope="col">By</th></tr></thead>
         <tbody>
           {left > 0 ? <tr><td colSpan={8}>{countOf(left, "earlier read")} stand on the chip’s page.</td></tr> : null}
@@ -57,7 +57,7 @@ export function ReadSheet({ sheet, workshop, policy, timeZone }: { sheet: ReadSh
   const original = sheet.board === "original";
   return (
     <Sheet paper="a4" label={`Read sheet of ${sheet.designator}`}>
-      <div className="stack">
+      <div className="sheet-rows">
         <PrintHead workshop={workshop} title={`Read sheet, ${sheet.designator} of the ${sheet.board}`} refChecked={sheet.refChecked} note={`Drive ${sheet.driveLetter}, ${boardName(sheet)}`} />
         <dl className="print-facts">
           <Fact name="Size of the image" wide="w3">{sizeText(sheet.sizeBytes)}, {countOf(sheet.sizeBytes, "byte")}</Fact>

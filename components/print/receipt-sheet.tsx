@@ -11,7 +11,7 @@ export function ReceiptSheet({ view }: { view: PrintCaseView }) {
   const drives = job.drives.map((drive) => `Drive ${drive.letter}, ${driveLabel(drive)}`).join("\n");
   return (
     <Sheet paper="a5" flows label="Receipt">
-      <div className="stack">
+      <div className="sheet-rows">
         <PrintHead workshop={view.workshop} title="Receipt" refChecked={job.refChecked} note={view.workshopAddress.join(", ")} />
         <p>We have received what is listed here. Keep this paper: its number fetches the job back.</p>
         <dl className="print-facts">

@@ -20,7 +20,7 @@ export function ReturnSlip({ view }: { view: PrintCaseView }) {
   const items = returned ? returned.items : expected(view);
   return (
     <Sheet paper="a4" flows label="Return slip">
-      <div className="stack">
+      <div className="sheet-rows">
         <PrintHead workshop={view.workshop} title="Return slip" refChecked={job.refChecked} note={view.workshopAddress.join(", ")} />
         <dl className="print-facts">
           <Fact name="To" wide="w6">{returned?.toPerson ?? job.customer.name}{view.company ? `\n${view.company}` : ""}{view.returnAddress ? `\n${view.returnAddress}` : ""}</Fact>

@@ -15,7 +15,7 @@ export function PaperRule({ paper, flows }: { paper: PaperName; flows?: boolean 
 export function Sheet({ paper, flows, label, children }: { paper: PaperName; flows?: boolean; label: string; children: ReactNode }) {
   const { width, height } = PAPERS[paper];
   return (
-    <section aria-label={label} data-paper={paper} className={`printed ${flows ? "" : "fixed"}`} style={{ "--w": `${width}mm`, "--h": `${height}mm`, "--m": `${MARGIN[paper]}mm` } as CSSProperties}>
+    <section aria-label={label} data-paper={paper} className={`printed ${flows ? "" : "exact"}`} style={{ "--w": `${width}mm`, "--h": `${height}mm`, "--m": `${MARGIN[paper]}mm` } as CSSProperties}>
       {children}
     </section>
   );

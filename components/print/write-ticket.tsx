@@ -5,7 +5,7 @@ import { countOf, sizeText } from "@/lib/core/quantity";
 import type { WriteTicketView } from "@/lib/views";
 import { Fact, insideOf, PrintHead, Sheet } from "./sheet";
 
-const STATEMENT: Record<WriteTicketSize, number> = { a6: 110, a5: 420 };
+const STATEMENT: Record<WriteTicketSize, number> = { a6: 80, a5: 420 };
 
 function Void({ ticket, timeZone }: { ticket: WriteTicketView; timeZone: string }) {
   if (!ticket.revoked) return null;
@@ -28,10 +28,10 @@ export function WriteTicket({ ticket, size, workshop, timeZone }: { ticket: Writ
   const board = fitText(`${boardName(donor)}, ${donor.designator}`, { width: width - 4, height: 10, largest: 12, smallest: 6 });
   return (
     <Sheet paper={size} label={`Write ticket of ${ticket.designator}`}>
-      <div className={`stack ${size === "a6" ? "!gap-[1.6mm]" : ""}`}>
-        <PrintHead workshop={workshop} title="Write ticket" refChecked={ticket.refChecked} code={size === "a6" ? "18mm" : "24mm"} note={`Drive ${ticket.driveLetter}, image of ${ticket.designator}`} />
+      <div className={`sheet-rows ${size === "a6" ? "!gap-[1.2mm]" : ""}`}>
+        <PrintHead workshop={workshop} title="Write ticket" refChecked={ticket.refChecked} code={size === "a6" ? "16mm" : "24mm"} note={`Drive ${ticket.driveLetter}, image of ${ticket.designator}`} />
         <Void ticket={ticket} timeZone={timeZone} />
-        <p className="donor-only">Donor board only. Never the original.</p>
+        {ticket.revoked ? null : <p className="donor-only">Donor board only. Never the original.</p>}
         <dl className="print-facts">
           <Fact name="Write to the donor" wide="w12"><span className="mono font-bold" style={{ fontSize: `${board.points}pt` }}>{board.text}</span></Fact>
           <Fact name="Image" wide="w12"><span className="mono" style={{ fontSize: `${name.points}pt`, wordBreak: "break-all" }}>{name.text}</span></Fact>
@@ -43,7 +43,7 @@ export function WriteTicket({ ticket, size, workshop, timeZone }: { ticket: Writ
           <h2>SHA-256 of the image</h2>
           <div className="digest-groups">{groups.map((group, i) => <span key={i}>{group}</span>)}</div>
         </section>
-        <div className="last-digits"><span className="cap">Its last 8 digits. Compare them with the file in the programmer before you write.</span><b>{groups[groups.length - 1]}</b></div>
+        {ticket.revoked ? null : <div className="last-digits"><span className="cap">Its last 8 digits. Compare them with the file in the programmer before you write.</span><b>{groups[groups.length - 1]}</b></div>}
         <dl className="print-facts">
           <Fact name="Approved by" wide="w6">{shorten(ticket.approvedBy, 60).text}{ticket.twoPersonRule ? "" : " (two-person rule switched off)"}</Fact>
           <Fact name="On" wide="w6">{exactText(ticket.approvedAt, timeZone)}</Fact>

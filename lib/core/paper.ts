@@ -22,6 +22,8 @@ const MM_A_POINT = 25.4 / 72;
 const ADVANCE = 0.62;
 const LINE = 1.2;
 const STEP = 0.5;
+/** Points below which a line is rather wrapped than made smaller. */
+const ONE_LINE = 6.5;
 
 /** A box on paper for one value in the mono face: millimetres and points. */
 export interface Box {
@@ -33,21 +35,39 @@ export interface Box {
 }
 
 /**
- * The rule for long values: the largest size, in steps of half a point, at which the text wraps into its box. What does
- * not go in at the smallest size loses its middle, never its ends: the ends tell two numbers apart.
+ * The rule for long values: one line, as long as that can be read from arm's length; else the largest size, in steps of
+ * half a point, at which the text wraps into its box. What does not go in at the smallest size loses its middle, never
+ * its ends: the ends tell two numbers apart.
  */
 export function fitText(text: string, box: Box): { points: number; text: string } {
-  for (let points = box.largest; points >= box.smallest; points -= STEP) {
-    if (text.length <= room(box, points)) return { points, text };
+  for (let points = box.largest; points >= ONE_LINE; points -= STEP) {
+    if (text.length <= room(box, points).across) return { points, text };
   }
-  return { points: box.smallest, text: withoutMiddle(text, room(box, box.smallest)) };
+  for (let points = box.largest; points >= box.smallest; points -= STEP) {
+    const { across, lines } = room(box, points);
+    if (linesOf(text, across) <= lines) return { points, text };
+  }
+  const { across, lines } = room(box, box.smallest);
+  return { points: box.smallest, text: withoutMiddle(text, across * lines) };
 }
 
-/** Characters that go into the box at this size. */
-function room(box: Box, points: number): number {
-  const across = Math.floor(box.width / (points * MM_A_POINT * ADVANCE));
-  const lines = Math.floor(box.height / (points * MM_A_POINT * LINE) + 1e-9);
-  return across * lines;
+/** Characters in a line of the box at this size, and lines. */
+function room(box: Box, points: number): { across: number; lines: number } {
+  return { across: Math.floor(box.width / (points * MM_A_POINT * ADVANCE)), lines: Math.floor(box.height / (points * MM_A_POINT * LINE) + 1e-9) };
+}
+
+/** Lines that a text takes when it breaks at spaces, and within a word only where the word alone is longer than a line. */
+function linesOf(text: string, across: number): number {
+  let [lines, used] = [1, 0];
+  for (const word of text.split(" ")) {
+    if (used > 0 && used + 1 + word.length <= across) used += 1 + word.length;
+    else {
+      if (used > 0) lines += 1;
+      lines += Math.max(0, Math.ceil(word.length / across) - 1);
+      used = word.length % across || Math.min(word.length, across);
+    }
+  }
+  return lines;
 }
 
 function withoutMiddle(text: string, most: number): string {

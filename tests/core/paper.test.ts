@@ -8,17 +8,20 @@ const box = { width: 27, height: 7, largest: 10, smallest: 4 };
 describe("long values on paper", () => {
   it("keep the largest size while they fit, then shrink, and lose only their middle", () => {
     expect(fitText("S1", box)).toEqual({ points: 10, text: "S1" });
-    let before = 10;
     for (let length = 1; length <= 400; length += 1) {
       const text = `A${"x".repeat(Math.max(0, length - 2))}Z`.slice(0, length);
       const fitted = fitText(text, box);
-      expect(fitted.points).toBeLessThanOrEqual(before);
+      expect(fitted.points).toBeLessThanOrEqual(10);
       expect(fitted.points).toBeGreaterThanOrEqual(4);
       const across = Math.floor(box.width / (fitted.points * (25.4 / 72) * 0.62));
       expect(Math.ceil(fitted.text.length / across) * fitted.points * (25.4 / 72) * 1.2).toBeLessThanOrEqual(box.height + 1e-6);
       if (fitted.text !== text) expect([fitted.points, fitted.text[0], fitted.text.at(-1), fitted.text.includes("…")]).toEqual([4, "A", "Z", true]);
-      before = fitted.points;
     }
+  });
+
+  it("stay on one line down to 6.5 points, and break at spaces before they break a word", () => {
+    expect(fitText("PN 4471-0093-B", { ...box, height: 20 })).toEqual({ points: 8.5, text: "PN 4471-0093-B" });
+    expect(fitText(`${"a".repeat(12)} ${"b".repeat(12)} c`, { ...box, height: 8 }).points).toBe(8.5);
   });
 
   it("let the longest part number that a form takes onto a label whole", () => {

@@ -4,7 +4,7 @@ import path from "node:path";
 import { expect, type Page, test } from "@playwright/test";
 import { withCheck } from "@/lib/core/case-number";
 import { LABEL_SIZES, type PaperName } from "@/lib/core/paper";
-import { approve, chipOf, makeReady, type Ready } from "./support/bench";
+import { chipOf, makeReady, type Ready } from "./support/bench";
 import { type Desk, signIn } from "./support/desk";
 import { printed, scanned, stickingOut } from "./support/paper";
 import { call, done, tokenOf } from "./support/station";
@@ -97,7 +97,11 @@ test("a write ticket is refused before an approval, printed while it stands, and
   await page.goto(address);
   await expect(page.getByRole("main")).toContainText("No image of this chip is approved");
   await expect(page.getByRole("button", { name: "Print", exact: true })).toHaveCount(0);
-  expect((await approve(ines, ready, ready.sha256)).status).toBe(201);
+  // the fullest ticket: a second chip that moves too, an encrypted drive, and all that a lead may write
+  await done("POST", `/api/boards/${ready.boardId}/chips`, { token: mira, json: { designator: "U12", bus: "spi", sizeBytes: 65_536, supplyMillivolts: 3300, holds: "adaptives" } });
+  await done("PATCH", `/api/drives/${ready.driveId}`, { token: mira, json: { changes: { encryption: "yes" }, reason: "The enclosure’s board encrypts." } });
+  const given = await call("POST", `/api/chips/${ready.chipId}/approval`, { token: ines, json: { sha256: ready.sha256, donorChipId: ready.donorChipId, statement: long("Three equal reads. ", 2000) } });
+  expect(given.status, given.bytes.toString("utf8")).toBe(201);
   for (const size of ["a6", "a5"] as const) {
     await open(page, ready.caseId, `write-ticket?of=${ready.chipId}&size=${size}`);
     expect(await stickingOut(page)).toEqual([]);

@@ -46,7 +46,7 @@ export async function stickingOut(page: Page): Promise<string[]> {
   await page.emulateMedia({ media: "print" });
   const out = await page.evaluate(() => [...document.querySelectorAll<HTMLElement>(".printed")].flatMap((sheet) => {
     const edge = sheet.getBoundingClientRect();
-    const fixed = sheet.classList.contains("fixed");
+    const fixed = sheet.classList.contains("exact");
     return [...sheet.querySelectorAll<HTMLElement>("p, dd, dt, h1, h2, b, li, td, th, span, i, svg")].filter((part) => {
       const box = part.getBoundingClientRect();
       if (box.width === 0 || part.closest(".void-mark")) return false;
