@@ -20,13 +20,13 @@ export function ImportLines({ answer: { done, counts, lines, left } }: { answer:
       {lines.length > 0 ? (
         <table className="ruled lines">
           <caption className="sr-only">Lines of the file</caption>
-          <thead><tr><th scope="col" className="num">Line</th><th scope="col">Result</th><th scope="col">Number</th><th scope="col">What</th></tr></thead>
+          <thead><tr><th scope="col">Line</th><th scope="col">Result</th><th scope="col">Number</th><th scope="col">What</th></tr></thead>
           <tbody>
             {lines.map((line) => (
               <tr key={line.line}>
-                <th scope="row" className="num">{line.line}</th>
+                <th scope="row"><span className="hidden phone:inline">Line </span>{line.line}</th>
                 <td className="whitespace-nowrap"><Mark kind={MARK[line.result]} className="[--hole:var(--paper)]" /> {WORD[line.result][done ? 1 : 0]}</td>
-                <td className="font-mono whitespace-nowrap">{line.number ?? <span className="font-face text-ink-3">gets one</span>}</td>
+                <td className="font-mono whitespace-nowrap">{line.number ?? <span className="font-face text-ink-3">{line.result === "new" ? "gets one" : "none"}</span>}</td>
                 <td className="l-full [overflow-wrap:anywhere]">{line.sentence}</td>
               </tr>
             ))}

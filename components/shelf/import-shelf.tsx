@@ -64,7 +64,7 @@ export function ImportShelf() {
             change([chosen, text, reason]);
           }} />
         </div>
-      ) : <TextArea label="Rows, with the header row first" rows={8} spellCheck={false} className="font-mono" value={text} onChange={(event) => change([file, event.target.value, reason])} />}
+      ) : <TextArea label="Rows, with the header row first" rows={8} spellCheck={false} value={text} onChange={(event) => change([file, event.target.value, reason])} />}
       <Input label="Reason for what changes" hint="Goes into the log with each changed board; left empty, it names the file and the line." maxLength={2000} value={reason} onChange={(event) => change([file, text, event.target.value])} className="max-w-[560px]" />
       {refusal ? <Note kind="block" role="alert" title="Nothing was changed.">{refusal}</Note> : null}
       {answer ? <ImportLines answer={answer} /> : null}

@@ -13,7 +13,7 @@ import { STATE_MARK, stateWords } from "./shelf-words";
 
 const column = columnsFor<ShelfRow>();
 const NONE: Record<ShelfState, string> = { "on-shelf": "No board lies free on the shelf.", reserved: "No board is reserved.", taken: "No board was taken yet.", retired: "No board is retired." };
-const PHONE = { board: "bare l-top", markings: "l-full", chips: "bare l-row", state: "bare l-row" };
+const PHONE = { board: "bare l-top", markings: "l-full", chips: "l-row", state: "bare l-row" };
 
 /** The shelf: searched, sorted and paged by the database. */
 export function ShelfTable({ list, sort, order, q, state, timeZone, changes }: { list: List; sort: string; order: "asc" | "desc"; q: string; state: ShelfState | ""; timeZone: string; changes: boolean }) {
@@ -21,7 +21,7 @@ export function ShelfTable({ list, sort, order, q, state, timeZone, changes }: {
     column.accessor("number", { id: "number", header: "Number", cell: ({ row }) => <Link className="font-mono whitespace-nowrap" href={`/shelf/${row.original.id}`}>{row.original.number}</Link> }),
     column.accessor("boardNumber", { id: "board", header: "Board", cell: ({ row }) => <span className="font-mono [overflow-wrap:anywhere]">{boardName(row.original)}</span> }),
     column.display({ id: "markings", header: "Controller, motor driver", enableSorting: false, cell: ({ row: { original: row } }) => <span className="font-mono text-t2">{row.controllerMarking ?? <span className="font-face text-ink-3">not read</span>}, {row.motorDriverMarking ?? <span className="font-face text-ink-3">not read</span>}</span> }),
-    column.display({ id: "chips", header: "Chips", enableSorting: false, cell: ({ row }) => (row.original.chips.length > 0 ? <span className="font-mono text-t2">{row.original.chips.map((chip) => chip.designator).join(", ")}</span> : <span className="text-ink-3">no chip on record</span>) }),
+    column.display({ id: "chips", header: "Chips", enableSorting: false, cell: ({ row }) => (row.original.chips.length > 0 ? <span className="font-mono text-t2">{row.original.chips.map((chip) => chip.designator).join(", ")}</span> : <span className="text-ink-3">none on record</span>) }),
     column.accessor("origin", { id: "origin", header: "Origin", cell: ({ row }) => row.original.origin ?? <span className="text-ink-3">not said</span> }),
     column.accessor("place", { id: "place", header: "Place", cell: ({ row }) => row.original.place ?? <span className="text-ink-3">not said</span> }),
     column.display({ id: "state", header: "State", enableSorting: false, cell: ({ row }) => <FindingLine kind={STATE_MARK[row.original.state]}>{stateWords(row.original)}</FindingLine> }),

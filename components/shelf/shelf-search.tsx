@@ -18,10 +18,12 @@ export function ShelfSearch({ q, sort, order, state, counts }: Asked & { counts:
   return (
     <>
       <form action="/shelf" role="search" className="no-print flex flex-wrap items-end gap-3 pb-4">
-        <Input label="Search" name="q" defaultValue={q} autoComplete="off" maxLength={200} placeholder="Number, board number, marking, place" className="w-[320px] max-w-full" hint="A saved content is found by the first 8 digits of its SHA-256" />
+        <Input label="Search" name="q" defaultValue={q} autoComplete="off" maxLength={200} placeholder="Number, board number, marking, place" className="w-[320px] max-w-full" />
         {sort ? <><input type="hidden" name="sort" value={sort} /><input type="hidden" name="order" value={order} /></> : null}
         {state ? <input type="hidden" name="state" value={state} /> : null}
-        <span className="flex gap-3 pb-6"><Button type="submit">Search</Button>{q ? <ButtonLink variant="text" href="/shelf">Show all</ButtonLink> : null}</span>
+        <Button type="submit">Search</Button>
+        {q ? <ButtonLink variant="text" href="/shelf">Show all</ButtonLink> : null}
+        <span className="pb-2 text-t2 text-ink-2">A saved content is found by the first 8 digits of its SHA-256.</span>
       </form>
       <div className="no-print flex flex-wrap items-center justify-between gap-x-6 gap-y-2 pb-4">
         <nav aria-label="Which boards" className="flex flex-wrap gap-x-5 gap-y-1">
