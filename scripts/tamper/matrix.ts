@@ -60,7 +60,7 @@ export async function runMatrix(
         refusals.push(db && cell.attacker !== "A6" ? await refusalOf(db, (sql) => cell.run(sql, scene)) : null);
       }
       const results = await withoutTriggers(TRIGGERED, () => afterwards(cells, refusals, scene, tick));
-      return { results: [...results, ...(await atStart(account))], scene };
+      return { results: [...results, ...(await atStart(account, accounts.appUrl))], scene };
     } finally {
       for (const name of ["week", "now"]) await dropDump(admin, name);
     }
@@ -92,22 +92,26 @@ async function afterwards(cells: readonly Cell[], refusals: (string | null)[], s
   return results;
 }
 
+const anew = (table: string) => [`RENAME TABLE ${table} TO ${table}_away`, `CREATE TABLE ${table} LIKE ${table}_away`];
+const back = (table: string) => [`DROP TABLE ${table}`, `RENAME TABLE ${table}_away TO ${table}`];
+
 /** Changes to the tables themselves cannot be taken back by a transaction: each is undone by hand. */
 const TABLES: { name: string; by: string[]; undo: string[]; empties?: string }[] = ["custody_entries", "custody_heads", "seals"].flatMap((table) => [
   { name: `truncate ${table}`, by: [`TRUNCATE TABLE ${table}`], undo: [], empties: table },
-  { name: `drop ${table} and make it anew, empty`, by: [`RENAME TABLE ${table} TO ${table}_away`, `CREATE TABLE ${table} LIKE ${table}_away`], undo: [`DROP TABLE ${table}`, `RENAME TABLE ${table}_away TO ${table}`] },
+  { name: `drop ${table} and make it anew, empty`, by: anew(table), undo: back(table) },
   ...(table === "custody_heads" ? [] : [{ name: `take the versions of ${table} away`, by: [`ALTER TABLE ${table} DROP SYSTEM VERSIONING`], undo: [`ALTER TABLE ${table} ADD SYSTEM VERSIONING`] }]),
   { name: `compare ${table === "seals" ? "key_id" : "chain_id"} of ${table} without capitals`, by: [`ALTER TABLE ${table} MODIFY ${table === "seals" ? "key_id CHAR(64)" : "chain_id CHAR(36)"} CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL`], undo: [`ALTER TABLE ${table} MODIFY ${table === "seals" ? "key_id CHAR(64)" : "chain_id CHAR(36)"} CHARACTER SET ascii COLLATE ascii_bin NOT NULL`] },
 ]);
 
-async function atStart(account: Partial<Record<Attacker, Sql>>): Promise<Result[]> {
+async function atStart(account: Partial<Record<Attacker, Sql>>, appUrl: string): Promise<Result[]> {
+  if (!(await startsUp(appUrl))) throw new Error("The app would not start before anything was done.");
   const results: Result[] = [];
   const keyInFolder = readFileSync(path.join(env().dataDir, "keys/log-key.pub.pem"), "utf8");
   for (const attacker of ["A1", "A2", "A3"] as const) {
     const db = account[attacker]!;
     for (const { name, by, undo, empties } of TABLES) {
       const cell = { attacker, name, row: "" };
-      // what could not be undone is tried on an empty copy made the same way
+      // what could not be undone is tried on an empty copy made the same way; what it leaves is then put in the real one's place
       const target = empties ? by.map((statement) => statement.replace(empties, attacker === "A1" ? empties : `${empties}_copy`)) : by;
       if (empties && attacker !== "A1") await account.A2!.query(`CREATE TABLE ${empties}_copy LIKE ${empties}`);
       let refused: string | null = null;
@@ -115,14 +119,13 @@ async function atStart(account: Partial<Record<Attacker, Sql>>): Promise<Result[
       let outcome: Outcome | null = null;
       try {
         for (const statement of target) await db.query(statement);
-        if (!empties) {
-          const seen = await tried(() => Promise.resolve(), { keyInFolder, outside: [], noWitness: false });
-          outcome = { ...seen, layers: [...seen.layers.filter((layer) => layer !== "witness"), ...((await startsUp()) ? [] : ["start" as const]), ...seen.layers.filter((layer) => layer === "witness")] };
-        } else outcome = { layers: ["chain"], first: "an emptied table, as below", ms: 0 };
+        if (empties) for (const statement of anew(empties)) await account.A2!.query(statement);
+        const seen = await tried(() => Promise.resolve(), { keyInFolder, outside: [], noWitness: false });
+        outcome = { ...seen, layers: [...seen.layers.filter((layer) => layer !== "witness"), ...((await startsUp(appUrl)) ? [] : ["start" as const]), ...seen.layers.filter((layer) => layer === "witness")] };
       } catch (error) {
         refused = (error as Error).message.replace(/\s+sql:[\s\S]*$/, "").replace(/^\(conn:[^)]*\) /, "");
       }
-      if (refused === null) for (const statement of undo) await account.A2!.query(statement);
+      if (refused === null) for (const statement of empties ? back(empties) : undo) await account.A2!.query(statement);
       if (empties && attacker !== "A1") await account.A2!.query(`DROP TABLE ${empties}_copy`);
       results.push({ cell, refused, outcome });
     }

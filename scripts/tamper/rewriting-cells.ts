@@ -26,7 +26,7 @@ function withoutKeys(): Cell[] {
       await db.query("UPDATE custody_entries SET seq = seq - 1 WHERE chain_id = ? AND seq > ? ORDER BY seq", [chain, seq]);
       if (row === "last") return headAtEnd(db, chain);
       await chainAnew(db, chain, seq, null);
-    }, row === "last" ? { unseen: WINDOW } : {}),
+    }),
     cell("the same on the workshop's log", row, async (db, scene) => {
       const seq = { first: 1, middle: Math.ceil(scene.workshopLast / 2), last: scene.workshopLast }[row];
       await rewrite(db, WORKSHOP_CHAIN, seq);
@@ -35,7 +35,11 @@ function withoutKeys(): Cell[] {
   ]);
   const cut = (name: string, keep: (scene: Scene) => number, more: Partial<Cell> = {}) => cell(`cut the tail, head turned back: ${name}`, "last", async (db, scene) => cutTail(db, scene.a.chip.driveId, keep(scene)), more);
   return [
-    ...anew, cut("what came after the newest seal", (scene) => scene.last - 1, { unseen: WINDOW, outside: all }), cut("one sealed entry", (scene) => scene.last - 2), cut("half", (scene) => Math.ceil(scene.last / 2)), cut("all but the first", () => 1), cut("all", () => 0),
+    ...anew, cut("what came after the newest seal", (scene) => scene.last - 1, { outside: all }),
+    cell("cut what came after the newest seal, and put the row back that it had changed", "last", async (db, scene) => {
+      await cutTail(db, scene.a.chip.driveId, scene.last - 1);
+      await db.query("UPDATE drives SET interface = 'SATA' WHERE id = ?", [scene.a.chip.driveId]);
+    }, { unseen: WINDOW, outside: all }), cut("one sealed entry", (scene) => scene.last - 2), cut("half", (scene) => Math.ceil(scene.last / 2)), cut("all but the first", () => 1), cut("all", () => 0),
     cell("cut the tail, and the seals and their entries that saw it", "last", cutWithSeals, { outside: all }),
     cell("the same, no copy given, the data folder's witness file left alone", "last", cutWithSeals),
     cell("the same, without a copy from outside", "last", cutWithSeals, { unseen: "Seals, their entries and the tail are gone together: what is left is an earlier state. Only the witness file or another copy tells.", outside: () => [], noWitness: true }),

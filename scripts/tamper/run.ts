@@ -1,4 +1,4 @@
-import { Transaction } from "sequelize";
+import { type Sequelize, Transaction } from "sequelize";
 import { connection } from "@/models";
 import { checkDatabase } from "@/models/check-database";
 import { checkAgainst } from "@/scripts/check/against";
@@ -81,5 +81,18 @@ export async function refusalOf(db: Sql, work: (db: Sql) => Promise<void>): Prom
   }
 }
 
-/** Whether the app would start on the tables as they are. */
-export const startsUp = () => checkDatabase().then(() => true, () => false);
+const shared = globalThis as unknown as { twinreadSequelize?: Sequelize };
+
+/** Whether the app would start on the tables as they are: asked with its own account, whatever this process runs as. */
+export async function startsUp(appUrl: string): Promise<boolean> {
+  const [pool, url] = [shared.twinreadSequelize, process.env.DATABASE_URL];
+  shared.twinreadSequelize = undefined;
+  process.env.DATABASE_URL = appUrl;
+  try {
+    return await checkDatabase().then(() => true, () => false);
+  } finally {
+    await connection().close();
+    shared.twinreadSequelize = pool;
+    process.env.DATABASE_URL = url;
+  }
+}
