@@ -1,9 +1,11 @@
-import { describe, expect, it } from "vitest";
+import { describe, expect, it, vi } from "vitest";
 import { checkChain } from "@/lib/core/custody";
 import { honestHouse } from "@/scripts/tamper/honest-logs";
 import { falseAlarms } from "@/scripts/tamper/judge-house";
 import { eightEntries, sweepLog, sweepSeal } from "@/scripts/tamper/log-flips";
 import { sha256Hex } from "./stream";
+
+vi.setConfig({ testTimeout: 120_000 });
 
 describe("an honest log", () => {
   // 1,000 of them in tests/long/tamper-logs.test.ts

@@ -17,7 +17,7 @@ import { LAYERS } from "@/scripts/tamper/run";
 import { emptyHouse } from "../support/empty-house";
 
 process.env.DATABASE_URL = accounts.appUrl;
-vi.setConfig({ testTimeout: 120_000 });
+vi.setConfig({ testTimeout: 300_000 });
 
 const ATTACKERS = ["A1", "A2", "A3", "A4", "A5", "A6", "A7"] as const;
 /** one for each way of being noticed, and the two of which only an outside copy or nobody tells */
