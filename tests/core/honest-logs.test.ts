@@ -8,7 +8,7 @@ import { sha256Hex } from "./stream";
 vi.setConfig({ testTimeout: 120_000 });
 
 describe("an honest log", () => {
-  // 1,000 of them in tests/long/tamper-logs.test.ts
+  // 1,000 of them in tests/long/tamper-matrix.test.ts
   it("is clean in 60 random workshops, whatever the text, the clock, the keys and the heads did", async () => {
     for (let seed = 1; seed <= 60; seed += 1) expect([seed, await falseAlarms(honestHouse(seed))]).toEqual([seed, []]);
   });
@@ -22,7 +22,7 @@ describe("an honest log", () => {
   });
 });
 
-// every single one in tests/long/tamper-logs.test.ts
+// every single one in tests/long/tamper-matrix.test.ts
 describe("one flipped bit", () => {
   const eight = eightEntries();
 
