@@ -12,6 +12,7 @@ export interface CsvRow {
   count: number;
 }
 
+const MOST_CELLS = 200;
 const refuse = (detail: string) => new AppError("does-not-fit", detail);
 
 /** Reads a file of the shelf: UTF-8 with or without a byte order mark; commas, semicolons or tabs; header first. Hostile input. */
@@ -27,6 +28,8 @@ export function readShelfCsv(bytes: Uint8Array): CsvRow[] {
       on_record: (record: string[], { lines }: { lines: number }) => {
         const breaks = record.reduce((sum, cell) => sum + (cell.match(/\n/g)?.length ?? 0), 0);
         const line = lines - breaks;
+        // ends here, not after millions of cells
+        if (record.length > MOST_CELLS) throw refuse(`Line ${line.toLocaleString("en")} has ${record.length.toLocaleString("en")} cells; the shelf has ${HEADERS.length} columns. Look for what parts the cells in this file.`);
         if (!columns) columns = headerOf(record);
         else if (record.some((cell) => cell.trim() !== "")) rows.push(rowOf(record, columns, line));
         if (rows.length > MAX_SHELF_FILE_ROWS) throw refuse(`The file has more than ${MAX_SHELF_FILE_ROWS.toLocaleString("en")} rows. Split it, with the header row in each part.`);
