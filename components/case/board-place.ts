@@ -55,9 +55,10 @@ function fill(spots: Map<string, Spot>, board: BoardView | null, ofPair: (id: st
     const pair = chip.place || !chip.pair ? undefined : ofPair(chip.pair.id);
     if (pair && !taken.some((other) => overlap(pair, other))) put(chip.id, pair);
   }
-  for (const chip of chips) {
+  for (const [i, chip] of chips.entries()) {
     if (spots.has(chip.id)) continue;
-    const free = SLOTS.find((slot) => !taken.some((other) => overlap(slot, other)));
+    // its own slot first, so that the others stay where they are while one is placed
+    const free = [...SLOTS.slice(i, i + 1), ...SLOTS].find((slot) => !taken.some((other) => overlap(slot, other)));
     if (free) put(chip.id, free);
   }
 }

@@ -56,10 +56,10 @@ export function DriveBlock({ drive, policy, user, open, photos, here = false }: 
       <div className="drivebar">
         <h2 className="text-t5 font-bold">{here ? `Drive ${drive.letter}` : <Link href={`/drives/${drive.id}`} className="text-ink">Drive {drive.letter}</Link>}</h2>
         {driveFacts(drive).map((fact) => <span key={fact} className="font-mono">{fact}</span>)}
+        {lesserFacts(drive).length > 0 ? <span>{lesserFacts(drive).join(", ")}</span> : null}
         {records ? <span className="no-print"><CorrectDrive drive={drive} /></span> : null}
         <span className="ml-auto phone:ml-0"><Link href={`/drives/${drive.id}/custody`}>Custody log, {entriesText(drive.custodyEntries)}</Link></span>
       </div>
-      {lesserFacts(drive).length > 0 ? <p className="pt-2 text-t2 text-ink-2">{lesserFacts(drive).join(", ")}</p> : null}
       <div className="grid gap-2 pt-3 empty:hidden">
         <EncryptionNote encryption={drive.encryption} />
         {drive.warnings.length > 0 ? <DriveWarningList warnings={drive.warnings} /> : null}

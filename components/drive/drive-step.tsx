@@ -41,7 +41,7 @@ export function DriveStep({ caseId, proposed, userId, onClose, onSaved }: StepGi
       {Object.values(proposed).some(Boolean) ? <Note kind="note" title="Filled in from the customer’s request.">Hold it against the label before you save.</Note> : null}
       <DriveFields register={register} errors={errors} encryption={encryption} used={used} />
       <DriveWarningList warnings={warnings} live />
-      <Note kind="caution" title="Keep the enclosure’s small board with the drive.">It may hold the key to the data.</Note>
+      {encryption === "suspected" || encryption === "yes" ? null : <Note kind="caution" title="Keep the enclosure’s small board with the drive.">It may hold the key to the data.</Note>}
     </FormBody>
   );
 }

@@ -65,7 +65,7 @@ export function driveWarnings(drive: { partNumber: string | null; serial: string
   }
   if (alikeCases.length > 0) {
     found.push({ code: "serial-looks-alike", kind: "note", title: `A drive of ${where(alikeCases)} differs only in characters that look alike.`, text: `Look at the label: ${NAMES}.`, cases: alikeCases });
-  } else if (hasLookAlikes(serial)) {
+  } else if (found.length === 0 && hasLookAlikes(serial)) {
     found.push({ code: "look-alike-characters", kind: "note", title: "Some characters of this serial are easily mistaken.", text: `Look at the label: ${NAMES}.`, cases: [] });
   }
   return found;

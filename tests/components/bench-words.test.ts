@@ -69,5 +69,6 @@ describe("a case", () => {
     const at = { x: Math.round(((first.x + 22) / 560) * 1000), y: Math.round(((first.y + 12) / 250) * 1000) };
     const spots = placeChips(board("original", [chip("u1", "unread", { place: at }), chip("u2", "unread")]), null);
     expect(spots.get("u2")).toEqual(SLOTS[1]);
+    expect(placeChips(board("original", [chip("u1", "unread", { place: { x: 500, y: 500 } }), chip("u2", "unread")]), null).get("u2")).toEqual(SLOTS[1]);
   });
 });
