@@ -53,10 +53,10 @@ export function AddPhotos({ of, name }: { of: { type: PhotoSubject; id: string }
   return (
     <div className="no-print grid gap-2">
       <div onDragOver={(event) => { event.preventDefault(); setOver(true); }} onDragLeave={() => setOver(false)} onDrop={onDrop} className={`photo-add ${over ? "is-over" : ""}`}>
-        <Input label={`Caption for what you choose next, of ${name}`} placeholder="Burnt connector" maxLength={MAX_CAPTION_CHARACTERS} value={caption} onChange={(event) => setCaption(event.target.value)} autoComplete="off" />
+        <Input label={<>Caption for what you choose next<span className="sr-only">, of {name}</span></>} placeholder="Burnt connector" maxLength={MAX_CAPTION_CHARACTERS} value={caption} onChange={(event) => setCaption(event.target.value)} autoComplete="off" />
         <div className="flex flex-wrap items-center gap-2">
           <Button onClick={() => picker.current?.click()} aria-describedby={hint}>Choose photos</Button>
-          <Button className="photo-camera" onClick={() => camera.current?.click()}>Take a photo</Button>
+          <span className="photo-camera"><Button onClick={() => camera.current?.click()}>Take a photo</Button></span>
         </div>
         <p id={hint} className="text-t2 text-ink-2">Or drop them here. JPEG, PNG, WebP or PDF, up to 20 MiB each. They are kept as they come.</p>
         <input ref={picker} type="file" multiple accept={PHOTO_ACCEPT} className="sr-only" tabIndex={-1} aria-label={`Photos of ${name}`} onChange={onChosen} />

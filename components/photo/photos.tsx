@@ -62,7 +62,7 @@ function PhotoCard({ photo, timeZone }: { photo: PhotoView; timeZone: string }) 
           <b className="photo-title">{title}</b>
           {photo.caption && photo.fileName ? <span className="photo-file">{photo.fileName}</span> : null}
           <span>{adderOf(photo)}, {momentText(photo.storedAt, timeZone)}</span>
-          <span className="inline-flex items-center">SHA-256&nbsp;<Digest sha256={photo.sha256} /></span>
+          <span className="photo-digest"><span>SHA-256</span><Digest sha256={photo.sha256} /></span>
           {photo.kind === "document" ? <span>{typeName(photo)}, {fileSize(photo.sizeBytes)}</span> : null}
           {photo.hadLocation ? <span>The original says where it was taken; what is shown here doesn’t.</span> : null}
           {photo.sound ? null : <FindingLine kind="block">The stored original is damaged or missing. Send the same file once more.</FindingLine>}

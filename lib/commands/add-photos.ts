@@ -54,7 +54,7 @@ export async function requirePhotoPlace(actor: Actor, type: PhotoSubject, id: st
  * the customer, told in the workshop's log because the case has no drive yet.
  */
 export async function addPhotosForRequest(tx: Transaction, found: Case, ready: ReadyPhoto[]): Promise<Photo[]> {
-  const place: PhotoPlace = { type: "case", id: found.id, case: found, driveId: null, name: `case ${found.ref}` };
+  const place: PhotoPlace = { type: "case", id: found.id, case: found, driveId: null, driveLetter: null, name: `case ${found.ref}` };
   return writePhotos(tx, SYSTEM, "customer", place, ready);
 }
 

@@ -12,6 +12,8 @@ export interface PhotoPlace {
   case: Case | null;
   /** null: it is of the whole case, or of a board on the shelf */
   driveId: string | null;
+  /** null where there is no drive */
+  driveLetter: string | null;
   /** "Drive A", "the original board BX 40-3179 rev C", "U12 of the donor" */
   name: string;
 }
@@ -20,19 +22,19 @@ export interface PhotoPlace {
 export async function photoPlaceFor(actor: Actor, type: PhotoSubject, id: string, tx?: Transaction): Promise<PhotoPlace> {
   if (type === "case") {
     const found = await caseFor(actor, id, tx);
-    return { type, id, case: found, driveId: null, name: `case ${found.ref}` };
+    return { type, id, case: found, driveId: null, driveLetter: null, name: `case ${found.ref}` };
   }
   if (type === "drive") {
     const { drive, case: found } = await driveFor(actor, id, tx);
-    return { type, id, case: found, driveId: drive.id, name: `Drive ${driveLetter(drive)}` };
+    return { type, id, case: found, driveId: drive.id, driveLetter: driveLetter(drive), name: `Drive ${driveLetter(drive)}` };
   }
   if (type === "board") {
     const { board, drive, case: found } = await boardFor(actor, id, tx);
-    return { type, id, case: found, driveId: drive.id, name: `the ${board.role} board ${boardName({ boardNumber: board.boardNumber, revision: board.revision ?? null })}` };
+    return { type, id, case: found, driveId: drive.id, driveLetter: driveLetter(drive), name: `the ${board.role} board ${boardName({ boardNumber: board.boardNumber, revision: board.revision ?? null })}` };
   }
   if (type === "chip") {
     const { chip, board, drive, case: found } = await chipFor(actor, id, tx);
-    return { type, id, case: found, driveId: drive.id, name: `${chip.designator} of the ${board.role}` };
+    return { type, id, case: found, driveId: drive.id, driveLetter: driveLetter(drive), name: `${chip.designator} of the ${board.role}` };
   }
   return shelfPlace(actor, id, tx);
 }
@@ -45,7 +47,7 @@ async function shelfPlace(actor: Actor, id: string, tx?: Transaction): Promise<P
     const taker = found.takenBoardId ? await boardFor(actor, found.takenBoardId, tx).catch(() => null) : null;
     if (!taker) throw notFound("shelf board");
   }
-  return { type: "shelf-board", id, case: null, driveId: null, name: `the shelf board ${found.number}, ${found.boardNumber}` };
+  return { type: "shelf-board", id, case: null, driveId: null, driveLetter: null, name: `the shelf board ${found.number}, ${found.boardNumber}` };
 }
 
 /** The drives whose logs tell of a photo, in the order in which they are locked; none: it is told in the workshop's log. */

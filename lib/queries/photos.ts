@@ -46,7 +46,7 @@ export async function photosOfDrive(actor: Actor, driveId: string): Promise<Phot
   const boardOf = new Map(shelf.map((one) => [one.id, one.takenBoardId]));
   const of = (id: string) => photos.filter((photo) => photo.of.id === id || boardOf.get(photo.of.id) === id);
   return seenBy(actor, [
-    { of: { type: "drive", id: driveId }, name: `Drive ${driveLetter(drive)}, its label and connectors`, photos: of(driveId) },
+    { of: { type: "drive", id: driveId }, name: `Drive ${driveLetter(drive)}`, photos: of(driveId) },
     ...boards.map((board): PhotoGroup => ({
       of: { type: "board", id: board.id }, name: `${board.role === "original" ? "Original" : "Donor"} board ${boardName({ boardNumber: board.boardNumber, revision: board.revision ?? null })}`, photos: of(board.id),
     })),
@@ -76,14 +76,14 @@ export async function photoPage(actor: Actor, id: string): Promise<PhotoPageView
   const [{ case: found, driveId, type }, first] = [place, list[at]];
   const pages = [
     ...(found ? [{ label: `Case ${found.ref}`, href: `/cases/${found.id}` }] : []),
-    ...(driveId ? [{ label: type === "drive" ? place.name : "Drive", href: `/drives/${driveId}` }] : []),
+    ...(driveId ? [{ label: `Drive ${place.driveLetter}`, href: `/drives/${driveId}` }] : []),
     ...(type === "chip" ? [{ label: place.name, href: `/chips/${place.id}` }] : []),
     ...(type === "shelf-board" ? [{ label: "Donor shelf", href: "/shelf" }, { label: "The board", href: `/shelf/${place.id}` }] : []),
   ];
   const last = pages[pages.length - 1];
   return seenBy(actor, {
     photo: first, place: found && type !== "case" ? `${capital(place.name)}, case ${found.ref}` : capital(place.name), crumbs: pages,
-    back: { href: `${last.href}#photos`, label: type === "case" ? `case ${found!.ref}` : type === "board" ? "the drive" : type === "shelf-board" ? "the board on the shelf" : place.name },
+    back: { href: `${last.href}#photos`, label: type === "case" ? `case ${found!.ref}` : type === "board" ? `Drive ${place.driveLetter}` : type === "shelf-board" ? "the board on the shelf" : place.name },
     prev: list[at - 1]?.id ?? null, next: list[at + 1]?.id ?? null, number: at + 1, of: list.length,
   });
 }
