@@ -78,7 +78,7 @@ export async function photoPage(actor: Actor, id: string): Promise<PhotoPageView
     ...(found ? [{ label: `Case ${found.ref}`, href: `/cases/${found.id}` }] : []),
     ...(driveId ? [{ label: `Drive ${place.driveLetter}`, href: `/drives/${driveId}` }] : []),
     ...(type === "chip" ? [{ label: place.name, href: `/chips/${place.id}` }] : []),
-    ...(type === "shelf-board" ? [{ label: "Donor shelf", href: "/shelf" }, { label: "The board", href: `/shelf/${place.id}` }] : []),
+    ...(type === "shelf-board" ? [{ label: capital(place.name), href: `/shelf/${place.id}` }, { label: "The board", href: `/shelf/${place.id}` }] : []),
   ];
   const last = pages[pages.length - 1];
   return seenBy(actor, {
