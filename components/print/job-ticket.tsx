@@ -59,6 +59,7 @@ export function JobTicket({ view }: { view: PrintCaseView }) {
           <h2>What is to be done</h2>
           {job.drives.length > 0 ? (
             <table className="print-table">
+              <colgroup><col style={{ width: "15mm" }} /><col style={{ width: "15mm" }} /><col /><col style={{ width: "36mm" }} /></colgroup>
               <thead><tr><th scope="col">Chip</th><th scope="col">Board</th><th scope="col">Board number</th><th scope="col">Size, supply</th></tr></thead>
               <tbody>{job.drives.map((drive) => <DriveRows key={drive.id} drive={drive} />)}</tbody>
             </table>

@@ -19,11 +19,13 @@ export type Printed = (typeof PRINTED)[number];
 
 const MM_A_POINT = 25.4 / 72;
 /** Advance of the mono face in em, and the height of a line. */
-const ADVANCE = 0.62;
+const ADVANCE = 0.64;
 const LINE = 1.2;
 const STEP = 0.5;
 /** Points below which a line is rather wrapped than made smaller. */
 const ONE_LINE = 6.5;
+/** Points below which a word is rather broken than made smaller. */
+const WHOLE_WORDS = 5.5;
 
 /** A box on paper for one value in the mono face: millimetres and points. */
 export interface Box {
@@ -36,16 +38,19 @@ export interface Box {
 
 /**
  * The rule for long values: one line, as long as that can be read from arm's length; else the largest size, in steps of
- * half a point, at which the text wraps into its box. What does not go in at the smallest size loses its middle, never
+ * half a point, at which the text wraps into its box with its words whole, if that can be read. What does not go in at the smallest size loses its middle, never
  * its ends: the ends tell two numbers apart.
  */
 export function fitText(text: string, box: Box): { points: number; text: string } {
   for (let points = box.largest; points >= ONE_LINE; points -= STEP) {
     if (text.length <= room(box, points).across) return { points, text };
   }
-  for (let points = box.largest; points >= box.smallest; points -= STEP) {
-    const { across, lines } = room(box, points);
-    if (linesOf(text, across) <= lines) return { points, text };
+  const longestWord = Math.max(...text.split(" ").map((word) => word.length));
+  for (const whole of [true, false]) {
+    for (let points = box.largest; points >= (whole ? WHOLE_WORDS : box.smallest); points -= STEP) {
+      const { across, lines } = room(box, points);
+      if (linesOf(text, across) <= lines && (!whole || longestWord <= across)) return { points, text };
+    }
   }
   const { across, lines } = room(box, box.smallest);
   return { points: box.smallest, text: withoutMiddle(text, across * lines) };

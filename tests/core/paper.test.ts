@@ -13,7 +13,7 @@ describe("long values on paper", () => {
       const fitted = fitText(text, box);
       expect(fitted.points).toBeLessThanOrEqual(10);
       expect(fitted.points).toBeGreaterThanOrEqual(4);
-      const across = Math.floor(box.width / (fitted.points * (25.4 / 72) * 0.62));
+      const across = Math.floor(box.width / (fitted.points * (25.4 / 72) * 0.64));
       expect(Math.ceil(fitted.text.length / across) * fitted.points * (25.4 / 72) * 1.2).toBeLessThanOrEqual(box.height + 1e-6);
       if (fitted.text !== text) expect([fitted.points, fitted.text[0], fitted.text.at(-1), fitted.text.includes("…")]).toEqual([4, "A", "Z", true]);
     }
