@@ -37,7 +37,8 @@ export async function lockChain(tx: Transaction, chain: string): Promise<Head> {
 /** A head that was turned back does not stop the log: the next entry follows the last one that there is, and says so. */
 async function atItsEnd(tx: Transaction, chain: string, head: Head): Promise<Head> {
   const last = await CustodyEntry.findOne({ where: { chainId: chain, seq: { [Op.gt]: head.seq } }, order: [["seq", "DESC"]], transaction: tx });
-  return last ? { seq: last.seq, hash: last.hash, at: atOf(last.body) ?? head.at, behind: head.seq } : head;
+  // the digest of what is there, not the one beside it: a stranger's row could carry one that is taken, and stop the log
+  return last ? { seq: last.seq, hash: createHash("sha256").update(last.body).digest(), at: atOf(last.body) ?? head.at, behind: head.seq } : head;
 }
 
 function atOf(body: Buffer): string | null {

@@ -1,11 +1,15 @@
 import { createHash } from "node:crypto";
 import { Readable } from "node:stream";
+import { text } from "node:stream/consumers";
 import {
-  bagInfoTxt, bagitTxt, CASE_JSON, compositePaths, custodyPath, LOG_KEY, MANIFEST, manifestLine, readmeTxt, REPORT_PDF, SEAL_KEY, SEAL_PROOF, SEAL_SIGNATURE, SEAL_TEXT, TAG_MANIFEST, TAG_SIGNATURE, WORKSHOP_KEYS,
+  bagInfoTxt, bagitTxt, CASE_JSON, compositePaths, custodyPath, LOG_KEY, MANIFEST, manifestLine, PROVENANCE_ENDING, readmeTxt, REPORT_PDF, SEAL_KEY,
+  SEAL_PROOF, SEAL_SIGNATURE, SEAL_TEXT, TAG_MANIFEST, TAG_SIGNATURE, VOTES_ENDING, WORKSHOP_KEYS,
 } from "@/lib/core/bundle-layout";
+import { canonicalJson } from "@/lib/core/canonical";
 import { CHECK_SCRIPT } from "@/lib/core/check-script";
+import { provenance } from "@/lib/core/composite-prov";
 import { AppError } from "@/lib/errors";
-import { logKey, verifiedStream } from "@/storage";
+import { imageChunks, logKey, verifiedStream } from "@/storage";
 import { bodyLines, keysPart, type LogPart, signatureLines } from "./bundle-log";
 import type { BundlePlan } from "./bundle-plan";
 import { bundleReport } from "./bundle-report";
@@ -67,6 +71,10 @@ async function payload(plan: BundlePlan, logKeyPem: string): Promise<BundleFile[
   files.push(...(await logFiles(WORKSHOP_KEYS, keysPart(plan.workshopSeq))), textFile(LOG_KEY, logKeyPem));
   const { seal } = plan;
   files.push(textFile(SEAL_TEXT, seal.text), textFile(SEAL_SIGNATURE, Buffer.from(seal.signature, "base64")), textFile(SEAL_KEY, seal.key), textFile(SEAL_PROOF, seal.proof));
+  for (const { path, sha256 } of plan.images.filter((image) => image.path.endsWith(VOTES_ENDING))) {
+    const report = await text(imageChunks(sha256));
+    files.push(textFile(path.replace(VOTES_ENDING, PROVENANCE_ENDING), canonicalJson(provenance(report, { reportSha256: sha256 }))));
+  }
   files.push(...[...plan.images, ...plan.photos].map((image) => imageFile(image.path, image.sha256, image.sizeBytes)));
   return files;
 }

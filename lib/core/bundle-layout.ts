@@ -117,6 +117,8 @@ export interface ReadmeFacts {
 
 /** What lies beside the image of a composite: who voted what. Instead of the image's ".bin". */
 export const VOTES_ENDING = "-votes.json";
+/** the same for programs that speak the W3C's PROV-JSON: what the composite was made from */
+export const PROVENANCE_ENDING = "-prov.json";
 
 /** The composites among a bundle's paths: an image with votes beside it. */
 export function compositePaths(paths: readonly string[]): string[] {
@@ -131,7 +133,7 @@ ${paths.length === 1 ? "One image here was never read as a whole" : `${paths.len
 ${paths.map((path) => `  ${path}`).join("\n")}
 ${paths.length === 1 ? "It was" : "Each was"} put together from several reads that differed: each bit is what most of
 them say. The file beside it that ends in ${VOTES_ENDING} tells who voted what for each
-byte; the log says who made it, who approved it and why. A majority shows what
+byte, the one that ends in ${PROVENANCE_ENDING} what it was made from (W3C PROV-JSON); the log says who made it, who approved it and why. A majority shows what
 repeats, not what is true.
 `;
 }

@@ -30,8 +30,10 @@ it("a bundle holds the texts as they came and the votes behind a composite, and 
   const bag = path.join(folder, `twinread-${chip.ref}`);
   const said = execFileSync("sh", ["check.sh"], { cwd: bag, encoding: "utf8" });
   expect(said).toContain("10 images, each as the log and the record name it");
-  const listed = execFileSync("grep", ["-c", "-e", "before-5\\.hex$", "-e", "before-6-votes\\.json$", "manifest-sha256.txt"], { cwd: bag, encoding: "utf8" });
-  expect(listed.trim()).toBe("2");
+  const listed = execFileSync("grep", ["-c", "-e", "before-5\\.hex$", "-e", "before-6-votes\\.json$", "-e", "before-6-prov\\.json$", "manifest-sha256.txt"], { cwd: bag, encoding: "utf8" });
+  expect(listed.trim()).toBe("3");
+  const prov = JSON.parse(readFileSync(path.join(bag, "data/drives/1/original-U12/before-6-prov.json"), "utf8")) as { wasDerivedFrom: object };
+  expect(Object.keys(prov.wasDerivedFrom)).toHaveLength(5);
   // whoever has nothing but the bundle learns that the approved image was never read as a whole
   expect(readFileSync(path.join(bag, "README.txt"), "utf8")).toContain("COMPOSITES\nOne image here was never read as a whole:\n  data/drives/1/original-U12/before-6.bin\n");
   const { drives } = JSON.parse(readFileSync(path.join(bag, "data/case.json"), "utf8")) as { drives: { boards: { chips: { approvals: object[]; reads: { name: string; derived: object | null }[] }[] }[] }[] };

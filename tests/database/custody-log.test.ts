@@ -187,6 +187,17 @@ describe("a chain that was cut or turned back", () => {
     await approve(bench.lead, bench.chip, bench.image);
   });
 
+  it("goes on behind a stranger's row that carries the hash of an earlier entry", async () => {
+    const { technician, chip } = await makeReadyBench();
+    const rows = await CustodyEntry.findAll({ where: { chainId: chip.driveId }, order: ["seq"] });
+    const last = rows.at(-1)!;
+    await CustodyEntry.create({ chainId: chip.driveId, seq: last.seq + 1, body: Buffer.from("{}"), hash: rows[1].prev, prev: last.hash, keyId: last.keyId, signature: last.signature, action: "drive.corrected" });
+    await correctDrive(technician, chip.driveId, { changes: { interface: "SATA" }, reason: "It says so." });
+    const found = await problems(chip.driveId);
+    expect(found).toContain(`${last.seq + 1}: signature`);
+    expect(found).toContain(`${last.seq + 2}: head-was-behind`);
+  });
+
   it("goes on when its head is gone", async () => {
     const { technician, chip } = await makeReadyBench();
     const last = await lastSeq(chip.driveId);
