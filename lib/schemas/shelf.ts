@@ -60,7 +60,8 @@ export type TakingInput = z.infer<typeof takingInput>;
 export const shelfListInput = listInput.extend({ state: z.enum(["", ...SHELF_STATES]).default(""), format: z.enum(["json", "csv"]).default("json") });
 export type ShelfListInput = z.infer<typeof shelfListInput>;
 
+/** The fields beside the file. A misspelt one is refused: a file that was only to be tried must not be taken. */
 export const importFields = z.strictObject({
   try: z.enum(["yes", "no"], "Say whether this is only tried: yes or no.").default("no"),
   reason: maybe(reason).optional(),
-});
+}, { error: (issue) => (issue.code === "unrecognized_keys" ? "Beside the file only the fields try and reason are taken. Leave the others out." : undefined) });
