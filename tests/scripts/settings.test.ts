@@ -26,6 +26,14 @@ describe("settings", () => {
     expect(read({ PORT: "", DEMO: " ", DATABASE_URL: "" })).toEqual(read({}));
   });
 
+  it("take an address in lines, and whom to ask in either order", () => {
+    const own = read({ DEMO: "0", WORKSHOP_ADDRESS: "4 Quay Row | Lindmoor ZZ9 1AA", WORKSHOP_CONTACT: "01632 960 200, desk@quay.example" });
+    expect(own).toMatchObject({ workshopAddress: ["4 Quay Row", "Lindmoor ZZ9 1AA"], workshopHours: null, workshopContact: { email: "desk@quay.example", phone: "01632 960 200" } });
+    expect(read({ WORKSHOP_ADDRESS: "4 Quay Row\\nLindmoor\nZZ9 1AA" }).workshopAddress).toEqual(["4 Quay Row", "Lindmoor", "ZZ9 1AA"]);
+    // nothing of the demo's gets into real work
+    expect(read({ DEMO: "0" })).toMatchObject({ workshopAddress: [], workshopHours: null, workshopContact: { email: null, phone: null } });
+  });
+
   it("keep real work in a folder of its own", () => {
     expect(read({ DEMO: "0" }).dataDir).toBe(path.resolve("/srv/checkout/.data/live"));
     expect(read({ DEMO: "0", TWINREAD_DATA: "/srv/vault" }).dataDir).toBe("/srv/vault");
@@ -45,6 +53,12 @@ describe("settings", () => {
     ["DEMO", { DEMO: "yes" }],
     ["WORKSHOP_TIME_ZONE", { WORKSHOP_TIME_ZONE: "Middle/Nowhere" }],
     ["WORKSHOP_NAME", { WORKSHOP_NAME: "x".repeat(81) }],
+    ["WORKSHOP_ADDRESS", { WORKSHOP_ADDRESS: "1|2|3|4|5|6|7" }],
+    ["WORKSHOP_ADDRESS", { WORKSHOP_ADDRESS: "x".repeat(61) }],
+    ["WORKSHOP_HOURS", { WORKSHOP_HOURS: "x".repeat(81) }],
+    ["WORKSHOP_CONTACT", { WORKSHOP_CONTACT: "ask at the desk" }],
+    ["WORKSHOP_CONTACT", { WORKSHOP_CONTACT: "a@b.example, c@d.example" }],
+    ["WORKSHOP_CONTACT", { WORKSHOP_CONTACT: "a@b.example\r\nBcc: c@d.example" }],
     ["DATABASE_URL", { DATABASE_URL: "postgres://a:b@127.0.0.1/x", DATABASE_ADMIN_URL: "mariadb://c:d@127.0.0.1/x" }],
     ["DATABASE_URL", { DATABASE_URL: "mariadb://127.0.0.1/x", DATABASE_ADMIN_URL: "mariadb://c:d@127.0.0.1/x" }],
     ["DATABASE_ADMIN_URL", { DATABASE_URL: "mariadb://a:b@127.0.0.1/x" }],
