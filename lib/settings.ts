@@ -145,7 +145,7 @@ const schema = z.object({
     if (value === undefined) return undefined;
     const contact = contactOf(value);
     if (contact) return contact;
-    context.addIssue(`WORKSHOP_CONTACT is "${value}". Write an e-mail address, a telephone number, or both with a comma between them.`);
+    context.addIssue("WORKSHOP_CONTACT can't be read. Write an e-mail address, a telephone number, or both with a comma between them.");
     return z.NEVER;
   }),
   WORKSHOP_TIME_ZONE: text.transform((value, context) => {

@@ -57,7 +57,9 @@ export function Lines({ form, name, rows = 2, autoComplete, max, ...words }: Wor
 }
 
 export function Tick({ form, name, label }: { form: FormState; name: TickName; label: ReactNode }) {
-  return <Checkbox id={fieldId(name)} name={name} label={label} error={form.errors[name]} checked={form.draft[name]} onChange={(event) => draftStore.set({ [name]: event.target.checked })} />;
+  // the ticked line and the days that it names belong together
+  const days = name === "consentRead" ? { keepDays: form.draft.keepDays } : {};
+  return <Checkbox id={fieldId(name)} name={name} label={label} error={form.errors[name]} checked={form.draft[name]} onChange={(event) => draftStore.set({ ...days, [name]: event.target.checked })} />;
 }
 
 /** One of several; the first carries the id that the list of open fields leads to. */

@@ -53,7 +53,7 @@ test("a customer asks for a transfer, prints the slip, and follows the case by p
     await expect(open).toBeFocused();
     await expect(open.getByText(/^\d+ things are open\.$/)).toBeVisible();
     await open.getByRole("link", { name: "Type the board number, or tick below that you can’t see it." }).click();
-    await expect(page.getByLabel("Board number").first()).toBeFocused();
+    await expect(page.getByRole("textbox", { name: "Board number" })).toBeFocused();
     await look(page, "request-open");
   });
 
@@ -61,7 +61,7 @@ test("a customer asks for a transfer, prints the slip, and follows the case by p
     await page.getByLabel("E-mail for the link and the summary").fill("orla.fen@fenworks,example");
     await page.getByRole("button", { name: `Use ${email}` }).click();
     await expect(page.getByLabel("E-mail for the link and the summary")).toHaveValue(email);
-    await page.getByLabel("Part number on the enclosure").fill("PN 4471-0093-8");
+    await page.getByRole("textbox", { name: "Part number on the enclosure" }).fill("PN 4471-0093-8");
     await expect(page.getByText("Look twice at 8 and B.")).toBeVisible();
   });
 

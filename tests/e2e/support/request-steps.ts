@@ -14,9 +14,9 @@ export async function fillRequest(page: Page, wish: Wish): Promise<void> {
   await page.getByLabel("Name", { exact: true }).fill(wish.name);
   await page.getByLabel("E-mail for the link and the summary").fill(wish.email);
   await page.getByLabel("Address the parcel goes back to").fill("3 Mill Row\nFennick ZZ0 4AA");
-  await page.getByLabel("Part number on the enclosure").fill(wish.partNumber);
-  if (wish.serial) await page.getByLabel("Serial number").fill(wish.serial);
-  if (wish.boardNumber) await page.getByLabel("Board number", { exact: false }).first().fill(wish.boardNumber);
+  await page.getByRole("textbox", { name: "Part number on the enclosure" }).fill(wish.partNumber);
+  if (wish.serial) await page.getByRole("textbox", { name: "Serial number" }).fill(wish.serial);
+  if (wish.boardNumber) await page.getByRole("textbox", { name: "Board number" }).fill(wish.boardNumber);
   else await page.getByLabel(/^I can’t see the board number/).check();
   await page.getByLabel("Yes, and I send it along with its small board").check();
   await page.getByRole("radiogroup", { name: "Is a password or encryption on it?" }).getByLabel("I don’t know").check();
