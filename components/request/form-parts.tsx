@@ -3,6 +3,7 @@
 import type { ReactNode } from "react";
 import { Checkbox } from "@/components/ui/checkbox";
 import { Input } from "@/components/ui/input";
+import { Mark } from "@/components/ui/mark";
 import { TextArea } from "@/components/ui/text-area";
 import { lookAlikeHint } from "@/lib/core/look-alikes";
 import { type Draft, draftStore, type Errors, type TextName, type TickName } from "./draft";
@@ -72,7 +73,7 @@ export function Choice<T extends string>({ form, name, of, words, title, columns
       <div className={columns ? "rq-grid !gap-y-2" : "grid gap-2"}>
         {of.map((value, i) => <Checkbox key={value} type="radio" id={i === 0 ? fieldId(name) : undefined} name={name} value={value} label={words[value]} checked={form.draft[name] === value} onChange={() => draftStore.set({ [name]: value })} />)}
       </div>
-      {error ? <span id={below} role="alert" className="text-t2 font-medium text-block">{error}</span> : null}
+      {error ? <span id={below} role="alert" className="flex gap-[7px] text-t2 font-medium text-block"><Mark kind="block" className="mt-px" /><span>{error}</span></span> : null}
     </div>
   );
 }
