@@ -12,12 +12,12 @@ function Combs({ term, text, least }: { term: string; text: string | null | unde
   const long = typed.length > MOST_BOXES;
   const cells = [...typed, ...Array<string>(Math.max(0, least - typed.length)).fill("")];
   return (
-    <div>
+    <dl>
       <dt>{term}</dt>
       {long ? <dd className="slip-write"><span className="cut cut-1">{text}</span></dd> : (
         <dd className="slip-combs"><span className="sr-only">{text ?? "to be filled in"}</span>{cells.map((cell, i) => <span key={i} aria-hidden="true" className={cell === " " || cell === "-" ? "gap" : ""}>{cell}</span>)}</dd>
       )}
-    </div>
+    </dl>
   );
 }
 
@@ -49,11 +49,11 @@ export function Slip({ view }: { view: RequestSlipView }) {
       </dl>
       <section className="grid gap-[11px]">
         <h2 className="!mb-0">What is in the parcel</h2>
-        <dl className="grid gap-[11px]">
+        <div className="grid gap-[11px]">
           <Combs term="Part number on the enclosure" text={a.partNumber} least={12} />
           <Combs term="Serial number" text={a.serial} least={15} />
           <div className="flex flex-wrap gap-x-7 gap-y-[11px]"><Combs term="Board number" text={a.boardNumber} least={12} /><Combs term="Revision" text={a.boardRevision} least={3} /></div>
-        </dl>
+        </div>
         <p className="text-ink-2">Correct anything that’s wrong by hand. Write <b className="font-mono text-ink">0</b> (zero) with a stroke, <b className="font-mono text-ink">O</b> (letter) without; cross the stem of <b className="font-mono text-ink">8</b> clearly, give <b className="font-mono text-ink">B</b> and <b className="font-mono text-ink">D</b> square backs.</p>
       </section>
       <div className="slip-columns">

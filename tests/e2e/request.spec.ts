@@ -162,9 +162,13 @@ test("a refusal by the server stays with what was typed, and a network that drop
   const { page } = await openDesk(browser);
   await page.goto("/request");
   await fillRequest(page, { name: "Pim Oder", email: "pim@fenworks.example", partNumber: "PN 1" });
+  const tooMany = { type: "about:blank", title: "Too many requests", status: 429, detail: "Many requests came from where you are within the last hour. Try again in 20 minutes, or phone us: 01632 960 100." };
+  await page.route("**/api/requests", (route) => route.fulfill({ status: 429, contentType: "application/problem+json", body: JSON.stringify(tooMany) }));
   await page.getByRole("button", { name: "Send the request" }).click();
-  await expect(page.getByText("That was faster than anyone types. Wait a few seconds, then send again.")).toBeVisible();
+  await expect(page.getByRole("group", { name: "What is open" })).toBeFocused();
+  await expect(page.getByText(tooMany.detail)).toBeVisible();
   await expect(page.getByLabel("Name", { exact: true })).toHaveValue("Pim Oder");
+  await page.unroute("**/api/requests");
   // the answer gets lost on its way: the same request is sent again with the same key
   let first = true;
   let made = "";
