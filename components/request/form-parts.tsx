@@ -68,7 +68,7 @@ export function Choice<T extends string>({ form, name, of, words, title, columns
   const error = form.errors[name];
   const below = error ? `${fieldId(name)}-below` : undefined;
   return (
-    <div role="radiogroup" aria-labelledby={title ? `${fieldId(name)}-title` : undefined} aria-label={title ? undefined : "What happened"} aria-describedby={below} aria-invalid={error ? true : undefined} className="grid gap-2">
+    <div role="radiogroup" aria-labelledby={title ? `${fieldId(name)}-title` : undefined} aria-label={title ? undefined : "What happened"} aria-describedby={below} aria-invalid={error ? true : undefined} className="grid content-start gap-2">
       {title ? <span id={`${fieldId(name)}-title`} className="text-t2 leading-5 font-semibold">{title}</span> : null}
       <div className={columns ? "rq-grid !gap-y-2" : "grid gap-2"}>
         {of.map((value, i) => <Checkbox key={value} type="radio" id={i === 0 ? fieldId(name) : undefined} name={name} value={value} label={words[value]} checked={form.draft[name] === value} onChange={() => draftStore.set({ [name]: value })} />)}

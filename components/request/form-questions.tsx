@@ -51,7 +51,7 @@ export function TheBoard({ form }: Asked) {
           wayOut={<Button variant="text" size="small" className="!min-h-0 !py-0" onClick={() => draftStore.set({ boardHidden: true })}>I can’t see it</Button>} />
         <Line form={form} name="boardRevision" label="Revision, next to it" number max={60} />
         <div className="whole"><Tick form={form} name="boardHidden" label={<>I can’t see the board number without taking the board off. <span className="text-ink-2">That’s fine; leave it on.</span></>} /></div>
-        <Choice form={form} name="enclosure" of={ENCLOSURES} words={ENCLOSURE_WORDS} title="Was the drive in an enclosure with a cable of its own?" />
+        <Choice form={form} name="enclosure" of={ENCLOSURES} words={ENCLOSURE_WORDS} title="Was the drive in an enclosure?" />
         <Choice form={form} name="lock" of={LOCKS} words={LOCK_WORDS} title="Is a password or encryption on it?" />
         <p className="whole text-t2 text-ink-2">Send the enclosure with its small board, too: it may hold the key to your data. Please don’t write the password anywhere here; we don’t need it.</p>
       </div>

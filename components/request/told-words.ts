@@ -12,7 +12,8 @@ export interface ToldGroup {
   lines: Told[];
 }
 
-const NONE = "not given";
+/** for an answer that was left out */
+export const NONE = "not given";
 
 /** Every answer as it was typed, in the order of the form: for the customer's page and the desk. */
 export function toldGroups(a: RequestAnswers): ToldGroup[] {
