@@ -45,10 +45,12 @@ function Camera({ onFound, onClose, onTrouble }: { onFound(text: string): void; 
   );
 }
 
-/** The number, typed, from a handheld scanner (which types and sends Enter), or by the camera. */
+/**
+ * The number, typed, from a handheld scanner (which types and sends Enter), or by the camera. The field keeps its own value:
+ * a scanner is done before the page is awake, and the form then goes the plain way.
+ */
 export function ScanBox({ number = "", trouble: given }: { number?: string; trouble?: ReactNode }) {
   const router = useRouter();
-  const [typed, setTyped] = useState(number);
   const [camera, setCamera] = useState(false);
   const [trouble, setTrouble] = useState<string | null>(null);
   const go = (text: string) => router.push(`/receive?number=${encodeURIComponent(text.trim())}`);
@@ -57,19 +59,19 @@ export function ScanBox({ number = "", trouble: given }: { number?: string; trou
     setTrouble(problem && `The code says “${text.slice(0, 60)}”. ${problem}`);
     if (problem) return;
     setCamera(false);
-    setTyped(text);
     go(text);
   };
   return (
     <div className="grid gap-4">
       <form action="/receive" method="get" noValidate className="flex flex-wrap items-end gap-x-3 gap-y-3" onSubmit={(event) => {
         event.preventDefault();
-        const problem = problemOf(typed);
+        const text = String(new FormData(event.currentTarget).get("number") ?? "");
+        const problem = problemOf(text);
         setTrouble(problem);
-        if (!problem) go(typed);
+        if (!problem) go(text);
       }}>
-        <Input label="Case number" name="number" mono autoFocus autoComplete="off" autoCapitalize="characters" spellCheck={false} enterKeyHint="go" className="w-[260px] max-w-full" hint="26-0183 or 26-0183.4" value={typed}
-          onFocus={(event) => event.target.select()} onChange={(event) => { setTyped(event.target.value); setTrouble(null); }} />
+        <Input label="Case number" name="number" mono autoFocus autoComplete="off" autoCapitalize="characters" spellCheck={false} enterKeyHint="go" className="w-[260px] max-w-full" hint="26-0183 or 26-0183.4" defaultValue={number}
+          onFocus={(event) => event.target.select()} onChange={() => setTrouble(null)} />
         <div className="flex flex-wrap gap-3 self-start pt-6"><Button type="submit" variant="lead">Find the case</Button>{camera ? null : <Button onClick={() => { setTrouble(null); setCamera(true); }}>Scan with the camera</Button>}</div>
       </form>
       {camera ? <Camera onFound={found} onClose={() => setCamera(false)} onTrouble={(sentence) => { setCamera(false); setTrouble(sentence); }} /> : null}

@@ -1,5 +1,5 @@
 import { execFileSync } from "node:child_process";
-import { mkdirSync, readdirSync } from "node:fs";
+import { mkdirSync, readdirSync, rmSync } from "node:fs";
 import path from "node:path";
 import { expect, type Page } from "@playwright/test";
 import { type PaperName, PAPERS } from "@/lib/core/paper";
@@ -14,6 +14,9 @@ export interface Printout {
   pictures: string[];
   text: string;
 }
+
+/** `name-1.png`, `name-2.png`, in order. */
+const pictured = (folder: string, name: string) => readdirSync(folder).filter((one) => one.startsWith(`${name}-`) && /^\d+\.png$/.test(one.slice(name.length + 1))).sort();
 
 /** Prints what the page shows as a PDF of the page's own paper, holds pages and size against it, and pictures each page. */
 export async function printed(page: Page, paper: PaperName, folder: string, name: string, pages?: number): Promise<Printout> {
@@ -32,8 +35,9 @@ export async function printed(page: Page, paper: PaperName, folder: string, name
     expect(Math.abs(h - height), `${name} is ${h} mm high`).toBeLessThan(SLACK_MM);
   }
   if (pages !== undefined) expect(count, `pages of ${name}`).toBe(pages);
+  for (const old of pictured(out, name)) rmSync(path.join(out, old));
   execFileSync("pdftoppm", ["-r", paper.includes("x") ? "300" : "150", "-png", file, path.join(out, name)]);
-  const pictures = readdirSync(out).filter((one) => one.startsWith(`${name}-`) && one.endsWith(".png")).sort().map((one) => path.join(out, one));
+  const pictures = pictured(out, name).map((one) => path.join(out, one));
   expect(pictures).toHaveLength(count);
   return { pages: count, pictures, text: execFileSync("pdftotext", ["-layout", file, "-"], { encoding: "utf8" }) };
 }
