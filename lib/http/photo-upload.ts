@@ -3,7 +3,6 @@ import type { PhotoSubject } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { photosOf } from "@/lib/queries/photos";
 import { handler } from "./handler";
-import { othersThan } from "./others-than";
 import { PHOTOS, type Upload } from "./upload";
 import { uploadHandler } from "./upload-handler";
 
@@ -16,13 +15,11 @@ export function photoFilesOf(upload: Upload): PhotoFile[] {
   return upload.files.map((file, i) => ({ ...file, caption: captions[i] ?? null }));
 }
 
-/** The route of one kind of thing: its photos, and more of them. */
-export function photoRoute(type: PhotoSubject) {
-  return {
-    GET: handler({}, async ({ actor, params }) => ({ photos: await photosOf(actor, type, params.id) })),
-    POST: uploadHandler({
-      status: 201, changes: true, limits: PHOTOS, before: async (actor, id) => void (await requirePhotoPlace(actor, type, id)),
-    }, ({ actor, id, upload }) => addPhotos(actor, type, id, photoFilesOf(upload))),
-    ...(({ PUT, PATCH, DELETE, OPTIONS }) => ({ PUT, PATCH, DELETE, OPTIONS }))(othersThan("GET", "POST")),
-  };
-}
+/** The photos of a thing, for the routes of each kind of thing. */
+export const photoList = (type: PhotoSubject) => handler({}, async ({ actor, params }) => ({ photos: await photosOf(actor, type, params.id) }));
+
+/** More of them: who may is asked before any byte is taken. */
+export const photoUpload = (type: PhotoSubject) => uploadHandler(
+  { status: 201, changes: true, limits: PHOTOS, before: async (actor, id) => void (await requirePhotoPlace(actor, type, id)) },
+  ({ actor, id, upload }) => addPhotos(actor, type, id, photoFilesOf(upload)),
+);

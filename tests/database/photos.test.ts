@@ -267,7 +267,8 @@ describe("stored photos are read again, and are never chips", () => {
   it("a damaged one is found by the scrub, told in the log of its drive, and comes back when it is sent again", async () => {
     const { technician, chip } = await bench();
     const bytes = await picture();
-    const [view, lone] = [await add(technician, "chip", chip.chipId, bytes), await add(technician, "shelf-board", (await shelfBoard(technician)).id, await picture())];
+    const stock = await picture();
+    const [view, lone] = [await add(technician, "chip", chip.chipId, bytes), await add(technician, "shelf-board", (await shelfBoard(technician)).id, stock)];
     const changed = Buffer.from(bytes);
     changed[100] ^= 1;
     for (const [photo, content] of [[view, changed], [lone, Buffer.from("gone")]] as const) {
@@ -286,6 +287,8 @@ describe("stored photos are read again, and are never chips", () => {
     await add(technician, "board", chip.originalBoardId, bytes);
     expect((await photosOf(technician, "chip", chip.chipId))[0].sound).toBe(true);
     expect((await openOriginal(technician, view.id)).sizeBytes).toBe(bytes.length);
+    await add(technician, "board", chip.originalBoardId, stock);
+    expect((await Image.findByPk(hex(stock)))?.state).toBe("sound");
   });
 
   it("finding a photo's digest shows no read, and a read with a photo's bytes is judged like any other", async () => {

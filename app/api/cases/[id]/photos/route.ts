@@ -1,3 +1,6 @@
-import { photoRoute } from "@/lib/http/photo-upload";
+import { othersThan } from "@/lib/http/others-than";
+import { photoList, photoUpload } from "@/lib/http/photo-upload";
 
-export const { GET, POST, PUT, PATCH, DELETE, OPTIONS } = photoRoute("case");
+export const GET = photoList("case");
+export const POST = photoUpload("case");
+export const { PUT, PATCH, DELETE, OPTIONS } = othersThan("GET", "POST");
