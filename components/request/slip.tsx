@@ -78,10 +78,10 @@ export function Slip({ view }: { view: RequestSlipView }) {
         <h2>Filled in at the bench</h2>
         <dl className="slip-four">{["Received, day and time", "Seal as sent?", "Enclosure, small board here?", "By"].map((term) => <div key={term}><dt>{term}</dt><dd className="slip-write" /></div>)}</dl>
       </section>
-      <section><h2>Anything the bench should know</h2><div className="slip-write" /><div className="slip-write" /></section>
+      <section className="slip-know"><h2>Anything the bench should know</h2><div className="slip-write" /><div className="slip-write" /></section>
       <div className="slip-cut"><span>cut here, stick on the outside</span></div>
       <section className="slip-to" aria-label="Address label">
-        <address>{[workshop, ...address].map((one) => <div key={one}>{one}</div>)}{address.length === 0 ? <><div className="slip-write" /><div className="slip-write" /></> : null}</address>
+        <address className={address.length > 3 ? "!text-t4 !leading-5" : ""}>{[workshop, ...address].map((one, i) => <div key={i}>{one}</div>)}{address.length === 0 ? <><div className="slip-write" /><div className="slip-write" /></> : null}</address>
         <CaseNumber refChecked={refChecked} above="Case" below="Fragile: magnetic storage" />
       </section>
     </main>
