@@ -13,12 +13,13 @@ export default defineConfig({
   test: {
     environment: "node",
     globalSetup: ["tests/support/build-worker.ts"],
-    include: ["tests/**/*.test.ts"],
-    exclude: ["tests/long/**", "node_modules/**"],
     pool: "forks",
-    // database tests share one database: one file after the other
-    fileParallelism: false,
-    testTimeout: 30_000,
+    testTimeout: 60_000,
     hookTimeout: 60_000,
+    projects: [
+      { extends: true, test: { name: "rules", include: ["tests/{core,components,scripts}/**/*.test.ts"], sequence: { groupOrder: 0 } } },
+      // these share one database: one file after the other
+      { extends: true, test: { name: "database", include: ["tests/database/**/*.test.ts"], fileParallelism: false, sequence: { groupOrder: 1 } } },
+    ],
   },
 });
