@@ -53,8 +53,9 @@ export async function warningsOf(actor: Actor, drive: Pick<Drive, "id" | "caseId
 
 /** The same while the label is typed: nothing is stored by asking. */
 export async function warningsWhileTyping(actor: Actor, caseId: string, { partNumber, serial, except }: DriveLook): Promise<{ warnings: DriveWarning[] }> {
-  allow(actor, "drive.record");
+  // first whether it is there for them: what is refused must not tell of a case outside an auditor's list
   await caseFor(actor, caseId);
+  allow(actor, "drive.record");
   if (!serial) return { warnings: [] };
   return { warnings: driveWarnings({ partNumber: partNumber ?? null, serial }, caseId, await likeSerial(actor, serial, except ?? null)) };
 }

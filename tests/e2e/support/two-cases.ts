@@ -21,7 +21,7 @@ async function partsOf(ready: Ready, approvalId: string): Promise<CaseParts> {
   const ids = {
     cases: ready.caseId, drives: ready.driveId, boards: ready.boardId, chips: ready.chipId, reads: ready.reads[0].id, approvals: approvalId, checks: ready.driveId,
     // a link needs a verified case, a hand-over two people: what isn't there is asked for, which an auditor may not either way
-    shares: NEVER, "hand-overs": NEVER,
+    shares: NEVER, "hand-overs": NEVER, requests: NEVER, photos: NEVER,
     "shelf-boards": shelf.id,
   };
   return {
