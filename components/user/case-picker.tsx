@@ -25,7 +25,7 @@ export function CasePicker({ chosen, error, onChange, onOpen }: { chosen: readon
   const [said, setSaid] = useState("");
   const input = useRef<HTMLInputElement>(null);
   const listId = useId();
-  const { data, error: away } = useSWR<ListView<CaseRow>>(open ? `/api/cases?${new URLSearchParams({ q, sort: "received", order: "desc", pageSize: String(SHOWN + chosen.length) })}` : null, fetcher, { keepPreviousData: true });
+  const { data, error: away, isLoading } = useSWR<ListView<CaseRow>>(open ? `/api/cases?${new URLSearchParams({ q, sort: "received", order: "desc", pageSize: String(SHOWN + chosen.length) })}` : null, fetcher, { keepPreviousData: true });
   const hits = (data?.items ?? []).filter((one) => !chosen.some((c) => c.id === one.id)).slice(0, SHOWN);
   const current = open && hits.length > 0 ? Math.min(at, hits.length - 1) : -1;
 
@@ -50,7 +50,8 @@ export function CasePicker({ chosen, error, onChange, onOpen }: { chosen: readon
     event.preventDefault();
     if (!open) return show(true);
     if (event.key === "Enter") {
-      if (current >= 0) add(hits[current]);
+      // while the hits of what was typed before still stand there, Enter takes none of them
+      if (current >= 0 && !isLoading) add(hits[current]);
       return;
     }
     setAt((current + (event.key === "ArrowDown" ? 1 : hits.length - 1)) % Math.max(1, hits.length));
