@@ -5,7 +5,6 @@ import { describe } from "@/lib/core/custody-actions";
 import { keyOrder } from "@/lib/core/keyring";
 import { type Actor, type Stage, WORKSHOP_CHAIN } from "@/lib/core/words";
 import { driveFor } from "@/lib/commands/place";
-import { recordChainCheck } from "@/lib/commands/record-chain-check";
 import { allow } from "@/lib/commands/refuse";
 import type { CustodyCheckView, CustodyEntryView, PersonView } from "@/lib/views";
 import { connection, CustodyEntry, CustodyHead, type Transaction } from "@/models";
@@ -93,11 +92,8 @@ export async function custodyOfDrive(actor: Actor, driveId: string): Promise<{ e
 export async function custodyCheckOfDrive(actor: Actor, driveId: string): Promise<CustodyCheckView> {
   allow(actor, "custody.read");
   await driveFor(actor, driveId);
-  const check = await checkCustody(driveId);
-  await recordChainCheck(driveId, check);
-  return check;
+  return checkCustody(driveId);
 }
-
 
 /** The chain of what belongs to no drive: accounts, policy, keys. */
 export async function workshopLog(actor: Actor): Promise<{ entries: CustodyEntryView[] }> {

@@ -4,6 +4,7 @@ import { checkChains } from "@/lib/commands/check-chains";
 import { recordBoard } from "@/lib/commands/record-board";
 import { recordChainCheck } from "@/lib/commands/record-chain-check";
 import { WORKSHOP_CHAIN } from "@/lib/core/words";
+import { checkChain } from "@/lib/commands/check-chain";
 import { checkCustody, custodyCheckOfDrive } from "@/lib/queries/custody";
 import { ChainCheck, CustodyHead, Mail } from "@/models";
 import { makeChip, makeUser } from "../support/factory";
@@ -72,11 +73,13 @@ describe("the daily check of every chain", () => {
     expect(await mailsTo(lead.email)).toHaveLength(2);
   });
 
-  it("counts whoever asks for a drive's check as a check too", async () => {
+  it("counts an auditor's check as one, and a mere look as none", async () => {
     const auditor = await makeUser("auditor");
     const { driveId } = await makeChip(await makeUser("technician"));
     expect(await ChainCheck.findByPk(driveId)).toBeNull();
-    const check = await custodyCheckOfDrive(auditor, driveId);
+    await custodyCheckOfDrive(auditor, driveId);
+    expect(await ChainCheck.findByPk(driveId)).toBeNull();
+    const check = await checkChain(auditor, driveId);
     expect(await row(driveId)).toMatchObject({ entries: check.entries, findings: 0 });
   });
 
