@@ -36,6 +36,8 @@ async function stored(path: string, bytes: Uint8Array, name?: string): Promise<P
 const listOf = async (path: string) => (await call("GET", `/api/${path}/photos`, { token: mira })).json<{ photos: PhotoView[] }>().photos;
 
 test("limits hold while the bytes come, and nothing is left of what was refused", async () => {
+  // a server that a test before this one killed may have left pieces of its own
+  const before = incoming();
   const drive = `drives/${pair.driveId}`;
   const good = await picture();
   const large = new Uint8Array(20 * MIB + 1);
@@ -48,7 +50,7 @@ test("limits hold while the bytes come, and nothing is left of what was refused"
   expectProblem(await send(drive, [{ bytes: good }], { fields: [["caption", "a"], ["caption", "b"]] }), 422, /caption for every file or for none/);
   expectProblem(await call("POST", `/api/${drive}/photos`, { token: mira, json: {} }), 415, /multipart/);
   expect(await listOf(drive)).toEqual([]);
-  expect(incoming()).toEqual([]);
+  expect(incoming()).toEqual(before);
 });
 
 test("who may add is asked before any byte is taken, and a repeated call stores nothing twice", async () => {
