@@ -1,4 +1,3 @@
-import { stringify } from "csv-stringify/sync";
 import { compareIfStored, type Compared } from "@/lib/commands/compare-images";
 import { chipFor, readFor } from "@/lib/commands/place";
 import { allow } from "@/lib/commands/refuse";
@@ -13,6 +12,7 @@ import { AppError } from "@/lib/errors";
 import type { ComparedReads, ComparisonView } from "@/lib/views";
 import { type Chip, Image, Read } from "@/models";
 import { imageWindow, stateNow } from "@/storage";
+import { type CsvColumn, csvHeader, csvLines } from "./csv";
 import { stripImage } from "./chip-summary";
 import { people } from "./people";
 import { readView } from "./read-view";
@@ -100,11 +100,13 @@ export async function differencesCsv(actor: Actor, chipId: string, asked: Asked)
   const [a, b, c] = rows;
   const three = c ? (await threeWayOf([a, b, c], chip.sizeBytes)).three : null;
   const found: { parts: readonly (Range & { alone?: Third | null })[]; truncated: boolean } = three ?? await pairOf([a, b], chip.sizeBytes).then(({ ranges, truncated }) => ({ parts: ranges, truncated }));
-  const records = found.parts.map(({ start, length, alone }) => [
-    address(start, chip.sizeBytes), address(start + length - 1, chip.sizeBytes), length, ...(alone === undefined ? [] : [alone === null ? "no two agree" : nameOf(rows[alone])]),
-  ]);
-  const head = ["First address", "Last address", "Bytes", ...(three ? ["Stands alone"] : [])];
-  const text = stringify([head, ...records], { record_delimiter: "windows", escape_formulas: true });
+  const columns: CsvColumn<(typeof found.parts)[number]>[] = [
+    { header: "First address", cell: ({ start }) => address(start, chip.sizeBytes) },
+    { header: "Last address", cell: ({ start, length }) => address(start + length - 1, chip.sizeBytes) },
+    { header: "Bytes", cell: ({ length }) => length },
+    ...(three ? [{ header: "Stands alone", cell: ({ alone }: { alone?: Third | null }) => (alone === null || alone === undefined ? "no two agree" : nameOf(rows[alone])) }] : []),
+  ];
+  const text = csvHeader(columns) + csvLines(columns, found.parts);
   const numbers = rows.map((r) => r.number).join("-");
   return { text, fileName: `${safeName(chip.designator)}-${asked.stage}-${numbers}-${found.truncated ? "first-differences" : "differences"}.csv` };
 }
