@@ -47,7 +47,8 @@ function Camera({ onFound, onClose, onTrouble }: { onFound(text: string): void; 
 
 /**
  * The number, typed, from a handheld scanner (which types and sends Enter), or by the camera. The field keeps its own value:
- * a scanner is done before the page is awake, and the form then goes the plain way.
+ * a scanner is done before the page is awake, and the form then goes the plain way. React plays the focus again when it
+ * wakes: selecting then would let the rest of a scan write over its beginning.
  */
 export function ScanBox({ number = "", trouble: given }: { number?: string; trouble?: ReactNode }) {
   const router = useRouter();
@@ -71,7 +72,7 @@ export function ScanBox({ number = "", trouble: given }: { number?: string; trou
         if (!problem) go(text);
       }}>
         <Input label="Case number" name="number" mono autoFocus autoComplete="off" autoCapitalize="characters" spellCheck={false} enterKeyHint="go" className="w-[260px] max-w-full" hint="26-0183 or 26-0183.4" defaultValue={number}
-          onFocus={(event) => event.target.select()} onChange={() => setTrouble(null)} />
+          onFocus={(event) => { if (event.target.value === number) event.target.select(); }} onChange={() => setTrouble(null)} />
         <div className="flex flex-wrap gap-3 self-start pt-6"><Button type="submit" variant="lead">Find the case</Button>{camera ? null : <Button onClick={() => { setTrouble(null); setCamera(true); }}>Scan with the camera</Button>}</div>
       </form>
       {camera ? <Camera onFound={found} onClose={() => setCamera(false)} onTrouble={(sentence) => { setCamera(false); setTrouble(sentence); }} /> : null}
