@@ -30,7 +30,7 @@ export interface Logged {
   /** ids of revoked approvals */
   revoked: Set<string>;
   /** the entries themselves, by the id of what they are about */
-  told: { reads: Map<string, Told>; counts: Map<string, Told>; approvals: Map<string, Told>; revocations: Map<string, Told>; transfers: Map<string, Told> };
+  told: { reads: Map<string, Told>; counts: Map<string, Told>; approvals: Map<string, Told>; revocations: Map<string, Told>; transfers: Map<string, Told>; photos: Map<string, Told>; handOvers: Map<string, Told>; confirmations: Map<string, Told>; shares: Map<string, Told>; withdrawals: Map<string, Told> };
   /** accounts by id, as their entries leave them */
   users: Map<string, { seq: number; name: string; role: string; off: boolean }>;
   /** drives, boards and chips by id, as their entries leave them: plain values by the name of their column */
@@ -44,7 +44,7 @@ export interface Logged {
 export function newLogged(): Logged {
   return {
     reads: new Map(), approvals: new Map(), revoked: new Set(), users: new Map(), policy: new Map(), things: new Map(), pairs: new Map(),
-    told: { reads: new Map(), counts: new Map(), approvals: new Map(), revocations: new Map(), transfers: new Map() },
+    told: { reads: new Map(), counts: new Map(), approvals: new Map(), revocations: new Map(), transfers: new Map(), photos: new Map(), handOvers: new Map(), confirmations: new Map(), shares: new Map(), withdrawals: new Map() },
   };
 }
 
@@ -62,6 +62,7 @@ const storedRead: Noter = (logged, id, told) => {
   logged.reads.set(id, { chain: told.chain, seq: told.seq, sha256, sizeBytes, crc32 });
   logged.told.reads.set(id, told);
 };
+const confirmed: Noter = (logged, _, told) => void logged.told.confirmations.set(String(told.facts.handOver), told);
 const count: Noter = (logged, id, told) => void logged.told.counts.set(id, told);
 
 function changedUser(logged: Logged, id: string, told: Told): void {
@@ -110,6 +111,13 @@ const NOTED: Record<string, Noter> = {
   },
   "composite.made": storedRead,
   "transfer.recorded": (logged, id, told) => void logged.told.transfers.set(id, told),
+  "photo.added": (logged, id, told) => void logged.told.photos.set(id, told),
+  // their subject is the item
+  "item.handed-over": (logged, _, told) => void logged.told.handOvers.set(String(told.facts.handOver), told),
+  "item.received": confirmed,
+  "item.not-received": confirmed,
+  "summary.sent": (logged, id, told) => void logged.told.shares.set(id, told),
+  "share.withdrawn": (logged, id, told) => void logged.told.withdrawals.set(id, told),
   "drive.recorded": recorded,
   "board.recorded": recorded,
   "chip.recorded": recorded,

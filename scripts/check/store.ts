@@ -8,6 +8,7 @@ import { checkChains } from "./chains";
 import { checkImages, checkReads, countUnknownFiles, type StoredImage, storedImages } from "./images";
 import { findPlaces, type Places } from "./places";
 import { checkRecord } from "./record";
+import { checkAround } from "./record-around";
 import { checkThings } from "./record-places";
 import type { Damage, StoreReport } from "./report";
 import { sealRows } from "./seal-rows";
@@ -31,7 +32,7 @@ export async function lookAtDatabase(tx: Transaction, keyInFolder: string | null
   const images = await storedImages(tx);
   return {
     report: { ...report, seals, reads: places.reads.length }, places, images,
-    damage: [...damage, ...atSeals, ...checkReads(images, places, logged), ...(await checkRecord(tx, places, logged)), ...(await checkThings(tx, places, logged))],
+    damage: [...damage, ...atSeals, ...checkReads(images, places, logged), ...(await checkRecord(tx, places, logged)), ...(await checkThings(tx, places, logged)), ...(await checkAround(tx, places, logged))],
     here: { ledger, known, images: new Set(images.map((image) => image.sha256)) },
   };
 }

@@ -1,5 +1,6 @@
 import { createHash } from "node:crypto";
-import { chmodSync, copyFileSync, linkSync, readFileSync, renameSync, rmSync, symlinkSync, truncateSync, unlinkSync, writeFileSync } from "node:fs";
+import { chmodSync, copyFileSync, linkSync, mkdirSync, readFileSync, renameSync, rmSync, symlinkSync, truncateSync, unlinkSync, writeFileSync } from "node:fs";
+import path from "node:path";
 import { imageFile } from "@/tests/support/tamper";
 import type { Cell } from "./cells";
 import type { Scene } from "./scene";
@@ -42,6 +43,7 @@ function together(): Cell {
     attacker: "A6", name: "file, image's row and read's row together (with A3)", row: "",
     async run(db, scene) {
       const file = fileOf(content);
+      mkdirSync(path.dirname(file), { recursive: true });
       copyFileSync(fileOf(scene.a.image), file);
       chmodSync(file, 0o640);
       writeFileSync(file, content);

@@ -113,4 +113,18 @@ function otherOps(): Operation[] {
   ];
 }
 
-export const recordOperations = (): Operation[] => [...sealOps(), ...decisionOps(), ...otherOps()];
+function aroundOps(): Operation[] {
+  const handOver = (name: string, what: string, which: "confirmed" | "open", values: (scene: Scene) => unknown[] = () => []) => plain(`hand-over: ${name}`, `UPDATE hand_overs SET ${what} WHERE id = ?`, (scene) => [...values(scene), scene.handOvers[which]]);
+  const photo = (name: string, what: string, values: (scene: Scene) => unknown[] = () => []) => plain(`photo: ${name}`, `UPDATE photos SET ${what} WHERE subject_id = ?`, (scene) => [...values(scene), scene.a.chip.driveId]);
+  const link = (name: string, what: string) => plain(`customer's link: ${name}`, `UPDATE shares SET ${what} WHERE case_id = ?`, (scene) => [scene.a.chip.caseId]);
+  return [
+    handOver("given to another", "to_person = 'Nobody'", "confirmed"), handOver("another seal number", "seal_number = 'S-1'", "confirmed"), handOver("confirmed by another", "confirmed_by = ?", "confirmed", (scene) => [scene.admin.id]),
+    handOver("confirmed without an entry", "received = 1, confirmed_by = given_by, confirmed_at = UTC_TIMESTAMP(6)", "open"), handOver("open again", "received = NULL, confirmed_by = NULL, confirmed_at = NULL", "confirmed"),
+    plain("hand-over: delete", "DELETE FROM hand_overs WHERE id = ?", (scene) => [scene.handOvers.open]),
+    photo("of another drive", "subject_id = ?", (scene) => [scene.b.chip.driveId]), photo("another picture", "sha256 = ?", (scene) => [imageOf(scene)]), photo("another caption", "caption = 'Seal whole'"),
+    plain("photo: delete", "DELETE FROM photos WHERE subject_id = ?", (scene) => [scene.a.chip.driveId]),
+    link("ends later", "expires_at = expires_at + INTERVAL 1 YEAR"), link("withdrawn without an entry", "withdrawn_at = UTC_TIMESTAMP(6)"),
+  ];
+}
+
+export const recordOperations = (): Operation[] => [...sealOps(), ...decisionOps(), ...otherOps(), ...aroundOps()];

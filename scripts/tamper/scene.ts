@@ -1,11 +1,15 @@
 import { readFileSync, writeFileSync } from "node:fs";
 import path from "node:path";
 import * as mariadb from "mariadb";
+import { addPhotos } from "@/lib/commands/add-photos";
 import { changeUser } from "@/lib/commands/change-user";
+import { confirmHandOver } from "@/lib/commands/confirm-hand-over";
 import { correctDrive } from "@/lib/commands/correct-drive";
+import { handOverItem } from "@/lib/commands/hand-over-item";
 import { makeBundle } from "@/lib/commands/make-bundle";
 import { makeSeal } from "@/lib/commands/make-seal";
 import { revokeApproval } from "@/lib/commands/revoke-approval";
+import { sendSummary } from "@/lib/commands/send-summary";
 import { setReadAside } from "@/lib/commands/set-read-aside";
 import { witnessSeals } from "@/lib/commands/witness-seals";
 import { sealMailText } from "@/lib/mail/seal-text";
@@ -13,12 +17,16 @@ import { env } from "@/lib/env";
 import { CustodyHead } from "@/models";
 import { makeWrittenBench } from "@/tests/support/bench-steps";
 import { type Bench, freshImage, makeApprovedBench, makeReadyBench, makeUser, readsOf, store } from "@/tests/support/factory";
+import { arrivedPhoto } from "@/tests/support/photos";
+import { picture } from "@/tests/support/pictures";
 
 /** A workshop with a history, in which each attack of the matrix is tried. */
 export interface Scene {
   a: Bench & { approvalId: string; transferId: string };
   b: Bench;
   c: Bench & { approvalId: string };
+  /** of drive A: a hand-over that was confirmed, and one that is under way */
+  handOvers: { confirmed: string; open: string };
   admin: { id: string };
   /** an account whose role was changed once */
   risen: { id: string };
@@ -34,7 +42,7 @@ export interface Scene {
 export type Sql = Pick<mariadb.Connection, "query">;
 
 const TABLES = [
-  "users", "policies", "customers", "cases", "drives", "boards", "chips", "images", "transfers", "reads", "approval_requests", "approvals", "custody_heads", "custody_entries", "seals", "hand_overs", "shares",
+  "users", "policies", "customers", "cases", "drives", "boards", "chips", "images", "transfers", "reads", "approval_requests", "approvals", "custody_heads", "custody_entries", "seals", "hand_overs", "photos", "shares",
 ];
 
 /** Columns that can be written: the database makes the others itself. */
@@ -81,6 +89,9 @@ export async function makeScene(db: Sql, folder: string): Promise<Scene> {
   await store(b.technician, b.chip.chipId, "before", freshImage(), 3);
   const odd = (await readsOf(b.technician, b.chip.chipId, "before")).at(-1)!;
   await setReadAside(b.lead, odd.id, { reason: "The clip slipped." });
+  const handOvers = await goesRound(a);
+  await addPhotos(a.technician, "drive", a.chip.driveId, [await arrivedPhoto(await picture())]);
+  await sendSummary(a.lead, a.chip.caseId);
   await makeSeal(auditor, "asked");
   const bundle = path.join(folder, "case.zip");
   writeFileSync(bundle, await bytesOf(a));
@@ -97,7 +108,17 @@ export async function makeScene(db: Sql, folder: string): Promise<Scene> {
   await changeUser(admin, risen.id, { name: "Rósa Lind" });
   await dump(db, "now");
   const [last, workshopLast] = await Promise.all([a.chip.driveId, "00000000-0000-0000-0000-000000000000"].map(async (chain) => (await CustodyHead.findByPk(chain))!.seq));
-  return { a, b, c, admin, risen, last, workshopLast, old: [old], recent: { mail, bundle, witness } };
+  return { a, b, c, handOvers, admin, risen, last, workshopLast, old: [old], recent: { mail, bundle, witness } };
+}
+
+/** Drive A is given from hand to hand, and its board is on its way. */
+async function goesRound({ technician, lead, chip }: Bench): Promise<Scene["handOvers"]> {
+  const give = (item: { type: "drive" | "board"; id: string }) => handOverItem(technician, chip.driveId, {
+    item, from: { person: technician.name, place: "Bench 2" }, to: { person: lead.name, place: "Safe 1", userId: lead.id }, condition: "In its bag, seal unbroken", sealNumber: "S-4411",
+  });
+  const confirmed = (await give({ type: "drive", id: chip.driveId })).id;
+  await confirmHandOver(lead, confirmed, { received: true });
+  return { confirmed, open: (await give({ type: "board", id: chip.originalBoardId })).id };
 }
 
 export async function bytesOf({ lead, chip }: Bench): Promise<Buffer> {

@@ -22,12 +22,12 @@ vi.setConfig({ testTimeout: 300_000 });
 const ATTACKERS = ["A1", "A2", "A3", "A4", "A5", "A6", "A7"] as const;
 /** one for each way of being noticed, and the two of which only an outside copy or nobody tells */
 const NAMED = [
-  "A1 change body first", "A1 append a forged entry, own key", "A2 delete middle", "A3 change action last", "A3 seal: change leaves middle", "A3 approval: given by another", "A4 change an entry, chain and head made anew middle",
+  "A1 change body first", "A1 append a forged entry, own key", "A2 delete middle", "A2 hand-over: given to another", "A2 photo: another picture", "A2 customer's link: ends later", "A3 change action last", "A3 seal: change leaves middle", "A3 approval: given by another", "A4 change an entry, chain and head made anew middle",
   "A4 the same, no copy given, the data folder's witness file left alone last", "A5 put back database and data folder, a seal mailed since", "A5 put back database and data folder, no copy from outside", "A6 one bit of an image last", "A7 the same; a bundle outside middle",
 ];
 const nameOf = ({ attacker, name, row }: Pick<Cell, "attacker" | "name" | "row">) => `${attacker} ${name} ${row}`.trim();
 
-/** The named ones, and two more of each attacker by the day: the seed stands in the message. */
+/** The named ones, and two more of each attacker; the seed stands in the message. */
 function sample(seed: number): Cell[] {
   const random = randomOf(seed);
   const cells = allCells();
@@ -41,7 +41,7 @@ function sample(seed: number): Cell[] {
 
 // all of them: npm run tamper:matrix
 it("notices a sample of attacks by what docs/tamper-matrix.md says", async () => {
-  const seed = Math.floor(Date.now() / 86_400_000);
+  const seed = 20_260;
   await emptyHouse();
   const folder = mkdtempSync(path.join(os.tmpdir(), "twinread-tamper-"));
   const { results } = await runMatrix(sample(seed), accounts, folder).finally(() => rmSync(folder, { recursive: true }));
