@@ -45,5 +45,7 @@ export const REQUEST_TRIES_AN_HOUR = 80;
 export const REQUEST_FILL_SECONDS = 3;
 /** how old the form may be when it is sent */
 export const REQUEST_FORM_HOURS = 48;
+/** seals that one person may ask for */
+export const SEALS_AN_HOUR_PER_PERSON = 20;
 /** days within which a customer who asked for deletion hears from a lead */
 export const DELETION_ANSWER_DAYS = 30;

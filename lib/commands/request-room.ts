@@ -3,12 +3,10 @@ import { env } from "@/lib/env";
 import { AppError } from "@/lib/errors";
 import { REQUEST_TRIES_AN_HOUR, REQUESTS_AN_HOUR, REQUESTS_AN_HOUR_PER_ADDRESS, REQUESTS_AT_ONCE_PER_ADDRESS } from "@/lib/limits";
 import { Request, type Transaction } from "@/models";
+import { hourly } from "./hourly";
 
 const HOUR_MS = 3_600_000;
-const MOST_ADDRESSES = 10_000;
-
-/** Tries of the last hour by address digest, refused ones too; in memory, because they decide nothing but a pause. */
-const tries = new Map<string, number[]>();
+const tries = hourly(REQUEST_TRIES_AN_HOUR);
 
 function refusal(why: string, waitMs: number): AppError {
   const { email, phone } = env().workshopContact;
@@ -17,18 +15,10 @@ function refusal(why: string, waitMs: number): AppError {
   return new AppError("too-many", `${why} Try again in ${minutes} ${minutes === 1 ? "minute" : "minutes"}, or ${way}.`, { retryAfterSeconds: Math.max(1, Math.ceil(waitMs / 1000)) });
 }
 
-/** Counts a try before its body is taken in. */
+/** Counts a try before its body is taken in, refused ones too. */
 export function noteTry(address: Buffer, now = Date.now()): void {
-  const key = address.toString("hex");
-  const recent = (tries.get(key) ?? []).filter((at) => at > now - HOUR_MS);
-  if (recent.length >= REQUEST_TRIES_AN_HOUR) throw refusal("Many tries came from where you are within the last hour.", recent[0] + HOUR_MS - now);
-  // the map forgets the oldest addresses first: a flood from many can't fill the memory
-  tries.delete(key);
-  tries.set(key, [...recent, now]);
-  for (const oldest of tries.keys()) {
-    if (tries.size <= MOST_ADDRESSES) break;
-    tries.delete(oldest);
-  }
+  const waitMs = tries.note(address.toString("hex"), now);
+  if (waitMs !== null) throw refusal("Many tries came from where you are within the last hour.", waitMs);
 }
 
 const underWay = new Map<string, number>();

@@ -4,10 +4,12 @@ import { beforeAll, describe, expect, it } from "vitest";
 import { GET as proofRoute } from "@/app/api/drives/[id]/proof/route";
 import { GET as sealRoute } from "@/app/api/seals/[number]/route";
 import { GET as listRoute, POST as askRoute } from "@/app/api/seals/route";
+import { askForSeal } from "@/lib/commands/ask-for-seal";
 import { makeSeal, sealNow } from "@/lib/commands/make-seal";
 import { makeDailySeal } from "@/lib/commands/seal-daily";
 import { parseSeal, proofHolds, sealRoot } from "@/lib/core/seal";
 import { type Actor, SYSTEM, WORKSHOP_CHAIN } from "@/lib/core/words";
+import { SEALS_AN_HOUR_PER_PERSON } from "@/lib/limits";
 import { openText } from "@/lib/mail/sealed-text";
 import { checkCustody } from "@/lib/queries/custody";
 import { driveProof, leavesOf, newestSeal, sealByNumber, sealKeys, sealList } from "@/lib/queries/seals";
@@ -188,6 +190,18 @@ describe("the interface", () => {
     expect(await again.json()).toEqual(made);
     expect((await newestSeal())!.number).toBe(made.number);
     expect((await callAs(admin, askRoute, "/api/seals", { key: "b" })).status).toBe(201);
+  });
+
+  it("are refused to one person who asks for them on and on, and are there for others", async () => {
+    const [eager, other] = [await makeUser("auditor"), await makeUser("auditor")];
+    for (let i = 0; i < SEALS_AN_HOUR_PER_PERSON; i += 1) await askForSeal(eager);
+    const newest = (await newestSeal())!.number;
+    const refused = await callAs(eager, askRoute, "/api/seals", { key: "one more" });
+    expect(refused.status).toBe(429);
+    expect(Number(refused.headers.get("retry-after"))).toBeGreaterThan(3000);
+    expect(((await refused.json()) as { detail: string }).detail).toMatch(/^You have asked for 20 seals within the last hour, .* ask again in (59|60) min\.$/);
+    expect((await newestSeal())!.number).toBe(newest);
+    expect((await askForSeal(other)).number).toBe(newest + 1);
   });
 
   it("lists seals and hands out each one's three files", async () => {
