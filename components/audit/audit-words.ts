@@ -1,4 +1,4 @@
-import type { AuditOverview, ImageCounts, SealState } from "@/lib/core/audit-rows";
+import type { AuditOverview, ImageCounts, SealState, WaitingLog } from "@/lib/core/audit-rows";
 import { countOf, listText, withCommas } from "@/lib/core/quantity";
 import type { MarkKind } from "@/components/ui/mark";
 
@@ -61,8 +61,8 @@ const logsText = (n: number) => `${withCommas(n)} ${n === 1 ? "log" : "logs"}`;
 function logs({ logs: { total, findings, unchecked, oldestCheck }, waiting, now }: AuditOverview): Omit<OverviewLine, "key" | "title" | "href"> {
   const at = oldestCheck ?? "";
   if (findings > 0) {
-    const closed = waiting.length === 0 ? "" : ` ${listText(waiting.map((drive) => `Drive ${drive.letter} of case ${drive.caseRef}`))} ${waiting.length === 1 ? "waits" : "wait"} for an assessment.`;
-    return { mark: waiting.length > 0 ? "block" : "caution", sentence: `${findings} of ${logsText(total)} ${findings === 1 ? "doesn't" : "don't"} check out.${closed || " Each finding was assessed, or is the workshop's."}`, at };
+    const closed = waiting.length === 0 ? "" : ` ${listText(waiting.map(logText))} ${waiting.length === 1 ? "waits" : "wait"} for an assessment.`;
+    return { mark: waiting.length > 0 ? "block" : "caution", sentence: `${findings} of ${logsText(total)} ${findings === 1 ? "doesn't" : "don't"} check out.${closed || " Each finding was assessed."}`, at };
   }
   if (total === unchecked) return { mark: "wait", sentence: `None of ${logsText(total)} was checked yet. Check them now, or wait for the night.`, at };
   if (unchecked > 0) return { mark: "caution", sentence: `${total - unchecked} of ${logsText(total)} check out, ${unchecked} ${unchecked === 1 ? "was" : "were"} never checked.`, at };
@@ -94,12 +94,13 @@ const one = (n: number, singular: string, plural: string) => (n === 1 ? singular
 /** One line a subject, in the order of the pages. */
 export function overviewLines(facts: AuditOverview): OverviewLine[] {
   const { handOuts, refusals, assessments, limits, clock, clockEntries, openSessions, waiting, now } = facts;
+  const closed = waiting.filter((log) => log.driveId).length;
   const lines: OverviewLine[] = [
     { key: "drives", title: "Logs", href: "/audit/drives", since: true, ...logs(facts) },
     ...(facts.seals ? [{ key: "seals", title: "Seals", href: "/audit/seals", at: facts.seals.newest?.at ?? "", ...sealsSentence(facts.seals) }] : []),
     { key: "images", title: "Stored images", href: "/audit/images", since: true, at: facts.images.oldest ?? "", ...imagesSentence(facts.images, now) },
     { key: "assessments", title: "Assessments", href: "/audit/assessments", at: assessments.at, mark: waiting.length > 0 ? "block" : "ok",
-      sentence: waiting.length > 0 ? one(waiting.length, "One drive waits for an assessment; work on it is closed.", "# drives wait for an assessment; work on them is closed.") : assessments.total === 0 ? "No drive waits, and none ever needed one." : `No drive waits. ${one(assessments.total, "One assessment is on record.", "# assessments are on record.")}` },
+      sentence: waiting.length > 0 ? `${one(waiting.length, "One log waits for an assessment", "# logs wait for an assessment")}${closed > 0 ? `; work on ${one(closed, "its drive", "# drives")} is closed` : ""}.` : assessments.total === 0 ? "No log waits, and none ever needed one." : `No log waits. ${one(assessments.total, "One assessment is on record.", "# assessments are on record.")}` },
     { key: "hand-outs", title: "Hand-outs", href: "/audit/hand-outs", at: handOuts.at, mark: handOuts.total > 0 ? "note" : "wait", sentence: handOuts.total > 0 ? `Latest: ${handOuts.sentence}` : "No image, bundle or summary has left the house yet." },
     { key: "refusals", title: "Refusals", href: "/audit/refusals", at: refusals.at, mark: refusals.total > 0 ? "note" : "ok", sentence: refusals.total > 0 ? `Latest: ${refusals.sentence}` : "No approval was refused, sent back or revoked." },
   ];
@@ -128,6 +129,12 @@ export function auditVerdict(facts: AuditOverview): { mark: MarkKind; sentence: 
   if (seals?.newest) parts.push(sealsSentence(seals).sentence.split("; ").at(-1)!.replace(/\.$/, ""));
   else if (seals) parts.push("no seal was made yet");
   return { mark: "ok", sentence: `${parts.join("; ")}.`, why: "As of the last check of each. A cut end shows only against what left the house: a bundle, a summary, a mail or the witness file.", go: null };
+}
+
+/** The log as the subject of a sentence. */
+function logText(place: WaitingLog): string {
+  if (place.workshop) return "The workshop's own log";
+  return place.driveId ? placeText(place) : `The log of a drive that is not on record, ${place.chainId},`;
 }
 
 /** "Drive A of case 26-0042", "The workshop" */

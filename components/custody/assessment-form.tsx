@@ -12,14 +12,14 @@ import { useChange } from "@/components/ui/use-change";
 import { send } from "@/lib/http/send";
 import { assessmentInput } from "@/lib/schemas/policy";
 
-/** An auditor says what to think of a log that does not check out; work on the drive opens again after it. */
-export function AssessmentForm({ driveId, onDone }: { driveId: string; onDone?(): void }) {
+/** An auditor says what to think of a log that does not check out; work on a drive opens again after it. */
+export function AssessmentForm({ chainId, onDone }: { chainId: string; onDone?(): void }) {
   const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
   const { register, handleSubmit, reset, formState: { errors } } = useForm<z.input<typeof assessmentInput>>({ resolver: zodResolver(assessmentInput), defaultValues: { text: "" } });
   const submit = handleSubmit(async (input) => {
-    if (!(await attempt(() => send("POST", `/api/drives/${driveId}/assessment`, input)))) return;
+    if (!(await attempt(() => send("POST", `/api/audit/checks/${chainId}/assessment`, input)))) return;
     reset();
     say({ text: "The assessment is in the log." });
     router.refresh();
@@ -31,5 +31,15 @@ export function AssessmentForm({ driveId, onDone }: { driveId: string; onDone?()
       {refusal ? <Note kind="block" role="alert" title="Nothing was recorded.">{refusal}</Note> : null}
       <Buttons><Button type="submit" disabled={busy}>Record the assessment</Button></Buttons>
     </form>
+  );
+}
+
+/** What to do below a check that found something. `latest` is the action of the log's last entry. */
+export function Assess({ chainId, latest, assesses, onDone }: { chainId: string; latest: string | undefined; assesses: boolean; onDone?(): void }) {
+  return (
+    <div className="mt-5">
+      {latest === "log.assessed" ? <Note kind="note" title="An assessment stands at the end of this log." className="mb-3">Read it in the latest entry before you add another.</Note> : null}
+      {assesses ? <AssessmentForm chainId={chainId} onDone={onDone} /> : <p className="text-ink-2">An auditor can record an assessment here.</p>}
+    </div>
   );
 }

@@ -10,7 +10,7 @@ import { useChange } from "@/components/ui/use-change";
 import { entriesText } from "./entries-text";
 import { fetcher, send } from "@/lib/http/send";
 import type { CustodyCheckView, CustodyEntryView } from "@/lib/views";
-import { AssessmentForm } from "./assessment-form";
+import { Assess } from "./assessment-form";
 import { ChainCheck } from "./chain-check";
 import { LogTable } from "./log-table";
 import { ViaLegend } from "./via-legend";
@@ -30,7 +30,6 @@ export function DriveLog({ driveId, entries, timeZone, assesses, records }: {
   const [show, setShow] = useState<{ seq: number } | null>(null);
   const ask = () => (records ? send<CustodyCheckView>("POST", `/api/audit/checks/${driveId}`) : fetcher<CustodyCheckView>(`/api/drives/${driveId}/custody/check`));
   const run = () => attempt(async () => setCheck({ result: await ask(), at: new Date().toISOString() }));
-  const assessed = entries.at(-1)?.action === "log.assessed";
 
   return (
     <>
@@ -41,10 +40,7 @@ export function DriveLog({ driveId, entries, timeZone, assesses, records }: {
         {refusal ? <Note kind="caution" role="alert" title="The log was not checked." className="mt-3">{refusal}</Note> : null}
         <Buttons className="mt-4"><Button variant={check ? "plain" : "lead"} disabled={busy} onClick={() => void run()}>{busy ? "Checking the log" : check ? "Check the log again" : "Check the log"}</Button></Buttons>
         {check && !check.result.ok ? (
-          <div className="mt-5">
-            {assessed ? <Note kind="note" title="An assessment stands at the end of this log." className="mb-3">Read it in the latest entry before you add another.</Note> : null}
-            {assesses ? <AssessmentForm driveId={driveId} onDone={() => { router.refresh(); void run(); }} /> : <p className="text-ink-2">An auditor can record an assessment here.</p>}
-          </div>
+          <Assess chainId={driveId} latest={entries.at(-1)?.action} assesses={assesses} onDone={() => { router.refresh(); void run(); }} />
         ) : null}
       </Section>
       <Section title="Entries" aside={<ViaLegend />}>

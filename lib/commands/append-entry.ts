@@ -11,7 +11,7 @@ import { connection, CustodyEntry, CustodyHead, type Transaction } from "@/model
 import { logKey } from "@/storage";
 
 export interface Subject {
-  type: "case" | "drive" | "board" | "chip" | "read" | "approval" | "transfer" | "share" | "image" | "user" | "token" | "policy" | "key" | "bundle" | "seal" | "item" | "request" | "photo" | "shelf-board" | "note";
+  type: "workshop" | "case" | "drive" | "board" | "chip" | "read" | "approval" | "transfer" | "share" | "image" | "user" | "token" | "policy" | "key" | "bundle" | "seal" | "item" | "request" | "photo" | "shelf-board" | "note";
   id: string;
 }
 

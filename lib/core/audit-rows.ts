@@ -51,7 +51,8 @@ export interface AssessmentRow extends AuditEntryRow {
   covered: LogFinding[];
 }
 
-export interface WaitingDrive extends ChainPlace {
+/** A log that doesn't check out and that nobody has assessed since. */
+export interface WaitingLog extends ChainPlace {
   checkedAt: string;
   /** what no assessment covers, the first twenty */
   findings: LogFinding[];
@@ -140,7 +141,7 @@ export interface Latest {
 export interface AuditOverview {
   now: string;
   logs: ChainCounts;
-  waiting: WaitingDrive[];
+  waiting: WaitingLog[];
   images: ImageCounts;
   seals: SealState | null;
   clock: ClockReading;

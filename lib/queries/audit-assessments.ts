@@ -1,12 +1,10 @@
-import { Op } from "sequelize";
 import { covers } from "@/lib/commands/chain-gate";
-import { casesOf } from "@/lib/commands/refuse";
-import type { AssessmentRow, LogFinding, WaitingDrive } from "@/lib/core/audit-rows";
+import type { AssessmentRow, LogFinding, WaitingLog } from "@/lib/core/audit-rows";
 import type { Actor } from "@/lib/core/words";
 import type { AuditInput } from "@/lib/schemas/audit";
-import { Case, ChainCheck, CustodyEntry, Drive } from "@/models";
-import { auditEntries, type EntryPage, placeOfChain } from "./audit-entries";
-import { allowAudit } from "./audit-rights";
+import { CustodyEntry } from "@/models";
+import { chainsAgainst } from "./audit-drives";
+import { auditEntries, type EntryPage } from "./audit-entries";
 import { checkCustody } from "./custody";
 
 const MOST_WAITING = 50;
@@ -26,20 +24,14 @@ export async function auditAssessments(actor: Actor, input: AuditInput): Promise
   return { ...list, items };
 }
 
-/** Drives whose last check found something that nobody has assessed since: work on them is closed. They are checked again here. */
-export async function drivesWaiting(actor: Actor): Promise<WaitingDrive[]> {
-  allowAudit(actor);
-  const cases = casesOf(actor);
-  const checks = await ChainCheck.findAll({ where: { findings: { [Op.gt]: 0 } }, order: [["checkedAt", "DESC"]] });
-  const drives = await Drive.findAll({ where: { id: checks.map((c) => c.chainId), ...(cases ? { caseId: [...cases] } : {}) }, include: [{ model: Case, as: "case" }], limit: MOST_WAITING });
-  const waiting: WaitingDrive[] = [];
-  for (const drive of drives) {
-    const { findings } = await checkCustody(drive.id);
-    const last = await CustodyEntry.findOne({ attributes: ["seq"], where: { chainId: drive.id, action: "log.assessed" }, order: [["seq", "DESC"]] });
+/** Logs whose last check found something that nobody has assessed since; work on such a drive is closed. They are checked again here. */
+export async function logsWaiting(actor: Actor): Promise<WaitingLog[]> {
+  const waiting: WaitingLog[] = [];
+  for (const { check, ...place } of await chainsAgainst(actor, MOST_WAITING)) {
+    const { findings } = await checkCustody(place.chainId);
+    const last = await CustodyEntry.findOne({ attributes: ["seq"], where: { chainId: place.chainId, action: "log.assessed" }, order: [["seq", "DESC"]] });
     const open = findings.filter((f) => !covers(last?.seq ?? 0, f));
-    if (open.length === 0) continue;
-    const place = placeOfChain({ chain: drive.id, driveId: drive.id, position: drive.position, caseId: drive.caseId, ref: (drive as unknown as { case: Case }).case.ref });
-    waiting.push({ ...place, checkedAt: checks.find((c) => c.chainId === drive.id)!.checkedAt.toISOString(), findings: open.slice(0, MOST_FINDINGS), count: open.length });
+    if (open.length > 0) waiting.push({ ...place, checkedAt: check.at, findings: open.slice(0, MOST_FINDINGS), count: open.length });
   }
   return waiting;
 }

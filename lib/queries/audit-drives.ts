@@ -1,6 +1,6 @@
 import { QueryTypes } from "sequelize";
 import { casesOf } from "@/lib/commands/refuse";
-import type { ChainCounts, ChainRow } from "@/lib/core/audit-rows";
+import type { ChainCounts, ChainPlace, ChainRow } from "@/lib/core/audit-rows";
 import { readCaseRef } from "@/lib/core/case-number";
 import { type Actor, WORKSHOP_CHAIN } from "@/lib/core/words";
 import type { AuditInput } from "@/lib/schemas/audit";
@@ -21,12 +21,11 @@ function scope(actor: Actor): { where: string; cases: readonly string[] | null }
   return { where: cases ? (cases.length > 0 ? "d.case_id IN (:cases)" : "FALSE") : "TRUE", cases };
 }
 
-interface Row {
-  chain: string;
-  driveId: string | null;
-  position: number | null;
-  caseId: string | null;
-  ref: string | null;
+const PLACE = "x.chain, d.id AS driveId, d.position, c.id AS caseId, c.ref";
+
+type PlaceRow = Parameters<typeof placeOfChain>[0];
+
+interface Row extends PlaceRow {
   label: string | null;
   seq: number | null;
   hash: Buffer | null;
@@ -51,7 +50,7 @@ export async function auditDrives(actor: Actor, input: AuditInput): Promise<{ it
   const [{ n }] = await connection().query<{ n: number }>(`SELECT COUNT(*) AS n FROM ${CHAINS} WHERE ${condition}`, { replacements, type: QueryTypes.SELECT });
   const direction = input.order === "asc" ? "ASC" : "DESC";
   const rows = await connection().query<Row>(
-    `SELECT x.chain, d.id AS driveId, d.position, c.id AS caseId, c.ref, COALESCE(d.part_number, d.model, d.serial) AS label, h.seq, h.hash, h.at,
+    `SELECT ${PLACE}, COALESCE(d.part_number, d.model, d.serial) AS label, h.seq, h.hash, h.at,
        k.checked_at AS checkedAt, k.entries, k.findings, k.first_finding AS first
      FROM ${CHAINS} WHERE ${condition} ORDER BY ${SORT[input.sort] ?? "c.ref"} ${direction}, c.ref DESC, d.position, x.chain LIMIT :limit OFFSET :offset`,
     { replacements, type: QueryTypes.SELECT },
@@ -76,4 +75,14 @@ export async function chainCounts(actor: Actor): Promise<ChainCounts> {
   );
   const unchecked = Number(row.unchecked);
   return { total: Number(row.total), clean: Number(row.clean), findings: Number(row.findings), unchecked, oldestCheck: unchecked === 0 ? row.oldest?.toISOString() ?? null : null };
+}
+
+/** The logs that something was found against at their last check, the latest check first. */
+export async function chainsAgainst(actor: Actor, limit: number): Promise<(ChainPlace & { check: { at: string } })[]> {
+  const { where, cases } = scope(actor);
+  const rows = await connection().query<PlaceRow & { checkedAt: Date }>(
+    `SELECT ${PLACE}, k.checked_at AS checkedAt FROM ${CHAINS} WHERE ${where} AND ${STATE.findings} ORDER BY k.checked_at DESC, x.chain LIMIT :limit`,
+    { replacements: { cases, limit }, type: QueryTypes.SELECT },
+  );
+  return rows.map((row) => ({ ...placeOfChain(row), check: { at: row.checkedAt.toISOString() } }));
 }

@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { agoText, auditVerdict, clockSentence, lengthText, overviewLines, sealsSentence } from "@/components/audit/audit-words";
 import { filterOf, filterQuery, groupOf, keeps, WHOLE_LOG } from "@/components/custody/log-words";
-import type { AuditOverview, AuditSealRow, WaitingDrive } from "@/lib/core/audit-rows";
+import type { AuditOverview, AuditSealRow, WaitingLog } from "@/lib/core/audit-rows";
 import { ACTIONS } from "@/lib/core/custody-actions";
 import type { CustodyEntryView } from "@/lib/views";
 
@@ -15,7 +15,7 @@ const clean = (more: Partial<AuditOverview> = {}): AuditOverview => ({
   now: NOW, logs: { total: 12, clean: 12, findings: 0, unchecked: 0, oldestCheck: "2026-11-04T02:10:00.000Z" }, waiting: [], images,
   seals: { total: 41, newest: seal(), today: true, faulty: [] }, clock: { offsetMs: 0.4, withinMs: 1 }, handOuts: none, refusals: none, assessments: none, clockEntries: none, limits: none, openSessions: 1, ...more,
 });
-const waiting: WaitingDrive = { chainId: "x", workshop: false, driveId: "x", letter: "B", caseId: "y", caseRef: "26-0042", checkedAt: NOW, findings: [], count: 1 };
+const waiting: WaitingLog = { chainId: "x", workshop: false, driveId: "x", letter: "B", caseId: "y", caseRef: "26-0042", checkedAt: NOW, findings: [], count: 1 };
 
 describe("the verdict", () => {
   it("says in one sentence that logs, images and seal are in order", () => {

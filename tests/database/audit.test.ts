@@ -1,5 +1,6 @@
 import { execFileSync } from "node:child_process";
 import { describe, expect, it } from "vitest";
+import { overviewLines } from "@/components/audit/audit-words";
 import { appendEntry } from "@/lib/commands/append-entry";
 import { assessLog } from "@/lib/commands/assess-log";
 import { checkChain } from "@/lib/commands/check-chain";
@@ -9,12 +10,13 @@ import { makeSeal } from "@/lib/commands/make-seal";
 import { revokeApproval } from "@/lib/commands/revoke-approval";
 import { AUDIT_LISTS, WORKSHOP_LISTS } from "@/lib/core/audit";
 import { SYSTEM, WORKSHOP_CHAIN, type Actor } from "@/lib/core/words";
-import { auditAssessments, drivesWaiting } from "@/lib/queries/audit-assessments";
+import { auditAssessments, logsWaiting } from "@/lib/queries/audit-assessments";
 import { clockNow } from "@/lib/queries/audit-clock";
 import { auditDrives, chainCounts } from "@/lib/queries/audit-drives";
 import { auditEntries, auditPersons } from "@/lib/queries/audit-entries";
 import { auditFile, auditPage } from "@/lib/queries/audit-files";
 import { auditImages } from "@/lib/queries/audit-images";
+import { auditOverview } from "@/lib/queries/audit-overview";
 import { auditSeals, sealState } from "@/lib/queries/audit-seals";
 import { auditSessions, auditTokens } from "@/lib/queries/audit-sign-ins";
 import { auditInput, type AuditInput } from "@/lib/schemas/audit";
@@ -187,11 +189,11 @@ describe("drives and assessments", () => {
     const undo = await changeBody(bench.chip.driveId, 2, (body) => Buffer.from(body.toString().replace("BX 40", "BX 41")));
     try {
       await ChainCheck.upsert({ chainId: bench.chip.driveId, checkedAt: new Date(), entries: 9, findings: 3, firstFinding: "Entry 2" });
-      const waiting = (await drivesWaiting(auditor)).find((drive) => drive.driveId === bench.chip.driveId);
+      const waiting = (await logsWaiting(auditor)).find((drive) => drive.driveId === bench.chip.driveId);
       expect(waiting?.findings.some((f) => f.seq === 2)).toBe(true);
-      expect((await drivesWaiting(only(auditor))).length).toBe(0);
+      expect((await logsWaiting(only(auditor))).length).toBe(0);
       await assessLog(auditor, bench.chip.driveId, { text: "The board number was changed in the database; the ticket has the right one." });
-      expect((await drivesWaiting(auditor)).filter((drive) => drive.driveId === bench.chip.driveId)).toEqual([]);
+      expect((await logsWaiting(auditor)).filter((drive) => drive.driveId === bench.chip.driveId)).toEqual([]);
       await assessLog(auditor, bench.chip.driveId, { text: "Looked at it once more." });
       const { items } = await auditAssessments(auditor, asked({ q: bench.chip.ref, order: "asc" }));
       expect(items[0].covered.some((f) => f.seq === 2)).toBe(true);
@@ -199,6 +201,33 @@ describe("drives and assessments", () => {
     } finally {
       await undo();
       await ChainCheck.destroy({ where: { chainId: bench.chip.driveId } }).catch(() => ChainCheck.update({ findings: 0 }, { where: { chainId: bench.chip.driveId } }));
+    }
+  });
+});
+
+describe("a fault in the workshop's own log", () => {
+  it("stands first among what is wrong, closes no drive, and waits for an auditor's assessment", async () => {
+    const bench = await makeReadyBench();
+    const [auditor, admin] = [await makeUser("auditor"), await makeUser("admin")];
+    await assessLog(auditor, WORKSHOP_CHAIN, { text: "What earlier tests have left here was looked at." });
+    const at = (await CustodyHead.findByPk(WORKSHOP_CHAIN))!.seq;
+    await inTransaction((tx) => appendEntry(tx, WORKSHOP_CHAIN, SYSTEM, "sign-in.limited", { type: "user", id: SYSTEM.id }, { address: "203.0.113.78", accountDigest: "ab".repeat(32) }));
+    const undo = await changeBody(WORKSHOP_CHAIN, at + 1, (body) => Buffer.from(body.toString().replace("203.0.113.78", "203.0.113.79")));
+    const own = async () => (await logsWaiting(auditor)).find((log) => log.workshop);
+    try {
+      await checkChain(auditor, WORKSHOP_CHAIN);
+      expect((await own())?.findings.some((f) => f.seq === at + 1)).toBe(true);
+      const logs = overviewLines(await auditOverview(auditor)).find((line) => line.key === "drives")!;
+      expect([logs.mark, logs.sentence]).toEqual(["block", expect.stringContaining("The workshop's own log") as string]);
+      expect((await logsWaiting(only(auditor))).length).toBe(0);
+      expect(await refusal(assessLog(only(auditor), WORKSHOP_CHAIN, { text: "Looked." }))).toMatchObject({ status: 404 });
+      expect(await refusal(assessLog(admin, WORKSHOP_CHAIN, { text: "Looked." }))).toMatchObject({ status: 403 });
+      await approve(bench.lead, bench.chip, bench.image);
+      await assessLog(auditor, WORKSHOP_CHAIN, { text: "The address was changed in the log; the proxy's own records have another." });
+      expect(await own()).toBeUndefined();
+    } finally {
+      await undo();
+      await checkChain(auditor, WORKSHOP_CHAIN);
     }
   });
 });

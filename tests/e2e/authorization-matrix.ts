@@ -89,7 +89,7 @@ export const API: ApiRow[] = [
   change("POST", "/api/hand-overs/[id]/confirmation", BENCH, () => ({ received: false, text: "Tried by the authorization matrix." })),
   look("/api/drives/[id]/custody", (t) => `/api/drives/${t.driveId}/custody`),
   look("/api/drives/[id]/custody/check", (t) => `/api/drives/${t.driveId}/custody/check`),
-  change("POST", "/api/drives/[id]/assessment", roles(403, 403, 404, 403), () => ({ text: "Looked at every entry." })),
+  change("POST", "/api/audit/checks/[id]/assessment", roles(403, 403, 404, 403), () => ({ text: "Looked at every entry." })),
   change("PATCH", "/api/boards/[id]", BENCH, () => ({ changes: { revision: "rev B" }, ...reason() })),
   change("POST", "/api/boards/[id]/chips", BENCH, () => chip),
 
