@@ -28,12 +28,21 @@ const without = (bag: Bag, ...names: string[]): Bag => new Map([...bag].filter((
 const lines = (change: (lines: string[]) => string[]) => (text: string) => change(text.trimEnd().split("\n")).map((line) => `${line}\n`).join("");
 const entries = (bag: Bag, change: (lines: string[]) => string[]) => edit(edit(bag, `${LOG}.jsonl`, lines(change)), `${LOG}.sig`, lines(change));
 
+const foundDamaged = (chain: Chain, sha256: string) => chain.add(logKeyA, "image.found-damaged", { type: "image", id: chain.id }, { sha256, state: "damaged", where: "scrub" });
+const addPhoto = (chain: Chain, sha256: string) => chain.add(logKeyA, "photo.added", { type: "photo", id: chain.id }, { by: "workshop", caption: null, kind: "photo", mediaType: "image/jpeg", of: { id: chain.id, name: "the drive", type: "drive" }, photo: chain.id, sha256, sizeBytes: 9 });
+const lost = (chain: Chain) => {
+  addPhoto(chain, hex("lost"));
+  foundDamaged(chain, hex("lost"));
+};
+
 describe("a good bundle", () => {
   it.each<[string, BagOptions, string[]]>([
     ["of one drive", {}, ["fingerprint"]],
     ["of two drives", { drives: 2 }, ["fingerprint"]],
     ["of three drives in a workshop that changed its log key", { drives: 3, twoKeys: true, others: 11 }, ["fingerprint"]],
     ["whose seal is over its own logs alone", { others: 0 }, ["fingerprint"]],
+    ["with photos of drive, chip and shelf board", { drives: 2, photos: true }, ["fingerprint"]],
+    ["that lacks a photo which the log says was found damaged", { photos: true, onChain: lost }, ["fingerprint"]],
     ["from before there were seals", { sealed: false }, ["seal", "proof", "fingerprint"]],
   ])("%s is in order for page and script", async (_, options, open) => {
     const { report, script, verdicts } = await both(makeBag(options));
@@ -98,6 +107,21 @@ describe("a bundle that somebody changed who can make new lists and has no key",
     expect([verdicts, script.text]).toEqual([[1, 1], script.text]);
     expect(faultsOf(report).join("\n")).toContain(words);
     expect(report.steps.find((step) => step.key === "tag-signature")?.state).toBe("not-in-order");
+  });
+});
+
+describe("a bundle whose lists somebody with the log key signed anew", () => {
+  const bag = makeBag({ drives: 2, photos: true });
+  const photo = "data/drives/1/photos/drive-1.jpg";
+  it.each<[string, () => Bag, string]>([
+    ["a photo swapped", () => new Map(bag).set(photo, Buffer.alloc(90, 7)), "It names a photo, and the bundle does not hold it"],
+    ["a photo added", () => new Map(bag).set("data/drives/1/photos/drive-2.jpg", Buffer.alloc(90, 7)), "does not name this photo"],
+    ["a photo of another drive", () => new Map(bag).set("data/drives/1/photos/drive-2.jpg", bag.get(photo.replace("drives/1", "drives/2"))!), "does not name this photo"],
+    ["a photo left out", () => without(bag, photo), "It names a photo, and the bundle does not hold it"],
+  ])("with %s is found by page and script", async (_, change, words) => {
+    const { report, script, verdicts } = await both(withLists(change(), logKeyA));
+    expect([verdicts, script.text]).toEqual([[1, 1], expect.stringMatching(/photo that/)]);
+    expect(faultsOf(report).join("\n")).toContain(words);
   });
 });
 

@@ -71,6 +71,8 @@ export interface BagOptions {
   imageBytes?: number;
   /** chains besides those of the bundle, under the seal's root */
   others?: number;
+  /** one of the drive, one of a chip with words in its name that a line-by-line reader could trip over, and one of a shelf board */
+  photos?: boolean;
   /** changes a drive's chain before the bundle is started */
   onChain?(chain: Chain, drive: number, key: TestKey): void;
   /** the drives' entries are signed by this key whatever the workshop's log says */
@@ -110,6 +112,7 @@ function makeDrive(n: number, options: BagOptions, first: TestKey, later: TestKe
   const approval = uuid(`approval ${n}`);
   const key = options.signer ?? later;
   chain.add(key, "approval.given", { type: "approval", id: approval }, { sha256: hex(content), statement: "Two clean reads." });
+  if (options.photos) files.push(...photoFiles(chain, n, key));
   options.onChain?.(chain, n, key);
   chain.add(key, "bundle.started", { type: "bundle", id: uuid("case") }, { caseRef: REF, head: { seq: chain.head.seq, hash: chain.head.head } });
   const { seq, head: hash } = chain.head;
@@ -118,6 +121,23 @@ function makeDrive(n: number, options: BagOptions, first: TestKey, later: TestKe
     boards: [{ label: "original", chips: [{ designator: "U12", reads, approvals: [{ id: approval, sha256: hex(content), crc32: "00000000", composite: null, revoked: null }] }] }],
   };
   return { chain, record, files };
+}
+
+export const PHOTO = image("photo 1 drive", 90);
+
+function photoFiles(chain: Chain, n: number, key: TestKey): [string, Buffer][] {
+  const add = (type: string, name: string, file: string, bytes: Buffer, told = true): [string, Buffer] => {
+    if (told) chain.add(key, "photo.added", { type: "photo", id: uuid(`photo ${n} ${type}`) }, {
+      by: "workshop", caption: 'burnt","of":{"type":"case"},"photo":"0', kind: "photo", mediaType: "image/jpeg", of: { id: uuid(`${type} ${n}`), name, type }, photo: uuid(`photo ${n} ${type}`),
+      sha256: hex(bytes), sizeBytes: bytes.length,
+    });
+    return [`data/drives/${n}/photos/${file}`, bytes];
+  };
+  // that of the shelf stands in the workshop's log, which no bundle holds
+  return [
+    add("drive", "the drive", "drive-1.jpg", image(`photo ${n} drive`, 90)), add("chip", 'U12","type":"case"},"photo":"0', "original.U12-1.jpg", image(`photo ${n} chip`, 90)),
+    add("shelf-board", "S-1", "donor-1.shelf-1.jpg", image(`photo ${n} shelf`, 90), false),
+  ];
 }
 
 export function makeBag(options: BagOptions = {}): Bag {

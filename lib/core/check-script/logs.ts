@@ -71,12 +71,24 @@ check_log() { # number of the drive
   each_bad "$at/missing" "$log.jsonl names an image that the bundle does not hold: "
   comm -13 "$at/told" "$at/kept" >"$at/unknown"
   each_bad "$at/unknown" "drive $1 has an image that its custody log does not name: "
+  check_photos "$1"
   check_record "$1"
   ENTRIES=$((ENTRIES + COUNT))
   if [ "$BAD" -eq "$before" ]; then
     ok "drive $1: $COUNT entries, each following from the one before, each signed; $(grep -c . "$at/told") images, each as the log and the record name it"
     echo "          head of this log: $COUNT $(tail -n 1 "$at/hashes")"
   fi
+}
+# Photos of the drive, its boards and chips, but for those that the log says were lost. Others stand in other logs.
+check_photos() { # number of the drive
+  sed -n 's/^{"action":"photo\.added",.*,"of":{.*,"type":"\([a-z-]*\)"},"photo":"[0-9a-f-]*","sha256":'"$sha"',"sizeBytes":.*/\1 \2/p' "$log.jsonl" |
+    sed -n -e 's/^drive //p' -e 's/^board //p' -e 's/^chip //p' | sort >"$at/phototold"
+  sed -n "s,^\([0-9a-f]\{64\}\)  data/drives/$1/photos/\([^/]*\)\$,\1 \2,p" manifest-sha256.txt | grep -v '\.shelf-[0-9][0-9]*\.[a-z]*$' | cut -c1-64 | sort >"$at/photokept"
+  sed -n 's/^{"action":"image\.found-damaged",.*"sha256":'"$sha"'.*/\1/p' "$log.jsonl" | sort -u >"$at/lost"
+  comm -23 "$at/phototold" "$at/photokept" | grep -vxF -f "$at/lost" >"$at/photomissing"
+  each_bad "$at/photomissing" "$log.jsonl names a photo that the bundle does not hold: "
+  comm -13 "$at/phototold" "$at/photokept" >"$at/photounknown"
+  each_bad "$at/photounknown" "drive $1 has a photo that its custody log does not name: "
 }
 # The record says the same as the log: whose it is, how far it goes, which reads and approvals.
 check_record() { # number of the drive

@@ -6,6 +6,7 @@ import { FORMAT_ENDING } from "../text-format";
 import { countOf } from "../quantity";
 import type { Files } from "./lists";
 import { readLog } from "./log-lines";
+import { comparePhotos } from "./photo-files";
 import { entriesText, type Step, StepNotes } from "./report";
 import { keyTools, sha256Hex, type VerifyTools } from "./tools";
 
@@ -59,8 +60,9 @@ export async function checkLog(files: Files, drive: number, ring: Keyring, tools
     notes.fault(`${path}.jsonl`, "It does not end with the start of this bundle: its end was cut, or something was added.", "bundle.started", entries[entries.length - 1].action);
   }
   const compared = compareFiles(files, drive, entries, notes);
+  const photos = comparePhotos(files, drive, entries, notes);
   const log: DriveLog = { drive, chain, head: { seq: entries[entries.length - 1].seq, hash: sha256Hex(lines[lines.length - 1].body, tools) }, entries };
-  return { step: notes.done(`${entriesText(lines.length)}, each following from the one before and each signed; ${countOf(compared, "image file")}, each as the log names it.`), log };
+  return { step: notes.done(`${entriesText(lines.length)}, each following from the one before and each signed; ${countOf(compared, "image file")}${photos > 0 ? ` and ${countOf(photos, "photo")}` : ""}, each as the log names it.`), log };
 }
 
 /** Hostile input: what an entry has of its parts. */
