@@ -1,11 +1,11 @@
 "use client";
 
 import { useState } from "react";
-import { readTitle } from "@/components/composite/composite-words";
 import { Button } from "@/components/ui/button";
 import { Digest } from "@/components/ui/digest";
 import { DesignatorPlate } from "@/components/ui/plate";
 import { momentText } from "@/components/ui/times";
+import { readTitle } from "@/lib/core/derived";
 import { may } from "@/lib/core/policy";
 import { sizeText } from "@/lib/core/quantity";
 import { seatingLetter, type Stage } from "@/lib/core/words";

@@ -3,7 +3,7 @@ import { FindingLine } from "@/components/ui/finding-line";
 import { crossedPairs, leftBehind, leftBehindOf, type Sibling, unitOf, unitWords } from "@/lib/core/two-chips";
 import type { ChipSummary, ChipView } from "@/lib/views";
 
-/** Chips of one board that are moved together, and what is not in step: for the case and the drive. */
+/** Chips of one board that are transferred together, and what is not in step: for the case and the drive. */
 export function UnitNote({ chips }: { chips: readonly ChipSummary[] }) {
   const unit = unitOf(chips);
   const behind = leftBehind(chips);

@@ -1,6 +1,6 @@
-import { readTitle } from "@/components/composite/composite-words";
 import { Button } from "@/components/ui/button";
 import { Select } from "@/components/ui/select";
+import { readTitle } from "@/lib/core/derived";
 import { seatingLetter, type Stage } from "@/lib/core/words";
 import type { ReadView } from "@/lib/views";
 

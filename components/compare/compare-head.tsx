@@ -1,8 +1,8 @@
 import Link from "next/link";
-import { readTitle } from "@/components/composite/composite-words";
 import { Crumbs } from "@/components/ui/crumbs";
 import { Mark } from "@/components/ui/mark";
 import { DesignatorPlate } from "@/components/ui/plate";
+import { readTitle } from "@/lib/core/derived";
 import { listText, readsText, withCommas } from "@/lib/core/quantity";
 import type { Stage } from "@/lib/core/words";
 import type { ChipView, ComparedReads, ReadView } from "@/lib/views";

@@ -9,11 +9,6 @@ export const STANDING_WORD: Record<Standing, string> = {
   firm: "firm", weak: "weak: a margin of 1 or 2", constructed: "constructed: no read holds it", undecided: "undecided",
 };
 
-/** "Read 5, composite": a composite never goes by the plain name of a read where reads are listed. */
-export function readTitle(read: Pick<ReadView, "stage" | "number" | "derived">): string {
-  return `${readName(read.stage, read.number)}${read.derived ? ", composite" : ""}`;
-}
-
 /** "composite of 3 reads": beside the image wherever a chip stands in a list. */
 export function compositeWords({ reads }: Pick<CompositeMark, "reads">): string {
   return `composite of ${countOf(reads, "read")}`;

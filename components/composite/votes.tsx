@@ -6,9 +6,10 @@ import { FindingLine } from "@/components/ui/finding-line";
 import { Note } from "@/components/ui/note";
 import { fetcher, Refusal } from "@/lib/http/send";
 import { causeText } from "@/lib/core/composite-rules";
+import { readTitle } from "@/lib/core/derived";
 import { readsText, sizeText } from "@/lib/core/quantity";
 import type { ReadView, VotesView } from "@/lib/views";
-import { bitRateText, columnsOf, countsText, expectedText, madeOf, readTitle, votesAnchor } from "./composite-words";
+import { bitRateText, columnsOf, countsText, expectedText, madeOf, votesAnchor } from "./composite-words";
 import { DisputedTable } from "./disputed-table";
 
 /** What a composite rests on: its reads, the count, the odds with their limit, and each disputed byte. */

@@ -76,7 +76,7 @@ function fromCircumstances({ chip, donor, donorDiffers }: DecisionView): Against
     items.push({ key: "One reader took every counted read", mark: "caution", title: `One reader took every ${voters.size > 0 ? "read behind the image" : "counted read"}.`, text: `${counted[0].reader}. A fault of the reader itself would repeat in all of them.`, blocks: false });
   }
   for (const one of chip.siblings.filter((sibling) => sibling.unread)) {
-    items.push({ key: `${one.designator} is not read yet`, mark: "caution", title: `${one.designator} is not read yet.`, text: `It belongs together with ${chip.designator}: both are moved. Read it before the board goes on a drive.`, blocks: false, link: { href: `/chips/${one.id}`, label: `Open ${one.designator}` } });
+    items.push({ key: `${one.designator} is not read yet`, mark: "caution", title: `${one.designator} is not read yet.`, text: `It belongs together with ${chip.designator}: both are transferred. Read it before the board goes on a drive.`, blocks: false, link: { href: `/chips/${one.id}`, label: `Open ${one.designator}` } });
   }
   if (donor?.board.fit && donor.board.fit.verdict !== "fits") {
     const { fit } = donor.board;

@@ -1,4 +1,4 @@
-import type { Finding } from "./words";
+import { type Finding, readName, type Stage } from "./words";
 
 /** What is kept beside a composite: how it was made, of which reads, and where the whole report lies. */
 export interface DerivedFacts {
@@ -19,4 +19,9 @@ export interface DerivedFacts {
 
 export function derivedFacts(row: { derived?: string | null }): DerivedFacts | null {
   return row.derived ? (JSON.parse(row.derived) as DerivedFacts) : null;
+}
+
+/** "Read 5, composite": a composite never goes by the plain name of a read where reads are listed. */
+export function readTitle(read: { stage: Stage; number: number; derived: unknown }): string {
+  return `${readName(read.stage, read.number)}${read.derived ? ", composite" : ""}`;
 }

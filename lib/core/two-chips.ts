@@ -22,7 +22,7 @@ export interface Sibling {
   unread: boolean;
 }
 
-/** Chips of one original board that are moved together: two or more that need a transfer. Empty where there is no such unit. */
+/** Chips of one original board that are transferred together: two or more that need a transfer. Empty where there is no such unit. */
 export function unitOf<C extends UnitChip>(chips: readonly C[]): C[] {
   const together = chips.filter((chip) => chip.boardRole === "original" && chip.needsTransfer);
   return together.length > 1 ? together : [];
@@ -34,10 +34,10 @@ export function siblingsOf(chips: readonly UnitChip[], chipId: string): Sibling[
   return unit.filter((chip) => chip.id !== chipId).map(({ id, designator, state }) => ({ id, designator, state: state.state, label: state.label, unread: state.state === "unread" }));
 }
 
-/** "U12 belongs together with U14: both are moved." */
+/** "U12 belongs together with U14: both are transferred." */
 export function unitWords(designators: readonly string[]): string {
   const [first, ...others] = designators;
-  return `${first} belongs together with ${listText(others)}: ${designators.length === 2 ? "both" : `all ${designators.length}`} are moved.`;
+  return `${first} belongs together with ${listText(others)}: ${designators.length === 2 ? "both" : `all ${designators.length}`} are transferred.`;
 }
 
 /** For approvals and write tickets: the unit and how far the other chips are. Null for a chip that stands alone. */

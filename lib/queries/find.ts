@@ -1,8 +1,9 @@
 import { Op, QueryTypes } from "sequelize";
 import { driveLetter, placeOfChip } from "@/lib/commands/place";
 import { allow, casesOf, inCases } from "@/lib/commands/refuse";
+import { readTitle } from "@/lib/core/derived";
 import { crc32Hex } from "@/lib/core/digest";
-import { type Actor, readName } from "@/lib/core/words";
+import type { Actor } from "@/lib/core/words";
 import type { CaseRow, FindHit } from "@/lib/views";
 import { Board, Case, connection, Drive, Read } from "@/models";
 import { caseList, caseRows } from "./cases";
@@ -27,7 +28,7 @@ export async function findDigest(actor: Actor, digest: string): Promise<{ hits: 
 async function hitOf(read: Read): Promise<FindHit> {
   const { chip, board, drive, case: found } = await placeOfChip(read.chipId);
   return {
-    readId: read.id, readName: readName(read.stage, read.number), chipId: chip.id, designator: chip.designator, boardRole: board.role, caseId: found.id,
+    readId: read.id, readName: readTitle({ stage: read.stage, number: read.number, derived: read.derived }), chipId: chip.id, designator: chip.designator, boardRole: board.role, caseId: found.id,
     caseRef: found.ref, driveLetter: driveLetter(drive), crc32: crc32Hex(read.crc32), sha256: read.sha256.toString("hex"), counted: read.counted,
   };
 }

@@ -4,7 +4,7 @@ import type { Transaction } from "@/models";
 import type { ChipRecord } from "./chip-records";
 import { chipState } from "./chip-state";
 
-/** The other chips of the same original board that are moved together with this one; `records` are those of its drive. */
+/** The other chips of the same original board that are transferred together with this one; `records` are those of its drive. */
 export async function siblingsOfRecord(records: readonly ChipRecord[], record: ChipRecord, policy: Policy, tx?: Transaction): Promise<Sibling[]> {
   const together = records.filter((one) => one.board.id === record.board.id && one.chip.needsTransfer);
   if (together.length < 2 || !record.chip.needsTransfer) return [];

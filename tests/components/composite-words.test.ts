@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
-import { bitRateText, candidateWords, columnsOf, compositeBehind, countsText, expectedText, madeOf, offersComposite, partText, readTitle } from "@/components/composite/composite-words";
+import { bitRateText, candidateWords, columnsOf, compositeBehind, countsText, expectedText, madeOf, offersComposite, partText } from "@/components/composite/composite-words";
+import { readTitle } from "@/lib/core/derived";
 import type { ReadView, VotesView } from "@/lib/views";
 
 const DERIVED: ReadView["derived"] = { method: "bit majority, n=3", voters: [3, 1, 2], excluded: [4], disputedBytes: 9, weak: 2, constructed: 0, limit: "" };

@@ -42,8 +42,8 @@ describe("a board with two chips", () => {
 
   it("is one unit, named with how far each chip is", () => {
     expect(unitOf(two)).toHaveLength(2);
-    expect(siblingWords("U12", siblingsOf(two, "U12"))).toBe("U12 belongs together with U14: both are moved. Now U14: To read.");
-    expect(siblingWords("U1", siblingsOf([...two, chip("U1", "ready")], "U1"))).toContain("all 3 are moved");
+    expect(siblingWords("U12", siblingsOf(two, "U12"))).toBe("U12 belongs together with U14: both are transferred. Now U14: To read.");
+    expect(siblingWords("U1", siblingsOf([...two, chip("U1", "ready")], "U1"))).toContain("all 3 are transferred");
   });
 
   it("leaves out a chip kept for reference and one that stands alone", () => {

@@ -7,6 +7,7 @@ import { sendSummary } from "@/lib/commands/send-summary";
 import { benchRows } from "@/lib/queries/bench";
 import { caseView } from "@/lib/queries/cases";
 import { chipView } from "@/lib/queries/chip-view";
+import { findDigest } from "@/lib/queries/find";
 import { summaryByToken } from "@/lib/queries/summary";
 import { flipped } from "../support/bench-steps";
 import { freshImage, makeChip, makeUser, store } from "../support/factory";
@@ -23,6 +24,7 @@ it("an approved composite says so on the bench, the case, the chip and to the cu
 
   const made = await makeComposite(lead, chip.chipId, { reads: [1, 2, 3], reason: "The chip gives no more." });
   const mark = { number: 4, reads: 3, seatings: 2 };
+  expect((await findDigest(technician, made.sha256)).hits.map((hit) => hit.readName)).toEqual(["Read 4, composite"]);
   const reasons = Object.fromEntries(made.findings.filter((f) => f.severity === "reason").map((f) => [f.code, "Looked at each byte."]));
   const { id } = await approveImage(other, chip.chipId, { sha256: made.sha256, donorChipId: chip.donorChipId, statement: "Voted.", reasons, lookedAt: [] });
   expect((await onBench()).chip.composite).toEqual(mark);

@@ -157,7 +157,7 @@ test("two chips are one unit, a swapped name is doubted, and chips are placed by
   await dialog.getByLabel("Supply").selectOption("1800");
   await page.keyboard.press("Enter");
   await expect(dialog).toBeHidden();
-  await expect(page.getByText("U12 belongs together with U14: both are moved.")).toBeVisible();
+  await expect(page.getByText("U12 belongs together with U14: both are transferred.")).toBeVisible();
 
   await page.getByRole("link", { name: "Drive A", exact: true }).click();
   await expect(page.getByText("Encrypted drive: keep the enclosure’s small board and the drive together.")).toBeVisible();
@@ -176,11 +176,11 @@ test("two chips are one unit, a swapped name is doubted, and chips are placed by
   await expect(page.getByText("Placed U14 on the picture of its board")).toBeVisible();
 
   await page.getByRole("link", { name: "Open U12", exact: true }).first().click();
-  await expect(page.getByText("U12 belongs together with U14: both are moved. Now U14: To read.")).toBeVisible();
+  await expect(page.getByText("U12 belongs together with U14: both are transferred. Now U14: To read.")).toBeVisible();
   await expect(page.getByText("Encrypted drive: keep the enclosure’s small board and the drive together.").first()).toBeVisible();
   const chip = page.url();
   await page.goto(`${chip}/decision`);
-  await expect(page.getByText("U12 belongs together with U14: both are moved. Now U14: To read.")).toBeVisible();
+  await expect(page.getByText("U12 belongs together with U14: both are transferred. Now U14: To read.")).toBeVisible();
   await expect(page.getByText("U14 is not read yet.")).toBeVisible();
 });
 
