@@ -809,6 +809,8 @@ export interface ReadSheetView {
   marking: string | null;
   sizeBytes: number;
   supplyMillivolts: number | null;
+  /** the drive is encrypted, or may be */
+  encrypted: boolean;
   stages: {
     stage: Stage;
     reads: { number: number; seating: number; reader: string; supplyMillivolts: number | null; crc32: string; sha256: string; operator: string; at: string; counted: boolean }[];
@@ -894,7 +896,7 @@ export interface ReturnView {
 export interface ClosingView {
   facts: ClosingFacts;
   /** the latest test of each drive, and why it may not be started yet */
-  drives: { id: string; letter: string; test: StartUpFacts | null; refusal: string | null }[];
+  drives: { id: string; letter: string; test: StartUpFacts | null; refusal: string | null; /** its own data lies inside the main controller */ noChip: boolean }[];
   /** what could go back */
   items: string[];
   customerName: string;

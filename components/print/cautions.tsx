@@ -6,6 +6,7 @@ const CAUTIONS = {
   heat: "No heat on a chip before its agreed reads exist. Mind fumes.",
   original: "Never write to the original chip.",
   donor: "Save the donor’s content first: two equal reads.",
+  encrypted: "Encrypted, or perhaps so: the enclosure’s small board and the drive stay together. Images may hold key material.",
   enclosure: "Keep the enclosure’s small board with the drive: it may hold the key to the data.",
 } as const;
 export type Caution = keyof typeof CAUTIONS;

@@ -1,6 +1,7 @@
 import { dayYearText, dueText, momentText } from "@/components/ui/times";
 import { boardName } from "@/lib/core/board-name";
 import { driveLabel } from "@/lib/core/drive-label";
+import { encryptionCaution } from "@/lib/core/encryption";
 import { shorten } from "@/lib/core/paper";
 import { countOf, sizeText } from "@/lib/core/quantity";
 import type { DriveView, PrintCaseView } from "@/lib/views";
@@ -37,6 +38,7 @@ function DriveRows({ drive }: { drive: DriveView }) {
 /** A5: goes with the job over the bench. Who, what, cautions, due, boxes to tick. */
 export function JobTicket({ view }: { view: PrintCaseView }) {
   const { case: job, policy, timeZone } = view;
+  const encrypted = job.drives.some((drive) => encryptionCaution(drive.encryption) !== null);
   const steps = [
     "Parcel received, four photos: label, board top, board bottom, connector", "Labels on bag, drive, both boards and trays",
     "Supply voltage of each chip looked up and set", "Donor’s content saved: two equal reads",
@@ -65,7 +67,7 @@ export function JobTicket({ view }: { view: PrintCaseView }) {
             </table>
           ) : <p>No drive is recorded yet: record what its label says first.</p>}
         </section>
-        <section><h2>Mind</h2><Cautions of={["static", "power", "supply", "heat", "original", "donor", "enclosure"]} /></section>
+        <section><h2>Mind</h2><Cautions of={["static", "power", "supply", "heat", "original", "donor", encrypted ? "encrypted" : "enclosure"]} /></section>
         <section><h2>Tick when done</h2><ul className="tick-list grid-cols-2">{steps.map((step) => <li key={step}><span>{step}</span></li>)}</ul></section>
         <p className="foot">Printed {dayYearText(view.printedAt, timeZone)}. What the screen says counts: this paper does not change with it.</p>
       </div>

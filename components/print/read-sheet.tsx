@@ -67,8 +67,11 @@ export function ReadSheet({ sheet, workshop, policy, timeZone }: { sheet: ReadSh
         </dl>
         <div className="grid grid-cols-2 gap-6">
           <Cautions of={CAUTIONS[sheet.board]} />
-          <p>{original ? `Needed: ${countOf(policy.reads, "equal read")} in ${countOf(policy.seatings, "seating")}. ` : `Needed: two equal reads before the write; after it ${countOf(policy.readBacks, "equal read-back")} in ${countOf(policy.readBackSeatings, "seating")}. `}
-            A seating is one time the clip or chip was put on: A, B, C. Two equal reads are no proof: a clip that sits wrong gives the same wrong image every time.</p>
+          <div className="grid content-start gap-1">
+            <p>{original ? `Needed: ${countOf(policy.reads, "equal read")} in ${countOf(policy.seatings, "seating")}. ` : `Needed: two equal reads before the write; after it ${countOf(policy.readBacks, "equal read-back")} in ${countOf(policy.readBackSeatings, "seating")}. `}
+              A seating is one time the clip or chip was put on: A, B, C. Two equal reads are no proof: a clip that sits wrong gives the same wrong image every time.</p>
+            {sheet.encrypted ? <Cautions of={["encrypted"]} /> : null}
+          </div>
         </div>
         {sheet.stages.map(({ stage, reads }) => <Lines key={stage} stage={stage} reads={reads} timeZone={timeZone} />)}
         <div className="foot">Upload every file as it is; nothing is trimmed. The digests written here are compared with those of the uploaded files. <span className="cap">Entered by, on:</span></div>

@@ -1,6 +1,7 @@
 import { dayYearText } from "@/components/ui/times";
 import { boardName } from "@/lib/core/board-name";
 import { driveLabel } from "@/lib/core/drive-label";
+import { encryptionCaution } from "@/lib/core/encryption";
 import { shorten } from "@/lib/core/paper";
 import type { PrintCaseView } from "@/lib/views";
 import { Fact, PrintHead, Sheet } from "./sheet";
@@ -17,6 +18,7 @@ function expected({ case: job, receipt }: PrintCaseView): string[] {
 /** A4: lies on top in the parcel, or is signed at the desk. */
 export function ReturnSlip({ view }: { view: PrintCaseView }) {
   const { case: job, returned, timeZone } = view;
+  const encrypted = job.drives.some((drive) => encryptionCaution(drive.encryption) !== null);
   const items = returned ? returned.items : expected(view);
   return (
     <Sheet paper="a4" flows label="Return slip">
@@ -43,6 +45,7 @@ export function ReturnSlip({ view }: { view: PrintCaseView }) {
           <ul className="tick-list">
             <li><span>Compare the seal’s number with the one above. If it differs, or the seal is broken, leave the parcel closed and tell us.</span></li>
             <li><span>Compare what is inside with the list, and tell us within a few days if something is missing.</span></li>
+            {encrypted ? <li><span>Keep the enclosure’s small board and the drive together: the small board may hold the key to your data.</span></li> : null}
             <li><span>Copy your data to another drive first. The transfer lets the drive start; it does not make it new.</span></li>
             <li><span>Keep the original board: nothing else holds its data once our copy is erased.</span></li>
           </ul>

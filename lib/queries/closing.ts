@@ -21,6 +21,7 @@ export async function closingView(actor: Actor, caseId: string): Promise<Closing
   const drives = await Drive.findAll({ where: { caseId }, order: ["position"] });
   const ids = drives.map((d) => d.id);
   const [tests, policy, { records }] = [await latestStartUps(ids), await currentPolicy(), await chipRecords(ids)];
+  const inside = new Set((await Board.findAll({ where: { driveId: ids, role: "original", dataInController: true }, attributes: ["driveId"] })).map((board) => board.driveId));
   const who = await people();
   const row = await CaseReturn.findOne({ where: { caseId } });
   const customer = await Customer.findByPk(found.customerId);
@@ -29,7 +30,7 @@ export async function closingView(actor: Actor, caseId: string): Promise<Closing
     drives: drives.map((drive) => {
       const mine = records.filter((r) => r.drive.id === drive.id);
       const test = sinceTransfer(tests.get(drive.id), mine);
-      return { id: drive.id, letter: driveLetter(drive), test: test ? startUpFacts(test) : null, refusal: startUpRefusalOf(mine, policy) };
+      return { id: drive.id, letter: driveLetter(drive), test: test ? startUpFacts(test) : null, refusal: startUpRefusalOf(mine, policy), noChip: inside.has(drive.id) };
     }),
     items: await expectedItems(caseId), customerName: customer?.name ?? "",
     returned: row ? { items: itemsOf(row), toPerson: row.toPerson, carrier: row.carrier ?? null, tracking: row.tracking ?? null, sealNumber: row.sealNumber ?? null, note: row.note ?? null, by: who(row.byUserId), at: row.at.toISOString() } : null,

@@ -1,5 +1,6 @@
 import { withCheck } from "@/lib/core/case-number";
 import { crc32Hex } from "@/lib/core/digest";
+import { encryptionCaution } from "@/lib/core/encryption";
 import { notFound } from "@/lib/commands/refuse";
 import type { Actor, Stage } from "@/lib/core/words";
 import type { ReadSheetView } from "@/lib/views";
@@ -17,6 +18,7 @@ export async function printReadSheets(actor: Actor, caseId: string, of?: string)
   return chips.map(({ drive, board, chip }) => ({
     key: chip.id, refChecked: withCheck(view.ref), driveLetter: drive.letter, board: board.role, boardNumber: board.boardNumber, revision: board.revision,
     designator: chip.designator, bus: chip.bus, package: chip.package, marking: chip.marking, sizeBytes: chip.sizeBytes, supplyMillivolts: chip.supplyMillivolts,
+    encrypted: encryptionCaution(drive.encryption) !== null,
     stages: (board.role === "original" ? ["before"] as Stage[] : ["donor", "after"] as Stage[]).map((stage) => ({
       stage,
       reads: reads.filter((r) => r.chipId === chip.id && r.stage === stage).map((r) => ({

@@ -121,6 +121,20 @@ test("a write ticket is refused before an approval, printed while it stands, and
   }
 });
 
+test("the papers of an encrypted drive say what stays together", async () => {
+  const { page } = desk;
+  const other = await makeReady(mira, { customer: "Lindmoor Veterinary Practice" });
+  await done("PATCH", `/api/drives/${other.driveId}`, { token: mira, json: { changes: { encryption: "suspected" }, reason: "The enclosure’s board may encrypt." } });
+  for (const [what, paper, words] of [["job-ticket", "a5", "small board and the drive stay together"], ["read-sheet", "a4", "small board and the drive stay together"], ["return-slip", "a4", "small board and the drive together"]] as const) {
+    await open(page, other.caseId, what);
+    expect(await stickingOut(page)).toEqual([]);
+    await expect(page.locator(".printed").first(), what).toContainText(words);
+    await printed(page, paper, folder, `${what}-encrypted`, what === "read-sheet" ? 2 : 1);
+    await open(page, longCase, what);
+    await expect(page.locator(".printed").first(), what).not.toContainText(words);
+  }
+});
+
 test("every paper is reached from the pages of case, drive and chip", async () => {
   const { page } = desk;
   for (const [address, links] of [[`/cases/${ready.caseId}`, 6], [`/drives/${ready.driveId}`, 4], [`/chips/${ready.chipId}`, 4], [`/chips/${ready.donorChipId}`, 3]] as const) {

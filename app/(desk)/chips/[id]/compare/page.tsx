@@ -1,5 +1,6 @@
 import type { Metadata } from "next";
 import { redirect } from "next/navigation";
+import { EncryptionNote } from "@/components/chip/encryption-note";
 import { CompareHead } from "@/components/compare/compare-head";
 import { CompareScreen } from "@/components/compare/compare-screen";
 import { firstReads, parseAddress, stagesToCompare } from "@/components/compare/places";
@@ -43,6 +44,7 @@ export default async function ComparePage({ params, searchParams }: { params: Pr
     <DeskShell session={session} current="bench">
       <PageMain>
         <CompareHead chip={chip} reads={own} compared={compared} stage={stage} chosen={againstApproved ? null : chosen} />
+        <EncryptionNote encryption={chip.drive.encryption} className="mb-4" />
         {compared ? <CompareScreen key={compared.reads.map((r) => r.id).join()} compared={compared} reads={againstApproved ? compared.reads : own} start={at}
           csv={againstApproved || !chosen ? null : `/api/chips/${id}/comparison/differences?reads=${chosen.join(",")}&stage=${stage}`} /> : null}
         {found && "refusal" in found ? <Note kind="block" title="These reads can’t be compared.">{found.refusal}</Note> : null}

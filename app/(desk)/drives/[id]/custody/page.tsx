@@ -1,5 +1,6 @@
 import type { Metadata } from "next";
 import { MakeBundle } from "@/components/case/make-bundle";
+import { EncryptionNote } from "@/components/chip/encryption-note";
 import { DriveLog } from "@/components/custody/drive-log";
 import { PrintButton } from "@/components/custody/print-button";
 import { DeskShell } from "@/components/shell/desk-shell";
@@ -29,6 +30,7 @@ export default async function DriveLogPage({ params }: { params: Promise<{ id: s
           <PageTitle note={<span className="flex flex-wrap gap-x-4 font-mono">{facts.map((fact) => <span key={fact}>{fact}</span>)}</span>}>Custody log of Drive {drive.letter}</PageTitle>
           <div className="no-print flex gap-3 pb-5"><PrintButton />{may(actor, "bundle.make") ? <MakeBundle caseId={drive.case.id} /> : null}</div>
         </div>
+        <EncryptionNote encryption={drive.encryption} className="mb-4" />
         <DriveLog driveId={id} entries={entries} timeZone={session.timeZone} assesses={may(actor, "assessment.record")} records={may(actor, "audit.read")} />
       </PageMain>
     </DeskShell>
