@@ -19,13 +19,17 @@ import { type ClosingInput, closingInput } from "@/lib/schemas/closing";
 import type { ClosingView } from "@/lib/views";
 import { KIND_WORDS } from "./closing-words";
 
+/** Filled in where a drive never had a chip to move. */
+const NO_CHIP_REASON = "There was no chip to move: the drive’s own data lies inside its main controller.";
+
 function CloseForm({ caseId, caseRef, closing, onClose }: { caseId: string; caseRef: string; closing: ClosingView; onClose(): void }) {
   const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
   const { facts } = closing;
-  const first: ClosedKind = facts.returned ? "returned" : facts.received ? "without-transfer" : "cancelled";
-  const { register, handleSubmit, setError, control, formState: { errors } } = useForm<z.input<typeof closingInput>, unknown, ClosingInput>({ resolver: zodResolver(closingInput), defaultValues: { kind: first, reason: "" } });
+  const nothing = closing.drives.length > 0 && closing.drives.every((drive) => drive.noChip);
+  const first: ClosedKind = facts.returned && !nothing ? "returned" : facts.received ? "without-transfer" : "cancelled";
+  const { register, handleSubmit, setError, control, formState: { errors } } = useForm<z.input<typeof closingInput>, unknown, ClosingInput>({ resolver: zodResolver(closingInput), defaultValues: { kind: first, reason: nothing ? NO_CHIP_REASON : "" } });
   const kind = useWatch({ control, name: "kind" });
   const open = openPoints(facts, kind);
   const submit = handleSubmit(async (input) => {

@@ -12,7 +12,7 @@ export function ClosingSection({ caseId, caseRef, closing, releases, timeZone }:
   const { returned, closed, eraseOn } = closing;
   if (!returned && !closed) return null;
   return (
-    <Section id="closing" title={closed ? "Returned and closed" : "Returned"} note={closed ? "A closed case takes notes; all else waits until a lead reopens it." : "A lead closes the case."}>
+    <Section id="closing" title={closed ? "Returned and closed" : "Returned"} note={closed ? "A closed case takes notes, and a hand-over that was under way can be confirmed; all else waits until a lead reopens it." : "A lead closes the case."}>
       <div className="grid gap-4">
         <dl className="grid grid-cols-[150px_minmax(0,1fr)] gap-x-4 gap-y-2 slim:grid-cols-1 slim:gap-y-0.5 [&_dt]:text-ink-2 [&_dd]:[overflow-wrap:anywhere] slim:[&_dd]:mb-1.5">
           {returned ? (

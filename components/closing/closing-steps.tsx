@@ -1,6 +1,6 @@
 import { Button, ButtonLink } from "@/components/ui/button";
 import { Mark } from "@/components/ui/mark";
-import { unverifiedChips } from "@/lib/core/closing";
+import { type CaseStep, leadingStep, unverifiedChips } from "@/lib/core/closing";
 import { may } from "@/lib/core/policy";
 import { listText } from "@/lib/core/quantity";
 import { OTHER_SERIAL_TEXT, startUpWords } from "@/lib/core/start-up";
@@ -11,9 +11,28 @@ import { startUpMark } from "./start-up-words";
 
 type Drive = ClosingView["drives"][number];
 
+/** The step of this case that stands out for this person. */
+export function stepThatLeads(view: CaseView, { drives, facts, closed }: ClosingView, user: SessionView["user"]): CaseStep | null {
+  if (closed) return null;
+  const moving = drives.filter((drive) => !drive.noChip);
+  return leadingStep({
+    ...facts, nothingToMove: drives.length > 0 && moving.length === 0, summarySent: view.shares.some((share) => !share.withdrawnAt),
+    tests: moving.map(({ test }) => test && test.spins && test.ready && test.serialMatches !== false),
+  }, { works: may(user, "read.store"), sends: may(user, "summary.send"), returns: may(user, "case.return"), releases: may(user, "case.release") });
+}
+
 function StartUpStep({ drive, several, acts, lead }: { drive: Drive; several: boolean; acts: boolean; lead: boolean }) {
   const { test, refusal } = drive;
   const of = several ? ` of Drive ${drive.letter}` : "";
+  if (drive.noChip) {
+    return (
+      <li>
+        <Mark kind="note" className="[--hole:var(--paper)]" />
+        <span><b>Nothing to read, write or test{of}</b><span className="text-ink-2">: its own data lies inside the main controller. Put the case on hold while the customer decides, then send the drive back and close the case without transfer</span></span>
+        <span />
+      </li>
+    );
+  }
   const words = acts && !refusal && !test ? "Test it" : "Look";
   return (
     <li>
@@ -25,16 +44,15 @@ function StartUpStep({ drive, several, acts, lead }: { drive: Drive; several: bo
 }
 
 /** The test of each drive: after its chips are verified, before anything goes back. */
-export function StartUpSteps({ closing, user }: { closing: ClosingView; user: SessionView["user"] }) {
+export function StartUpSteps({ closing, user, leads }: { closing: ClosingView; user: SessionView["user"]; leads: CaseStep | null }) {
   if (closing.closed) return null;
   const acts = may(user, "start-up.record");
-  const next = closing.drives.find((drive) => !drive.test && !drive.refusal);
-  const ready = closing.facts.chips.length > 0 && unverifiedChips(closing.facts).length === 0;
-  return closing.drives.map((drive) => <StartUpStep key={drive.id} drive={drive} several={closing.drives.length > 1} acts={acts} lead={ready && drive === next} />);
+  const next = closing.drives.find((drive) => !drive.noChip && !drive.test && !drive.refusal);
+  return closing.drives.map((drive) => <StartUpStep key={drive.id} drive={drive} several={closing.drives.length > 1} acts={acts} lead={leads === "start-up" && drive === next} />);
 }
 
 /** The return, then the release by a lead. */
-export function ReturnSteps({ view, closing, user }: { view: CaseView; closing: ClosingView; user: SessionView["user"] }) {
+export function ReturnSteps({ view, closing, user, leads }: { view: CaseView; closing: ClosingView; user: SessionView["user"]; leads: CaseStep | null }) {
   const { returned, closed, facts } = closing;
   if (closed) return null;
   const [returns, releases] = [may(user, "case.return"), may(user, "case.release")];
@@ -45,12 +63,12 @@ export function ReturnSteps({ view, closing, user }: { view: CaseView; closing: 
       <li>
         <Mark kind={returned ? "ok" : facts.received ? "run" : "wait"} className="[--hole:var(--paper)]" />
         <span><b>{returned ? "Returned" : "Pack what goes back and record the return"}</b><span className="text-ink-2">{returned ? `: ${countItems(returned.items)}` : beforeReturn ? `; ${beforeReturn}` : ""}</span></span>
-        {returned ? <ButtonLink href={`/cases/${view.id}/print/return-slip`}>Return slip</ButtonLink> : returns && facts.received ? <RecordReturn caseId={view.id} closing={closing} lead={false} /> : <Button disabled>Record the return…</Button>}
+        {returned ? <ButtonLink href={`/cases/${view.id}/print/return-slip`}>Return slip</ButtonLink> : returns && facts.received ? <RecordReturn caseId={view.id} closing={closing} lead={leads === "return"} /> : <Button disabled>Record the return…</Button>}
       </li>
       <li>
         <Mark kind={returned ? "run" : "wait"} className="[--hole:var(--paper)]" />
         <span><b>Release and close the case</b><span className="text-ink-2">{releases ? (returned ? "" : "; after the return, or with a reason") : "; a lead closes it"}</span></span>
-        {releases ? <CloseCase caseId={view.id} caseRef={view.ref} closing={closing} lead={Boolean(returned) && open.length === 0} /> : <Button disabled>Close the case…</Button>}
+        {releases ? <CloseCase caseId={view.id} caseRef={view.ref} closing={closing} lead={leads === "close"} /> : <Button disabled>Close the case…</Button>}
       </li>
     </>
   );

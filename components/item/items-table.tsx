@@ -12,7 +12,16 @@ import { handOverSteps, itemWords, waitsWords } from "./item-words";
 type Open = { kind: "hand-over"; item: ItemView } | { kind: "confirm" | "deny"; item: ItemView; handOver: HandOverView } | null;
 
 /** Where each item of a drive is, and what can be done about it. */
-export function ItemsTable({ driveId, items, user, receivers, acts, timeZone }: { driveId: string; items: ItemView[]; user: { id: string; name: string; role: string }; receivers: PersonView[]; acts: boolean; timeZone: string }) {
+export function ItemsTable({ driveId, items, user, receivers, acts, open: begins, timeZone }: {
+  driveId: string;
+  items: ItemView[];
+  user: { id: string; name: string; role: string };
+  receivers: PersonView[];
+  acts: boolean;
+  /** the case is open: on a closed one a hand-over ends, and none begins */
+  open: boolean;
+  timeZone: string;
+}) {
   const [open, setOpen] = useState<Open>(null);
   const close = () => setOpen(null);
   return (
@@ -31,7 +40,7 @@ export function ItemsTable({ driveId, items, user, receivers, acts, timeZone }: 
               <td data-l="Condition" className="[overflow-wrap:anywhere]">{(item.open ?? item.at)?.condition ?? <span className="text-ink-3">as recorded</span>}</td>
               <td data-l="Seal" className="font-mono">{(item.open ?? item.at)?.sealNumber ?? <span className="font-sans text-ink-3">none</span>}</td>
               <td data-l="Since" className="whitespace-nowrap">{item.at ? momentText(item.at.confirmed!.at, timeZone) : ""}</td>
-              {acts ? <td className="l-full"><Steps item={item} user={user} onOpen={setOpen} /></td> : null}
+              {acts ? <td className="l-full"><Steps item={item} user={user} begins={begins} onOpen={setOpen} /></td> : null}
             </tr>
           ))}
         </tbody>
@@ -42,7 +51,8 @@ export function ItemsTable({ driveId, items, user, receivers, acts, timeZone }: 
   );
 }
 
-function Steps({ item, user, onOpen }: { item: ItemView; user: { id: string; role: string }; onOpen(open: Open): void }) {
+function Steps({ item, user, begins, onOpen }: { item: ItemView; user: { id: string; role: string }; begins: boolean; onOpen(open: Open): void }) {
+  if (!item.open && !begins) return null;
   if (!item.open) return <Button size="small" onClick={() => onOpen({ kind: "hand-over", item })}>Hand over…</Button>;
   const handOver = item.open;
   const { confirms, denies } = handOverSteps(handOver, user);

@@ -33,6 +33,31 @@ export function closeRefusal(facts: ClosingFacts, kind: ClosedKind, reason: stri
   return null;
 }
 
+/** What a case needs next of all that its page offers. */
+export type CaseStep = "chips" | "start-up" | "summary" | "return" | "close";
+
+export interface StepFacts extends Pick<ClosingFacts, "received" | "returned" | "chips"> {
+  /** one a drive whose chips move: did its start-up test go as it should, null where it was not tested */
+  tests: readonly (boolean | null)[];
+  /** the data of every drive lies inside its main controller */
+  nothingToMove: boolean;
+  summarySent: boolean;
+}
+
+/** The one step that leads for somebody with these rights; null when it is not theirs, or somebody has to think first. */
+export function leadingStep(f: StepFacts, can: { works: boolean; sends: boolean; returns: boolean; releases: boolean }): CaseStep | null {
+  if (!f.nothingToMove) {
+    if (f.chips.length === 0) return null;
+    if (unverifiedChips(f).length > 0) return can.works ? "chips" : null;
+    if (!f.returned && f.tests.includes(null)) return can.works ? "start-up" : null;
+    if (!f.returned && f.tests.includes(false)) return null;
+    if (!f.summarySent && can.sends) return "summary";
+  }
+  if (!f.received) return null;
+  if (!f.returned) return can.returns ? "return" : null;
+  return can.releases ? "close" : null;
+}
+
 /** The day from which the images are due for erasure. `day` is a calendar day of the workshop (year-month-day). */
 export function erasureDay(day: string, days: number): string {
   const at = new Date(`${day}T00:00:00Z`);
@@ -42,7 +67,8 @@ export function erasureDay(day: string, days: number): string {
 
 /**
  * What may still be written down about a closed case: what leaves the house, what the customer or an auditor does, notes,
- * and the end of a hand-over that was under way. All else waits until a lead reopens it.
+ * and the end of a hand-over that was under way: who has a thing is to be known whatever becomes of its case. A new
+ * hand-over is none of them. All else waits until a lead reopens it.
  */
 const ON_A_CLOSED_CASE: ReadonlySet<Action> = new Set<Action>([
   "note.added", "case.closed", "case.reopened", "bundle.started", "bundle.completed", "summary.sent", "summary.opened", "share.withdrawn", "image.handed-out",

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { closeRefusal, type ClosingFacts, erasureDay, isAllowedOnClosed, openPoints, returnItems, unverifiedChips } from "@/lib/core/closing";
+import { closeRefusal, type ClosingFacts, erasureDay, isAllowedOnClosed, leadingStep, openPoints, returnItems, unverifiedChips } from "@/lib/core/closing";
 import { ACTIONS, type Action } from "@/lib/core/custody-actions";
 
 const facts = (over: Partial<ClosingFacts> = {}): ClosingFacts => ({ received: true, returned: true, chips: [{ name: "U12", state: "verified" }], otherSerial: [], ...over });
@@ -35,6 +35,38 @@ describe("closing a case", () => {
   });
 });
 
+describe("the step that leads", () => {
+  const all = { works: true, sends: true, returns: true, releases: true };
+  const at = (over: Partial<Parameters<typeof leadingStep>[0]> = {}) => ({ received: true, returned: false, chips: [{ name: "U12", state: "verified" as const }], tests: [true], nothingToMove: false, summarySent: true, ...over });
+
+  it.each([
+    ["a chip is not verified", at({ chips: [{ name: "U12", state: "written" }], tests: [null] }), "chips"],
+    ["one of two drives was not tested", at({ tests: [true, null] }), "start-up"],
+    ["the customer has no summary", at({ summarySent: false }), "summary"],
+    ["nothing went back", at(), "return"],
+    ["all went back", at({ returned: true }), "close"],
+    ["it went back untested", at({ returned: true, tests: [null] }), "close"],
+    ["there is no chip to move", at({ nothingToMove: true, chips: [], tests: [], summarySent: false }), "return"],
+    ["there was no chip to move and it went back", at({ nothingToMove: true, chips: [], tests: [], returned: true }), "close"],
+  ] as const)("while %s", (_, given, step) => {
+    expect(leadingStep(given, all)).toBe(step);
+  });
+
+  it("is nobody's while a test did not go as it should, a chip is still to be recorded or the parcel is not here", () => {
+    expect(leadingStep(at({ tests: [false] }), all)).toBeNull();
+    expect(leadingStep(at({ chips: [], tests: [] }), all)).toBeNull();
+    expect(leadingStep(at({ nothingToMove: true, chips: [], tests: [], received: false }), all)).toBeNull();
+  });
+
+  it("is not shown to somebody who may not take it, and the next that is theirs comes instead only past the summary", () => {
+    const technician = { ...all, sends: false, releases: false };
+    expect(leadingStep(at({ summarySent: false }), technician)).toBe("return");
+    expect(leadingStep(at({ returned: true }), technician)).toBeNull();
+    const auditor = { works: false, sends: false, returns: false, releases: false };
+    for (const one of [at(), at({ tests: [null] }), at({ chips: [{ name: "U12", state: "unread" }] }), at({ returned: true })]) expect(leadingStep(one, auditor)).toBeNull();
+  });
+});
+
 describe("a closed case", () => {
   const changes: Action[] = ["read.stored", "read.set-aside", "read.counted-again", "composite.made", "approval.asked", "approval.given", "approval.revoked", "approval.sent-back", "transfer.recorded", "drive.recorded", "drive.corrected", "board.recorded", "board.corrected", "chip.recorded", "chip.corrected", "chip.paired", "item.handed-over", "photo.added", "case.corrected", "case.held", "case.resumed", "case.returned", "start-up.tested", "board.taken-from-shelf", "parcel.received"];
   it("takes no change", () => {
@@ -43,6 +75,10 @@ describe("a closed case", () => {
 
   it("still lets out bundles, summaries and images, and takes notes", () => {
     for (const action of ["note.added", "bundle.started", "bundle.completed", "summary.sent", "image.handed-out", "share.withdrawn", "case.reopened"] as const) expect(isAllowedOnClosed(action)).toBe(true);
+  });
+
+  it("lets a hand-over that was under way end, and none begin", () => {
+    expect([isAllowedOnClosed("item.received"), isAllowedOnClosed("item.not-received"), isAllowedOnClosed("item.handed-over")]).toEqual([true, true, false]);
   });
 });
 

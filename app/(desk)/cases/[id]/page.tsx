@@ -5,7 +5,7 @@ import { ShareList } from "@/components/case/share-list";
 import { Ticket } from "@/components/case/ticket";
 import { LatestEntries } from "@/components/custody/latest-entries";
 import { ClosingSection } from "@/components/closing/closing-section";
-import { ReturnSteps, StartUpSteps } from "@/components/closing/closing-steps";
+import { ReturnSteps, StartUpSteps, stepThatLeads } from "@/components/closing/closing-steps";
 import { AddDrive } from "@/components/drive/add-drive";
 import { NotesSection } from "@/components/note/notes-section";
 import { CasePhotos } from "@/components/photo/case-photos";
@@ -41,6 +41,7 @@ export default async function CasePage({ params, searchParams }: { params: Promi
   const { user, timeZone } = session;
   const now = new Date();
   const closing = await closingView(actor, id);
+  const leads = stepThatLeads(view, closing, user);
   const receipt = await receiptView(actor, id);
   const request = await requestSection(actor, id);
   const { items: notes } = await notesOf(actor, id);
@@ -55,7 +56,7 @@ export default async function CasePage({ params, searchParams }: { params: Promi
         {view.drives.map((drive) => <DriveBlock key={drive.id} drive={drive} policy={policy} user={user} open={view.state === "open"} />)}
         {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive {...drive} lead /> : null}>Type what its label says. An external drive may show only a part number on the enclosure: that is enough.</Empty></div> : null}
         {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive {...drive} /></div> : null}
-        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} tests={<StartUpSteps closing={closing} user={user} />} end={<ReturnSteps view={view} closing={closing} user={user} />} /></Section>
+        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} leads={leads} tests={<StartUpSteps closing={closing} user={user} leads={leads} />} end={<ReturnSteps view={view} closing={closing} user={user} leads={leads} />} /></Section>
         <ClosingSection caseId={id} caseRef={view.ref} closing={closing} releases={may(actor, "case.release")} timeZone={timeZone} />
         {view.state === "requested" ? null : parcel}
         <NotesSection view={view} notes={notes} user={user} timeZone={timeZone} />

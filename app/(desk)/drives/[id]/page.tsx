@@ -53,7 +53,7 @@ export default async function DrivePage({ params }: { params: Promise<{ id: stri
         </Section>
         <StartUpSection startUps={startUps} acts={may(actor, "start-up.record")} timeZone={session.timeZone} />
         <Section id="items" title="Where things are" note="By the last hand-over that both sides confirmed.">
-          <ItemsTable driveId={id} items={items} user={session.user} receivers={others} acts={may(actor, "item.hand-over")} timeZone={session.timeZone} />
+          <ItemsTable driveId={id} items={items} user={session.user} receivers={others} acts={may(actor, "item.hand-over")} open={drive.case.open} timeZone={session.timeZone} />
         </Section>
         <Section title="Custody log" note="Each entry carries the hash of the one before.">
           <LatestEntries driveId={id} letter={drive.letter} entries={entries} timeZone={session.timeZone} />
