@@ -13,7 +13,7 @@ import { Note } from "@/components/ui/note";
 import { TextArea } from "@/components/ui/text-area";
 import { useSay } from "@/components/ui/toast";
 import { useChange } from "@/components/ui/use-change";
-import { OTHER_SERIAL_TEXT, OTHER_SERIAL_TITLE, serialMatches } from "@/lib/core/start-up";
+import { mayBecome, OTHER_SERIAL_TEXT, OTHER_SERIAL_TITLE, serialMatches } from "@/lib/core/start-up";
 import { send } from "@/lib/http/send";
 import { type StartUpInput, startUpInput } from "@/lib/schemas/start-up";
 
@@ -23,9 +23,10 @@ function StartUpForm({ driveId, label, onClose }: { driveId: string; label: stri
   const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
-  const { register, handleSubmit, control, formState: { errors } } = useForm<Form, unknown, StartUpInput>({ resolver: zodResolver(startUpInput), defaultValues: { reportedSerial: "", attempts: 1, note: "" } });
+  const { register, handleSubmit, control, formState: { errors, touchedFields } } = useForm<Form, unknown, StartUpInput>({ resolver: zodResolver(startUpInput), defaultValues: { reportedSerial: "", attempts: 1, note: "" } });
   const reported = useWatch({ control, name: "reportedSerial" });
-  const matches = serialMatches(label, typeof reported === "string" ? reported : null);
+  const serial = typeof reported === "string" ? reported : null;
+  const isAnother = serialMatches(label, serial) === false && (touchedFields.reportedSerial === true || !mayBecome(label, serial));
   const submit = handleSubmit(async (input) => {
     if (!(await attempt(() => send("POST", `/api/drives/${driveId}/start-up-test`, input)))) return;
     say({ text: "The start-up test is recorded." });
@@ -49,9 +50,9 @@ function StartUpForm({ driveId, label, onClose }: { driveId: string; label: stri
         {choice("ready", "Does it get ready?", "It gets ready", "It does not get ready")}
         <Input label="Serial that the drive reports" mono autoComplete="off" hint={label ? `On the label: ${label}. Leave empty when it reports none.` : "No serial of the label is recorded. Leave empty when it reports none."} error={errors.reportedSerial?.message} {...register("reportedSerial")} />
         <Input label="Attempts" type="number" min={1} max={100} inputMode="numeric" hint="How often it was powered" error={errors.attempts?.message} {...register("attempts", { valueAsNumber: true })} />
+        {isAnother ? <div className="col-span-full"><Note kind="block" role="alert" title={OTHER_SERIAL_TITLE}>{OTHER_SERIAL_TEXT} Record the test all the same.</Note></div> : null}
         <TextArea label="Note" className="col-span-full" hint="Sounds, smells, current, how long it took" error={errors.note?.message} {...register("note")} />
       </div>
-      {matches === false ? <Note kind="block" role="alert" title={OTHER_SERIAL_TITLE}>{OTHER_SERIAL_TEXT} Record the test all the same.</Note> : null}
     </FormDialog>
   );
 }

@@ -20,6 +20,11 @@ export function serialMatches(label: string | null | undefined, reported: string
   return a === "" || b === "" ? null : a === b;
 }
 
+/** While it is typed: could this still become the serial of the label? Nobody is stopped over a serial that is half typed. */
+export function mayBecome(label: string | null | undefined, typed: string | null | undefined): boolean {
+  return bare(label ?? "").startsWith(bare(typed ?? ""));
+}
+
 /** Why a start-up test decides nothing good: another drive's serial came back. */
 export const OTHER_SERIAL_TITLE = "Stop: the drive reports another drive’s serial.";
 export const OTHER_SERIAL_TEXT = "Power it off. The wrong image or the wrong board is on it. Compare board, chip and image with the labels before anything is powered again.";

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { afterPowerOn, serialMatches, startUpRefusal, startUpWords } from "@/lib/core/start-up";
+import { afterPowerOn, mayBecome, serialMatches, startUpRefusal, startUpWords } from "@/lib/core/start-up";
 
 describe("the serial that a drive reports", () => {
   it.each([
@@ -9,6 +9,11 @@ describe("the serial that a drive reports", () => {
     [null, "WX41", null], ["WX41", null, null], ["WX41", " - ", null], [null, null, null],
   ])("label %j, reported %j: %j", (label, reported, matches) => {
     expect(serialMatches(label, reported)).toBe(matches);
+  });
+
+  it("stops nobody over a serial that is half typed, and does at the first wrong character", () => {
+    for (const typed of ["", "q", "QF-22", "qf 2207 51"]) expect(mayBecome("QF-2207-51", typed), typed).toBe(true);
+    for (const typed of ["R", "QF-23", "QF-2207-511"]) expect(mayBecome("QF-2207-51", typed), typed).toBe(false);
   });
 });
 
