@@ -3,7 +3,7 @@
 import { useRouter } from "next/navigation";
 import { Button, Buttons } from "@/components/ui/button";
 import { Icon } from "@/components/ui/icon";
-import { Mark, type MarkKind } from "@/components/ui/mark";
+import { Mark } from "@/components/ui/mark";
 import { Note } from "@/components/ui/note";
 import { momentText } from "@/components/ui/times";
 import { useSay } from "@/components/ui/toast";
@@ -11,16 +11,13 @@ import { useChange } from "@/components/ui/use-change";
 import { send } from "@/lib/http/send";
 import type { MailView } from "@/lib/views";
 import { MailPreview } from "./mail-preview";
-
-const STATE: Record<MailView["state"], { mark: MarkKind; word: string }> = {
-  queued: { mark: "wait", word: "Waiting to be sent" }, sending: { mark: "run", word: "Being sent" }, sent: { mark: "done", word: "Sent" }, dead: { mark: "block", word: "Given up" },
-};
+import { mailState } from "./mail-words";
 
 /** One mail: to whom, how far it is, its text on request, and another try when it was given up. */
 export function MailLine({ mail, timeZone }: { mail: MailView; timeZone: string }) {
   const router = useRouter();
   const say = useSay();
-  const { mark, word } = STATE[mail.state];
+  const { mark, words, twice } = mailState(mail);
   const { refusal, busy, attempt } = useChange();
   const retry = () => attempt(async () => {
     await send("POST", `/api/mails/${mail.id}/retry`);
@@ -33,11 +30,11 @@ export function MailLine({ mail, timeZone }: { mail: MailView; timeZone: string 
         <summary className="grid cursor-pointer grid-cols-[minmax(0,2fr)_minmax(0,3fr)_180px_140px] items-baseline gap-x-4 gap-y-0.5 phone:grid-cols-[minmax(0,1fr)]">
           <b className="[overflow-wrap:anywhere]">{mail.to}</b>
           <span className="[overflow-wrap:anywhere]">{mail.subject}</span>
-          <span className={mail.state === "dead" ? "text-block" : ""}><Mark kind={mark} className="[--hole:var(--paper)]" /> {word}{mail.attempts > 1 || mail.state === "dead" ? `, ${mail.attempts === 1 ? "1 try" : `${mail.attempts} tries`}` : ""}</span>
+          <span className={mail.state === "dead" ? "text-block" : ""}><Mark kind={mark} className={twice ? "text-caution" : "[--hole:var(--paper)]"} /> {words}</span>
           <span className="text-ink-2">{momentText(mail.sentAt ?? mail.queuedAt, timeZone)}<span className="pl-2 text-green"><Icon name="menu" label="Read the text" className="group-open:rotate-180" /></span></span>
         </summary>
         <div className="grid gap-2 pt-2.5">
-          {mail.lastError ? <Note kind={mail.state === "dead" ? "block" : "caution"} title="What the mail server said last:">{mail.lastError}</Note> : null}
+          {mail.lastError ? <Note kind={mail.state === "dead" ? "block" : "caution"} title={twice ? "It may have arrived twice." : "What the mail server said last:"}>{mail.lastError}</Note> : null}
           <p className="text-t2 text-ink-2">Written {momentText(mail.queuedAt, timeZone)}{mail.sentAt ? `, sent ${momentText(mail.sentAt, timeZone)}` : ""}. Secret links are masked here.</p>
           <MailPreview subject={mail.subject} text={mail.text} html={mail.html} />
         </div>
