@@ -1,5 +1,6 @@
 import { VOTE_FINDINGS } from "@/components/composite/composite-words";
 import { FindingLine } from "@/components/ui/finding-line";
+import { HelpLink } from "@/components/ui/help-link";
 import { countOf } from "@/lib/core/quantity";
 import type { ChipView, ReadView } from "@/lib/views";
 import { findingMark, nameOf, namesOf, oddReads, twins } from "./chip-words";
@@ -29,7 +30,7 @@ export function ReadFindings({ chip, read }: { chip: ChipView; read: ReadView })
       {backs && cleared && cleared.sha256 === read.sha256 && !read.findings.some((f) => f.code === "verified") ? <FindingLine kind="ok">Equals the approved image</FindingLine> : null}
       {!backs && odd ? <FindingLine kind="block">{read.stage === "before" ? differenceText(chip, read) : `Differs from the donor’s other reads`}</FindingLine> : null}
       {!backs && read.counted && same.length > 0 ? <FindingLine kind="ok">Equals {namesOf(read.stage, same.map((r) => r.number))}</FindingLine> : null}
-      {read.findings.map((finding) => <FindingLine key={finding.code} kind={findingMark(finding)}>{finding.message} {finding.code === "verified" || VOTE_FINDINGS.includes(finding.code) ? "" : finding.advice}</FindingLine>)}
+      {read.findings.map((finding) => <FindingLine key={finding.code} kind={findingMark(finding)}>{finding.message} {finding.code === "verified" || VOTE_FINDINGS.includes(finding.code) ? "" : finding.advice}{finding.code === "verified" ? null : <> <HelpLink href={`/help/findings#${finding.code}`} about={finding.message} /></>}</FindingLine>)}
       {!backs && read.counted && !odd && same.length === 0 && read.findings.length === 0 ? <FindingLine kind="wait">Nothing to compare it with yet</FindingLine> : null}
       {read.note ? <span className="mt-1 block text-t2 text-ink-2">“{read.note}”</span> : null}
     </>

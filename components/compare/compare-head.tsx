@@ -1,5 +1,6 @@
 import Link from "next/link";
 import { Crumbs } from "@/components/ui/crumbs";
+import { HelpLink } from "@/components/ui/help-link";
 import { Mark } from "@/components/ui/mark";
 import { DesignatorPlate } from "@/components/ui/plate";
 import { readTitle } from "@/lib/core/derived";
@@ -36,7 +37,7 @@ export function CompareHead({ chip, reads, compared, stage, chosen }: { chip: Ch
         {verdict && compared ? (
           <p className="flex basis-full items-start gap-2.5 text-t4">
             <Mark kind={compared.equal ? "ok" : "block"} size={20} className="mt-0.5 [--hole:var(--paper)]" />
-            <span className="max-w-[86ch]"><b>{verdict.message}</b> {verdict.advice}
+            <span className="max-w-[86ch]"><b>{verdict.message}</b> {verdict.advice} <HelpLink href={`/help/findings#${verdict.code}`} about={verdict.message} />
               {compared.equal || !compared.differingBits ? null : <span className="text-ink-2"> {withCommas(compared.differingBits.zeroToOne)} bits read 0 in {a} and 1 in {b}, {withCommas(compared.differingBits.oneToZero)} the other way round.</span>}
             </span>
           </p>

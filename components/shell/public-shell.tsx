@@ -26,7 +26,7 @@ export function PublicShell({ workshop, line, demo, checking = false, children }
       {children}
       {checking ? null : (
         <footer className="no-print mx-auto flex max-w-[1120px] px-8 phone:px-4">
-          <p className="w-full border-t border-rule pt-3.5 pb-7 text-t2 text-ink-2">Have a case bundle or an image of a chip? <Link href="/verify" prefetch={false}>Check it here</Link>: nothing is sent.</p>
+          <p className="w-full border-t border-rule pt-3.5 pb-7 text-t2 text-ink-2">Have a case bundle or an image of a chip? <Link href="/verify" prefetch={false}>Check it here</Link>: nothing is sent. How the job is done and what the words mean stands in the <Link href="/help" prefetch={false}>help</Link>.</p>
         </footer>
       )}
     </>

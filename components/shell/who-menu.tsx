@@ -22,6 +22,7 @@ export function WhoMenu({ user }: { user: SessionView["user"] }) {
           <DropdownMenu.Label className="px-3.5 py-2 text-t2 text-ink-2">{user.email}</DropdownMenu.Label>
           <DropdownMenu.Item asChild><Link href="/account" className={ITEM}>Account</Link></DropdownMenu.Item>
           {may(user, "policy.change") ? null : <DropdownMenu.Item asChild><Link href="/policy" className={ITEM}>Policy</Link></DropdownMenu.Item>}
+          <DropdownMenu.Item asChild><Link href="/help" className={ITEM}>Help</Link></DropdownMenu.Item>
           <DropdownMenu.Item className={ITEM} onSelect={() => void signOut({ callbackUrl: "/sign-in" })}>Sign out</DropdownMenu.Item>
         </DropdownMenu.Content>
       </DropdownMenu.Portal>

@@ -1,6 +1,7 @@
 import { headers } from "next/headers";
 import { redirect } from "next/navigation";
 import type { Actor } from "@/lib/core/words";
+import { env } from "@/lib/env";
 import { sessionView } from "@/lib/queries/session";
 import type { SessionView } from "@/lib/views";
 import { actorOfUser } from "./account";
@@ -14,4 +15,12 @@ export async function signedIn(): Promise<{ actor: Actor; session: SessionView }
   if (user.mustChangePassword && !here.startsWith("/account")) redirect("/account?choose=password");
   const actor = await actorOfUser(user);
   return { actor, session: await sessionView(actor, user.email) };
+}
+
+/** For pages that anyone may read: who is signed in keeps the desk's shell, everybody else gets the workshop's head. */
+export async function shellForAnyone(): Promise<{ session: SessionView | null; workshop: string; demo: boolean }> {
+  const { workshop, demo } = env();
+  const user = await signedInUser();
+  const session = user && !user.mustChangePassword ? await sessionView(await actorOfUser(user), user.email) : null;
+  return { session, workshop, demo };
 }
