@@ -1,5 +1,6 @@
 import { AxeBuilder } from "@axe-core/playwright";
 import { expect, type Page, test } from "@playwright/test";
+import { TOPICS } from "@/components/help/topics";
 import type { BenchRow, CaseRow, ChipView, ListView } from "@/lib/views";
 import type { Person } from "./support/accounts";
 import { openDesk, signIn } from "./support/desk";
@@ -40,6 +41,13 @@ async function chipPaths(page: Page, person: Person): Promise<string[]> {
 test("the sign-in page and an address that holds nothing", async ({ browser }) => {
   const { page } = await openDesk(browser);
   await look(page, ["/sign-in", "/nothing-here"]);
+});
+
+test("the help, signed in and not", async ({ browser }) => {
+  test.setTimeout(400_000);
+  const { page } = await openDesk(browser);
+  await look(page, ["/help", ...TOPICS.map(({ key }) => `/help/${key}`)]);
+  await look((await signIn(browser, "mira")).page, ["/help", "/help/reads", "/help/findings"]);
 });
 
 test("a technician's pages", async ({ browser }) => {

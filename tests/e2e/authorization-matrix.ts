@@ -56,6 +56,7 @@ export const API: ApiRow[] = [
   { method: "GET", route: "/api/auth/[...nextauth]", at: () => "/api/auth/csrf", cells: anyone(200) },
   { method: "POST", route: "/api/auth/[...nextauth]", at: () => "/api/auth/callback/credentials", cells: anyone(302) },
   { method: "GET", route: "/api/health", cells: anyone(200) },
+  ...["/api/openapi.json", "/openapi.json"].map((route): ApiRow => ({ method: "GET", route, cells: anyone(200) })),
   // multipart is asked for first; the private link's secret is no account of anybody
   { method: "POST", route: "/api/requests", body: () => ({}), cells: anyone(415) },
   { method: "POST", route: "/api/requests/deletion", body: () => ({ token: "x".repeat(43) }), cells: anyone(404) },
@@ -175,6 +176,9 @@ export const PAGES: PageRow[] = [
   { route: "/", cells: anyone(307) },
   { route: "/sign-in", cells: anyone(200) },
   { route: "/verify", cells: anyone(200) },
+  { route: "/help", cells: anyone(200) },
+  { route: "/help/api", cells: anyone(200) },
+  { route: "/help/[topic]", at: () => "/help/findings", cells: anyone(200) },
   { route: "/summary/[token]", at: () => `/summary/${"x".repeat(43)}`, cells: anyone(404) },
   { route: "/request", cells: anyone(200) },
   { route: "/request/[token]", at: () => `/request/${"x".repeat(43)}`, cells: anyone(404) },
