@@ -8,6 +8,7 @@ import { ReasonDialog } from "@/components/chip/reason-dialog";
 import { compositeBehind } from "@/components/composite/composite-words";
 import { Votes } from "@/components/composite/votes";
 import { Button, Buttons } from "@/components/ui/button";
+import { HelpLink } from "@/components/ui/help-link";
 import { Note } from "@/components/ui/note";
 import { Section } from "@/components/ui/section";
 import { useSay } from "@/components/ui/toast";
@@ -70,7 +71,7 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
   });
 
   // stays whatever the refreshed sheet shows, also when another approval came first
-  const refused = refusal ? <Note kind="block" role="alert" title="You did not approve the image." className="mb-4">{refusal}</Note> : null;
+  const refused = refusal ? <Note kind="block" role="alert" title="You did not approve the image." className="mb-4">{refusal} <HelpLink href="/help/approval" about="What an approval needs" /></Note> : null;
   const waiting = chip.request && !chip.request.sentBack;
   const sendBack = waiting && may(user, "approval.send-back") ? () => setSendingBack(true) : null;
   return (

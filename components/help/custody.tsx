@@ -19,7 +19,7 @@ export function CustodyHelp() {
         <p>A note about something that happened earlier carries its own time, and is marked late. A correction is a new note that names the one it corrects.</p>
       </Part>
       <Part title="Checking a log" id="check">
-        <p>The log’s page checks the whole log when you open it: every entry’s form, link and signature, and its head. “Clean” means that nothing was changed since it was written, by anybody who does not hold the workshop’s key and its database both.</p>
+        <p>Press “Check the log” on the log’s page: every entry’s form, link and signature is worked out again, and the head is compared. The server does the same by itself once a day, and reads every stored image again once a week. When it finds nothing, then nothing was changed since it was written by anybody who does not hold both the workshop’s key and its database.</p>
       </Part>
       <Part title="When the check finds something" id="not-clean">
         <Steps>

@@ -38,7 +38,7 @@ export function DifferHelp() {
         <HelpTable caption="Patterns of difference and their likely causes" head={["You see", "It looks like", "Do this"]} rows={PATTERNS.map(({ code, seen }) => ({ key: code, cells: [seen, <See key="to" topic="findings" at={code}>{LOOKS_LIKE[code]}</See>, causeAdvice(code)] }))} />
       </WidePart>
       <Part title="Setting aside" id="set-aside">
-        <p>A read that is set aside counts for nothing any more, but it stays: its bytes, its findings and your reason are on the page, in the log and in the bundle. It can be counted again, with a reason too. A technician sets their own reads aside, a lead any. Whoever took a read stays a taker of it for the two-person rule.</p>
+        <p>A read that is set aside counts for nothing any more, but it stays: its bytes, its findings and your reason are on the page, in the log and in the bundle. It can be counted again, with a reason too. A technician sets their own reads aside, a lead any; a read-back is a lead’s to set aside. Whoever took a read stays a taker of it for the two-person rule.</p>
         <p>“It was in the way” is no reason. “Clip slipped, pin 5 was bent” is one.</p>
       </Part>
       <Part title="When no two agree" id="composite">
