@@ -1,5 +1,4 @@
-import { sha256 } from "@noble/hashes/sha2.js";
-import { crc32Hex, crc32Of, toHex } from "@/lib/core/digest";
+import { digestsOf } from "@/lib/core/digest-stream";
 
 /** Hashes one file while it streams, so that 64 MiB never lie in memory at once and the page stays quick. */
 export interface DigestRequest {
@@ -23,23 +22,13 @@ answer({ kind: "ready" });
 
 async function digest(file: File): Promise<void> {
   try {
-    const hash = sha256.create();
-    let crc = 0;
-    let done = 0;
     let told = 0;
-    const reader = file.stream().getReader();
-    for (;;) {
-      const { done: end, value } = await reader.read();
-      if (end) break;
-      hash.update(value);
-      crc = crc32Of(value, crc);
-      done += value.length;
-      if (done - told >= STEP_BYTES) {
-        told = done;
-        answer({ kind: "progress", done });
-      }
-    }
-    answer({ kind: "done", sha256: toHex(hash.digest()), crc32: crc32Hex(crc) });
+    const { sha256, crc32 } = await digestsOf(file.stream(), (done) => {
+      if (done - told < STEP_BYTES) return;
+      told = done;
+      answer({ kind: "progress", done });
+    });
+    answer({ kind: "done", sha256, crc32 });
   } catch (error) {
     answer({ kind: "unreadable", message: error instanceof Error ? error.message : String(error) });
   }

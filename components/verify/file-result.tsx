@@ -7,12 +7,12 @@ import { FindingLine } from "@/components/ui/finding-line";
 import { Icon } from "@/components/ui/icon";
 import { Input } from "@/components/ui/input";
 import { Section } from "@/components/ui/section";
+import type { StreamDigests } from "@/lib/core/digest-stream";
 import { sizeText, withCommas } from "@/lib/core/quantity";
 import { fingerprintOf } from "@/lib/core/verify/seal";
-import type { FileDigests } from "./verify.worker";
 
 /** Check numbers of one file, and whether they are those that somebody gives. */
-export function FileResult({ file, digests, onAnother }: { file: File; digests: FileDigests; onAnother(): void }) {
+export function FileResult({ file, digests, onAnother }: { file: File; digests: StreamDigests; onAnother(): void }) {
   const [pasted, setPasted] = useState("");
   const wanted = pasted.trim() === "" ? null : fingerprintOf(pasted);
   const wrong = pasted.trim() !== "" && wanted === null;

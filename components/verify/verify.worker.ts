@@ -1,6 +1,5 @@
-import { sha256 } from "@noble/hashes/sha2.js";
 import { BlobReader } from "@zip.js/zip.js/lib/zip-core-custom.js";
-import { crc32Hex, crc32Of, toHex } from "@/lib/core/digest";
+import { digestsOf, type StreamDigests } from "@/lib/core/digest-stream";
 import { openArchive } from "@/lib/core/verify/archive";
 import { NotVerified, type VerifyReport } from "@/lib/core/verify/report";
 import { plainTools } from "@/lib/core/verify/tools";
@@ -12,16 +11,11 @@ export interface CheckRequest {
   /** 64 lower-case hex digits */
   expectedKey: string | null;
 }
-export interface FileDigests {
-  sizeBytes: number;
-  sha256: string;
-  crc32: string;
-}
 export type CheckAnswer =
   | { kind: "ready" }
   | { kind: "progress"; progress: Progress }
   | { kind: "bundle"; report: VerifyReport }
-  | { kind: "file"; digests: FileDigests }
+  | { kind: "file"; digests: StreamDigests }
   | { kind: "refused"; sentence: string };
 
 const SAY_EVERY_MS = 100;
@@ -54,20 +48,5 @@ async function check({ file, expectedKey }: CheckRequest): Promise<CheckAnswer> 
       return { kind: "bundle", report: await verifyBundle({ entries, archiveFaults: faults, source: "archive", tools: plainTools, expectedKey, onProgress: say }) };
     }
   }
-  return { kind: "file", digests: await digestsOf(file) };
-}
-
-async function digestsOf(file: File): Promise<FileDigests> {
-  const hash = sha256.create();
-  let [crc, done] = [0, 0];
-  const reader = file.stream().getReader();
-  for (;;) {
-    const { done: end, value } = await reader.read();
-    if (end) break;
-    hash.update(value);
-    crc = crc32Of(value, crc);
-    done += value.length;
-    say({ what: file.name, doneBytes: done, totalBytes: file.size });
-  }
-  return { sizeBytes: done, sha256: toHex(hash.digest()), crc32: crc32Hex(crc) };
+  return { kind: "file", digests: await digestsOf(file.stream(), (doneBytes) => say({ what: file.name, doneBytes, totalBytes: file.size })) };
 }
