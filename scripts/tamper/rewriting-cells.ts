@@ -64,7 +64,7 @@ async function cutWithSeals(db: Sql): Promise<void> {
   const [{ n }] = await db.query<{ n: number }[]>("SELECT MIN(number) AS n FROM seals");
   await db.query("DELETE FROM seals WHERE number > ?", [n]);
   await cutTail(db, WORKSHOP_CHAIN, seq);
-  await putBack(db, "week", ["users", "drives", "boards", "chips", "cases", "reads", "approvals", "transfers", "custody_heads", "custody_entries"]);
+  await putBack(db, "week", ["users", "drives", "boards", "chips", "cases", "reads", "approvals", "transfers", "hand_overs", "photos", "shares", "custody_heads", "custody_entries"]);
 }
 
 /** Root who has both signing keys: only what has left the house speaks against it. */
