@@ -48,7 +48,8 @@ async function run() {
   }
   const results = [];
   const browserOnly = option("browser");
-  if (browserOnly === null) results.push(await steps.typeCheck(), await steps.lint(), await steps.vitest());
+  // lint keeps one core busy, the tests on one database hardly more than another
+  if (browserOnly === null) results.push(await steps.typeCheck(), ...(await Promise.all([steps.lint(), steps.vitest()])));
   const built = await steps.build();
   results.push(built);
   if (built.failed === 0) results.push(await steps.browser({ filter: browserOnly }));
