@@ -130,6 +130,11 @@ export async function clear(asker: Actor, lead: Actor, at: Pair, { sha256 }: Rea
   return id;
 }
 
+/** The original's chip itself, soldered onto the donor board. */
+export async function move(actor: Actor, at: Pair, approvalId: string): Promise<void> {
+  await recordTransfer(actor, approvalId, { kind: "chip-moved", donorChipId: at.donorChip, note: "Lifted with hot air at 340 °C, soldered on by hand" });
+}
+
 export async function write(actor: Actor, at: Pair, approvalId: string): Promise<void> {
   await recordTransfer(actor, approvalId, { kind: "write", donorChipId: at.donorChip, programmer: "R2", toolVersion: "4.2", adapter: "SOIC-8 clip C4" });
 }

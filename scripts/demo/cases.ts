@@ -44,3 +44,11 @@ export async function oneChip(
   const of = (unit: string) => firmware({ kind: partNumber, unit });
   return { ...at, caseId: made.id, boards: both, image: of(serial), donorImage: of(`donor for ${serial}`) };
 }
+
+/** The case that the demo's pages show most of. */
+export interface ShownCase {
+  caseId: string;
+  boards: Boards;
+  u3: Pair;
+  u12: Pair;
+}

@@ -4,22 +4,23 @@ import { recordChip } from "@/lib/commands/record-chip";
 import { recordDrive } from "@/lib/commands/record-drive";
 import { setReadAside } from "@/lib/commands/set-read-aside";
 import { boards, FIRMWARE_CHIP, pair, readOriginal, readOtherwise, saveDonor, SETTINGS_CHIP, take } from "./bench-work";
-import { BOARDS, labelled, oneChip, receiveCase } from "./cases";
+import { BOARDS, labelled, oneChip, receiveCase, type ShownCase } from "./cases";
 import { lostContact, stuckAddressLine, unpowered } from "./faults";
 import { firmware, settings } from "./images";
 import type { Staff } from "./people";
 
-/** Cases whose chips still have to be read, explained or approved. */
-export async function makeOpen(staff: Staff): Promise<void> {
+/** Cases whose chips still have to be read, explained or approved. Answers the one that the demo's pages show most of. */
+export async function makeOpen(staff: Staff): Promise<ShownCase> {
   await approvalLate(staff);
   await addressLineStuck(staff);
   await approvalAskedFor(staff);
-  await clipLostContact(staff);
+  const shown = await clipLostContact(staff);
   await blankReads(staff);
   await copyOfARead(staff);
   await oneReadOfThree(staff);
   await nothingRead(staff);
   await justReceived(staff);
+  return shown;
 }
 
 async function approvalLate({ tomas }: Staff): Promise<void> {
@@ -52,7 +53,7 @@ async function approvalAskedFor({ mira }: Staff): Promise<void> {
 }
 
 /** Two drives, two chips that need transfer, one kept for reference. */
-async function clipLostContact({ mira, tomas }: Staff): Promise<void> {
+async function clipLostContact({ mira, tomas }: Staff): Promise<ShownCase> {
   const kind = "PN 4471-0093-B";
   const made = await receiveCase(mira, "Harrow & Finch Surveyors", "edda.finch@harrowfinch.example", "Power surge. Drive doesn't spin up, smell of burning. Powered once more at the office, not opened.", 1, {
     customer: { name: "Harrow & Finch Surveyors", email: "edda.finch@harrowfinch.example", phone: "01632 960 144", contact: "Edda Finch, office manager" },
@@ -72,6 +73,7 @@ async function clipLostContact({ mira, tomas }: Staff): Promise<void> {
   const board = await recordBoard(mira, second.id, { role: "original", ...BOARDS[kind], condition: "Sound" });
   const kept = await recordChip(mira, board.id, { designator: "U3", ...FIRMWARE_CHIP, needsTransfer: false });
   await readOriginal(mira, { chip: kept.id, donorChip: kept.id, name: `${made.ref}_B_U3` }, firmware({ kind, unit: "9KQ3-71C2-E5" }));
+  return { caseId: made.id, boards: both, u3, u12 };
 }
 
 async function blankReads({ tomas }: Staff): Promise<void> {
