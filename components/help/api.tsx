@@ -1,3 +1,4 @@
+import { Fragment } from "react";
 import { IDEMPOTENCY_DAYS, MAX_CALL_BYTES, MAX_FILES_A_CALL, MAX_IMAGE_BYTES, MIB } from "@/lib/limits";
 import { API_EXAMPLES } from "./api-examples";
 import { Commands, HelpTable, Part, Points, WidePart } from "./prose";
@@ -8,6 +9,11 @@ export interface ApiRoute {
   path: string;
   who: string;
   summary: string;
+}
+
+/** An address may break before a slash, and nowhere else. */
+function Call({ method, path }: { method: string; path: string }) {
+  return <code className="font-normal">{method} {path.split("/").slice(1).map((part, i) => <Fragment key={i}><wbr />/{part}</Fragment>)}</code>;
 }
 
 const STATUSES: [string, string][] = [
@@ -48,14 +54,14 @@ export function ApiHelp({ address, routes }: { address: string; routes: readonly
         {API_EXAMPLES.map(({ key, title, about, command, status, answer, gives }) => (
           <article key={key} id={key} aria-labelledby={`${key}-title`} className="grid gap-2 border-b border-rule py-4 first:pt-0 last:border-0 print:break-inside-avoid">
             <h3 id={`${key}-title`} className="text-t4 font-bold">{title}</h3>
-            <p className="max-w-[66ch] text-t4">{about}</p>
+            <p className="max-w-[54ch] text-t4">{about}</p>
             <Commands label={`Command: ${title}`}>{command}</Commands>
-            <p className="text-t3 text-ink-2 [overflow-wrap:anywhere]">Answers <b>{status}</b>; in it stands <code>{answer.trim()}</code>{gives ? <>. Keep its id as <code>{gives}</code></> : null}.</p>
+            <p className="text-t3 text-ink-2 [overflow-wrap:anywhere]">Answers <b>{status}</b>{gives ? <>. Keep the id in it as <code>{gives}</code></> : <>; in it stands <code>{answer.trim()}</code></>}.</p>
           </article>
         ))}
       </WidePart>
       <WidePart title="Routes" note="Those that stay as they are.">
-        <HelpTable caption="Routes of the interface" head={["Call", "For", "What"]} rows={routes.map(({ method, path, who, summary }) => ({ key: `${method} ${path}`, cells: [<code key="call" className="font-normal whitespace-normal [overflow-wrap:anywhere]">{method} {path}</code>, who, summary] }))} />
+        <HelpTable caption="Routes of the interface" head={["Call", "For", "What"]} rows={routes.map(({ method, path, who, summary }) => ({ key: `${method} ${path}`, cells: [<Call key="call" method={method} path={path} />, who, summary] }))} />
       </WidePart>
     </>
   );
