@@ -53,7 +53,7 @@ export function CompareBar({ current, total, at, sizeBytes, fold, under, keys, f
         </form>
         <Checkbox label="Fold lines that agree" checked={fold} onChange={(event) => onFold(event.target.checked)} />
         <Checkbox label="Reads under each other" className="phone:hidden" checked={under} onChange={(event) => onUnder(event.target.checked)} />
-        <Checkbox label="Keys N, P and G" checked={keys} onChange={(event) => onKeys(event.target.checked)} />
+        <Checkbox label="Keys of one letter" checked={keys} onChange={(event) => onKeys(event.target.checked)} />
       </div>
       {wrong ? <p id="go-wrong" role="alert" className="pt-1 text-t2 font-medium text-block">{wrong}</p> : null}
     </div>

@@ -8,7 +8,7 @@ import { readName } from "@/lib/core/words";
 import type { ComparedReads, ReadView, StripView } from "@/lib/views";
 import { CompareBar } from "./compare-bar";
 import { HexView } from "./hex-view";
-import { useLetterKeys, useLetterKeysOn } from "./letter-keys";
+import { useLetterKeys, useLetterKeysOn } from "@/components/ui/letter-keys";
 import { rangeAt, standsAlone, stepRange } from "./places";
 import { RangeList } from "./range-list";
 

@@ -7,6 +7,7 @@ import { DemoStrip } from "./demo-strip";
 import { FindField } from "./find-field";
 import { Fingers } from "./fingers";
 import { Footer } from "./footer";
+import { KeyHelp } from "./key-help";
 import { ThemeFlip } from "./theme-flip";
 import { tabsOf, type TabKey } from "./tabs";
 import { WhoMenu } from "./who-menu";
@@ -32,7 +33,7 @@ export function DeskShell({ session, current = null, children }: { session: Sess
         </div>
       </header>
       {children}
-      <Footer workshop={session.workshop} timeZone={session.timeZone} />
+      <Footer workshop={session.workshop} timeZone={session.timeZone} keys={<KeyHelp pages={tabsOf(session.user)} />} />
     </ToastProvider>
   );
 }

@@ -1,23 +1,22 @@
 "use client";
 
-import { useEffect, useRef } from "react";
+import { useRouter } from "next/navigation";
+import { useCallback, useRef } from "react";
 import { Icon } from "@/components/ui/icon";
-
-const TYPING = /^(INPUT|TEXTAREA|SELECT)$/;
+import { useLetterKeys, useLetterKeysOn } from "@/components/ui/letter-keys";
 
 /** Case, serial or digest, from anywhere; `/` goes there. A plain form, so that it works before any script. */
 export function FindField() {
   const field = useRef<HTMLInputElement>(null);
-  useEffect(() => {
-    function onKey(event: KeyboardEvent) {
-      const at = event.target as HTMLElement;
-      if (event.key !== "/" || event.ctrlKey || event.metaKey || event.altKey || TYPING.test(at.tagName) || at.isContentEditable) return;
-      event.preventDefault();
-      field.current?.focus();
-    }
-    document.addEventListener("keydown", onKey);
-    return () => document.removeEventListener("keydown", onKey);
-  }, []);
+  const router = useRouter();
+  const [keys] = useLetterKeysOn();
+  useLetterKeys(keys, useCallback((letter: string) => {
+    if (letter !== "/") return false;
+    // on a narrow screen the field is on a page of its own
+    if (field.current?.offsetParent) field.current.focus();
+    else router.push("/find");
+    return true;
+  }, [router]));
   return (
     <form action="/find" role="search" aria-label="Find from any page" className="relative flex items-center phone:hidden">
       <label htmlFor="find" className="sr-only">Find a case, serial or digest</label>
