@@ -14,6 +14,8 @@ const config = {
   typescript: { ignoreBuildErrors: true },
   // The image optimiser is switched off: nothing here needs it and it has carried remote faults before.
   images: { unoptimized: true },
+  // a browser asks for this name by itself when the page's own line comes late
+  rewrites: async () => [{ source: "/favicon.ico", destination: "/icon.svg" }],
   async headers() {
     return [
       { source: "/:path*", headers: everywhere },

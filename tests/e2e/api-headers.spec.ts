@@ -42,3 +42,10 @@ test("every answer carries headers that keep it out of caches, frames and guesse
   }
   expect((await bench(cookie)).headers.get("content-security-policy")).toBe("default-src 'none'; frame-ancestors 'none'; sandbox");
 });
+
+test("the mark that a browser asks for by itself is there", async () => {
+  const [own, usual] = [await call("GET", "/icon.svg"), await call("GET", "/favicon.ico")];
+  expect([own.status, usual.status]).toEqual([200, 200]);
+  expect(usual.bytes.equals(own.bytes)).toBe(true);
+  expect(usual.headers.get("content-type")).toContain("image/svg+xml");
+});

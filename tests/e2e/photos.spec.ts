@@ -128,12 +128,12 @@ test("photos are chosen, told why not, seen larger and walked through by keyboar
   const drive = page.getByRole("region", { name: "Photos of Drive A" });
   const [label, connector] = [await picture({ location: true }), await picture({ format: "png" })];
   await drive.getByLabel(/^Caption/).fill("The label");
-  await drive.locator("input[type=file]").setInputFiles([
+  await drive.locator("input[type=file][multiple]").setInputFiles([
     { name: "label.jpg", mimeType: "image/jpeg", buffer: label }, { name: "IMG_7.HEIC", mimeType: "image/heic", buffer: ftyp("heic", "mif1") },
   ]);
   // two at once go beside each other, and the smaller one may be there first
   await expect(drive.getByText("Stored", { exact: true })).toHaveCount(1);
-  await drive.locator("input[type=file]").setInputFiles([{ name: "connector.png", mimeType: "image/png", buffer: connector }]);
+  await drive.locator("input[type=file][multiple]").setInputFiles([{ name: "connector.png", mimeType: "image/png", buffer: connector }]);
   await expect(drive.getByRole("list", { name: /^Photos of/ }).getByRole("listitem")).toHaveCount(2);
   await expect(drive.getByRole("alert")).toHaveText(/This is a HEIC photo\. Set the phone's camera/);
   await drive.getByRole("button", { name: "Take IMG_7.HEIC off the list" }).click();

@@ -13,7 +13,7 @@ export async function openDesk(browser: Browser): Promise<Desk> {
   const context = await browser.newContext({ acceptDownloads: true, viewport: { width: 1440, height: 1000 } });
   const troubles: string[] = [];
   context.on("console", (message) => {
-    if (message.type() === "error") troubles.push(`console: ${message.text()}`);
+    if (message.type() === "error") troubles.push(`console: ${message.text()} (${message.location().url})`);
   });
   context.on("weberror", (error) => troubles.push(`script: ${error.error().message}`));
   context.on("response", (response) => {
