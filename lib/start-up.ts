@@ -1,3 +1,4 @@
+import { finishErasures } from "@/lib/commands/erased-image";
 import { introduceKey } from "@/lib/commands/introduce-key";
 import { judgeAgain } from "@/lib/commands/judge-again";
 import { startScrub } from "@/lib/commands/scrub-loop";
@@ -17,6 +18,7 @@ export async function startUp(): Promise<void> {
     await checkDatabase();
     await introduceKey();
     await clearIncoming(STALE_UPLOAD_MS);
+    await finishErasures();
     startOutbox();
     startSeals();
     startScrub();

@@ -12,7 +12,7 @@ import type { Sibling } from "./core/two-chips";
 import type { SealProof } from "./core/seal";
 import type { AskedDrive } from "./core/drive-from-request";
 import type {
-  AsSent, BoardRole, Bus, ChipStateCode, ClosedKind, Encryption, Finding, Format, ItemType, KeyPurpose, Method, PhotoKind, PhotoSubject, Policy,
+  AsSent, BoardRole, Bus, ChipStateCode, ClosedKind, Encryption, EraseCause, Finding, Format, ItemType, KeyPurpose, Method, PhotoKind, PhotoSubject, Policy,
   Range, Role, SealCause, SizeSource, Stage, TransferKind, WaitingFor,
 } from "./core/words";
 
@@ -20,6 +20,14 @@ export interface PersonView {
   id: string;
   name: string;
   role: Role | "system";
+}
+
+/** The stored bytes were given up; digest, size and findings stay. */
+export interface ErasedView {
+  at: string;
+  cause: EraseCause;
+  /** the sentence for whoever would open it */
+  text: string;
 }
 
 export interface ReadView {
@@ -56,8 +64,9 @@ export interface ReadView {
   source: { sha256: string; base: number; fill: number } | null;
   /** for a composite: how it was made */
   derived: { method: string; voters: number[]; excluded: number[]; disputedBytes: number; weak: number; constructed: number; limit: string } | null;
-  /** false when the stored image is damaged or missing */
+  /** false when the stored image is damaged, missing or erased */
   imageSound: boolean;
+  erased?: ErasedView | null;
 }
 
 /** Behind a composite: who voted what for each disputed byte (the stored report, CompositeReport of lib/core). */
@@ -286,8 +295,9 @@ export interface PhotoView {
   /** null: the customer, with the request */
   by: PersonView | null;
   storedAt: string;
-  /** false: the original is damaged or missing */
+  /** false: the original is damaged, missing or erased */
   sound: boolean;
+  erased?: ErasedView | null;
 }
 
 /** One photo on a page of its own, among the others of the same thing. */

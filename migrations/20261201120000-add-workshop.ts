@@ -147,12 +147,43 @@ export async function up({ context: q }: { context: QueryInterface }): Promise<v
     CONSTRAINT case_returns_case FOREIGN KEY (case_id) REFERENCES cases (id),
     CONSTRAINT case_returns_by FOREIGN KEY (by_user_id) REFERENCES users (id)
   ) ENGINE=InnoDB`);
+  // Rows outlive what they tell of: an erased image keeps its digest, its size and what was found on it.
+  await run(`ALTER TABLE images
+    MODIFY state ENUM('sound','damaged','missing','erased') NOT NULL DEFAULT 'sound',
+    ADD COLUMN erased_at DATETIME(6) NULL,
+    ADD COLUMN erased_cause ENUM('due','asked-for') NULL,
+    ADD KEY images_state (state),
+    ADD CONSTRAINT images_erased CHECK ((state = 'erased') = (erased_at IS NOT NULL) AND (erased_at IS NULL) = (erased_cause IS NULL))`);
+  await run("ALTER TABLE cases ADD COLUMN kept_until DATE NULL, ADD COLUMN kept_reason TEXT NULL, ADD COLUMN erased_at DATETIME(6) NULL, ADD KEY cases_erase (erase_on)");
+  await run(`ALTER TABLE requests ADD COLUMN deletion_answered_at DATETIME(6) NULL, ADD COLUMN deletion_answer TEXT NULL, ADD COLUMN deletion_answered_by ${ID} NULL,
+    ADD CONSTRAINT requests_answered_by FOREIGN KEY (deletion_answered_by) REFERENCES users (id)`);
+  await run(`CREATE TABLE erasures (
+    id ${ID} NOT NULL PRIMARY KEY,
+    case_id ${ID} NOT NULL,
+    cause ENUM('due','asked-for') NOT NULL,
+    reason TEXT NOT NULL,
+    erased MEDIUMTEXT NOT NULL,
+    kept MEDIUMTEXT NOT NULL,
+    images INT UNSIGNED NOT NULL,
+    photos INT UNSIGNED NOT NULL,
+    bytes BIGINT UNSIGNED NOT NULL,
+    by_user_id ${ID} NOT NULL,
+    at DATETIME(6) NOT NULL,
+    KEY erasures_case (case_id, at),
+    CONSTRAINT erasures_case FOREIGN KEY (case_id) REFERENCES cases (id),
+    CONSTRAINT erasures_by FOREIGN KEY (by_user_id) REFERENCES users (id)
+  ) ENGINE=InnoDB`);
   await run("ALTER TABLE mails ADD COLUMN kind VARCHAR(40) CHARACTER SET ascii COLLATE ascii_bin NOT NULL DEFAULT 'other'");
 }
 
 export async function down({ context: q }: { context: QueryInterface }): Promise<void> {
   const run = (sql: string) => q.sequelize.query(sql);
   await run("ALTER TABLE mails DROP COLUMN kind");
+  await q.dropTable("erasures");
+  await run("ALTER TABLE requests DROP FOREIGN KEY requests_answered_by");
+  await run("ALTER TABLE requests DROP COLUMN deletion_answered_at, DROP COLUMN deletion_answer, DROP COLUMN deletion_answered_by");
+  await run("ALTER TABLE cases DROP KEY cases_erase, DROP COLUMN kept_until, DROP COLUMN kept_reason, DROP COLUMN erased_at");
+  await run("ALTER TABLE images DROP CONSTRAINT images_erased, DROP KEY images_state, DROP COLUMN erased_at, DROP COLUMN erased_cause, MODIFY state ENUM('sound','damaged','missing') NOT NULL DEFAULT 'sound'");
   for (const table of ["case_returns", "start_up_tests", "notes", "photos", "shelf_boards", "receipts", "requests"]) await q.dropTable(table);
   await run("ALTER TABLE chips DROP CONSTRAINT chips_place, DROP COLUMN place_x, DROP COLUMN place_y");
   await run("ALTER TABLE boards DROP COLUMN data_in_controller");

@@ -22,6 +22,11 @@ export class Case extends Model<InferAttributes<Case>, InferCreationAttributes<C
   declare closedKind: CreationOptional<ClosedKind | null>;
   /** the day from which its images are due for erasure */
   declare eraseOn: CreationOptional<string | null>;
+  /** kept longer than that: until this day, or until a lead ends it */
+  declare keptUntil: CreationOptional<string | null>;
+  declare keptReason: CreationOptional<string | null>;
+  /** the newest erasure of its images since it was closed */
+  declare erasedAt: CreationOptional<Date | null>;
   declare closedAt: CreationOptional<Date | null>;
   declare closedReason: CreationOptional<string | null>;
 }
@@ -43,6 +48,9 @@ export function initCase(sequelize: Sequelize): void {
     returnedAt: time(true),
     closedKind: text(20, true),
     eraseOn: { type: DataTypes.DATEONLY, allowNull: true },
+    keptUntil: { type: DataTypes.DATEONLY, allowNull: true },
+    keptReason: longText(true),
+    erasedAt: time(true),
     closedAt: time(true),
     closedReason: longText(true),
   }, { sequelize, modelName: "Case", tableName: "cases" });

@@ -1,5 +1,6 @@
 import { type CreationOptional, DataTypes, type InferAttributes, type InferCreationAttributes, Model, type Sequelize } from "sequelize";
 import type { ImageFacts } from "@/lib/core/inspect";
+import type { EraseCause } from "@/lib/core/words";
 import { text, time, whole, bytes } from "./columns";
 
 export class Image extends Model<InferAttributes<Image>, InferCreationAttributes<Image>> {
@@ -8,10 +9,13 @@ export class Image extends Model<InferAttributes<Image>, InferCreationAttributes
   declare crc32: number;
   declare facts: ImageFacts;
   declare engineVersion: CreationOptional<string>;
-  declare state: CreationOptional<"sound" | "damaged" | "missing">;
+  declare state: CreationOptional<"sound" | "damaged" | "missing" | "erased">;
   declare storedAt: Date;
   /** when the stored bytes were last read whole and found equal to their digest, or not; null since they were stored */
   declare checkedAt: CreationOptional<Date | null>;
+  /** when its bytes were given up, and why; null while it is stored */
+  declare erasedAt: CreationOptional<Date | null>;
+  declare erasedCause: CreationOptional<EraseCause | null>;
 }
 
 export function initImage(sequelize: Sequelize): void {
@@ -24,5 +28,7 @@ export function initImage(sequelize: Sequelize): void {
     state: { ...text(10), defaultValue: "sound" },
     storedAt: time(),
     checkedAt: time(true),
+    erasedAt: time(true),
+    erasedCause: text(10, true),
   }, { sequelize, modelName: "Image", tableName: "images" });
 }

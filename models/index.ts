@@ -29,6 +29,7 @@ import { Photo, initPhoto } from "./photo";
 import { Note, initNote } from "./note";
 import { StartUpTest, initStartUpTest } from "./start-up-test";
 import { CaseReturn, initCaseReturn } from "./case-return";
+import { Erasure, initErasure } from "./erasure";
 import { Mail, initMail } from "./mail";
 import { Share, initShare } from "./share";
 import { IdempotencyKey, initIdempotencyKey } from "./idempotency-key";
@@ -65,6 +66,7 @@ for (const init of [
   initNote,
   initStartUpTest,
   initCaseReturn,
+  initErasure,
   initMail,
   initShare,
   initIdempotencyKey,
@@ -114,6 +116,7 @@ export {
   Note,
   StartUpTest,
   CaseReturn,
+  Erasure,
   Mail,
   Share,
   IdempotencyKey,

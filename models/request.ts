@@ -12,6 +12,10 @@ export class Request extends Model<InferAttributes<Request>, InferCreationAttrib
   declare expiresAt: Date;
   declare deletionAskedAt: CreationOptional<Date | null>;
   declare deletionMessage: CreationOptional<string | null>;
+  declare deletionAnsweredAt: CreationOptional<Date | null>;
+  /** why not yet; null where the images were erased */
+  declare deletionAnswer: CreationOptional<string | null>;
+  declare deletionAnsweredBy: CreationOptional<string | null>;
 }
 
 export function initRequest(sequelize: Sequelize): void {
@@ -25,5 +29,8 @@ export function initRequest(sequelize: Sequelize): void {
     expiresAt: time(),
     deletionAskedAt: time(true),
     deletionMessage: longText(true),
+    deletionAnsweredAt: time(true),
+    deletionAnswer: longText(true),
+    deletionAnsweredBy: reference(true),
   }, { sequelize, modelName: "Request", tableName: "requests" });
 }

@@ -4,6 +4,7 @@ import { env } from "@/lib/env";
 import * as local from "./local";
 import { imagePath } from "./paths";
 import * as reduced from "./reduced";
+import * as remove from "./remove";
 import * as writeOnce from "./write-once";
 
 export type { Arrived } from "./write-once";
@@ -23,6 +24,9 @@ export const markOfImage = (sha256: string) => local.markOfImage(env().dataDir, 
 export const stateNow = (sha256: string, sizeBytes: number) => local.stateNow(env().dataDir, sha256, sizeBytes);
 export const storeIsThere = () => local.storeIsThere(env().dataDir);
 export const verifiedStream = (sha256: string) => local.verifiedStream(env().dataDir, sha256);
+/** Takes the files of an erased image away; `liesStill` is true while any is left. */
+export const removeImage = (sha256: string) => remove.removeImage(env().dataDir, sha256);
+export const liesStill = (sha256: string) => remove.liesStill(env().dataDir, sha256);
 export const freeBytes = () => local.freeBytes(env().dataDir);
 export const clearIncoming = (olderThanMs: number) => local.clearIncoming(env().dataDir, olderThanMs);
 /** Copies of photos for the screen, by the digest of the original and their longer edge. */

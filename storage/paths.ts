@@ -22,3 +22,9 @@ export function imagesDir(dataDir: string): string {
 export function damagedDir(dataDir: string): string {
   return path.join(dataDir, "images", "damaged");
 }
+
+/** Where the copies of a photo lie, with those of others whose digest begins alike. */
+export function reducedDir(dataDir: string, sha256: string): string {
+  if (!DIGEST.test(sha256)) throw new Error("not a SHA-256 in lower-case hex");
+  return path.join(dataDir, "reduced", sha256.slice(0, 2));
+}

@@ -10,7 +10,7 @@ import type { StoredImageRow } from "@/lib/core/audit-rows";
 import { sizeText } from "@/lib/core/quantity";
 
 const column = columnsFor<StoredImageRow>();
-const STATE = { sound: { mark: "ok", word: "Equals its digest" }, damaged: { mark: "block", word: "Damaged" }, missing: { mark: "block", word: "Missing" } } as const;
+const STATE = { sound: { mark: "ok", word: "Equals its digest" }, damaged: { mark: "block", word: "Damaged" }, missing: { mark: "block", word: "Missing" }, erased: { mark: "aside", word: "Erased" } } as const;
 
 interface UsedBy {
   place: string;
@@ -45,7 +45,7 @@ export function ImageList({ list, sort, order, timeZone, empty }: {
 }) {
   const columns = useMemo(() => column.columns([
     column.accessor("sha256", { id: "sha256", header: "SHA-256", enableSorting: false, cell: ({ row }) => <span className="font-normal"><Digest sha256={row.original.sha256} /></span> }),
-    column.accessor("state", { id: "state", header: "State", cell: ({ row }) => <FindingLine kind={STATE[row.original.state].mark}>{STATE[row.original.state].word}</FindingLine> }),
+    column.accessor("state", { id: "state", header: "State", cell: ({ row }) => <FindingLine kind={STATE[row.original.state].mark}>{STATE[row.original.state].word}{row.original.erasedAt ? ` on ${exactText(row.original.erasedAt, timeZone)}` : ""}</FindingLine> }),
     column.accessor("sizeBytes", { id: "size", header: "Size", cell: ({ row }) => sizeText(row.original.sizeBytes) }),
     column.accessor("checkedAt", { id: "checked", header: "Last read whole", cell: ({ row }) => <span className="whitespace-nowrap">{row.original.checkedAt ? exactText(row.original.checkedAt, timeZone) : <span className="text-ink-2">not since it was stored</span>}</span> }),
     column.accessor("storedAt", { id: "stored", header: "Stored", cell: ({ row }) => <span className="whitespace-nowrap">{exactText(row.original.storedAt, timeZone)}</span> }),
@@ -58,6 +58,6 @@ export function ImageList({ list, sort, order, timeZone, empty }: {
   ]), [timeZone]);
   return (
     <DataTable caption="Stored images" columns={columns} list={list} sort={sort} order={order} rowId={(row) => row.sha256} empty={empty} numeric={["size"]}
-      phone={{ state: "bare l-top", uses: "bare l-full", checked: "l-row", stored: "l-row" }} rowClass={(row) => (row.state === "sound" ? "" : "is-odd")} />
+      phone={{ state: "bare l-top", uses: "bare l-full", checked: "l-row", stored: "l-row" }} rowClass={(row) => (row.state === "sound" ? "" : row.state === "erased" ? "is-aside" : "is-odd")} />
   );
 }

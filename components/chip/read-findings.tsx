@@ -26,7 +26,7 @@ export function ReadFindings({ chip, read }: { chip: ChipView; read: ReadView })
   return (
     <>
       {read.setAside ? <FindingLine kind="aside">Set aside by {read.setAside.by.name}: {read.setAside.reason}</FindingLine> : null}
-      {read.imageSound ? null : <FindingLine kind="block">The stored image is damaged or missing. Tell the lead before anything else.</FindingLine>}
+      {read.erased ? <FindingLine kind="aside">{read.erased.text}</FindingLine> : read.imageSound ? null : <FindingLine kind="block">The stored image is damaged or missing. Tell the lead before anything else.</FindingLine>}
       {backs && cleared && cleared.sha256 === read.sha256 && !read.findings.some((f) => f.code === "verified") ? <FindingLine kind="ok">Equals the approved image</FindingLine> : null}
       {!backs && odd ? <FindingLine kind="block">{read.stage === "before" ? differenceText(chip, read) : `Differs from the donor’s other reads`}</FindingLine> : null}
       {!backs && read.counted && same.length > 0 ? <FindingLine kind="ok">Equals {namesOf(read.stage, same.map((r) => r.number))}</FindingLine> : null}

@@ -65,7 +65,7 @@ function PhotoCard({ photo, timeZone }: { photo: PhotoView; timeZone: string }) 
           <span className="photo-digest"><span>SHA-256</span><Digest sha256={photo.sha256} /></span>
           {photo.kind === "document" ? <span>{typeName(photo)}, {fileSize(photo.sizeBytes)}</span> : null}
           {photo.hadLocation ? <span>The original says where it was taken; what is shown here doesn’t.</span> : null}
-          {photo.sound ? null : <FindingLine kind="block">The stored original is damaged or missing. Send the same file once more.</FindingLine>}
+          {photo.erased ? <FindingLine kind="aside">{photo.erased.text}</FindingLine> : photo.sound ? null : <FindingLine kind="block">The stored original is damaged or missing. Send the same file once more.</FindingLine>}
         </figcaption>
       </figure>
     </li>

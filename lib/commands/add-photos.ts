@@ -9,6 +9,7 @@ import type { PhotoView } from "@/lib/views";
 import { type Case, Image, inTransaction, Photo, type Transaction } from "@/models";
 import { type Arrived, writeReduced } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
+import { holdStored } from "./erased-image";
 import { keepImage } from "./keep-image";
 import { lookAtPhoto, type PhotoLook } from "./photo-look";
 import { drivesToTell, type PhotoPlace, photoPlaceFor } from "./photo-place";
@@ -116,4 +117,5 @@ const NO_ENGINE = "none";
 async function keepRow(tx: Transaction, { sizeBytes, crc32 }: Arrived, sha256: Buffer): Promise<void> {
   const facts = { sizeBytes, distinctValues: 0, dominantByte: 0, dominantCount: 0, ffCount: 0, zeroCount: 0, cells: "" };
   await Image.bulkCreate([{ sha256, sizeBytes, crc32, facts, engineVersion: NO_ENGINE, storedAt: new Date() }], { transaction: tx, ignoreDuplicates: true });
+  await holdStored(tx, sha256);
 }

@@ -2,6 +2,8 @@ import { boardLabel, chipFolder, imagePath, VOTES_ENDING } from "@/lib/core/bund
 import { crc32Hex } from "@/lib/core/digest";
 import { donorFit } from "@/lib/core/donor-fit";
 import { readName } from "@/lib/core/words";
+import type { ErasedView } from "@/lib/views";
+import { erasedOf } from "@/lib/queries/erased-views";
 import { people, type People } from "@/lib/queries/people";
 import { readView } from "@/lib/queries/read-view";
 import { derivedFacts } from "@/lib/core/derived";
@@ -35,6 +37,7 @@ interface Rows {
   transfers: Transfer[];
   /** bytes of what is kept beside images: texts as they came, reports of composites */
   sizes: Map<string, number>;
+  erased: Map<string, ErasedView>;
   who: People;
 }
 
@@ -47,7 +50,7 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
   const reads = await Read.findAll({ where: { chipId }, order: ["stage", "number"], ...at });
   const beside = await Image.findAll({ where: { sha256: reads.flatMap(besides).map((one) => Buffer.from(one.sha256, "hex")) }, ...at });
   const rows: Rows = {
-    boards, chips, reads, who: await people(tx), sizes: new Map(beside.map((i) => [i.sha256.toString("hex"), i.sizeBytes])),
+    boards, chips, reads, who: await people(tx), erased: await erasedOf([...reads.map((row) => row.sha256), ...beside.map((row) => row.sha256)], tx), sizes: new Map(beside.map((i) => [i.sha256.toString("hex"), i.sizeBytes])),
     approvals: await Approval.findAll({ where: { chipId }, order: ["givenAt", "id"], ...at }),
     requests: await ApprovalRequest.findAll({ where: { chipId }, order: ["askedAt", "id"], ...at }),
     transfers: await Transfer.findAll({ where: { chipId }, order: ["at", "id"], ...at }),
@@ -57,7 +60,7 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
   const photos = await bundlePhotos(tx, { caseId: found.id, drives, boards, chips, who: rows.who });
   const record = {
     ref: found.ref, id: found.id, requestedAt: found.requestedAt?.toISOString() ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, recordedBy: found.createdBy ? rows.who(found.createdBy) : null, damage: found.damage, note: found.note ?? null,
-    dueOn: found.dueOn ?? null, closedAt: found.closedAt?.toISOString() ?? null, closedReason: found.closedReason ?? null,
+    dueOn: found.dueOn ?? null, closedAt: found.closedAt?.toISOString() ?? null, closedReason: found.closedReason ?? null, ...(found.erasedAt ? { imagesErasedAt: found.erasedAt.toISOString() } : {}),
     customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
     drives: drives.map((drive, i) => ({
       number: i + 1, letter: driveLetter(drive), id: drive.id, partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null,
@@ -101,11 +104,13 @@ function chipRecord(rows: Rows, chip: Chip, place: { drive: number; board: strin
     place: chip.placeX == null || chip.placeY == null ? null : { x: chip.placeX, y: chip.placeY }, recordedAt: chip.createdAt.toISOString(),
     reads: rows.reads.filter((r) => r.chipId === chip.id).map((row) => {
       const path = imagePath({ ...place, stage: row.stage, number: row.number });
-      images.push({ path, sha256: row.sha256.toString("hex"), sizeBytes: row.sizeBytes });
-      for (const { sha256: digest, ending } of besides(row)) images.push({ path: path.replace(/\.bin$/, ending), sha256: digest, sizeBytes: rows.sizes.get(digest)! });
+      // what was erased keeps its name and digest in the record and is not among the files
+      const gone = rows.erased.get(row.sha256.toString("hex"));
+      if (!gone) images.push({ path, sha256: row.sha256.toString("hex"), sizeBytes: row.sizeBytes });
+      for (const { sha256: digest, ending } of besides(row)) if (!rows.erased.has(digest)) images.push({ path: path.replace(/\.bin$/, ending), sha256: digest, sizeBytes: rows.sizes.get(digest)! });
       const { id, number, stage, seating, sizeBytes, crc32, sha256, counted, findings, ...rest } = readView(row, who);
-      const { chipId: _chip, imageSound: _sound, fileName, ...equipment } = rest;
-      return { name: readName(stage, number), path, id, number, stage, seating, sizeBytes, crc32, sha256, counted, findings, originalFileName: fileName, ...equipment };
+      const { chipId: _chip, imageSound: _sound, erased: _erased, fileName, ...equipment } = rest;
+      return { name: readName(stage, number), path, id, number, stage, seating, sizeBytes, crc32, sha256, counted, findings, originalFileName: fileName, ...equipment, ...(gone ? { erased: { at: gone.at, cause: gone.cause } } : {}) };
     }),
     approvalRequests: rows.requests.filter((r) => r.chipId === chip.id).map((r) => ({
       id: r.id, askedBy: who(r.askedBy), askedAt: r.askedAt.toISOString(), message: r.message ?? null,

@@ -1,5 +1,7 @@
 import { boardLabel, casePhotoPath, drivePhotoPath } from "@/lib/core/bundle-layout";
 import { type PhotoType, TYPE_ENDING } from "@/lib/core/photo-kind";
+import type { EraseCause } from "@/lib/core/words";
+import { erasedViews } from "@/lib/queries/erased-views";
 import type { People } from "@/lib/queries/people";
 import { type Board, type Chip, type Drive, Image, Photo, ShelfBoard, type Transaction } from "@/models";
 import type { BundleImage } from "./bundle-case";
@@ -17,8 +19,9 @@ export interface BundlePhotos {
  */
 export interface PhotoRecord {
   photo: string;
-  /** null: the original is damaged or missing, so it is not in the bundle */
+  /** null: the original is damaged, missing or erased, so it is not in the bundle */
   file: string | null;
+  erased?: { at: string; cause: EraseCause };
   sha256: string;
   sizeBytes: number;
   kind: string;
@@ -49,17 +52,19 @@ export async function bundlePhotos(tx: Transaction, { caseId, drives, boards, ch
     ...(await Photo.findAll({ where: { caseId }, order: ["storedAt", "id"], ...at })),
     ...(await Photo.findAll({ where: { subjectType: "shelf-board", subjectId: shelf.map((one) => one.id) }, order: ["storedAt", "id"], ...at })),
   ];
-  const images = await Image.findAll({ attributes: ["sha256", "state"], where: { sha256: rows.map((row) => row.sha256) }, ...at });
+  const images = await Image.findAll({ attributes: ["sha256", "state", "erasedAt", "erasedCause"], where: { sha256: rows.map((row) => row.sha256) }, ...at });
   const sound = new Set(images.filter((image) => image.state === "sound").map((image) => image.sha256.toString("hex")));
+  const erased = erasedViews(images);
   const result: BundlePhotos = { ofCase: [], ofDrive: new Map(), files: [] };
   const take = (subject: string, of: string, into: PhotoRecord[], path: (number: number, ending: string) => string) => {
     for (const [i, row] of rows.filter(({ subjectId }) => subjectId === subject).entries()) {
       const sha256 = row.sha256.toString("hex");
+      const gone = erased.get(sha256);
       const file = sound.has(sha256) ? path(i + 1, TYPE_ENDING[row.mediaType as PhotoType] ?? "bin") : null;
       if (file) result.files.push({ path: file, sha256, sizeBytes: row.sizeBytes });
       into.push({
         photo: row.id, file, sha256, sizeBytes: row.sizeBytes, kind: row.kind, mediaType: row.mediaType, of, originalFileName: row.fileName, caption: row.caption ?? null,
-        pixels: row.width ? `${row.width}x${row.height}` : null, saysWhereItWasTaken: Boolean(row.hadLocation), storedAt: row.storedAt.toISOString(), by: row.byUserId ? who(row.byUserId) : "customer",
+        pixels: row.width ? `${row.width}x${row.height}` : null, saysWhereItWasTaken: Boolean(row.hadLocation), storedAt: row.storedAt.toISOString(), by: row.byUserId ? who(row.byUserId) : "customer", ...(gone ? { erased: { at: gone.at, cause: gone.cause } } : {}),
       });
     }
   };

@@ -4,6 +4,7 @@ import type { ImageFacts } from "@/lib/core/inspect";
 import { engine } from "@/lib/engine/pool";
 import { Image, type Transaction } from "@/models";
 import { type Arrived, pathOfImage } from "@/storage";
+import { holdStored } from "./erased-image";
 import { requireSoundNow } from "./require-sound-now";
 
 /** What one image shows by itself; worked out once per distinct digest and engine version, kept with the image's row. */
@@ -21,5 +22,6 @@ export async function recordImage(tx: Transaction, arrived: Arrived, facts: Imag
   await Image.bulkCreate([{ sha256, sizeBytes: arrived.sizeBytes, crc32: arrived.crc32, facts, engineVersion: ENGINE_VERSION, storedAt: new Date() }], {
     transaction: tx, ignoreDuplicates: true,
   });
+  await holdStored(tx, sha256);
   await Image.update({ facts, engineVersion: ENGINE_VERSION }, { where: { sha256, engineVersion: { [Op.ne]: ENGINE_VERSION } }, transaction: tx });
 }

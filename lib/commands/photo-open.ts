@@ -5,6 +5,7 @@ import type { Actor } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import { Photo } from "@/models";
 import { pathOfImage, readReduced, verifiedStream, writeReduced } from "@/storage";
+import { refuseErased } from "./erased-image";
 import { reduceAgain } from "./photo-look";
 import { photoPlaceFor } from "./photo-place";
 import { allow, notFound } from "./refuse";
@@ -53,6 +54,7 @@ export async function openReduced(actor: Actor, id: string, edge: ReducedEdge): 
 
 /** For whoever has asked who may see it: the copy from the folder of copies, or made from the original once it was read whole. */
 export async function reducedOf(sha256: string, sizeBytes: number, edge: ReducedEdge): Promise<Buffer> {
+  await refuseErased(sha256);
   const kept = await readReduced(sha256, edge);
   if (kept) return kept;
   await requireSoundImage(sha256, sizeBytes, "photo");

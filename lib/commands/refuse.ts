@@ -9,6 +9,7 @@ const WHO: Partial<Record<Verb, string>> = {
   "approval.send-back": "Only a lead can send an approval back.",
   "read.hand-out-any": "You can download the approved image and a donor's own content. Ask a lead or an auditor for any other image.",
   "read.set-aside": "A technician can set aside their own reads only. Ask a lead for this one.",
+  "case.erase": "Erasing images and keeping them longer is for a lead or an admin.",
   "board.allow-other-number": "The donor's board number differs from the original's. Only a lead can record it, with a reason.",
 };
 

@@ -4,6 +4,7 @@ import { type ImageUse, usesOfImages } from "@/lib/queries/image-uses";
 import { Approval, connection, CustodyEntry, Image, inTransaction, type Transaction } from "@/models";
 import { checkImage, type ImageState, type Look, lookAtImage, markOfImage, storeIsThere } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
+import { refuseErased } from "./erased-image";
 import { mailFaulty } from "./image-alarm";
 import { revokeStanding } from "./revoke-approval";
 
@@ -29,7 +30,7 @@ export async function reportImage(sha256: string, state: Exclude<ImageState, "so
   const digest = Buffer.from(sha256, "hex");
   for (let i = 0; i < LOOKS; i += 1) {
     const image = await Image.findByPk(digest);
-    if (!image) return state;
+    if (!image || image.state === "erased") return state;
     await pause(pauseMs);
     const look = await lookAtImage(sha256, image.sizeBytes);
     if (look.state !== "sound" && !(await storeIsThere())) throw new StoreAway();
@@ -45,6 +46,8 @@ async function settle(sha256: string, look: Look, where: string): Promise<boolea
   return inTransaction(async (tx) => {
     const { drives, uses } = await lockDrivesOf(tx, digest);
     const image = await Image.findByPk(digest, { transaction: tx, lock: tx.LOCK.UPDATE });
+    // what was erased meanwhile is neither damaged nor missing
+    if (image?.state === "erased") return true;
     if (!image || (await markOfImage(sha256)) !== look.mark) return !image;
     const before = image.state;
     await image.update({ state: look.state, ...checkedNow() }, { transaction: tx });
@@ -70,11 +73,11 @@ async function settle(sha256: string, look: Look, where: string): Promise<boolea
 export async function reportSound(sha256: string, where: string): Promise<void> {
   const digest = Buffer.from(sha256, "hex");
   const known = await Image.findByPk(digest);
-  if (!known || known.state === "sound") return;
+  if (!known || known.state === "sound" || known.state === "erased") return;
   await inTransaction(async (tx) => {
     const { drives } = await lockDrivesOf(tx, digest);
     const image = await Image.findByPk(digest, { transaction: tx, lock: tx.LOCK.UPDATE });
-    if (!image || image.state === "sound") return;
+    if (!image || image.state === "sound" || image.state === "erased") return;
     await image.update({ state: "sound", ...checkedNow() }, { transaction: tx });
     for (const drive of drives) await appendEntry(tx, drive, SYSTEM, "image.found-sound", { type: "image", id: drive }, { sha256, where });
   }, { receipt: false });
@@ -84,7 +87,7 @@ export async function reportSound(sha256: string, where: string): Promise<void> 
 export const checkedNow = () => ({ checkedAt: connection().literal("UTC_TIMESTAMP(6)") as unknown as Date });
 
 /** Locks the chain of every drive that has this image, in the order of their ids. */
-async function lockDrivesOf(tx: Transaction, digest: Buffer): Promise<{ drives: string[]; uses: ImageUse[] }> {
+export async function lockDrivesOf(tx: Transaction, digest: Buffer): Promise<{ drives: string[]; uses: ImageUse[] }> {
   const uses = await usesOfImages([digest], tx);
   const drives = [...new Set(uses.flatMap((use) => (use.driveId ? [use.driveId] : [])))].sort();
   for (const drive of drives) await lockChain(tx, drive);
@@ -131,8 +134,10 @@ async function foundInRound(tx: Transaction, drives: string[]): Promise<boolean>
 
 /** Reads the whole stored image before anything is built on it; a fault is written down and refused. */
 export async function requireSoundImage(sha256: string, sizeBytes: number, where: string): Promise<void> {
+  await refuseErased(sha256);
   const first = await checkImage(sha256, sizeBytes);
   const state = first === "sound" ? first : await reportImage(sha256, first, where);
   if (state === "sound") return reportSound(sha256, where);
+  await refuseErased(sha256);
   throw new AppError("rule-against", `The stored image ${sha256.slice(0, 8)}… is ${state}: it no longer matches its digest. Nothing was done with it. Tell the lead; restore it from a backup or read the chip again.`);
 }

@@ -1,3 +1,4 @@
+import { Op } from "sequelize";
 import { Image } from "@/models";
 import { lookAtImage, storeIsThere } from "@/storage";
 import { checkedNow, reportImage, reportSound, SCRUB, StoreAway } from "./report-image";
@@ -35,5 +36,5 @@ export async function scrubImage({ sha256, sizeBytes, state }: DueImage, { passe
     if (!(await storeIsThere())) throw new StoreAway();
     if (look.state !== state) return void (await reportImage(sha256, look.state, SCRUB, { pauseMs: secondLookMs }));
   }
-  await Image.update(checkedNow(), { where: { sha256: Buffer.from(sha256, "hex") } });
+  await Image.update(checkedNow(), { where: { sha256: Buffer.from(sha256, "hex"), state: { [Op.ne]: "erased" } } });
 }

@@ -41,7 +41,7 @@ export async function driveRounds(only: string | null = null, tx?: Transaction):
        CAST(SUM(i.state = 'damaged') AS INT) AS damaged, CAST(SUM(i.state = 'missing') AS INT) AS missing,
        COALESCE((SELECT CAST(JSON_VALUE(CONVERT(e.body USING utf8mb4), '$.at') AS CHAR(40)) FROM custody_entries e
          WHERE e.action = 'images.checked' AND e.chain_id = u.drive_id ORDER BY e.seq DESC LIMIT 1), '') AS closed
-     FROM (${imagesOfDrives(only === null ? "TRUE" : "d.id = :only")}) u JOIN images i ON i.sha256 = u.sha256 GROUP BY u.drive_id ORDER BY oldest, driveId`,
+     FROM (${imagesOfDrives(only === null ? "TRUE" : "d.id = :only")}) u JOIN images i ON i.sha256 = u.sha256 AND i.state <> 'erased' GROUP BY u.drive_id ORDER BY oldest, driveId`,
     { replacements: { only }, transaction: tx, type: QueryTypes.SELECT },
   );
   return rows;
@@ -59,7 +59,7 @@ export interface Limits {
 
 /** By the database's clock, and by how long one reading of the whole store takes. */
 export async function limits({ days, bytesPerSecond }: ScrubRate): Promise<Limits> {
-  const [{ bytes }] = await connection().query<{ bytes: number }>("SELECT CAST(COALESCE(SUM(size_bytes), 0) AS INT) AS bytes FROM images", { type: QueryTypes.SELECT });
+  const [{ bytes }] = await connection().query<{ bytes: number }>("SELECT CAST(COALESCE(SUM(size_bytes), 0) AS INT) AS bytes FROM images WHERE state <> 'erased'", { type: QueryTypes.SELECT });
   const wholeMs = bytesPerSecond === null ? 0 : wholeStoreMs(bytes, bytesPerSecond);
   const before = (ms: number) => text(`UTC_TIMESTAMP(6) - INTERVAL ${Math.round(ms)} * 1000 MICROSECOND`);
   const [row] = await connection().query<Limits>(`SELECT ${before(dueAgeMs(days, wholeMs))} AS due, ${before(roundMs(days, wholeMs))} AS round`, { type: QueryTypes.SELECT });
@@ -77,7 +77,7 @@ const AGE = "COALESCE(i.checked_at, i.stored_at)";
 export async function imagesToCheck(driveId: string, { round }: Limits): Promise<DueImage[]> {
   const rows = await connection().query<Row>(
     `SELECT i.sha256, i.size_bytes AS sizeBytes, i.state FROM (${imagesOfDrives("d.id = :driveId")}) u JOIN images i ON i.sha256 = u.sha256
-     WHERE i.checked_at IS NULL OR ${text("i.checked_at")} < :round ORDER BY ${AGE}, i.sha256`,
+     WHERE i.state <> 'erased' AND (i.checked_at IS NULL OR ${text("i.checked_at")} < :round) ORDER BY ${AGE}, i.sha256`,
     { replacements: { driveId, round }, type: QueryTypes.SELECT },
   );
   return rows.map(plain);
@@ -87,7 +87,7 @@ export async function imagesToCheck(driveId: string, { round }: Limits): Promise
 export async function imagesOfNone({ due }: Limits): Promise<DueImage[]> {
   const rows = await connection().query<Row>(
     `SELECT i.sha256, i.size_bytes AS sizeBytes, i.state FROM images i
-     WHERE ${text(AGE)} < :due AND i.sha256 NOT IN (SELECT u.sha256 FROM (${imagesOfDrives()}) u WHERE u.sha256 IS NOT NULL) ORDER BY ${AGE}, i.sha256`,
+     WHERE i.state <> 'erased' AND ${text(AGE)} < :due AND i.sha256 NOT IN (SELECT u.sha256 FROM (${imagesOfDrives()}) u WHERE u.sha256 IS NOT NULL) ORDER BY ${AGE}, i.sha256`,
     { replacements: { due }, type: QueryTypes.SELECT },
   );
   return rows.map(plain);

@@ -4,6 +4,7 @@ import { usesOfImages } from "@/lib/queries/image-uses";
 import { Case, Drive, inTransaction, type Transaction } from "@/models";
 import { filesArriving, freeBytes } from "@/storage";
 import { appendEntry, lockChain } from "./append-entry";
+import { finishErasures } from "./erased-image";
 import { mailMoreFaulty } from "./image-alarm";
 import { foundByScrub } from "./report-image";
 import { pacer, scrubImage } from "./scrub-image";
@@ -36,6 +37,8 @@ export const scrubNow = (): ScrubNow => (shared.twinreadScrub ??= { driveId: nul
  */
 export async function scrubNextDrive(options: ScrubOptions): Promise<number | null> {
   if ((await freeBytes()) < ROOM_FOR_THE_LOG_BYTES) throw new AppError("no-room", "The disk is full: stored images are not checked until there is room for the log. Free some space.");
+  // what a crash left of an erasure, or a backup brought back, is taken away first
+  await finishErasures();
   const limit = await limits(options);
   const rounds = await driveRounds();
   // what a killed round, or the rounds of other drives with the same images, left to be said

@@ -113,7 +113,7 @@ export function approvalConditions(facts: ApprovalFacts): Condition[] {
       value: twoPersonRule ? "two people, always" : "switched off by policy: one person may do both", state: "met",
     },
     { key: "log-clean", rule: "The drive’s custody log checks clean", value: facts.chainClean ? "checked" : "an auditor’s assessment is missing", state: facts.chainClean ? "met" : "against" },
-    { key: "image-sound", rule: "The stored images equal their digests", value: facts.imageSound ? "checked" : "damaged or missing", state: facts.imageSound ? "met" : "against" },
+    { key: "image-sound", rule: "The stored images equal their digests", value: facts.imageSound ? "checked" : "damaged, missing or erased", state: facts.imageSound ? "met" : "against" },
   ];
 }
 
@@ -154,7 +154,7 @@ export function approvalRefusal(facts: ApprovalFacts, actor: Pick<Actor, "id">, 
   if (agreement(beforeReads(facts)).largest?.sha256 !== input.sha256) {
     return "The agreed image changed meanwhile. Open the chip again and look at its reads.";
   }
-  if (!facts.imageSound) return "A stored image of this chip is damaged or missing. Set that read aside and read the chip again.";
+  if (!facts.imageSound) return "A stored image of this chip is damaged or missing, or was erased. Set that read aside and read the chip again.";
   const donor = donorRefusal(facts, input.donorChipId);
   if (donor) return donor;
   if (facts.policy.twoPersonRule && facts.takers.includes(actor.id)) {

@@ -82,8 +82,10 @@ export interface TokenRow {
 export interface StoredImageRow {
   sha256: string;
   sizeBytes: number;
-  state: "sound" | "damaged" | "missing";
+  state: "sound" | "damaged" | "missing" | "erased";
   storedAt: string;
+  /** when its bytes were given up; null while they are stored */
+  erasedAt: string | null;
   /** when its bytes were last read whole; null since it was stored */
   checkedAt: string | null;
   /** at most the first twelve, "Case 26-0042, Drive A, Orig U12, Read 2" */

@@ -74,6 +74,7 @@ const ON_A_CLOSED_CASE: ReadonlySet<Action> = new Set<Action>([
   "note.added", "case.closed", "case.reopened", "bundle.started", "bundle.completed", "summary.sent", "summary.opened", "share.withdrawn", "image.handed-out",
   "item.received", "item.not-received", "request.deletion-asked", "request.link-withdrawn", "log.assessed", "approval.refused",
   "image.found-damaged", "image.found-sound", "image.second-look", "images.checked",
+  "image.erased", "case.erased", "case.kept-longer", "request.deletion-answered",
 ]);
 
 export const isAllowedOnClosed = (action: Action): boolean => ON_A_CLOSED_CASE.has(action);

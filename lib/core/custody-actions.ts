@@ -1,6 +1,6 @@
 import { z } from "zod";
 import {
-  AS_SENT, BOARD_ROLES, BUSES, CLOSED_KINDS, ENCRYPTIONS, FORMATS, ITEM_TYPES, KEY_PURPOSES, METHODS, PHOTO_KINDS, PHOTO_SUBJECTS, readName, ROLES, SEAL_CAUSES,
+  AS_SENT, BOARD_ROLES, BUSES, CLOSED_KINDS, ENCRYPTIONS, ERASE_CAUSES, FORMATS, ITEM_TYPES, KEY_PURPOSES, METHODS, PHOTO_KINDS, PHOTO_SUBJECTS, readName, ROLES, SEAL_CAUSES,
   seatingLetter, SEVERITIES, SIZE_SOURCES, STAGES, TRANSFER_KINDS, WAITING_FOR,
 } from "./words";
 
@@ -96,6 +96,8 @@ export const ACTIONS = {
   "images.checked": spec({ images: z.int(), bytes: z.int(), damaged: z.int(), missing: z.int(), oldestBefore: optional },
     (f) => `Checked ${f.images} stored ${f.images === 1 ? "image" : "images"} of this drive: ${f.damaged + f.missing === 0 ? "each equals its digest" : `${f.damaged} damaged, ${f.missing} missing`}`,
     (f) => (f.damaged + f.missing > 0 ? "differs" : "entry")),
+  "image.erased": spec({ sha256: sha, sizeBytes: size, names: z.array(words), cause: z.enum(ERASE_CAUSES), reason: words, erasure: uuid },
+    (f) => `Erased the stored image ${short(f.sha256)}, ${kib(f.sizeBytes)}, kept as ${f.names.join("; ")}. Its digest stays`),
   "item.handed-over": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, condition: words, sealNumber: optional, note: optional },
     (f) => `Handed ${f.item.name} over from ${f.from.person}, ${f.from.place}, to ${f.to.person}, ${f.to.place}: ${f.condition}${f.sealNumber ? `; seal ${f.sealNumber}` : ""}`),
   "item.received": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, condition: words, sealNumber: optional, confirmation: optional },
@@ -104,6 +106,7 @@ export const ACTIONS = {
     (f) => `${f.item.name} did not go to ${f.to.person}; it is still with ${f.from.person}, ${f.from.place}: ${f.reason}`, "differs"),
   "request.received": spec({ caseRef: words, request: uuid, damage: words, consents: z.array(words), photos: z.int() }, (f) => `Received the request for case ${f.caseRef}: ${f.damage}`),
   "request.deletion-asked": spec({ caseRef: words, request: uuid }, (f) => `The customer of case ${f.caseRef} asked for deletion`, "differs"),
+  "request.deletion-answered": spec({ caseRef: words, request: uuid, answer: words }, (f) => `Answered the customer of case ${f.caseRef}, who asked for deletion: ${f.answer}`),
   "request.link-sent": spec({ caseRef: words, request: uuid }, (f) => `Sent the customer of case ${f.caseRef} a new private link; the former one shows nothing any more`),
   "request.link-withdrawn": spec({ caseRef: words, request: uuid }, (f) => `Withdrew the private link of the customer of case ${f.caseRef}`),
   "parcel.received": spec({ caseRef: words, receipt: uuid, carrier: optional, tracking: optional, sealAsSent: z.enum(AS_SENT), sealNumber: optional, smallBoard: z.enum(AS_SENT), condition: words, accessories: optional, differs: optional },
@@ -124,6 +127,9 @@ export const ACTIONS = {
   "case.returned": spec({ caseRef: words, items: z.array(words), carrier: optional, tracking: optional, sealNumber: optional, note: optional }, (f) => `Returned ${f.items.join(", ")} of case ${f.caseRef}${f.tracking ? `, tracking ${f.tracking}` : ""}`),
   "case.closed": spec({ caseRef: words, kind: z.enum(CLOSED_KINDS), reason: optional, unverified: z.array(words), eraseOn: optional }, (f) => `Closed case ${f.caseRef} (${f.kind.replaceAll("-", " ")})${f.unverified.length ? `, not verified: ${f.unverified.join(", ")}` : ""}${f.reason ? `: ${f.reason}` : ""}`, "signed"),
   "case.reopened": spec({ caseRef: words, reason: words }, (f) => `Opened case ${f.caseRef} again: ${f.reason}`),
+  "case.kept-longer": spec({ caseRef: words, until: optional, reason: words }, (f) => (f.until ? `Keeps the images of case ${f.caseRef} until ${f.until}: ${f.reason}` : `No longer keeps the images of case ${f.caseRef} beyond their day: ${f.reason}`)),
+  "case.erased": spec({ caseRef: words, erasure: uuid, cause: z.enum(ERASE_CAUSES), reason: words, images: size, photos: size, bytes: size, kept: z.array(z.object({ sha256: sha, names: z.array(words) })) },
+    (f) => `Erased the images of case ${f.caseRef} (${f.cause === "due" ? "their day had come" : "the customer asked for it"}): ${f.images} images, ${f.photos} photos and documents, ${f.bytes.toLocaleString("en")} bytes${f.kept.length ? `; ${f.kept.length} stay, used elsewhere too` : ""}. Reason: ${f.reason}`, "signed"),
   "bundle.started": spec({ caseRef: words, head: z.object({ seq: z.int(), hash: sha }) }, (f) => `Started the case bundle of ${f.caseRef}`),
   "bundle.completed": spec({ caseRef: words, tagManifestSha256: sha, upToSeq: z.int() }, (f) => `Completed the case bundle of ${f.caseRef}, tag manifest ${short(f.tagManifestSha256)}`, "signed"),
   "summary.sent": spec({ caseRef: words, share: uuid, expiresAt: words }, (f) => `Sent the verification summary of ${f.caseRef} to the customer`),

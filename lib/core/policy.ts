@@ -52,6 +52,7 @@ const RULES = {
   "start-up.record": BENCH,
   "case.return": BENCH,
   "case.release": ["lead"],
+  "case.erase": ["lead", "admin"],
   "request.answer": ["lead", "admin"],
   "item.hand-over": BENCH,
   "item.confirm": BENCH,

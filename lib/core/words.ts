@@ -60,6 +60,10 @@ export type WaitingFor = (typeof WAITING_FOR)[number];
 export const CLOSED_KINDS = ["returned", "without-transfer", "cancelled"] as const;
 export type ClosedKind = (typeof CLOSED_KINDS)[number];
 
+/** why a case's images were erased: their day had come, or the customer asked for it */
+export const ERASE_CAUSES = ["due", "asked-for"] as const;
+export type EraseCause = (typeof ERASE_CAUSES)[number];
+
 export const ENCRYPTIONS = ["none", "suspected", "yes"] as const;
 export type Encryption = (typeof ENCRYPTIONS)[number];
 

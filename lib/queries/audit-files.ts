@@ -59,7 +59,7 @@ const LISTS = {
   ]),
   images: list<StoredImageRow>(auditImages, "stored", [
     { header: "sha-256", cell: (row) => row.sha256 }, { header: "bytes", cell: (row) => row.sizeBytes }, { header: "state", cell: (row) => row.state }, { header: "stored", cell: (row) => row.storedAt },
-    { header: "checked", cell: (row) => row.checkedAt }, { header: "used by", cell: (row) => row.uses.map((use) => use.name).join("; ") }, { header: "uses", cell: (row) => row.useCount },
+    { header: "checked", cell: (row) => row.checkedAt }, { header: "erased", cell: (row) => row.erasedAt }, { header: "used by", cell: (row) => row.uses.map((use) => use.name).join("; ") }, { header: "uses", cell: (row) => row.useCount },
   ]),
   seals: list<AuditSealRow>(auditSeals, "number", [
     { header: "number", cell: (row) => row.number }, { header: "time", cell: (row) => row.at }, { header: "cause", cell: (row) => row.cause }, { header: "logs", cell: (row) => row.chains }, { header: "root", cell: (row) => row.root },

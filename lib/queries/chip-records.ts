@@ -2,6 +2,8 @@ import { Op } from "sequelize";
 import {
   Approval, ApprovalRequest, Board, Case, Chip, Customer, Drive, Image, Read, StartUpTest, type Transaction, Transfer,
 } from "@/models";
+import type { ErasedView } from "@/lib/views";
+import { erasedViews } from "./erased-views";
 
 /** Everything on record about one chip of an original board, its pair and what was done with them. */
 export interface ChipRecord {
@@ -24,8 +26,10 @@ export interface ChipRecord {
   request: ApprovalRequest | null;
   /** when the drive was tested on a donor board, in order */
   started: Date[];
-  /** digests whose stored image is damaged or missing */
+  /** digests whose stored image is damaged, missing or erased */
   unsound: Set<string>;
+  /** of these, the erased ones */
+  erased: Map<string, ErasedView>;
 }
 
 /**
@@ -46,9 +50,10 @@ export async function chipRecords(driveIds: string[], tx?: Transaction): Promise
   const approvals = await Approval.findAll({ where: { chipId: ids }, order: ["givenAt"], ...at });
   const transfers = await Transfer.findAll({ where: { chipId: ids }, order: ["at"], ...at });
   const requests = await ApprovalRequest.findAll({ where: { chipId: ids }, order: ["askedAt"], ...at });
-  const images = await Image.findAll({ attributes: ["sha256"], where: { state: { [Op.ne]: "sound" } }, ...at });
+  const images = await Image.findAll({ attributes: ["sha256", "state", "erasedAt", "erasedCause"], where: { state: { [Op.ne]: "sound" } }, ...at });
   const tests = await StartUpTest.findAll({ where: { driveId: driveIds }, attributes: ["driveId", "at"], order: [["at", "ASC"]], ...at });
   const unsound = new Set(images.map((i) => i.sha256.toString("hex")));
+  const erased = erasedViews(images);
 
   const boardOf = new Map(boards.map((b) => [b.id, b]));
   const driveOf = new Map(drives.map((d) => [d.id, d]));
@@ -77,7 +82,7 @@ export async function chipRecords(driveIds: string[], tx?: Transaction): Promise
       own: donorChip ? of(reads, (r) => r.chipId === donorChip.id && r.stage === "donor") : [],
       backs: of(reads, (r) => r.stage === "after" && mine.some((t) => t.id === r.transferId)),
       approvals: given, standing: given.find((a) => !a.revokedAt) ?? null, transfers: mine, request: asked.at(-1) ?? null,
-      started: of(tests, (t) => t.driveId === drive.id).map((t) => t.at), unsound,
+      started: of(tests, (t) => t.driveId === drive.id).map((t) => t.at), unsound, erased,
     });
   }
   return { records, lone };

@@ -14,6 +14,7 @@ import { chipState } from "./chip-state";
 import { siblingsOfRecord } from "./siblings";
 import { donorSummary, originalSummary, stripImage, UNPAIRED, worthDrawing } from "./chip-summary";
 import { approvalView, requestView, transferView } from "./approval-views";
+import { erasedOf } from "./erased-views";
 import { people } from "./people";
 import { currentPolicy } from "./policy";
 import { readView } from "./read-view";
@@ -34,6 +35,7 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
   const state = record ? await chipState(record, policy) : UNPAIRED;
   const summary = record && isOriginal ? await originalSummary(record, state) : await donorSummary(chip, board, own, record, state);
   const unsound = record?.unsound ?? new Set<string>();
+  const erased = record?.erased ?? (await erasedOf(reads.map((r) => r.sha256)));
   const drawn = worthDrawing(isOriginal ? reads.filter((r) => r.stage === "before") : own.filter((r) => r.stage === "donor"), unsound);
   const facts = record && approvalFacts(record, policy, await chainIsClean(drive.id));
   const takers = new Set(record?.before.map((r) => r.operatorId) ?? []);
@@ -44,7 +46,7 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
     siblings: record ? await siblingsOfRecord(records, record, policy) : [],
     board: { id: board.id, role: board.role, boardNumber: board.boardNumber, revision: board.revision ?? null },
     case: { id: place.case.id, ref: place.case.ref, dueOn: place.case.dueOn ?? null, customerName: record?.customer.name ?? "" },
-    policy, reads: reads.map((r) => readView(r, who, !unsound.has(r.sha256.toString("hex")))), groups: groupsOf(reads),
+    policy, reads: reads.map((r) => readView(r, who, !unsound.has(r.sha256.toString("hex")), erased.get(r.sha256.toString("hex")))), groups: groupsOf(reads),
     matrix: await matrixOf(reads.filter((r) => r.counted && r.stage === (isOriginal ? "before" : "donor")), unsound),
     stack: await stripStack(drawn.map(stripImage), chip.sizeBytes),
     conditions: facts ? approvalConditions(facts) : [],

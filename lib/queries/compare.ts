@@ -1,4 +1,5 @@
 import { compareIfStored, type Compared } from "@/lib/commands/compare-images";
+import { erasedText } from "@/lib/commands/erased-image";
 import { chipFor, readFor } from "@/lib/commands/place";
 import { allow } from "@/lib/commands/refuse";
 import { requireSoundImage } from "@/lib/commands/report-image";
@@ -117,6 +118,8 @@ export async function readBytes(actor: Actor, readId: string, { offset, length }
   const { read } = await readFor(actor, readId);
   if (offset >= read.sizeBytes) throw new AppError("does-not-fit", `This image ends at byte ${read.sizeBytes.toLocaleString("en")}. Choose an offset before that.`);
   const image = await Image.findByPk(read.sha256);
+  const gone = image && erasedText(image);
+  if (gone) throw new AppError("rule-against", gone);
   if (image?.state !== "sound") throw new AppError("rule-against", "The stored image no longer matches its digest, so its bytes aren't shown. Tell the lead.");
   if ((await stateNow(read.sha256.toString("hex"), read.sizeBytes)) !== "sound") await requireSoundImage(read.sha256.toString("hex"), read.sizeBytes, "a look at its bytes");
   try {

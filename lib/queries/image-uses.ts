@@ -17,6 +17,8 @@ export interface ImageUse {
   /** null for a board on the shelf */
   caseId: string | null;
   caseRef: string | null;
+  /** a photo of a board on the shelf, taken for a drive since or not: the workshop's own */
+  shelf: boolean;
   /** "Case 26-0042, Drive A, Orig U12, Read 2" */
   name: string;
 }
@@ -80,7 +82,7 @@ async function usesByReads(digests: readonly Buffer[], tx?: Transaction): Promis
     { replacements: { digests }, transaction: tx, type: QueryTypes.SELECT },
   );
   return rows.map(({ stage, number, designator, role, position, sha256, ...use }) => ({
-    ...use, sha256: sha256.toString("hex"),
+    ...use, sha256: sha256.toString("hex"), shelf: false,
     name: `Case ${use.caseRef}, Drive ${seatingLetter(position)}, ${role === "donor" ? "Donor" : "Orig"} ${designator}, ${readName(stage, number)}${KIND[use.kind]}`,
   }));
 }
@@ -113,6 +115,22 @@ async function usesByPhotos(digests: readonly Buffer[], tx?: Transaction): Promi
   return rows.map(({ shelfNumber, position, designator, role, sha256, ...use }) => {
     const board = role === "donor" ? "Donor" : "Orig";
     const place = use.caseRef === null ? [`Shelf board ${shelfNumber}`] : [`Case ${use.caseRef}`, ...(position === null ? [] : [`Drive ${seatingLetter(position)}`]), ...(role ? [designator ? `${board} ${designator}` : `${board} board`] : [])];
-    return { ...use, sha256: sha256.toString("hex"), readId: null, name: [...place, use.kind].join(", ") };
+    return { ...use, sha256: sha256.toString("hex"), readId: null, shelf: shelfNumber !== null, name: [...place, use.kind].join(", ") };
   });
+}
+
+/**
+ * Digests of what a case keeps for its customer: the images of its reads with their texts and reports of votes, and its
+ * photos and documents. Photos of a board that came from the shelf are the workshop's own.
+ */
+export async function imagesOfCase(caseId: string, tx?: Transaction): Promise<Buffer[]> {
+  const rows = await connection().query<{ sha256: Buffer }>(
+    `WITH mine AS (
+       SELECT r.sha256, r.source_sha256, ${reportOf("r.derived")} AS report FROM drives d
+       JOIN boards b ON b.drive_id = d.id JOIN chips c ON c.board_id = b.id JOIN \`reads\` r ON r.chip_id = c.id WHERE d.case_id = :caseId)
+     SELECT sha256 FROM mine UNION SELECT source_sha256 FROM mine WHERE source_sha256 IS NOT NULL UNION SELECT report FROM mine WHERE report IS NOT NULL
+     UNION SELECT sha256 FROM photos WHERE case_id = :caseId`,
+    { replacements: { caseId }, transaction: tx, type: QueryTypes.SELECT },
+  );
+  return rows.map((row) => row.sha256).sort(Buffer.compare);
 }

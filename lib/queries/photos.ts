@@ -8,6 +8,7 @@ import type { Actor, PhotoSubject } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { PhotoGroup, PhotoPageView, PhotoView } from "@/lib/views";
 import { Board, Chip, Drive, Image, Photo, ShelfBoard } from "@/models";
+import { erasedViews } from "./erased-views";
 import { people } from "./people";
 import { photoView } from "./photo-view";
 import { seenBy } from "./seen-by";
@@ -31,9 +32,10 @@ async function views(keys: readonly Key[]): Promise<PhotoView[]> {
   if (keys.length === 0) return [];
   const rows = await Photo.findAll({ where: { [Op.or]: keys.map(([subjectType, subjectId]) => ({ subjectType, subjectId })) }, order: ["storedAt", "id"] });
   if (rows.length === 0) return [];
-  const unsound = await Image.findAll({ attributes: ["sha256"], where: { sha256: rows.map((row) => row.sha256), state: { [Op.ne]: "sound" } } });
+  const unsound = await Image.findAll({ attributes: ["sha256", "state", "erasedAt", "erasedCause"], where: { sha256: rows.map((row) => row.sha256), state: { [Op.ne]: "sound" } } });
   const [who, bad] = [await people(), new Set(unsound.map((image) => image.sha256.toString("hex")))];
-  return rows.map((row) => photoView(row, who, !bad.has(row.sha256.toString("hex"))));
+  const erased = erasedViews(unsound);
+  return rows.map((row) => photoView(row, who, !bad.has(row.sha256.toString("hex")), erased.get(row.sha256.toString("hex"))));
 }
 
 /** What a drive's page shows: the drive, then each board. Every one is there, with photos or without. */

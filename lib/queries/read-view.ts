@@ -1,11 +1,11 @@
 import { derivedFacts } from "@/lib/core/derived";
 import { crc32Hex } from "@/lib/core/digest";
 import type { Finding } from "@/lib/core/words";
-import type { ReadView } from "@/lib/views";
+import type { ErasedView, ReadView } from "@/lib/views";
 import type { Read } from "@/models";
 import type { People } from "./people";
 
-export function readView(row: Read, who: People, imageSound = true): ReadView {
+export function readView(row: Read, who: People, imageSound = true, erased: ErasedView | null = null): ReadView {
   const derived = derivedFacts(row);
   return {
     id: row.id, chipId: row.chipId, number: row.number, stage: row.stage, seating: row.seating, sizeBytes: row.sizeBytes,
@@ -21,6 +21,6 @@ export function readView(row: Read, who: People, imageSound = true): ReadView {
       method: derived.method, voters: derived.voters.map((v) => v.number), excluded: derived.excluded.map((e) => e.number), disputedBytes: derived.disputedBytes,
       weak: derived.counts.weak, constructed: derived.counts.constructed, limit: derived.limit,
     },
-    imageSound,
+    imageSound, erased,
   };
 }

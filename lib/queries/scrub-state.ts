@@ -37,7 +37,8 @@ export async function scrubState(actor: Actor): Promise<ScrubView> {
   const cases = casesOf(actor);
   // an empty list is a limit too
   const replacements = { cases: cases && cases.length > 0 ? cases : [""] };
-  const from = cases === null ? "images i" : `(SELECT DISTINCT sha256 FROM (${imagesOfDrives("d.case_id IN (:cases)")}) m) u JOIN images i ON i.sha256 = u.sha256`;
+  // what was erased is stored no more: it is neither overdue nor missing
+  const from = cases === null ? "(SELECT * FROM images WHERE state <> 'erased') i" : `(SELECT DISTINCT sha256 FROM (${imagesOfDrives("d.case_id IN (:cases)")}) m) u JOIN images i ON i.sha256 = u.sha256 AND i.state <> 'erased'`;
   const ask = <T extends object>(sql: string) => connection().query<T>(sql, { replacements, type: QueryTypes.SELECT });
   const [sums] = await ask<Sums>(
     `SELECT COUNT(*) AS images, CAST(COALESCE(SUM(i.size_bytes), 0) AS INT) AS bytes, CAST(COALESCE(SUM(i.state = 'damaged'), 0) AS INT) AS damaged,

@@ -83,21 +83,22 @@ async function laneOf(a: StripImage, b: StripImage, offset: number, length: numb
   }))) ?? createWindowLane(window).finish();
 }
 
-/** Those on record as damaged or missing: not drawn, even where a strip from before is still in memory. */
-async function unsoundOf(images: readonly StripImage[]): Promise<Set<string>> {
+/** Those on record as damaged, missing or erased: not drawn, even where a strip from before is still in memory. */
+async function unsoundOf(images: readonly StripImage[]): Promise<{ unsound: Set<string>; erased: Set<string> }> {
   const sha256 = [...new Set(images.map((image) => image.sha256))].map((digest) => Buffer.from(digest, "hex"));
-  const rows = sha256.length === 0 ? [] : await Image.findAll({ attributes: ["sha256"], where: { sha256, state: { [Op.ne]: "sound" } } });
-  return new Set(rows.map((row) => row.sha256.toString("hex")));
+  const rows = sha256.length === 0 ? [] : await Image.findAll({ attributes: ["sha256", "state"], where: { sha256, state: { [Op.ne]: "sound" } } });
+  const hex = (list: typeof rows) => new Set(list.map((row) => row.sha256.toString("hex")));
+  return { unsound: hex(rows), erased: hex(rows.filter((row) => row.state === "erased")) };
 }
 
 /** The strips of these images over a window, with the lanes between neighbours. */
 export async function stripView(images: StripImage[], offset: number, length: number): Promise<StripView> {
   const rows: StripRow[] = [];
   const lanes: StripLane[] = [];
-  const unsound = await unsoundOf(images);
+  const { unsound, erased } = await unsoundOf(images);
   for (const [i, image] of images.entries()) {
     const cells = unsound.has(image.sha256) ? createStrip({ offset, length, cells: CELLS }).finish() : await cellsOf(image.sha256, image.sizeBytes, offset, length);
-    rows.push({ readId: image.readId, name: image.name, note: image.note, cells });
+    rows.push({ readId: image.readId, name: image.name, note: erased.has(image.sha256) ? "erased" : image.note, cells });
     const next = images[i + 1];
     if (!next) continue;
     if (next.sha256 === image.sha256) {

@@ -1,3 +1,4 @@
+import { refuseErased } from "@/lib/commands/erased-image";
 import { readFor } from "@/lib/commands/place";
 import { allow, notFound } from "@/lib/commands/refuse";
 import { reportImage } from "@/lib/commands/report-image";
@@ -14,6 +15,7 @@ export async function votes(actor: Actor, readId: string): Promise<VotesView> {
   const { read } = await readFor(actor, readId, "composite");
   const derived = derivedFacts(read);
   if (!derived) throw notFound("composite");
+  await refuseErased(derived.reportSha256);
   const stored = await Image.findByPk(Buffer.from(derived.reportSha256, "hex"));
   const first = stored ? await checkImage(derived.reportSha256, stored.sizeBytes) : "missing";
   if (first !== "sound" && (await reportImage(derived.reportSha256, first, "a look at the votes")) !== "sound") {

@@ -1,7 +1,7 @@
 import { withCommas } from "@/lib/core/quantity";
 import { code, plain, quiet, RULE_2, strong } from "./ink";
 import type { ReportFacts, ReportPhoto } from "./report-facts";
-import { momentText } from "./report-words";
+import { erasedText, momentText } from "./report-words";
 import { LEFT, RIGHT, type Sheet } from "./sheet";
 
 const [BOX_WIDTH, BOX_HEIGHT, PAD] = [156, 117, 4];
@@ -23,7 +23,7 @@ function onePhoto(sheet: Sheet, picture: Buffer | null, photo: ReportPhoto): voi
   const parts = [
     [strong(title)], [quiet(`Of ${photo.of}. Added by ${by}, ${momentText(photo.storedAt)} UTC.`, { size: 8.5 })],
     ...(photo.caption ? [[quiet("Came as ", { size: 8.5 }), code(photo.originalFileName, { size: 8 })]] : []),
-    [code(photo.file ?? "not in the bundle: the stored original is damaged or missing", { size: 8 }), quiet(`, ${withCommas(photo.sizeBytes)} bytes`, { size: 8.5 })],
+    [code(photo.file ?? (photo.erased ? `not in the bundle: erased, ${erasedText(photo.erased)}` : "not in the bundle: the stored original is damaged or missing"), { size: 8 }), quiet(`, ${withCommas(photo.sizeBytes)} bytes`, { size: 8.5 })],
     [code(photo.sha256, { size: 7.5 })],
   ];
   const lines = parts.flatMap((spans) => sheet.type.lines(spans, RIGHT - x));
@@ -31,7 +31,7 @@ function onePhoto(sheet: Sheet, picture: Buffer | null, photo: ReportPhoto): voi
   sheet.ensure(height + 8);
   const top = sheet.y;
   const figure = sheet.element("Figure", undefined, { alt: `${photo.kind === "photo" ? "Photo" : "Document"} of ${photo.of}: ${title}` });
-  sheet.tagged(figure, "Figure", () => (photo.kind === "photo" ? drawBox(sheet, picture, top) : undefined));
+  sheet.tagged(figure, "Figure", () => (photo.kind === "photo" ? drawBox(sheet, picture, top, photo.erased ? "Not shown: it was erased." : "Not shown: the original can’t be opened.") : undefined));
   figure.end();
   const text = sheet.element("P");
   sheet.tagged(text, "P", () => sheet.put(lines, photo.kind === "photo" ? x : LEFT));
@@ -40,8 +40,8 @@ function onePhoto(sheet: Sheet, picture: Buffer | null, photo: ReportPhoto): voi
   sheet.space(10);
 }
 
-function drawBox({ doc, type }: Sheet, picture: Buffer | null, top: number): void {
+function drawBox({ doc, type }: Sheet, picture: Buffer | null, top: number, without: string): void {
   doc.rect(LEFT, top, BOX_WIDTH, BOX_HEIGHT).fillAndStroke(MAT, RULE_2);
   if (picture) doc.image(picture, LEFT + PAD, top + PAD, { fit: [BOX_WIDTH - 2 * PAD, BOX_HEIGHT - 2 * PAD], align: "center", valign: "center" });
-  else type.lines([plain("Not shown: the original can’t be opened.", { size: 8 })], BOX_WIDTH - 16).forEach((line, i) => type.draw(line, LEFT + 8, top + 8 + i * line.height));
+  else type.lines([plain(without, { size: 8 })], BOX_WIDTH - 16).forEach((line, i) => type.draw(line, LEFT + 8, top + 8 + i * line.height));
 }

@@ -2,7 +2,7 @@ import { countOf, readsText, sizeText } from "@/lib/core/quantity";
 import { seatingLetter } from "@/lib/core/words";
 import { code, CAUTION, INK, INK_3, plain, quiet, strong } from "./ink";
 import type { ReportDrawing, ReportRead } from "./report-facts";
-import { findingMark, measuredText, momentText, originText, severityWord } from "./report-words";
+import { erasedText, findingMark, measuredText, momentText, originText, severityWord } from "./report-words";
 import { LEFT, type Sheet, type Struct } from "./sheet";
 import { laneKey } from "./stacks";
 import { Table } from "./table";
@@ -51,6 +51,7 @@ function details(sheet: Sheet, read: ReportRead, said: string, element: Struct):
   const at = { x: INDENT, element, type: "TD", gap: 1.5 };
   sheet.paragraph([quiet("SHA-256 ", { size: 8 }), code(read.sha256)], at);
   sheet.paragraph([quiet(originText(read), { size: 8 }), ...(read.derived ? [] : [quiet(". File as it came: ", { size: 8 }), code(read.originalFileName, { size: 8 })])], at);
+  if (read.erased) sheet.paragraph([strong(`Erased, ${erasedText(read.erased)}. `), plain("The image is not in this bundle; its digests stay.")], { ...at, mark: "aside" });
   if (read.source) {
     sheet.paragraph([quiet(`Expanded from the text file with SHA-256 `, { size: 8 }), code(read.source.sha256, { size: 8 }), quiet(`, base 0x${read.source.base.toString(16).toUpperCase()}, empty space filled with ${read.source.fill.toString(16).toUpperCase().padStart(2, "0")}`, { size: 8 })], at);
   }

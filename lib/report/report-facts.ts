@@ -1,10 +1,16 @@
 import type { EntryKind } from "@/lib/core/custody-actions";
-import type { BoardRole, Bus, Encryption, PhotoKind, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
+import type { BoardRole, Bus, Encryption, EraseCause, PhotoKind, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
 import type { PersonView, ReadView } from "@/lib/views";
 
 /** What a report is made from: the case as in case.json, the logs up to their heads, and what the strips show. Plain data. */
 
-export type ReportRead = Omit<ReadView, "chipId" | "imageSound" | "fileName"> & { name: string; path: string; originalFileName: string };
+/** the stored bytes were given up before this bundle was made */
+export interface ReportErased {
+  at: string;
+  cause: EraseCause;
+}
+
+export type ReportRead = Omit<ReadView, "chipId" | "imageSound" | "fileName" | "erased"> & { erased?: ReportErased; name: string; path: string; originalFileName: string };
 
 export interface ReportApproval {
   id: string;
@@ -74,8 +80,9 @@ export interface ReportBoard {
 export interface ReportPhoto {
   /** its id */
   photo: string;
-  /** where in the bundle; null where the original is damaged or missing */
+  /** where in the bundle; null where the original is damaged, missing or erased */
   file: string | null;
+  erased?: ReportErased;
   sha256: string;
   sizeBytes: number;
   kind: PhotoKind;

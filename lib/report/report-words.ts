@@ -1,6 +1,6 @@
 import type { Bus, Finding, Method, Role, SizeSource } from "@/lib/core/words";
 import type { MarkKind } from "./marks";
-import type { ReportBoard, ReportChip, ReportDrive, ReportRead } from "./report-facts";
+import type { ReportBoard, ReportChip, ReportDrive, ReportErased, ReportRead } from "./report-facts";
 import { sizeText } from "@/lib/core/quantity";
 
 const MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"];
@@ -82,3 +82,6 @@ const CAUSE: Record<string, string> = {
   "pair-changed": "another donor chip was paired", "image-damaged": "the stored image was damaged or missing", "approver-took-read": "the approver had taken a read",
 };
 export const causeText = (cause: string) => CAUSE[cause] ?? cause.replaceAll("-", " ");
+
+/** "3 Mar 2027, 09:14, at the customer’s wish" */
+export const erasedText = ({ at, cause }: ReportErased): string => `${momentText(at)} UTC, ${cause === "asked-for" ? "at the customer’s wish" : "when its keeping time was over"}`;

@@ -30,21 +30,25 @@ export interface Logged {
   /** ids of revoked approvals */
   revoked: Set<string>;
   /** the entries themselves, by the id of what they are about */
-  told: { reads: Map<string, Told>; counts: Map<string, Told>; approvals: Map<string, Told>; revocations: Map<string, Told>; transfers: Map<string, Told>; photos: Map<string, Told>; handOvers: Map<string, Told>; confirmations: Map<string, Told>; shares: Map<string, Told>; withdrawals: Map<string, Told> };
+  told: { reads: Map<string, Told>; counts: Map<string, Told>; approvals: Map<string, Told>; revocations: Map<string, Told>; transfers: Map<string, Told>; photos: Map<string, Told>; handOvers: Map<string, Told>; confirmations: Map<string, Told>; shares: Map<string, Told>; withdrawals: Map<string, Told>; erasures: Map<string, Told>; wishes: Map<string, Told>; answers: Map<string, Told> };
   /** accounts by id, as their entries leave them */
   users: Map<string, { seq: number; name: string; role: string; off: boolean }>;
   /** drives, boards and chips by id, as their entries leave them: plain values by the name of their column */
   things: Map<string, { chain: string; seq: number; noun: string; facts: Record<string, unknown> }>;
   /** of each donor's chip: the original's chip that it is paired with */
   pairs: Map<string, string | null>;
+  /** of each log: its last word on the images that it says were erased, by their digest */
+  erased: Map<string, Map<string, { seq: number; stands: boolean }>>;
+  /** cases by id, as their entries leave what decides about an erasure */
+  cases: Map<string, { chain: string; seq: number; eraseOn: string | null; keptUntil: string | null }>;
   /** fields of the policy that an entry has changed, as the last one leaves them */
   policy: Map<string, { seq: number; value: unknown }>;
 }
 
 export function newLogged(): Logged {
   return {
-    reads: new Map(), approvals: new Map(), revoked: new Set(), users: new Map(), policy: new Map(), things: new Map(), pairs: new Map(),
-    told: { reads: new Map(), counts: new Map(), approvals: new Map(), revocations: new Map(), transfers: new Map(), photos: new Map(), handOvers: new Map(), confirmations: new Map(), shares: new Map(), withdrawals: new Map() },
+    reads: new Map(), approvals: new Map(), revoked: new Set(), users: new Map(), policy: new Map(), things: new Map(), pairs: new Map(), erased: new Map(), cases: new Map(),
+    told: { reads: new Map(), counts: new Map(), approvals: new Map(), revocations: new Map(), transfers: new Map(), photos: new Map(), handOvers: new Map(), confirmations: new Map(), shares: new Map(), withdrawals: new Map(), erasures: new Map(), wishes: new Map(), answers: new Map() },
   };
 }
 
@@ -97,6 +101,19 @@ function paired(logged: Logged, id: string, { facts }: Told): void {
   logged.pairs.set(donorChip.id, id);
 }
 
+const lastWord = (stands: boolean): Noter => (logged, _, { chain, seq, facts }) => {
+  const words = logged.erased.get(chain) ?? new Map<string, { seq: number; stands: boolean }>();
+  logged.erased.set(chain, words);
+  // one that was found sound again says nothing of an erasure unless there was one
+  if (stands || words.has(String(facts.sha256))) words.set(String(facts.sha256), { seq, stands });
+};
+
+/** What the entries of a case leave of the day and of the keeping; each of its logs says the same. */
+const days = (change: (facts: Record<string, unknown>) => Partial<{ eraseOn: string | null; keptUntil: string | null }>): Noter => (logged, id, { chain, seq, facts }) => {
+  logged.cases.set(id, { eraseOn: null, keptUntil: null, ...logged.cases.get(id), chain, seq, ...change(facts) });
+};
+const day = (value: unknown) => (typeof value === "string" ? value : null);
+
 const NOTED: Record<string, Noter> = {
   "read.stored": storedRead,
   "read.set-aside": count,
@@ -118,6 +135,14 @@ const NOTED: Record<string, Noter> = {
   "item.not-received": confirmed,
   "summary.sent": (logged, id, told) => void logged.told.shares.set(id, told),
   "share.withdrawn": (logged, id, told) => void logged.told.withdrawals.set(id, told),
+  "image.erased": lastWord(true),
+  "image.found-sound": lastWord(false),
+  "case.erased": (logged, _, told) => void logged.told.erasures.set(String(told.facts.erasure), told),
+  "case.closed": days((facts) => ({ eraseOn: day(facts.eraseOn) })),
+  "case.reopened": days(() => ({ eraseOn: null })),
+  "case.kept-longer": days((facts) => ({ keptUntil: day(facts.until) })),
+  "request.deletion-asked": (logged, id, told) => void logged.told.wishes.set(id, told),
+  "request.deletion-answered": (logged, id, told) => void logged.told.answers.set(id, told),
   "drive.recorded": recorded,
   "board.recorded": recorded,
   "chip.recorded": recorded,

@@ -1,6 +1,6 @@
 import type { ChainProblem } from "@/lib/core/custody";
 
-type ImageProblem = "image-damaged" | "image-missing" | "image-record";
+type ImageProblem = "image-damaged" | "image-missing" | "image-record" | "image-left" | "image-not-in-log";
 type RecordProblem =
   | "read-differs-from-log" | "read-not-in-log" | "read-missing" | "approval-differs-from-log" | "approval-not-in-log" | "approval-missing"
   | "transfer-differs-from-log" | "transfer-not-in-log" | "transfer-missing" | "account-differs-from-log" | "account-not-in-log" | "policy-differs-from-log"
@@ -48,7 +48,7 @@ export interface StoreReport {
   seals: { checked: number; newest: { number: number; at: string; sha256: string } | null; heads: number; keys: string[] };
   /** the witness file of this data folder; null where there is none */
   witness: { path: string; seals: number } | null;
-  images: { checked: number; bytes: number; damaged: number; missing: number };
+  images: { checked: number; bytes: number; damaged: number; missing: number; erased: number };
   reads: number;
   against: OutsideCopy[];
   damage: Damage[];
@@ -87,7 +87,7 @@ export function page(report: StoreReport): string {
     `Checked ${report.checkedAt}`,
     `${count(report.chains.length, "log")}, ${count(entries, "entry", "entries")}, ${count(report.signatures, "signature")}`,
     ...sealLines(report),
-    `${count(report.images.checked, "stored image")}, ${count(report.images.bytes, "byte")}, ${count(report.reads, "read")}`,
+    `${count(report.images.checked, "stored image")}, ${count(report.images.bytes, "byte")}, ${count(report.reads, "read")}${report.images.erased > 0 ? `; ${count(report.images.erased, "image")} erased, as the log says` : ""}`,
     ...report.keys.map((key) => `Log key ${key}`),
     ...report.seals.keys.map((key) => `Seal key ${key}`),
     ...outsideLines(report.against),

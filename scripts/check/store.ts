@@ -5,6 +5,7 @@ import { env } from "@/lib/env";
 import { connection } from "@/models";
 import { checkAgainst } from "./against";
 import { checkChains } from "./chains";
+import { checkErasures } from "./erasures";
 import { checkImages, checkReads, countUnknownFiles, type StoredImage, storedImages } from "./images";
 import { findPlaces, type Places } from "./places";
 import { checkRecord } from "./record";
@@ -32,7 +33,7 @@ export async function lookAtDatabase(tx: Transaction, keyInFolder: string | null
   const images = await storedImages(tx);
   return {
     report: { ...report, seals, reads: places.reads.length }, places, images,
-    damage: [...damage, ...atSeals, ...checkReads(images, places, logged), ...(await checkRecord(tx, places, logged)), ...(await checkThings(tx, places, logged)), ...(await checkAround(tx, places, logged))],
+    damage: [...damage, ...atSeals, ...checkReads(images, places, logged), ...(await checkRecord(tx, places, logged)), ...(await checkThings(tx, places, logged)), ...(await checkAround(tx, places, logged)), ...(await checkErasures(tx, images, places, logged))],
     here: { ledger, known, images: new Set(images.map((image) => image.sha256)) },
   };
 }

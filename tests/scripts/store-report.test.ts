@@ -5,7 +5,7 @@ import type { PlacedRead, Places } from "@/scripts/check/places";
 import { type Damage, exitCode, page, type StoreReport } from "@/scripts/check/report";
 
 const sha256 = "ab".repeat(32);
-const image: StoredImage = { sha256, sizeBytes: 8192, crc32: "0000000f" };
+const image: StoredImage = { sha256, sizeBytes: 8192, crc32: "0000000f", erased: false };
 const read: PlacedRead = { id: "read-1", driveId: "drive-1", name: "Case 26-0042, Drive A, Orig U12, Read 2", ...image };
 const entry = { chain: "drive-1", seq: 5, ...image };
 const places = (reads: PlacedRead[]): Places => ({ driveIds: ["drive-1"], chain: (id) => (id === "drive-1" ? "Case 26-0042, Drive A" : `Log ${id}`), reads, driveOfChip: new Map() });
@@ -31,7 +31,7 @@ describe("the report", () => {
   const clean: StoreReport = {
     checkedAt: "2026-12-01T10:00:00.000Z", clean: true, chains: [{ chain: "drive-1", place: "Case 26-0042, Drive A", entries: 7, head: null, findings: 0 }], signatures: 7, keys: [],
     seals: { checked: 0, newest: null, heads: 0, keys: [] }, witness: null, against: [], notes: [],
-    images: { checked: 1, bytes: 8192, damaged: 0, missing: 0 }, reads: 1, damage: [], notChecked: [], unknownFiles: 0,
+    images: { checked: 1, bytes: 8192, damaged: 0, missing: 0, erased: 0 }, reads: 1, damage: [], notChecked: [], unknownFiles: 0,
   };
 
   it("ends with 0 when clean, 1 with damage, 2 when something could not be checked, and damage wins", () => {

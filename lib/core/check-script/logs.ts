@@ -67,7 +67,9 @@ check_log() { # number of the drive
     -e 's/^{"action":"read\.stored",.*"format":"intel-hex",.*'"$ref"',.*,"source":{[^{}]*"fileSha256":'"$sha"'.*/\3 \2-\1.hex/p' \
     -e 's/^{"action":"read\.stored",.*"format":"s-record",.*'"$ref"',.*,"source":{[^{}]*"fileSha256":'"$sha"'.*/\3 \2-\1.srec/p' "$log.jsonl" | cat "$at/images" - | sort >"$at/told"
   sed -n "s,^\([0-9a-f]\{64\}\)  data/drives/$1/[^/]*/\([^/]*\)\$,\1 \2,p" manifest-sha256.txt | grep -e '\.bin$' -e '\.hex$' -e '\.srec$' -e '-votes\.json$' | sort >"$at/kept"
-  comm -23 "$at/told" "$at/kept" >"$at/missing"
+  sed -n -e 's/^{"action":"image\.erased",.*[{,]"sha256":'"$sha"'.*/\1 erased/p' -e 's/^{"action":"image\.found-sound",.*[{,]"sha256":'"$sha"'.*/\1 sound/p' "$log.jsonl" |
+    awk '{ word[$1] = $2 } END { for (sha in word) if (word[sha] == "erased") print sha }' | sort >"$at/erased"
+  comm -23 "$at/told" "$at/kept" | without_erased >"$at/missing"
   each_bad "$at/missing" "$log.jsonl names an image that the bundle does not hold: "
   comm -13 "$at/told" "$at/kept" >"$at/unknown"
   each_bad "$at/unknown" "drive $1 has an image that its custody log does not name: "
@@ -76,16 +78,21 @@ check_log() { # number of the drive
   ENTRIES=$((ENTRIES + COUNT))
   if [ "$BAD" -eq "$before" ]; then
     ok "drive $1: $COUNT entries, each following from the one before, each signed; $(grep -c . "$at/told") images, each as the log and the record name it"
+    [ -s "$at/erased" ] && ok "drive $1: of its images and photos $(grep -c . "$at/erased") were erased, as its log says"
     echo "          head of this log: $COUNT $(tail -n 1 "$at/hashes")"
   fi
 }
-# Photos of the drive, its boards and chips, but for those that the log says were lost. Others stand in other logs.
+# Lines that begin with the digest of an image that the log says was erased, and not stored again since, are left out.
+without_erased() { awk 'FILENAME == ARGV[1] { gone[$1] = 1; next } !($1 in gone)' "$at/erased" -; }
+# The same, unless a file lies under the path at the line's end: then it is another one than the record gives.
+absent_erased() { awk 'FILENAME == ARGV[1] { gone[$1] = 1; next } FILENAME == ARGV[2] { there[$1] = 1; next } !($1 in gone) || ($2 in there)' "$at/erased" "$at/paths" -; }
+# Photos of the drive, its boards and chips, but for those that the log says were lost or erased. Others stand in other logs.
 check_photos() { # number of the drive
   sed -n 's/^{"action":"photo\.added",.*,"of":{.*,"type":"\([a-z-]*\)"},"photo":"[0-9a-f-]*","sha256":'"$sha"',"sizeBytes":.*/\1 \2/p' "$log.jsonl" |
     sed -n -e 's/^drive //p' -e 's/^board //p' -e 's/^chip //p' | sort >"$at/phototold"
   sed -n "s,^\([0-9a-f]\{64\}\)  data/drives/$1/photos/\([^/]*\)\$,\1 \2,p" manifest-sha256.txt | grep -v '\.shelf-[0-9][0-9]*\.[a-z]*$' | cut -c1-64 | sort >"$at/photokept"
   sed -n 's/^{"action":"image\.found-damaged",.*"sha256":'"$sha"'.*/\1/p' "$log.jsonl" | sort -u >"$at/lost"
-  comm -23 "$at/phototold" "$at/photokept" | grep -vxF -f "$at/lost" >"$at/photomissing"
+  comm -23 "$at/phototold" "$at/photokept" | grep -vxF -f "$at/lost" | without_erased >"$at/photomissing"
   each_bad "$at/photomissing" "$log.jsonl names a photo that the bundle does not hold: "
   comm -13 "$at/phototold" "$at/photokept" >"$at/photounknown"
   each_bad "$at/photounknown" "drive $1 has a photo that its custody log does not name: "
@@ -108,7 +115,8 @@ check_record() { # number of the drive
   done
   told_of file "$1" >"$at/said"
   sed 's/^\(.\{64\}\)  /\1 /' manifest-sha256.txt | sort >"$at/listed"
-  comm -23 "$at/said" "$at/listed" >"$at/off"
+  awk '{ print $2 }' "$at/listed" | sort >"$at/paths"
+  comm -23 "$at/said" "$at/listed" | absent_erased >"$at/off"
   each_bad "$at/off" "data/case.json names an image that the bundle does not hold: "
 }
 : >"$TMP/chains"

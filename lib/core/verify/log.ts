@@ -6,6 +6,7 @@ import { FORMAT_ENDING } from "../text-format";
 import { countOf } from "../quantity";
 import type { Files } from "./lists";
 import { readLog } from "./log-lines";
+import { erasedIn } from "./erased";
 import { comparePhotos } from "./photo-files";
 import { entriesText, type Step, StepNotes } from "./report";
 import { keyTools, sha256Hex, type VerifyTools } from "./tools";
@@ -17,6 +18,8 @@ export interface DriveLog {
   chain: string;
   head: { seq: number; hash: string };
   entries: LogEntry[];
+  /** digests of the images that it says were erased */
+  erased: ReadonlySet<string>;
 }
 
 export interface LogEntry {
@@ -59,10 +62,11 @@ export async function checkLog(files: Files, drive: number, ring: Keyring, tools
   if (entries[entries.length - 1].action !== "bundle.started") {
     notes.fault(`${path}.jsonl`, "It does not end with the start of this bundle: its end was cut, or something was added.", "bundle.started", entries[entries.length - 1].action);
   }
-  const compared = compareFiles(files, drive, entries, notes);
-  const photos = comparePhotos(files, drive, entries, notes);
-  const log: DriveLog = { drive, chain, head: { seq: entries[entries.length - 1].seq, hash: sha256Hex(lines[lines.length - 1].body, tools) }, entries };
-  return { step: notes.done(`${entriesText(lines.length)}, each following from the one before and each signed; ${countOf(compared, "image file")}${photos > 0 ? ` and ${countOf(photos, "photo")}` : ""}, each as the log names it.`), log };
+  const erased = erasedIn(entries);
+  const compared = compareFiles(files, drive, entries, erased, notes);
+  const photos = comparePhotos(files, drive, entries, erased, notes);
+  const log: DriveLog = { drive, chain, head: { seq: entries[entries.length - 1].seq, hash: sha256Hex(lines[lines.length - 1].body, tools) }, entries, erased };
+  return { step: notes.done(`${entriesText(lines.length)}, each following from the one before and each signed; ${countOf(compared, "image file")}${photos > 0 ? ` and ${countOf(photos, "photo")}` : ""}${erased.size > 0 ? `, each as the log names it or erased as it says (${countOf(erased.size, "image")})` : ", each as the log names it"}.`), log };
 }
 
 /** Hostile input: what an entry has of its parts. */
@@ -114,8 +118,8 @@ function toldFiles(entries: readonly LogEntry[]): Told[] {
 /** Files of a chip whose digest stands in the log: the image, the text it came as, the report of a vote. */
 const TOLD = /^[^/]+\/[^/]+(\.(bin|hex|srec)|-votes\.json)$/;
 
-/** Each file that the log tells of is there, and each that is there is told of. Gives their number. */
-function compareFiles(files: Files, drive: number, entries: readonly LogEntry[], notes: StepNotes): number {
+/** Each file that the log tells of is there, but for what it says was erased, and each that is there is told of. Gives their number. */
+function compareFiles(files: Files, drive: number, entries: readonly LogEntry[], erased: ReadonlySet<string>, notes: StepNotes): number {
   const told = toldFiles(entries);
   const kept = new Map<string, string[]>();
   const folder = `${driveFolder(drive)}/`;
@@ -127,6 +131,7 @@ function compareFiles(files: Files, drive: number, entries: readonly LogEntry[],
   }
   for (const { name, sha256, seq } of told) {
     const here = kept.get(`${sha256} ${name}`);
+    if (!here?.length && erased.has(sha256)) continue;
     if (!here?.length) notes.fault(`${custodyPath(drive)}.jsonl, entry ${seq}`, `It names ${name}, and the bundle does not hold it with this digest.`, sha256);
     else here.pop();
   }

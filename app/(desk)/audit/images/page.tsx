@@ -16,7 +16,7 @@ import { auditImages, imageCounts } from "@/lib/queries/audit-images";
 import { auditInputOf } from "@/lib/schemas/audit";
 
 export const metadata: Metadata = { title: "Audit: stored images" };
-const STATES = [{ value: "not-sound", label: "Damaged or missing" }, { value: "damaged", label: "Damaged" }, { value: "missing", label: "Missing" }, { value: "sound", label: "Equals its digest" }];
+const STATES = [{ value: "not-sound", label: "Damaged or missing" }, { value: "damaged", label: "Damaged" }, { value: "missing", label: "Missing" }, { value: "sound", label: "Equals its digest" }, { value: "erased", label: "Erased" }];
 
 export default async function AuditImagesPage({ searchParams }: { searchParams: Promise<Record<string, string | string[] | undefined>> }) {
   const { actor, session } = await signedIn();
