@@ -13,7 +13,7 @@ export interface ApiRoute {
 
 /** An address may break before a slash, and nowhere else. */
 function Call({ method, path }: { method: string; path: string }) {
-  return <code className="font-normal">{method} {path.split("/").slice(1).map((part, i) => <Fragment key={i}><wbr />/{part}</Fragment>)}</code>;
+  return <code className="font-normal">{method} {path.split("/").slice(1).map((part, i) => <Fragment key={i}><wbr /><span className="whitespace-nowrap">/{part}</span></Fragment>)}</code>;
 }
 
 const STATUSES: [string, string][] = [
@@ -54,7 +54,7 @@ export function ApiHelp({ address, routes }: { address: string; routes: readonly
         {API_EXAMPLES.map(({ key, title, about, command, status, answer, gives }) => (
           <article key={key} id={key} aria-labelledby={`${key}-title`} className="grid gap-2 border-b border-rule py-4 first:pt-0 last:border-0 print:break-inside-avoid">
             <h3 id={`${key}-title`} className="text-t4 font-bold">{title}</h3>
-            <p className="max-w-[54ch] text-t4">{about}</p>
+            <p className="max-w-[53ch] text-t4">{about}</p>
             <Commands label={`Command: ${title}`}>{command}</Commands>
             <p className="text-t3 text-ink-2 [overflow-wrap:anywhere]">Answers <b>{status}</b>{gives ? <>. Keep the id in it as <code>{gives}</code></> : <>; in it stands <code>{answer.trim()}</code></>}.</p>
           </article>

@@ -34,7 +34,7 @@ export function CustodyHelp() {
       <Part title="Seals" id="seals">
         <p>A chain can’t see that its own end was cut off. So every day, before each bundle and summary and whenever an auditor asks, a seal is made: a signed statement of where every log stands, each seal following the one before. It is mailed to the auditors and appended to a witness file that may lie on another disk. What has left the house can’t be taken back.</p>
         <p>Save the seal’s three files from the audit page, and check its signature with OpenSSL 3:</p>
-        <Commands label="Check a seal">openssl pkeyutl -verify -pubin -inkey seal-key.pem -rawin -in seal.txt -sigfile seal.sig</Commands>
+        <Commands label="Check a seal">{"openssl pkeyutl -verify -pubin -inkey seal-key.pem \\\n  -rawin -in seal.txt -sigfile seal.sig"}</Commands>
         <p>Compare the key’s fingerprint with one that reached you in another way: it stands in every seal mail and on every summary.</p>
       </Part>
       <Part title="The bundle" id="bundle">

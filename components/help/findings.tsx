@@ -17,12 +17,12 @@ const listOf = (group: FindingGroup) => Object.entries(group.findings) as [Diagn
 
 function Example({ said }: { said: readonly FindingExample[] }) {
   const [first] = said;
-  return <p className="border-l-[3px] border-rule-2 pl-3 text-t3">On screen: “{first.message} {first.advice}”</p>;
+  return <p className="max-w-[55ch] border-l-[3px] border-rule-2 pl-3 text-t3">On screen: “{first.message} {first.advice}”</p>;
 }
 
 function Finding({ code, help, said }: { code: DiagnosisCode; help: FindingHelp; said: readonly FindingExample[] }) {
   return (
-    <article id={code} aria-labelledby={`${code}-title`} className="grid max-w-[54ch] gap-2.5 border-b text-t4 border-rule py-4 first:pt-0 last:border-0 target:bg-well print:break-inside-avoid">
+    <article id={code} aria-labelledby={`${code}-title`} className="grid max-w-[53ch] gap-2.5 border-b text-t4 border-rule py-4 first:pt-0 last:border-0 target:bg-well print:break-inside-avoid">
       <h3 id={`${code}-title`} className="flex flex-wrap items-baseline gap-x-3 text-t4 font-bold">{help.title} <code className="text-t2 font-normal text-ink-2">{code}</code></h3>
       <div className="text-t3">
         {SEVERITIES.filter((severity) => help.severity[severity]).map((severity) => <FindingLine key={severity} kind={code === "verified" ? "ok" : SEVERITY[severity].mark}><b>{SEVERITY[severity].word}</b>, {help.severity[severity]}</FindingLine>)}
@@ -30,7 +30,7 @@ function Finding({ code, help, said }: { code: DiagnosisCode; help: FindingHelp;
       <Example said={said} />
       <p className="text-t4">{help.means}</p>
       <ul className="grid list-disc gap-1 pl-6 text-t4">{help.bench.map((step) => <li key={step}>{step}</li>)}</ul>
-      <p className="text-t2 text-ink-2">Measured: {help.rule}</p>
+      <p className="max-w-[53ch] text-t2 text-ink-2">Measured: {help.rule}</p>
     </article>
   );
 }

@@ -14,7 +14,7 @@ export const GLOSSARY: { word: string; means: string }[] = [
   { word: "Custody log", means: "The signed list of everything that was done to a drive. Each entry holds the digest of the one before." },
   { word: "Designator", means: "The name printed beside a part on the board, such as U12." },
   { word: "Digest", means: "A number worked out from all bytes of an image; here SHA-256, 64 hex digits. Equal digests mean equal bytes." },
-  { word: "Donor", means: "The board that brings working electronics. It has to carry the same board number." },
+  { word: "Donor", means: "The board that brings working electronics. It fits when its board number is equal; another number needs a lead’s reason." },
   { word: "Donor shelf", means: "The workshop’s stock of donor boards not yet taken for a drive." },
   { word: "Finding", means: "What the read check found on a read: a sentence, what to do, and whether it blocks, needs a reason, or is a note." },
   { word: "Hand-out", means: "An image that left the house by download. It is written into the log first." },

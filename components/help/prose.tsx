@@ -5,7 +5,7 @@ import type { TopicKey } from "./topics";
 
 /** A part of a help page: title in the margin, prose of a readable measure beside it. */
 export function Part({ title, note, id, first, children }: { title: string; note?: ReactNode; id?: string; first?: boolean; children: ReactNode }) {
-  return <Section title={title} note={note} id={id} first={first}><div className="grid max-w-[54ch] gap-3 text-t4">{children}</div></Section>;
+  return <Section title={title} note={note} id={id} first={first}><div className="grid max-w-[53ch] gap-3 text-t4">{children}</div></Section>;
 }
 
 /** A part that is a table: as wide as the page. */
@@ -45,7 +45,7 @@ export function HelpTable({ caption, head, rows }: { caption: string; head: read
         {rows.map(({ key, cells: [first, ...others] }) => (
           <tr key={key}>
             <th scope="row" className="w-56 min-w-[16ch] !whitespace-normal phone:w-auto phone:!flex-[0_0_100%]">{first}</th>
-            {others.map((cell, i) => <td key={head[i + 1]} className="l-row max-w-[54ch]">{cell}</td>)}
+            {others.map((cell, i) => <td key={head[i + 1]} className="l-row max-w-[53ch]">{cell}</td>)}
           </tr>
         ))}
       </tbody>

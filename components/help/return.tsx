@@ -29,7 +29,7 @@ export function ReturnHelp() {
       </Part>
       <WidePart title="Closing">
         <HelpTable caption="How a case can end" head={["Ends as", "When"]} rows={CLOSED_KINDS.map((key) => ({ key, cells: [KIND[key].word, KIND[key].text] }))} />
-        <div className="mt-3 grid max-w-[54ch] gap-3 text-t4">
+        <div className="mt-3 grid max-w-[53ch] gap-3 text-t4">
           <p>A lead closes a case. While a chip that needs a transfer is not verified, a reason is needed whatever the ending. A closed case is kept as it is: notes can still be added, anything else needs it reopened.</p>
         </div>
       </WidePart>
