@@ -39,7 +39,7 @@ export function CustomerPage({ view, token, timeZone }: { view: RequestPageView;
             </div>
           </div>
           {state.question ? <Note kind="caution" title="What we would like to know" className="mt-4"><span dir="auto" className="whitespace-pre-line [overflow-wrap:anywhere]">{state.question}</span></Note> : null}
-          {state.step === "question" ? <p className="pt-3">Answer to <b>{ask}</b>.</p> : null}
+          {state.step === "question" ? <p className="pt-3">Your answer goes to <b>{ask}</b>.</p> : null}
           {view.slip ? (
             <Buttons className="pt-4">
               <ButtonLink variant="lead" href={`/request/${token}/slip`} prefetch={false}><Icon name="print" />Slip for the parcel</ButtonLink>
@@ -56,7 +56,7 @@ export function CustomerPage({ view, token, timeZone }: { view: RequestPageView;
         <section className="rq-part" aria-labelledby="rq-told">
           <h2 id="rq-told" className="pb-3 text-t4 font-bold">What you told us on {day(view.requestedAt)}</h2>
           <Told answers={view.answers} />
-          <p className="pt-3 text-ink-2">{view.photos > 0 ? `${countOf(view.photos, "photo")} came along.` : "No photo came along."} If something is wrong, write it on the slip by hand, or tell us.</p>
+          <p className="pt-3 text-ink-2">{view.photos > 0 ? `${countOf(view.photos, "photo")} came along.` : "No photo came along."} {view.slip ? "If something is wrong, write it on the slip by hand, or tell us." : "If something is wrong, tell us."}</p>
         </section>
       </div>
       <aside className="rq-side after grid content-start gap-5" aria-label="Your data and your way out">
@@ -66,9 +66,10 @@ export function CustomerPage({ view, token, timeZone }: { view: RequestPageView;
         </section>
         <section>
           <h2>Your data</h2>
+          {view.erasedAt ? <Note kind="note" title={`We erased the images on ${day(view.erasedAt)}.`} className="mt-2">What we kept of your chips, and the photos, are gone from our store.</Note> : null}
           {view.deletion ? (
-            <Note kind="note" title={`You asked for deletion on ${day(view.deletion.askedAt)}.`} className="mt-2">A lead technician of {view.workshop} answers you by {day(view.deletion.answerBy)}. If nobody has by then, ask {ask}.</Note>
-          ) : (
+            <Note kind="note" title={`You asked for deletion on ${day(view.deletion.askedAt)}.`} className="mt-2">{view.deletion.answered?.answer ? <>We answered on {day(view.deletion.answered.at)}: <q dir="auto" className="whitespace-pre-line [overflow-wrap:anywhere]">{view.deletion.answered.answer}</q>{view.erasedAt ? null : <> Your wish stays on record. If you don’t agree, ask {ask}.</>}</> : view.deletion.answered ? null : <>A lead technician of {view.workshop} answers you by {day(view.deletion.answerBy)}. If nobody has by then, ask {ask}.</>}</Note>
+          ) : view.erasedAt ? null : (
             <>
               <p className="py-1">We keep images of the chips for {images} days after the drive has gone back. You can ask for deletion at any time; a lead technician answers within {DELETION_ANSWER_DAYS} days.</p>
               <AskDeletion token={token} answerDays={DELETION_ANSWER_DAYS} />

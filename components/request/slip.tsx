@@ -45,7 +45,7 @@ export function Slip({ view }: { view: RequestSlipView }) {
       <dl className="slip-facts">
         <div><dt>From</dt><dd className="cut" dir="auto">{a.name}</dd>{a.company ? <dd className="cut cut-1" dir="auto">{a.company}</dd> : null}</div>
         <div><dt>Reach by</dt><dd className="cut">{a.email}</dd>{a.phone ? <dd className="cut cut-1">{a.phone}</dd> : null}</div>
-        <div><dt>Damage</dt><dd>{DAMAGE_WORDS[a.damage]}</dd>{a.tried ? <dd className="cut cut-1" dir="auto">{a.tried}</dd> : null}</div>
+        <div><dt>Damage</dt><dd>{DAMAGE_WORDS[a.damage]}</dd>{a.tried ? <dd className="cut" dir="auto">{a.tried}</dd> : null}</div>
       </dl>
       <section className="grid gap-[11px]">
         <h2 className="!mb-0">What is in the parcel</h2>

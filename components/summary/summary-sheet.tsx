@@ -34,7 +34,7 @@ export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView
       <div className="sheet-columns">
         <section>
           <h2>What was done</h2>
-          {done.length > 0 ? <ol>{done.map((step) => <li key={step.text} className="grid grid-cols-[76px_minmax(0,1fr)] py-0.5"><b className="font-semibold">{step.day}</b><span>{step.text}</span></li>)}</ol> : <p>Reading has begun; nothing is approved or written yet.</p>}
+          {done.length > 0 ? <ol>{done.map((step, i) => <li key={step.text} className="grid grid-cols-[76px_minmax(0,1fr)] py-0.5"><b className="font-semibold">{step.day === done[i - 1]?.day ? <span className="sr-only">{step.day}</span> : step.day}</b><span>{step.text}</span></li>)}</ol> : <p>Reading has begun; nothing is approved or written yet.</p>}
           {untested ? <p className="pt-1">{untested}</p> : null}
           {summary.twoPersonRule ? null : <p className="pt-1">In this workshop one person may both read and approve: no second person checked the image.</p>}
         </section>

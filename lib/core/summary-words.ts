@@ -69,12 +69,12 @@ export interface Step {
 
 const tools = (chips: readonly SummaryChip[]) => listText([...new Set(chips.flatMap((c) => c.writtenWith ?? []))]);
 
-/** What was done, by day; the same step on several chips is one line. `day` says a time as a day of the workshop. */
+/** What was done, by day and in its order; the same step on several chips is one line. `day` says a time as a day of the workshop. */
 export function steps(summary: Summary, day: (iso: string) => string): Step[] {
   const person = summary.twoPersonRule ? "A second person, who had taken none of the reads," : "We";
-  const kinds: { at: (c: SummaryChip) => string | null; text: (names: string, chips: SummaryChip[]) => string }[] = [
-    { at: (c) => (c.composite ? c.approvedAt : null), text: (names, chips) => `${person} looked at the votes behind the ${chips.length > 1 ? "composites" : "composite"} of ${names} and approved ${chips.length > 1 ? "them" : "it"}.` },
-    { at: (c) => (c.composite ? null : c.approvedAt), text: (names, chips) => `${person} checked the reads of ${names} and approved one image${chips.length > 1 ? " for each" : ""}.` },
+  const kinds: { at: (c: SummaryChip) => string | null; first?: true; text: (names: string, chips: SummaryChip[]) => string }[] = [
+    { at: (c) => (c.composite ? c.approvedAt : null), first: true, text: (names, chips) => `${person} looked at the votes behind the ${chips.length > 1 ? "composites" : "composite"} of ${names} and approved ${chips.length > 1 ? "them" : "it"}.` },
+    { at: (c) => (c.composite ? null : c.approvedAt), first: true, text: (names, chips) => `${person} checked the reads of ${names} and approved one image${chips.length > 1 ? " for each" : ""}.` },
     { at: (c) => (c.transferKind === "write" ? c.transferredAt : null), text: (names, chips) => `We wrote the ${chips.length > 1 ? "images" : "image"} of ${names} to the donor board${tools(chips) ? ` (with ${tools(chips)})` : ""}.` },
     { at: (c) => (c.transferKind === "chip-moved" ? c.transferredAt : null), text: (names, chips) => `We took ${names} off your board and soldered ${chips.length > 1 ? "them" : "it"} to the donor board; the saved image is the safety copy.` },
     { at: (c) => c.verifiedAt, text: (names) => `We read ${names} back from the donor board; those read-backs equal the approved image.` },
@@ -86,7 +86,8 @@ export function steps(summary: Summary, day: (iso: string) => string): Step[] {
       const at = kind.at(chip);
       if (at) days.set(day(at), [...(days.get(day(at)) ?? []), chip]);
     }
-    for (const [when, chips] of days) out.push({ day: when, at: chips.map((c) => kind.at(c) ?? "").sort()[0], text: kind.text(listText(chips.map((c) => c.designator)), chips) });
+    // chips take turns: an approval stands where the day's first was, all that follows from it where the day's last was
+    for (const [when, chips] of days) out.push({ day: when, at: chips.map((c) => kind.at(c) ?? "").sort().at(kind.first ? 0 : -1)!, text: kind.text(listText(chips.map((c) => c.designator)), chips) });
   }
   for (const { letter, startUp } of summary.drives) {
     if (startUp) out.push({ day: day(startUp.at), at: startUp.at, text: startUpSentence(startUp, summary.drives.length > 1 ? `Drive ${letter}` : "the drive") });

@@ -59,7 +59,7 @@ async function noChipToMove({ pell, ines }: Staff): Promise<void> {
   const made = await receiveCase(pell, "Ferrow Print Works", "office@ferrowprint.example", "Printer and drive on one adapter; the wrong one was plugged in", 3);
   const { id } = await recordDrive(pell, made.id, { ...labelled("PN 3320-0071-A", "RK2-95-63D"), capacity: "2 TB" });
   await recordBoard(pell, id, { role: "original", ...BOARDS["PN 3320-0071-A"], revision: "rev F", dataInController: true, condition: "Clean; no separate memory chip on either side" });
-  await holdCase(ines, made.id, { waitingFor: "customer", reason: "There is no chip that could be moved. We asked whether the drive should go back as it is." });
+  await holdCase(ines, made.id, { waitingFor: "customer", reason: "There is no chip on this board that could be moved. Should the drive go back to you as it is?" });
 }
 
 /** Came by the public form; the enclosure's small board, which may hold the key, did not come along. */
@@ -78,7 +78,7 @@ async function encryptedEnclosure({ pell, mira }: Staff): Promise<void> {
   await recordChip(mira, board.id, { designator: "U3", ...FIRMWARE_CHIP });
   const { id } = await recordShelfBoard(mira, known(kind, { chips: [SHELF_FIRMWARE], origin: "Lot of twelve, spring sale", condition: "Clean", place: "Cabinet 3, drawer 2" }));
   await takeFromShelf(mira, id, { driveId: drive.id });
-  await holdCase(mira, made.id, { waitingFor: "customer", reason: "The enclosure with its small board is missing; it may hold the key to the data. We wrote and asked for it." });
+  await holdCase(mira, made.id, { waitingFor: "customer", reason: "Do you still have the enclosure with its small board? It was not in the parcel, and it may hold the key to your data." });
 }
 
 async function waitsForParcel(): Promise<void> {

@@ -26,6 +26,14 @@ describe("the customer's summary", () => {
     expect(leadSentence(moved)).toContain("now sits on a donor board");
     expect(steps(moved).map((s) => s.text).join(" ")).not.toContain("wrote");
   });
+  it("tells of no read-back before the last write of that day", () => {
+    const told = steps(summary([
+      chip("U3", { approvedAt: "2026-03-12T09:00:00Z", transferredAt: "2026-03-12T10:00:00Z", verifiedAt: "2026-03-12T11:00:00Z", transferKind: "chip-moved" }),
+      chip("U12", { approvedAt: "2026-03-12T13:00:00Z", transferredAt: "2026-03-12T14:00:00Z", verifiedAt: "2026-03-12T15:00:00Z" }),
+    ])).map((s) => /checked|took U3 off|wrote|back/.exec(s.text)?.[0]);
+    expect(told).toEqual(["checked", "took U3 off", "wrote", "back"]);
+  });
+
   it("joins the same step of several chips on one day and keeps the order", () => {
     const told = steps(summary([chip("U3"), chip("U12", { approvedAt: "2026-03-12T15:00:00Z" })]));
     expect(told.map((s) => s.day)).toEqual(["Thu 12 Mar", "Fri 13 Mar", "Fri 13 Mar"]);

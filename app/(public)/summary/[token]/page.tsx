@@ -19,7 +19,7 @@ export default async function SummaryPage({ params }: { params: Promise<{ token:
   const { demo, timeZone, publicUrl } = env();
   return (
     <PublicShell workshop={summary.workshop} demo={demo} line={`Shown to anyone who holds this link, until ${dayYearText(summary.expiresAt, timeZone)}`}>
-      <div role="region" aria-label="Printing" className="no-print mx-auto flex w-[794px] max-w-full items-center justify-between gap-4 py-3.5 text-ink-2 phone:px-4">
+      <div role="region" aria-label="Printing" className="no-print mx-auto flex w-[794px] max-w-full flex-wrap items-center justify-between gap-x-4 gap-y-2 py-3.5 text-ink-2 phone:px-4">
         <p>Made to be printed or kept.</p>
         <span className="flex flex-wrap items-center gap-3"><a className={buttonClass({})} href={`/summary/${token}/pdf`} download>Download as PDF</a><PrintButton /></span>
       </div>
