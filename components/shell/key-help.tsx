@@ -40,6 +40,7 @@ export function KeyHelp({ pages }: { pages: readonly Tab[] }) {
       <button type="button" className="underline" onClick={() => setOpen(true)}>Keys</button>
       <Dialog open={open} onOpenChange={setOpen} title="Keys and pages" description="While this list is open, a digit opens its page.">
         <div className="grid gap-4" onKeyDown={go}>
+          <Checkbox label="Keys of one character act outside fields. Switch them off if you speak to the browser." checked={on} onChange={(event) => setOn(event.target.checked)} />
           <ol className="grid grid-cols-2 gap-x-6 gap-y-1">
             {pages.map((page, i) => <li key={page.key} className="flex gap-2.5"><kbd className="key">{i + 1}</kbd><Link href={page.href} onClick={() => setOpen(false)}>{page.label}</Link></li>)}
           </ol>
@@ -48,12 +49,11 @@ export function KeyHelp({ pages }: { pages: readonly Tab[] }) {
               <h3 className="font-bold">{where}</h3>
               <dl className="grid grid-cols-[152px_minmax(0,1fr)] gap-x-3 gap-y-1">
                 {keys.map(([names, what]) => (
-                  <div key={what} className="contents"><dt className="flex flex-wrap gap-1">{names.map((name) => <kbd key={name} className="key">{name}</kbd>)}</dt><dd>{what}</dd></div>
+                  <div key={what} className="contents"><dt className="flex flex-wrap items-start gap-1">{names.map((name) => <kbd key={name} className="key">{name}</kbd>)}</dt><dd>{what}</dd></div>
                 ))}
               </dl>
             </section>
           ))}
-          <Checkbox label="Keys of one character act outside fields. Switch them off if you speak to the browser." checked={on} onChange={(event) => setOn(event.target.checked)} />
         </div>
       </Dialog>
     </>

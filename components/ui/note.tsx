@@ -14,7 +14,7 @@ const WORD: Record<NoteKind, string> = { block: "Stands in the way", caution: "C
 /** Wash ground, mark, bold first sentence. Pass `role="alert"` for an error that arose here. */
 export function Note({ kind = "note", title, children, role, className = "" }: { kind?: NoteKind; title?: ReactNode; children?: ReactNode; role?: "alert" | "status"; className?: string }) {
   return (
-    <div role={role} className={`grid grid-cols-[16px_minmax(0,1fr)] gap-2.5 px-3 py-2.5 ${GROUND[kind]} ${className}`}>
+    <div role={role} className={`grid grid-cols-[16px_minmax(0,1fr)] gap-2.5 px-3 py-2.5 forced-colors:border ${GROUND[kind]} ${className}`}>
       <Mark kind={kind} label={WORD[kind]} className="mt-0.5" />
       <div>
         {title ? <b className="block">{title}</b> : null}
