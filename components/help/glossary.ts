@@ -16,6 +16,7 @@ export const GLOSSARY: { word: string; means: string }[] = [
   { word: "Digest", means: "A number worked out from all bytes of an image; here SHA-256, 64 hex digits. Equal digests mean equal bytes." },
   { word: "Donor", means: "The board that brings working electronics. It fits when its board number is equal; another number needs a lead’s reason." },
   { word: "Donor shelf", means: "The workshop’s stock of donor boards not yet taken for a drive." },
+  { word: "Erasure", means: "The images of a closed case are destroyed, by a lead or an admin, when their day has come or the customer asked. Digests and log stay." },
   { word: "Finding", means: "What the read check found on a read: a sentence, what to do, and whether it blocks, needs a reason, or is a note." },
   { word: "Hand-out", means: "An image that left the house by download. It is written into the log first." },
   { word: "Hand-over", means: "A drive, board or chip that goes from one person or place to another; the receiver confirms." },

@@ -12,6 +12,7 @@ export function HelpIndex() {
       <Part title="In short">
         <p>A drive only starts on a donor board if its own data comes along, and that sits in one or two small chips on the original board and nowhere else. Here these chips are read several times, the reads are compared, a second person clears one image, it is written to the donor’s chip (or the chip itself is moved), and what is there then is read back and compared again. Every step is written down in a signed log.</p>
         <p>Before your first chip, read the <See topic="cautions">cautions</See> and <See topic="limits">what it does not prove</See>. Your local rules and your workshop’s own licensed practice come before anything that stands here.</p>
+        <p>Where a page of the desk says “What is this?” beside a finding, the link leads to its place here. Press <kbd>?</kbd> on the desk for its keys and pages.</p>
       </Part>
       <WidePart title="Step by step">
         <HelpTable caption="Help by step" head={["Page", "About"]} rows={rows(TOPICS.filter(({ key }) => STEPS.includes(key)))} />

@@ -35,8 +35,9 @@ export function ReturnHelp() {
       </WidePart>
       <Part title="What stays, and how long">
         <Points>
-          <li>Images fall due for erasure some days after the return ({DEFAULT_POLICY.erasureDays} at first), and never later than the customer agreed to. Nothing erases by itself.</li>
-          <li>Digests and the log stay. They hold no image and no name.</li>
+          <li>Images fall due for erasure some days after the return ({DEFAULT_POLICY.erasureDays} at first), and never later than the customer agreed to. A lead may keep them until another day, with a reason.</li>
+          <li>Nothing erases by itself. A lead or an admin erases, on the page of the closed case, from that day on or when the customer asks for it on their private page.</li>
+          <li>Each erasure is a signed entry, and a certificate of it can be printed. Digests and the log stay; they hold no image and no name.</li>
         </Points>
         <p>The whole case can go out as a <See topic="custody" at="bundle">bundle</See> first.</p>
       </Part>
