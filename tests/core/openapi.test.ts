@@ -4,6 +4,7 @@ import { describe, expect, it } from "vitest";
 import { API_EXAMPLES } from "@/components/help/api-examples";
 import { TITLE } from "@/lib/errors";
 import { OPERATIONS, openApiDocument } from "@/lib/http/openapi/document";
+import { API as MATRIX } from "../e2e/authorization-matrix";
 
 const API = path.resolve(import.meta.dirname, "../../app/api");
 /** What answers for itself, and what answers for addresses that lead nowhere. */
@@ -83,6 +84,23 @@ describe("the description of the interface", () => {
     expect(Object.keys(responses).sort()).toEqual(Object.keys(TITLE).sort());
     for (const refusal of Object.values(responses)) expect(refusal.content).toEqual({ "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" } } });
     expect(schemas.Problem.required).toEqual(["type", "title", "status", "detail"]);
+  });
+
+  it("says for whom a call is as the server decides it", () => {
+    const ROLES = ["technician", "lead", "auditor", "admin"] as const;
+    for (const { method, path: at, who } of OPERATIONS) {
+      const rows = MATRIX.filter((row) => row.method === method && row.route.replace(/\[([^\]]+)\]/g, "{$1}") === at);
+      expect(rows.length, `${method} ${at}`).toBe(1);
+      const [{ cells }] = rows;
+      const open = who === "anyone" || who === "whoever has the link";
+      expect(cells.anonymous !== 401, `${method} ${at}: ${who}`).toBe(open);
+      const everybody = open || who === "staff" || who === "whoever is signed in";
+      const named = ROLES.filter((role) => everybody || new RegExp(`\\b${role}\\b`).test(who));
+      const letIn = ROLES.filter((role) => cells[role] !== 403);
+      // a role that may only on a condition ("own reads") is refused by what the matrix asks for
+      if (who.includes(":")) expect(named, `${method} ${at}`).toEqual(expect.arrayContaining(letIn));
+      else expect(named, `${method} ${at}`).toEqual(letIn);
+    }
   });
 
   it("describes no input as anything at all", () => {
