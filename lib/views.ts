@@ -443,6 +443,8 @@ export interface CaseRow {
   state: CaseState;
   /** the day from which the images of a closed case are due for erasure */
   eraseOn: string | null;
+  /** calendar day; null while they are stored */
+  erasedOn: string | null;
   chips: { state: ChipStateCode; label: string; designator: string }[];
 }
 
@@ -845,7 +847,9 @@ export interface RequestPageView {
   slip: boolean;
   /** the request can still be taken back */
   withdraws: boolean;
-  deletion: { askedAt: string; answerBy: string } | null;
+  deletion: { askedAt: string; answerBy: string; answered: { at: string; answer: string | null } | null } | null;
+  /** when the images were erased */
+  erasedAt: string | null;
   summarySentAt: string | null;
   /** when this page ends, once that is known */
   ends: string | null;
@@ -869,7 +873,7 @@ export interface RequestSectionView {
   shown: string;
   closed: boolean;
   link: { ends: string | null; works: boolean };
-  deletion: { askedAt: string; answerBy: string; message: string | null } | null;
+  deletion: { askedAt: string; answerBy: string; daysLeft: number; message: string | null; answered: { at: string; by: string; answer: string | null } | null } | null;
 }
 
 export interface StartUpView extends StartUpFacts {
@@ -916,4 +920,34 @@ export interface ClosingView {
   eraseOn: string | null;
   /** how many days images are kept after the return, as the customer was told */
   keepDays: number;
+}
+
+/** One image that an erasure is about, by what it is kept as in this case. */
+export interface ErasureItemView {
+  sha256: string;
+  sizeBytes: number;
+  names: string[];
+}
+
+/** What is stored of a closed case, how long yet, and what an erasure would take or took. */
+export interface ErasureView {
+  caseId: string;
+  caseRef: string;
+  /** calendar days of the workshop */
+  eraseOn: string | null;
+  kept: { until: string; reason: string } | null;
+  due: boolean;
+  /** why the images can't be erased now; null when they can */
+  refusal: string | null;
+  /** the images of reads, then the photos and documents */
+  goes: ErasureItemView[];
+  bytes: number;
+  photos: number;
+  /** used elsewhere too; `also` names where */
+  stays: (ErasureItemView & { also: string[] })[];
+  /** chips that need transfer and were never verified: their images may be the only copy */
+  unverified: string[];
+  wish: { requestId: string; askedAt: string; answeredAt: string | null } | null;
+  /** the newest first */
+  erasures: { id: string; at: string; by: PersonView; cause: EraseCause; reason: string; images: number; photos: number; bytes: number; erased: ErasureItemView[]; kept: ErasureItemView[] }[];
 }

@@ -12,11 +12,11 @@ import type { CaseRow, ListView } from "@/lib/views";
 import type { ShownState } from "./case-search";
 
 const column = columnsFor<CaseRow>();
-const NONE: Record<Exclude<ShownState, "">, string> = { requested: "No parcel is awaited.", open: "No case is open.", closed: "No case is closed." };
+const NONE: Record<Exclude<ShownState, "">, string> = { requested: "No parcel is awaited.", open: "No case is open.", closed: "No case is closed.", "erasure-due": "No case is due for erasure." };
 const PHONE = { customer: "bare l-top", damage: "bare l-full", drives: "bare l-row", chips: "bare l-row" };
 
 function Chips({ row }: { row: CaseRow }) {
-  if (row.state === "closed") return <span className="text-ink-2">Closed{row.eraseOn ? <span className="block text-t2">Images due for erasure on {dueText(row.eraseOn)} {row.eraseOn.slice(0, 4)}</span> : null}</span>;
+  if (row.state === "closed") return <span className="text-ink-2">Closed{row.erasedOn ? <span className="block text-t2">Images erased on {dueText(row.erasedOn)} {row.erasedOn.slice(0, 4)}</span> : row.eraseOn ? <span className="block text-t2">Images due for erasure on {dueText(row.eraseOn)} {row.eraseOn.slice(0, 4)}</span> : null}</span>;
   if (row.state === "requested") return <FindingLine kind="wait">Requested, parcel not here yet</FindingLine>;
   if (row.chips.length === 0) return <span className="text-ink-3">No chip recorded yet</span>;
   return <>{row.chips.map((chip, i) => <FindingLine key={i} kind={stateMark(chip.state)}><span className="font-mono">{chip.designator}</span> {chip.label}</FindingLine>)}</>;
@@ -52,7 +52,7 @@ export function CaseList({ list, sort, order, q, state, timeZone, today, records
   const empty = q
     ? <Empty title={`No case fits “${q}”.`} action={<ButtonLink href="/cases">Show all cases</ButtonLink>}>The search looks at case number, customer, damage and the drives’ part numbers, models and serials.</Empty>
     : state
-    ? <Empty title={NONE[state]} action={<ButtonLink href="/cases">Show all cases</ButtonLink>}>{state === "requested" ? "Customers ask on the public form, /request. What they sent waits here until its parcel comes." : "The other cases are in the whole list."}</Empty>
+    ? <Empty title={NONE[state]} action={<ButtonLink href="/cases">Show all cases</ButtonLink>}>{state === "requested" ? "Customers ask on the public form, /request. What they sent waits here until its parcel comes." : state === "erasure-due" ? "A closed case stands here from the day on which its images may be erased. Nothing is erased by itself." : "The other cases are in the whole list."}</Empty>
     : <Empty title="No case yet." action={records ? <ButtonLink href="/cases/new">Record a case</ButtonLink> : null}>{records ? "Record the first one; then its drive, boards and chips." : "A technician or a lead records the first one."}</Empty>;
   return <DataTable caption="Cases" columns={columns} list={list} sort={sort} order={order} rowId={(row) => row.id} empty={empty} phone={PHONE} rowClass={(row) => (row.state === "closed" ? "is-aside" : "")} />;
 }

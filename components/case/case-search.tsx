@@ -2,7 +2,7 @@ import Link from "next/link";
 import { Button, ButtonLink } from "@/components/ui/button";
 import { Input } from "@/components/ui/input";
 
-const STATES = [["", "All"], ["requested", "Parcel not here yet"], ["open", "Open"], ["closed", "Closed"]] as const;
+const STATES = [["", "All"], ["requested", "Parcel not here yet"], ["open", "Open"], ["closed", "Closed"], ["erasure-due", "Due for erasure"]] as const;
 export type ShownState = (typeof STATES)[number][0];
 
 /** The list by itself, or only one kind of its cases; what was searched stays. */

@@ -1,15 +1,13 @@
 import { ButtonLink, Buttons } from "@/components/ui/button";
 import { Section } from "@/components/ui/section";
-import { dueText, momentText } from "@/components/ui/times";
+import { momentText } from "@/components/ui/times";
 import type { ClosingView } from "@/lib/views";
 import { KIND_WORDS } from "./closing-words";
 import { ReopenCase } from "./reopen-form";
 
-const dayYear = (day: string) => `${dueText(day)} ${day.slice(0, 4)}`;
-
 /** What went back and how the case ended; nothing is shown before that. */
 export function ClosingSection({ caseId, caseRef, closing, releases, timeZone }: { caseId: string; caseRef: string; closing: ClosingView; releases: boolean; timeZone: string }) {
-  const { returned, closed, eraseOn } = closing;
+  const { returned, closed } = closing;
   if (!returned && !closed) return null;
   return (
     <Section id="closing" title={closed ? "Returned and closed" : "Returned"} note={closed ? "A closed case takes notes, and a hand-over that was under way can be confirmed; all else waits until a lead reopens it." : "A lead closes the case."}>
@@ -29,7 +27,6 @@ export function ClosingSection({ caseId, caseRef, closing, releases, timeZone }:
               <dt>Closed</dt><dd><b>{closed.kind ? KIND_WORDS[closed.kind].label : "Closed"}</b>, {momentText(closed.at, timeZone)}{closed.reason ? <span className="block whitespace-pre-line">{closed.reason}</span> : null}</dd>
             </>
           ) : null}
-          {eraseOn ? <><dt>Images due for erasure on</dt><dd><b>{dayYear(eraseOn)}</b>. {returned ? `The customer was told: ${closing.keepDays} days after the return.` : "Counted from the day on which the case was closed."}</dd></> : null}
         </dl>
         <Buttons>
           {returned ? <ButtonLink href={`/cases/${caseId}/print/return-slip`}>Print the return slip</ButtonLink> : null}

@@ -25,7 +25,7 @@ export function PhotoSheet({ view, timeZone }: { view: PhotoPageView; timeZone: 
   return (
     <>
       <PhotoKeys prev={prev} next={next} />
-      {photo.kind === "photo" ? (
+      {photo.erased ? <p className="border border-dashed border-rule-2 px-5 py-8 text-ink-2">{photo.erased.text}</p> : photo.kind === "photo" ? (
         <div className="mat mat-large"><Image src={pageSrc(photo)} alt={titleOf(photo)} width={Math.round(width * scale)} height={Math.round(height * scale)} unoptimized priority /></div>
       ) : <p className="border border-dashed border-rule-2 px-5 py-8 text-ink-2">A document is not shown here. Download it and open it with a program that you trust.</p>}
       <div className="flex flex-wrap items-start justify-between gap-x-8 gap-y-4 pt-4">
@@ -34,10 +34,10 @@ export function PhotoSheet({ view, timeZone }: { view: PhotoPageView; timeZone: 
           {prev ? <ButtonLink href={`/photos/${prev}`} replace><Icon name="prev" /> Previous</ButtonLink> : null}
           {of > 1 ? <span className="text-t2 text-ink-2">{number} of {of}</span> : null}
           {next ? <ButtonLink href={`/photos/${next}`} replace>Next <Icon name="next" /></ButtonLink> : null}
-          <a href={originalSrc(photo)} download className={buttonClass({})}><Icon name="down" /> Download the original</a>
+          {photo.erased ? null : <a href={originalSrc(photo)} download className={buttonClass({})}><Icon name="down" /> Download the original</a>}
         </Buttons>
       </div>
-      {photo.erased ? <div className="pt-3"><FindingLine kind="aside">{photo.erased.text}</FindingLine></div> : photo.sound ? null : <div className="pt-3"><FindingLine kind="block">The stored original is damaged or missing: what is shown is a copy made before. Send the same file once more, or restore it from a backup.</FindingLine></div>}
+      {photo.erased || photo.sound ? null : <div className="pt-3"><FindingLine kind="block">The stored original is damaged or missing: what is shown is a copy made before. Send the same file once more, or restore it from a backup.</FindingLine></div>}
       <p className="pt-3 text-t2 text-ink-2"><Link href={view.back.href}>Back to {view.back.label}</Link></p>
     </>
   );

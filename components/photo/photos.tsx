@@ -51,7 +51,7 @@ function PhotoCard({ photo, timeZone }: { photo: PhotoView; timeZone: string }) 
   return (
     <li>
       <figure className="photo-card">
-        {photo.kind === "photo" ? (
+        {photo.erased ? <span className="mat erased">Erased</span> : photo.kind === "photo" ? (
           <Link href={`/photos/${photo.id}`} className="mat" aria-label={`${title}, larger`} prefetch={false}>
             <Image src={thumbSrc(photo)} alt="" width={400} height={300} unoptimized loading="lazy" />
           </Link>

@@ -6,6 +6,7 @@ export const PRINTED_WORDS: Record<Printed, { title: string; note: string }> = {
   "read-sheet": { title: "Read sheets", note: "A4, one a chip, for a bench without a screen" },
   "write-ticket": { title: "Write ticket", note: "A6 or A5, for the programmer" },
   "return-slip": { title: "Return slip", note: "A4, lies on top in the parcel" },
+  erasure: { title: "Certificate of erasure", note: "A4, after the images of a closed case were erased" },
   receipt: { title: "Receipt", note: "A5, for whoever brings it in person" },
 };
 

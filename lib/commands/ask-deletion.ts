@@ -22,7 +22,7 @@ export async function askDeletion(token: string, message: string | null): Promis
   await inTransaction(async (tx) => {
     const { found, chains } = await lockCase(tx, open.case.id);
     const request = (await Request.findByPk(open.request.id, { transaction: tx, lock: tx.LOCK.UPDATE }))!;
-    if (request.deletionAskedAt) throw new AppError("rule-against", "You have asked for deletion already. Load the page again: it says by when a lead answers.");
+    if (request.deletionAskedAt) throw new AppError("rule-against", "You have asked for deletion already. Load the page again: it says by when a lead answers, or what was answered.");
     const now = new Date();
     await request.update({ deletionAskedAt: now, deletionMessage: message }, { transaction: tx });
     await appendToCase(tx, chains, SYSTEM, "request.deletion-asked", { type: "request", id: request.id }, { caseRef: found.ref, request: request.id });

@@ -14,7 +14,7 @@ export const WRITE_TICKET_SIZES = ["a6", "a5"] as const satisfies PaperName[];
 export type WriteTicketSize = (typeof WRITE_TICKET_SIZES)[number];
 
 /** What can be printed of a case, as the addresses spell it. */
-export const PRINTED = ["labels", "job-ticket", "read-sheet", "write-ticket", "return-slip", "receipt"] as const;
+export const PRINTED = ["labels", "job-ticket", "read-sheet", "write-ticket", "return-slip", "receipt", "erasure"] as const;
 export type Printed = (typeof PRINTED)[number];
 
 const MM_A_POINT = 25.4 / 72;

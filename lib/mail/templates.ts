@@ -1,4 +1,5 @@
 import { summarySubject, summaryText } from "./summary-text";
+import { deletionAnswerSubject, deletionAnswerText, erasedMailSubject, erasedMailText } from "./erasure-text";
 import { parcelSubject, parcelText } from "./parcel-text";
 import { requestDeskSubject, requestDeskText, requestSubject, requestText } from "./request-text";
 import { returnedSubject, returnedText } from "./returned-text";
@@ -36,6 +37,8 @@ export function mailTemplates({ workshop, timeZone }: { workshop: string; timeZo
       drives: [{ letter: "A", label: "PN 4471-0093-B", head: { seq: 42, hash: SHA } }],
     }) },
     { kind: "case-returned", when: "To the customer, when something goes back", subject: returnedSubject("26-0183"), text: returnedText({ workshop, caseRef: "26-0183", items: ["Drive A with the donor board", "Original board BX 40-3179 rev C"], carrier: "By hand", tracking: null, sealNumber: "S-4411", eraseOn: "10 June 2026" }) },
+    { kind: "deletion-answer", when: "To the customer, when a lead says why their wish for deletion can't be met yet", subject: deletionAnswerSubject("26-0183.4"), text: deletionAnswerText({ workshop, caseRef: "26-0183.4", answer: "Your drive is still being tested. As long as it is here its images may be needed.", askedOn: "12 March 2026", eraseOn: "10 June 2026" }) },
+    { kind: "case-erased", when: "To the customer, when the images of their case were erased", subject: erasedMailSubject("26-0183.4"), text: erasedMailText({ workshop, caseRef: "26-0183.4", cause: "asked-for", images: 6, photos: 4, kept: 1, day: "12 March 2026" }) },
     { kind: "seal", when: "To the auditors, each day and when somebody asks for a seal", subject: sealMailSubject(41, workshop), text: sealMailText({ workshop, number: 41, text: `twinread-seal/1\n41\n2026-03-12T00:00:04.120000Z\n12\n${SHA}\n${SHA}\n`, signature: "A".repeat(86) + "==", keyId: SHA, sha256: SHA }) },
   ];
   return all.map((one) => ({ ...one, text: withNewestSeal(one.text, { number: 41, sha256: SHA }) }));

@@ -2,18 +2,22 @@ import { col, fn, Op, type Order, type WhereOptions } from "sequelize";
 import { allow, inCases, notFound } from "@/lib/commands/refuse";
 import { caseFor } from "@/lib/commands/place";
 import { readCaseRef, withCheck } from "@/lib/core/case-number";
+import { dueDay } from "@/lib/core/erasure";
 import type { Actor } from "@/lib/core/words";
+import { env } from "@/lib/env";
 import type { CaseListInput } from "@/lib/schemas/case";
 import type { CaseRow, CaseState, CaseView, HoldView, ListView } from "@/lib/views";
 import { Case, CustodyHead, Customer, Drive, Share } from "@/models";
 import { boardViews } from "./boards";
 import { driveFactsView, warningsOf } from "./drives";
+import { casesDue } from "./erasure";
 import { chipRecords } from "./chip-records";
 import { chipState } from "./chip-state";
 import { people } from "./people";
 import { currentPolicy } from "./policy";
 import { seenBy } from "./seen-by";
 import { shareView } from "./share-view";
+import { dayIn } from "./workshop-day";
 
 const COLUMN: Record<string, string> = { ref: "ref", due: "dueOn" };
 /** a request without a parcel stands where it came in */
@@ -30,7 +34,7 @@ export async function caseList(actor: Actor, input: CaseListInput): Promise<List
   const column = COLUMN[input.sort];
   const order: Order = [input.sort === "customer" ? [...byName] : column ? [column, direction] : [CAME, input.sort === "received" ? direction : "DESC"], ["ref", "DESC"]];
   const { rows, count } = await Case.findAndCountAll({
-    where: { [Op.and]: [inCases(actor, "id"), await matching(actor, input.q), input.state ? STATES[input.state] : {}] }, include: [{ model: Customer, as: "customer", required: true }], order,
+    where: { [Op.and]: [inCases(actor, "id"), await matching(actor, input.q), input.state === "erasure-due" ? { id: await casesDue(actor) } : input.state ? STATES[input.state] : {}] }, include: [{ model: Customer, as: "customer", required: true }], order,
     limit: input.pageSize, offset: (input.page - 1) * input.pageSize, distinct: true,
   });
   return { items: await seenBy(actor, await caseRows(rows)), total: count, page: input.page, pageSize: input.pageSize };
@@ -66,7 +70,7 @@ export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
   return rows.map((row) => ({
     id: row.id, ref: row.ref, customerName: customers.get(row.customerId)?.name ?? "", damage: row.damage, dueOn: row.dueOn ?? null,
     partNumbers: drives.filter((d) => d.caseId === row.id).map((d) => d.partNumber ?? d.model ?? d.serial).join(", "),
-    receivedAt: row.receivedAt?.toISOString() ?? null, requestedAt: row.requestedAt?.toISOString() ?? null, state: caseState(row), eraseOn: row.eraseOn ?? null,
+    receivedAt: row.receivedAt?.toISOString() ?? null, requestedAt: row.requestedAt?.toISOString() ?? null, state: caseState(row), eraseOn: dueDay({ eraseOn: row.eraseOn ?? null, keptUntil: row.keptUntil ?? null }), erasedOn: row.erasedAt ? dayIn(env().timeZone, row.erasedAt) : null,
     chips: states.filter((s) => s.caseId === row.id).map(({ state, label, designator }) => ({ state, label, designator })),
   }));
 }

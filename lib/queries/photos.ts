@@ -59,7 +59,7 @@ export async function photosOfDrive(actor: Actor, driveId: string): Promise<Phot
 export async function boardPhotos(actor: Actor, driveIds: readonly string[]): Promise<Map<string, PhotoView>> {
   const groups = (await Promise.all(driveIds.map((id) => photosOfDrive(actor, id)))).flat();
   const newest = groups.flatMap(({ of, photos }) => {
-    const photo = of.type === "board" ? photos.findLast((one) => one.kind === "photo") : undefined;
+    const photo = of.type === "board" ? photos.findLast((one) => one.kind === "photo" && !one.erased) : undefined;
     return photo ? [[of.id, photo] as const] : [];
   });
   return new Map(newest);

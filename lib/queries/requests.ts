@@ -12,7 +12,10 @@ import { Board, type Case, Drive, Photo, Request, Share } from "@/models";
 import { stateFacts } from "./chip-facts";
 import { chipRecords } from "./chip-records";
 import { linkEnds, openRequest } from "./open-request";
+import { people } from "./people";
 import { currentPolicy } from "./policy";
+
+const DAY_MS = 86_400_000;
 
 const answersOf = (request: Request): RequestAnswers => JSON.parse(request.answers) as RequestAnswers;
 
@@ -30,9 +33,12 @@ async function stateOf(found: Case): Promise<RequestState> {
   });
 }
 
-function deletionOf(request: Request): { askedAt: string; answerBy: string } | null {
+function deletionOf(request: Request): RequestPageView["deletion"] {
   if (!request.deletionAskedAt) return null;
-  return { askedAt: request.deletionAskedAt.toISOString(), answerBy: deletionAnswerBy(request.deletionAskedAt).toISOString() };
+  return {
+    askedAt: request.deletionAskedAt.toISOString(), answerBy: deletionAnswerBy(request.deletionAskedAt).toISOString(),
+    answered: request.deletionAnsweredAt ? { at: request.deletionAnsweredAt.toISOString(), answer: request.deletionAnswer ?? null } : null,
+  };
 }
 
 /** The customer's private page: facts of this one case, no names of the workshop's people, no bytes of any image. */
@@ -46,7 +52,7 @@ export async function requestPage(token: string): Promise<RequestPageView | null
   return {
     workshop, address: workshopAddress, hours: workshopHours, contact: workshopContact, refChecked: withCheck(found.ref), state: await stateOf(found), answers: answersOf(request),
     photos: await Photo.count({ where: { caseId: found.id, byUserId: null } }), requestedAt: request.requestedAt.toISOString(), receivedAt: found.receivedAt?.toISOString() ?? null, slip: waits, withdraws: waits,
-    deletion: deletionOf(request), summarySentAt: share?.createdAt.toISOString() ?? null, ends: ends?.toISOString() ?? null,
+    deletion: deletionOf(request), erasedAt: found.erasedAt?.toISOString() ?? null, summarySentAt: share?.createdAt.toISOString() ?? null, ends: ends?.toISOString() ?? null,
   };
 }
 
@@ -69,6 +75,9 @@ export async function requestSection(actor: Actor, caseId: string): Promise<Requ
   return {
     id: request.id, answers: answersOf(request), requestedAt: request.requestedAt.toISOString(), shown: (await stateOf(found)).title, closed: found.closedAt !== null && found.closedAt !== undefined,
     link: { ends: ends?.toISOString() ?? null, works: !ends || ends.getTime() > Date.now() },
-    deletion: deletion && { ...deletion, message: request.deletionMessage ?? null },
+    deletion: deletion && {
+      ...deletion, daysLeft: Math.ceil((Date.parse(deletion.answerBy) - Date.now()) / DAY_MS), message: request.deletionMessage ?? null,
+      answered: deletion.answered && { ...deletion.answered, by: (await people())(request.deletionAnsweredBy ?? null).name },
+    },
   };
 }

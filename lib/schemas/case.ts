@@ -23,6 +23,6 @@ export const listInput = z.object({
 });
 export type ListInput = z.infer<typeof listInput>;
 
-/** `requested`: the parcel is not here yet */
-export const caseListInput = listInput.extend({ state: z.enum(["", "requested", "open", "closed"]).default("") });
+/** `requested`: the parcel is not here yet; `erasure-due`: closed, and the day of its images has come */
+export const caseListInput = listInput.extend({ state: z.enum(["", "requested", "open", "closed", "erasure-due"]).default("") });
 export type CaseListInput = z.input<typeof caseListInput> & ListInput;

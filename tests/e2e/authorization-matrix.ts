@@ -63,6 +63,7 @@ export const API: ApiRow[] = [
   { method: "POST", route: "/api/requests/withdrawal", body: () => ({ token: "x".repeat(43) }), cells: anyone(404) },
   change("POST", "/api/requests/[id]/link", roles(403, 404, 403, 404)),
   change("DELETE", "/api/requests/[id]/link", roles(403, 404, 403, 404)),
+  change("POST", "/api/requests/[id]/deletion-answer", roles(403, 404, 403, 404), () => ({ answer: "Tried by the authorization matrix." })),
   { method: "GET", route: "/summary/[token]/pdf", at: () => `/summary/${"x".repeat(43)}/pdf`, cells: anyone(404) },
   { method: "POST", route: "/api/shares/opened", body: () => ({ token: "x".repeat(43) }), cells: anyone(404) },
 
@@ -125,6 +126,9 @@ export const API: ApiRow[] = [
   change("POST", "/api/cases/[id]/return", BENCH, () => ({ items: ["Drive A"], toPerson: "Nobody" })),
   change("POST", "/api/cases/[id]/closing", LEAD, () => ({ kind: "cancelled", ...reason() })),
   change("POST", "/api/cases/[id]/reopening", LEAD, reason),
+  look("/api/cases/[id]/erasure", (t) => `/api/cases/${t.caseId}/erasure`),
+  change("POST", "/api/cases/[id]/erasure", roles(403, 404, 403, 404), () => ({ caseRef: "26-0001", ...reason() })),
+  change("POST", "/api/cases/[id]/keeping", roles(403, 404, 403, 404), () => ({ until: "2099-01-01", ...reason() })),
   change("POST", "/api/chips/[id]/approval-request", BENCH, () => ({})),
   change("POST", "/api/chips/[id]/approval", LEAD, (t) => ({ sha256: "0".repeat(64), donorChipId: t.unknown, statement: "Tried by the matrix." })),
   change("POST", "/api/chips/[id]/sending-back", LEAD, reason),

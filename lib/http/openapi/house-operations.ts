@@ -2,6 +2,7 @@ import { z } from "zod";
 import { auditAsked } from "@/lib/schemas/audit";
 import { listInput } from "@/lib/schemas/case";
 import { assessmentInput, policyInput } from "@/lib/schemas/policy";
+import { deletionAnswerInput } from "@/lib/schemas/erasure";
 import { deletionInput, requestInput, withdrawalInput } from "@/lib/schemas/request";
 import { keyChangeInput, proofInput, sealFileInput, sealListInput } from "@/lib/schemas/seal";
 import { passwordInput, tokenInput, userChange, userInput } from "@/lib/schemas/user";
@@ -46,6 +47,7 @@ export const HOUSE_OPERATIONS: readonly Operation[] = [
   ofThePages("POST /api/requests/deletion", "whoever has the link", "Asks for deletion.", { body: deletionInput, once: true }),
   ofThePages("POST /api/requests/withdrawal", "whoever has the link", "Withdraws a request.", { body: withdrawalInput, once: true }),
   ofThePages("POST /api/requests/{id}/link", "lead, admin", "Makes a new private link for a request and mails it."),
+  ofThePages("POST /api/requests/{id}/deletion-answer", "lead, admin", "Tells a customer who asked for deletion why that can’t be done yet.", { body: deletionAnswerInput }),
   ofThePages("DELETE /api/requests/{id}/link", "lead, admin", "Ends a request’s private link."),
   stable("GET /api/openapi.json", "anyone", "This description."),
 ];

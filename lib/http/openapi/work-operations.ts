@@ -3,6 +3,7 @@ import { caseInput, caseListInput } from "@/lib/schemas/case";
 import { chipCorrection, chipInput } from "@/lib/schemas/chip";
 import { closingInput, reopeningInput, returnInput } from "@/lib/schemas/closing";
 import { driveCorrection, driveInput, driveLook } from "@/lib/schemas/drive";
+import { erasureInput, keepingInput } from "@/lib/schemas/erasure";
 import { confirmationInput, handOverInput } from "@/lib/schemas/hand-over";
 import { caseCorrection, holdInput, noteInput, resumeInput } from "@/lib/schemas/note";
 import { photoInput } from "@/lib/schemas/photo";
@@ -36,6 +37,9 @@ export const WORK_OPERATIONS: readonly Operation[] = [
   ofThePages("POST /api/cases/{id}/return", BENCH, "Records what went back.", { body: returnInput, status: 201 }),
   ofThePages("POST /api/cases/{id}/closing", "lead", "Closes a case.", { body: closingInput }),
   ofThePages("POST /api/cases/{id}/reopening", "lead", "Reopens a closed case.", { body: reopeningInput }),
+  ofThePages("GET /api/cases/{id}/erasure", "staff", "What is stored of a closed case, how long yet, and what an erasure took."),
+  ofThePages("POST /api/cases/{id}/erasure", "lead, admin", "Erases the images of a closed case, for good. Digests stay.", { body: erasureInput }),
+  ofThePages("POST /api/cases/{id}/keeping", "lead, admin", "Keeps the images of a closed case longer; without a day that keeping ends.", { body: keepingInput }),
   ofThePages("GET /api/bench", "staff", "The bench: chips and what to do next.", { answer: items }),
 
   ofThePages("GET /api/drives/{id}", "staff", "One drive."),

@@ -7,6 +7,8 @@ import { LatestEntries } from "@/components/custody/latest-entries";
 import { ClosingSection } from "@/components/closing/closing-section";
 import { ReturnSteps, StartUpSteps, stepThatLeads } from "@/components/closing/closing-steps";
 import { AddDrive } from "@/components/drive/add-drive";
+import { ImagesSection } from "@/components/erasure/images-section";
+import { WishNote } from "@/components/erasure/wish-note";
 import { NotesSection } from "@/components/note/notes-section";
 import { CasePhotos } from "@/components/photo/case-photos";
 import { ParcelSection } from "@/components/receive/parcel-section";
@@ -21,6 +23,7 @@ import { orNotFound } from "@/lib/http/page-errors";
 import { caseView } from "@/lib/queries/cases";
 import { closingView } from "@/lib/queries/closing";
 import { custodyOfDrive } from "@/lib/queries/custody";
+import { erasureView } from "@/lib/queries/erasure";
 import { addsPhotos, photoCounts, photosOf } from "@/lib/queries/photos";
 import { driveToRecord } from "@/lib/queries/drives";
 import { notesOf } from "@/lib/queries/notes";
@@ -41,6 +44,7 @@ export default async function CasePage({ params, searchParams }: { params: Promi
   const { user, timeZone } = session;
   const now = new Date();
   const closing = await closingView(actor, id);
+  const erasure = await erasureView(actor, id);
   const leads = stepThatLeads(view, closing, user);
   const receipt = await receiptView(actor, id);
   const request = await requestSection(actor, id);
@@ -58,9 +62,10 @@ export default async function CasePage({ params, searchParams }: { params: Promi
         {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive {...drive} /></div> : null}
         <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} leads={leads} tests={<StartUpSteps closing={closing} user={user} leads={leads} />} end={<ReturnSteps view={view} closing={closing} user={user} leads={leads} />} /></Section>
         <ClosingSection caseId={id} caseRef={view.ref} closing={closing} releases={may(actor, "case.release")} timeZone={timeZone} />
+        {erasure ? <ImagesSection view={erasure} told={closing.returned ? `The customer was told: ${closing.keepDays} days after the return.` : "Counted from the day on which the case was closed."} erases={may(actor, "case.erase")} timeZone={timeZone} /> : null}
         {view.state === "requested" ? null : parcel}
         <NotesSection view={view} notes={notes} user={user} timeZone={timeZone} />
-        {request ? <RequestSection view={request} timeZone={timeZone} answers={may(actor, "request.answer")} /> : null}
+        {request ? <RequestSection view={request} wish={request.deletion ? <WishNote view={{ ...request, deletion: request.deletion }} timeZone={timeZone} answers={may(actor, "request.answer")} /> : null} timeZone={timeZone} answers={may(actor, "request.answer")} /> : null}
         <Section id="photos" title="Photos" note="Of the parcel, its papers and what came along. Kept as they came; copies are shown.">
           <CasePhotos caseId={id} caseRef={view.ref} photos={photos} adds={addsPhoto} timeZone={timeZone}
             drives={view.drives.map(({ id: driveId, letter }) => ({ id: driveId, letter, photos: counts.find((one) => one.driveId === driveId)?.photos ?? 0 }))} />

@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import { notFound } from "next/navigation";
 import type { ReactNode } from "react";
+import { ErasureCertificate } from "@/components/print/erasure-certificate";
 import { JobTicket } from "@/components/print/job-ticket";
 import { LabelSheet } from "@/components/print/label-sheet";
 import { PrintBar } from "@/components/print/print-bar";
@@ -20,6 +21,7 @@ import { signedIn } from "@/lib/auth/page";
 import { LABEL_SIZES, type PaperName, PAPERS, PRINTED, type Printed, WRITE_TICKET_SIZES } from "@/lib/core/paper";
 import type { Actor } from "@/lib/core/words";
 import { orNotFound } from "@/lib/http/page-errors";
+import { erasureView } from "@/lib/queries/erasure";
 import { printCase } from "@/lib/queries/print-case";
 import { printLabels } from "@/lib/queries/print-labels";
 import { printReadSheets } from "@/lib/queries/print-read-sheets";
@@ -67,6 +69,10 @@ async function make(actor: Actor, what: Printed, view: PrintCaseView, asked: Ask
       return { paper: "a5", flows: true, sheets: [<JobTicket key="ticket" view={view} />] };
     case "return-slip":
       return { paper: "a4", flows: true, sheets: [<ReturnSlip key="slip" view={view} />] };
+    case "erasure": {
+      const erasure = await erasureView(actor, view.case.id);
+      return { paper: "a4", flows: true, sheets: (erasure?.erasures ?? []).map((one) => <ErasureCertificate key={one.id} view={view} erasure={one} />), none: "Nothing of this case was erased yet. A lead or an admin erases the images of a closed case on its page, from its day on or when the customer asks." };
+    }
     case "receipt":
       return { paper: "a5", flows: true, sheets: [<ReceiptSheet key="receipt" view={view} />] };
   }
