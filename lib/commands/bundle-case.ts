@@ -9,6 +9,7 @@ import { readView } from "@/lib/queries/read-view";
 import { derivedFacts } from "@/lib/core/derived";
 import { FORMAT_ENDING } from "@/lib/core/text-format";
 import { Approval, ApprovalRequest, Board, type Case, Chip, Customer, type Drive, Image, Read, type Transaction, Transfer } from "@/models";
+import { bundleAround } from "./bundle-around";
 import { bundlePhotos } from "./bundle-photos";
 import { driveLetter } from "./place";
 
@@ -58,14 +59,15 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
   const customer = (await Customer.findByPk(found.customerId, at))!;
   const images: BundleImage[] = [];
   const photos = await bundlePhotos(tx, { caseId: found.id, drives, boards, chips, who: rows.who });
+  const around = await bundleAround(tx, found.id, drives.map((drive) => drive.id), rows.who);
   const record = {
     ref: found.ref, id: found.id, requestedAt: found.requestedAt?.toISOString() ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, recordedBy: found.createdBy ? rows.who(found.createdBy) : null, damage: found.damage, note: found.note ?? null,
-    dueOn: found.dueOn ?? null, closedAt: found.closedAt?.toISOString() ?? null, closedReason: found.closedReason ?? null, ...(found.erasedAt ? { imagesErasedAt: found.erasedAt.toISOString() } : {}),
+    dueOn: found.dueOn ?? null, closedAt: found.closedAt?.toISOString() ?? null, closedReason: found.closedReason ?? null, receipt: around.receipt, returned: around.returned, ...(found.erasedAt ? { imagesErasedAt: found.erasedAt.toISOString() } : {}),
     customer: { name: customer.name, email: customer.email, phone: customer.phone ?? null, contact: customer.contact ?? null },
     drives: drives.map((drive, i) => ({
       number: i + 1, letter: driveLetter(drive), id: drive.id, partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null,
       interface: drive.interface ?? null, capacity: drive.capacity ?? null, made: drive.made ?? null, firmware: drive.firmware ?? null, encryption: drive.encryption ?? null,
-      recordedAt: drive.createdAt.toISOString(), logUpTo: heads.get(drive.id)!, boards: boardRecords(rows, drive.id, i + 1, images), photos: photos.ofDrive.get(drive.id) ?? [],
+      recordedAt: drive.createdAt.toISOString(), logUpTo: heads.get(drive.id)!, boards: boardRecords(rows, drive.id, i + 1, images), startUpTests: around.startUpTests(drive.id), photos: photos.ofDrive.get(drive.id) ?? [],
     })),
     photos: photos.ofCase,
   };

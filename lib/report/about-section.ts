@@ -1,6 +1,7 @@
 import { countOf, sizeText } from "@/lib/core/quantity";
-import { code, INK_3, plain, quiet, strong } from "./ink";
-import type { ReportFacts } from "./report-facts";
+import type { AsSent } from "@/lib/core/words";
+import { code, INK_3, plain, quiet, type Span, strong } from "./ink";
+import type { ReportFacts, ReportReceipt, ReportReturn } from "./report-facts";
 import { boardName, dayText, driveName, momentText } from "./report-words";
 import type { Sheet } from "./sheet";
 import { Table } from "./table";
@@ -55,6 +56,29 @@ export function howToCheck(sheet: Sheet, { record, logKey, seal, twoPersonRule }
   ]);
 }
 
+type Line = readonly [string, Span[] | null];
+
+const AS_SENT: Record<AsSent, string> = { yes: "as it was sent", no: "not as it was sent", none: "none was there" };
+
+function receiptLines(receipt: ReportReceipt | null): Line[] {
+  if (!receipt) return [];
+  const { carrier, tracking, sealAsSent, sealNumber, smallBoard, accessories, condition, differs } = receipt;
+  return [
+    ["Parcel", [plain([condition, carrier && `by ${carrier}`, tracking && `tracking ${tracking}`].filter(Boolean).join("; "))]],
+    ["Seal", [plain(`${AS_SENT[sealAsSent]}${sealNumber ? `, number ${sealNumber}` : ""}`)]],
+    ["Small board", [plain(smallBoard === "yes" ? "the enclosure came with its small board" : smallBoard === "no" ? "the enclosure’s small board did not come" : "no enclosure")]],
+    ["With it", accessories ? [plain(accessories)] : null],
+    ["Not as asked", differs ? [plain(differs)] : null],
+  ];
+}
+
+function returnLines(returned: ReportReturn | null): Line[] {
+  if (!returned) return [];
+  const { at, by, to, items, carrier, tracking, sealNumber, note } = returned;
+  const way = [carrier && `by ${carrier}`, tracking && `tracking ${tracking}`, sealNumber && `seal ${sealNumber}`].filter(Boolean).join(", ");
+  return [["Returned", [plain(`${momentText(at)}, to ${to}${way ? `, ${way}` : ""}; sent by ${by}`), quiet(`\n${items.join("; ")}${note ? `. ${note}` : ""}`, { size: 8.5 })]]];
+}
+
 export function parties(sheet: Sheet, { record, logs }: ReportFacts): void {
   sheet.heading(1, "Parties", { number: "2" });
   const { customer } = record;
@@ -66,9 +90,11 @@ export function parties(sheet: Sheet, { record, logs }: ReportFacts): void {
     ["Workshop", [strong(record.workshop)]],
     ["Requested", record.requestedAt ? [plain(momentText(record.requestedAt))] : null],
     ["Received", [plain(`${record.receivedAt ? momentText(record.receivedAt) : "not yet"}${record.recordedBy ? `, recorded by ${record.recordedBy.name}` : ""}`)]],
+    ...receiptLines(record.receipt ?? null),
     ["Damage", [plain(record.damage)]],
     ["Note", record.note ? [plain(record.note)] : null],
     ["Due", record.dueOn ? [plain(dayText(record.dueOn))] : null],
+    ...returnLines(record.returned ?? null),
     ["Closed", record.closedAt ? [plain(`${momentText(record.closedAt)}${record.closedReason ? `: ${record.closedReason}` : ""}`)] : null],
   ]);
   const people = new Map<string, { name: string; role: string; entries: number; first: string; last: string }>();

@@ -1,10 +1,11 @@
 import { ENCRYPTION_WORDS, encryptionCaution } from "@/lib/core/encryption";
 import { NO_CHIP_TEXT, NO_CHIP_TITLE } from "@/lib/core/no-chip";
 import { sizeText } from "@/lib/core/quantity";
+import { startUpWords } from "@/lib/core/start-up";
 import { unitWords } from "@/lib/core/two-chips";
 import { code, type Span, plain, quiet, strong } from "./ink";
 import { photoPart } from "./photo-section";
-import type { ReportBoard, ReportCase, ReportFacts } from "./report-facts";
+import type { ReportBoard, ReportCase, ReportDrive, ReportFacts } from "./report-facts";
 import { boardName, chipKind, driveName, FIT, momentText } from "./report-words";
 import type { Sheet } from "./sheet";
 import { Table } from "./table";
@@ -31,6 +32,7 @@ export async function drives(sheet: Sheet, facts: ReportFacts): Promise<void> {
       chipTable(sheet, record, board);
       await sheet.breathe();
     }
+    startUps(sheet, drive);
     if (drive.photos?.length) {
       sheet.heading(3, `Photos and documents of ${driveName(drive)}`, { keep: 130 });
       await photoPart(sheet, facts, drive.photos);
@@ -40,6 +42,18 @@ export async function drives(sheet: Sheet, facts: ReportFacts): Promise<void> {
     sheet.heading(2, "Photos and documents of the case", { number: `3.${record.drives.length + 1}`, keep: 130 });
     await photoPart(sheet, facts, record.photos);
   }
+}
+
+/** The drive with its donor board under power. */
+function startUps(sheet: Sheet, drive: ReportDrive): void {
+  if (!drive.startUpTests?.length) return;
+  sheet.heading(3, `Start-up tests of ${driveName(drive)}`);
+  const table = new Table(sheet, [{ head: "When, UTC", width: 118 }, { head: "By", width: 96 }, { head: "What was seen", width: 0 }], { name: `Start-up tests of ${driveName(drive)}` });
+  for (const test of drive.startUpTests) {
+    const other = test.serialMatches === false ? ` It reported the serial ${test.reportedSerial ?? "of another drive"}.` : "";
+    table.row([[plain(momentText(test.at))], [plain(test.by)], [plain(`It ${startUpWords(test)}.${other}`), ...(test.note ? [quiet(`\n${test.note}`, { size: 8.5 })] : [])]]);
+  }
+  table.end();
 }
 
 const known = (text: string | null): Span[] => (text ? [code(text)] : [quiet("not recorded")]);

@@ -1,5 +1,6 @@
 import type { EntryKind } from "@/lib/core/custody-actions";
-import type { BoardRole, Bus, Encryption, EraseCause, PhotoKind, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
+import type { StartUpFacts } from "@/lib/core/start-up";
+import type { AsSent, BoardRole, Bus, Encryption, EraseCause, PhotoKind, Policy, Role, SizeSource, TransferKind } from "@/lib/core/words";
 import type { PersonView, ReadView } from "@/lib/views";
 
 /** What a report is made from: the case as in case.json, the logs up to their heads, and what the strips show. Plain data. */
@@ -94,6 +95,34 @@ export interface ReportPhoto {
   by: PersonView | "customer";
 }
 
+export type ReportStartUp = StartUpFacts & { at: string; by: string; note: string | null };
+
+/** the parcel as it came, beside what was asked for */
+export interface ReportReceipt {
+  at: string;
+  by: string;
+  condition: string;
+  carrier: string | null;
+  tracking: string | null;
+  sealAsSent: AsSent;
+  sealNumber: string | null;
+  smallBoard: AsSent;
+  accessories: string | null;
+  differs: string | null;
+}
+
+/** what went back to the customer, and how */
+export interface ReportReturn {
+  at: string;
+  by: string;
+  to: string;
+  items: string[];
+  carrier: string | null;
+  tracking: string | null;
+  sealNumber: string | null;
+  note: string | null;
+}
+
 export interface ReportDrive {
   number: number;
   letter: string;
@@ -109,6 +138,7 @@ export interface ReportDrive {
   recordedAt: string;
   logUpTo: { seq: number; hash: string };
   boards: ReportBoard[];
+  startUpTests?: ReportStartUp[];
   photos?: ReportPhoto[];
 }
 
@@ -130,6 +160,8 @@ export interface ReportCase {
   dueOn: string | null;
   closedAt: string | null;
   closedReason: string | null;
+  receipt?: ReportReceipt | null;
+  returned?: ReportReturn | null;
   customer: { name: string; email: string; phone: string | null; contact: string | null };
   drives: ReportDrive[];
   photos?: ReportPhoto[];

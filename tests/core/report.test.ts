@@ -33,6 +33,14 @@ describe("the report of a case", () => {
     text = textOf(file);
   });
 
+  it("tells how the parcel came, what the start-up tests showed and what went back", () => {
+    for (const words of [
+      "One corner crushed, padding whole; by Marsh Post; tracking MP 7781 20", "not as it was sent, number S-90211", "Serial number is not so: 9KQ3-70BB-D2.", "Start-up tests of Drive A",
+      "It spins, gets ready and reports another serial than its label; 1 attempt. It reported the serial ZZ-1.", "It spins, gets ready and reports the serial of its label; 2 attempts.",
+      "to Lindmoor Veterinary Practice, by Marsh Post, seal S-90212; sent by Ines Okafor", "Drive A; Original board. The cable is in the same box.",
+    ]) expect(text).toContain(words);
+  });
+
   it("holds every digest in full and every finding with its advice", () => {
     const { logs: _logs, drawing: _drawing, ...rest } = facts;
     const digests = new Set(JSON.stringify(rest).match(HEX));

@@ -78,9 +78,16 @@ export function madeCase({ reads = 4, entries = 30, fileName = "u12 first try.bi
   const log = logOf(entries, sha(image), text);
   const record: ReportFacts["record"] = {
     workshop: "Halden Street Data Workshop", madeAt: at(60), policy: DEFAULT_POLICY, ref: "26-0183", id: uuid(40), receivedAt: at(0), recordedBy: MIRA, damage: "Power surge; smell of burning at the connector", note: text, dueOn: "2026-03-20",
-    closedAt: null, closedReason: null, customer: { name: "Lindmoor Veterinary Practice", email: "desk@lindmoor.example", phone: "+44 20 7946 0018", contact: "Zoë Šimková" },
+    closedAt: null, closedReason: null,
+    receipt: { at: at(0), by: MIRA.name, condition: "One corner crushed, padding whole", carrier: "Marsh Post", tracking: "MP 7781 20", sealAsSent: "no", sealNumber: "S-90211", smallBoard: "yes", accessories: "a cable", differs: "Serial number is not so: 9KQ3-70BB-D2." },
+    returned: { at: at(50), by: INES.name, to: "Lindmoor Veterinary Practice", items: ["Drive A", "Original board"], carrier: "Marsh Post", tracking: null, sealNumber: "S-90212", note: "The cable is in the same box." },
+    customer: { name: "Lindmoor Veterinary Practice", email: "desk@lindmoor.example", phone: "+44 20 7946 0018", contact: "Zoë Šimková" },
     drives: [{
       number: 1, letter: "A", id: uuid(41), partNumber: "PN 4471-0093-B", model: null, serial: "9KQ3-61A2-F0", interface: "SATA", recordedAt: at(0), logUpTo: { seq: log.length, hash: log.at(-1)?.hash ?? "0".repeat(64) },
+      startUpTests: [
+        { at: at(40), by: MIRA.name, spins: true, ready: true, reportedSerial: "ZZ-1", serialMatches: false, attempts: 1, note: "Powered off at once." },
+        { at: at(45), by: MIRA.name, spins: true, ready: true, reportedSerial: "9KQ3-61A2-F0", serialMatches: true, attempts: 2, note: null },
+      ],
       boards: [
         { label: "original", id: uuid(42), role: "original", boardNumber: "BX 40-3179", ...board, fit: null, chips: [original] },
         { label: "donor-1", id: uuid(43), role: "donor", boardNumber: "BX 40-3179", ...board, condition: null, revision: "rev D", fit: { verdict: "caution", differences: ["Another revision: rev D; the original has rev C."], reason: null }, chips: [donor] },
