@@ -178,7 +178,8 @@ export interface ChipView extends ChipSummary {
   /** the other chips of the original that are moved together with this one, for a donor's chip with its pair */
   siblings: Sibling[];
   board: { id: string; role: BoardRole; boardNumber: string; revision: string | null };
-  case: { id: string; ref: string; dueOn: string | null; customerName: string };
+  /** a case that is not open takes no change */
+  case: { id: string; ref: string; dueOn: string | null; customerName: string; open: boolean };
   policy: Policy;
   /** the chip's own reads and, for an original, also the paired donor chip's reads */
   reads: ReadView[];
@@ -732,6 +733,8 @@ export interface ToReceiveRow {
   customerName: string;
   damage: string;
   dueOn: string | null;
+  /** the day by which the customer needs it, as they typed it */
+  neededBy: string | null;
   /** part number, model or serial number, as the customer gave it */
   partNumber: string | null;
   requestedAt: string;
@@ -752,6 +755,9 @@ export interface ParcelView {
   /** a word of lib/core/request-words.ts; null for a case made at the desk */
   enclosure: string | null;
   boardHidden: boolean;
+  dueOn: string | null;
+  /** the day by which the customer needs it, as they typed it */
+  neededBy: string | null;
 }
 
 /** One printed label: which plate it carries, the large word on it, and the lines below. */

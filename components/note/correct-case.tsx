@@ -9,6 +9,7 @@ import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { Input } from "@/components/ui/input";
 import { TextArea } from "@/components/ui/text-area";
+import { dueText } from "@/components/ui/times";
 import { useChange } from "@/components/ui/use-change";
 import { send } from "@/lib/http/send";
 import { caseCorrection } from "@/lib/schemas/note";
@@ -16,7 +17,7 @@ import type { CaseView } from "@/lib/views";
 
 const form = z.strictObject({ ...caseCorrection.shape.changes.shape, reason: caseCorrection.shape.reason });
 
-function CorrectCaseForm({ view, onClose }: { view: CaseView; onClose(): void }) {
+function CorrectCaseForm({ view, neededBy, onClose }: { view: CaseView; neededBy: string | null; onClose(): void }) {
   const router = useRouter();
   const { refusal, busy, attempt } = useChange();
   const before = {
@@ -36,7 +37,7 @@ function CorrectCaseForm({ view, onClose }: { view: CaseView; onClose(): void })
       <div className="grid grid-cols-2 gap-4 slim:grid-cols-1">
         <TextArea label="Damage" className="col-span-full" error={errors.damage?.message} {...register("damage")} />
         <TextArea label="Bench note" className="col-span-full" error={errors.note?.message} {...register("note")} />
-        <Input label="Due on" type="date" error={errors.dueOn?.message} {...register("dueOn")} />
+        <Input label="Due on" type="date" hint={neededBy ? `The customer asked for ${dueText(neededBy)}.` : undefined} error={errors.dueOn?.message} {...register("dueOn")} />
         <Input label="Customer’s name" error={errors.customerName?.message} {...register("customerName")} />
         <Input label="Company" error={errors.customerCompany?.message} {...register("customerCompany")} />
         <Input label="E-mail for the summary" type="email" error={errors.customerEmail?.message} {...register("customerEmail")} />
@@ -48,12 +49,12 @@ function CorrectCaseForm({ view, onClose }: { view: CaseView; onClose(): void })
   );
 }
 
-export function CorrectCase({ view }: { view: CaseView }) {
+export function CorrectCase({ view, neededBy }: { view: CaseView; /** as the request says */ neededBy: string | null }) {
   const [open, setOpen] = useState(false);
   return (
     <>
       <Button size="small" onClick={() => setOpen(true)}>Correct the case…</Button>
-      {open ? <CorrectCaseForm view={view} onClose={() => setOpen(false)} /> : null}
+      {open ? <CorrectCaseForm view={view} neededBy={neededBy} onClose={() => setOpen(false)} /> : null}
     </>
   );
 }

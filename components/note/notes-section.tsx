@@ -9,7 +9,7 @@ import { HoldCase } from "./hold-case";
 import { lateText, waitsText } from "./note-words";
 
 /** Whom the case waits for, and what people wrote down about it. */
-export function NotesSection({ view, notes, user, timeZone }: { view: CaseView; notes: NoteView[]; user: SessionView["user"]; timeZone: string }) {
+export function NotesSection({ view, notes, user, timeZone, neededBy }: { view: CaseView; notes: NoteView[]; user: SessionView["user"]; timeZone: string; /** as the request says */ neededBy: string | null }) {
   const writes = may(user, "note.add");
   const open = view.state !== "closed";
   const drives = view.drives.map(({ id, letter }) => ({ id, letter }));
@@ -37,7 +37,7 @@ export function NotesSection({ view, notes, user, timeZone }: { view: CaseView; 
         <div className="no-print flex flex-wrap gap-2">
           {writes ? <AddNote caseId={view.id} drives={drives} /> : null}
           {open && may(user, "case.hold") ? <HoldCase caseId={view.id} hold={view.hold} /> : null}
-          {open && may(user, "fact.correct") ? <CorrectCase view={view} /> : null}
+          {open && may(user, "fact.correct") ? <CorrectCase view={view} neededBy={neededBy} /> : null}
         </div>
       </div>
     </Section>

@@ -8,6 +8,7 @@ import { Button, ButtonLink, Buttons } from "@/components/ui/button";
 import { Input } from "@/components/ui/input";
 import { Note } from "@/components/ui/note";
 import { TextArea } from "@/components/ui/text-area";
+import { dueText } from "@/components/ui/times";
 import { useChange } from "@/components/ui/use-change";
 import { send } from "@/lib/http/send";
 import { type ReceiptInput, receiptInput } from "@/lib/schemas/receipt";
@@ -38,7 +39,7 @@ export function ReceiveForm({ parcel }: { parcel: ParcelView }) {
   const { refusal, busy, attempt } = useChange();
   const { register, control, handleSubmit, setValue, formState: { errors, isSubmitSuccessful } } = useForm<Form, unknown, ReceiptInput>({
     resolver: zodResolver(receiptInput),
-    defaultValues: { lines: lines.map(({ what }) => ({ what, asSent: UNSEEN, text: "" })), sealAsSent: UNSEEN, sealNumber: "", smallBoard: UNSEEN, carrier: "", tracking: "", parcelCondition: "", accessories: "", differs: "" },
+    defaultValues: { lines: lines.map(({ what }) => ({ what, asSent: UNSEEN, text: "" })), sealAsSent: UNSEEN, sealNumber: "", smallBoard: UNSEEN, carrier: "", tracking: "", parcelCondition: "", accessories: "", differs: "", dueOn: parcel.dueOn ?? parcel.neededBy ?? "" },
   });
   const submit = handleSubmit(async (input) => {
     // beside a line that is as sent nothing is to be said, whatever was typed before
@@ -68,6 +69,7 @@ export function ReceiveForm({ parcel }: { parcel: ParcelView }) {
         <Input label="Tracking number" mono autoComplete="off" error={errors.tracking?.message} {...register("tracking")} />
         <TextArea className="col-span-full" label="Condition of the parcel" rows={2} hint="Box, padding, anti-static bag, anything loose or bent. Leave names out: this goes into the log." error={errors.parcelCondition?.message} {...register("parcelCondition")} />
         <Input label="What else came" autoComplete="off" hint="Cables, adapter, screws, other drives" error={errors.accessories?.message} {...register("accessories")} />
+        <Input label="Due date" type="date" hint={parcel.neededBy ? `The customer needs it by ${dueText(parcel.neededBy)}. Change it to what you can keep.` : "Leave empty when none was agreed"} error={errors.dueOn?.message} {...register("dueOn")} />
         <Input label="What else is different" autoComplete="off" hint="From what the request says" error={errors.differs?.message} {...register("differs")} />
       </div>
       {refusal ? <Note kind="block" role="alert" title="The parcel was not received.">{refusal}</Note> : null}

@@ -36,10 +36,19 @@ export async function receiveParcel(actor: Actor, caseId: string, input: Receipt
       caseRef: found.ref, receipt: receipt.id, carrier: receipt.carrier ?? null, tracking: receipt.tracking ?? null, sealAsSent: receipt.sealAsSent, sealNumber: receipt.sealNumber ?? null,
       smallBoard: receipt.smallBoard, condition: receipt.parcelCondition, accessories: receipt.accessories ?? null, differs: receipt.differs ?? null,
     });
+    await setDueDay(tx, chains, actor, found, input.dueOn ?? null);
     // whoever stood at the desk knows that it is here
     if (requested) await tellCustomer(found, receivedAt, tx);
     return { id: receipt.id, receivedAt: receivedAt.toISOString() };
   });
+}
+
+/** The day that was agreed on, where it is told with the parcel; a day that stands already is no change. */
+async function setDueDay(tx: Transaction, chains: readonly string[], actor: Actor, found: Case, dueOn: string | null): Promise<void> {
+  const from = found.dueOn ?? null;
+  if (dueOn === null || dueOn === from) return;
+  await found.update({ dueOn }, { transaction: tx });
+  await appendToCase(tx, chains, actor, "case.corrected", { type: "case", id: found.id }, { caseRef: found.ref, changes: [{ field: "dueOn", from, to: dueOn }], reason: "Agreed on when the parcel was received." });
 }
 
 async function refuseSecond(found: Case, tx: Transaction): Promise<void> {

@@ -45,7 +45,7 @@ export async function chipView(actor: Actor, chipId: string): Promise<ChipView> 
     drive: { id: drive.id, letter: driveLetter(drive), partNumber: drive.partNumber ?? null, model: drive.model ?? null, serial: drive.serial ?? null, encryption: drive.encryption ?? null },
     siblings: record ? await siblingsOfRecord(records, record, policy) : [],
     board: { id: board.id, role: board.role, boardNumber: board.boardNumber, revision: board.revision ?? null },
-    case: { id: place.case.id, ref: place.case.ref, dueOn: place.case.dueOn ?? null, customerName: record?.customer.name ?? "" },
+    case: { id: place.case.id, ref: place.case.ref, dueOn: place.case.dueOn ?? null, customerName: record?.customer.name ?? "", open: !place.case.closedAt },
     policy, reads: reads.map((r) => readView(r, who, !unsound.has(r.sha256.toString("hex")), erased.get(r.sha256.toString("hex")))), groups: groupsOf(reads),
     matrix: await matrixOf(reads.filter((r) => r.counted && r.stage === (isOriginal ? "before" : "donor")), unsound),
     stack: await stripStack(drawn.map(stripImage), chip.sizeBytes),

@@ -27,12 +27,13 @@ export async function toReceive(actor: Actor): Promise<ToReceiveRow[]> {
   const rows = await Case.findAll({ where: { receivedAt: null, closedAt: null, ...inCases(actor, "id") }, order: [["requestedAt", "ASC"], ["ref", "ASC"]] });
   const ids = rows.map((r) => r.id);
   const customers = new Map((await Customer.findAll({ where: { id: rows.map((r) => r.customerId) } })).map((c) => [c.id, c.name]));
-  const answers = new Map((await Request.findAll({ where: { caseId: ids }, attributes: ["caseId", "answers"] })).map((r) => [r.caseId, driveFromRequest(answersOf(r.answers))]));
+  const answers = new Map((await Request.findAll({ where: { caseId: ids }, attributes: ["caseId", "answers"] })).map((r) => [r.caseId, answersOf(r.answers)]));
   return rows.map((row) => {
-    const asked = answers.get(row.id);
+    const said = answers.get(row.id);
+    const asked = driveFromRequest(said);
     return {
-      caseId: row.id, caseRef: row.ref, customerName: customers.get(row.customerId) ?? "", damage: row.damage, dueOn: row.dueOn ?? null,
-      partNumber: asked?.partNumber ?? asked?.model ?? asked?.serial ?? null, requestedAt: (row.requestedAt ?? new Date(0)).toISOString(),
+      caseId: row.id, caseRef: row.ref, customerName: customers.get(row.customerId) ?? "", damage: row.damage, dueOn: row.dueOn ?? null, neededBy: answerOf(said, "neededBy"),
+      partNumber: asked.partNumber ?? asked.model ?? asked.serial ?? null, requestedAt: (row.requestedAt ?? new Date(0)).toISOString(),
     };
   });
 }
@@ -56,6 +57,7 @@ export async function parcelView(actor: Actor, caseId: string): Promise<ParcelVi
   return {
     caseId, caseRef: found.ref, refChecked: withCheck(found.ref), customerName: customer.name, damage: found.damage, note: found.note ?? null,
     requestedAt: found.requestedAt?.toISOString() ?? null, receivedAt: found.receivedAt?.toISOString() ?? null, closed: Boolean(found.closedAt), asked: driveFromRequest(answers), enclosure: answerOf(answers, "enclosure"), boardHidden: answerOf(answers, "boardHidden") === "yes",
+    dueOn: found.dueOn ?? null, neededBy: answerOf(answers, "neededBy"),
   };
 }
 

@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { AS_SENT } from "@/lib/core/words";
-import { line, maybe, prose } from "./text";
+import { day, line, maybe, prose } from "./text";
 
 /** One line of the request beside what was in the parcel. */
 const compared = z.strictObject({
@@ -19,5 +19,7 @@ export const receiptInput = z.strictObject({
   accessories: maybe(prose(1000, "what else came")).optional(),
   lines: z.array(compared).max(12, "At most 12 lines.").optional(),
   differs: maybe(prose(1000, "what else is different")).optional(),
+  /** until when it is promised; goes into the log as a correction of the case */
+  dueOn: maybe(day).optional(),
 });
 export type ReceiptInput = z.infer<typeof receiptInput>;

@@ -23,4 +23,9 @@ export const email = line(254, "an e-mail address").pipe(z.email("This doesn't l
   .refine((s) => /^[\x21-\x7e]+$/.test(s) && !/[",;<>()\\]/.test(s), "Only plain addresses such as name@example.org work here.");
 export const reason = prose(2000, "a reason", 3);
 export const uuid = z.uuid("This is not an id.");
-export const day = z.string().regex(/^\d{4}-\d{2}-\d{2}$/, "Give a date as year-month-day.").refine((s) => !Number.isNaN(Date.parse(`${s}T00:00:00Z`)), "There is no such day.");
+/** A calendar day that there is: a parser of dates takes 30 February for 2 March. */
+const isDay = (s: string) => {
+  const at = new Date(`${s}T00:00:00Z`);
+  return !Number.isNaN(at.getTime()) && at.toISOString().startsWith(s);
+};
+export const day = z.string().regex(/^\d{4}-\d{2}-\d{2}$/, "Give a date as year-month-day.").refine(isDay, "There is no such day.");

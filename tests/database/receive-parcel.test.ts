@@ -3,6 +3,7 @@ import { createCase } from "@/lib/commands/create-case";
 import { receiveParcel } from "@/lib/commands/receive-parcel";
 import { recordDrive } from "@/lib/commands/record-drive";
 import { WORKSHOP_CHAIN } from "@/lib/core/words";
+import { receiptInput } from "@/lib/schemas/receipt";
 import { caseByNumber, parcelView, receiptView, toReceive } from "@/lib/queries/receipts";
 import { Case, CustodyEntry, Mail } from "@/models";
 import { makeChip, makeUser } from "../support/factory";
@@ -33,6 +34,21 @@ describe("a parcel that was asked for", () => {
     expect(mails[0].textMasked).not.toContain("Serial number");
     const drive = await recordDrive(technician, caseId, { partNumber: "PN 4471-0093-B" });
     expect(await logged(drive.id, "drive.recorded")).toMatchObject([{ caseReceivedAt: made.receivedAt }]);
+  });
+
+  it("takes the day on which it is due, once, as a correction in the log; without one none is made up", async () => {
+    const technician = await makeUser("technician");
+    const corrected = async (caseId: string) => (await CustodyEntry.findAll({ where: { chainId: WORKSHOP_CHAIN, action: "case.corrected" } })).map((e) => JSON.parse(e.body.toString()) as { subject: { id: string }; facts: object }).filter((body) => body.subject.id === caseId).map((body) => body.facts);
+    const { caseId, ref } = await makeRequest({ neededBy: "2027-03-12" });
+    expect(await parcelView(technician, caseId)).toMatchObject({ dueOn: null, neededBy: "2027-03-12" });
+    expect((await toReceive(technician)).find((row) => row.caseId === caseId)).toMatchObject({ dueOn: null, neededBy: "2027-03-12" });
+    await receiveParcel(technician, caseId, parcel({ dueOn: "2027-03-10" }));
+    expect((await Case.findByPk(caseId))?.dueOn).toBe("2027-03-10");
+    expect(await corrected(caseId)).toEqual([{ caseRef: ref, changes: [{ field: "dueOn", from: null, to: "2027-03-10" }], reason: "Agreed on when the parcel was received." }]);
+    const other = await makeRequest({ neededBy: "2027-03-12" });
+    await receiveParcel(technician, other.caseId, parcel());
+    expect([(await Case.findByPk(other.caseId))?.dueOn, await corrected(other.caseId)]).toEqual([null, []]);
+    expect(receiptInput.safeParse({ ...parcel(), dueOn: "2027-02-30" }).success).toBe(false);
   });
 
   it("is not received twice, also not by two at once, and tells the customer once", async () => {
