@@ -2,6 +2,7 @@ import type { Metadata } from "next";
 import { ChipScreen } from "@/components/chip/chip-screen";
 import { Photos } from "@/components/photo/photos";
 import { DeskShell } from "@/components/shell/desk-shell";
+import { FreshCache } from "@/components/ui/fresh-cache";
 import { Section } from "@/components/ui/section";
 import { signedIn } from "@/lib/auth/page";
 import { orNotFound } from "@/lib/http/page-errors";
@@ -26,7 +27,7 @@ export default async function ChipPage({ params }: { params: Promise<{ id: strin
   );
   return (
     <DeskShell session={session} current="bench">
-      <ChipScreen chip={chip} readBack={readBack} session={session} today={dayIn(session.timeZone, new Date())} photos={gallery} />
+      <FreshCache><ChipScreen chip={chip} readBack={readBack} session={session} today={dayIn(session.timeZone, new Date())} photos={gallery} /></FreshCache>
     </DeskShell>
   );
 }
