@@ -12,7 +12,7 @@ import { useSay } from "@/components/ui/toast";
 import { countOf, sizeText } from "@/lib/core/quantity";
 import { type Format, METHODS, type Stage } from "@/lib/core/words";
 import type { ChipView } from "@/lib/views";
-import { METHOD_WORD, nameOf, namesOf, twins } from "./chip-words";
+import { leavesNobody, METHOD_WORD, nameOf, namesOf, twins } from "./chip-words";
 import { DropZone } from "./drop-zone";
 import { equipmentKept, keepEquipment } from "./equipment";
 import { type FileLook, heldBecause, lookAt, textAddress } from "./file-look";
@@ -28,7 +28,13 @@ const HELD_OPTIONS = [{ value: "", label: "Not said" }, { value: "true", label: 
 const text = (value: unknown) => (typeof value === "string" ? value : value === undefined || value === null ? "" : String(value));
 
 /** The drop zone with its list, and the form that says what is read and with what. */
-export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Promise<unknown> }) {
+export function AddReads({ chip, userId, donorAsked, onChanged }: {
+  chip: ChipView;
+  userId: string;
+  /** how often the donor's own content was asked for from above */
+  donorAsked: number;
+  onChanged(): Promise<unknown>;
+}) {
   const say = useSay();
   const contents = contentsOf(chip);
   const [held, setHeldShown] = useState<readonly FileLook[]>([]);
@@ -41,7 +47,7 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
   const [looking, setLooking] = useState(0);
   const [incomplete, setIncomplete] = useState(false);
   const first = likelyStage(chip, contents);
-  const { register, setValue, control, trigger, getValues, formState: { errors } } = useForm<z.input<typeof uploadForm>, unknown, z.output<typeof uploadForm>>({
+  const { register, setValue, setFocus, control, trigger, getValues, formState: { errors } } = useForm<z.input<typeof uploadForm>, unknown, z.output<typeof uploadForm>>({
     resolver: zodResolver(uploadForm),
     defaultValues: { stage: first, seating: String(chip.nextSeating[first]), reader: "", method: "", toolVersion: "", adapter: "", supplyMillivolts: "", clockKilohertz: "", controllerHeld: "", note: "", format: "raw", base: "", size: String(contents.find((c) => c.stage === first)?.expectedBytes ?? ""), fill: "0xFF" },
   });
@@ -62,6 +68,15 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
     setValue("stage", "after");
     setValue("seating", String(chip.nextSeating.after));
   }, [chip.transfers.length, chip.nextSeating.after, setValue]);
+
+  const answered = useRef(donorAsked);
+  useEffect(() => {
+    if (answered.current === donorAsked) return;
+    answered.current = donorAsked;
+    setValue("stage", "donor");
+    setValue("seating", String(chip.nextSeating.donor));
+    setFocus("stage");
+  }, [donorAsked, chip.nextSeating.donor, setValue, setFocus]);
 
   const stage = useWatch({ control, name: "stage" }) as Stage;
   const supply = text(useWatch({ control, name: "supplyMillivolts" }));
@@ -107,6 +122,7 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
     <div className="grid grid-cols-[minmax(0,1fr)_352px] gap-8 mid:grid-cols-[minmax(0,1fr)_300px] narrow:grid-cols-[minmax(0,1fr)] narrow:gap-y-[22px]">
       <div className="grid content-start gap-3">
         <Note kind="caution" title={`Before you clip on: ${content.words}`}>{clipCaution(stage)}</Note>
+        {stage === "before" && leavesNobody(chip, userId) ? <Note kind="caution" title={`You are the only one who could approve the image of ${chip.designator}.`}>Once you have taken a read of it you can’t, and nothing can be written. Let somebody else read it. Where somebody works alone, an admin may switch the two-person rule off under Policy.</Note> : null}
         <DropZone title="Drop chip images here" onFiles={(files) => void take(files)}>Raw binary, {sizes} each, or a text of records (Intel HEX, S-record). Several files at once are fine; they share what the form says.</DropZone>
         {looking > 0 ? <p role="status" className="text-t2 text-ink-2">Looking into {countOf(looking, "file")}.</p> : null}
         <HeldFiles held={held} format={format} window={frame} incomplete={incomplete} onFormat={(value) => setValue("format", value, { shouldValidate: true })}
@@ -116,8 +132,8 @@ export function AddReads({ chip, onChanged }: { chip: ChipView; onChanged(): Pro
       <form className="grid content-start gap-3.5 narrow:grid-cols-2 narrow:gap-x-5 phone:grid-cols-1" onSubmit={(event) => { event.preventDefault(); if (held.length > 0) void sendAll(held); }}>
         <Select label="Which content is it?" options={contents.map((c) => ({ value: c.stage, label: c.words }))} error={errors.stage?.message}
           {...register("stage", { onChange: (event: { target: { value: string } }) => chooseStage(event.target.value as Stage) })} />
-        <Select label="Seating" options={seatingOptions(chip, stage)} hint="A new seating counts more than another read in the old one." error={errors.seating?.message} {...register("seating")} />
-        <Input label="Reader" placeholder="R2" autoComplete="off" error={errors.reader?.message} {...register("reader")} />
+        <Select label="Seating" options={seatingOptions(chip, stage)} hint="One seating is one time the clip or chip was put on. A new one counts more than another read in the old one." error={errors.seating?.message} {...register("seating")} />
+        <Input label="Reader" placeholder="R2" hint="The device that read it, as you name it" autoComplete="off" error={errors.reader?.message} {...register("reader")} />
         <Input label="Adapter" placeholder="SOIC-8 clip C4" autoComplete="off" error={errors.adapter?.message} {...register("adapter")} />
         <Select label="Supply set in the reader" options={SUPPLY_OPTIONS} error={errors.supplyMillivolts?.message} {...register("supplyMillivolts")} />
         {warning ? <Note kind="caution" role="status">{warning}</Note> : null}

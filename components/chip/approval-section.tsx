@@ -11,7 +11,7 @@ import { send } from "@/lib/http/send";
 import { may } from "@/lib/core/policy";
 import type { ApprovalView, ChipView, ReadView, SessionView } from "@/lib/views";
 import { AskApproval } from "./ask-approval";
-import { nameOf, peopleText } from "./chip-words";
+import { nameOf, NOBODY_LEFT, peopleText } from "./chip-words";
 import { Conditions } from "./conditions";
 import { ReasonDialog } from "./reason-dialog";
 
@@ -22,6 +22,7 @@ export function ApprovalSection({ chip, user, timeZone, onChanged }: { chip: Chi
   const say = useSay();
   const [asked, setAsked] = useState<Ask | null>(null);
   const { approval, request } = chip;
+  const { open } = chip.case;
   const lastRevoked = approval ? null : chip.approvals.filter((a) => a.revoked).at(-1) ?? null;
   const mine = chip.reads.filter((r) => r.stage === "before" && r.operator.id === user.id);
   const barred = chip.policy.twoPersonRule && mine.length > 0;
@@ -36,13 +37,13 @@ export function ApprovalSection({ chip, user, timeZone, onChanged }: { chip: Chi
         {lastRevoked?.revoked ? <Note kind="caution" title={`The approval of ${momentText(lastRevoked.givenAt, timeZone)} no longer stands.`}>Revoked {momentText(lastRevoked.revoked.at, timeZone)} by {lastRevoked.revoked.by.name}: {lastRevoked.revoked.reason}</Note> : null}
         {!approval && request?.sentBack ? <Note kind="caution" title={`Sent back by ${request.sentBack.by.name}, ${momentText(request.sentBack.at, timeZone)}.`}>{request.sentBack.reason}</Note> : null}
         {!approval && waiting ? <Note kind="note" title={`Asked by ${waiting.askedBy.name}, ${momentText(waiting.askedAt, timeZone)}.`}>{waiting.message ? `“${waiting.message}”` : "Without a message."}</Note> : null}
-        {!approval && !waiting && may(user, "approval.ask") ? <AskApproval chip={chip} onChanged={onChanged} /> : null}
+        {open && !approval && !waiting && may(user, "approval.ask") ? <AskApproval chip={chip} onChanged={onChanged} /> : null}
         <Buttons>
-          {!approval && decidable && may(user, "approval.give") && !barred ? <ButtonLink variant="lead" href={`/chips/${chip.id}/decision`}>Open the decision sheet</ButtonLink> : null}
-          {!approval && waiting && may(user, "approval.send-back") ? <Button variant="stop" onClick={() => setAsked("send-back")}>Send back…</Button> : null}
-          {approval && may(user, "approval.revoke") ? <Button variant="stop" onClick={() => setAsked("revoke")}>Revoke…</Button> : null}
+          {open && !approval && decidable && may(user, "approval.give") && !barred ? <ButtonLink variant="lead" href={`/chips/${chip.id}/decision`}>Open the decision sheet</ButtonLink> : null}
+          {open && !approval && waiting && may(user, "approval.send-back") ? <Button variant="stop" onClick={() => setAsked("send-back")}>Send back…</Button> : null}
+          {open && approval && may(user, "approval.revoke") ? <Button variant="stop" onClick={() => setAsked("revoke")}>Revoke…</Button> : null}
         </Buttons>
-        {!approval && decidable && may(user, "approval.give") && barred ? <Note kind="note" title={`You ${partText(mine)}, so you can’t approve this image.`}>{chip.approvers.length > 0 ? `${peopleText(chip.approvers.map((p) => p.name))} can.` : "No other lead has an account here."}</Note> : null}
+        {open && !approval && decidable && may(user, "approval.give") && barred ? <Note kind="note" title={`You ${partText(mine)}, so you can’t approve this image.`}>{chip.approvers.length > 0 ? `${peopleText(chip.approvers.map((p) => p.name))} can.` : NOBODY_LEFT}</Note> : null}
       </div>
       <ReasonDialog open={asked === "send-back"} onClose={() => setAsked(null)} title="Send back to the bench" action="Send back" variant="stop" label="What should be done first?"
         onReason={async (reason) => {
@@ -66,7 +67,7 @@ export function ApprovalSection({ chip, user, timeZone, onChanged }: { chip: Chi
 function TwoPeople({ chip, userId }: { chip: ChipView; userId: string }) {
   if (!chip.policy.twoPersonRule) return <p><b>The two-person rule is off here.</b> Every approval, log, bundle and summary says so.</p>;
   const takers = peopleText(chip.reads.filter((r) => r.stage === "before" && !r.derived).map((r) => (r.operator.id === userId ? "you" : r.operator.name)));
-  const left = chip.approvers.length > 0 ? <> For {chip.designator} that leaves <b>{peopleText(chip.approvers.map((p) => (p.id === userId ? "you" : p.name)))}</b>.</> : " Nobody who may approve is left: another lead must have an account.";
+  const left = chip.approvers.length > 0 ? <> For {chip.designator} that leaves <b>{peopleText(chip.approvers.map((p) => (p.id === userId ? "you" : p.name)))}</b>.</> : ` Nobody who may approve is left. ${NOBODY_LEFT}`;
   return <p><b>Two people, always.</b> Whoever took a read of the original can’t approve its image.{left}{takers ? ` Its reads were taken by ${takers}.` : ""}</p>;
 }
 

@@ -1,7 +1,7 @@
 "use client";
 
 import { useRouter } from "next/navigation";
-import { type ReactNode, useEffect } from "react";
+import { type ReactNode, useEffect, useState } from "react";
 import useSWR from "swr";
 import { compositesOf, offersComposite } from "@/components/composite/composite-words";
 import { MakeComposite } from "@/components/composite/make-composite";
@@ -49,6 +49,11 @@ export function ChipScreen({ chip: given, readBack, session, today, photos }: {
   const { user, timeZone } = session;
   const changed = () => mutate();
   const original = chip.boardRole === "original";
+  const [donorAsked, setDonorAsked] = useState(0);
+  const readDonor = () => {
+    setDonorAsked((n) => n + 1);
+    document.getElementById("add")?.scrollIntoView({ block: "start" });
+  };
   const latest = chip.reads.reduce<ChipView["reads"][number] | null>((last, r) => (last && last.storedAt >= r.storedAt ? last : r), null);
   const [key, shownKey] = [readBackKey(chip), readBackKey(given)];
   // the read-backs' strips come with the page itself: another read-back, another page
@@ -66,9 +71,10 @@ export function ChipScreen({ chip: given, readBack, session, today, photos }: {
       <ChipHead chip={chip} timeZone={timeZone} today={today} />
       <PageMain>
         {error ? <div className="pt-4"><Note kind="caution" role="status" title="This page is not being refreshed.">{error instanceof Refusal && error.status === 401 ? "Your sign-in has ended. Reload the page to sign in again." : error.message}</Note></div> : null}
+        {chip.case.open ? null : <div className="pt-4"><Note kind="note" title={`Case ${chip.case.ref} is closed.`}>What is stored stays to be read. Nothing is added or changed until a lead reopens the case.</Note></div>}
         {chip.drive.encryption || chip.siblings.length > 0 ? <div className="grid gap-2 pt-4 empty:hidden"><EncryptionNote encryption={chip.drive.encryption} /><SiblingNote chip={chip} /></div> : null}
         <Section first title="What was found" note={latest ? `After ${nameOf(latest)}, ${momentText(latest.storedAt, timeZone)}` : "No read is stored yet."}>
-          <ChipVerdict chip={chip} readBack={readBack} user={user} onChanged={changed} />
+          <ChipVerdict chip={chip} readBack={readBack} user={user} onReadDonor={readDonor} onChanged={changed} />
         </Section>
         {stack.rows.length > 0 ? (
           <Section wide title={differ ? "Where they differ" : "What the reads hold"} note={`Each read as ${stack.rows[0].cells.length} cells${stack.cellBytes >= 1 ? ` of ${sizeText(Math.ceil(stack.cellBytes))}` : ""}. The line between two reads is whole where they agree.`} aside={<StripLegend />}>
@@ -79,7 +85,7 @@ export function ChipScreen({ chip: given, readBack, session, today, photos }: {
           {chip.reads.length > 0 ? (
             <>
               <ReadsTable {...shared} />
-              {may(user, "composite.make") && offersComposite(chip) ? (
+              {chip.case.open && may(user, "composite.make") && offersComposite(chip) ? (
                 <Buttons className="pt-4"><MakeComposite chip={chip} onChanged={changed} /><span className="max-w-[60ch] text-ink-2">A last resort: what most reads say, bit by bit. Three equal reads are better.</span></Buttons>
               ) : null}
             </>
@@ -90,10 +96,10 @@ export function ChipScreen({ chip: given, readBack, session, today, photos }: {
             <div className="grid gap-8">{composites.map((read) => <Votes key={read.id} read={read} heading={composites.length > 1} />)}</div>
           </Section>
         ) : null}
-        {may(user, "read.store") && contentsOf(chip).length > 0 ? (
+        {chip.case.open && may(user, "read.store") && contentsOf(chip).length > 0 ? (
           <div className="no-print">
             <Section id="add" title="Add reads" note="The digest is computed in this browser first; the server computes it again and the two must match.">
-              <AddReads chip={chip} onChanged={changed} />
+              <AddReads chip={chip} userId={user.id} donorAsked={donorAsked} onChanged={changed} />
             </Section>
           </div>
         ) : null}

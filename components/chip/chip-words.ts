@@ -54,6 +54,12 @@ export function namesOf(stage: Stage, numbers: readonly number[]): string {
   return readsText(numbers, readName(stage, 0).split(" ")[0]);
 }
 
+/** A read taken by this person would leave nobody who may approve. */
+export const leavesNobody = (chip: Pick<ChipView, "policy" | "approvers">, userId: string): boolean => chip.policy.twoPersonRule && chip.approvers.length === 1 && chip.approvers[0].id === userId;
+
+/** Said where the two-person rule leaves nobody: the ways out, and whose they are. */
+export const NOBODY_LEFT = "No other lead has an account here: an admin makes one under Users. Where somebody works alone, an admin may switch the two-person rule off under Policy.";
+
 /** "Mira Hollis and Tomas Brandl" without repeats */
 export function peopleText(names: readonly string[]): string {
   return listText([...new Set(names)]);

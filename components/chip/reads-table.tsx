@@ -53,7 +53,7 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
                       <td data-l="CRC-32"><code>{read.crc32.toUpperCase()}</code></td>
                       <td className="l-row" data-l="SHA-256"><Digest sha256={read.sha256} /></td>
                       <td className="l-full"><ReadFindings chip={chip} read={read} /></td>
-                      <td className="no-print"><ReadActions read={read} user={user} onAsk={(action) => setAsked({ read, action })} /></td>
+                      <td className="no-print"><ReadActions read={read} user={user} open={chip.case.open} onAsk={(action) => setAsked({ read, action })} /></td>
                     </tr>
                   );
                 })}
@@ -67,8 +67,8 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
   );
 }
 
-function ReadActions({ read, user, onAsk }: { read: ReadView; user: SessionView["user"]; onAsk(action: ReadAction): void }) {
-  const mayChange = may(user, "read.set-aside", { operatorId: read.operator.id });
+function ReadActions({ read, user, open, onAsk }: { read: ReadView; user: SessionView["user"]; open: boolean; onAsk(action: ReadAction): void }) {
+  const mayChange = open && may(user, "read.set-aside", { operatorId: read.operator.id });
   return (
     <span className="-my-1 flex items-center justify-end gap-x-3 whitespace-nowrap phone:justify-start">
       {mayChange ? <Button variant="text" size="small" aria-label={`${read.counted ? "Set aside" : "Count again"}: ${nameOf(read)}`} onClick={() => onAsk(read.counted ? "set-aside" : "count-again")}>{read.counted ? "Set aside…" : "Count again…"}</Button> : null}

@@ -25,7 +25,7 @@ export function TransferSection({ chip, user, timeZone, onChanged }: { chip: Chi
   const image = approvedRead(chip);
   const own = chip.reads.find((r) => r.stage === "donor" && r.counted);
   const mayTake = may(user, "read.hand-out-approved");
-  const writeNow = chip.state.state === "approved" || chip.state.state === "failed";
+  const writeNow = chip.case.open && (chip.state.state === "approved" || chip.state.state === "failed");
   const all = countOf(chip.sizeBytes, "byte");
 
   if (chip.transfers.length === 0 && !chip.approval) {
@@ -50,7 +50,7 @@ export function TransferSection({ chip, user, timeZone, onChanged }: { chip: Chi
         <Buttons>
           {image && mayTake ? <HandOut readId={image.id} lead={writeNow}>{`Approved ${image.derived ? "composite" : "image"}, ${sizeText(image.sizeBytes)}`}</HandOut> : null}
           {own && mayTake && chip.donorSaved ? <HandOut readId={own.id}>Donor’s own content</HandOut> : null}
-          {chip.approval && may(user, "transfer.record") ? <Button onClick={() => setRecording(true)}>Record the transfer…</Button> : null}
+          {chip.approval && chip.case.open && may(user, "transfer.record") ? <Button onClick={() => setRecording(true)}>Record the transfer…</Button> : null}
         </Buttons>
         {chip.approval ? null : <p className="text-ink-2">The approval no longer stands. It takes a new one before anything is written.</p>}
       </div>

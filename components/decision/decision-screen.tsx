@@ -73,7 +73,7 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
   // stays whatever the refreshed sheet shows, also when another approval came first
   const refused = refusal ? <Note kind="block" role="alert" title="You did not approve the image." className="mb-4">{refusal} <HelpLink href="/help/approval" about="What an approval needs" /></Note> : null;
   const waiting = chip.request && !chip.request.sentBack;
-  const sendBack = waiting && may(user, "approval.send-back") ? () => setSendingBack(true) : null;
+  const sendBack = waiting && chip.case.open && may(user, "approval.send-back") ? () => setSendingBack(true) : null;
   return (
     <>
       <Section strong title="The image" note={composite ? `${readTitle(composite)}: derived, no read.` : image ? `Held by ${readsText(image.reads)}.` : undefined}><ImageFacts view={view} /></Section>

@@ -1,3 +1,4 @@
+import { NOBODY_LEFT } from "@/components/chip/chip-words";
 import { partText } from "@/components/composite/composite-words";
 import { Note } from "@/components/ui/note";
 import { listText } from "@/lib/core/quantity";
@@ -12,7 +13,7 @@ export function readsTakenBy(chip: ChipView, userId: string): ReadView[] {
 }
 
 export function maySign(chip: ChipView, user: User): boolean {
-  return may(user, "approval.give") && !(chip.policy.twoPersonRule && readsTakenBy(chip, user.id).length > 0);
+  return chip.case.open && may(user, "approval.give") && !(chip.policy.twoPersonRule && readsTakenBy(chip, user.id).length > 0);
 }
 
 /** Says to the one who reads the sheet why they may or may not sign, and who may. */
@@ -21,7 +22,8 @@ export function WhoMaySign({ chip, user }: { chip: ChipView; user: User }) {
   const foreign = chip.reads.filter((r) => r.stage === "before" && r.operator.id !== user.id);
   const others = [...new Set(foreign.map((r) => r.operator.name))];
   const can = chip.approvers.filter((p) => p.id !== user.id).map((p) => p.name);
-  const who = can.length > 0 ? `${listText(can)} may sign.` : "No other lead has an account here; an admin can make one.";
+  const who = can.length > 0 ? `${listText(can)} may sign.` : NOBODY_LEFT;
+  if (!chip.case.open) return <Note kind="note" title={`Case ${chip.case.ref} is closed.`}>Nobody signs until a lead has reopened it.</Note>;
   if (!may(user, "approval.give")) {
     return <Note kind="note" title={`You are ${user.name}, ${user.role}. Leads sign this sheet.`}>{chip.policy.twoPersonRule ? "Whoever took a read of the original can’t approve its image. " : ""}{who}</Note>;
   }

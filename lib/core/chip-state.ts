@@ -39,6 +39,8 @@ export interface StateFacts {
   /** the latest transfer */
   transfer: StateTransfer | null;
   worst?: WorstDifference | null;
+  /** the donor's side of an approval, where it is known */
+  donorSide?: "none" | "unsaved" | "saved";
 }
 
 export interface DerivedState {
@@ -115,7 +117,7 @@ function transferState(policy: Policy, sizeBytes: number, transfer: StateTransfe
 }
 
 /** The lines from `unread` on: what the reads alone say. An approval is judged by these. */
-export function deriveReadingState(facts: Pick<StateFacts, "policy" | "sizeBytes" | "reads" | "worst">): DerivedState {
+export function deriveReadingState(facts: Pick<StateFacts, "policy" | "sizeBytes" | "reads" | "worst" | "donorSide">): DerivedState {
   const { policy, sizeBytes } = facts;
   const reads = facts.reads.filter((read) => read.stage === "before");
   const say = (state: ChipStateCode, sentence: string): DerivedState => ({ state, label: STATE_LABEL[state], sentence });
@@ -130,7 +132,7 @@ export function deriveReadingState(facts: Pick<StateFacts, "policy" | "sizeBytes
     return say("needs-reads", needsReadsSentence(policy, agreeing, seatings));
   }
   if (open.length > 0) return say("held", heldSentence(open, false));
-  return say("ready", readySentence(agreeing, seatings, policy.twoPersonRule));
+  return say("ready", readySentence(agreeing, seatings, policy.twoPersonRule, facts.donorSide));
 }
 
 /** The state of an original's chip: PRODUCT.md's table, the first line that applies. Nothing types it in. */

@@ -68,7 +68,11 @@ export function needsReadsSentence(policy: Policy, agreeing: number, seatings: n
   return `${agreeing} of ${policy.reads} reads, ${seatings} of ${policy.seatings} seatings: ${again}.`;
 }
 
-export function readySentence(agreeing: number, seatings: number, twoPersonRule: boolean): string {
+/** `donor`: what is still to be done on the donor's side before anyone can approve. */
+export function readySentence(agreeing: number, seatings: number, twoPersonRule: boolean, donor: "none" | "unsaved" | "saved" = "saved"): string {
   const who = twoPersonRule ? "a lead who took none of them" : "a lead";
-  return `${agreeing} of ${agreeing} reads agree${inSeatings(seatings)}; nothing stands against approval. Ask ${who} to approve.`;
+  const agree = `${agreeing} of ${agreeing} reads agree${inSeatings(seatings)}`;
+  if (donor === "none") return `${agree}. Record the donor’s chip that is to take the image and save what it holds, then ask ${who} to approve.`;
+  if (donor === "unsaved") return `${agree}. Save the donor chip’s own content by two equal reads, then ask ${who} to approve.`;
+  return `${agree}; nothing stands against approval. Ask ${who} to approve.`;
 }

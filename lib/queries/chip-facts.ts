@@ -20,7 +20,7 @@ export function stateFacts(record: ChipRecord, policy: Policy, worst: StateFacts
   const latest = record.transfers.at(-1);
   const behind = latest && record.approvals.find((a) => a.id === latest.approvalId);
   return {
-    policy, sizeBytes: record.chip.sizeBytes, reads: record.before.map(stateRead), worst,
+    policy, sizeBytes: record.chip.sizeBytes, reads: record.before.map(stateRead), worst, donorSide: record.donor === null ? "none" : donorContentSaved(record) ? "saved" : "unsaved",
     approval: record.standing && { sha256: record.standing.sha256.toString("hex"), donorChipId: record.standing.donorChipId },
     transfer: latest && behind ? {
       approvedSha256: behind.sha256.toString("hex"), approvalStands: !behind.revokedAt, poweredOn: record.started.some((at) => at > latest.at),

@@ -136,3 +136,11 @@ describe("agreement", () => {
     expect(BENCH_GROUPS.at(-1)).toMatchObject({ label: "To return", states: ["verified"] });
   });
 });
+
+it("sends nobody to the lead while the donor's side of an approval is open", () => {
+  const sentence = (donorSide: StateFacts["donorSide"]) => deriveChipState({ ...facts(), donorSide }).sentence;
+  expect(sentence("none")).toMatch(/Record the donor’s chip that is to take the image and save what it holds, then ask a lead/);
+  expect(sentence("unsaved")).toMatch(/Save the donor chip’s own content by two equal reads, then ask a lead/);
+  for (const open of ["none", "unsaved"] as const) expect(sentence(open)).not.toContain("nothing stands against approval");
+  expect(sentence("saved")).toMatch(/nothing stands against approval\. Ask a lead/);
+});
