@@ -1,7 +1,7 @@
 "use client";
 
 import Link from "next/link";
-import { useState } from "react";
+import { type ReactNode, useState } from "react";
 import useSWR from "swr";
 import { BoardPanel } from "@/components/shell/board-panel";
 import { PageMain } from "@/components/shell/page-main";
@@ -18,7 +18,7 @@ import { benchGroups, capital, dateSentence, dueWords, lateWords } from "./bench
 const REFRESH_MS = 20_000;
 
 /** What lies on the bench, refreshed in the background: two people at two benches see the same. */
-export function BenchScreen({ rows: given, toReceive: due, waiting, session, mine, now: loadedAt }: { rows: BenchRow[]; toReceive: ToReceiveRow[]; waiting: PlacedItem[]; session: SessionView; mine: boolean; now: string }) {
+export function BenchScreen({ rows: given, toReceive: due, waiting, firstSteps, session, mine, now: loadedAt }: { rows: BenchRow[]; toReceive: ToReceiveRow[]; waiting: PlacedItem[]; /** what a new workshop lacks, for its admin */ firstSteps: ReactNode; session: SessionView; mine: boolean; now: string }) {
   const [now, setNow] = useState(loadedAt);
   const { data, error } = useSWR<{ items: BenchRow[]; toReceive: ToReceiveRow[] }, Error>("/api/bench", backgroundFetcher, {
     fallbackData: { items: given, toReceive: due }, refreshInterval: REFRESH_MS, keepPreviousData: true, revalidateOnMount: false,
@@ -51,6 +51,7 @@ export function BenchScreen({ rows: given, toReceive: due, waiting, session, min
       </BoardPanel>
       <PageMain>
         {error ? <div className="pt-4"><Note kind="caution" role="status" title="This page is not being refreshed.">{error instanceof Refusal && error.status === 401 ? "Your sign-in has ended. Reload the page to sign in again." : error.message}</Note></div> : null}
+        {firstSteps}
         {waiting.length > 0 ? (
           <div className="pt-4">
             <Note kind="note" title={waiting.length === 1 ? "Something was handed over to you." : `${waiting.length} things were handed over to you.`}>

@@ -25,6 +25,18 @@ export function hasNoChipToMove(drive: Pick<DriveView, "boards">): boolean {
   return drive.boards.some((board) => board.role === "original" && board.dataInController);
 }
 
+/** What has to be recorded before anything can be read, the first of it; null when nothing is missing. */
+export function recordsMissing(drives: readonly DriveView[]): string | null {
+  if (drives.length === 0) return "Record the drive: what its label says";
+  for (const drive of drives) {
+    const of = drives.length > 1 ? ` of Drive ${drive.letter}` : "";
+    const original = drive.boards.find((board) => board.role === "original");
+    if (!original) return `Record the original board${of}`;
+    if (!original.dataInController && original.chips.length === 0) return `Record the chip on the original board${of} that holds the drive’s own data`;
+  }
+  return null;
+}
+
 /** "opens when U3 and U12 are verified", or null when nothing is open. */
 export function waitsFor(drives: readonly DriveView[]): string | null {
   const chips = chipsToTransfer(drives);

@@ -8,7 +8,7 @@ import type { CaseStep } from "@/lib/core/closing";
 import { may } from "@/lib/core/policy";
 import type { ChipStateCode, Policy } from "@/lib/core/words";
 import type { CaseView, ChipSummary, SessionView } from "@/lib/views";
-import { byUrgency, chipsToTransfer, hasNoChipToMove, waitsFor } from "./case-words";
+import { byUrgency, chipsToTransfer, hasNoChipToMove, recordsMissing, waitsFor } from "./case-words";
 import { MakeBundle } from "./make-bundle";
 import { SendSummary } from "./send-summary";
 
@@ -33,7 +33,7 @@ function ChipStep({ chip, drive, lead, acts }: { chip: ChipSummary; drive: strin
  * What is to be done on this case, the most urgent first; what can't be done yet says why. `tests` stand after the chips,
  * `end` after the summary. A closed case has only what leaves the house.
  */
-export function NextSteps({ view, policy, user, leads, tests, end }: { view: CaseView; policy: Policy; user: SessionView["user"]; leads: CaseStep | null; tests?: ReactNode; end?: ReactNode }) {
+export function NextSteps({ view, policy, user, leads, mailStays, tests, end }: { view: CaseView; policy: Policy; user: SessionView["user"]; leads: CaseStep | null; mailStays: boolean; tests?: ReactNode; end?: ReactNode }) {
   const acts = may(user, "read.store");
   const open = view.state === "closed" ? [] : byUrgency(chipsToTransfer(view.drives)).filter((chip) => chip.state.state !== "verified");
   const several = view.drives.length > 1;
@@ -42,15 +42,17 @@ export function NextSteps({ view, policy, user, leads, tests, end }: { view: Cas
   // a drive that ends before any chip is read leaves nothing to sum up
   const nothing = view.drives.length > 0 && view.drives.every(hasNoChipToMove) && chipsToTransfer(view.drives).length === 0;
   const sends = may(user, "summary.send");
+  const missing = view.state === "open" ? recordsMissing(view.drives) : null;
   return (
     <ol className="next-steps">
+      {missing ? <li><Mark kind="run" className="[--hole:var(--paper)]" /><span><b>{missing}</b><span className="text-ink-2">, above on this page</span></span><span /></li> : null}
       {open.map((chip, i) => <ChipStep key={chip.id} chip={chip} drive={letterOf(chip)} lead={i === 0 && leads === "chips"} acts={acts} />)}
       {tests}
       {nothing ? null : (
         <li>
           <Mark kind={waits ? "wait" : "run"} />
           <span><b>Send the summary to the customer</b>{waits ? <span className="text-ink-2">; {waits}</span> : null}{sends ? null : <span className="text-ink-2">{waits ? ", and a lead sends it" : "; a lead sends it"}</span>}</span>
-          {sends && !waits ? <SendSummary view={view} policy={policy} lead={leads === "summary"} /> : <Button disabled>Send summary…</Button>}
+          {sends && !waits ? <SendSummary view={view} policy={policy} lead={leads === "summary"} mailStays={mailStays} /> : <Button disabled>Send summary…</Button>}
         </li>
       )}
       {end}

@@ -14,7 +14,7 @@ import type { CaseView } from "@/lib/views";
 import { chipsToTransfer } from "./case-words";
 
 /** Shows what goes out and to whom, then makes the private link and queues the mail. */
-export function SendSummary({ view, policy, lead }: { view: CaseView; policy: Policy; lead: boolean }) {
+export function SendSummary({ view, policy, lead, mailStays }: { view: CaseView; policy: Policy; lead: boolean; /** no mail server is set */ mailStays: boolean }) {
   const router = useRouter();
   const say = useSay();
   const [open, setOpen] = useState(false);
@@ -38,6 +38,7 @@ export function SendSummary({ view, policy, lead }: { view: CaseView; policy: Po
             <dt className="text-ink-2">The page shows</dt><dd>{listText(chips)}: state, digests, how many reads agreed, who approved and when, and what this does not promise</dd>
             <dt className="text-ink-2">The link lasts</dt><dd>{policy.shareDays} days, or until a lead withdraws it</dd>
           </dl>
+          {mailStays ? <Note kind="caution" title="No mail server is set: this mail reaches nobody.">It is kept in the folder <span className="font-mono">mail-fake</span> of the data folder. Ask an admin to set one, then send the summary.</Note> : null}
           {policy.twoPersonRule ? null : <Note kind="caution" title="The two-person rule is off.">The summary says so.</Note>}
           {standing.length > 0 ? <Note kind="note" title={`${standing.length === 1 ? "A link is" : `${standing.length} links are`} out already.`}>This makes one more; the earlier keeps working.</Note> : null}
         </FormDialog>

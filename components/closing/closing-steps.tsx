@@ -57,11 +57,13 @@ export function ReturnSteps({ view, closing, user, leads }: { view: CaseView; cl
   if (closed) return null;
   const [returns, releases] = [may(user, "case.return"), may(user, "case.release")];
   const open = unverifiedChips(facts);
-  const beforeReturn = !facts.received ? "opens when the parcel is here" : open.length > 0 ? `${listText(open)} ${open.length === 1 ? "is" : "are"} not verified; it can go back all the same` : null;
+  const nothing = facts.chips.length === 0 && !closing.drives.some((drive) => drive.noChip);
+  const early = nothing || open.length > 0;
+  const beforeReturn = !facts.received ? "opens when the parcel is here" : nothing ? "no chip is recorded yet; it can go back all the same" : open.length > 0 ? `${listText(open)} ${open.length === 1 ? "is" : "are"} not verified; it can go back all the same` : null;
   return (
     <>
       <li>
-        <Mark kind={returned ? "ok" : facts.received ? "run" : "wait"} className="[--hole:var(--paper)]" />
+        <Mark kind={returned ? "ok" : facts.received && !early ? "run" : "wait"} className="[--hole:var(--paper)]" />
         <span><b>{returned ? "Returned" : "Pack what goes back and record the return"}</b><span className="text-ink-2">{returned ? `: ${countItems(returned.items)}` : beforeReturn ? `; ${beforeReturn}` : ""}</span></span>
         {returned ? <ButtonLink href={`/cases/${view.id}/print/return-slip`}>Return slip</ButtonLink> : returns && facts.received ? <RecordReturn caseId={view.id} closing={closing} lead={leads === "return"} /> : <Button disabled>Record the return…</Button>}
       </li>

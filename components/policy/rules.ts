@@ -13,7 +13,7 @@ export interface Rule<Key extends keyof Policy = keyof Policy> {
 
 export const NUMBER_RULES: readonly (Rule<NumberKey> & { unit: string; min: number; max: number })[] = [
   { key: "reads", label: "Agreeing reads", unit: "reads", min: 2, max: 30, why: "So many counted reads of the original must be equal in every byte.", decides: "Opens the approval on the chip page." },
-  { key: "seatings", label: "Seatings among them", unit: "seatings", min: 1, max: 30, why: "Two equal reads are not proof: a clip that sits wrong gives the same wrong image every time. A new seating is a new chance to find out.", decides: "Opens the approval on the chip page." },
+  { key: "seatings", label: "Seatings among them", unit: "seatings", min: 1, max: 30, why: "A seating is one time the clip or chip was put on. Two equal reads are not proof: a clip that sits wrong gives the same wrong image every time. A new seating is a new chance to find out.", decides: "Opens the approval on the chip page." },
   { key: "readBacks", label: "Equal read-backs", unit: "read-backs", min: 1, max: 30, why: "So many reads of the donor chip must equal the approved image after the write.", decides: "Makes a transfer verified." },
   { key: "readBackSeatings", label: "Seatings of the read-backs", unit: "seatings", min: 1, max: 30, why: "The same for the donor chip: the clip is put on anew in between.", decides: "Makes a transfer verified." },
   { key: "shareDays", label: "Days until a customer’s link expires", unit: "days", min: 1, max: 3650, why: "A private link is as good as a key. After this time it opens nothing.", decides: "Counts for links made from now on." },

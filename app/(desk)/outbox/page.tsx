@@ -6,10 +6,12 @@ import { PageMain } from "@/components/shell/page-main";
 import { Button } from "@/components/ui/button";
 import { Empty } from "@/components/ui/empty";
 import { Input } from "@/components/ui/input";
+import { Note } from "@/components/ui/note";
 import { Pages } from "@/components/ui/pages";
 import { PageTitle, Section } from "@/components/ui/section";
 import { signedIn } from "@/lib/auth/page";
 import { orNotFound } from "@/lib/http/page-errors";
+import { mailStaysHere } from "@/lib/queries/first-steps";
 import { mailList, templateList } from "@/lib/queries/mails";
 import { listInput } from "@/lib/schemas/case";
 
@@ -25,6 +27,7 @@ export default async function OutboxPage({ searchParams }: { searchParams: Promi
     <DeskShell session={session} current="outbox">
       <PageMain className="pb-8">
         <PageTitle note="Every mail waits here first and is sent from here. One that can’t be delivered is tried again, then given up and shown so.">Outbox</PageTitle>
+        {mailStaysHere() ? <Note kind="caution" title="No mail server is set: these mails reach nobody." className="mb-5 max-w-[76ch]">What is shown as sent was put into the folder <span className="font-mono">mail-fake</span> of the data folder on this machine. Put <span className="font-mono">SMTP_URL</span> and <span className="font-mono">SMTP_FROM</span> into the file <span className="font-mono">.env</span> and start Twinread again to send mail.</Note> : null}
         <form className="no-print flex max-w-[560px] items-end gap-3 pb-5" role="search" aria-label="Mails">
           <Input key={input.q} className="flex-1" label="Address or subject" name="q" defaultValue={input.q} maxLength={200} autoComplete="off" />
           <Button type="submit">Look</Button>

@@ -26,6 +26,7 @@ import { custodyOfDrive } from "@/lib/queries/custody";
 import { erasureView } from "@/lib/queries/erasure";
 import { addsPhotos, photoCounts, photosOf } from "@/lib/queries/photos";
 import { driveToRecord } from "@/lib/queries/drives";
+import { mailStaysHere } from "@/lib/queries/first-steps";
 import { notesOf } from "@/lib/queries/notes";
 import { policyView } from "@/lib/queries/policy";
 import { receiptView } from "@/lib/queries/receipts";
@@ -60,11 +61,11 @@ export default async function CasePage({ params, searchParams }: { params: Promi
         {view.drives.map((drive) => <DriveBlock key={drive.id} drive={drive} policy={policy} user={user} open={view.state === "open"} />)}
         {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive {...drive} lead /> : null}>Type what its label says. An external drive may show only a part number on the enclosure: that is enough.</Empty></div> : null}
         {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive {...drive} /></div> : null}
-        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} leads={leads} tests={<StartUpSteps closing={closing} user={user} leads={leads} />} end={<ReturnSteps view={view} closing={closing} user={user} leads={leads} />} /></Section>
+        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} leads={leads} mailStays={mailStaysHere()} tests={<StartUpSteps closing={closing} user={user} leads={leads} />} end={<ReturnSteps view={view} closing={closing} user={user} leads={leads} />} /></Section>
         <ClosingSection caseId={id} caseRef={view.ref} closing={closing} releases={may(actor, "case.release")} timeZone={timeZone} />
         {erasure ? <ImagesSection view={erasure} told={closing.returned ? `The customer was told: ${closing.keepDays} days after the return.` : "Counted from the day on which the case was closed."} erases={may(actor, "case.erase")} timeZone={timeZone} /> : null}
         {view.state === "requested" ? null : parcel}
-        <NotesSection view={view} notes={notes} user={user} timeZone={timeZone} />
+        <NotesSection view={view} notes={notes} user={user} timeZone={timeZone} neededBy={request?.answers.neededBy ?? null} />
         {request ? <RequestSection view={request} wish={request.deletion ? <WishNote view={{ ...request, deletion: request.deletion }} timeZone={timeZone} answers={may(actor, "request.answer")} /> : null} timeZone={timeZone} answers={may(actor, "request.answer")} /> : null}
         <Section id="photos" title="Photos" note="Of the parcel, its papers and what came along. Kept as they came; copies are shown.">
           <CasePhotos caseId={id} caseRef={view.ref} photos={photos} adds={addsPhoto} timeZone={timeZone}
