@@ -15,6 +15,8 @@ const dev = process.argv.includes("--dev");
 let house = null;
 let release = () => {};
 let ending = false;
+/** settings that came with the command: the next one needs them too */
+let typed = "";
 
 async function end(code) {
   if (ending) return;
@@ -36,6 +38,7 @@ for (const event of ["uncaughtException", "unhandledRejection"]) {
 
 async function start() {
   checkNode();
+  typed = ["DEMO", "TWINREAD_DATA"].filter((name) => process.env[name]).map((name) => `${name}=${/^[\w./:-]+$/.test(process.env[name]) ? process.env[name] : `'${process.env[name]}'`} `).join("");
   loadEnvFile();
   release = takeLock(path.join(root, ".data/checkout.lock"), (holder) =>
     `Twinread already runs from this checkout (process ${holder.pid}). Stop it there with Ctrl-C first; a second copy needs a checkout of its own.`);
@@ -62,7 +65,7 @@ function welcome(settings) {
   if (settings.smtp.fake) say(`Mail stays on this machine: ${path.join(settings.dataDir, "mail-fake")}`);
   const accounts = settings.demo ? demoAccounts(settings.dataDir) : [];
   if (accounts.length > 0) say(`\nDemo accounts, e-mail and first password:\n${accounts.map((line) => `  ${line}`).join("\n")}`);
-  if (!settings.demo) say("The first admin is made with: npm run admin -- <e-mail>");
+  if (!settings.demo) say(`\nThe first account is made in another terminal, in this folder:\n  ${typed}npm run admin -- you@your-workshop.example\nIt prints a password that works once. Sign in with it at ${settings.publicUrl}`);
   say("\nCtrl-C stops it.");
 }
 

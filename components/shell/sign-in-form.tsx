@@ -24,7 +24,7 @@ function refusedBy(error: string | null | undefined): Refused {
 }
 
 /** Signs in and goes on to `target`, a path of this site that the page has checked. */
-export function SignInForm({ workshop, target }: { workshop: string; target: string }) {
+export function SignInForm({ workshop, target, empty }: { workshop: string; target: string; /** there is no account yet */ empty: boolean }) {
   const [refused, setRefused] = useState<Refused | null>(null);
   const [busy, setBusy] = useState(false);
   async function onSubmit(event: FormEvent<HTMLFormElement>) {
@@ -47,11 +47,12 @@ export function SignInForm({ workshop, target }: { workshop: string; target: str
         <h1 className="mb-0.5 text-t5 font-bold">{workshop}</h1>
         <p className="text-ink-2">Sign in to the bench.</p>
       </div>
+      {empty ? <Note kind="note" title="There is no account yet.">Whoever started Twinread makes the first one, an admin’s, in a second terminal. The first terminal shows the command; mostly it is<code className="my-1 block">DEMO=0 npm run admin -- you@your-workshop.example</code>It prints a password that works once. Sign in with it here.</Note> : null}
       {refused ? <Note kind="block" role="alert" title={refused.title}>{refused.words}</Note> : null}
       <Input label="E-mail address" name="email" type="email" autoComplete="username" autoCapitalize="none" required />
       <Input label="Password" name="password" type="password" autoComplete="current-password" required aria-invalid={refused === WRONG || undefined} />
       <Button type="submit" variant="lead" disabled={busy}>Sign in</Button>
-      <p className="border-t border-rule pt-3.5 text-t2 text-ink-2">Customers need no account: the summary opens from the link in your e-mail. A case bundle or an image can be <Link href="/verify" prefetch={false}>checked here</Link> by anyone.</p>
+      <p className="border-t border-rule pt-3.5 text-t2 text-ink-2">Customers need no account: <Link href="/request" prefetch={false}>ask for a transfer here</Link>; your case and its summary open from the links in your e-mails. A case bundle or an image can be <Link href="/verify" prefetch={false}>checked here</Link> by anyone.</p>
     </form>
   );
 }

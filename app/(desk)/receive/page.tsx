@@ -6,6 +6,7 @@ import { ScanBox } from "@/components/receive/scan-box";
 import { ToReceiveTable } from "@/components/receive/to-receive-table";
 import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
+import { CopyButton } from "@/components/ui/copy-button";
 import { Note } from "@/components/ui/note";
 import { PageTitle, Section } from "@/components/ui/section";
 import { signedIn } from "@/lib/auth/page";
@@ -13,6 +14,7 @@ import { readCaseRef } from "@/lib/core/case-number";
 import { may } from "@/lib/core/policy";
 import { mistyped, NOT_A_NUMBER } from "@/lib/core/receipt-words";
 import type { Actor } from "@/lib/core/words";
+import { env } from "@/lib/env";
 import { caseByNumber, toReceive } from "@/lib/queries/receipts";
 
 export const metadata: Metadata = { title: "Receive" };
@@ -41,6 +43,7 @@ export default async function ReceivePage({ searchParams }: { searchParams: Prom
   if (!may(actor, "parcel.receive")) redirect("/bench");
   const { number: asked } = await searchParams;
   const number = typeof asked === "string" ? asked.slice(0, 200) : "";
+  const form = `${env().publicUrl}/request`;
   const trouble = number.trim() ? await answer(actor, number) : null;
   return (
     <DeskShell session={session} current="receive">
@@ -48,6 +51,7 @@ export default async function ReceivePage({ searchParams }: { searchParams: Prom
         <PageTitle note="Scan the slip in the parcel, or type its case number.">Receive a parcel</PageTitle>
         <Section title="Number on the slip" note="The part after the dot is a check character: it catches a mistyped number."><ScanBox key={number} number={number} trouble={trouble} /></Section>
         <Section title="Still to come" note="Asked for on the form."><ToReceiveTable rows={await toReceive(actor)} timeZone={session.timeZone} /></Section>
+        <Section title="The form" note="Where customers ask for a transfer, without an account."><p className="flex flex-wrap items-center gap-x-2 gap-y-1">Put this address on your web site or into your mails: <Link href="/request" prefetch={false} className="font-mono">{form}</Link><CopyButton text={form} label="Copy the address of the form" done="Copied the address of the form." /></p></Section>
         <Section title="No slip, no number"><p><Link href="/cases/new">Record a case</Link> from what is in the parcel. Look for a name or an address first; a parcel without either is photographed, closed and kept.</p></Section>
       </PageMain>
     </DeskShell>

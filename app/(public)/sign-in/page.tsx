@@ -1,5 +1,6 @@
 import type { Metadata } from "next";
 import { env } from "@/lib/env";
+import { hasNoAccount } from "@/lib/queries/first-steps";
 import { SignInArt } from "@/components/shell/sign-in-art";
 import { SignInForm } from "@/components/shell/sign-in-form";
 import { DemoStrip } from "@/components/shell/demo-strip";
@@ -16,6 +17,7 @@ function ownPath(wanted: string | string[] | undefined): string {
 
 export default async function SignInPage({ searchParams }: { searchParams: Promise<{ callbackUrl?: string | string[] }> }) {
   const { workshop, demo } = env();
+  const empty = await hasNoAccount();
   const target = ownPath((await searchParams).callbackUrl);
   return (
     <div className="flex min-h-screen flex-col">
@@ -27,7 +29,7 @@ export default async function SignInPage({ searchParams }: { searchParams: Promi
           <p className="relative max-w-[24em] text-[1.75rem] leading-9 font-semibold tracking-[-0.01em] phone:text-[1.125rem] phone:leading-6">Nothing is written to a chip until its reads agree and a second person has signed.</p>
         </div>
         <div className="grid place-items-center px-8 py-10 phone:place-items-[start_stretch] phone:px-4 phone:py-[26px]">
-          <SignInForm workshop={workshop} target={target} />
+          <SignInForm workshop={workshop} target={target} empty={empty} />
         </div>
       </main>
     </div>
