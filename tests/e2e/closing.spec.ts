@@ -3,6 +3,7 @@ import path from "node:path";
 import { expect, type Page, test } from "@playwright/test";
 import { approve, type Pair, randomImage, sha256Of, store } from "./support/bench";
 import { openDesk, signIn } from "./support/desk";
+import { sendSummary, summaryLink } from "./support/end-steps";
 import { newFolder } from "./support/files";
 import { mailsTo } from "./support/mails";
 import { done, tokenOf } from "./support/station";
@@ -106,9 +107,7 @@ test("a verified drive is tested, sent back and closed; its case then takes no c
   const ines = await signIn(browser, "ines");
   await test.step("ines sends the summary and closes the case", async () => {
     await ines.page.goto(`/cases/${caseId}`);
-    await ines.page.getByRole("button", { name: "Send summary…" }).click();
-    await ines.page.getByRole("dialog").getByRole("button", { name: "Send it" }).click();
-    await expect(ines.page.getByRole("dialog")).toBeHidden();
+    await sendSummary(ines.page);
     await ines.page.getByRole("button", { name: "Close the case…" }).click();
     const dialog = ines.page.getByRole("dialog", { name: /^Release and close case/ });
     await look(ines.page, "close-dialog");
@@ -131,10 +130,8 @@ test("a verified drive is tested, sent back and closed; its case then takes no c
   });
 
   await test.step("the customer reads what was done, and keeps it as one page", async () => {
-    let link: string | undefined;
-    await expect.poll(() => (link = /https?:\/\/\S+\/summary\/[\w-]{43}/.exec(mailsTo(EMAIL).join("\n"))?.[0]), { timeout: 30_000 }).toBeTruthy();
     const customer = await openDesk(browser);
-    await customer.page.goto(link!);
+    await customer.page.goto(await summaryLink(EMAIL));
     const main = customer.page.getByRole("main");
     for (const said of ["U3 was taken off it and is on the donor board now.", "(with R2, 1.4.2, SOIC-8 clip C4)", "it spins, gets ready and reports the serial of its label", "What comes back to you", "USB cable"]) await expect(main).toContainText(said);
     await look(customer.page, "summary");
