@@ -22,6 +22,7 @@ function Row({ chip, drive, policy, corrects }: { chip: ChipSummary; drive: Driv
   const original = chip.boardRole === "original";
   const donor = original ? donorOf(chip, drive) : chip;
   const mark = stateMark(chip.state.state);
+  const kept = original && !chip.needsTransfer;
   const unit = unitOf(originalOf(drive)?.chips ?? []);
   const others = unit.some((one) => one.id === chip.id) ? unit.filter((one) => one.id !== chip.id).map((one) => one.designator) : [];
   return (
@@ -33,7 +34,7 @@ function Row({ chip, drive, policy, corrects }: { chip: ChipSummary; drive: Driv
       <td className="text-center phone:text-left">{original && chip.needsTransfer ? <MiniRoute state={chip.state.state} /> : <span className="text-ink-3">{original ? "kept for reference" : ""}</span>}</td>
       <td data-l="Donor">{donor ? <DesignatorPlate designator={donor.designator} board="donor" /> : <span className="text-ink-3">not paired</span>}</td>
       <td className="whitespace-nowrap"><OwnContent donor={donor} /></td>
-      <td className="l-full"><b className={mark === "block" ? "text-block" : ""}>{chip.state.label}.</b> {chip.state.sentence}</td>
+      <td className="l-full">{kept && mark !== "block" ? <><b>Kept for reference.</b> It is not part of the transfer.</> : <><b className={mark === "block" ? "text-block" : ""}>{chip.state.label}.</b> {chip.state.sentence}</>}</td>
       <td className="l-row text-right whitespace-nowrap phone:flex phone:items-center phone:gap-4 phone:text-left">
         <ButtonLink size="small" href={`/chips/${chip.id}`}>Open {chip.designator}</ButtonLink>
         {corrects ? <span className="no-print block"><CorrectChip chip={chip} originals={originalOf(drive)?.chips ?? []} /></span> : null}

@@ -1,4 +1,5 @@
 import { stateMark } from "@/components/chip/chip-words";
+import { waitsText } from "@/components/note/note-words";
 import { PrintMenu } from "@/components/print/print-menu";
 import { casePrints } from "@/components/print/print-words";
 import { Mark } from "@/components/ui/mark";
@@ -9,7 +10,7 @@ import { caseState, waitsFor } from "./case-words";
 /** The job ticket: stub with the number, then ruled boxes. */
 export function Ticket({ view, timeZone, today }: { view: CaseView; timeZone: string; today: string }) {
   const { state, words } = caseState(view);
-  const mark = state ? stateMark(state) : "wait";
+  const mark = state ? stateMark(state) : view.state === "closed" ? "done" : "wait";
   const late = view.state === "open" && view.dueOn !== null && view.dueOn < today;
   const waits = waitsFor(view.drives);
   return (
@@ -23,18 +24,18 @@ export function Ticket({ view, timeZone, today }: { view: CaseView; timeZone: st
         <dl>
           <div><dt>Due</dt><dd>{view.dueOn ? dueText(view.dueOn) : "No date"}{late ? <span className="text-block">, late</span> : null}</dd></div>
           <div><dt>Received</dt><dd>{view.receivedAt ? momentText(view.receivedAt, timeZone) : "not yet"}</dd></div>
-          <div><dt>State</dt><dd className={mark === "block" ? "text-block" : ""}><Mark kind={mark} className="mr-1.5 [--hole:var(--sheet)]" />{words}</dd></div>
+          <div><dt>State</dt><dd className={mark === "block" ? "text-block" : ""}><Mark kind={mark} className="mr-1.5 [--hole:var(--sheet)]" />{words}</dd>{view.hold ? <dd><Mark kind="caution" className="mr-1.5 text-caution" /><a href="#notes">{waitsText(view.hold)}</a></dd> : null}</div>
         </dl>
         <div className="no-print mt-auto"><PrintMenu links={casePrints(view.id)} /></div>
       </div>
       <dl className="boxes">
-        <div className="w4"><dt>Customer</dt><dd><b>{view.customer.name}</b>{view.customer.contact ? <><br />{view.customer.contact}</> : null}</dd></div>
+        <div className="w4"><dt>Customer</dt><dd><b>{view.customer.name}</b>{view.customer.company ? <><br />{view.customer.company}</> : null}{view.customer.contact ? <><br />{view.customer.contact}</> : null}</dd></div>
         <div className="w4"><dt>Reach by</dt><dd>{view.customer.email}{view.customer.phone ? <><br />{view.customer.phone}</> : null}</dd></div>
         <div className="w4 e"><dt>Recorded by</dt><dd>{view.createdBy?.name ?? "the customer, on the form"}</dd></div>
         <div className="w8"><dt>Damage</dt><dd>{view.damage}</dd></div>
         <div className="w4 e"><dt>Summary goes to</dt><dd>{view.customer.email}{waits ? `; ${waits}` : ""}</dd></div>
         <div className="w8 l"><dt>Bench note</dt><dd>{view.note ?? <span className="text-ink-3">none</span>}</dd></div>
-        <div className="w4 e l"><dt>{view.state === "closed" ? "Closed because" : "Customer’s data"}</dt><dd>{view.state === "closed" ? view.closedReason ?? "All done" : "Keep to what the customer asked for and to local law."}</dd></div>
+        <div className="w4 e l"><dt>{view.state === "closed" ? "Closed" : "Customer’s data"}</dt><dd>{view.state === "closed" ? view.closedReason ?? "Nothing was left open." : "Keep to what the customer asked for and to local law."}</dd></div>
       </dl>
     </div>
   );

@@ -25,7 +25,7 @@ function steps(chip: ChipView, timeZone: string): Step[] {
     { name: "Received", note: momentText(chip.receivedAt, timeZone) },
     { name: "Read", note: here > 1 && lastRead ? momentText(lastRead.storedAt, timeZone) : here === 1 ? `${chip.agreeingReads} of ${chip.policy.reads} agree` : "" },
     { name: approved ? "Approved" : "Approve", note: approved ? momentText(approved.givenAt, timeZone) : here === 2 ? (chip.request && !chip.request.sentBack ? `asked ${momentText(chip.request.askedAt, timeZone)}` : "waiting for approval") : here < 2 ? "opens when reads agree" : "" },
-    { name: here > 3 ? "Written" : "Write", note: here > 3 && transfer ? momentText(transfer.at, timeZone) : here === 3 ? "cleared to write" : "" },
+    { name: here > 3 ? (transfer?.kind === "chip-moved" ? "Moved" : "Written") : "Write", note: here > 3 && transfer ? momentText(transfer.at, timeZone) : here === 3 ? "cleared to write" : "" },
     { name: "Read back", note: here > 4 && lastBack ? `${backs.length} equal, ${clockText(lastBack.storedAt, timeZone)}` : here === 4 ? `${backs.length} of ${chip.policy.readBacks}` : "" },
     { name: "Return", note: here === 5 ? "pack the board" : "" },
   ];

@@ -24,7 +24,7 @@ export function StartUpSection({ startUps, acts, timeZone }: { startUps: DriveSt
             <tbody>
               {tests.map((test) => (
                 <tr key={test.id}>
-                  <th scope="row" className="font-normal"><span className="flex items-start gap-2"><Mark kind={startUpMark(test)} className="mt-0.5 shrink-0" />{capital(startUpWords(test))}</span></th>
+                  <th scope="row" className="font-normal !whitespace-normal phone:!flex-[0_0_100%]"><span className="flex items-start gap-2"><Mark kind={startUpMark(test)} className="mt-0.5 shrink-0" />{capital(startUpWords(test))}</span></th>
                   <td data-l="Serial reported" className="[overflow-wrap:anywhere]">{test.reportedSerial ? <span className="font-mono">{test.reportedSerial}</span> : null}<span className="block text-t2 text-ink-2">{serialText(test)}</span></td>
                   <td data-l="Note" className="[overflow-wrap:anywhere] whitespace-pre-line">{test.note ?? <span className="text-ink-3">none</span>}</td>
                   <td data-l="By">{test.by.name}</td>

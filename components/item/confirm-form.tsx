@@ -9,7 +9,7 @@ import { TextArea } from "@/components/ui/text-area";
 import { useChange } from "@/components/ui/use-change";
 import { send } from "@/lib/http/send";
 import type { HandOverView } from "@/lib/views";
-import { whereText } from "./item-words";
+import { itemTitle, whereText } from "./item-words";
 
 const form = z.object({ text: z.string().trim().max(500, "At most 500 characters.") });
 
@@ -25,9 +25,9 @@ export function ConfirmForm({ item, handOver, received, onClose }: { item: strin
   });
   const outside = handOver.toUserId === null;
   return (
-    <FormDialog onClose={onClose} title={received ? `Confirm having ${item}` : `${item} did not arrive`} action={received ? "Confirm" : "Record that it did not arrive"} variant={received ? "lead" : "stop"}
+    <FormDialog onClose={onClose} title={received ? `Confirm having ${item}` : `${itemTitle(item)} did not arrive`} action={received ? "Confirm" : "Record that it did not arrive"} variant={received ? "lead" : "stop"}
       busy={busy} refusal={refusal} onSubmit={() => void submit()}
-      description={received ? `From ${whereText(handOver.from)} to ${whereText(handOver.to)}. Condition as handed over: ${handOver.condition}${handOver.sealNumber ? ` Seal ${handOver.sealNumber}.` : ""}` : `It stays with ${whereText(handOver.from)}.`}>
+      description={received ? `From ${whereText(handOver.from)} to ${whereText(handOver.to)}. Condition as handed over: ${handOver.condition.replace(/[.;,]*$/, ".")}${handOver.sealNumber ? ` Seal ${handOver.sealNumber}.` : ""}` : `It stays with ${whereText(handOver.from)}.`}>
       <TextArea label={received ? (outside ? `How ${handOver.to.person} confirmed` : "Anything that is not as described") : "What happened"}
         hint={received && !outside ? "Leave empty when everything is as it says above. Goes into the custody log as you type it." : "Goes into the custody log as you type it."} error={errors.text?.message} {...register("text")} />
     </FormDialog>

@@ -1,11 +1,14 @@
 import type { HandOverView, ItemView } from "@/lib/views";
 
+/** "Original board BX 40-3179 rev C": an item at the beginning of a line. */
+export const itemTitle = (name: string) => name.charAt(0).toUpperCase() + name.slice(1);
+
 export const whereText = (party: { person: string; place: string }) => `${party.person}, ${party.place}`;
 
 /** Where an item is, as far as hand-overs say. */
 export function itemWords(item: ItemView): string {
   if (item.at) return whereText(item.at.to);
-  return item.open ? `with ${whereText(item.open.from)}` : "Where it was received; no hand-over yet.";
+  return item.open ? `With ${whereText(item.open.from)}` : "As it was received; no hand-over yet.";
 }
 
 /** Who has to do something about a hand-over that waits. */

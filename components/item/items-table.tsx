@@ -7,7 +7,7 @@ import { momentText } from "@/components/ui/times";
 import type { HandOverView, ItemView, PersonView } from "@/lib/views";
 import { ConfirmForm } from "./confirm-form";
 import { HandOverForm } from "./hand-over-form";
-import { handOverSteps, itemWords, waitsWords } from "./item-words";
+import { handOverSteps, itemTitle, itemWords, waitsWords } from "./item-words";
 
 type Open = { kind: "hand-over"; item: ItemView } | { kind: "confirm" | "deny"; item: ItemView; handOver: HandOverView } | null;
 
@@ -32,15 +32,15 @@ export function ItemsTable({ driveId, items, user, receivers, acts, open: begins
         <tbody>
           {items.map((item) => (
             <tr key={item.id}>
-              <th scope="row" className={item.type === "chip" ? "!pl-5" : ""}>{item.name}</th>
-              <td data-l="Where it is" className="l-full">
+              <th scope="row" className={item.type === "chip" ? "!pl-5" : ""}>{itemTitle(item.name)}</th>
+              <td className="l-full">
                 {itemWords(item)}
                 {item.open ? <span className="flex items-start gap-1.5 text-t2 text-ink-2"><Mark kind="run" />{waitsWords(item.open)}</span> : null}
               </td>
               <td data-l="Condition" className="[overflow-wrap:anywhere]">{(item.open ?? item.at)?.condition ?? <span className="text-ink-3">as recorded</span>}</td>
-              <td data-l="Seal" className="font-mono">{(item.open ?? item.at)?.sealNumber ?? <span className="font-sans text-ink-3">none</span>}</td>
-              <td data-l="Since" className="whitespace-nowrap">{item.at ? momentText(item.at.confirmed!.at, timeZone) : ""}</td>
-              {acts ? <td className="l-full"><Steps item={item} user={user} begins={begins} onOpen={setOpen} /></td> : null}
+              <td data-l="Seal" className="min-w-[10ch] font-mono">{(item.open ?? item.at)?.sealNumber ?? <span className="font-face text-ink-3">none</span>}</td>
+              <td data-l={item.at ? "Since" : undefined} className="whitespace-nowrap">{item.at ? momentText(item.at.confirmed!.at, timeZone) : ""}</td>
+              {acts ? <td className="l-row whitespace-nowrap"><Steps item={item} user={user} begins={begins} onOpen={setOpen} /></td> : null}
             </tr>
           ))}
         </tbody>
@@ -57,7 +57,7 @@ function Steps({ item, user, begins, onOpen }: { item: ItemView; user: { id: str
   const handOver = item.open;
   const { confirms, denies } = handOverSteps(handOver, user);
   return (
-    <span className="flex flex-wrap gap-2">
+    <span className="flex gap-2 phone:flex-wrap">
       {confirms ? <Button size="small" onClick={() => onOpen({ kind: "confirm", item, handOver })}>Confirm…</Button> : null}
       {denies ? <Button size="small" onClick={() => onOpen({ kind: "deny", item, handOver })}>Did not arrive…</Button> : null}
     </span>

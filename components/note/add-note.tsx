@@ -46,7 +46,7 @@ export function AddNote({ caseId, drives, corrects = null }: { caseId: string; d
   const [open, setOpen] = useState(false);
   return (
     <>
-      <Button size="small" onClick={() => setOpen(true)}>{corrects ? <>Correct…<span className="sr-only"> note {corrects.number}</span></> : "Add a note…"}</Button>
+      <Button size="small" className="self-start" onClick={() => setOpen(true)}>{corrects ? <>Correct…<span className="sr-only"> note {corrects.number}</span></> : "Add a note…"}</Button>
       {open ? <NoteForm caseId={caseId} drives={drives} corrects={corrects} onClose={() => setOpen(false)} /> : null}
     </>
   );

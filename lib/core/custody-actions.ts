@@ -27,8 +27,13 @@ const donorRef = { donorChip: z.object({ id: uuid, designator: words, boardNumbe
 const name = (f: { read: { stage: (typeof STAGES)[number]; number: number } }) => readName(f.read.stage, f.read.number);
 const short = (digest: string) => `${digest.slice(0, 8)}…`;
 const kib = (n: number) => (n % 1024 === 0 ? `${(n / 1024).toLocaleString("en")} KiB` : `${n.toLocaleString("en")} bytes`);
+/** "revision from rev C to rev D"; a value that is kept out of the log stands once, and "taken for" is a sentence by itself. */
 const changes = (list: { field: string; from: unknown; to: unknown }[]) =>
-  list.map((c) => `${c.field} from ${c.from ?? "nothing"} to ${c.to ?? "nothing"}`).join(", ");
+  list.map(({ field, from, to }) => {
+    if (from === to) return `${field} ${to}`;
+    if (/^(taken|reserved) for$/.test(field)) return from === null ? `${field} ${to}` : to === null ? `no longer ${field} ${from}` : `${field} ${to}, no longer ${from}`;
+    return `${field} from ${from ?? "nothing"} to ${to ?? "nothing"}`;
+  }).join(", ");
 
 /** "Placed U12 on the picture of its board": a correction of nothing but the place. */
 function placed(list: { field: string; to: unknown }[], designator: string): string | null {

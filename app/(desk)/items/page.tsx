@@ -1,9 +1,9 @@
 import type { Metadata } from "next";
 import Link from "next/link";
-import { itemWhere } from "@/components/item/item-words";
+import { itemTitle, itemWhere } from "@/components/item/item-words";
 import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
-import { Button } from "@/components/ui/button";
+import { Button, ButtonLink } from "@/components/ui/button";
 import { Empty } from "@/components/ui/empty";
 import { Input } from "@/components/ui/input";
 import { Pages } from "@/components/ui/pages";
@@ -28,7 +28,7 @@ export default async function ItemsPage({ searchParams }: { searchParams: Promis
           <Input key={input.q} className="flex-1" label="Person, place, seal or case number" name="q" defaultValue={input.q} maxLength={200} autoComplete="off" />
           <Button type="submit">Look</Button>
         </form>
-        {list.items.length === 0 ? <Empty title={input.q ? `Nothing matches “${input.q}”.` : "Nothing has changed hands yet."}>An item is listed here from its first hand-over on.</Empty> : (
+        {list.items.length === 0 ? <Empty title={input.q ? `Nothing matches “${input.q}”.` : "Nothing has changed hands yet."} action={input.q ? <ButtonLink href="/items">Show all</ButtonLink> : null}>An item is listed here from its first hand-over on.</Empty> : (
           <>
             <table className="ruled lines">
               <caption className="sr-only">Where each item is</caption>
@@ -36,10 +36,10 @@ export default async function ItemsPage({ searchParams }: { searchParams: Promis
               <tbody>
                 {list.items.map(({ driveId, item, handOver }) => (
                   <tr key={handOver.id}>
-                    <th scope="row"><Link href={`/drives/${driveId}#items`}>{item}</Link></th>
-                    <td data-l="Where it is" className="l-full">{itemWhere(handOver)}</td>
+                    <th scope="row"><Link href={`/drives/${driveId}#items`}>{itemTitle(item)}</Link></th>
+                    <td className="l-full">{itemWhere(handOver)}</td>
                     <td data-l="Condition" className="[overflow-wrap:anywhere]">{handOver.condition}</td>
-                    <td data-l="Seal" className="font-mono">{handOver.sealNumber ?? <span className="font-sans text-ink-3">none</span>}</td>
+                    <td data-l="Seal" className="min-w-[10ch] font-mono">{handOver.sealNumber ?? <span className="font-face text-ink-3">none</span>}</td>
                     <td data-l="Handed over" className="whitespace-nowrap">{momentText(handOver.givenAt, session.timeZone)}</td>
                   </tr>
                 ))}
