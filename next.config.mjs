@@ -24,6 +24,8 @@ const config = {
         { key: "Content-Security-Policy", value: "default-src 'none'; frame-ancestors 'none'; sandbox" },
         { key: "Cache-Control", value: "no-store" },
       ] },
+      // the same for everybody, and nothing of the workshop in it
+      ...["/api/openapi.json", "/openapi.json"].map((source) => ({ source, headers: [{ key: "Cache-Control", value: "public, max-age=300" }] })),
     ];
   },
 };

@@ -28,4 +28,4 @@ export function proxy(request: NextRequest): NextResponse {
   return response;
 }
 
-export const config = { matcher: ["/((?!api/|_next/static/|icon\\.svg|favicon\\.ico).*)"] };
+export const config = { matcher: ["/((?!api/|_next/static/|icon\\.svg|favicon\\.ico|openapi\\.json).*)"] };

@@ -16,7 +16,7 @@ export function BeforeYouSign({ chip, composite }: { chip: ChipView; composite: 
       ].map((w) => (
         <li key={w.title} className="grid grid-cols-[16px_minmax(0,1fr)] gap-2.5">
           <Mark kind={w.kind === "note" ? "note" : "caution"} className="mt-0.5 [--hole:var(--paper)]" />
-          <span><b className="block">{w.title}</b>{w.text}{w.help ? <> <HelpLink href={`/help/limits#${w.help}`} about={w.title} /></> : null}</span>
+          <span><b className="block">{w.title}</b>{w.text}{w.help ? <> <HelpLink href={`/help/limits#${w.help}`} about={w.title} words="More in the help" /></> : null}</span>
         </li>
       ))}
     </ol>

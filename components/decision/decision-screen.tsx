@@ -71,7 +71,7 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
   });
 
   // stays whatever the refreshed sheet shows, also when another approval came first
-  const refused = refusal ? <Note kind="block" role="alert" title="You did not approve the image." className="mb-4">{refusal} <HelpLink href="/help/approval" about="What an approval needs" /></Note> : null;
+  const refused = refusal ? <Note kind="block" role="alert" title="You did not approve the image." className="mb-4">{refusal} <HelpLink href="/help/approval" about="What an approval needs" words="More in the help" /></Note> : null;
   const waiting = chip.request && !chip.request.sentBack;
   const sendBack = waiting && chip.case.open && may(user, "approval.send-back") ? () => setSendingBack(true) : null;
   return (

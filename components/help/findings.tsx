@@ -22,7 +22,7 @@ function Example({ said }: { said: readonly FindingExample[] }) {
 
 function Finding({ code, help, said }: { code: DiagnosisCode; help: FindingHelp; said: readonly FindingExample[] }) {
   return (
-    <article id={code} aria-labelledby={`${code}-title`} className="grid max-w-[53ch] gap-2.5 border-b text-t4 border-rule py-4 first:pt-0 last:border-0 target:bg-well print:break-inside-avoid">
+    <article id={code} aria-labelledby={`${code}-title`} className="grid max-w-[53ch] gap-2.5 border-b text-t4 border-rule py-4 first:pt-0 last:border-0 target:-mx-3 target:bg-well target:px-3 print:break-inside-avoid">
       <h3 id={`${code}-title`} className="flex flex-wrap items-baseline gap-x-3 text-t4 font-bold">{help.title} <code className="text-t2 font-normal text-ink-2">{code}</code></h3>
       <div className="text-t3">
         {SEVERITIES.filter((severity) => help.severity[severity]).map((severity) => <FindingLine key={severity} kind={code === "verified" ? "ok" : SEVERITY[severity].mark}><b>{SEVERITY[severity].word}</b>, {help.severity[severity]}</FindingLine>)}

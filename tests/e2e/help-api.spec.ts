@@ -81,7 +81,9 @@ test("the description is for anyone, the same under both addresses, and isn't se
   expect(first.status).toBe(200);
   expect(first.headers.get("content-type")).toMatch(/^application\/json/);
   expect(first.json<{ openapi: string }>().openapi).toMatch(/^3\.1\./);
-  expect((await call("GET", "/openapi.json")).bytes.equals(first.bytes)).toBe(true);
+  const usual = await call("GET", "/openapi.json");
+  expect(usual.bytes.equals(first.bytes)).toBe(true);
+  for (const answer of [first, usual]) expect(answer.headers.get("cache-control")).toBe("public, max-age=300");
   const again = await call("GET", "/api/openapi.json", { headers: { "if-none-match": first.headers.get("etag")! } });
   expect([again.status, again.bytes.length]).toEqual([304, 0]);
 });

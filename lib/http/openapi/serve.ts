@@ -15,7 +15,8 @@ function described(): { text: string; etag: string } {
 /** The interface's description, for anyone. Holds nothing of this workshop. */
 export function serveDescription(request: Request): Response {
   const { text, etag } = described();
-  const headers = { etag, "cache-control": "public, max-age=300" };
+  // how long it may be kept stands in next.config.mjs, whose headers come last
+  const headers = { etag };
   if (request.headers.get("if-none-match") === etag) return new Response(null, { status: 304, headers });
   return new Response(text, { headers: { ...headers, "content-type": "application/json" } });
 }
