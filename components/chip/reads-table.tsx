@@ -72,7 +72,7 @@ function ReadActions({ read, user, open, onAsk }: { read: ReadView; user: Sessio
   return (
     <span className="-my-1 flex items-center justify-end gap-x-3 whitespace-nowrap phone:justify-start">
       {mayChange ? <Button variant="text" size="small" aria-label={`${read.counted ? "Set aside" : "Count again"}: ${nameOf(read)}`} onClick={() => onAsk(read.counted ? "set-aside" : "count-again")}>{read.counted ? "Set aside…" : "Count again…"}</Button> : null}
-      {may(user, "read.hand-out-any") ? <Button variant="text" size="small" aria-label={`Download ${nameOf(read)}`} onClick={() => onAsk("download")}>Download…</Button> : null}
+      {may(user, "read.hand-out-any") && !read.erased ? <Button variant="text" size="small" aria-label={`Download ${nameOf(read)}`} onClick={() => onAsk("download")}>Download…</Button> : null}
     </span>
   );
 }

@@ -31,7 +31,7 @@ function EraseForm({ view, onClose }: { view: ErasureView; onClose(): void }) {
     onClose();
   });
   return (
-    <FormDialog onClose={onClose} title={`Erase the images of case ${view.caseRef}`} action="Erase the images" variant="stop" busy={busy} refusal={refusal} onSubmit={() => void submit()}
+    <FormDialog onClose={onClose} title={<>Erase the images of case <span className="whitespace-nowrap">{view.caseRef}</span></>} action="Erase the images" variant="stop" busy={busy} refusal={refusal} onSubmit={() => void submit()}
       description="Their bytes leave Twinread’s store for good. The customer gets a mail that says so.">
       <Note kind="block" title="This can’t be undone.">Make the case bundle first if you want to keep a copy.</Note>
       {unverified.length > 0 ? <Note kind="caution" title={`${listText(unverified)} ${unverified.length === 1 ? "was" : "were"} never verified.`}>What is erased here may be the only copy of what makes this drive start.</Note> : null}

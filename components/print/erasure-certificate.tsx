@@ -29,7 +29,7 @@ export function ErasureCertificate({ view, erasure }: { view: PrintCaseView; era
           <Fact name="Erased" wide="w6">{exactText(erasure.at, timeZone)} ({timeZone})</Fact>
           <Fact name="By" wide="w6">{erasure.by.name}</Fact>
           <Fact name="Why" wide="w12">{`${CAUSE[erasure.cause]}.\n${erasure.reason}`}</Fact>
-          <Fact name="How" wide="w12">The stored bytes, and every copy of them in Twinread’s store, were removed. Each removal is a signed entry in the custody log, number {erasure.id}.</Fact>
+          <Fact name="How" wide="w12">The stored bytes, and every copy of them in Twinread’s store, were removed. Each removal is a signed entry in the custody log, under the erasure {erasure.id}.</Fact>
         </dl>
         <section>
           <h2>What was erased: {countOf(erasure.erased.length, "file")}, {withCommas(erasure.bytes)} bytes</h2>

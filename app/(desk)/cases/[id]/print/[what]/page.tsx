@@ -102,7 +102,7 @@ export default async function PrintedPage({ params, searchParams }: { params: Pr
         {made.sheets.length > 0 ? (
           <>
             <PrintBar hint={`${width} × ${height} mm. ${note}.`} choices={made.sizes?.map((size) => ({ label: PAPERS[size].name, href: printAddress(id, what, of, size), chosen: size === made.paper }))} />
-            <div className="sheets">{made.sheets}</div>
+            <div className="sheets" role="group" aria-label="What is printed" tabIndex={0}>{made.sheets}</div>
           </>
         ) : <Empty title="Nothing to print yet." action={<ButtonLink href={what === "write-ticket" && of ? `/chips/${of}` : `/cases/${id}`}>{what === "write-ticket" && of ? "Open the chip" : "Open the case"}</ButtonLink>}>{made.none}</Empty>}
       </PageMain>
