@@ -46,15 +46,27 @@ async function openChip(page: Page, customer: string, designator: string): Promi
   await page.waitForURL(/\/chips\/[0-9a-f-]{36}$/);
 }
 
-/** The path of the private link that the demo's customer got. */
-async function summaryPath(): Promise<string> {
+/** The path of a private link that a customer of the demo got by mail. */
+async function pathFor(customer: string, page: "request" | "summary"): Promise<string> {
   const folder = path.join(dataDir, "mail-fake");
   for (const name of existsSync(folder) ? readdirSync(folder) : []) {
     if (!name.endsWith(".eml")) continue;
-    const link = /\/summary\/[\w-]{43}/.exec((await simpleParser(readFileSync(path.join(folder, name)))).text ?? "");
+    const mail = await simpleParser(readFileSync(path.join(folder, name)));
+    const link = [mail.to ?? []].flat().some((to) => to.text.includes(customer)) ? new RegExp(`/${page}/[\\w-]{43}`).exec(mail.text ?? "") : null;
     if (link) return link[0];
   }
-  throw new Missing("No mail with a summary lies in the mail fake's folder yet. Wait until the demo has sent it.");
+  throw new Missing(`No mail to ${customer} with a link to the ${page} lies in the mail fake's folder yet. Wait until the demo has sent it.`);
+}
+
+/** The public form as somebody has begun to fill it in. */
+async function fillForm(page: Page): Promise<void> {
+  await page.goto("/request");
+  await page.waitForLoadState("networkidle");
+  for (const [label, text] of [
+    ["Name", "Corin Ashdale"], ["E-mail for the link and the summary", "corin@ashdale.example"], ["Address the parcel goes back to", "Ashdale Bookbinders\n8 Cooper's Row\nFennick ZZ1 4QT"],
+  ]) await page.getByLabel(label, { exact: true }).fill(text);
+  await page.getByRole("textbox", { name: "Part number on the enclosure" }).fill("PN 2214-0066-A");
+  await page.getByRole("textbox", { name: "Serial number" }).fill("TT41-1310-E2");
 }
 
 async function takeAll(browser: Browser): Promise<void> {
@@ -76,7 +88,7 @@ async function takeAll(browser: Browser): Promise<void> {
   await openChip(ines, "Halden Ropeworks", "U3");
   await ines.getByRole("link", { name: "Open the decision sheet" }).first().click();
   await ines.getByRole("heading", { name: "For and against" }).waitFor();
-  await take(ines, "decision-sheet", 1300);
+  await take(ines, "decision-sheet", 1240);
 
   const night = await signedIn(browser, "mira", { night: true });
   await night.goto(chip);
@@ -86,8 +98,12 @@ async function takeAll(browser: Browser): Promise<void> {
   await take(phone, "chip-390", 1600);
 
   const customer = await browser.newPage({ baseURL: publicUrl, viewport: { width: 1440, height: 1000 }, locale: "en-GB" });
-  await customer.goto(await summaryPath());
-  await take(customer, "summary", 1165);
+  await fillForm(customer);
+  await take(customer, "request", 1300);
+  await customer.goto(`${await pathFor("corin@ashdale.example", "request")}/slip`);
+  await take(customer, "slip", 1290);
+  await customer.goto(await pathFor("jory.kemble@kemble.example", "summary"));
+  await take(customer, "summary", 1136);
 }
 
 const running = await fetch(`${publicUrl}/api/health`).then((answer) => answer.ok, () => false);
