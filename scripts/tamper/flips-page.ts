@@ -65,7 +65,7 @@ ${fileTable(found)}
 ## In the bytes of the archive
 
 - The page: **${withCommas(flips.filter((flip) => flip.page).length)} of ${withCommas(flips.length)}** found. \`unzip -t\` was run on every byte of the archive's own fields and on one of ${unzipContent} of the content; it alone saw ${withCommas(flips.filter((flip) => !flip.page && flip.unzip).length)} more. Neither sees ${withCommas(flips.filter(unseen).length)}: ${nobody.join("; ") || "none"}.
-- What nobody sees changes no file and no name: dates and times, the program and version that an entry claims to be made by or for, and attributes that say how a file is to be shown. The lists and signatures are over the files' names and contents, and those stay what they were.
+- What nobody sees changes no file and no name: dates and times, the program and version that an entry claims to be made by or for, attributes that say how a file is to be shown, and numbers that no reader here goes by (which disk, how many entries lie on it, how long a comment is that isn't there). The lists and signatures are over the files' names and contents, and those stay what they were.
 
 | part of the archive | the page | \`unzip -t\` | neither |
 |---|---|---|---|
