@@ -28,7 +28,7 @@ export function ReceiveRows({ rows, acts, now }: { rows: readonly ToReceiveRow[]
           <td className="case"><Link href={`/cases/${row.caseId}`}>{row.caseRef}</Link></td>
           <td className="drv"><span>{row.customerName}</span><small className="font-mono">{row.partNumber ?? "no part number given"}</small></td>
           <td className="chp" />
-          <td className="nxt">Receive the parcel when it comes.<small>{since(row.requestedAt, now)}. {row.neededBy && !row.dueOn ? `Needed by ${dueText(row.neededBy)}. ` : ""}{row.damage.length > 90 ? `${row.damage.slice(0, 90).trimEnd()} …` : row.damage}</small></td>
+          <td className="nxt">Receive the parcel when it comes.<small>{since(row.requestedAt, now)}. {row.neededBy && !row.dueOn ? `Needed by ${dueText(row.neededBy)}. ` : ""}{row.damage.length > 90 ? `${row.damage.slice(0, 90).replace(/\s+\S*$/, "")} …` : row.damage}</small></td>
           <td className="with">anyone</td>
           <td className="img" />
           <td className="act">{acts

@@ -8,7 +8,7 @@ export const whereText = (party: { person: string; place: string }) => `${party.
 /** Where an item is, as far as hand-overs say. */
 export function itemWords(item: ItemView): string {
   if (item.at) return whereText(item.at.to);
-  return item.open ? `With ${whereText(item.open.from)}` : "As it was received; no hand-over yet.";
+  return item.open ? `With ${whereText(item.open.from)}` : "No hand-over recorded.";
 }
 
 /** Who has to do something about a hand-over that waits. */
