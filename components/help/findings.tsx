@@ -20,13 +20,19 @@ function Example({ said }: { said: readonly FindingExample[] }) {
   return <p className="max-w-[55ch] border-l-[3px] border-rule-2 pl-3 text-t3">On screen: “{first.message} {first.advice}”</p>;
 }
 
+/** What it does to an approval. Two reads that differ carry no finding: that they differ is what stands against them. */
+function Weight({ code, help }: { code: DiagnosisCode; help: FindingHelp }) {
+  const given = SEVERITIES.filter((severity) => help.severity[severity]);
+  if (code === "equal") return <FindingLine kind="ok"><b>Equal</b>, and no proof of sound content</FindingLine>;
+  if (given.length === 0) return <FindingLine kind="block"><b>Reads disagree</b>, while both count</FindingLine>;
+  return given.map((severity) => <FindingLine key={severity} kind={code === "verified" ? "ok" : SEVERITY[severity].mark}><b>{SEVERITY[severity].word}</b>, {help.severity[severity]}</FindingLine>);
+}
+
 function Finding({ code, help, said }: { code: DiagnosisCode; help: FindingHelp; said: readonly FindingExample[] }) {
   return (
     <article id={code} aria-labelledby={`${code}-title`} className="grid max-w-[53ch] gap-2.5 border-b text-t4 border-rule py-4 first:pt-0 last:border-0 target:-mx-3 target:bg-well target:px-3 print:break-inside-avoid">
       <h3 id={`${code}-title`} className="flex flex-wrap items-baseline gap-x-3 text-t4 font-bold">{help.title} <code className="text-t2 font-normal text-ink-2">{code}</code></h3>
-      <div className="text-t3">
-        {SEVERITIES.filter((severity) => help.severity[severity]).map((severity) => <FindingLine key={severity} kind={code === "verified" ? "ok" : SEVERITY[severity].mark}><b>{SEVERITY[severity].word}</b>, {help.severity[severity]}</FindingLine>)}
-      </div>
+      <div className="text-t3"><Weight code={code} help={help} /></div>
       <Example said={said} />
       <p className="text-t4">{help.means}</p>
       <ul className="grid list-disc gap-1 pl-6 text-t4">{help.bench.map((step) => <li key={step}>{step}</li>)}</ul>
