@@ -43,7 +43,7 @@ export function ApprovalSection({ chip, user, timeZone, onChanged }: { chip: Chi
           {open && !approval && waiting && may(user, "approval.send-back") ? <Button variant="stop" onClick={() => setAsked("send-back")}>Send back…</Button> : null}
           {open && approval && may(user, "approval.revoke") ? <Button variant="stop" onClick={() => setAsked("revoke")}>Revoke…</Button> : null}
         </Buttons>
-        {open && !approval && decidable && may(user, "approval.give") && barred ? <Note kind="note" title={`You ${partText(mine)}, so you can’t approve this image.`}>{chip.approvers.length > 0 ? `${peopleText(chip.approvers.map((p) => p.name))} can.` : NOBODY_LEFT}</Note> : null}
+        {open && !approval && decidable && may(user, "approval.give") && barred ? <Note kind="note" title={`You ${partText(mine)}, so you can’t approve this image.`}>{chip.approvers.length > 0 ? `${peopleText(chip.approvers.map((p) => p.name))} can.` : "Nobody else may, either."}</Note> : null}
       </div>
       <ReasonDialog open={asked === "send-back"} onClose={() => setAsked(null)} title="Send back to the bench" action="Send back" variant="stop" label="What should be done first?"
         onReason={async (reason) => {
