@@ -49,7 +49,7 @@ export function FindingsHelp() {
       <Part title="How to read this" first>
         <p>When a read is stored, the read check looks at the image by itself, at what else is on record, and at the other reads of the chip. What it finds is a sentence and an advice. “Looks like” means that it is a guess from the bytes; the electrical cause is for you to find. Each finding has one of three weights:</p>
         <div>{SEVERITIES.map((severity) => <FindingLine key={severity} kind={SEVERITY[severity].mark}><b>{SEVERITY[severity].word}.</b> {SEVERITY[severity].means}</FindingLine>)}</div>
-        <p>The thresholds were set on real firmware images, so that sound ones raise no alarm. No finding is no proof either: see <See topic="limits" at="equal">what equal reads do not prove</See>.</p>
+        <p>The thresholds were set on real firmware images, so that sound ones raise no alarm. The causes and the steps at the bench are common practice, written down without a source. No finding is no proof either: see <See topic="limits" at="equal">what equal reads do not prove</See>.</p>
       </Part>
       <Section title="All findings" note="In order of what they look at.">
         <div className="grid gap-4">
