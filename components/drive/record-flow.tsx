@@ -38,11 +38,24 @@ function titleOf(step: Step, drive: DriveView | null): { title: string; descript
 export function RecordFlow({ start, drive: given, caseId, userId, isLead, proposed = {}, onClose }: Given) {
   const router = useRouter();
   // `turn` counts the forms, so that another chip of the same board begins empty
-  const [{ step, drive, turn }, setAt] = useState({ step: start, drive: given, turn: 0 });
+  const [{ step, drive, turn, fresh }, setAt] = useState({ step: start, drive: given, turn: 0, fresh: 0 });
   const frame = useRef<HTMLDivElement>(null);
+  const typed = useRef(false);
+  const [driveId] = useState(given?.id ?? null);
+  // the page may be older than what was saved a moment ago: a donor's chip would find no original to stand for. A form
+  // in which nobody has typed yet begins again with what is so now.
   useEffect(() => {
-    if (turn > 0) frame.current?.querySelector<HTMLElement>("input, select, textarea")?.focus();
-  }, [turn]);
+    if (driveId === null) return;
+    let gone = false;
+    void backgroundFetcher<DriveView>(`/api/drives/${driveId}`).then((now) => {
+      if (gone) return;
+      setAt((at) => (at.turn > 0 || JSON.stringify(now.boards) === JSON.stringify(at.drive?.boards) ? at : { ...at, drive: now, fresh: typed.current ? at.fresh : at.fresh + 1 }));
+    }, () => undefined);
+    return () => { gone = true; };
+  }, [driveId]);
+  useEffect(() => {
+    if (turn > 0 || fresh > 0) frame.current?.querySelector<HTMLElement>("input, select, textarea")?.focus();
+  }, [turn, fresh]);
 
   function close() {
     // what was saved so far shows, also after "Leave it"
@@ -53,7 +66,7 @@ export function RecordFlow({ start, drive: given, caseId, userId, isLead, propos
     if (end !== "close") {
       const now = await backgroundFetcher<DriveView>(`/api/drives/${driveId}`);
       const next = end === "another" ? step : nextStep(now);
-      if (next) return setAt({ step: next, drive: now, turn: turn + 1 });
+      if (next) return setAt({ step: next, drive: now, turn: turn + 1, fresh });
     }
     router.refresh();
     onClose();
@@ -64,7 +77,7 @@ export function RecordFlow({ start, drive: given, caseId, userId, isLead, propos
   const board = step.kind === "chip" && drive ? boardOf(drive, step.boardId) : null;
   return (
     <Dialog open onOpenChange={(next) => { if (!next) close(); }} {...titleOf(step, drive)}>
-      <div ref={frame} key={turn}>
+      <div ref={frame} key={`${turn}.${fresh}`} onInput={() => { typed.current = true; }}>
         {step.kind === "drive" ? <DriveStep {...shared} caseId={caseId} proposed={label} onSaved={(id, goOn) => saved(id, goOn ? "go-on" : "close")} /> : null}
         {step.kind === "board" && drive ? <BoardStep {...shared} drive={drive} role={step.role} isLead={isLead} proposed={{ ...(boardNumber ? { boardNumber } : {}), ...(revision ? { revision } : {}) }} onSaved={(goOn) => saved(drive.id, goOn ? "go-on" : "close")} /> : null}
         {board && drive ? <ChipStep {...shared} drive={drive} board={board} onSaved={(end) => saved(drive.id, end)} /> : null}
