@@ -4,6 +4,19 @@ import { Dialog as Radix } from "radix-ui";
 import { useRef, type ReactNode } from "react";
 import { Icon } from "./icon";
 
+const REFRESH_MS = 10_000;
+
+/** The change that was made may take away the button that asked for it, once the page has been read anew: then the page has the focus. */
+function staysOnPage(target: HTMLElement) {
+  const watch = new MutationObserver(() => {
+    if (target.isConnected && !target.matches(":disabled")) return;
+    watch.disconnect();
+    if (document.activeElement === document.body || document.activeElement === target) document.getElementById("main")?.focus({ preventScroll: true });
+  });
+  watch.observe(document.body, { childList: true, subtree: true, attributeFilter: ["disabled"] });
+  setTimeout(() => watch.disconnect(), REFRESH_MS);
+}
+
 /** Asks something first. Not for anything that needs the strips in view. Put the buttons last among the children. */
 export function Dialog({ open, onOpenChange, title, description, children }: {
   open: boolean;
@@ -24,7 +37,9 @@ export function Dialog({ open, onOpenChange, title, description, children }: {
   function back(event: Event) {
     event.preventDefault();
     const target = before.current?.isConnected ? before.current : document.getElementById("main");
-    if (target instanceof HTMLElement) target.focus({ preventScroll: true });
+    if (!(target instanceof HTMLElement)) return;
+    target.focus({ preventScroll: true });
+    staysOnPage(target);
   }
   return (
     <Radix.Root open={open} onOpenChange={onOpenChange}>
