@@ -19,7 +19,7 @@ const GROUPS: readonly { key: string; label: string; takes: RegExp }[] = [
   { key: "reads", label: "Reads", takes: /^(read|composite)\./ },
   { key: "approvals", label: "Approvals", takes: /^approval\./ },
   { key: "transfers", label: "Transfers and read-backs", takes: /^(transfer|readback|start-up)\./ },
-  { key: "images", label: "Stored images", takes: /^images?\.(found|second|checked)/ },
+  { key: "images", label: "Stored images", takes: /^images?\.(found|second|checked|erased)/ },
   { key: "outside", label: "Hand-outs, bundles, summaries", takes: /^(image\.handed-out|bundle\.|summary\.|share\.)/ },
   { key: "items", label: "Hand-overs of items", takes: /^item\./ },
   { key: "accounts", label: "Accounts and tokens", takes: /^(user|token|sign-in)\./ },
