@@ -108,7 +108,7 @@ export const ACTIONS = {
   "item.received": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, condition: words, sealNumber: optional, confirmation: optional },
     (f) => `${f.to.person} confirmed having ${f.item.name} at ${f.to.place}${f.confirmation ? `: ${f.confirmation}` : ""}`),
   "item.not-received": spec({ handOver: uuid, item: z.object({ type: z.enum(ITEM_TYPES), id: uuid, name: words }), from: party, to: party, reason: words },
-    (f) => `${f.item.name} did not go to ${f.to.person}; it is still with ${f.from.person}, ${f.from.place}: ${f.reason}`, "differs"),
+    (f) => `${f.item.name.charAt(0).toUpperCase()}${f.item.name.slice(1)} did not go to ${f.to.person}; it is still with ${f.from.person}, ${f.from.place}: ${f.reason}`, "differs"),
   "request.received": spec({ caseRef: words, request: uuid, damage: words, consents: z.array(words), photos: z.int() }, (f) => `Received the request for case ${f.caseRef}: ${f.damage}`),
   "request.deletion-asked": spec({ caseRef: words, request: uuid }, (f) => `The customer of case ${f.caseRef} asked for deletion`, "differs"),
   "request.deletion-answered": spec({ caseRef: words, request: uuid, answer: words }, (f) => `Answered the customer of case ${f.caseRef}, who asked for deletion: ${f.answer}`),
