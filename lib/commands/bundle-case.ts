@@ -25,6 +25,8 @@ export interface CaseRecord {
   images: BundleImage[];
   /** photos and documents, as they came */
   photos: BundleImage[];
+  /** how many files were erased before */
+  erased: number;
   /** false when any approval of the case was given without it */
   twoPersonRule: boolean;
 }
@@ -71,7 +73,9 @@ export async function recordOfCase(tx: Transaction, found: Case, drives: Drive[]
     })),
     photos: photos.ofCase,
   };
-  return { record, images, photos: photos.files, twoPersonRule: rows.approvals.every((a) => a.twoPersonRule) };
+  const gone = reads.flatMap((row) => [row.sha256.toString("hex"), ...besides(row).map((one) => one.sha256)]).filter((digest) => rows.erased.has(digest));
+  const erased = gone.length + [...photos.ofCase, ...[...photos.ofDrive.values()].flat()].filter((photo) => photo.erased).length;
+  return { record, images, photos: photos.files, erased, twoPersonRule: rows.approvals.every((a) => a.twoPersonRule) };
 }
 
 /** What is kept beside a read's image: the text it came as, the report of the vote. */

@@ -28,6 +28,8 @@ export interface BundlePlan {
   images: BundleImage[];
   /** photos and documents, as they came */
   photos: BundleImage[];
+  /** how many files of the case were erased before */
+  erased: number;
   twoPersonRule: boolean;
   /** the key that signs the lists: the newest one that its workshop-keys.jsonl introduces */
   logKeyId: string;
@@ -67,14 +69,14 @@ export async function startBundle(actor: Actor, caseId: string): Promise<BundleP
       const { at } = await lockChain(tx, id);
       if (at > madeAt) madeAt = at;
     }
-    const { record, images, photos, twoPersonRule } = await recordOfCase(tx, found, drives, heads);
+    const { record, images, photos, erased, twoPersonRule } = await recordOfCase(tx, found, drives, heads);
     const workshop = env().workshop;
     const policy = await currentPolicy(tx);
     const seal = await sealOfBundle(tx, actor, drives.map((drive) => drive.id));
     const keys = await CustodyHead.findByPk(WORKSHOP_CHAIN, { transaction: tx });
     const caseJson = `${JSON.stringify({ format: "twinread-case/1", workshop, madeAt, policy, ...record }, null, 2)}\n`;
     return {
-      caseId, ref: found.ref, workshop, madeAt, workshopSeq: keys?.seq ?? 0, images, photos, seal, logKeyId: logKey().keyId, twoPersonRule: twoPersonRule && policy.twoPersonRule,
+      caseId, ref: found.ref, workshop, madeAt, workshopSeq: keys?.seq ?? 0, images, photos, erased, seal, logKeyId: logKey().keyId, twoPersonRule: twoPersonRule && policy.twoPersonRule,
       drives: drives.map((drive, i) => ({ number: i + 1, id: drive.id, head: heads.get(drive.id)! })),
       caseJson, drawing: await drawingOf(tx, JSON.parse(caseJson) as ReportCase, policy),
     };

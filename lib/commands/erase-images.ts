@@ -63,6 +63,9 @@ function checkTyped(ref: string, typed: string): void {
   throw new AppError("does-not-fit", detail, { errors: [{ path: "caseRef", message: detail }] });
 }
 
+/** The reason in the log of a case that was erased before and shared the bytes. */
+const SHARED = "The images of this case were erased before. These bytes stayed for another case, and that one is erased now, too.";
+
 /** Every log that has to speak of it: those of this case, and of cases erased before that used the same bytes. */
 const chainsOf = (items: readonly ErasureItem[]) => items.flatMap((item) => item.uses.map((use) => use.driveId ?? WORKSHOP_CHAIN));
 
@@ -84,7 +87,10 @@ async function erase(tx: Transaction, actor: Actor, caseId: string, reason: stri
     await Image.update({ state: "erased", erasedAt: at, erasedCause: cause }, { where: { sha256: Buffer.from(item.sha256, "hex") }, transaction: tx });
     for (const chain of [...new Set(chainsOf([item]))].sort()) {
       const names = item.uses.filter((use) => (use.driveId ?? WORKSHOP_CHAIN) === chain).map((use) => use.name);
-      await appendEntry(tx, chain, actor, "image.erased", { type: "image", id: chain }, { sha256: item.sha256, sizeBytes: item.sizeBytes, names, cause, reason, erasure: id });
+      await appendEntry(tx, chain, actor, "image.erased", { type: "image", id: chain }, {
+        // what was typed about this case is nobody's business in another case's log
+        sha256: item.sha256, sizeBytes: item.sizeBytes, names, cause, reason: chains.includes(chain) ? reason : SHARED, erasure: id,
+      });
     }
   }
   const [photos, bytes] = [goes.filter((item) => item.photo).length, goes.reduce((sum, item) => sum + item.sizeBytes, 0)];

@@ -113,6 +113,8 @@ export interface ReadmeFacts {
   composites: readonly string[];
   /** number of the seal that was made when the bundle was started */
   seal: number;
+  /** how many files of the case were erased before: images of reads and what is kept beside them, photos */
+  erased?: number;
 }
 
 /** What lies beside the image of a composite: who voted what. Instead of the image's ".bin". */
@@ -138,7 +140,17 @@ repeats, not what is true.
 `;
 }
 
-export function readmeTxt({ ref, workshop, madeAt, drives, images, twoPersonRule, composites, seal }: ReadmeFacts): string {
+function erasedText(erased: number): string {
+  if (erased === 0) return "";
+  return `
+ERASED
+${erased === 1 ? "One file of this case was" : `${erased} files of this case were`} erased before this bundle was made: no longer stored, so
+not here. The log says of each when, by whom and why (image.erased), data/case.json
+names ${erased === 1 ? "it" : "them"} with size and digest, and check.sh misses none that the log does not tell of.
+`;
+}
+
+export function readmeTxt({ ref, workshop, madeAt, drives, images, twoPersonRule, composites, seal, erased = 0 }: ReadmeFacts): string {
   return `Case ${ref}, ${workshop}
 Made ${madeAt}
 
@@ -146,7 +158,7 @@ WHAT THIS IS
 Everything that was kept of one case: ${countOf(images, "chip image")} of ${countOf(drives, "drive")}, as they
 were read, the custody log of each drive, and what is needed to check both without
 the program that made them. The folder is a BagIt bag (RFC 8493).
-${compositeText(composites)}
+${compositeText(composites)}${erasedText(erased)}
   data/case.json                the case as recorded, original file names included
   data/report.pdf               the case for reading: people, boards, chips, every read
                                 with digests and findings, approvals, transfers, log

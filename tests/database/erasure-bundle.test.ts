@@ -131,6 +131,7 @@ describe("the bundle of an erased case", () => {
     expect(record.imagesErasedAt).toMatch(/^20/);
     expect(record.drives[0].boards[0].chips[0].reads).toMatchObject([{ sha256: sha256(image), erased: { cause: "asked-for" } }, { sha256: sha256(other), erased: { cause: "asked-for" } }]);
     expect(record.drives[0].photos).toMatchObject([{ file: null, erased: { cause: "asked-for" } }]);
+    expect(readFileSync(path.join(bag, "README.txt"), "utf8")).toContain("3 files of this case were erased before this bundle was made");
     const report = (await run("pdftotext", ["-layout", path.join(bag, "data/report.pdf"), "-"])).stdout.replace(/\s+/g, " ");
     expect(report).toContain("at the customer’s wish. The image is not in this bundle");
   });

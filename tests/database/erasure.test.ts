@@ -222,6 +222,9 @@ describe("an erased case", () => {
     expect((await rowOf(donor)).state).toBe("erased");
     expect(existsSync(fileOf(donor))).toBe(false);
     for (const { chip } of [bench, other]) expect((await logged(chip.driveId, "image.erased")).map((facts) => facts.sha256)).toContain(sha256(donor));
+    // what was typed about one case stays out of the other's log
+    expect((await logged(bench.chip.driveId, "image.erased")).at(-1)!.reason).toContain("These bytes stayed for another case");
+    expect(JSON.stringify(await logOf(bench.chip.driveId))).not.toContain(other.chip.ref);
     expect(await damageNow()).toEqual([]);
   });
 
