@@ -447,6 +447,8 @@ export interface CaseRow {
   /** calendar day; null while they are stored */
   erasedOn: string | null;
   chips: { state: ChipStateCode; label: string; designator: string }[];
+  /** a board of the case keeps its data inside the controller: there is no chip to move */
+  noChipToMove: boolean;
 }
 
 export interface BenchRow {

@@ -18,7 +18,7 @@ const PHONE = { customer: "bare l-top", damage: "bare l-full", drives: "bare l-r
 function Chips({ row }: { row: CaseRow }) {
   if (row.state === "closed") return <span className="text-ink-2">Closed{row.erasedOn ? <span className="block text-t2">Images erased on {dueText(row.erasedOn)} {row.erasedOn.slice(0, 4)}</span> : row.eraseOn ? <span className="block text-t2">Images due for erasure on {dueText(row.eraseOn)} {row.eraseOn.slice(0, 4)}</span> : null}</span>;
   if (row.state === "requested") return <FindingLine kind="wait">Requested, parcel not here yet</FindingLine>;
-  if (row.chips.length === 0) return <span className="text-ink-3">No chip recorded yet</span>;
+  if (row.chips.length === 0) return <span className="text-ink-3">{row.noChipToMove ? "No chip to move" : "No chip recorded yet"}</span>;
   return <>{row.chips.map((chip, i) => <FindingLine key={i} kind={stateMark(chip.state)}><span className="font-mono">{chip.designator}</span> {chip.label}</FindingLine>)}</>;
 }
 

@@ -7,7 +7,7 @@ import type { Actor } from "@/lib/core/words";
 import { env } from "@/lib/env";
 import type { CaseListInput } from "@/lib/schemas/case";
 import type { CaseRow, CaseState, CaseView, HoldView, ListView } from "@/lib/views";
-import { Case, CustodyHead, Customer, Drive, Share } from "@/models";
+import { Board, Case, CustodyHead, Customer, Drive, Share } from "@/models";
 import { boardViews } from "./boards";
 import { driveFactsView, warningsOf } from "./drives";
 import { casesDue } from "./erasure";
@@ -65,13 +65,15 @@ export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
   const customers = new Map((await Customer.findAll({ where: { id: rows.map((r) => r.customerId) } })).map((c) => [c.id, c]));
   const drives = await Drive.findAll({ where: { caseId: rows.map((r) => r.id) }, order: ["position"] });
   const { records } = await chipRecords(drives.map((d) => d.id));
+  const inside = await Board.findAll({ where: { driveId: drives.map((d) => d.id), role: "original", dataInController: true }, attributes: ["driveId"] });
+  const noChip = new Set(inside.map((board) => drives.find((d) => d.id === board.driveId)?.caseId));
   const policy = await currentPolicy();
   const states = await Promise.all(records.filter((r) => r.chip.needsTransfer).map(async (record) => ({ caseId: record.case.id, designator: record.chip.designator, ...(await chipState(record, policy)) })));
   return rows.map((row) => ({
     id: row.id, ref: row.ref, customerName: customers.get(row.customerId)?.name ?? "", damage: row.damage, dueOn: row.dueOn ?? null,
     partNumbers: drives.filter((d) => d.caseId === row.id).map((d) => d.partNumber ?? d.model ?? d.serial).join(", "),
     receivedAt: row.receivedAt?.toISOString() ?? null, requestedAt: row.requestedAt?.toISOString() ?? null, state: caseState(row), eraseOn: dueDay({ eraseOn: row.eraseOn ?? null, keptUntil: row.keptUntil ?? null }), erasedOn: row.erasedAt ? dayIn(env().timeZone, row.erasedAt) : null,
-    chips: states.filter((s) => s.caseId === row.id).map(({ state, label, designator }) => ({ state, label, designator })),
+    chips: states.filter((s) => s.caseId === row.id).map(({ state, label, designator }) => ({ state, label, designator })), noChipToMove: noChip.has(row.id),
   }));
 }
 

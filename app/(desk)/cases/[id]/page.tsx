@@ -32,8 +32,15 @@ import { policyView } from "@/lib/queries/policy";
 import { receiptView } from "@/lib/queries/receipts";
 import { requestSection } from "@/lib/queries/requests";
 import { dayIn } from "@/lib/queries/workshop-day";
+import type { CaseState } from "@/lib/views";
 
 export const metadata: Metadata = { title: "Case" };
+
+const WITHOUT_DRIVE: Record<CaseState, string> = {
+  requested: "Receive the parcel first; the drive that is in it is recorded then.",
+  open: "Type what its label says. An external drive may show only a part number on the enclosure: that is enough.",
+  closed: "The case was closed before a drive was recorded.",
+};
 
 export default async function CasePage({ params, searchParams }: { params: Promise<{ id: string }>; searchParams: Promise<Record<string, string | string[] | undefined>> }) {
   const { actor, session } = await signedIn();
@@ -59,7 +66,7 @@ export default async function CasePage({ params, searchParams }: { params: Promi
         <Ticket view={view} timeZone={timeZone} today={dayIn(timeZone, now)} />
         {view.state === "requested" ? parcel : null}
         {view.drives.map((drive) => <DriveBlock key={drive.id} drive={drive} policy={policy} user={user} open={view.state === "open"} />)}
-        {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive {...drive} lead /> : null}>Type what its label says. An external drive may show only a part number on the enclosure: that is enough.</Empty></div> : null}
+        {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive {...drive} lead /> : null}>{WITHOUT_DRIVE[view.state]}</Empty></div> : null}
         {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive {...drive} /></div> : null}
         <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} leads={leads} mailStays={mailStaysHere()} tests={<StartUpSteps closing={closing} user={user} leads={leads} />} end={<ReturnSteps view={view} closing={closing} user={user} leads={leads} />} /></Section>
         <ClosingSection caseId={id} caseRef={view.ref} closing={closing} releases={may(actor, "case.release")} timeZone={timeZone} />
