@@ -1,0 +1,6 @@
+export interface ListView<T> {
+  items: T[];
+  total: number;
+  page: number;
+  pageSize: number;
+}
