@@ -23,12 +23,13 @@ ${f.kept === 1 ? "It is" : "They are"} no longer kept for your case.
 `;
   return `Hello,
 
-on ${f.day} we erased what we kept for case ${f.caseRef}
+on ${f.day} we erased the images that we kept for case ${f.caseRef}
 ${f.cause === "asked-for" ? "as you asked" : "because its time was over"}: ${[...(f.images > 0 || f.photos === 0 ? [`${countOf(f.images, "image")} of chips`] : []), ...(f.photos > 0 ? [`${f.photos} ${f.photos === 1 ? "photo or document" : "photos and documents"}`] : [])].join(", ")}.
 They can't be brought back.
 ${kept}
-What stays is the log of every step with the check numbers (SHA-256) of the
-images. Your name is not in it, and no image can be made from it.
+What stays is what you told us when you asked for the work, and the log of every
+step with the check numbers (SHA-256) of the images. Your name is not in the log,
+and no image can be made from it.
 
 This does not reach what left our store before: the chips on your boards, files
 that somebody took with them, and copies in our backups until these run out.
