@@ -30,7 +30,7 @@ export interface Erased {
 
 export interface EraseOptions {
   /** called before each step, by its name: tests end the work there as a crash would */
-  at?: (step: "entered" | "committed" | "removed") => void;
+  at?: (step: "entered" | "committed" | "removed") => void | Promise<void>;
 }
 
 /**
@@ -45,13 +45,13 @@ export async function eraseImages(actor: Actor, caseId: string, input: ErasureIn
   const erased = await inTransaction(async (tx) => {
     const { answer, goes } = await erase(tx, actor, caseId, input.reason);
     digests = goes.map((item) => item.sha256);
-    at?.("entered");
+    await at?.("entered");
     return answer;
   });
-  at?.("committed");
+  await at?.("committed");
   for (const sha256 of digests) {
     await removeErased(sha256).catch((error: unknown) => console.error(`the file of the erased image ${sha256} is still there and is taken away at the next start:`, (error as Error).message));
-    at?.("removed");
+    await at?.("removed");
   }
   return erased;
 }

@@ -292,6 +292,25 @@ describe("at once", () => {
     expect(await Erasure.count({ where: { caseId: bench.chip.caseId } })).toBe(1);
   });
 
+  it("an upload that found the bytes stored is refused when they go before its row is written, and goes through when sent again", async () => {
+    const bench = await makeClosed();
+    const next = await makeChip(bench.technician);
+    let upload: Promise<unknown> = Promise.resolve();
+    await erase(bench, {
+      at: async (step) => {
+        if (step !== "entered") return;
+        // it sees the image as stored, and waits for its row at the end
+        upload = refusal(store(bench.technician, next.chipId, "before", bench.image));
+        await new Promise((done) => setTimeout(done, 2_000));
+      },
+    });
+    expect(await upload).toMatchObject({ status: 409, detail: expect.stringContaining("erased at this very moment") });
+    const reads = async () => (await view({ technician: bench.technician, chip: next })).reads;
+    expect(await reads()).toEqual([]);
+    await store(bench.technician, next.chipId, "before", bench.image);
+    expect([(await reads()).length, existsSync(fileOf(bench.image)), (await rowOf(bench.image)).state]).toEqual([1, true, "sound"]);
+  });
+
   it("an upload of the same bytes either keeps them or is stored again: no read is without its image", async () => {
     for (let i = 0; i < 4; i += 1) {
       const bench = await makeClosed();
