@@ -4,14 +4,24 @@ import { defineConfig } from "@playwright/test";
 const port = process.env.E2E_PORT ?? "3210";
 const report = process.env.E2E_REPORT;
 
+const PAGES = "access.spec.ts";
+const ALONE = ["faults-*.spec.ts", "api-looking.spec.ts"];
+
 export default defineConfig({
   testDir: "tests/e2e",
   outputDir: "test-results",
-  workers: 1,
+  workers: 2,
   retries: 0,
   timeout: 60_000,
   expect: { timeout: 10_000 },
   forbidOnly: true,
+  // Pages are looked at while others work, one test at a time each; what stops the app, damages the store or counts every
+  // row of the database comes when nobody else is there.
+  projects: [
+    { name: "work", testIgnore: [PAGES, ...ALONE], workers: 1 },
+    { name: "pages", testMatch: PAGES, workers: 1 },
+    { name: "alone", testMatch: ALONE, workers: 1, dependencies: ["work", "pages"] },
+  ],
   reporter: report ? [["list"], ["json", { outputFile: report }]] : [["list"]],
   use: {
     baseURL: `http://127.0.0.1:${port}`,

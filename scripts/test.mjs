@@ -48,10 +48,13 @@ async function run() {
   }
   const results = [];
   const browserOnly = option("browser");
-  // lint keeps one core busy, the tests on one database hardly more than another
-  if (browserOnly === null) results.push(await steps.typeCheck(), ...(await Promise.all([steps.lint(), steps.vitest()])));
-  const built = await steps.build();
-  results.push(built);
+  let built = null;
+  if (browserOnly === null) {
+    results.push(await steps.typeCheck());
+    // the tests on one database leave a core free for lint and build
+    const beside = async () => [await steps.lint(), (built = await steps.build())];
+    results.push(...(await Promise.all([steps.vitest(), beside()])).flat());
+  } else results.push((built = await steps.build()));
   if (built.failed === 0) results.push(await steps.browser({ filter: browserOnly }));
   else {
     say("The browser tests need the build: they were not run, and count as one that did not pass.");
