@@ -36,7 +36,7 @@ export function CaseList({ list, sort, order, q, state, timeZone, today, records
 }) {
   const columns = useMemo(() => column.columns([
     column.accessor("ref", { id: "ref", header: "Case", cell: ({ row }) => <Link className="font-mono" href={`/cases/${row.original.id}`}>{row.original.ref}</Link> }),
-    column.accessor("customerName", { id: "customer", header: "Customer" }),
+    column.accessor("customerName", { id: "customer", header: "Customer", cell: ({ row }) => <span className="[overflow-wrap:anywhere]">{row.original.customerName}</span> }),
     column.accessor("partNumbers", { id: "drives", header: "Drives", enableSorting: false, cell: ({ row }) => <span className="font-mono [overflow-wrap:anywhere]">{row.original.partNumbers}</span> }),
     column.accessor("damage", { id: "damage", header: "Damage", enableSorting: false, cell: ({ row }) => <span className="line-clamp-2 max-w-[36ch]">{row.original.damage}</span> }),
     column.accessor("dueOn", {

@@ -11,8 +11,8 @@ export function FindCases({ cases }: { cases: readonly CaseRow[] }) {
         {cases.map((row) => (
           <tr key={row.id}>
             <th scope="row"><Link href={`/cases/${row.id}`}>{row.ref}</Link>{row.state === "closed" ? <span className="font-normal text-ink-2"> closed</span> : null}</th>
-            <td>{row.customerName}</td>
-            <td data-l="Drives" className="font-mono">{row.partNumbers || "none yet"}</td>
+            <td className="[overflow-wrap:anywhere]">{row.customerName}</td>
+            <td data-l="Drives" className="font-mono [overflow-wrap:anywhere]">{row.partNumbers || "none yet"}</td>
             <td>{row.chips.length > 0 ? row.chips.map((c) => `${c.designator}: ${c.label}`).join(", ") : "none yet"}</td>
             <td data-l="Due">{row.dueOn ? dueText(row.dueOn) : "no date"}</td>
           </tr>

@@ -14,9 +14,9 @@ export function ToReceiveTable({ rows, timeZone }: { rows: readonly ToReceiveRow
         {rows.map((row) => (
           <tr key={row.caseId}>
             <th scope="row"><Link href={`/cases/${row.caseId}`} className="font-mono">{row.caseRef}</Link></th>
-            <td>{row.customerName}</td>
-            <td className="font-mono">{row.partNumber ?? "not given"}</td>
-            <td className="max-w-[44ch]">{row.damage.length > 120 ? `${row.damage.slice(0, 120).trimEnd()} …` : row.damage}</td>
+            <td className="[overflow-wrap:anywhere]">{row.customerName}</td>
+            <td className="font-mono [overflow-wrap:anywhere]">{row.partNumber ?? "not given"}</td>
+            <td className="max-w-[44ch] [overflow-wrap:anywhere]">{row.damage.length > 120 ? `${row.damage.slice(0, 120).trimEnd()} …` : row.damage}</td>
             <td className="whitespace-nowrap">{momentText(row.requestedAt, timeZone)}</td>
             <td className="l-row"><ButtonLink size="small" href={`/receive/${row.caseId}`} aria-label={`Receive case ${row.caseRef}`}>Receive</ButtonLink></td>
           </tr>

@@ -1,16 +1,15 @@
 import { execFileSync } from "node:child_process";
 import { readdirSync, writeFileSync } from "node:fs";
 import path from "node:path";
-import { AxeBuilder } from "@axe-core/playwright";
 import { expect, type Page, test } from "@playwright/test";
 import sharp from "sharp";
 import { checkCharacter } from "@/lib/core/case-number";
+import { expectAccessible } from "./support/axe";
 import { openDesk, signIn } from "./support/desk";
 import { newFolder } from "./support/files";
 import { mailsTo } from "./support/mails";
 import { fillRequest, sendRequest } from "./support/request-steps";
 
-const RULES = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa", "best-practice"];
 const pictures = process.env.REQUEST_PICTURES;
 
 /** Nothing axe finds in either theme, nothing wider than the window at any width; pictures where they are asked for. */
@@ -19,8 +18,7 @@ async function look(page: Page, name: string): Promise<void> {
     await page.setViewportSize({ width, height: 900 });
     await page.emulateMedia({ colorScheme: theme });
     expect(await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth), `${name} at ${width}`).toBeLessThanOrEqual(0);
-    const { violations } = await new AxeBuilder({ page }).withTags(RULES).analyze();
-    expect(violations.flatMap(({ id, nodes }) => nodes.map((node) => `${id}: ${node.html}`)), `${name}, ${width} px, ${theme}`).toEqual([]);
+    await expectAccessible(page, `${name}, ${width} px, ${theme}`, { theme });
     if (pictures) await page.screenshot({ path: path.join(pictures, `${name}-${width}-${theme}.png`), fullPage: true });
   }
   await page.setViewportSize({ width: 1440, height: 1000 });
