@@ -109,15 +109,21 @@ export interface ImageCounts {
   hours: number;
 }
 
-export interface AuditSealRow {
+/** A seal in a list: what it states and why it was made. */
+export interface SealRow {
   number: number;
+  /** RFC 3339 UTC, as the seal itself says */
   at: string;
   cause: SealCause;
   chains: number;
   root: string;
   prev: string;
+  /** SHA-256 of the seal's text */
   sha256: string;
   keyId: string;
+}
+
+export interface AuditSealRow extends SealRow {
   /** what is wrong with it or with its link to the one before; empty when nothing is */
   faults: string[];
   /** mails to auditors that carry it: sent, and still on their way or given up */

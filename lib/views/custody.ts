@@ -1,5 +1,6 @@
+import type { SealRow } from "@/lib/core/audit-rows";
 import type { SealProof } from "@/lib/core/seal";
-import type { KeyPurpose, SealCause } from "@/lib/core/words";
+import type { KeyPurpose } from "@/lib/core/words";
 import type { PersonView } from "./person";
 
 export interface CustodyEntryView {
@@ -35,19 +36,7 @@ export interface CustodyCheckView {
   findings: { seq: number | null; problem: string; expected?: string; found?: string }[];
 }
 
-/** A seal in the list: what it states and why it was made. */
-export interface SealRow {
-  number: number;
-  /** RFC 3339 UTC, as the seal itself says */
-  at: string;
-  cause: SealCause;
-  chains: number;
-  root: string;
-  prev: string;
-  /** SHA-256 of the seal's text */
-  sha256: string;
-  keyId: string;
-}
+export type { SealRow };
 
 export interface SealView extends SealRow {
   text: string;
