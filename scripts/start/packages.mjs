@@ -41,10 +41,12 @@ const THERE = {
   "poppler-utils": program("pdftotext"),
   qpdf: program("qpdf"),
   "zbar-tools": program("zbarimg"),
+  curl: program("curl"),
+  python3: program("python3"),
 };
 
 export const DATABASE_PACKAGES = ["mariadb-server-core", "mariadb-client"];
-export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord", "ent", "ipxe-qemu", "diffutils", "poppler-utils", "qpdf", "zbar-tools"];
+export const TEST_PACKAGES = [...DATABASE_PACKAGES, "chromium", "seabios", "ovmf", "unzip", "openssl", "zip", "binutils", "srecord", "ent", "ipxe-qemu", "diffutils", "poppler-utils", "qpdf", "zbar-tools", "curl", "python3"];
 
 export const missingPackages = (wanted) => wanted.filter((name) => !THERE[name]());
 
