@@ -1,3 +1,5 @@
+import { joined as joinedBytes } from "@/lib/core/bytes";
+
 /** Small made-up images for the examples of the findings page: the same every time, of no real chip. */
 export const EXAMPLE_BYTES = 8192;
 
@@ -31,15 +33,7 @@ export function edited(image: Uint8Array, edit: (bytes: Uint8Array) => void): Ui
   return bytes;
 }
 
-export function joined(...parts: Uint8Array[]): Uint8Array {
-  const out = new Uint8Array(parts.reduce((sum, part) => sum + part.length, 0));
-  let at = 0;
-  for (const part of parts) {
-    out.set(part, at);
-    at += part.length;
-  }
-  return out;
-}
+export const joined = (...parts: Uint8Array[]): Uint8Array => joinedBytes(parts);
 
 /** From bit `from` on `count` bits are gone; the end is filled with ones. */
 export function bitsLost(image: Uint8Array, from: number, count: number): Uint8Array {

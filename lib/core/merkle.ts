@@ -1,3 +1,5 @@
+import { joined } from "./bytes";
+
 /**
  * The Merkle tree of RFC 9162, section 2.1: a leaf is hashed behind 0x00 and a node behind 0x01, so that neither can
  * stand for the other; the left half of n leaves holds the largest power of two below n. The digest comes in as an
@@ -6,21 +8,11 @@
 export type Sha256 = (bytes: Uint8Array) => Uint8Array;
 
 export function leafHash(data: Uint8Array, sha256: Sha256): Uint8Array {
-  return sha256(joined([0], data));
+  return sha256(joined([[0], data]));
 }
 
 function nodeHash(left: Uint8Array, right: Uint8Array, sha256: Sha256): Uint8Array {
-  return sha256(joined([1], left, right));
-}
-
-function joined(...parts: ArrayLike<number>[]): Uint8Array {
-  const out = new Uint8Array(parts.reduce((sum, part) => sum + part.length, 0));
-  let at = 0;
-  for (const part of parts) {
-    out.set(part, at);
-    at += part.length;
-  }
-  return out;
+  return sha256(joined([[1], left, right]));
 }
 
 /** The largest power of two below `n`, for n of 2 or more. */

@@ -1,3 +1,4 @@
+import { joined } from "../bytes";
 import { toHex } from "../digest";
 import { type BagEntry, EntryFault } from "./bag";
 import { NotVerified, type StepNotes } from "./report";
@@ -59,19 +60,9 @@ export async function readFiles(
       if (!(error instanceof EntryFault)) throw error;
       notes.fault(path, error.message);
     }
-    read.set(path, { sha256: toHex(hash.digest()), sizeBytes, bytes: chunks && joined(chunks, sizeBytes) });
+    read.set(path, { sha256: toHex(hash.digest()), sizeBytes, bytes: chunks && joined(chunks) });
   }
   return read;
-}
-
-function joined(chunks: Uint8Array[], size: number): Uint8Array {
-  const out = new Uint8Array(size);
-  let at = 0;
-  for (const chunk of chunks) {
-    out.set(chunk, at);
-    at += chunk.length;
-  }
-  return out;
 }
 
 /** UTF-8 to the letter; null for a file that isn't there or isn't text. */
