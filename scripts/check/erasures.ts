@@ -3,6 +3,7 @@ import { WORKSHOP_CHAIN } from "@/lib/core/words";
 import { Case, Erasure, Request } from "@/models";
 import type { StoredImage } from "./images";
 import type { Logged, Told } from "./logged";
+import { compare } from "./pairs";
 import type { Places } from "./places";
 import type { Damage } from "./report";
 
@@ -36,12 +37,6 @@ function imagesAgainstLog(images: readonly StoredImage[], places: Places, { eras
       say(`Image ${sha256}`, silent[0]?.driveId ?? null, null, "image-not-in-log", "The image is erased by its row, and no entry of the log says who erased it and why.", { sha256, reads: silent.map((read) => read.name) });
     }
   }
-}
-
-const words = (value: unknown) => (value === null || value === undefined ? "nothing" : String(value));
-
-function compare(pairs: [name: string, log: unknown, row: unknown][], tell: (expected: string, is: string) => void): void {
-  for (const [name, log, row] of pairs) if (words(log) !== words(row)) tell(`${name} ${words(log)}`, `${name} ${words(row)}`);
 }
 
 async function erasuresAgainstLog(tx: Transaction, places: Places, { told }: Logged, say: Say): Promise<void> {

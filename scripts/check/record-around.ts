@@ -1,14 +1,11 @@
 import type { Transaction } from "sequelize";
 import { HandOver, Photo, Share } from "@/models";
 import type { Logged, Told } from "./logged";
+import { compare, type Pair } from "./pairs";
 import type { Places } from "./places";
 import type { Damage } from "./report";
 
-/** name, what the log says, what the row says */
-type Pair = [string, unknown, unknown];
-
 const facts = (told: Told, name: string) => (told.facts[name] ?? {}) as Record<string, unknown>;
-const words = (value: unknown) => (value === null || value === undefined ? "nothing" : String(value));
 
 function photoPairs(told: Told, row: Photo): Pair[] {
   const of = facts(told, "of");
@@ -38,15 +35,15 @@ const sharePairs = (told: Told, row: Share, end: Told | undefined): Pair[] => [
 export async function checkAround(tx: Transaction, places: Places, { told }: Logged): Promise<Damage[]> {
   const found: Damage[] = [];
   const hold = <Row extends { id: string }>(noun: string, rows: Row[], entries: ReadonlyMap<string, Told>, pairsOf: (entry: Told, row: Row) => Pair[]) => {
-    const say = (problem: Damage["problem"], sentence: string, entry: Told | undefined, pair?: Pair) => found.push({
+    const say = (problem: Damage["problem"], sentence: string, entry: Told | undefined, pair: Pick<Damage, "expected" | "found"> = {}) => found.push({
       place: entry ? places.chain(entry.chain) : "No log", seq: entry?.seq ?? null, problem, sentence, chain: entry?.chain ?? null, sha256: null, reads: [],
-      ...(pair ? { expected: `${pair[0]} ${words(pair[1])}`, found: `${pair[0]} ${words(pair[2])}` } : {}),
+      ...pair,
     });
     const here = new Set(rows.map((row) => row.id));
     for (const row of rows) {
       const entry = entries.get(row.id);
       if (!entry) say("thing-not-in-log", `A ${noun} stands in the database that no entry of the log records (${row.id}).`, undefined);
-      else for (const pair of pairsOf(entry, row)) if (words(pair[1]) !== words(pair[2])) say("thing-differs-from-log", `The ${noun}'s row says something else than the log.`, entry, pair);
+      else compare(pairsOf(entry, row), (expected, is) => say("thing-differs-from-log", `The ${noun}'s row says something else than the log.`, entry, { expected, found: is }));
     }
     for (const [id, entry] of entries) if (!here.has(id)) say("thing-missing", `The log records a ${noun}, and it is gone from the database.`, entry);
   };
