@@ -1,6 +1,7 @@
-import { lstat, open, readdir, unlink } from "node:fs/promises";
+import { lstat, readdir, unlink } from "node:fs/promises";
 import path from "node:path";
 import { damagedDir, imagePath, reducedDir } from "./paths";
+import { syncFolder } from "./write-once";
 
 /** Every file that holds bytes of this image: itself, copies that were put aside as damaged, reduced copies of a photo. */
 async function filesOf(dataDir: string, sha256: string): Promise<string[]> {
@@ -26,13 +27,4 @@ export async function removeImage(dataDir: string, sha256: string): Promise<numb
     await syncFolder(path.dirname(file));
   }
   return files.length;
-}
-
-async function syncFolder(dir: string): Promise<void> {
-  const handle = await open(dir, "r");
-  try {
-    await handle.sync();
-  } finally {
-    await handle.close();
-  }
 }

@@ -98,7 +98,7 @@ export async function discard(arrived: Pick<Arrived, "path">): Promise<void> {
   await rm(arrived.path, { force: true });
 }
 
-async function syncFolder(dir: string): Promise<void> {
+export async function syncFolder(dir: string): Promise<void> {
   const handle = await open(dir, "r");
   try {
     await handle.sync();
