@@ -1,7 +1,7 @@
 import { agreement, oddOneOut, type StateRead } from "./agreement";
 import { oneSeatingFinding } from "./findings";
 import {
-  approvedSentence, disagreeSentence, failedSentence, heldSentence, needsReadsSentence, readySentence, unreadSentence,
+  approvedSentence, disagreeSentence, failedSentence, heldSentence, keptSentence, needsReadsSentence, readySentence, unreadSentence,
   verifiedSentence, writtenSentence,
 } from "./state-sentences";
 import type { ChipStateCode, Finding, Policy } from "./words";
@@ -41,6 +41,12 @@ export interface StateFacts {
   worst?: WorstDifference | null;
   /** the donor's side of an approval, where it is known */
   donorSide?: "none" | "unsaved" | "saved";
+  /** a lead was asked to approve and has neither signed nor sent it back */
+  asked?: boolean;
+  /** the chip is kept for reference: no transfer is planned */
+  kept?: boolean;
+  /** the case is closed */
+  closed?: boolean;
 }
 
 export interface DerivedState {
@@ -103,7 +109,7 @@ function standsAgainst(read: StateRead, transfer: StateTransfer): boolean {
   return !transfer.poweredOn || read.findings.some((finding) => finding.severity === "blocks");
 }
 
-function transferState(policy: Policy, sizeBytes: number, transfer: StateTransfer, clearedAnew: boolean): { state: ChipStateCode; sentence: string } {
+function transferState({ policy, sizeBytes, closed }: StateFacts, transfer: StateTransfer, clearedAnew: boolean): { state: ChipStateCode; sentence: string } {
   const against = transfer.readBacks.find((read) => standsAgainst(read, transfer)) ?? null;
   if (!transfer.approvalStands || against) {
     return { state: "failed", sentence: failedSentence(transfer.approvalStands, against, clearedAnew) };
@@ -111,13 +117,13 @@ function transferState(policy: Policy, sizeBytes: number, transfer: StateTransfe
   const equal = transfer.readBacks.filter((read) => read.counted && read.sha256 === transfer.approvedSha256);
   const seatings = new Set(equal.map((read) => read.seating)).size;
   if (equal.length >= policy.readBacks && seatings >= policy.readBackSeatings) {
-    return { state: "verified", sentence: verifiedSentence(equal.length, sizeBytes, transfer.poweredOn) };
+    return { state: "verified", sentence: verifiedSentence(equal.length, sizeBytes, transfer.poweredOn, closed) };
   }
   return { state: "written", sentence: writtenSentence(policy, equal.length, seatings) };
 }
 
 /** The lines from `unread` on: what the reads alone say. An approval is judged by these. */
-export function deriveReadingState(facts: Pick<StateFacts, "policy" | "sizeBytes" | "reads" | "worst" | "donorSide">): DerivedState {
+export function deriveReadingState(facts: Pick<StateFacts, "policy" | "sizeBytes" | "reads" | "worst" | "donorSide" | "asked" | "kept">): DerivedState {
   const { policy, sizeBytes } = facts;
   const reads = facts.reads.filter((read) => read.stage === "before");
   const say = (state: ChipStateCode, sentence: string): DerivedState => ({ state, label: STATE_LABEL[state], sentence });
@@ -132,14 +138,14 @@ export function deriveReadingState(facts: Pick<StateFacts, "policy" | "sizeBytes
     return say("needs-reads", needsReadsSentence(policy, agreeing, seatings));
   }
   if (open.length > 0) return say("held", heldSentence(open, false));
-  return say("ready", readySentence(agreeing, seatings, policy.twoPersonRule, facts.donorSide));
+  return say("ready", facts.kept ? keptSentence(agreeing, seatings) : readySentence(agreeing, seatings, policy.twoPersonRule, facts.donorSide, facts.asked));
 }
 
 /** The state of an original's chip: PRODUCT.md's table, the first line that applies. Nothing types it in. */
 export function deriveChipState(facts: StateFacts): DerivedState {
-  const { policy, sizeBytes, transfer, approval } = facts;
+  const { policy, transfer, approval } = facts;
   if (transfer) {
-    const { state, sentence } = transferState(policy, sizeBytes, transfer, approval !== null);
+    const { state, sentence } = transferState(facts, transfer, approval !== null);
     return { state, label: STATE_LABEL[state], sentence };
   }
   if (approval) return { state: "approved", label: STATE_LABEL.approved, sentence: approvedSentence(policy) };

@@ -8,10 +8,12 @@ import { readName, type Policy } from "./words";
 
 const inSeatings = (n: number) => (n > 1 ? ` in ${n} seatings` : "");
 
-/** `started`: the board has been started on the drive since. */
-export function verifiedSentence(equal: number, sizeBytes: number, started: boolean): string {
+/** `started`: the board has been started on the drive since. `closed`: there is nothing left to do. */
+export function verifiedSentence(equal: number, sizeBytes: number, started: boolean, closed = false): string {
   const all = equal === 1 ? "The read-back equals" : equal === 2 ? "Both read-backs equal" : `All ${equal} read-backs equal`;
-  return `${all} the approved image in all ${countOf(sizeBytes, "byte")}. ${started ? "Pack the donor board with the drive." : "Fit the donor board to the drive and test its start-up."}`;
+  const found = `${all} the approved image in all ${countOf(sizeBytes, "byte")}.`;
+  if (closed) return found;
+  return `${found} ${started ? "Pack the donor board with the drive." : "Fit the donor board to the drive and test its start-up."}`;
 }
 
 export function failedSentence(approvalStands: boolean, against: StateRead | null, clearedAnew: boolean): string {
@@ -68,11 +70,14 @@ export function needsReadsSentence(policy: Policy, agreeing: number, seatings: n
   return `${agreeing} of ${policy.reads} reads, ${seatings} of ${policy.seatings} seatings: ${again}.`;
 }
 
-/** `donor`: what is still to be done on the donor's side before anyone can approve. */
-export function readySentence(agreeing: number, seatings: number, twoPersonRule: boolean, donor: "none" | "unsaved" | "saved" = "saved"): string {
+/** `donor`: what is still to be done on the donor's side before anyone can approve. `asked`: a lead was asked and has not answered. */
+export function readySentence(agreeing: number, seatings: number, twoPersonRule: boolean, donor: "none" | "unsaved" | "saved" = "saved", asked = false): string {
   const who = twoPersonRule ? "a lead who took none of them" : "a lead";
   const agree = `${agreeing} of ${agreeing} reads agree${inSeatings(seatings)}`;
   if (donor === "none") return `${agree}. Record the donor’s chip that is to take the image and save what it holds, then ask ${who} to approve.`;
   if (donor === "unsaved") return `${agree}. Save the donor chip’s own content by two equal reads, then ask ${who} to approve.`;
-  return `${agree}; nothing stands against approval. Ask ${who} to approve.`;
+  return `${agree}; nothing stands against approval. ${asked ? `Approval was asked for: ${who} signs or sends it back.` : `Ask ${who} to approve.`}`;
 }
+
+/** The reads agree and no image is to be written from them. */
+export const keptSentence = (agreeing: number, seatings: number): string => `${agreeing} of ${agreeing} reads agree${inSeatings(seatings)}. Kept for reference: nothing is to be written.`;

@@ -21,6 +21,7 @@ export function stateFacts(record: ChipRecord, policy: Policy, worst: StateFacts
   const behind = latest && record.approvals.find((a) => a.id === latest.approvalId);
   return {
     policy, sizeBytes: record.chip.sizeBytes, reads: record.before.map(stateRead), worst, donorSide: record.donor === null ? "none" : donorContentSaved(record) ? "saved" : "unsaved",
+    asked: record.request !== null && !record.request.sentBackAt, kept: !record.chip.needsTransfer, closed: Boolean(record.case.closedAt),
     approval: record.standing && { sha256: record.standing.sha256.toString("hex"), donorChipId: record.standing.donorChipId },
     transfer: latest && behind ? {
       approvedSha256: behind.sha256.toString("hex"), approvalStands: !behind.revokedAt, poweredOn: record.started.some((at) => at > latest.at),

@@ -144,3 +144,12 @@ it("sends nobody to the lead while the donor's side of an approval is open", () 
   for (const open of ["none", "unsaved"] as const) expect(sentence(open)).not.toContain("nothing stands against approval");
   expect(sentence("saved")).toMatch(/nothing stands against approval\. Ask a lead/);
 });
+
+it("asks for nothing that was asked already, and for no transfer of a chip that is kept or whose case is closed", () => {
+  expect(deriveChipState({ ...facts(), asked: true }).sentence).toMatch(/approval\. Approval was asked for: a lead who took none of them signs or sends it back\.$/);
+  expect(deriveChipState({ ...facts(), kept: true, donorSide: "none" }).sentence).toMatch(/agree in 2 seatings\. Kept for reference: nothing is to be written\.$/);
+  const readBacks = [read({ stage: "after", seating: 1 }), read({ stage: "after", number: 2, seating: 2 })];
+  const transfer = { approvedSha256: readBacks[0].sha256, approvalStands: true, poweredOn: true, readBacks };
+  expect(deriveChipState({ ...facts(), transfer }).sentence).toMatch(/Pack the donor board with the drive\.$/);
+  expect(deriveChipState({ ...facts(), transfer, closed: true }).sentence).toMatch(/bytes\.$/);
+});
