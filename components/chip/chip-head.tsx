@@ -9,7 +9,7 @@ import { dueText } from "@/components/ui/times";
 import { sizeText } from "@/lib/core/quantity";
 import { rangeText } from "@/lib/core/strip";
 import type { ChipView } from "@/lib/views";
-import { kindText, stateMark, supplyText } from "./chip-words";
+import { headState, isKept, kindText, supplyText } from "./chip-words";
 import { Route } from "./route";
 
 /** A chip of eight pins from above; our own drawing, not a photo. */
@@ -40,6 +40,7 @@ function dueWords(dueOn: string, today: string): string {
 
 export function ChipHead({ chip, timeZone, today }: { chip: ChipView; timeZone: string; today: string }) {
   const original = chip.boardRole === "original";
+  const { mark, label } = headState(chip);
   return (
     <BoardPanel label={`Chip ${chip.designator}`}>
       <Crumbs items={[
@@ -66,13 +67,13 @@ export function ChipHead({ chip, timeZone, today }: { chip: ChipView; timeZone: 
           <Fact term={original ? "Donor" : "Original"} mono={Boolean(chip.pair)}>{chip.pair ? `${chip.pair.boardNumber} ${chip.pair.designator}` : "not paired yet"}</Fact>
         </dl>
         <div className="grid justify-items-end gap-0.5 text-right narrow:justify-self-end">
-          <span className="flex items-center gap-[9px] text-t5 font-strong phone:text-t4"><Mark kind={stateMark(chip.state.state)} size={20} /><span className={stateMark(chip.state.state) === "block" ? "text-block" : ""}>{chip.state.label}</span></span>
+          <span className="flex items-center gap-[9px] text-t5 font-strong phone:text-t4"><Mark kind={mark} size={20} /><span className={mark === "block" ? "text-block" : ""}>{label}</span></span>
           {chip.case.dueOn ? <span>{dueWords(chip.case.dueOn.slice(0, 10), today)}</span> : null}
           {original ? null : <span className="text-silk-2">State of the original it is paired with</span>}
           <PrintMenu links={chipPrints(chip.case.id, chip.id, chip.boardRole)} atRight />
         </div>
       </div>
-      <Route chip={chip} timeZone={timeZone} />
+      {isKept(chip) ? null : <Route chip={chip} timeZone={timeZone} />}
     </BoardPanel>
   );
 }

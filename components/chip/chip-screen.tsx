@@ -24,7 +24,7 @@ import { ApprovalSection } from "./approval-section";
 import { ChipHead } from "./chip-head";
 import { ChipVerdict } from "./chip-verdict";
 import { EncryptionNote } from "./encryption-note";
-import { compareHref, nameOf, readBackKey } from "./chip-words";
+import { compareHref, isKept, nameOf, readBackKey } from "./chip-words";
 import { ReadsTable } from "./reads-table";
 import { TransferSection } from "./transfer-section";
 import { SiblingNote } from "./unit-note";
@@ -103,7 +103,7 @@ export function ChipScreen({ chip: given, readBack, session, today, photos }: {
             </Section>
           </div>
         ) : null}
-        {original ? (
+        {original && !isKept(chip) ? (
           <>
             <Section id="approval" title="Approval" note={chip.approval ? `Signed ${momentText(chip.approval.givenAt, timeZone)}.` : "Opens when every line is met."}>
               <ApprovalSection {...shared} />

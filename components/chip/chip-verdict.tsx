@@ -6,7 +6,7 @@ import { Verdict } from "@/components/ui/verdict";
 import { may } from "@/lib/core/policy";
 import type { ChipView, ReadBackView, SessionView } from "@/lib/views";
 import { AgreementMatrix, ReadBackMatrix } from "./agreement-matrix";
-import { compareHref, nameOf, oddReads, verdictMark } from "./chip-words";
+import { compareHref, isKept, nameOf, oddReads, verdictMark } from "./chip-words";
 import { ReadDialogs } from "./read-dialogs";
 
 /** What was found, and the step that leads on: one leading button, at most two more. */
@@ -21,12 +21,18 @@ export function ChipVerdict({ chip, readBack, user, onReadDonor, onChanged }: { 
   const signs = open && may(user, "approval.give") && !(chip.policy.twoPersonRule && chip.reads.some((r) => r.stage === "before" && r.operator.id === user.id));
   const several = chip.reads.filter((r) => r.stage === "before").length > 1;
 
+  // whoever has asked can only wait: nothing leads on
+  const asked = state === "ready" && chip.request && !chip.request.sentBack
+    ? <ButtonLink href="#approval">See who may sign</ButtonLink>
+    : <ButtonLink variant="lead" href="#approval">{state === "ready" ? "Ask for approval" : "See what stands against it"}</ButtonLink>;
+
   const first = () => {
     if (!original) return chip.pair ? <ButtonLink variant="lead" href={`/chips/${chip.pair.id}`}>Open original {chip.pair.designator}</ButtonLink> : null;
-    if (["unread", "needs-reads", "reads-disagree"].includes(state) && bench) return <ButtonLink variant="lead" href="#add">Add a read</ButtonLink>;
+    if (["unread", "needs-reads", "reads-disagree"].includes(state) && bench) return <ButtonLink variant="lead" href="#add">{state === "unread" ? "Add reads" : "Add a read"}</ButtonLink>;
+    if (isKept(chip)) return null;
     if (state === "ready" && bench && !chip.pair) return <ButtonLink variant="lead" href={`/drives/${chip.drive.id}`}>Record the donor’s chip</ButtonLink>;
     if (state === "ready" && bench && !chip.donorSaved) return <Button variant="lead" onClick={onReadDonor}>Save the donor’s content</Button>;
-    if (["ready", "held"].includes(state)) return signs ? <ButtonLink variant="lead" href={`/chips/${chip.id}/decision`}>Open the decision sheet</ButtonLink> : bench ? <ButtonLink variant="lead" href="#approval">{state === "ready" ? "Ask for approval" : "See what stands against it"}</ButtonLink> : null;
+    if (["ready", "held"].includes(state)) return signs ? <ButtonLink variant="lead" href={`/chips/${chip.id}/decision`}>Open the decision sheet</ButtonLink> : bench ? asked : null;
     if ((state === "approved" || state === "failed") && bench) return <ButtonLink variant="lead" href="#transfer">{state === "approved" ? "Write to the donor" : "Write again"}</ButtonLink>;
     if (state === "written" && bench) return <ButtonLink variant="lead" href="#add">Add a read-back</ButtonLink>;
     return state === "verified" ? <ButtonLink variant="lead" href={`/cases/${chip.case.id}`}>Open case {chip.case.ref}</ButtonLink> : null;

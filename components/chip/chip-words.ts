@@ -4,13 +4,22 @@ import { type Bus, type ChipStateCode, type Finding, type Method, readName, type
 import type { ChipSummary, ChipView, ReadBackView, ReadView } from "@/lib/views";
 
 const STATE_MARK: Record<ChipStateCode, MarkKind> = {
-  verified: "done", failed: "block", written: "run", approved: "done", unread: "wait", "reads-disagree": "block",
+  verified: "ok", failed: "block", written: "run", approved: "done", unread: "wait", "reads-disagree": "block",
   held: "block", "needs-reads": "run", ready: "wait",
 };
 
 export function stateMark(state: ChipStateCode): MarkKind {
   return STATE_MARK[state];
 }
+
+/** What the board panel says: a chip that is kept for reference waits for nobody once its reads agree. */
+export function headState(chip: ChipView): { mark: MarkKind; label: string } {
+  if (isKept(chip) && chip.state.state === "ready") return { mark: "ok", label: "Kept for reference" };
+  return { mark: STATE_MARK[chip.state.state], label: chip.state.label };
+}
+
+/** No transfer of this original's chip is planned, and none was made. */
+export const isKept = (chip: ChipView): boolean => chip.boardRole === "original" && !chip.needsTransfer && chip.approvals.length === 0 && chip.transfers.length === 0;
 
 /** The verdict speaks of the reads, not of the work left: agreeing reads are in order although nobody has signed. */
 export function verdictMark(chip: ChipView): MarkKind {

@@ -27,13 +27,14 @@ function steps(chip: ChipView, timeZone: string): Step[] {
     { name: approved ? "Approved" : "Approve", note: approved ? momentText(approved.givenAt, timeZone) : here === 2 ? (chip.request && !chip.request.sentBack ? `asked ${momentText(chip.request.askedAt, timeZone)}` : "waiting for approval") : here < 2 ? "opens when reads agree" : "" },
     { name: here > 3 ? (transfer?.kind === "chip-moved" ? "Moved" : "Written") : "Write", note: here > 3 && transfer ? momentText(transfer.at, timeZone) : here === 3 ? "cleared to write" : "" },
     { name: "Read back", note: here > 4 && lastBack ? `${backs.length} equal, ${clockText(lastBack.storedAt, timeZone)}` : here === 4 ? `${backs.length} of ${chip.policy.readBacks}` : "" },
-    { name: "Return", note: here === 5 ? "pack the board" : "" },
+    { name: "Return", note: here === 5 ? (chip.case.open ? "pack the board" : "case closed") : "" },
   ];
 }
 
 /** A chip's way as a copper trace through plated holes; what went wrong is a dead-end spur, drawn as a square. */
 export function Route({ chip, timeZone }: { chip: ChipView; timeZone: string }) {
-  const here = HERE[chip.state.state];
+  // nothing is left to do once the case is closed
+  const here = HERE[chip.state.state] + (chip.state.state === "verified" && !chip.case.open ? 1 : 0);
   const fault = FAULTS.includes(chip.state.state);
   return (
     <ol className="route" aria-label="Route of this chip">

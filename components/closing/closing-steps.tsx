@@ -14,7 +14,7 @@ type Drive = ClosingView["drives"][number];
 /** The step of this case that stands out for this person. */
 export function stepThatLeads(view: CaseView, { drives, facts, closed }: ClosingView, user: SessionView["user"]): CaseStep | null {
   if (closed) return null;
-  const moving = drives.filter((drive) => !drive.noChip);
+  const moving = drives.filter((drive) => !drive.noChip && !drive.onlyKept);
   return leadingStep({
     ...facts, nothingToMove: drives.length > 0 && moving.length === 0, summarySent: view.shares.some((share) => !share.withdrawnAt),
     tests: moving.map(({ test }) => test && test.spins && test.ready && test.serialMatches !== false),
@@ -33,6 +33,7 @@ function StartUpStep({ drive, several, acts, lead }: { drive: Drive; several: bo
       </li>
     );
   }
+  if (drive.onlyKept) return null;
   const words = acts && !refusal && !test ? "Test it" : "Look";
   return (
     <li>
@@ -47,7 +48,7 @@ function StartUpStep({ drive, several, acts, lead }: { drive: Drive; several: bo
 export function StartUpSteps({ closing, user, leads }: { closing: ClosingView; user: SessionView["user"]; leads: CaseStep | null }) {
   if (closing.closed) return null;
   const acts = may(user, "start-up.record");
-  const next = closing.drives.find((drive) => !drive.noChip && !drive.test && !drive.refusal);
+  const next = closing.drives.find((drive) => !drive.noChip && !drive.onlyKept && !drive.test && !drive.refusal);
   return closing.drives.map((drive) => <StartUpStep key={drive.id} drive={drive} several={closing.drives.length > 1} acts={acts} lead={leads === "start-up" && drive === next} />);
 }
 

@@ -30,7 +30,7 @@ export async function closingView(actor: Actor, caseId: string): Promise<Closing
     drives: drives.map((drive) => {
       const mine = records.filter((r) => r.drive.id === drive.id);
       const test = sinceTransfer(tests.get(drive.id), mine);
-      return { id: drive.id, letter: driveLetter(drive), test: test ? startUpFacts(test) : null, refusal: startUpRefusalOf(mine, policy), noChip: inside.has(drive.id) };
+      return { id: drive.id, letter: driveLetter(drive), test: test ? startUpFacts(test) : null, refusal: startUpRefusalOf(mine, policy), noChip: inside.has(drive.id), onlyKept: mine.length > 0 && mine.every((r) => !r.chip.needsTransfer) };
     }),
     items: await expectedItems(caseId), customerName: customer?.name ?? "",
     returned: row ? { items: itemsOf(row), toPerson: row.toPerson, carrier: row.carrier ?? null, tracking: row.tracking ?? null, sealNumber: row.sealNumber ?? null, note: row.note ?? null, by: who(row.byUserId), at: row.at.toISOString() } : null,

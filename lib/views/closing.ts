@@ -18,7 +18,7 @@ export interface ReturnView {
 export interface ClosingView {
   facts: ClosingFacts;
   /** the latest test of each drive, and why it may not be started yet */
-  drives: { id: string; letter: string; test: StartUpFacts | null; refusal: string | null; /** its own data lies inside the main controller */ noChip: boolean }[];
+  drives: { id: string; letter: string; test: StartUpFacts | null; refusal: string | null; /** its own data lies inside the main controller */ noChip: boolean; /** its chips are kept for reference, none is to be transferred */ onlyKept: boolean }[];
   /** what could go back */
   items: string[];
   customerName: string;
