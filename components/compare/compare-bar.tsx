@@ -1,6 +1,6 @@
 "use client";
 
-import { useState, type Ref } from "react";
+import { type ReactNode, type Ref, useState } from "react";
 import { Button } from "@/components/ui/button";
 import { Checkbox } from "@/components/ui/checkbox";
 import { controlClass } from "@/components/ui/field";
@@ -10,7 +10,7 @@ import { address } from "@/lib/core/strip";
 import { parseAddress } from "./places";
 
 /** Next and previous difference, go to an address, folding, layout and the keys' switch. */
-export function CompareBar({ current, total, at, sizeBytes, fold, under, keys, field, onStep, onGo, onFold, onUnder, onKeys }: {
+export function CompareBar({ current, total, at, sizeBytes, fold, under, keys, field, onStep, onGo, onFold, onUnder, onKeys, children }: {
   /** index of the current range, -1 before the first */
   current: number;
   total: number;
@@ -25,8 +25,13 @@ export function CompareBar({ current, total, at, sizeBytes, fold, under, keys, f
   onFold(on: boolean): void;
   onUnder(on: boolean): void;
   onKeys(on: boolean): void;
+  /** further rows of controls */
+  children: ReactNode;
 }) {
   const [wrong, setWrong] = useState<string | null>(null);
+  const shown = address(at, sizeBytes);
+  // the field says where one is, until another address is typed
+  const [typed, setTyped] = useState({ at, text: shown });
   function go(form: HTMLFormElement) {
     const typed = parseAddress(String(new FormData(form).get("go") ?? ""));
     if (typed === null) setWrong("Type an address such as 0x1F03A, or a byte count such as 126976.");
@@ -48,7 +53,7 @@ export function CompareBar({ current, total, at, sizeBytes, fold, under, keys, f
         ) : null}
         <form className="flex items-center gap-2" onSubmit={(event) => { event.preventDefault(); go(event.currentTarget); }}>
           <label htmlFor="go" className="text-t2">Go to</label>
-          <input key={at} ref={field} id="go" name="go" defaultValue={address(at, sizeBytes)} autoComplete="off" spellCheck={false} aria-invalid={wrong ? true : undefined} aria-describedby={wrong ? "go-wrong" : undefined} className={controlClass(Boolean(wrong), true, "!w-[128px] min-h-control")} />
+          <input ref={field} id="go" name="go" value={typed.at === at ? typed.text : shown} onChange={(event) => setTyped({ at, text: event.target.value })} autoComplete="off" spellCheck={false} aria-invalid={wrong ? true : undefined} aria-describedby={wrong ? "go-wrong" : undefined} className={controlClass(Boolean(wrong), true, "!w-[128px] min-h-control")} />
           <Button type="submit">Go</Button>
         </form>
         <Checkbox label="Fold lines that agree" checked={fold} onChange={(event) => onFold(event.target.checked)} />
@@ -56,6 +61,7 @@ export function CompareBar({ current, total, at, sizeBytes, fold, under, keys, f
         <Checkbox label="Keys of one letter" checked={keys} onChange={(event) => onKeys(event.target.checked)} />
       </div>
       {wrong ? <p id="go-wrong" role="alert" className="pt-1 text-t2 font-medium text-block">{wrong}</p> : null}
+      {children}
     </div>
   );
 }

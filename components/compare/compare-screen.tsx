@@ -7,7 +7,12 @@ import { addressDigits } from "@/lib/core/strip";
 import { readName } from "@/lib/core/words";
 import type { ComparedReads, ReadView, StripView } from "@/lib/views";
 import { CompareBar } from "./compare-bar";
+import { CopyHex } from "./copy-hex";
+import { FindBar } from "./find-bar";
+import { LINE } from "./hex-layout";
+import type { Hit } from "./hex-table";
 import { HexView } from "./hex-view";
+import type { Goal } from "./use-hex-scroll";
 import { useLetterKeys, useLetterKeysOn } from "@/components/ui/letter-keys";
 import { rangeAt, standsAlone, stepRange } from "./places";
 import { RangeList } from "./range-list";
@@ -27,17 +32,20 @@ export function CompareScreen({ compared, reads, start, csv }: {
 }) {
   const { stack, ranges } = compared;
   const { sizeBytes } = stack;
-  const [at, setAt] = useState(() => Math.min(start ?? ranges[0]?.start ?? 0, Math.max(0, sizeBytes - 1)));
+  const [goal, setGoal] = useState<Goal>(() => ({ at: Math.min(start ?? ranges[0]?.start ?? 0, Math.max(0, sizeBytes - 1)) }));
+  const { at } = goal;
+  const [hit, setHit] = useState<Hit | null>(null);
   const [fold, setFold] = useState(true);
   const [under, setUnder] = useState(false);
   const [keys, setKeys] = useLetterKeysOn();
   const field = useRef<HTMLInputElement>(null);
   const current = rangeAt(ranges, at);
+  const inside = ranges[current] && at < ranges[current].start + ranges[current].length ? ranges[current] : null;
   const names = useMemo(() => compared.reads.map((r) => readName(r.stage, r.number)), [compared.reads]);
   const alone = useMemo(() => standsAlone(reads, compared.reads), [reads, compared.reads]);
 
-  const go = useCallback((next: number) => {
-    setAt(next);
+  const go = useCallback((next: number, still?: true) => {
+    setGoal({ at: next, still });
     const url = new URL(window.location.href);
     url.searchParams.set("at", `0x${next.toString(16).toUpperCase().padStart(addressDigits(sizeBytes), "0")}`);
     window.history.replaceState(null, "", url);
@@ -65,8 +73,8 @@ export function CompareScreen({ compared, reads, start, csv }: {
   const onCell = (view: StripView) => (cell: number) => {
     const from = view.offset + Math.floor(cell * view.cellBytes);
     const first = ranges[rangeAt(ranges, from) + 1];
-    const inside = ranges[rangeAt(ranges, from)];
-    const reaches = inside && inside.start + inside.length > from;
+    const before = ranges[rangeAt(ranges, from)];
+    const reaches = before && before.start + before.length > from;
     go(!reaches && first && first.start < from + view.cellBytes ? first.start : from);
   };
   const showBytes = (address: number) => {
@@ -84,10 +92,13 @@ export function CompareScreen({ compared, reads, start, csv }: {
         {stack.loupe && nextDifference(stack.loupe, 0, 1) !== null ? <div className="pt-5"><p className="pb-1 text-t2 text-ink-2">Around the differences, larger</p>{grid(stack.loupe, "The part around the differences, larger. The same keys.")}</div> : null}
       </div>
       <CompareBar current={current} total={ranges.length} at={at} sizeBytes={sizeBytes} fold={fold} under={under} keys={keys} field={field}
-        onStep={step} onGo={go} onFold={setFold} onUnder={setUnder} onKeys={setKeys} />
+        onStep={step} onGo={go} onFold={setFold} onUnder={setUnder} onKeys={setKeys}>
+        <FindBar reads={compared.reads} names={names} at={at} hit={hit} sizeBytes={sizeBytes} onFound={(found) => { setHit(found); go(found.at); }} />
+        <CopyHex reads={compared.reads} names={names} stretch={inside ?? { start: at - (at % LINE), length: Math.min(LINE, sizeBytes - at + (at % LINE)) }} sizeBytes={sizeBytes} />
+      </CompareBar>
       <div id="bytes" className={`compare-bytes ${names.length > 2 ? "is-three" : ""}`}>
         <RangeList ranges={ranges} truncated={compared.truncated ?? false} current={current} sizeBytes={sizeBytes} csv={csv} onGo={go} />
-        <HexView reads={compared.reads} names={names} alone={alone} at={at} sizeBytes={sizeBytes} fold={fold} under={under} onGo={go} />
+        <HexView reads={compared.reads} names={names} alone={alone} ranges={ranges} truncated={compared.truncated ?? false} stack={stack} goal={goal} hit={hit} fold={fold} under={under} onPoint={(address) => go(address, true)} />
       </div>
     </>
   );

@@ -1,58 +1,71 @@
 "use client";
 
-import { useMemo, useState } from "react";
+import { useEffect, useMemo, useRef, useState, useSyncExternalStore } from "react";
 import { Button } from "@/components/ui/button";
-import { Icon } from "@/components/ui/icon";
 import { Note } from "@/components/ui/note";
-import { rangeText } from "@/lib/core/strip";
+import { listText } from "@/lib/core/quantity";
+import type { Range } from "@/lib/core/words";
 import { seatingLetter } from "@/lib/core/words";
-import type { ReadView } from "@/lib/views";
-import { foldLines, hexLines } from "./hex-rows";
-import { HexKey, HexTable } from "./hex-table";
-import { STEP_BYTES, useBytes, windowOf } from "./use-bytes";
-import { useGrowing } from "./use-growing";
+import type { ReadView, StripStackView } from "@/lib/views";
+import { AddressScale } from "./address-scale";
+import { createByteCache, WINDOW_BYTES } from "./byte-cache";
+import { layOut } from "./hex-layout";
+import { type Hit, HexKey, HexTable } from "./hex-table";
+import { type Goal, useHeights, useHexScroll } from "./use-hex-scroll";
 
-/** The bytes around one address of each read, fetched as they are looked at. */
-export function HexView({ reads, names, alone, at, sizeBytes, fold, under, onGo }: {
+/** All bytes of two or three reads in one scrolled box: rows are drawn and bytes fetched as they are looked at. */
+export function HexView({ reads, names, alone, ranges, truncated, stack, goal, hit, fold, under, onPoint }: {
   reads: readonly ReadView[];
   names: readonly string[];
   alone: number;
-  at: number;
-  sizeBytes: number;
+  ranges: readonly Range[];
+  truncated: boolean;
+  stack: StripStackView;
+  goal: Goal;
+  hit: Hit | null;
   fold: boolean;
   under: boolean;
-  onGo(at: number): void;
+  /** an address was pointed at: nothing is scrolled */
+  onPoint(at: number): void;
 }) {
-  const { offset, length } = windowOf(at, sizeBytes);
-  const [a, b, c] = [useBytes(reads[0], offset, length), useBytes(reads[1], offset, length), useBytes(reads[2] ?? null, offset, length)];
-  const three = reads.length > 2;
-  const [opened, setOpened] = useState<ReadonlySet<number>>(new Set());
-  const lines = useMemo(() => {
-    if (!a.bytes || !b.bytes || (three && !c.bytes)) return null;
-    return hexLines({ images: three && c.bytes ? [a.bytes, b.bytes, c.bytes] : [a.bytes, b.bytes], offset, length, alone });
-  }, [a.bytes, b.bytes, c.bytes, three, alone, offset, length]);
-  const all = useMemo(() => lines && foldLines(lines, { fold, here: at, opened }), [lines, fold, at, opened]);
-  // what stands elsewhere, folds otherwise or is laid out anew is put on the page from its top again
-  const count = useGrowing(`${offset} ${fold} ${under}`, all?.length ?? 0);
-  const rows = all && all.slice(0, count);
+  const { sizeBytes } = stack;
+  const boxRef = useRef<HTMLDivElement>(null);
+  const [opened, setOpened] = useState<readonly Range[]>([]);
+  const layoutName = `${under ? "is-under" : ""} ${reads.length > 2 ? "is-three" : ""}`;
+  const heights = useHeights(boxRef, layoutName);
+  const layout = useMemo(() => layOut({ sizeBytes, ranges, truncated, fold, here: goal.at, opened, heights }), [sizeBytes, ranges, truncated, fold, goal, opened, heights]);
+  const { rows, partPx, abovePx, seen, onScroll, show } = useHexScroll(boxRef, layout, goal);
   const columns = useMemo(() => reads.map((r, i) => ({ name: names[i], note: r.derived ? "composite" : `seating ${seatingLetter(r.seating)}, ${r.reader}` })), [reads, names]);
-  const error = a.error ?? b.error ?? c.error;
-  const [earlier, later] = [offset - STEP_BYTES, offset + STEP_BYTES];
+
+  const [cache] = useState(createByteCache);
+  useSyncExternalStore(cache.subscribe, cache.version, cache.version);
+  const lines = rows.filter((row) => row.kind === "line");
+  const numbers = [...new Set(lines.map((row) => Math.floor(row.at / WINDOW_BYTES)))];
+  const looked = numbers.join();
+  useEffect(() => cache.look(reads, looked === "" ? [] : looked.split(",").map(Number)), [cache, reads, looked]);
+  useEffect(() => cache.close, [cache]);
+  const error = cache.error();
+
   return (
     <div className="min-w-0">
-      <div className="no-print flex flex-wrap items-center justify-between gap-3 pb-2 text-t2">
-        <span>Shown: <code className="font-semibold">{rangeText(offset, length, sizeBytes)}</code></span>
-        <span className="flex gap-2">
-          <Button size="small" disabled={earlier < 0} onClick={() => onGo(Math.max(0, earlier))}><Icon name="prev" />Earlier 4 KiB</Button>
-          <Button size="small" disabled={later >= sizeBytes} onClick={() => onGo(later)}>Later 4 KiB<Icon name="next" /></Button>
-        </span>
+      {error ? <Note kind="block" role="alert" title="These bytes can’t be shown." className="mb-3">{error.message} <Button size="small" onClick={cache.again}>Try again</Button></Note> : null}
+      <div className={`hex-frame ${layoutName}`}>
+        <div ref={boxRef} className="hex-scroll" tabIndex={0} role="region" aria-label={`Bytes of ${listText(names)}`} onScroll={onScroll}
+          onKeyDown={(event) => {
+            // the browser's own Home and End know of the part in the box only
+            if (event.target !== event.currentTarget || (event.key !== "Home" && event.key !== "End")) return;
+            event.preventDefault();
+            show(event.key === "Home" ? 0 : sizeBytes - 1);
+          }}>
+          <div className="hex-part" style={{ height: `calc(${partPx}px + var(--hex-head))`, paddingTop: abovePx }}>
+            <HexTable rows={rows} total={layout.rows} columns={columns} alone={alone} here={goal.at} hit={hit} sizeBytes={sizeBytes} boxRef={boxRef}
+              windowOf={(side, number) => cache.windowOf(reads[side], number)}
+              onOpen={(row) => setOpened((before) => [...before, { start: row.at, length: row.length }])} onPoint={onPoint} />
+          </div>
+        </div>
+        <AddressScale stack={stack} seen={seen} onShow={show} />
       </div>
-      {error ? <Note kind="block" role="alert" title="These bytes can’t be shown.">{error.message}</Note> : rows ? (
-        <>
-          <div className="overflow-x-auto"><HexTable key={String(under)} rows={rows} columns={columns} here={at} under={under} sizeBytes={sizeBytes} onOpen={(start) => setOpened((before) => new Set([...before, start]))} /></div>
-          <HexKey alone={alone} columns={columns} />
-        </>
-      ) : <p role="status" className="py-6 text-ink-2">Fetching the bytes of {rangeText(offset, length, sizeBytes)}.</p>}
+      <HexKey alone={alone} columns={columns} />
     </div>
   );
 }

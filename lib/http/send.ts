@@ -66,8 +66,8 @@ export async function save(path: string, body?: unknown): Promise<string> {
   return name;
 }
 
-export async function fetcher<T>(path: string): Promise<T> {
-  return (await ask(path, {})).json() as Promise<T>;
+export async function fetcher<T>(path: string, signal?: AbortSignal): Promise<T> {
+  return (await ask(path, { signal })).json() as Promise<T>;
 }
 
 /** For refreshes that nobody asked for: they don't count as activity of the session. */
@@ -76,6 +76,6 @@ export async function backgroundFetcher<T>(path: string): Promise<T> {
 }
 
 /** A window of bytes, for the hex view. */
-export async function bytesFetcher(path: string): Promise<Uint8Array> {
-  return new Uint8Array(await (await ask(path, {})).arrayBuffer());
+export async function bytesFetcher(path: string, signal?: AbortSignal): Promise<Uint8Array> {
+  return new Uint8Array(await (await ask(path, { signal })).arrayBuffer());
 }

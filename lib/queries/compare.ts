@@ -1,6 +1,5 @@
 import { compareIfStored, type Compared } from "@/lib/commands/compare-images";
-import { erasedText } from "@/lib/commands/erased-image";
-import { chipFor, readFor } from "@/lib/commands/place";
+import { chipFor } from "@/lib/commands/place";
 import { allow } from "@/lib/commands/refuse";
 import { requireSoundImage } from "@/lib/commands/report-image";
 import { safeName } from "@/lib/core/bundle-layout";
@@ -12,7 +11,7 @@ import { type Actor, type Range, readName, type Stage } from "@/lib/core/words";
 import { AppError } from "@/lib/errors";
 import type { ComparedReads, ComparisonView } from "@/lib/views";
 import { type Chip, Image, Read } from "@/models";
-import { imageWindow, stateNow } from "@/storage";
+import { stateNow } from "@/storage";
 import { type CsvColumn, csvHeader, csvLines } from "./csv";
 import { stripImage } from "./chip-summary";
 import { people } from "./people";
@@ -110,23 +109,4 @@ export async function differencesCsv(actor: Actor, chipId: string, asked: Asked)
   const text = csvHeader(columns) + csvLines(columns, found.parts);
   const numbers = rows.map((r) => r.number).join("-");
   return { text, fileName: `${safeName(chip.designator)}-${asked.stage}-${numbers}-${found.truncated ? "first-differences" : "differences"}.csv` };
-}
-
-/** A window of a read's bytes, for looking at; not a hand-out. */
-export async function readBytes(actor: Actor, readId: string, { offset, length }: { offset: number; length: number }): Promise<Buffer> {
-  allow(actor, "read.bytes");
-  const { read } = await readFor(actor, readId);
-  if (offset >= read.sizeBytes) throw new AppError("does-not-fit", `This image ends at byte ${read.sizeBytes.toLocaleString("en")}. Choose an offset before that.`);
-  const image = await Image.findByPk(read.sha256);
-  const gone = image && erasedText(image);
-  if (gone) throw new AppError("rule-against", gone);
-  if (image?.state !== "sound") throw new AppError("rule-against", "The stored image no longer matches its digest, so its bytes aren't shown. Tell the lead.");
-  if ((await stateNow(read.sha256.toString("hex"), read.sizeBytes)) !== "sound") await requireSoundImage(read.sha256.toString("hex"), read.sizeBytes, "a look at its bytes");
-  try {
-    return await imageWindow(read.sha256.toString("hex"), offset, Math.min(length, read.sizeBytes - offset));
-  } catch (error) {
-    // gone since it was looked at: found out, written down and refused
-    await requireSoundImage(read.sha256.toString("hex"), read.sizeBytes, "a look at its bytes");
-    throw error;
-  }
 }

@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { hexPairs, MOST_SOUGHT } from "@/lib/core/find-bytes";
 import { FORMATS, METHODS, STAGES } from "@/lib/core/words";
 import { millivolts } from "./chip";
 import { line, maybe, prose, reason } from "./text";
@@ -59,6 +60,15 @@ export const bytesInput = z.object({
   offset: z.coerce.number().int().min(0, "An offset counts from 0.").default(0),
   length: z.coerce.number().int().min(1).max(65_536, "At most 65,536 bytes a window.").default(4096),
 });
+
+/** Either bytes as pairs of hex digits or a text, from an address on or backwards. */
+export const findBytesInput = z.object({
+  bytes: z.string().transform((text, context) => hexPairs(text) ?? (context.addIssue("Give bytes as pairs of hex digits, such as 5A A5."), z.NEVER))
+    .refine((bytes) => bytes.length <= MOST_SOUGHT, `Search for at most ${MOST_SOUGHT} bytes.`).optional(),
+  text: z.string().min(1, "Give the text to search for.").max(MOST_SOUGHT, `Search for at most ${MOST_SOUGHT} characters.`).optional(),
+  from: z.coerce.number().int().min(0, "Addresses count from 0.").default(0),
+  way: z.enum(["next", "previous"], "The way is next or previous.").default("next"),
+}).refine(({ bytes, text }) => (bytes === undefined) !== (text === undefined), "Give either bytes=5AA5 or text=BOOT.");
 
 export const stripInput = z.object({ offset: z.coerce.number().int().min(0).default(0), length: z.coerce.number().int().min(256).optional() });
 

@@ -9,7 +9,8 @@ import { makeComposite } from "@/lib/commands/make-composite";
 import { recordTransfer } from "@/lib/commands/record-transfer";
 import { reportImage, requireSoundImage } from "@/lib/commands/report-image";
 import { chipStrips } from "@/lib/queries/chip-view";
-import { comparedReads, comparison, readBytes } from "@/lib/queries/compare";
+import { comparedReads, comparison } from "@/lib/queries/compare";
+import { findInRead, readBytes } from "@/lib/queries/read-bytes";
 import { ComparisonRow, Mail, Read } from "@/models";
 import { verifiedStream } from "@/storage";
 import { logged, readNamed, refusal, view } from "../support/bench-steps";
@@ -162,6 +163,7 @@ describe("a stored image that changes", () => {
     const approvalOf = (bench: Bench) => Promise.resolve(approvals.get(bench.chip.chipId)!);
     const ways: Record<string, (bench: Bench) => Promise<unknown>> = {
       "its bytes": async (bench) => readBytes(bench.technician, (await readNamed(bench, "before", 1)).id, { offset: 0, length: 16 }),
+      "a search in it": async (bench) => findInRead(bench.technician, (await readNamed(bench, "before", 1)).id, { text: "A", from: 0, way: "next" }),
       comparison: (bench) => comparison(bench.technician, bench.chip.chipId, { reads: [1, 4], stage: "before" }),
       "compare page": (bench) => comparedReads(bench.technician, bench.chip.chipId, { reads: [1, 4], stage: "before" }),
       "hand-out": async (bench) => openHandedOut(bench.lead, (await readNamed(bench, "before", 1)).id, { reason: "To look at it." }),

@@ -28,7 +28,8 @@ import { auditOverview } from "@/lib/queries/audit-overview";
 import { benchRows } from "@/lib/queries/bench";
 import { caseList, caseView } from "@/lib/queries/cases";
 import { chipFlatView, chipStrips, chipView } from "@/lib/queries/chip-view";
-import { comparedReads, comparison, differencesCsv, readBytes } from "@/lib/queries/compare";
+import { comparedReads, comparison, differencesCsv } from "@/lib/queries/compare";
+import { findInRead, readBytes } from "@/lib/queries/read-bytes";
 import { custodyHeads } from "@/lib/queries/custody-heads";
 import { custodyCheckOfDrive, custodyOfDrive, workshopLog } from "@/lib/queries/custody";
 import { decisionView } from "@/lib/queries/decision";
@@ -94,6 +95,7 @@ const LOOKS: [string, (actor: Actor, at: FullCase) => Promise<unknown>][] = [
   ["compare page", (a, { chip }) => comparedReads(a, chip.chipId, pair)],
   ["differences", (a, at) => differencesCsv(a, at.secondChipId, pair)],
   ["bytes", (a, { readId }) => readBytes(a, readId, { offset: 0, length: 16 })],
+  ["find bytes", (a, { readId }) => findInRead(a, readId, { text: "A", from: 0, way: "next" })],
   ["bytes past the end", async (a, at) => {
     if (at.readId !== own.readId) await readBytes(a, at.readId, { offset: 1_000_000, length: 16 });
   }],

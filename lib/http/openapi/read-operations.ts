@@ -1,5 +1,5 @@
 import { approvalInput, approvalRequestInput, transferInput } from "@/lib/schemas/approval";
-import { bytesInput, comparedInput, comparisonInput, compositeInput, findInput, handOutInput, readFields, reasonInput, stripInput } from "@/lib/schemas/read";
+import { bytesInput, comparedInput, comparisonInput, compositeInput, findBytesInput, findInput, handOutInput, readFields, reasonInput, stripInput } from "@/lib/schemas/read";
 import { approvalMade, chip, comparison, found, made, read, readsStored, transferMade } from "./answers";
 import { ofThePages, type Operation, stable } from "./operation";
 
@@ -21,6 +21,7 @@ export const READ_OPERATIONS: readonly Operation[] = [
   stable("POST /api/approvals/{id}/revocation", "lead", "Takes an approval back.", { body: reasonInput }),
   stable("POST /api/approvals/{id}/transfer", BENCH, "Records that the image was written or the chip moved.", { body: transferInput, status: 201, answer: transferMade }),
   stable("GET /api/reads/{id}/bytes", "staff", "A window of at most 64 KiB of a read; no hand-out.", { query: bytesInput, media: BINARY }),
+  ofThePages("GET /api/reads/{id}/find", "staff", "Where a read holds these bytes or this text next.", { query: findBytesInput }),
   stable("POST /api/reads/{id}/download", "technician: approved image or donor’s own content; lead, auditor: any, with a reason", "The image as a file, with its digest in Repr-Digest; written into the log first.", { body: handOutInput, media: BINARY, once: true }),
   stable("POST /api/reads/{id}/set-aside", "technician: own reads; lead", "Sets a read aside.", { body: reasonInput }),
   stable("POST /api/reads/{id}/count-again", "technician: own reads; lead", "Counts a read again.", { body: reasonInput }),

@@ -1,6 +1,6 @@
 import { handler } from "@/lib/http/handler";
 import { othersThan } from "@/lib/http/others-than";
-import { readBytes } from "@/lib/queries/compare";
+import { readBytes } from "@/lib/queries/read-bytes";
 import { bytesInput } from "@/lib/schemas/read";
 
 export const GET = handler({ input: bytesInput }, async ({ actor, params, input }) =>
