@@ -103,20 +103,34 @@ export async function markOfImage(dataDir: string, sha256: string): Promise<stri
 }
 
 const REMEMBERED_MS = 10_000;
+/** a look at 64 MiB on a busy machine takes seconds: it holds so many times as long as it took */
+const REMEMBERED_TIMES = 50;
 const REMEMBERED = 500;
 const remembered = new Map<string, { mark: string; until: number }>();
+const looking = new Map<string, Promise<ImageState>>();
 
 /**
  * Whether the image is sound now, for whoever opens it many times in a row: a look that found it sound holds for ten
- * seconds while the file stays untouched. What was read then is what the system holds in memory and gives out.
+ * seconds while the file stays untouched. What was read then is what the system holds in memory and gives out. Who asks
+ * while it is being looked at waits for that look.
  */
 export async function stateNow(dataDir: string, sha256: string, sizeBytes: number): Promise<ImageState> {
   const known = remembered.get(sha256);
   if (known && known.until > performance.now() && known.mark === (await markOfImage(dataDir, sha256))) return "sound";
+  const begun = looking.get(sha256);
+  if (begun) return begun;
+  const look = lookAndRemember(dataDir, sha256, sizeBytes).finally(() => looking.delete(sha256));
+  looking.set(sha256, look);
+  return look;
+}
+
+async function lookAndRemember(dataDir: string, sha256: string, sizeBytes: number): Promise<ImageState> {
+  const from = performance.now();
   const { state, mark } = await lookAtImage(dataDir, sha256, sizeBytes);
   remembered.delete(sha256);
   if (state !== "sound") return state;
-  remembered.set(sha256, { mark, until: performance.now() + REMEMBERED_MS });
+  const now = performance.now();
+  remembered.set(sha256, { mark, until: now + Math.max(REMEMBERED_MS, REMEMBERED_TIMES * (now - from)) });
   if (remembered.size > REMEMBERED) remembered.delete(remembered.keys().next().value!);
   return state;
 }
