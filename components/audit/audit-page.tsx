@@ -1,6 +1,7 @@
 import type { ReactNode } from "react";
 import { DeskShell } from "@/components/shell/desk-shell";
 import { PageMain } from "@/components/shell/page-main";
+import { PaperName } from "@/components/ui/paper-name";
 import { PageTitle } from "@/components/ui/section";
 import type { SessionView } from "@/lib/views";
 import { AuditNav } from "./audit-nav";
@@ -18,6 +19,7 @@ export function AuditPage({ session, current, title, note, buttons, children }: 
   return (
     <DeskShell session={session} current="audit">
       <PageMain className="pb-8">
+        <PaperName what={`Audit, ${title}`} />
         <div className="flex flex-wrap items-end justify-between gap-x-4">
           <PageTitle note={note}>{title}</PageTitle>
           {buttons ? <div className="no-print flex flex-wrap gap-3 pb-5">{buttons}</div> : null}

@@ -3,6 +3,7 @@ import { waitsText } from "@/components/note/note-words";
 import { PrintMenu } from "@/components/print/print-menu";
 import { casePrints } from "@/components/print/print-words";
 import { Mark } from "@/components/ui/mark";
+import { PaperName } from "@/components/ui/paper-name";
 import { dueText, momentText } from "@/components/ui/times";
 import type { CaseView } from "@/lib/views";
 import { caseState, waitsFor } from "./case-words";
@@ -15,6 +16,7 @@ export function Ticket({ view, timeZone, today }: { view: CaseView; timeZone: st
   const waits = waitsFor(view.drives);
   return (
     <div className="ticket">
+      <PaperName what={`Case ${view.ref}`} />
       <div className="stub">
         <div>
           <span className="text-t1 text-ink-2">Case</span>

@@ -47,12 +47,12 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
                       <th scope="row"><span className="struck">{readTitle(read)}</span></th>
                       {read.derived ? null : <td data-l="Seating">{seatingLetter(read.seating)}</td>}
                       <td colSpan={read.derived ? 2 : 1} className={read.derived ? "l-full" : ""}><ReadOrigin read={read} /></td>
-                      <td className="whitespace-nowrap">{read.operator.name}</td>
-                      <td className="l-top whitespace-nowrap">{momentText(read.takenAt ?? read.storedAt, timeZone)}</td>
+                      <td className="whitespace-nowrap print:whitespace-normal">{read.operator.name}</td>
+                      <td className="l-top whitespace-nowrap print:whitespace-normal">{momentText(read.takenAt ?? read.storedAt, timeZone)}</td>
                       <td className="num">{sizeText(read.sizeBytes)}</td>
                       <td data-l="CRC-32"><code>{read.crc32.toUpperCase()}</code></td>
                       <td className="l-row" data-l="SHA-256"><Digest sha256={read.sha256} /></td>
-                      <td className="l-full"><ReadFindings chip={chip} read={read} /></td>
+                      <td className="l-full print:min-w-[180px]"><ReadFindings chip={chip} read={read} /></td>
                       <td className="no-print"><ReadActions read={read} user={user} open={chip.case.open} onAsk={(action) => setAsked({ read, action })} /></td>
                     </tr>
                   );

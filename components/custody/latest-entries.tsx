@@ -9,9 +9,9 @@ const SHOWN = 6;
 export function LatestEntries({ driveId, letter, entries, timeZone }: { driveId: string; letter: string; entries: readonly CustodyEntryView[]; timeZone: string }) {
   const latest = entries.slice(-SHOWN).reverse();
   return (
-    <div className="pb-4">
+    <div className="pb-4 print:break-inside-avoid">
       <h3 className="pb-1 text-t3 font-strong">Drive {letter} <span className="font-normal text-ink-2">last {latest.length} of {entriesText(entries.length)}</span></h3>
-      <div className="overflow-x-auto phone:overflow-visible">
+      <div className="overflow-x-auto phone:overflow-visible print:overflow-visible">
         <table className="ruled logx">
           <caption className="sr-only">Latest entries of Drive {letter}</caption>
           <thead><tr><th className="w-[30px]"><span className="sr-only">Link</span></th>{["No.", "Time", "Who", "What happened", "Where", "Hash"].map((head) => <th key={head} scope="col">{head}</th>)}</tr></thead>
@@ -20,7 +20,7 @@ export function LatestEntries({ driveId, letter, entries, timeZone }: { driveId:
           </tbody>
         </table>
       </div>
-      <p className="pt-2.5"><Link href={`/drives/${driveId}/custody`}>Whole log of Drive {letter}</Link></p>
+      <p className="no-print pt-2.5"><Link href={`/drives/${driveId}/custody`}>Whole log of Drive {letter}</Link></p>
     </div>
   );
 }

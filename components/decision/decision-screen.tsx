@@ -92,6 +92,7 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
           <Section strong title="Sign" note="Goes into the custody log, signed.">
             {refused}
             {signs
+            <p className="hidden print:block"><b>Not signed as this was printed.</b> An image is cleared on the screen only: no signature on this paper clears it.</p>
               ? <Sign chip={chip} user={user} composite={composite !== null} open={open} matches={matches} busy={isSubmitting} register={register} errors={errors} onSubmit={submit} onSendBack={sendBack} />
               : (
                 <div className="grid gap-3.5">

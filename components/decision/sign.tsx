@@ -26,7 +26,7 @@ export function Sign({ chip, user, composite, open, matches, busy, register, err
   onSendBack: (() => void) | null;
 }) {
   return (
-    <form onSubmit={onSubmit} noValidate className="grid grid-cols-[minmax(0,1fr)_minmax(0,420px)] gap-x-10 gap-y-[22px] narrow:grid-cols-[minmax(0,1fr)]">
+    <form onSubmit={onSubmit} noValidate className="no-print grid grid-cols-[minmax(0,1fr)_minmax(0,420px)] gap-x-10 gap-y-[22px] narrow:grid-cols-[minmax(0,1fr)]">
       <div className="grid content-start gap-3.5">
         <WhoMaySign chip={chip} user={user} />
         <TextArea label="Statement" hint={`Why you clear this ${composite ? "composite" : "image"}. The auditor reads this, the customer doesn’t.`} error={errors.statement?.message} {...register("statement")} />

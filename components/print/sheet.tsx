@@ -8,7 +8,9 @@ const MARGIN: Record<PaperName, number> = { a4: 12, a5: 9, a6: 6, "62x29": 1.6, 
 /** The page's size for the printer: one paper to a page. Sheets that flow over several pages have their white from here. */
 export function PaperRule({ paper, flows }: { paper: PaperName; flows?: boolean }) {
   const { width, height } = PAPERS[paper];
-  return <style>{`@page { size: ${width}mm ${height}mm; margin: ${flows ? MARGIN[paper] : 0}mm; }`}</style>;
+  // a sheet that is exactly its paper has no room for a foot, and says itself what it is
+  const foot = flows ? "" : "@bottom-left { content: none; } @bottom-right { content: none; }";
+  return <style>{`@page { size: ${width}mm ${height}mm; margin: ${flows ? MARGIN[paper] : 0}mm; ${foot} }`}</style>;
 }
 
 /** One sheet. A fixed one is exactly its paper and takes what its values' rules let in; one that flows goes on over pages. */

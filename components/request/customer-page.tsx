@@ -2,6 +2,7 @@ import { ButtonLink, Buttons } from "@/components/ui/button";
 import { Icon } from "@/components/ui/icon";
 import { Mark, type MarkKind } from "@/components/ui/mark";
 import { Note } from "@/components/ui/note";
+import { PaperName } from "@/components/ui/paper-name";
 import { dayYearText } from "@/components/ui/times";
 import { countOf } from "@/lib/core/quantity";
 import type { RequestStep } from "@/lib/core/request-state";
@@ -24,6 +25,7 @@ export function CustomerPage({ view, token, timeZone }: { view: RequestPageView;
   const images = view.answers.keepDays;
   return (
     <main id="main" tabIndex={-1} className="rq outline-none">
+      <PaperName what={`Case ${view.refChecked}`} />
       <header className="rq-head">
         <p className="font-semibold text-copper">{view.workshop}</p>
         <h1 className="text-t7 font-bold tracking-[-0.012em] phone:text-[1.625rem] phone:leading-8">Your case <span className="font-mono whitespace-nowrap">{view.refChecked}</span></h1>

@@ -1,6 +1,7 @@
 import Link from "next/link";
 import type { ReactNode } from "react";
 import { Logo } from "@/components/ui/logo";
+import { PaperHouse } from "@/components/ui/paper-name";
 import { DemoStrip } from "./demo-strip";
 
 /** Pages for customers: the workshop comes first, Twinread only signs the work. The page brings its own `<main id="main">`. */
@@ -16,6 +17,7 @@ export function PublicShell({ workshop, line, demo, checking = false, children }
     <>
       <a href="#main" className="skip-link sr-only focus:not-sr-only focus:absolute focus:top-2 focus:left-2 focus:z-50 focus:bg-sheet focus:px-4 focus:py-3 focus:text-ink">Go to the main part</a>
       {demo ? <DemoStrip /> : null}
+      <PaperHouse words={workshop} demo={demo} />
       <header className="board no-print">
         <div className="mx-auto flex max-w-[1120px] flex-wrap items-center gap-x-5 gap-y-1 px-8 py-3 phone:px-4">
           <b className="text-[1.0625rem]">{workshop}</b>

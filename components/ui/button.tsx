@@ -12,7 +12,7 @@ interface Look {
   children: ReactNode;
 }
 
-const BASE = "inline-flex items-center justify-center gap-2 border text-center font-semibold no-underline";
+const BASE = "btn inline-flex items-center justify-center gap-2 border text-center font-semibold no-underline";
 const SIZE: Record<ButtonSize, string> = {
   normal: "min-h-control px-3.5 py-[5px] text-t3",
   small: "min-h-7 px-2.5 py-0.5 text-t2",

@@ -1,4 +1,5 @@
 import Link from "next/link";
+import { PaperName } from "./paper-name";
 
 export interface Crumb {
   label: string;
@@ -8,6 +9,7 @@ export interface Crumb {
 export function Crumbs({ items }: { items: readonly Crumb[] }) {
   return (
     <nav aria-label="Where you are" className="pt-2.5">
+      <PaperName what={items.map(({ label }) => label).join(", ")} />
       <ol className="flex flex-wrap gap-x-2 gap-y-1 text-t2 text-ink-2">
         {items.map((item, i) => (
           <li key={item.label} className="flex gap-2">

@@ -17,8 +17,8 @@ export function Section({ title, note, aside, id, wide, strong, first, children 
   const rule = strong ? "border-t-[3px] border-double border-rule-2" : first ? "" : "border-t border-rule";
   const columns = `grid-cols-[var(--margin-col)_minmax(0,1fr)] narrow:grid-cols-[minmax(0,1fr)] ${wide ? "mid:grid-cols-[minmax(0,1fr)] mid:gap-y-3.5" : ""}`;
   return (
-    <section id={id} className={`grid gap-x-6 pt-[22px] pb-[26px] narrow:gap-y-3.5 print:break-inside-avoid print:grid-cols-[minmax(0,1fr)] print:gap-y-2 print:py-2.5 ${columns} ${rule}`}>
-      <div>
+    <section id={id} className={`grid gap-x-6 pt-[22px] pb-[26px] narrow:gap-y-3.5 print:block print:py-2.5 ${columns} ${rule}`}>
+      <div className="print:pb-2 print:break-after-avoid">
         <h2 className="text-t4 leading-[1.375rem] font-bold">{title}</h2>
         {note ? <p className="mt-1 text-t2 text-ink-2">{note}</p> : null}
         {aside}

@@ -4,6 +4,7 @@ import { useEffect, useRef, useState } from "react";
 import { Button } from "@/components/ui/button";
 import { Input } from "@/components/ui/input";
 import { Note } from "@/components/ui/note";
+import { PaperName } from "@/components/ui/paper-name";
 import { Progress } from "@/components/ui/progress";
 import { Section } from "@/components/ui/section";
 import { sizeText } from "@/lib/core/quantity";
@@ -57,6 +58,7 @@ export function VerifyScreen() {
           {again ? <Button className="mt-3" onClick={() => void check(again)}>Check again with this fingerprint</Button> : null}
         </Section>
       </div>
+      {state.at === "done" ? <PaperName what={`Check of ${state.file.name}`} /> : null}
       <div aria-live="polite">
         {state.at !== "done" ? null : state.checked.kind === "bundle" ? <BundleResult file={state.file} report={state.checked.report} onAnother={another} />
           : state.checked.kind === "file" ? <FileResult key={state.checked.digests.sha256} file={state.file} digests={state.checked.digests} onAnother={another} />

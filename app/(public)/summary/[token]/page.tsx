@@ -5,6 +5,7 @@ import { PrintButton } from "@/components/summary/print-button";
 import { SayOpened } from "@/components/summary/say-opened";
 import { SummarySheet } from "@/components/summary/summary-sheet";
 import { buttonClass } from "@/components/ui/button";
+import { PaperName } from "@/components/ui/paper-name";
 import { dayYearText } from "@/components/ui/times";
 import { env } from "@/lib/env";
 import { summaryByToken } from "@/lib/queries/summary";
@@ -23,6 +24,7 @@ export default async function SummaryPage({ params }: { params: Promise<{ token:
         <p>Made to be printed or kept.</p>
         <span className="flex flex-wrap items-center gap-3"><a className={buttonClass({})} href={`/summary/${token}/pdf`} download>Download as PDF</a><PrintButton /></span>
       </div>
+      <PaperName what={`Verification summary, case ${summary.caseRef}`} />
       <SummarySheet summary={summary} link={`${publicUrl}/summary/${token}`} timeZone={timeZone} />
       <SayOpened token={token} />
     </PublicShell>

@@ -17,6 +17,7 @@ import { ButtonLink } from "@/components/ui/button";
 import { Crumbs } from "@/components/ui/crumbs";
 import { Empty } from "@/components/ui/empty";
 import { Note } from "@/components/ui/note";
+import { PaperName as NameOnPaper } from "@/components/ui/paper-name";
 import { signedIn } from "@/lib/auth/page";
 import { LABEL_SIZES, type PaperName, PAPERS, PRINTED, type Printed, WRITE_TICKET_SIZES } from "@/lib/core/paper";
 import type { Actor } from "@/lib/core/words";
@@ -96,6 +97,7 @@ export default async function PrintedPage({ params, searchParams }: { params: Pr
       <PageMain className="pb-8">
         <div className="no-print">
           <Crumbs items={[{ label: "Cases", href: "/cases" }, { label: view.case.ref, href: `/cases/${id}` }, { label: "Print", href: `/cases/${id}/print` }, { label: title }]} />
+          <NameOnPaper what={`${title} of case ${view.case.refChecked}`} />
           <h1 className="pt-4 pb-3 text-t5 font-bold">{title} of case {view.case.ref}</h1>
         </div>
         {made.caution ? <div className="no-print pb-3"><Note kind="block" title={made.caution} /></div> : null}
