@@ -137,6 +137,7 @@ export const API: ApiRow[] = [
   change("POST", "/api/approvals/[id]/transfer", BENCH, (t) => ({ kind: "write", donorChipId: t.unknown })),
 
   look("/api/reads/[id]/bytes", (t) => `/api/reads/${t.readId}/bytes?offset=0&length=16`),
+  look("/api/reads/[id]/find", (t) => `/api/reads/${t.readId}/find?bytes=5A`),
   look("/api/reads/[id]/votes", (t) => `/api/reads/${t.readId}/votes`, everyRole(404)),
   // on a read that exists: whose it is decides
   { method: "POST", route: "/api/reads/[id]/download", at: (t) => `/api/reads/${t.readId}/download`, body: reason, cells: roles(403, 200, 200, 403) },
