@@ -1,7 +1,6 @@
 import { mkdirSync } from "node:fs";
 import path from "node:path";
 import type { Browser, Page } from "@playwright/test";
-import { TOPICS } from "@/components/help/topics";
 import { PRINTED } from "@/lib/core/paper";
 import { env } from "@/lib/env";
 import type { CaseRow, CaseView, ListView } from "@/lib/views";
@@ -49,7 +48,6 @@ const ANYBODY: readonly Screen[] = [
   ["verify-file", "/verify", choose("Case bundle or chip image", "odd.bin")],
   ["verify-no-bundle", "/verify", choose("Case bundle or chip image", "odd.zip")],
   ["help", "/help"],
-  ...TOPICS.map(({ key }): Screen => [`help-${key}`, `/help/${key}`]),
   ["link-shows-nothing", `/summary/${"x".repeat(43)}`],
   ["request-shows-nothing", `/request/${"x".repeat(43)}`],
 ];
@@ -191,13 +189,22 @@ async function take(page: Page, person: string, [name, at, step]: Screen): Promi
   }
 }
 
+/** A page for each topic that the help's first page leads to. */
+async function helpPages(browser: Browser): Promise<Screen[]> {
+  const page = await visitor(browser);
+  await page.goto("/help");
+  const hrefs = await page.locator('main a[href^="/help/"]').evaluateAll((links) => [...new Set(links.map((link) => link.getAttribute("href") ?? ""))]);
+  await page.close();
+  return hrefs.filter((href) => !href.includes("#")).map((href): Screen => [href.slice(1).replaceAll("/", "-"), href]);
+}
+
 async function takeAll(browser: Browser): Promise<void> {
   mkdirSync(target, { recursive: true });
   const links: Screen[] = [
     ["requested", await pathFor("corin@ashdale.example", "request")], ["slip", `${await pathFor("corin@ashdale.example", "request")}/slip`],
     ["summary", await pathFor("jory.kemble@kemble.example", "summary")], ["requested-closed", await pathFor("jory.kemble@kemble.example", "request")],
   ];
-  for (const [person, screens] of [["anybody", [...ANYBODY, ...links]], ...Object.entries(PEOPLE)] as const) {
+  for (const [person, screens] of [["anybody", [...ANYBODY, ...(await helpPages(browser)), ...links]], ...Object.entries(PEOPLE)] as const) {
     const wanted = screens.filter(([name]) => `${person}-${name}`.includes(only));
     if (wanted.length === 0) continue;
     const page = person === "anybody" ? await visitor(browser) : await signedIn(browser, person);
