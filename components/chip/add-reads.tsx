@@ -1,11 +1,11 @@
 "use client";
 
-import { zodResolver } from "@hookform/resolvers/zod";
 import { useEffect, useRef, useState } from "react";
 import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { Input } from "@/components/ui/input";
 import { Note } from "@/components/ui/note";
+import { rulesFrom } from "@/components/ui/rules";
 import { Select } from "@/components/ui/select";
 import { TextArea } from "@/components/ui/text-area";
 import { useSay } from "@/components/ui/toast";
@@ -18,11 +18,13 @@ import { equipmentKept, keepEquipment } from "./equipment";
 import { type FileLook, heldBecause, lookAt, textAddress } from "./file-look";
 import { FormatFields } from "./format-fields";
 import { HeldFiles } from "./held-files";
-import { clipCaution, contentsOf, fieldsToSend, FIELD_NAMES, likelyStage, numberTyped, seatingOptions, SUPPLY_OPTIONS, supplyWarning, uploadForm, type UploadFormValues } from "./upload-form";
+import { clipCaution, contentsOf, fieldsToSend, FIELD_NAMES, likelyStage, numberTyped, seatingOptions, SUPPLY_OPTIONS, supplyWarning, type UploadFormValues } from "./upload-form";
 import { UploadLine } from "./upload-line";
+import type { uploadForm } from "./upload-rules";
 import { useUploads } from "./use-uploads";
 import { walkText } from "./walk-text";
 
+const rules = rulesFrom(() => import("./upload-rules").then((m) => m.uploadForm));
 const METHOD_OPTIONS = [{ value: "", label: "Not said" }, ...METHODS.map((m) => ({ value: m, label: METHOD_WORD[m] }))];
 const HELD_OPTIONS = [{ value: "", label: "Not said" }, { value: "true", label: "Held in reset" }, { value: "false", label: "Not held" }];
 const text = (value: unknown) => (typeof value === "string" ? value : value === undefined || value === null ? "" : String(value));
@@ -48,7 +50,7 @@ export function AddReads({ chip, userId, donorAsked, onChanged }: {
   const [incomplete, setIncomplete] = useState(false);
   const first = likelyStage(chip, contents);
   const { register, setValue, setFocus, control, trigger, getValues, formState: { errors } } = useForm<z.input<typeof uploadForm>, unknown, z.output<typeof uploadForm>>({
-    resolver: zodResolver(uploadForm),
+    resolver: rules,
     defaultValues: { stage: first, seating: String(chip.nextSeating[first]), reader: "", method: "", toolVersion: "", adapter: "", supplyMillivolts: "", clockKilohertz: "", controllerHeld: "", note: "", format: "raw", base: "", size: String(contents.find((c) => c.stage === first)?.expectedBytes ?? ""), fill: "0xFF" },
   });
   useEffect(() => {
@@ -94,11 +96,16 @@ export function AddReads({ chip, userId, donorAsked, onChanged }: {
     say({ text: `${nameOf(upload.read)} is stored.${same.length > 0 ? ` It equals ${namesOf(upload.read.stage, same)}.` : ""}` });
   });
 
+  // the form's rules may have to be fetched first: a second click meanwhile must not send a file twice
+  const sent = useRef(new WeakSet<FileLook>());
+
   /** Sends these files as the form says; whatever can't go yet waits on the page. */
-  async function sendAll(looks: readonly FileLook[]) {
+  async function sendAll(asked: readonly FileLook[]) {
     const complete = await trigger(undefined, { shouldFocus: true });
     setIncomplete(!complete);
+    const looks = asked.filter((one) => !sent.current.has(one));
     if (!content || !complete) return setHeld(looks);
+    for (const one of looks) sent.current.add(one);
     const values = getValues();
     const fields = fieldsToSend(Object.fromEntries(FIELD_NAMES.map((name) => [name, text(values[name]).trim()])) as UploadFormValues);
     keepEquipment(fields);

@@ -45,14 +45,16 @@ export function ApprovalSection({ chip, user, timeZone, onChanged }: { chip: Chi
         </Buttons>
         {open && !approval && decidable && may(user, "approval.give") && barred ? <Note kind="note" title={`You ${partText(mine)}, so you can’t approve this image.`}>{chip.approvers.length > 0 ? `${peopleText(chip.approvers.map((p) => p.name))} can.` : "Nobody else may, either."}</Note> : null}
       </div>
-      <ReasonDialog open={asked === "send-back"} onClose={() => setAsked(null)} title="Send back to the bench" action="Send back" variant="stop" label="What should be done first?"
-        onReason={async (reason) => {
-          await send("POST", `/api/chips/${chip.id}/sending-back`, { reason });
-          await onChanged();
-          say({ text: "Sent back to the bench." });
-        }} />
-      {approval ? (
-        <ReasonDialog open={asked === "revoke"} onClose={() => setAsked(null)} title="Revoke the approval" action="Revoke the approval" variant="stop"
+      {asked === "send-back" ? (
+        <ReasonDialog onClose={() => setAsked(null)} title="Send back to the bench" action="Send back" variant="stop" label="What should be done first?"
+          onReason={async (reason) => {
+            await send("POST", `/api/chips/${chip.id}/sending-back`, { reason });
+            await onChanged();
+            say({ text: "Sent back to the bench." });
+          }} />
+      ) : null}
+      {asked === "revoke" && approval ? (
+        <ReasonDialog onClose={() => setAsked(null)} title="Revoke the approval" action="Revoke the approval" variant="stop"
           description={chip.transfers.length > 0 ? "The donor then holds an image that is no longer cleared." : "The image may then no longer be handed out for writing."}
           onReason={async (reason) => {
             await send("POST", `/api/approvals/${approval.id}/revocation`, { reason });

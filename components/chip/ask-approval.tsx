@@ -1,17 +1,19 @@
 "use client";
 
-import { zodResolver } from "@hookform/resolvers/zod";
 import { useState } from "react";
 import { useForm } from "react-hook-form";
 import type { z } from "zod";
 import { Button, Buttons } from "@/components/ui/button";
 import { Note } from "@/components/ui/note";
+import { rulesFrom } from "@/components/ui/rules";
 import { TextArea } from "@/components/ui/text-area";
 import { useSay } from "@/components/ui/toast";
 import { countOf } from "@/lib/core/quantity";
 import { Refusal, send } from "@/lib/http/send";
-import { type ApprovalRequestInput, approvalRequestInput } from "@/lib/schemas/approval";
+import type { ApprovalRequestInput, approvalRequestInput } from "@/lib/schemas/approval";
 import type { ChipView } from "@/lib/views";
+
+const rules = rulesFrom(() => import("@/lib/schemas/approval").then((m) => m.approvalRequestInput));
 
 /** Lines that keep the request closed, in words; null when a lead can be asked. */
 function closedBecause(chip: ChipView): string | null {
@@ -23,7 +25,7 @@ function closedBecause(chip: ChipView): string | null {
 export function AskApproval({ chip, onChanged }: { chip: ChipView; onChanged(): Promise<unknown> }) {
   const say = useSay();
   const [refusal, setRefusal] = useState<string | null>(null);
-  const { register, handleSubmit, reset, formState: { errors, isSubmitting } } = useForm<z.input<typeof approvalRequestInput>, unknown, ApprovalRequestInput>({ resolver: zodResolver(approvalRequestInput), defaultValues: { message: "" } });
+  const { register, handleSubmit, reset, formState: { errors, isSubmitting } } = useForm<z.input<typeof approvalRequestInput>, unknown, ApprovalRequestInput>({ resolver: rules, defaultValues: { message: "" } });
   // findings that a lead may answer with a reason do not close the request
   const askable = chip.state.state === "ready" || (chip.state.state === "held" && chip.reads.every((r) => r.stage !== "before" || !r.counted || r.findings.every((f) => f.severity !== "blocks")));
   const closed = askable ? null : closedBecause(chip);

@@ -12,8 +12,9 @@ import { seatingLetter, type Stage } from "@/lib/core/words";
 import type { ChipView, ReadView, SessionView } from "@/lib/views";
 import { ReadOrigin } from "./read-origin";
 import { nameOf, oddReads } from "./chip-words";
-import { ReadDialogs, type ReadAction } from "./read-dialogs";
+import { ReadDialogs } from "./read-dialogs";
 import { ReadFindings } from "./read-findings";
+import type { ReadAction } from "./read-form";
 
 const GROUPS: { stage: Stage; board: "original" | "donor"; words: string }[] = [
   { stage: "before", board: "original", words: "Original chip. Nothing is ever written to it." },

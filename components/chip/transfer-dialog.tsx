@@ -18,33 +18,28 @@ import { EncryptionNote } from "./encryption-note";
 import { SiblingNote } from "./unit-note";
 
 /** Records what was done at the bench: the image was written, or the chip itself was moved. */
-export function TransferDialog({ open, onClose, chip, approval, onChanged }: { open: boolean; onClose(): void; chip: ChipView; approval: ApprovalView; onChanged(): Promise<unknown> }) {
+export function TransferDialog({ onClose, chip, approval, onChanged }: { onClose(): void; chip: ChipView; approval: ApprovalView; onChanged(): Promise<unknown> }) {
   const say = useSay();
   const [refusal, setRefusal] = useState<string | null>(null);
-  const { register, handleSubmit, reset, formState: { errors, isSubmitting } } = useForm<z.input<typeof transferInput>, unknown, TransferInput>({
+  const { register, handleSubmit, formState: { errors, isSubmitting } } = useForm<z.input<typeof transferInput>, unknown, TransferInput>({
     resolver: zodResolver(transferInput),
     defaultValues: { kind: "write", donorChipId: approval.donorChipId, programmer: "", toolVersion: "", adapter: "", note: "" },
   });
   const donor = chip.pair?.designator ?? chip.designator;
-  function close() {
-    setRefusal(null);
-    reset();
-    onClose();
-  }
   const submit = handleSubmit(async (input) => {
     setRefusal(null);
     try {
       await send("POST", `/api/approvals/${approval.id}/transfer`, input);
       await onChanged();
       say({ text: "The transfer is recorded. Now read back." });
-      close();
+      onClose();
     } catch (error) {
       if (!(error instanceof Refusal)) throw error;
       setRefusal(error.detail);
     }
   });
   return (
-    <Dialog open={open} onOpenChange={(next) => { if (!next) close(); }} title="Record the transfer" description="Record it once it is done. Read-backs belong to the latest transfer, so each write is recorded on its own.">
+    <Dialog open onOpenChange={onClose} title="Record the transfer" description="Record it once it is done. Read-backs belong to the latest transfer, so each write is recorded on its own.">
       <form onSubmit={submit} noValidate className="grid gap-3.5">
         <fieldset className="grid gap-1.5">
           <legend className="mb-1 text-t2 font-semibold">What was done?</legend>
@@ -60,7 +55,7 @@ export function TransferDialog({ open, onClose, chip, approval, onChanged }: { o
         {refusal ? <Note kind="block" role="alert" title="This was not recorded.">{refusal}</Note> : null}
         <Buttons>
           <Button type="submit" variant="lead" disabled={isSubmitting}>Record the transfer</Button>
-          <Button onClick={close}>Leave it</Button>
+          <Button onClick={onClose}>Leave it</Button>
         </Buttons>
       </form>
     </Dialog>

@@ -7,6 +7,7 @@ import { FindingLine } from "@/components/ui/finding-line";
 import { Mark } from "@/components/ui/mark";
 import { Note } from "@/components/ui/note";
 import { momentText } from "@/components/ui/times";
+import { whenAsked } from "@/components/ui/when-asked";
 import { may } from "@/lib/core/policy";
 import { countOf, sizeText } from "@/lib/core/quantity";
 import { seatingLetter } from "@/lib/core/words";
@@ -14,8 +15,8 @@ import type { ChipView, SessionView, TransferView } from "@/lib/views";
 import { approvedRead, nameOf } from "./chip-words";
 import { EncryptionNote } from "./encryption-note";
 import { HandOut } from "./hand-out";
-import { TransferDialog } from "./transfer-dialog";
 
+const TransferDialog = whenAsked(() => import("./transfer-dialog").then((m) => m.TransferDialog));
 const KIND = { write: "Written", "chip-moved": "Chip moved" } as const;
 
 /** Image out, transfer recorded, read-backs in; each transfer with what came back of it. */
@@ -54,7 +55,7 @@ export function TransferSection({ chip, user, timeZone, onChanged }: { chip: Chi
         </Buttons>
         {chip.approval ? null : <p className="text-ink-2">The approval no longer stands. It takes a new one before anything is written.</p>}
       </div>
-      {chip.approval ? <TransferDialog open={recording} onClose={() => setRecording(false)} chip={chip} approval={chip.approval} onChanged={onChanged} /> : null}
+      {recording && chip.approval ? <TransferDialog onClose={() => setRecording(false)} chip={chip} approval={chip.approval} onChanged={onChanged} /> : null}
     </div>
   );
 }

@@ -2,10 +2,8 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
-import { Button } from "@/components/ui/button";
 import { Checkbox } from "@/components/ui/checkbox";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { Note } from "@/components/ui/note";
@@ -22,7 +20,7 @@ import { KIND_WORDS } from "./closing-words";
 /** Filled in where a drive never had a chip to move. */
 const NO_CHIP_REASON = "There was no chip to move: the drive’s own data lies inside its main controller.";
 
-function CloseForm({ caseId, caseRef, closing, onClose }: { caseId: string; caseRef: string; closing: ClosingView; onClose(): void }) {
+export function CloseForm({ caseId, caseRef, closing, onClose }: { caseId: string; caseRef: string; closing: ClosingView; onClose(): void }) {
   const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
@@ -51,15 +49,5 @@ function CloseForm({ caseId, caseRef, closing, onClose }: { caseId: string; case
       <TextArea label={open.length > 0 ? "Reason" : "Reason or remark"} hint={open.length > 0 ? "Goes into the log of every drive as you type it." : "Only where something has to be said. Goes into the log of every drive."} error={errors.reason?.message} {...register("reason")} />
       <p className="text-t2 text-ink-2">Its images fall due for erasure {closing.keepDays} days after {closing.returned ? "the return" : "today"}, as the customer was told.</p>
     </FormDialog>
-  );
-}
-
-export function CloseCase({ caseId, caseRef, closing, lead }: { caseId: string; caseRef: string; closing: ClosingView; lead: boolean }) {
-  const [open, setOpen] = useState(false);
-  return (
-    <>
-      <Button variant={lead ? "lead" : "plain"} onClick={() => setOpen(true)}>Close the case…</Button>
-      {open ? <CloseForm caseId={caseId} caseRef={caseRef} closing={closing} onClose={() => setOpen(false)} /> : null}
-    </>
   );
 }

@@ -3,7 +3,7 @@ import { Section } from "@/components/ui/section";
 import { momentText } from "@/components/ui/times";
 import type { ClosingView } from "@/lib/views";
 import { KIND_WORDS } from "./closing-words";
-import { ReopenCase } from "./reopen-form";
+import { ReopenCase } from "./reopen-case";
 
 /** What went back and how the case ended; nothing is shown before that. */
 export function ClosingSection({ caseId, caseRef, closing, releases, timeZone }: { caseId: string; caseRef: string; closing: ClosingView; releases: boolean; timeZone: string }) {

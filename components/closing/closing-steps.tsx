@@ -5,8 +5,8 @@ import { may } from "@/lib/core/policy";
 import { listText } from "@/lib/core/quantity";
 import { OTHER_SERIAL_TEXT, startUpWords } from "@/lib/core/start-up";
 import type { CaseView, ClosingView, SessionView } from "@/lib/views";
-import { CloseCase } from "./close-form";
-import { RecordReturn } from "./return-form";
+import { CloseCase } from "./close-case";
+import { RecordReturn } from "./record-return";
 import { startUpMark } from "./start-up-words";
 
 type Drive = ClosingView["drives"][number];

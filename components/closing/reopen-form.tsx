@@ -2,16 +2,14 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { useForm } from "react-hook-form";
-import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { TextArea } from "@/components/ui/text-area";
 import { useChange } from "@/components/ui/use-change";
 import { send } from "@/lib/http/send";
 import { type ReopeningInput, reopeningInput } from "@/lib/schemas/closing";
 
-function ReopenForm({ caseId, caseRef, onClose }: { caseId: string; caseRef: string; onClose(): void }) {
+export function ReopenForm({ caseId, caseRef, onClose }: { caseId: string; caseRef: string; onClose(): void }) {
   const router = useRouter();
   const { refusal, busy, attempt } = useChange();
   const { register, handleSubmit, formState: { errors } } = useForm<ReopeningInput>({ resolver: zodResolver(reopeningInput), defaultValues: { reason: "" } });
@@ -25,15 +23,5 @@ function ReopenForm({ caseId, caseRef, onClose }: { caseId: string; caseRef: str
       description="It comes back to the bench and takes changes again. Its images are due for erasure no more until it is closed again.">
       <TextArea label="Reason" hint="Goes into the log of every drive as you type it." error={errors.reason?.message} {...register("reason")} />
     </FormDialog>
-  );
-}
-
-export function ReopenCase({ caseId, caseRef }: { caseId: string; caseRef: string }) {
-  const [open, setOpen] = useState(false);
-  return (
-    <>
-      <Button onClick={() => setOpen(true)}>Reopen the case…</Button>
-      {open ? <ReopenForm caseId={caseId} caseRef={caseRef} onClose={() => setOpen(false)} /> : null}
-    </>
   );
 }

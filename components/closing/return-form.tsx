@@ -2,10 +2,8 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { useForm } from "react-hook-form";
 import { z } from "zod";
-import { Button } from "@/components/ui/button";
 import { Checkbox } from "@/components/ui/checkbox";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { Input } from "@/components/ui/input";
@@ -21,7 +19,7 @@ const NOTHING = "Tick at least one thing that goes back, or write it in a line o
 const form = z.strictObject({ ...returnInput.shape, items: z.array(z.string()).or(z.literal(false)), more: z.string() });
 type Form = z.input<typeof form>;
 
-function ReturnForm({ caseId, closing, onClose }: { caseId: string; closing: ClosingView; onClose(): void }) {
+export function ReturnForm({ caseId, closing, onClose }: { caseId: string; closing: ClosingView; onClose(): void }) {
   const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
@@ -53,15 +51,5 @@ function ReturnForm({ caseId, closing, onClose }: { caseId: string; closing: Clo
       </div>
       <Note kind="caution" title="Boards travel in closed anti-static bags.">The enclosure’s small board goes back with its drive: it may hold the key to the data.</Note>
     </FormDialog>
-  );
-}
-
-export function RecordReturn({ caseId, closing, lead }: { caseId: string; closing: ClosingView; lead: boolean }) {
-  const [open, setOpen] = useState(false);
-  return (
-    <>
-      <Button variant={lead ? "lead" : "plain"} onClick={() => setOpen(true)}>Record the return…</Button>
-      {open ? <ReturnForm caseId={caseId} closing={closing} onClose={() => setOpen(false)} /> : null}
-    </>
   );
 }

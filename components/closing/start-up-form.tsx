@@ -2,10 +2,8 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { Controller, useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
-import { Button } from "@/components/ui/button";
 import { Checkbox } from "@/components/ui/checkbox";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { Input } from "@/components/ui/input";
@@ -19,7 +17,7 @@ import { type StartUpInput, startUpInput } from "@/lib/schemas/start-up";
 
 type Form = z.input<typeof startUpInput>;
 
-function StartUpForm({ driveId, label, onClose }: { driveId: string; label: string | null; onClose(): void }) {
+export function StartUpForm({ driveId, label, onClose }: { driveId: string; label: string | null; onClose(): void }) {
   const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
@@ -54,15 +52,5 @@ function StartUpForm({ driveId, label, onClose }: { driveId: string; label: stri
         <TextArea label="Note" className="col-span-full" hint="Sounds, smells, current, how long it took" error={errors.note?.message} {...register("note")} />
       </div>
     </FormDialog>
-  );
-}
-
-export function RecordStartUp({ driveId, label, reason, lead }: { driveId: string; label: string | null; reason: string | null; lead: boolean }) {
-  const [open, setOpen] = useState(false);
-  return (
-    <>
-      <Button variant={lead ? "lead" : "plain"} reason={reason} onClick={() => setOpen(true)}>Record a start-up test…</Button>
-      {open ? <StartUpForm driveId={driveId} label={label} onClose={() => setOpen(false)} /> : null}
-    </>
   );
 }

@@ -4,7 +4,7 @@ import { Section } from "@/components/ui/section";
 import { momentText } from "@/components/ui/times";
 import { OTHER_SERIAL_TEXT, OTHER_SERIAL_TITLE, startUpWords } from "@/lib/core/start-up";
 import type { DriveStartUps } from "@/lib/views";
-import { RecordStartUp } from "./start-up-form";
+import { RecordStartUp } from "./record-start-up";
 import { serialText, startUpMark } from "./start-up-words";
 
 const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);

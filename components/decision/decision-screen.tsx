@@ -1,6 +1,5 @@
 "use client";
 
-import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
 import { useMemo, useState } from "react";
 import { useForm, useWatch } from "react-hook-form";
@@ -10,6 +9,7 @@ import { Votes } from "@/components/composite/votes";
 import { Button, Buttons } from "@/components/ui/button";
 import { HelpLink } from "@/components/ui/help-link";
 import { Note } from "@/components/ui/note";
+import { rulesFrom } from "@/components/ui/rules";
 import { Section } from "@/components/ui/section";
 import { useSay } from "@/components/ui/toast";
 import { REASON_CHARACTERS } from "@/lib/core/approval";
@@ -20,7 +20,8 @@ import { Refusal, send } from "@/lib/http/send";
 import type { DecisionView, SessionView } from "@/lib/views";
 import { standsAgainst, standsFor, stillOpen } from "./against";
 import { BeforeYouSign } from "./before-you-sign";
-import { type DecisionForm, decisionForm, reasonLength, sameDigits } from "./decision-form";
+import { reasonLength, sameDigits } from "./decision-form";
+import type { DecisionForm } from "./decision-rules";
 import { ImageFacts } from "./image-facts";
 import { Ledger } from "./ledger";
 import { Sign } from "./sign";
@@ -40,8 +41,8 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
   const composite = compositeBehind(chip.reads, image?.sha256);
   const against = useMemo(() => standsAgainst(view), [view]);
   const codes = useMemo(() => [...new Set(against.flatMap((i) => (i.reasonFor ? [i.reasonFor] : [])))], [against]);
-  const schema = useMemo(() => decisionForm(image?.sha256 ?? "", codes), [image, codes]);
-  const { register, control, handleSubmit, formState: { errors, isSubmitting } } = useForm<DecisionForm>({ resolver: zodResolver(schema), mode: "onTouched", defaultValues: { statement: "", last8: "", reasons: {} } });
+  const resolver = useMemo(() => rulesFrom(() => import("./decision-rules").then((m) => m.decisionForm(image?.sha256 ?? "", codes))), [image, codes]);
+  const { register, control, handleSubmit, formState: { errors, isSubmitting } } = useForm<DecisionForm>({ resolver, mode: "onTouched", defaultValues: { statement: "", last8: "", reasons: {} } });
   const typed = useWatch({ control });
   const matches = image !== null && sameDigits(typed.last8 ?? "", image.sha256);
   const signs = !chip.approval && image !== null && maySign(chip, user);
@@ -91,8 +92,8 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
           <Section title="Before you sign"><BeforeYouSign chip={chip} composite={composite} /></Section>
           <Section strong title="Sign" note="Goes into the custody log, signed.">
             {refused}
-            {signs
             <p className="hidden print:block"><b>Not signed as this was printed.</b> An image is cleared on the screen only: no signature on this paper clears it.</p>
+            {signs
               ? <Sign chip={chip} user={user} composite={composite !== null} open={open} matches={matches} busy={isSubmitting} register={register} errors={errors} onSubmit={submit} onSendBack={sendBack} />
               : (
                 <div className="grid gap-3.5">
@@ -103,12 +104,14 @@ export function DecisionScreen({ view, session }: { view: DecisionView; session:
           </Section>
         </>
       )}
-      <ReasonDialog open={sendingBack} onClose={() => setSendingBack(false)} title="Send back to the bench" action="Send back" variant="stop" label="What should be done first?"
-        onReason={async (reason) => {
-          await send("POST", `/api/chips/${chip.id}/sending-back`, { reason });
-          router.refresh();
-          say({ text: "Sent back to the bench." });
-        }} />
+      {sendingBack ? (
+        <ReasonDialog onClose={() => setSendingBack(false)} title="Send back to the bench" action="Send back" variant="stop" label="What should be done first?"
+          onReason={async (reason) => {
+            await send("POST", `/api/chips/${chip.id}/sending-back`, { reason });
+            router.refresh();
+            say({ text: "Sent back to the bench." });
+          }} />
+      ) : null}
     </>
   );
 }

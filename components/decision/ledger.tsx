@@ -8,7 +8,7 @@ import { TextArea } from "@/components/ui/text-area";
 import { countOf } from "@/lib/core/quantity";
 import type { ConditionView } from "@/lib/views";
 import type { AgainstItem } from "./against";
-import type { DecisionForm } from "./decision-form";
+import type { DecisionForm } from "./decision-rules";
 
 const HEAD = "border-b border-rule-2 pb-[5px] text-t4 font-bold";
 const COUNT = "ml-1.5 text-t3 font-normal text-ink-2";

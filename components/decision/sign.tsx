@@ -7,7 +7,7 @@ import { Input } from "@/components/ui/input";
 import { Mark } from "@/components/ui/mark";
 import { TextArea } from "@/components/ui/text-area";
 import type { ChipView, SessionView } from "@/lib/views";
-import type { DecisionForm } from "./decision-form";
+import type { DecisionForm } from "./decision-rules";
 import { WhoMaySign } from "./who-may-sign";
 
 /** Statement, typed digits, signature. The button waits, and says for what. */

@@ -30,13 +30,15 @@ export function Standing({ chip, approval, composite, session }: { chip: ChipVie
         <ButtonLink variant="lead" href={`/chips/${chip.id}#transfer`}>Open {chip.designator}</ButtonLink>
         {may(session.user, "approval.revoke") ? <Button variant="stop" onClick={() => setAsked(true)}>Revoke…</Button> : null}
       </Buttons>
-      <ReasonDialog open={asked} onClose={() => setAsked(false)} title="Revoke the approval" action="Revoke the approval" variant="stop"
-        description={chip.transfers.some((t) => t.approvalId === approval.id) ? "The donor then holds an image that is no longer cleared. Nothing is erased: the revocation is a new entry." : "The image may then no longer be handed out for writing. Nothing is erased: the revocation is a new entry."}
-        onReason={async (reason) => {
-          await send("POST", `/api/approvals/${approval.id}/revocation`, { reason });
-          router.refresh();
-          say({ text: "The approval no longer stands." });
-        }} />
+      {asked ? (
+        <ReasonDialog onClose={() => setAsked(false)} title="Revoke the approval" action="Revoke the approval" variant="stop"
+          description={chip.transfers.some((t) => t.approvalId === approval.id) ? "The donor then holds an image that is no longer cleared. Nothing is erased: the revocation is a new entry." : "The image may then no longer be handed out for writing. Nothing is erased: the revocation is a new entry."}
+          onReason={async (reason) => {
+            await send("POST", `/api/approvals/${approval.id}/revocation`, { reason });
+            router.refresh();
+            say({ text: "The approval no longer stands." });
+          }} />
+      ) : null}
     </div>
   );
 }

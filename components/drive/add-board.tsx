@@ -3,10 +3,12 @@
 import Link from "next/link";
 import { useState } from "react";
 import { Button } from "@/components/ui/button";
+import { whenAsked } from "@/components/ui/when-asked";
 import type { BoardRole } from "@/lib/core/words";
 import type { DriveView } from "@/lib/views";
 import { originalOf } from "./drive-words";
-import { RecordFlow } from "./record-flow";
+
+const RecordFlow = whenAsked(() => import("./record-flow").then((m) => m.RecordFlow));
 
 export function AddBoard({ drive, role, isLead, userId, lead }: {
   drive: DriveView;

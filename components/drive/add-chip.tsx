@@ -2,8 +2,10 @@
 
 import { useState } from "react";
 import { Button } from "@/components/ui/button";
+import { whenAsked } from "@/components/ui/when-asked";
 import type { BoardView, DriveView } from "@/lib/views";
-import { RecordFlow } from "./record-flow";
+
+const RecordFlow = whenAsked(() => import("./record-flow").then((m) => m.RecordFlow));
 
 export function AddChip({ drive, board, isLead, userId, lead }: { drive: DriveView; board: BoardView; isLead: boolean; userId: string; lead?: boolean }) {
   const [open, setOpen] = useState(false);

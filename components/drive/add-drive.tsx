@@ -2,8 +2,10 @@
 
 import { useState } from "react";
 import { Button } from "@/components/ui/button";
+import { whenAsked } from "@/components/ui/when-asked";
 import type { DriveProposal } from "./drive-step";
-import { RecordFlow } from "./record-flow";
+
+const RecordFlow = whenAsked(() => import("./record-flow").then((m) => m.RecordFlow));
 
 /** Opens the way from the label to the donor's chip; `opened` when the page was called for it. */
 export function AddDrive({ caseId, userId, isLead, lead, opened = false, proposed }: {

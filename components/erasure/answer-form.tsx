@@ -2,9 +2,7 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { useForm } from "react-hook-form";
-import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { TextArea } from "@/components/ui/text-area";
 import { useSay } from "@/components/ui/toast";
@@ -12,7 +10,7 @@ import { useChange } from "@/components/ui/use-change";
 import { send } from "@/lib/http/send";
 import { type DeletionAnswerInput, deletionAnswerInput } from "@/lib/schemas/erasure";
 
-function AnswerForm({ requestId, email, onClose }: { requestId: string; email: string; onClose(): void }) {
+export function AnswerForm({ requestId, email, onClose }: { requestId: string; email: string; onClose(): void }) {
   const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
@@ -28,16 +26,5 @@ function AnswerForm({ requestId, email, onClose }: { requestId: string; email: s
       description={`It goes to ${email}, stands on the customer’s private page and in the log. The wish stays on record, so that the images can be erased later because of it.`}>
       <TextArea label="Answer" hint="What has to be kept, why, and until when. Write no name: the log keeps it." rows={5} error={errors.answer?.message} {...register("answer")} />
     </FormDialog>
-  );
-}
-
-/** One of two answers to a customer's wish for deletion; the other is the erasure itself. */
-export function AnswerWish({ requestId, email }: { requestId: string; email: string }) {
-  const [open, setOpen] = useState(false);
-  return (
-    <>
-      <Button onClick={() => setOpen(true)}>Answer why not yet…</Button>
-      {open ? <AnswerForm requestId={requestId} email={email} onClose={() => setOpen(false)} /> : null}
-    </>
   );
 }

@@ -2,9 +2,7 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { useForm } from "react-hook-form";
-import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { Input } from "@/components/ui/input";
 import { Note } from "@/components/ui/note";
@@ -18,7 +16,7 @@ import type { ErasureView } from "@/lib/views";
 import { amountText } from "./erasure-words";
 import { ItemList } from "./item-list";
 
-function EraseForm({ view, onClose }: { view: ErasureView; onClose(): void }) {
+export function EraseForm({ view, onClose }: { view: ErasureView; onClose(): void }) {
   const router = useRouter();
   const say = useSay();
   const { refusal, busy, attempt } = useChange();
@@ -49,15 +47,5 @@ function EraseForm({ view, onClose }: { view: ErasureView; onClose(): void }) {
       <Input label="Case number" hint={`Type ${view.caseRef}, so that it is this case and no other.`} autoComplete="off" className="max-w-[220px]" error={errors.caseRef?.message} {...register("caseRef")} />
       <TextArea label="Reason" hint="Goes into the log as you type it. Write no customer’s name." rows={3} error={errors.reason?.message} {...register("reason")} />
     </FormDialog>
-  );
-}
-
-export function EraseImages({ view }: { view: ErasureView }) {
-  const [open, setOpen] = useState(false);
-  return (
-    <>
-      <Button variant="stop" reason={view.refusal} disabled={view.refusal !== null} onClick={() => setOpen(true)}>Erase the images…</Button>
-      {open ? <EraseForm view={view} onClose={() => setOpen(false)} /> : null}
-    </>
   );
 }

@@ -4,9 +4,9 @@ import { Section } from "@/components/ui/section";
 import { dayYearText, dueText } from "@/components/ui/times";
 import { countOf } from "@/lib/core/quantity";
 import type { ErasureView } from "@/lib/views";
-import { EraseImages } from "./erase-form";
+import { EraseImages } from "./erase-images";
 import { amountText, CAUSE_WORDS } from "./erasure-words";
-import { KeepLonger } from "./keep-form";
+import { KeepLonger } from "./keep-longer";
 
 const dayYear = (day: string) => `${dueText(day)} ${day.slice(0, 4)}`;
 

@@ -2,10 +2,8 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useRouter } from "next/navigation";
-import { useState } from "react";
 import { useForm } from "react-hook-form";
 import type { z } from "zod";
-import { Button } from "@/components/ui/button";
 import { FormDialog } from "@/components/ui/form-dialog";
 import { Input } from "@/components/ui/input";
 import { TextArea } from "@/components/ui/text-area";
@@ -15,9 +13,9 @@ import { send } from "@/lib/http/send";
 import { type KeepingInput, keepingInput } from "@/lib/schemas/erasure";
 import type { ErasureView } from "@/lib/views";
 
-type What = "keep" | "end";
+export type What = "keep" | "end";
 
-function KeepForm({ view, what, onClose }: { view: ErasureView; what: What; onClose(): void }) {
+export function KeepForm({ view, what, onClose }: { view: ErasureView; what: What; onClose(): void }) {
   const router = useRouter();
   const { refusal, busy, attempt } = useChange();
   const { register, handleSubmit, setError, formState: { errors } } = useForm<z.input<typeof keepingInput>, unknown, KeepingInput>({ resolver: zodResolver(keepingInput), defaultValues: { until: what === "keep" ? view.kept?.until ?? "" : "", reason: "" } });
@@ -34,17 +32,5 @@ function KeepForm({ view, what, onClose }: { view: ErasureView; what: What; onCl
       {what === "keep" ? <Input label="Until" type="date" min={view.eraseOn ?? undefined} className="max-w-[220px]" error={errors.until?.message} {...register("until")} /> : null}
       <TextArea label="Reason" hint="Goes into the log of every drive as you type it. Write no customer’s name." rows={3} error={errors.reason?.message} {...register("reason")} />
     </FormDialog>
-  );
-}
-
-/** A later day for the images, or the end of one. */
-export function KeepLonger({ view }: { view: ErasureView }) {
-  const [open, setOpen] = useState<What | null>(null);
-  return (
-    <>
-      <Button onClick={() => setOpen("keep")}>{view.kept ? "Change the later day…" : "Keep longer…"}</Button>
-      {view.kept ? <Button onClick={() => setOpen("end")}>End the keeping…</Button> : null}
-      {open ? <KeepForm view={view} what={open} onClose={() => setOpen(null)} /> : null}
-    </>
   );
 }

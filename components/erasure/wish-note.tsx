@@ -3,7 +3,7 @@ import { Note } from "@/components/ui/note";
 import { dayYearText } from "@/components/ui/times";
 import { countOf } from "@/lib/core/quantity";
 import type { RequestSectionView } from "@/lib/views";
-import { AnswerWish } from "./answer-form";
+import { AnswerWish } from "./answer-wish";
 
 const leftText = (days: number) => (days > 1 ? `${countOf(days, "day")} left` : days === 1 ? "the last day" : days === 0 ? "due today" : `${countOf(-days, "day")} late`);
 

@@ -4,10 +4,12 @@ import { useState } from "react";
 import { Button } from "@/components/ui/button";
 import { Mark } from "@/components/ui/mark";
 import { momentText } from "@/components/ui/times";
+import { whenAsked } from "@/components/ui/when-asked";
 import type { HandOverView, ItemView, PersonView } from "@/lib/views";
-import { ConfirmForm } from "./confirm-form";
-import { HandOverForm } from "./hand-over-form";
 import { handOverSteps, itemTitle, itemWords, waitsWords } from "./item-words";
+
+const ConfirmForm = whenAsked(() => import("./confirm-form").then((m) => m.ConfirmForm));
+const HandOverForm = whenAsked(() => import("./hand-over-form").then((m) => m.HandOverForm));
 
 type Open = { kind: "hand-over"; item: ItemView } | { kind: "confirm" | "deny"; item: ItemView; handOver: HandOverView } | null;
 
@@ -40,7 +42,7 @@ export function ItemsTable({ driveId, items, user, receivers, acts, open: begins
               <td data-l="Condition" className="[overflow-wrap:anywhere]">{(item.open ?? item.at)?.condition ?? <span className="text-ink-3">as recorded</span>}</td>
               <td data-l="Seal" className="min-w-[10ch] font-mono">{(item.open ?? item.at)?.sealNumber ?? <span className="font-face text-ink-3">none</span>}</td>
               <td data-l={item.at ? "Since" : undefined} className="whitespace-nowrap">{item.at ? momentText(item.at.confirmed!.at, timeZone) : ""}</td>
-              {acts ? <td className="l-row whitespace-nowrap"><Steps item={item} user={user} begins={begins} onOpen={setOpen} /></td> : null}
+              {acts ? <td className="l-row text-right whitespace-nowrap phone:text-left"><Steps item={item} user={user} begins={begins} onOpen={setOpen} /></td> : null}
             </tr>
           ))}
         </tbody>
@@ -57,7 +59,7 @@ function Steps({ item, user, begins, onOpen }: { item: ItemView; user: { id: str
   const handOver = item.open;
   const { confirms, denies } = handOverSteps(handOver, user);
   return (
-    <span className="flex gap-2 phone:flex-wrap">
+    <span className="inline-flex gap-2 phone:flex phone:flex-wrap">
       {confirms ? <Button size="small" onClick={() => onOpen({ kind: "confirm", item, handOver })}>Confirm…</Button> : null}
       {denies ? <Button size="small" onClick={() => onOpen({ kind: "deny", item, handOver })}>Did not arrive…</Button> : null}
     </span>

@@ -1,10 +1,11 @@
 "use client";
 
 import Link from "next/link";
-import { Toast as Radix } from "radix-ui";
-import { createContext, useCallback, useContext, useState, type ReactNode } from "react";
+import { createContext, useCallback, useContext, useEffect, useRef, useState, type ReactNode } from "react";
 import { Icon } from "./icon";
 import { Mark } from "./mark";
+
+const SHOWN_MS = 8_000;
 
 interface Saying {
   text: string;
@@ -24,19 +25,39 @@ export function ToastProvider({ children }: { children: ReactNode }) {
   const say = useCallback((saying: Saying) => setNow((before) => ({ ...saying, key: (before?.key ?? 0) + 1 })), []);
   return (
     <Say.Provider value={say}>
-      <Radix.Provider duration={8000} swipeDirection="left" label="Message">
-        {children}
-        {now ? (
-          <Radix.Root key={now.key} type="background" onOpenChange={(open) => { if (!open) setNow(null); }}
-            className="grid max-w-[520px] grid-cols-[16px_minmax(0,1fr)_auto_auto] items-center gap-3 bg-ink px-3.5 py-3 text-paper [--hole:var(--ink)]">
-            <Mark kind="ok" className="!text-paper" />
-            <Radix.Title>{now.text}</Radix.Title>
-            {now.link ? <Radix.Action asChild altText={now.link.label}><Link href={now.link.href} className="text-paper font-semibold">{now.link.label}</Link></Radix.Action> : <span />}
-            <Radix.Close aria-label="Close" className="grid h-6 w-6 place-items-center"><Icon name="close" /></Radix.Close>
-          </Radix.Root>
-        ) : null}
-        <Radix.Viewport className="no-print fixed bottom-4 left-4 z-50 m-0 w-[min(520px,calc(100vw-32px))] list-none p-0" />
-      </Radix.Provider>
+      {children}
+      {/* always there: what is read aloud is a change within it */}
+      <div role="status" aria-label="Message" className="no-print fixed bottom-4 left-4 z-50 w-[min(520px,calc(100vw-32px))]">
+        {now ? <Toast key={now.key} text={now.text} link={now.link} onEnd={() => setNow(null)} /> : null}
+      </div>
     </Say.Provider>
+  );
+}
+
+/** Its time stands still while the pointer or the focus is on it. */
+function Toast({ text, link, onEnd }: Saying & { onEnd(): void }) {
+  const box = useRef<HTMLDivElement>(null);
+  const [held, setHeld] = useState(false);
+  const end = useRef(onEnd);
+  useEffect(() => {
+    end.current = onEnd;
+  }, [onEnd]);
+  useEffect(() => {
+    if (held) return;
+    const timer = setTimeout(() => end.current(), SHOWN_MS);
+    return () => clearTimeout(timer);
+  }, [held]);
+  function close() {
+    if (box.current?.contains(document.activeElement)) document.getElementById("main")?.focus({ preventScroll: true });
+    onEnd();
+  }
+  return (
+    <div ref={box} onPointerEnter={() => setHeld(true)} onPointerLeave={() => setHeld(false)} onFocus={() => setHeld(true)} onBlur={() => setHeld(false)} onKeyDown={(event) => { if (event.key === "Escape") close(); }}
+      className="grid grid-cols-[16px_minmax(0,1fr)_auto_auto] items-center gap-3 bg-ink px-3.5 py-3 text-paper [--hole:var(--ink)]">
+      <Mark kind="ok" className="!text-paper" />
+      <span>{text}</span>
+      {link ? <Link href={link.href} className="text-paper font-semibold">{link.label}</Link> : <span />}
+      <button type="button" aria-label="Close" onClick={close} className="grid h-6 w-6 place-items-center"><Icon name="close" /></button>
+    </div>
   );
 }

@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { addressesIn, formatByLook, heldBecause, lookAt as lookBy } from "@/components/chip/file-look";
-import { fieldsToSend, FIELD_NAMES, uploadForm, type UploadFormValues } from "@/components/chip/upload-form";
+import { fieldsToSend, FIELD_NAMES, type UploadFormValues } from "@/components/chip/upload-form";
+import { uploadForm } from "@/components/chip/upload-rules";
 import { fromImage } from "@/lib/core/text-format";
 
 /** in the browser a worker does this */

@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { agreeingOrder } from "@/components/chip/agreement-matrix";
-import { supplyWarning, uploadForm } from "@/components/chip/upload-form";
+import { supplyWarning } from "@/components/chip/upload-form";
+import { uploadForm } from "@/components/chip/upload-rules";
 import { sizeQuestion } from "@/components/chip/will-equal";
 
 describe("the upload form", () => {
