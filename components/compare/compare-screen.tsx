@@ -93,8 +93,10 @@ export function CompareScreen({ compared, reads, start, csv }: {
       </div>
       <CompareBar current={current} total={ranges.length} at={at} sizeBytes={sizeBytes} fold={fold} under={under} keys={keys} field={field}
         onStep={step} onGo={go} onFold={setFold} onUnder={setUnder} onKeys={setKeys}>
-        <FindBar reads={compared.reads} names={names} at={at} hit={hit} sizeBytes={sizeBytes} onFound={(found) => { setHit(found); go(found.at); }} />
-        <CopyHex reads={compared.reads} names={names} stretch={inside ?? { start: at - (at % LINE), length: Math.min(LINE, sizeBytes - at + (at % LINE)) }} sizeBytes={sizeBytes} />
+        <div className="flex flex-wrap gap-x-8 gap-y-2.5 pt-2.5">
+          <FindBar reads={compared.reads} names={names} at={at} hit={hit} sizeBytes={sizeBytes} onFound={(found) => { setHit(found); go(found.at); }} />
+          <CopyHex reads={compared.reads} names={names} stretch={inside ?? { start: at - (at % LINE), length: Math.min(LINE, sizeBytes - at + (at % LINE)) }} sizeBytes={sizeBytes} />
+        </div>
       </CompareBar>
       <div id="bytes" className={`compare-bytes ${names.length > 2 ? "is-three" : ""}`}>
         <RangeList ranges={ranges} truncated={compared.truncated ?? false} current={current} sizeBytes={sizeBytes} csv={csv} onGo={go} />

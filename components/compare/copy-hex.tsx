@@ -40,7 +40,7 @@ export function CopyHex({ reads, names, stretch, sizeBytes }: { reads: readonly 
     <input key={`${name} ${at}`} name={name} aria-label={label} defaultValue={address(at, sizeBytes)} autoComplete="off" spellCheck={false} aria-invalid={wrong ? true : undefined} aria-describedby="copy-says" className={controlClass(Boolean(wrong), true, "!w-[118px] min-h-control")} />
   );
   return (
-    <form className="no-print flex flex-wrap items-center gap-x-2.5 gap-y-2 pt-2.5 text-t2" aria-label="Copy as hex" onSubmit={(event) => { event.preventDefault(); void copy(new FormData(event.currentTarget)); }}>
+    <form className="no-print flex flex-wrap items-center gap-x-2.5 gap-y-2 text-t2" aria-label="Copy as hex" onSubmit={(event) => { event.preventDefault(); void copy(new FormData(event.currentTarget)); }}>
       <span>Copy</span>
       <Select quiet label="Read to copy from" name="read" options={names.map((name, side) => ({ value: String(side), label: name }))} />
       <span>from</span>{field("first", "First address to copy", stretch.start)}<span>to</span>{field("last", "Last address to copy", stretch.start + stretch.length - 1)}

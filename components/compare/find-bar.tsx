@@ -61,9 +61,9 @@ export function FindBar({ reads, names, at, hit, sizeBytes, onFound }: { reads: 
   }
 
   return (
-    <form className="no-print flex flex-wrap items-center gap-x-3.5 gap-y-2 pt-2.5" role="search" aria-label="Find in the bytes" onSubmit={(event) => { event.preventDefault(); void find("next"); }}>
+    <form className="no-print flex flex-wrap items-center gap-x-2.5 gap-y-2" role="search" aria-label="Find in the bytes" onSubmit={(event) => { event.preventDefault(); void find("next"); }}>
       <label htmlFor="sought" className="text-t2">Find</label>
-      <input ref={field} id="sought" maxLength={256} autoComplete="off" spellCheck={false} placeholder={as === "bytes" ? "5A A5" : ""} aria-invalid={wrong ? true : undefined} aria-describedby="sought-says" className={controlClass(Boolean(wrong), true, "!w-[220px] min-h-control")} />
+      <input ref={field} id="sought" maxLength={256} autoComplete="off" spellCheck={false} placeholder={as === "bytes" ? "5A A5" : ""} aria-invalid={wrong ? true : undefined} aria-describedby="sought-says" className={controlClass(Boolean(wrong), true, "!w-[180px] min-h-control")} />
       <Select quiet label="Written as" value={as} onChange={(event) => setAs(event.target.value as "bytes" | "text")} options={[{ value: "bytes", label: "as bytes" }, { value: "text", label: "as text" }]} />
       <Select quiet label="In which read" value={where} onChange={(event) => setWhere(event.target.value)} options={[{ value: "", label: "in any read" }, ...names.map((name, side) => ({ value: String(side), label: `in ${name}` }))]} />
       <Button onClick={() => void find("previous")}><Icon name="prev" />Find previous</Button>

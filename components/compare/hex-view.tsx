@@ -34,7 +34,7 @@ export function HexView({ reads, names, alone, ranges, truncated, stack, goal, h
   const layoutName = `${under ? "is-under" : ""} ${reads.length > 2 ? "is-three" : ""}`;
   const heights = useHeights(boxRef, layoutName);
   const layout = useMemo(() => layOut({ sizeBytes, ranges, truncated, fold, here: goal.at, opened, heights }), [sizeBytes, ranges, truncated, fold, goal, opened, heights]);
-  const { rows, partPx, abovePx, seen, onScroll, show } = useHexScroll(boxRef, layout, goal);
+  const { rows, partPx, abovePx, seen, onScroll, show, keep } = useHexScroll(boxRef, layout, goal);
   const columns = useMemo(() => reads.map((r, i) => ({ name: names[i], note: r.derived ? "composite" : `seating ${seatingLetter(r.seating)}, ${r.reader}` })), [reads, names]);
 
   const [cache] = useState(createByteCache);
@@ -60,7 +60,10 @@ export function HexView({ reads, names, alone, ranges, truncated, stack, goal, h
           <div className="hex-part" style={{ height: `calc(${partPx}px + var(--hex-head))`, paddingTop: abovePx }}>
             <HexTable rows={rows} total={layout.rows} columns={columns} alone={alone} here={goal.at} hit={hit} sizeBytes={sizeBytes} boxRef={boxRef}
               windowOf={(side, number) => cache.windowOf(reads[side], number)}
-              onOpen={(row) => setOpened((before) => [...before, { start: row.at, length: row.length }])} onPoint={onPoint} />
+              onOpen={(row) => {
+                keep(goal.at);
+                setOpened((before) => [...before, { start: row.at, length: row.length }]);
+              }} onPoint={onPoint} />
           </div>
         </div>
         <AddressScale stack={stack} seen={seen} onShow={show} />

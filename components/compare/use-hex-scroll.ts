@@ -50,6 +50,8 @@ export interface HexScroll {
   onScroll(): void;
   /** puts an address at the upper edge */
   show(at: number): void;
+  /** of rows that fold or open next, those around this address stay where they are seen */
+  keep(at: number): void;
 }
 
 /** An address that was gone to, a new object each time; `still` where it was only pointed at in the box. */
@@ -118,12 +120,20 @@ export function useHexScroll(boxRef: RefObject<HTMLElement | null>, layout: HexL
     settle();
   }, [settle]);
 
+  const keep = useCallback((at: number) => {
+    const element = boxRef.current;
+    if (!element) return;
+    const y = base.current + element.scrollTop;
+    const top = topOf(layout, at);
+    if (top >= y && top < y + element.clientHeight) place.current = { at, px: y - top };
+  }, [boxRef, layout]);
+
   const beyond = BEYOND * heights.line;
   const rows = rowsBetween(layout, view.top - beyond, view.top + step + view.high + beyond);
   const [first] = rowsBetween(layout, view.top, view.top + 1);
   const last = rowsBetween(layout, view.top + view.high - 1, view.top + view.high).at(-1) ?? rows.at(-1);
   return {
     rows, partPx: Math.min(PART_PX, height), abovePx: Math.max(0, (rows[0]?.top ?? 0) - view.base),
-    seen: { from: first?.at ?? 0, to: last ? last.at + last.length : 0 }, onScroll, show,
+    seen: { from: first?.at ?? 0, to: last ? last.at + last.length : 0 }, onScroll, show, keep,
   };
 }

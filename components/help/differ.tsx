@@ -23,7 +23,7 @@ export function DifferHelp() {
     <>
       <CautionList of={["power", "original", "heat"]} />
       <Part title="What the page shows">
-        <p>Under each two reads lies a lane: a plain line where they are equal, ticks where they differ. The matrix shows which reads are equal as a whole, and how many bytes differ otherwise. “Compare” shows the bytes side by side; N and P jump from one difference to the next.</p>
+        <p>Under each two reads lies a lane: a plain line where they are equal, ticks where they differ. The matrix shows which reads are equal as a whole, and how many bytes differ otherwise. “Compare” shows the bytes of two or three reads side by side; N and P jump from one difference to the next, G goes to an address, “Find” looks for bytes or a text, and a stretch can be copied as hex.</p>
         <p>“Looks like” is a guess from the pattern. What decides is only whether reads are equal.</p>
       </Part>
       <Part title="What to do first">
