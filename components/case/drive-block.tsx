@@ -11,6 +11,7 @@ import { driveFacts, lesserFacts, originalOf } from "@/components/drive/drive-wo
 import { NoChipToMove } from "@/components/drive/no-chip-to-move";
 import { Empty } from "@/components/ui/empty";
 import { may } from "@/lib/core/policy";
+import { listText } from "@/lib/core/quantity";
 import type { Policy } from "@/lib/core/words";
 import type { BoardView, DriveView, PhotoGroup, PhotoView, SessionView } from "@/lib/views";
 import { BoardFigure, type DriveRights, FitLine } from "./board-figure";
@@ -50,6 +51,8 @@ export function DriveBlock({ drive, policy, user, open, photos, here = false }: 
   const given = { drive, isLead: rights.isLead, userId: user.id };
   const { records } = rights;
   const inside = original?.dataInController ?? false;
+  const names = original && original.chips.length > 0 && original.chips.every((chip) => !chip.needsTransfer) ? original.chips.map((chip) => chip.designator) : [];
+  const kept = names.length > 0 ? `${listText(names)} ${names.length === 1 ? "is" : "are"} kept for reference; nothing of this drive is transferred.` : null;
   const figure = (board: BoardView) => <BoardFigure drive={drive} board={board} spots={spots} rights={rights} photo={photoOf(photos, board)} />;
   return (
     <section id={`drive-${drive.letter}`} aria-label={`Drive ${drive.letter}`}>
@@ -71,8 +74,10 @@ export function DriveBlock({ drive, policy, user, open, photos, here = false }: 
       ) : (
         <div className="board-pair">
           {figure(original)}
-          <Transfer />
-          {donor ? figure(donor) : (
+          {kept && !donor ? <span /> : <Transfer />}
+          {donor ? figure(donor) : kept ? (
+            <Empty title="No donor board is needed." action={records ? <AddBoard role="donor" {...given} /> : null}>{kept}</Empty>
+          ) : (
             <Empty title="No donor board yet." action={records ? <AddBoard role="donor" {...given} /> : null}>It has to carry the board number {original.boardNumber}.</Empty>
           )}
         </div>
@@ -87,7 +92,7 @@ export function DriveBlock({ drive, policy, user, open, photos, here = false }: 
           {donors.filter((board) => board !== donor).map((board) => <li key={board.id} className="flex flex-wrap items-baseline gap-x-3">Also recorded: donor <span className="font-mono">{boardName(board)}</span>{board.fit ? <FitLine fit={board.fit} /> : null}</li>)}
         </ul>
       ) : null}
-      {donor && !inside && records ? <div className="no-print pt-3"><AddBoard role="donor" {...given} /></div> : null}
+      {donor && !inside && records ? <div className={`no-print pt-3 ${here ? "pb-6" : ""}`}><AddBoard role="donor" {...given} /></div> : null}
     </section>
   );
 }

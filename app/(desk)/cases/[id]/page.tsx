@@ -68,7 +68,7 @@ export default async function CasePage({ params, searchParams }: { params: Promi
         {view.drives.map((drive) => <DriveBlock key={drive.id} drive={drive} policy={policy} user={user} open={view.state === "open"} />)}
         {view.drives.length === 0 ? <div className="py-8"><Empty title="No drive yet." action={adds ? <AddDrive {...drive} lead /> : null}>{WITHOUT_DRIVE[view.state]}</Empty></div> : null}
         {view.drives.length > 0 && adds ? <div className="no-print py-6"><AddDrive {...drive} /></div> : null}
-        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} leads={leads} mailStays={mailStaysHere()} tests={<StartUpSteps closing={closing} user={user} leads={leads} />} end={<ReturnSteps view={view} closing={closing} user={user} leads={leads} />} /></Section>
+        <Section title="Next on this case" note="Things that can’t be done yet say why."><NextSteps view={view} policy={policy} user={user} leads={leads} mailStays={mailStaysHere()} timeZone={timeZone} tests={<StartUpSteps closing={closing} user={user} leads={leads} />} end={<ReturnSteps view={view} closing={closing} user={user} leads={leads} />} /></Section>
         <ClosingSection caseId={id} caseRef={view.ref} closing={closing} releases={may(actor, "case.release")} timeZone={timeZone} />
         {erasure ? <ImagesSection view={erasure} told={closing.returned ? `The customer was told: ${closing.keepDays} days after the return.` : "Counted from the day on which the case was closed."} erases={may(actor, "case.erase")} timeZone={timeZone} /> : null}
         {view.state === "requested" ? null : parcel}
