@@ -73,13 +73,13 @@ export function CustomerPage({ view, token, timeZone }: { view: RequestPageView;
             <Note kind="note" title={`You asked for deletion on ${day(view.deletion.askedAt)}.`} className="mt-2">{view.deletion.answered?.answer ? <>We answered on {day(view.deletion.answered.at)}: <q dir="auto" className="whitespace-pre-line [overflow-wrap:anywhere]">{view.deletion.answered.answer}</q>{view.erasedAt ? null : <> Your wish stays on record. If you don’t agree, ask {ask}.</>}</> : view.deletion.answered ? null : <>A lead technician of {view.workshop} answers you by {day(view.deletion.answerBy)}. If nobody has by then, ask {ask}.</>}</Note>
           ) : view.erasedAt ? null : (
             <>
-              <p className="py-1">We keep images of the chips for {images} days after the drive has gone back. You can ask for deletion at any time; a lead technician answers within {DELETION_ANSWER_DAYS} days.</p>
+              <p className="pt-1 pb-2.5">We keep images of the chips for {images} days after the drive has gone back. You can ask for deletion at any time; a lead technician answers within {DELETION_ANSWER_DAYS} days.</p>
               <AskDeletion token={token} answerDays={DELETION_ANSWER_DAYS} />
             </>
           )}
           <p className="pt-2 text-t2 text-ink-2">What stays in any case: the log of every step with check numbers of the images. Your name is not in it, and no image can be made from it.</p>
         </section>
-        {view.withdraws ? <section><h2>Changed your mind?</h2><p className="py-1">As long as the parcel isn’t here you can take the request back.</p><WithdrawRequest token={token} refChecked={view.refChecked} /></section> : null}
+        {view.withdraws ? <section><h2>Changed your mind?</h2><p className="pt-1 pb-2.5">As long as the parcel isn’t here you can take the request back.</p><WithdrawRequest token={token} refChecked={view.refChecked} /></section> : null}
         <p className="text-t2 text-ink-2">{view.ends ? `This page ends on ${day(view.ends)}.` : "This page stays until some time after the case is closed."} Whoever has its address sees it: don’t pass it on.</p>
       </aside>
     </main>

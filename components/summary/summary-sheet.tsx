@@ -1,3 +1,4 @@
+import { Qr } from "@/components/print/qr";
 import { Mark } from "@/components/ui/mark";
 import { dayText, dayYearText } from "@/components/ui/times";
 import { chipsOf, comesBackSentence, leadSentence, notStarted, ownBoardSentence, promiseLimits, steps } from "@/lib/core/summary-words";
@@ -27,7 +28,7 @@ export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView
       <p className="grid grid-cols-[24px_minmax(0,1fr)] gap-3 text-[1.0625rem] leading-6 font-semibold print:text-[0.9375rem] print:leading-5"><Mark kind={verified ? "ok" : "run"} size={24} /><span>{leadSentence(summary)}</span></p>
       {summary.drives.map((drive) => (
         <div key={drive.letter} className="grid gap-[11px]">
-          <p><b>{summary.drives.length > 1 ? `Drive ${drive.letter}` : "Your drive"}</b> <span className="font-mono">{drive.label}</span>. {ownBoardSentence(drive)}</p>
+          <p><b>{summary.drives.length > 1 ? `Drive ${drive.letter}` : "Your drive"}</b> <span className="font-medium [overflow-wrap:anywhere]">{drive.label}</span>. {ownBoardSentence(drive)}</p>
           {drive.chips.map((chip) => <SummaryChip key={chip.designator} chip={chip} timeZone={timeZone} both={chips.length <= BOTH_STRIPS_TO} />)}
         </div>
       ))}
@@ -51,9 +52,18 @@ export function SummarySheet({ summary, link, timeZone }: { summary: SummaryView
       </div>
       <footer className="sheet-foot">
         <p><b>What the words mean.</b> A “read” is the whole content of a chip, saved as a file. A “seating” is one time our clip was put on the chip. A “read-back” is a read of the donor chip after the write.{made.length > 0 ? " A “composite” is an image put together from several reads that differ: each bit is what most of them say." : ""} SHA-256 and CRC-32 are check numbers computed from the content: if one bit differed, they would be others.</p>
-        <p><b>Check it yourself.</b> This page by its private link must show these numbers. If somebody reads a donor chip before the drive’s first start, the SHA-256 of that file must equal the one above; drives may rewrite their chips afterwards.</p>
-        <p className="font-mono font-semibold [overflow-wrap:anywhere]">{link}</p>
-        <p className="text-ink-2">Whoever holds the link sees this page until {dayYearText(summary.expiresAt, timeZone)}. {summary.drives.map((d) => <span key={d.letter}>Entry {d.head.seq} of the custody log{summary.drives.length > 1 ? ` of Drive ${d.letter}` : ""}: <code className="[overflow-wrap:anywhere]">{d.head.hash}</code> </span>)}{summary.seal ? <>Seal {summary.seal.number}: <code className="[overflow-wrap:anywhere]">{summary.seal.sha256}</code>, signed with the key <code className="[overflow-wrap:anywhere]">{summary.seal.keyId}</code></> : null}</p>
+        <div className="sheet-check">
+          <div className="phone:hidden"><Qr text={link} size={84} label="The private link as a square code" /></div>
+          <div className="grid content-start gap-[5px]">
+            <p><b>Check it yourself.</b> This page by its private link must show these numbers. If somebody reads a donor chip before the drive’s first start, the SHA-256 of that file must equal the one above; drives may rewrite their chips afterwards.</p>
+            <p className="font-mono font-semibold [overflow-wrap:anywhere]">{link}</p>
+            <p className="text-ink-2">Whoever holds the link sees this page until {dayYearText(summary.expiresAt, timeZone)}. The log and its seal, to compare with later:</p>
+          </div>
+        </div>
+        <dl className="sheet-proofs">
+          {summary.drives.map((d) => <div key={d.letter}><dt>Custody log{summary.drives.length > 1 ? ` of Drive ${d.letter}` : ""}, entry {d.head.seq}</dt><dd>{d.head.hash}</dd></div>)}
+          {summary.seal ? <><div><dt>Seal {summary.seal.number}</dt><dd>{summary.seal.sha256}</dd></div><div><dt>Key that signed it</dt><dd>{summary.seal.keyId}</dd></div></> : null}
+        </dl>
       </footer>
     </main>
   );
