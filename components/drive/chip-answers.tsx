@@ -21,7 +21,7 @@ export function ChipAnswers({ register, errors, typed, onTakeSize }: {
     <fieldset className="grid gap-3 border-t border-rule pt-3">
       <legend className="sr-only">What the chip answers of itself</legend>
       <div className="grid gap-1.5">
-        <Input label="Id, if the chip gave one" mono autoComplete="off" spellCheck={false} placeholder="EF 40 13" hint="The three bytes that a serial flash answers to command 9F." error={errors.idBytes?.message} {...register("idBytes")} />
+        <Input label="Id, if the chip gave one" mono autoComplete="off" spellCheck={false} placeholder="12 40 13" hint="The three bytes that a serial flash answers to command 9F." error={errors.idBytes?.message} {...register("idBytes")} />
         <Says says={idSays(typed.idBytes)} size={size} onTake={onTakeSize} />
       </div>
       <div className="grid gap-1.5">

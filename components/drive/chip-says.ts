@@ -25,7 +25,7 @@ export function idSays(text: string): ChipSays | null {
     return { kind: plausible ? "ok" : "caution", sentence, proposal: proposedBytes === null ? null : { bytes: proposedBytes, source: "id" } };
   } catch (error) {
     if (!(error instanceof RangeError)) throw error;
-    return unfinished("Three bytes as hex digits, such as EF 40 13.");
+    return unfinished("Three bytes as hex digits, such as 12 40 13.");
   }
 }
 

@@ -5,7 +5,7 @@ import type { SizeSource } from "./words";
 
 /** The three bytes that a serial flash answers to 9Fh. No maker is ever inferred: an id names one of several. */
 export interface ChipIdFacts {
-  /** "EF 40 13" */
+  /** "12 40 13" */
   text: string;
   answered: boolean;
   /** the first byte has odd parity, as every assigned one has */
@@ -37,7 +37,7 @@ function ones(byte: number): number {
 
 /** Throws a RangeError when `bytes` are not three. */
 export function chipIdFacts(bytes: Uint8Array): ChipIdFacts {
-  if (bytes.length !== 3) throw new RangeError("An id has three bytes, such as EF 40 13. Enter all three.");
+  if (bytes.length !== 3) throw new RangeError("An id has three bytes, such as 12 40 13. Enter all three.");
   const text = (toHex(bytes).match(/../g) ?? []).join(" ").toUpperCase();
   const answered = !(bytes[0] === bytes[1] && bytes[1] === bytes[2]);
   const plausible = answered && ones(bytes[0]) % 2 === 1;
