@@ -8,7 +8,7 @@ const DAY_MS = 86_400_000;
 
 function since(iso: string, now: string): string {
   const days = Math.floor((Date.parse(now) - Date.parse(iso)) / DAY_MS);
-  return days < 1 ? "Asked for today" : `Asked for ${countOf(days, "day")} ago`;
+  return days < 1 ? "Asked today" : `Asked ${countOf(days, "day")} ago`;
 }
 
 /** What was asked for and is not here yet: the first group of the bench. There is no chip to name. */
@@ -27,7 +27,7 @@ export function ReceiveRows({ rows, acts, now }: { rows: readonly ToReceiveRow[]
           <td className="due"><span><b>{row.dueOn ? dueText(row.dueOn) : "No date"}</b></span></td>
           <td className="case"><Link href={`/cases/${row.caseId}`}>{row.caseRef}</Link></td>
           <td className="drv"><span>{row.customerName}</span><small className="font-mono">{row.partNumber ?? "no part number given"}</small></td>
-          <td className="chp" />
+          <td className="chp text-ink-2">whole drive</td>
           <td className="nxt">Receive the parcel when it comes.<small>{since(row.requestedAt, now)}. {row.neededBy && !row.dueOn ? `Needed by ${dueText(row.neededBy)}. ` : ""}{row.damage.length > 90 ? `${row.damage.slice(0, 90).replace(/\s+\S*$/, "")} …` : row.damage}</small></td>
           <td className="with">anyone</td>
           <td className="img" />

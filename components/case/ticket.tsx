@@ -26,7 +26,7 @@ export function Ticket({ view, timeZone, today }: { view: CaseView; timeZone: st
         <dl>
           <div><dt>Due</dt><dd>{view.dueOn ? dueText(view.dueOn) : "No date"}{late ? <span className="text-block">, late</span> : null}</dd></div>
           <div><dt>Received</dt><dd>{view.receivedAt ? momentText(view.receivedAt, timeZone) : "not yet"}</dd></div>
-          <div><dt>State</dt><dd className={mark === "block" ? "text-block" : ""}><Mark kind={mark} className="mr-1.5 [--hole:var(--sheet)]" />{words}</dd>{view.hold ? <dd><Mark kind="caution" className="mr-1.5 text-caution" /><a href="#notes">{waitsText(view.hold)}</a></dd> : null}</div>
+          <div><dt>State</dt><dd className={mark === "block" ? "text-block" : ""}><Mark kind={mark} className="mr-1.5 [--hole:var(--sheet)]" />{words}</dd>{view.hold ? <dd className="flex items-start gap-1.5"><Mark kind="caution" className="mt-0.5 text-caution" /><a href="#notes">{waitsText(view.hold)}</a></dd> : null}</div>
         </dl>
         <div className="no-print mt-auto"><PrintMenu links={casePrints(view.id)} /></div>
       </div>

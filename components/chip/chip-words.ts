@@ -116,5 +116,6 @@ export function readBackChipId(chip: ChipView): string | null {
 
 /** "SPI, 4 Mbit, SOIC-8, 3.3 V" */
 export function chipKind(chip: Pick<ChipSummary, "bus" | "sizeBytes" | "package" | "supplyMillivolts">): string {
-  return [kindText(chip.bus, chip.sizeBytes), chip.package, supplyText(chip.supplyMillivolts)].filter(Boolean).join(", ");
+  // a package's name is read in one piece: "TSSOP-8" with a hyphen that doesn't break
+  return [kindText(chip.bus, chip.sizeBytes), chip.package?.replaceAll("-", "\u2011"), supplyText(chip.supplyMillivolts)].filter(Boolean).join(", ");
 }

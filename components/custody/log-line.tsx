@@ -28,7 +28,7 @@ export function LogLine({ entry, timeZone, trace, against, open, onToggle, full 
         <td className={`via via-${against ? "differs" : entry.kind} ${trace}`}><i aria-hidden="true" /><span className="sr-only">{entry.kind === "differs" ? "something differed" : entry.kind === "signed" ? "signed or verified" : entry.kind === "set-aside" ? "set aside" : "entry"}</span></td>
         <td>{entry.seq}</td>
         <td className="whitespace-nowrap">{entry.at ? exactText(entry.at, timeZone) : "unknown time"}</td>
-        <td>{entry.actor.name}{entry.actor.role === "system" ? null : <span className="text-ink-3">, {entry.actor.role}</span>}</td>
+        <td className="who">{entry.actor.name}{entry.actor.role === "system" ? null : <span className="text-ink-3">, {entry.actor.role}</span>}</td>
         <td className="what [overflow-wrap:anywhere]">
           {entry.kind === "signed" ? <b>{entry.sentence}</b> : entry.sentence}
           {onToggle ? <button type="button" className="no-print ml-2 min-h-6 text-t2 text-green underline underline-offset-3" aria-expanded={open} aria-controls={`${id}-body`} onClick={onToggle}>{open ? "Close" : "Open"}<span className="sr-only"> entry {entry.seq}</span></button> : null}

@@ -20,16 +20,18 @@ export function NotesSection({ view, notes, user, timeZone, neededBy }: { view: 
         {notes.length === 0 ? <p className="text-ink-3">No note yet.</p> : (
           <ol className="border-t border-rule">
             {notes.map((note) => (
-              <li key={note.id} className="grid grid-cols-[minmax(0,1fr)_auto] gap-x-4 gap-y-1 border-b border-rule py-2.5">
+              <li key={note.id} className="grid grid-cols-[minmax(0,1fr)_auto] items-start gap-x-4 border-b border-rule py-2.5">
+                <div className="grid gap-1">
                 <p className={`whitespace-pre-line [overflow-wrap:anywhere] ${note.correctedBy ? "text-ink-3" : ""}`}>
                   {note.corrects ? <b>Corrects note {note.corrects}. </b> : null}{note.text}{note.correctedBy ? <b> Corrected by note {note.correctedBy}.</b> : null}
                 </p>
-                {writes && !note.correctedBy ? <AddNote caseId={view.id} drives={[]} corrects={note} /> : <span />}
-                <p className="col-span-full text-t2 text-ink-2">
+                <p className="text-t2 text-ink-2">
                   Note {note.number}{note.drive ? `, Drive ${note.drive}` : ""}, {note.by.name}, {momentText(note.at, timeZone)}
                   {note.happenedAt ? `; happened ${momentText(note.happenedAt, timeZone)}` : ""}
                   {note.lateByHours === null ? "" : <b className="text-caution">, written {lateText(note.lateByHours)}</b>}
                 </p>
+                </div>
+                {writes && !note.correctedBy ? <AddNote caseId={view.id} drives={[]} corrects={note} /> : <span />}
               </li>
             ))}
           </ol>

@@ -38,7 +38,7 @@ export function PhotoSheet({ view, timeZone }: { view: PhotoPageView; timeZone: 
         </Buttons>
       </div>
       {photo.erased || photo.sound ? null : <div className="pt-3"><FindingLine kind="block">The stored original is damaged or missing: what is shown is a copy made before. Send the same file once more, or restore it from a backup.</FindingLine></div>}
-      <p className="pt-3 text-t2 text-ink-2"><Link href={view.back.href}>Back to {view.back.label}</Link></p>
+      <p className="pt-3 pb-6 text-t2 text-ink-2"><Link href={view.back.href}>Back to {view.back.label}</Link></p>
     </>
   );
 }

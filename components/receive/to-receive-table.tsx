@@ -9,7 +9,7 @@ export function ToReceiveTable({ rows, timeZone }: { rows: readonly ToReceiveRow
   return (
     <table className="ruled lines">
       <caption className="sr-only">Requests whose parcel is not here yet</caption>
-      <thead><tr><th scope="col">Case</th><th scope="col">Customer</th><th scope="col">Part number</th><th scope="col">Damage</th><th scope="col">Asked for</th><th scope="col"><span className="sr-only">Open</span></th></tr></thead>
+      <thead><tr><th scope="col">Case</th><th scope="col">Customer</th><th scope="col">Part number</th><th scope="col">Damage</th><th scope="col">Asked on</th><th scope="col"><span className="sr-only">Open</span></th></tr></thead>
       <tbody>
         {rows.map((row) => (
           <tr key={row.caseId}>

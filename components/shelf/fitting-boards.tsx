@@ -35,7 +35,7 @@ export function FittingBoards({ view, driveId, takes, isLead }: Rights & { view:
               <td className="l-full max-w-[46ch]"><FitLines board={board} /></td>
               <td data-l="Chips">{board.chips.length > 0 ? board.chips.map((chip) => <span key={chip.designator} className="block text-t2"><b className="font-mono">{chip.designator}</b> {chipFacts(chip)}</span>) : <span className="text-ink-3">not on record</span>}</td>
               <td data-l="Place" className="min-w-[18ch]">{board.place ?? <span className="text-ink-3">not said</span>}</td>
-              {takes ? <td className="l-row"><TakeBoard board={board} driveId={driveId} /></td> : null}
+              {takes ? <td className="l-row text-right phone:text-left"><TakeBoard board={board} driveId={driveId} /></td> : null}
             </tr>
           ))}
         </tbody>

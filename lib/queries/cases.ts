@@ -71,7 +71,7 @@ export async function caseRows(rows: Case[]): Promise<CaseRow[]> {
   const states = await Promise.all(records.filter((r) => r.chip.needsTransfer).map(async (record) => ({ caseId: record.case.id, designator: record.chip.designator, ...(await chipState(record, policy)) })));
   return rows.map((row) => ({
     id: row.id, ref: row.ref, customerName: customers.get(row.customerId)?.name ?? "", damage: row.damage, dueOn: row.dueOn ?? null,
-    partNumbers: drives.filter((d) => d.caseId === row.id).map((d) => d.partNumber ?? d.model ?? d.serial).join(", "),
+    partNumbers: [...new Set(drives.filter((d) => d.caseId === row.id).map((d) => d.partNumber ?? d.model ?? d.serial))].join(", "),
     receivedAt: row.receivedAt?.toISOString() ?? null, requestedAt: row.requestedAt?.toISOString() ?? null, state: caseState(row), eraseOn: dueDay({ eraseOn: row.eraseOn ?? null, keptUntil: row.keptUntil ?? null }), erasedOn: row.erasedAt ? dayIn(env().timeZone, row.erasedAt) : null,
     chips: states.filter((s) => s.caseId === row.id).map(({ state, label, designator }) => ({ state, label, designator })), noChipToMove: noChip.has(row.id),
   }));

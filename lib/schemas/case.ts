@@ -8,7 +8,7 @@ export const caseInput = z.strictObject({
     phone: maybe(line(60, "a telephone number")).optional(),
     contact: maybe(line(200, "a contact")).optional(),
   }),
-  damage: prose(4000, "what happened to the drive"),
+  damage: prose(4000, "an account of what happened to the drive"),
   note: maybe(prose(4000, "a note")).optional(),
   dueOn: maybe(day).optional(),
 });

@@ -17,8 +17,10 @@ export default async function UsersPage() {
   return (
     <DeskShell session={session} current="users">
       <PageMain className="pb-8">
-        <PageTitle note="Each change is an entry of the workshop’s custody log. Accounts are switched off, never deleted.">Users</PageTitle>
-        <Buttons className="pb-5"><AddUser /></Buttons>
+        <div className="flex flex-wrap items-end justify-between gap-x-6">
+          <PageTitle note="Each change is an entry of the workshop’s custody log. Accounts are switched off, never deleted.">Users</PageTitle>
+          <Buttons className="pb-5"><AddUser /></Buttons>
+        </div>
         <UserTable users={users} ownId={actor.id} timeZone={session.timeZone} />
       </PageMain>
     </DeskShell>

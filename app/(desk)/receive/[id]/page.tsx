@@ -32,7 +32,7 @@ export default async function ReceiveCasePage({ params }: { params: Promise<{ id
     <DeskShell session={session} current="receive">
       <PageMain className="pb-8">
         <Crumbs items={[{ label: "Receive", href: "/receive" }, { label: parcel.caseRef }]} />
-        <PageTitle note={`${parcel.customerName}. ${parcel.requestedAt ? `Asked for ${momentText(parcel.requestedAt, timeZone)}.` : "Recorded at the desk."}`}>
+        <PageTitle note={`${parcel.customerName}. ${parcel.requestedAt ? `Asked on ${momentText(parcel.requestedAt, timeZone)}.` : "Recorded at the desk."}`}>
           {receipt ? "Parcel received, case " : "Parcel of case "}<span className="font-mono whitespace-nowrap">{parcel.refChecked}</span>
         </PageTitle>
         {receipt ? (

@@ -25,7 +25,7 @@ export default async function ImportPage() {
           <div className="grid max-w-[76ch] gap-2">
             <p>{COLUMNS.map((name, i) => <span key={name}>{i > 0 ? ", " : ""}<span className="font-mono text-t2">{name}</span></span>)}. Only <span className="font-mono text-t2">board number</span> has to be there.</p>
             <p>A line with a number such as <span className="font-mono text-t2">D-0012</span> changes that board; one without a number adds a board, which gets the next one.</p>
-            <p>Chips stand in one cell: <span className="font-mono text-t2">U12,spi,524288,SOIC-8,A7 0442 K;U3,i2c,8192</span> is designator, bus, size in bytes, package and marking, with a semicolon between two chips.</p>
+            <p>Chips stand in one cell: <span className="font-mono text-t2">U3,spi,524288,SOIC-8,A7 0442 K;U12,i2c,8192</span> is designator, bus, size in bytes, package and marking, with a semicolon between two chips.</p>
             <p>The list that <a href="/api/shelf-boards?format=csv" download>the shelf saves as CSV</a> has all of them and changes nothing when it is brought back as it is.</p>
           </div>
         </Section>
