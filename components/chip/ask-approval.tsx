@@ -8,6 +8,7 @@ import { Note } from "@/components/ui/note";
 import { rulesFrom } from "@/components/ui/rules";
 import { TextArea } from "@/components/ui/text-area";
 import { useSay } from "@/components/ui/toast";
+import { Working } from "@/components/ui/working";
 import { countOf } from "@/lib/core/quantity";
 import { Refusal, send } from "@/lib/http/send";
 import type { ApprovalRequestInput, approvalRequestInput } from "@/lib/schemas/approval";
@@ -46,6 +47,7 @@ export function AskApproval({ chip, onChanged }: { chip: ChipView; onChanged(): 
       <TextArea label="Message to the lead" disabled={Boolean(closed)} placeholder={closed ? "Opens when every line is met" : ""} error={errors.message?.message} {...register("message")} />
       {refusal ? <Note kind="block" role="alert" title="Nobody was asked.">{refusal}</Note> : null}
       <Buttons><Button type="submit" reason={closed} disabled={isSubmitting}>Ask for approval</Button></Buttons>
+      {isSubmitting ? <Working what="The leads are being asked" note="It is done as a whole or not at all." /> : null}
     </form>
   );
 }

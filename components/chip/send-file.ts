@@ -11,7 +11,7 @@ export interface StoredReads {
   chip: StateView;
 }
 
-const BROKEN: Problem = { status: 0, title: "The connection broke", detail: "The connection broke off and nothing was stored. Send the file again." };
+const BROKEN: Problem = { status: 0, title: "The connection broke", detail: "The connection broke off before the answer came. Send the file again; if it was stored after all, it is not stored twice." };
 
 /** One file, one call. XMLHttpRequest, because fetch tells nothing of how far an upload has come. */
 export function sendFile(chipId: string, file: File, fields: UploadFields, key: string, onProgress: (sent: number) => void): Running<StoredReads> {

@@ -16,6 +16,8 @@ function farText(done: number, of: number): string {
   return of >= 1024 ? `${withCommas(Math.floor(done / 1024))} of ${withCommas(Math.ceil(of / 1024))} KiB` : `${withCommas(done)} of ${sizeText(of)}`;
 }
 
+const allSent = (upload: Upload) => upload.step === "sending" && upload.sent >= upload.file.size;
+
 function stateWords(upload: Upload): { words: string; tone: string } {
   switch (upload.step) {
     case "waiting":
@@ -27,7 +29,7 @@ function stateWords(upload: Upload): { words: string; tone: string } {
     case "queued":
       return { words: "Waits to be sent", tone: "text-ink-2" };
     case "sending":
-      return { words: `${farText(upload.sent, upload.file.size)} sent`, tone: "" };
+      return { words: allSent(upload) ? "Sent, being judged" : `${farText(upload.sent, upload.file.size)} sent`, tone: "" };
     case "stored":
       return { words: upload.read ? `Stored as ${nameOf(upload.read)}` : "Stored", tone: "font-strong text-green" };
     case "refused":
@@ -53,6 +55,8 @@ export function UploadLine({ upload, queue, chip }: { upload: Upload; queue: Upl
     ways = <>{digest && fits ? <Button size="small" onClick={() => queue.send(key)}>Send again</Button> : null}<Off queue={queue} name={file.name} id={key} /></>;
   } else if (step === "stored") {
     ways = <Off queue={queue} name={file.name} id={key} />;
+  } else if (allSent(upload)) {
+    ways = <span>Stored and judged as a whole, or not at all: this can’t be stopped.</span>;
   } else {
     ways = <Button variant="text" size="small" onClick={() => queue.stop(key)} aria-label={`Stop sending ${file.name}`}>Stop sending</Button>;
   }

@@ -7,6 +7,7 @@ import { Note } from "@/components/ui/note";
 import { Section } from "@/components/ui/section";
 import { exactText } from "@/components/ui/times";
 import { useChange } from "@/components/ui/use-change";
+import { Working } from "@/components/ui/working";
 import { entriesText } from "./entries-text";
 import { fetcher, send } from "@/lib/http/send";
 import type { CustodyCheckView, CustodyEntryView } from "@/lib/views";
@@ -26,10 +27,10 @@ export function DriveLog({ driveId, entries, timeZone, assesses, records }: {
 }) {
   const router = useRouter();
   const [check, setCheck] = useState<{ result: CustodyCheckView; at: string } | null>(null);
-  const { refusal, busy, attempt } = useChange();
+  const { refusal, busy, attempt, stop } = useChange();
   const [show, setShow] = useState<{ seq: number } | null>(null);
-  const ask = () => (records ? send<CustodyCheckView>("POST", `/api/audit/checks/${driveId}`) : fetcher<CustodyCheckView>(`/api/drives/${driveId}/custody/check`));
-  const run = () => attempt(async () => setCheck({ result: await ask(), at: new Date().toISOString() }));
+  const ask = (signal: AbortSignal) => (records ? send<CustodyCheckView>("POST", `/api/audit/checks/${driveId}`, undefined, undefined, signal) : fetcher<CustodyCheckView>(`/api/drives/${driveId}/custody/check`, signal));
+  const run = () => attempt(async (signal) => setCheck({ result: await ask(signal), at: new Date().toISOString() }));
 
   return (
     <>
@@ -39,6 +40,7 @@ export function DriveLog({ driveId, entries, timeZone, assesses, records }: {
         )}
         {refusal ? <Note kind="caution" role="alert" title="The log was not checked." className="mt-3">{refusal}</Note> : null}
         <Buttons className="mt-4"><Button variant={check ? "plain" : "lead"} disabled={busy} onClick={() => void run()}>{busy ? "Checking the log" : check ? "Check the log again" : "Check the log"}</Button></Buttons>
+        {busy ? <div className="mt-3"><Working what={`Every hash and signature of ${entriesText(entries.length)} is worked out again`} onStop={stop} /></div> : null}
         {check && !check.result.ok ? (
           <Assess chainId={driveId} latest={entries.at(-1)?.action} assesses={assesses} onDone={() => { router.refresh(); void run(); }} />
         ) : null}

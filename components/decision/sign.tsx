@@ -6,6 +6,7 @@ import { Button, Buttons } from "@/components/ui/button";
 import { Input } from "@/components/ui/input";
 import { Mark } from "@/components/ui/mark";
 import { TextArea } from "@/components/ui/text-area";
+import { Working } from "@/components/ui/working";
 import type { ChipView, SessionView } from "@/lib/views";
 import type { DecisionForm } from "./decision-rules";
 import { WhoMaySign } from "./who-may-sign";
@@ -37,6 +38,7 @@ export function Sign({ chip, user, composite, open, matches, busy, register, err
         <Button type="submit" variant="lead" reason={open} disabled={busy}>{composite ? "Approve the composite" : "Approve"} for writing to donor {chip.pair?.designator ?? ""}</Button>
         {onSendBack ? <Button variant="stop" onClick={onSendBack}>Send back…</Button> : null}
       </Buttons>
+      {busy ? <div className="col-span-full"><Working what="The stored image and the log are checked once more, then the approval is signed" note="It is given as a whole or not at all, so it can’t be stopped half-way." /></div> : null}
     </form>
   );
 }

@@ -76,7 +76,7 @@ function Line({ upload: { key, file, caption, step, sent, problem, again }, queu
       {step === "sending" ? <span className="col-span-full"><Progress share={sent / Math.max(1, file.size)} label={`Sending ${file.name}`} /></span> : null}
       {problem ? <div className="col-span-full text-t2" role="alert"><FindingLine kind="block">{problem}</FindingLine></div> : null}
       <span className="col-span-full flex flex-wrap justify-end gap-x-4">
-        {step === "waiting" || step === "sending" ? <Button variant="text" size="small" onClick={() => queue.stop(key)} aria-label={`Stop sending ${file.name}`}>Stop sending</Button> : (
+        {step === "sending" && sent >= file.size ? <span className="text-t2 text-ink-2">Kept as a whole, or not at all: this can’t be stopped.</span> : step === "waiting" || step === "sending" ? <Button variant="text" size="small" onClick={() => queue.stop(key)} aria-label={`Stop sending ${file.name}`}>Stop sending</Button> : (
           <>{again && step !== "stored" ? <Button size="small" onClick={() => queue.again(key)}>Send again</Button> : null}{off}</>
         )}
       </span>

@@ -121,7 +121,7 @@ async function refusalOf(file: File): Promise<string | null> {
   }
 }
 
-const BROKEN: Problem = { status: 0, title: "The connection broke", detail: "The connection broke off and nothing was stored. Send the photo again." };
+const BROKEN: Problem = { status: 0, title: "The connection broke", detail: "The connection broke off before the answer came. Send the photo again; if it was stored after all, it is not stored twice." };
 
 /** One file, one call. XMLHttpRequest, because fetch tells nothing of how far an upload has come. */
 export const browserTools = (path: string): PhotoTools => ({

@@ -4,6 +4,7 @@ import { useRouter } from "next/navigation";
 import { useEffect, useRef, useState, useSyncExternalStore } from "react";
 import { Button, Buttons } from "@/components/ui/button";
 import { Icon } from "@/components/ui/icon";
+import { Working } from "@/components/ui/working";
 import { listText } from "@/lib/core/quantity";
 import { Refusal } from "@/lib/http/send";
 import { type Draft, draftStore, errorsIn, errorsOf, type Errors, FIELD_WORDS, type FieldName, openFields } from "./draft";
@@ -50,6 +51,7 @@ export function RequestForm({ keepDays, stamp, today, workshop, ask }: {
   const [tries, setTries] = useState(0);
   const [busy, setBusy] = useState(false);
   const [refused, setRefused] = useState<Refused | null>(null);
+  const sending = useRef<AbortController | null>(null);
   const trap = useRef<HTMLInputElement>(null);
   const summary = useRef<HTMLDivElement>(null);
   useEffect(() => {
@@ -68,8 +70,9 @@ export function RequestForm({ keepDays, stamp, today, workshop, ask }: {
     setRefused(null);
     if (open.length > 0) return setTries(tries + 1);
     setBusy(true);
+    sending.current = new AbortController();
     try {
-      const sent = await sendRequest(draft, files, { website: trap.current?.value ?? "", stamp });
+      const sent = await sendRequest(draft, files, { website: trap.current?.value ?? "", stamp }, sending.current.signal);
       draftStore.clear();
       router.push(new URL(sent.link).pathname);
     } catch (error) {
@@ -93,8 +96,9 @@ export function RequestForm({ keepDays, stamp, today, workshop, ask }: {
       <Buttons className="pt-5">
         <Button type="submit" variant="lead" disabled={busy}>Send the request</Button>
         <Button disabled><Icon name="print" />Slip for the parcel</Button>
-        <span className="text-ink-2" role="status">{busy ? (files.length > 0 ? "Sending; the photos take a moment." : "Sending.") : openSentence(open)}</span>
+        <span className="text-ink-2" role="status">{busy ? "Sending." : openSentence(open)}</span>
       </Buttons>
+      {busy ? <div className="pt-2"><Working what={files.length > 0 ? "Your answers and photos are being sent" : "Your answers are being sent"} onStop={() => sending.current?.abort()} /></div> : null}
     </form>
   );
 }

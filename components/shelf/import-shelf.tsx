@@ -8,6 +8,7 @@ import { Input } from "@/components/ui/input";
 import { Note } from "@/components/ui/note";
 import { TextArea } from "@/components/ui/text-area";
 import { useChange } from "@/components/ui/use-change";
+import { Working } from "@/components/ui/working";
 import { countOf } from "@/lib/core/quantity";
 import { type ImportAnswer, MAX_SHELF_FILE_BYTES } from "@/lib/core/shelf";
 import { problemOf, Refusal } from "@/lib/http/send";
@@ -15,13 +16,13 @@ import { ImportLines } from "./import-lines";
 
 const PASTED = "pasted text";
 
-async function sendFile(file: File, tryOnly: boolean, reason: string): Promise<ImportAnswer> {
+async function sendFile(file: File, tryOnly: boolean, reason: string, signal: AbortSignal): Promise<ImportAnswer> {
   const body = new FormData();
   body.set("try", tryOnly ? "yes" : "no");
   if (reason.trim()) body.set("reason", reason.trim());
   body.set("file", file);
-  const response = await fetch("/api/shelf-boards/import", { method: "POST", body, headers: { "idempotency-key": crypto.randomUUID?.() ?? String(Math.random()) } }).catch(() => {
-    throw new Refusal({ status: 0, title: "Twinread can't be reached", detail: "Twinread can't be reached. Check the network; then try again." });
+  const response = await fetch("/api/shelf-boards/import", { method: "POST", body, signal, headers: { "idempotency-key": crypto.randomUUID?.() ?? String(Math.random()) } }).catch(() => {
+    throw new Refusal(signal.aborted ? { status: 0, title: "Stopped", detail: "Stopped: the rows were only looked at." } : { status: 0, title: "Twinread can't be reached", detail: "Twinread can't be reached. Check the network; then try again." });
   });
   if (!response.ok) throw new Refusal(await problemOf(response));
   return (await response.json()) as ImportAnswer;
@@ -33,8 +34,9 @@ export function ImportShelf() {
   const picker = useRef<HTMLInputElement>(null);
   const [source, setSource] = useState<"file" | "text">("file");
   const [[file, text, reason], set] = useState<[File | null, string, string]>([null, "", ""]);
+  const [trying, setTrying] = useState(true);
   const [answer, setAnswer] = useState<ImportAnswer | null>(null);
-  const { refusal, busy, attempt, clear } = useChange();
+  const { refusal, busy, attempt, stop, clear } = useChange();
   const given = source === "file" ? file : text.trim() === "" ? null : new File([text], PASTED, { type: "text/csv" });
   const missing = !given ? (source === "file" ? "Choose a file first." : "Paste the rows first.") : given.size > MAX_SHELF_FILE_BYTES ? "The file is larger than 10 MiB. Split it." : null;
   function change(next: [File | null, string, string]) {
@@ -42,8 +44,9 @@ export function ImportShelf() {
     setAnswer(null);
     clear();
   }
-  const run = (tryOnly: boolean) => attempt(async () => {
-    setAnswer(await sendFile(given!, tryOnly, reason));
+  const run = (tryOnly: boolean) => attempt(async (signal) => {
+    setTrying(tryOnly);
+    setAnswer(await sendFile(given!, tryOnly, reason, signal));
     if (!tryOnly) router.refresh();
   });
   const writes = answer ? answer.counts.new + answer.counts.changed : 0;
@@ -73,7 +76,7 @@ export function ImportShelf() {
           ? <Button variant="lead" disabled={busy} onClick={() => void run(false)}>Import {countOf(writes, "board")}</Button>
           : <Button variant="lead" disabled={busy} reason={missing} onClick={() => void run(true)}>{answer ? "Try it again" : "Try it"}</Button>}
       </Buttons>
-      {busy ? <p role="status" className="text-ink-2">The rows are being read line by line; a long file takes some seconds.</p> : null}
+      {busy ? <Working what={trying ? "The rows are read line by line" : "The boards are written, each with its entry in the log"} onStop={trying ? stop : undefined} note={trying ? undefined : "All of it or nothing, so it can’t be stopped half-way."} /> : null}
     </div>
   );
 }

@@ -8,6 +8,7 @@ import { DemoStrip } from "./demo-strip";
 import { FindField } from "./find-field";
 import { Fingers } from "./fingers";
 import { Footer } from "./footer";
+import { Going } from "./going";
 import { KeyHelp } from "./key-help";
 import { ThemeFlip } from "./theme-flip";
 import { tabsOf, type TabKey } from "./tabs";
@@ -35,6 +36,7 @@ export function DeskShell({ session, current = null, children }: { session: Sess
         </div>
       </header>
       {children}
+      <Going />
       <Footer workshop={session.workshop} timeZone={session.timeZone} keys={<KeyHelp pages={tabsOf(session.user)} />} />
     </ToastProvider>
   );

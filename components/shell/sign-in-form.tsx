@@ -6,6 +6,7 @@ import { useState, type FormEvent } from "react";
 import { Button } from "@/components/ui/button";
 import { Input } from "@/components/ui/input";
 import { Note } from "@/components/ui/note";
+import { Working } from "@/components/ui/working";
 
 interface Refused {
   title: string;
@@ -52,6 +53,7 @@ export function SignInForm({ workshop, target, empty }: { workshop: string; targ
       <Input label="E-mail address" name="email" type="email" autoComplete="username" autoCapitalize="none" required />
       <Input label="Password" name="password" type="password" autoComplete="current-password" required aria-invalid={refused === WRONG || undefined} />
       <Button type="submit" variant="lead" disabled={busy}>Sign in</Button>
+      {busy ? <Working what="The password is being checked" note="That takes a moment on purpose; reload the page to stop." /> : null}
       <p className="border-t border-rule pt-3.5 text-t2 text-ink-2">Customers need no account: <Link href="/request" prefetch={false}>ask for a transfer here</Link>; your case and its summary open from the links in your e-mails. A case bundle or an image can be <Link href="/verify" prefetch={false}>checked here</Link> by anyone.</p>
     </form>
   );

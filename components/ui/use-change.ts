@@ -1,17 +1,23 @@
 "use client";
 
-import { useState } from "react";
+import { useRef, useState } from "react";
 import { Refusal } from "@/lib/http/send";
 
-/** Runs a change and keeps the server's sentence when it is refused. `attempt` answers whether it was done. */
-export function useChange(): { refusal: string | null; busy: boolean; attempt(change: () => Promise<unknown>): Promise<boolean>; clear(): void } {
+/**
+ * Runs a change and keeps the server's sentence when it is refused. `attempt` answers whether it was done. What hands the
+ * signal on to its call can be stopped.
+ */
+export function useChange(): { refusal: string | null; busy: boolean; attempt(change: (signal: AbortSignal) => Promise<unknown>): Promise<boolean>; stop(): void; clear(): void } {
   const [refusal, setRefusal] = useState<string | null>(null);
   const [busy, setBusy] = useState(false);
-  async function attempt(change: () => Promise<unknown>): Promise<boolean> {
+  const running = useRef<AbortController | null>(null);
+  async function attempt(change: (signal: AbortSignal) => Promise<unknown>): Promise<boolean> {
+    const mine = new AbortController();
+    running.current = mine;
     setRefusal(null);
     setBusy(true);
     try {
-      await change();
+      await change(mine.signal);
       return true;
     } catch (error) {
       if (!(error instanceof Refusal)) throw error;
@@ -22,5 +28,5 @@ export function useChange(): { refusal: string | null; busy: boolean; attempt(ch
       setBusy(false);
     }
   }
-  return { refusal, busy, attempt, clear: () => setRefusal(null) };
+  return { refusal, busy, attempt, stop: () => running.current?.abort(), clear: () => setRefusal(null) };
 }

@@ -17,6 +17,12 @@ export function sizeText(bytes: number): string {
   return countOf(bytes, "byte");
 }
 
+/** How far a file has come, in whole KiB: "12,288 of 65,536 KiB", or "12,288 KiB" where its size is not known. */
+export function comeText(come: number, of: number | null): string {
+  const kib = (bytes: number) => withCommas(Math.floor(bytes / 1024));
+  return of ? `${kib(come)} of ${kib(of)} KiB` : `${kib(come)} KiB`;
+}
+
 /** ["A","B","C"] is "A, B and C". */
 export function listText(items: readonly string[]): string {
   if (items.length < 2) return items[0] ?? "";

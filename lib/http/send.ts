@@ -21,9 +21,14 @@ export class Refusal extends Error {
 
 const AWAY: Problem = { status: 0, title: "Twinread can't be reached", detail: "Twinread can't be reached. Check the network; nothing was changed. Then try again." };
 
+const STOPPED: Problem = { status: 0, title: "Stopped", detail: "You stopped it before the answer came." };
+const FILE_STOPPED: Problem = { ...STOPPED, detail: "You stopped it before its end, so no file was saved. What had begun stands in the log." };
+// an answer that never came may belong to a change that was made
+const UNKNOWN: Problem = { ...AWAY, detail: "Twinread can't be reached. Check the network; then look whether it was done before you try again." };
+
 async function ask(path: string, init: RequestInit): Promise<Response> {
   const response = await fetch(path, { credentials: "same-origin", cache: "no-store", ...init }).catch(() => {
-    throw new Refusal(AWAY);
+    throw new Refusal(init.signal?.aborted ? STOPPED : init.method ? UNKNOWN : AWAY);
   });
   if (response.ok) return response;
   throw new Refusal(await problemOf(response));
@@ -40,23 +45,23 @@ export async function problemOf(response: Response): Promise<Problem> {
 }
 
 /** A change. `body` goes as JSON; the key makes a repeated click harmless. */
-export async function send<T>(method: "POST" | "PUT" | "PATCH" | "DELETE", path: string, body?: unknown, key: string = crypto.randomUUID?.() ?? String(Math.random())): Promise<T> {
+export async function send<T>(method: "POST" | "PUT" | "PATCH" | "DELETE", path: string, body?: unknown, key: string = crypto.randomUUID?.() ?? String(Math.random()), signal?: AbortSignal): Promise<T> {
   const response = await ask(path, {
-    method,
+    method, signal,
     headers: { ...(body === undefined ? {} : { "content-type": "application/json" }), "idempotency-key": key },
     body: body === undefined ? undefined : JSON.stringify(body),
   });
   return (await response.json()) as T;
 }
 
-/** For a POST that answers with a file: saves it under the name the server gives. */
-export async function save(path: string, body?: unknown): Promise<string> {
+/** For a POST that answers with a file: saves it under the name the server gives, and tells how many bytes have come, of how many where that is known. */
+export async function save(path: string, body?: unknown, { signal, onBytes }: { signal?: AbortSignal; onBytes?(come: number, of: number | null): void } = {}): Promise<string> {
   const response = await ask(path, {
-    method: "POST", headers: body === undefined ? {} : { "content-type": "application/json" }, body: body === undefined ? undefined : JSON.stringify(body),
+    method: "POST", signal, headers: body === undefined ? {} : { "content-type": "application/json" }, body: body === undefined ? undefined : JSON.stringify(body),
   });
   const name = /filename="([^"]+)"/.exec(response.headers.get("content-disposition") ?? "")?.[1] ?? "twinread.bin";
-  const url = URL.createObjectURL(await response.blob().catch(() => {
-    throw new Refusal({ ...AWAY, detail: "The file broke off before its end and was not saved. The stored image may be damaged; ask the lead." });
+  const url = URL.createObjectURL(await wholeOf(response, onBytes).catch(() => {
+    throw new Refusal(signal?.aborted ? FILE_STOPPED : { ...AWAY, detail: "The file broke off before its end and was not saved. The stored image may be damaged; ask the lead." });
   }));
   const link = document.createElement("a");
   link.href = url;
@@ -64,6 +69,18 @@ export async function save(path: string, body?: unknown): Promise<string> {
   link.click();
   setTimeout(() => URL.revokeObjectURL(url), 10_000);
   return name;
+}
+
+async function wholeOf(response: Response, onBytes?: (come: number, of: number | null) => void): Promise<Blob> {
+  const of = Number(response.headers.get("content-length")) || null;
+  const parts: Uint8Array<ArrayBuffer>[] = [];
+  let come = 0;
+  const reader = response.body!.getReader();
+  for (let part = await reader.read(); !part.done; part = await reader.read()) {
+    parts.push(part.value);
+    onBytes?.((come += part.value.length), of);
+  }
+  return new Blob(parts, { type: response.headers.get("content-type") ?? "" });
 }
 
 export async function fetcher<T>(path: string, signal?: AbortSignal): Promise<T> {

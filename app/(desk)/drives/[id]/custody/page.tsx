@@ -28,7 +28,7 @@ export default async function DriveLogPage({ params }: { params: Promise<{ id: s
         <Crumbs items={[{ label: `Case ${drive.case.ref}`, href: `/cases/${drive.case.id}` }, { label: `Drive ${drive.letter}`, href: `/drives/${id}` }, { label: "Custody log" }]} />
         <div className="flex flex-wrap items-end justify-between gap-4">
           <PageTitle note={<span className="flex flex-wrap gap-x-4 font-mono">{facts.map((fact) => <span key={fact}>{fact}</span>)}</span>}>Custody log of Drive {drive.letter}</PageTitle>
-          <div className="no-print flex gap-3 pb-5"><PrintButton />{may(actor, "bundle.make") ? <MakeBundle caseId={drive.case.id} /> : null}</div>
+          <div className="no-print flex flex-wrap items-start gap-3 pb-5"><PrintButton />{may(actor, "bundle.make") ? <MakeBundle caseId={drive.case.id} /> : null}</div>
         </div>
         <EncryptionNote encryption={drive.encryption} className="mb-4" />
         <DriveLog driveId={id} entries={entries} timeZone={session.timeZone} assesses={may(actor, "assessment.record")} records={may(actor, "audit.read")} />
