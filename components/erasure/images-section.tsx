@@ -26,7 +26,7 @@ export function ImagesSection({ view, told, erases, timeZone }: {
   return (
     <Section id="images" title="Images" note="Nothing is erased by itself. Digests stay in the log, always.">
       <div className="grid gap-4">
-        <dl className="grid grid-cols-[150px_minmax(0,1fr)] gap-x-4 gap-y-2 slim:grid-cols-1 slim:gap-y-0.5 [&_dt]:text-ink-2 [&_dd]:[overflow-wrap:anywhere] slim:[&_dd]:mb-1.5">
+        <dl className="grid grid-cols-[184px_minmax(0,1fr)] gap-x-4 gap-y-2 slim:grid-cols-1 slim:gap-y-0.5 [&_dt]:text-ink-2 [&_dd]:[overflow-wrap:anywhere] slim:[&_dd]:mb-1.5">
           {eraseOn && !over ? <><dt>Images due for erasure on</dt><dd><b>{dayYear(eraseOn)}</b>. {told}</dd></> : null}
           {kept && !over ? <><dt>Kept longer</dt><dd><b>until {dayYear(kept.until)}</b>: <span className="whitespace-pre-line">{kept.reason}</span></dd></> : null}
           <dt>Stored</dt>
