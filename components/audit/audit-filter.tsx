@@ -35,7 +35,7 @@ export function AuditFilter({ list, path, input, total, words, what, who, days =
         {who ? <Select label="Who" name="who" defaultValue={input.who} options={[{ value: "", label: "Anyone" }, ...who.map((value) => ({ value, label: value }))]} className="w-[170px]" /> : null}
         {days ? <><Input type="date" label="From" name="from" defaultValue={input.from} className="w-[150px]" /><Input type="date" label="To, with that day" name="to" defaultValue={input.to} className="w-[150px]" /></> : null}
         {input.sort ? <><input type="hidden" name="sort" value={input.sort} /><input type="hidden" name="order" value={input.order} /></> : null}
-        <Button type="submit">Look</Button>
+        <Button type="submit">Show</Button>
         {filtered ? <ButtonLink variant="text" href={path}>Show all</ButtonLink> : null}
       </form>
       {tooMany ? <Button disabled reason={`A file holds ${withCommas(MAX_CSV_ROWS)} rows at most: narrow the list first.`}>Save as CSV</Button>

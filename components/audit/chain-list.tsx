@@ -35,7 +35,7 @@ export function ChainList({ list, sort, order, timeZone, empty }: {
     column.display({ id: "head", header: "Head", enableSorting: false, cell: ({ row }) => (row.original.hash && row.original.entries > 0 ? <Digest sha256={row.original.hash} /> : <FindingLine kind={row.original.driveId || row.original.workshop ? "wait" : "block"}>no head</FindingLine>) }),
     column.accessor("lastAt", { id: "latest", header: "Latest entry", cell: ({ row }) => <span className="whitespace-nowrap">{row.original.lastAt ? exactText(row.original.lastAt, timeZone) : "none"}</span> }),
     column.display({ id: "checked", header: "Last check", enableSorting: true, cell: ({ row }) => <LastCheck row={row.original} timeZone={timeZone} /> }),
-    column.display({ id: "now", header: () => <span className="sr-only">Check now</span>, enableSorting: false, cell: ({ row }) => <CheckNow chainId={row.original.chainId} name={placeText(row.original)} /> }),
+    column.display({ id: "now", header: () => <span className="sr-only">Check now</span>, enableSorting: false, cell: ({ row }) => <span className="block text-right phone:text-left"><CheckNow chainId={row.original.chainId} name={placeText(row.original)} /></span> }),
   ]), [timeZone]);
   return (
     <DataTable caption="Custody logs with their last check" columns={columns} list={list} sort={sort} order={order} rowId={(row) => row.chainId} empty={empty} numeric={["entries"]}

@@ -36,7 +36,7 @@ export function ApiHelp({ address, routes }: { address: string; routes: readonly
         <p>The pages use this interface themselves, and a script at the bench can use it as well: to send reads as they are taken, to ask for a chip’s state, to fetch the approved image. The routes of the table below stay as they are. The whole description as a file, in OpenAPI 3.1, is <a href="/api/openapi.json">openapi.json</a>.</p>
       </Part>
       <Part title="Sign-in">
-        <p>Make a bench token on the page Account; it is shown once. Send it with every call as <code>Authorization: Bearer …</code>. It has your role, and what it does stands in the log under your name: use one for each bench, and withdraw it when the bench is gone. Don’t put it into a command that others can see; read it from a file that only you can open:</p>
+        <p>Make a bench token on the page Account; it is shown once. Send it with every call as <code>Authorization: Bearer $TOKEN</code>. It has your role, and what it does stands in the log under your name: use one for each bench, and withdraw it when the bench is gone. Don’t put it into a command that others can see; read it from a file that only you can open:</p>
         <Commands label="Set the address and the token">{`TWINREAD=${address}\nTOKEN=$(cat ~/.twinread-token)`}</Commands>
       </Part>
       <Part title="Rules">

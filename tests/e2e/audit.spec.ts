@@ -34,7 +34,7 @@ test("a list keeps its filter in the address, and its file holds what is shown",
   const all = await page.getByRole("table").getByRole("row").count();
   expect(all).toBeGreaterThan(1);
   await page.getByLabel("Step").selectOption({ label: "Image handed out" });
-  await page.getByRole("button", { name: "Look" }).click();
+  await page.getByRole("button", { name: "Show", exact: true }).click();
   await expect(page).toHaveURL(/what=image\.handed-out/);
   const shown = (await page.getByRole("table").getByRole("row").count()) - 1;
   const [download] = await Promise.all([page.waitForEvent("download"), page.getByRole("link", { name: "Save as CSV" }).click()]);

@@ -26,7 +26,7 @@ export default async function ItemsPage({ searchParams }: { searchParams: Promis
         <PageTitle note="The latest hand-over of every drive, board and lifted chip. A hand-over is recorded on the drive’s page.">Where things are</PageTitle>
         <form className="no-print flex max-w-[560px] items-end gap-3 pb-5" role="search" aria-label="Items">
           <Input key={input.q} className="flex-1" label="Person, place, seal or case number" name="q" defaultValue={input.q} maxLength={200} autoComplete="off" />
-          <Button type="submit">Look</Button>
+          <Button type="submit">Search</Button>
         </form>
         {list.items.length === 0 ? <Empty title={input.q ? `Nothing matches “${input.q}”.` : "Nothing has changed hands yet."} action={input.q ? <ButtonLink href="/items">Show all</ButtonLink> : null}>An item is listed here from its first hand-over on.</Empty> : (
           <>

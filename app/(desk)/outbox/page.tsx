@@ -30,7 +30,7 @@ export default async function OutboxPage({ searchParams }: { searchParams: Promi
         {mailStaysHere() ? <Note kind="caution" title="No mail server is set: these mails reach nobody." className="mb-5 max-w-[76ch]">What is shown as sent was put into the folder <span className="font-mono">mail-fake</span> of the data folder on this machine. Put <span className="font-mono">SMTP_URL</span> and <span className="font-mono">SMTP_FROM</span> into the file <span className="font-mono">.env</span> and start Twinread again to send mail.</Note> : null}
         <form className="no-print flex max-w-[560px] items-end gap-3 pb-5" role="search" aria-label="Mails">
           <Input key={input.q} className="flex-1" label="Address or subject" name="q" defaultValue={input.q} maxLength={200} autoComplete="off" />
-          <Button type="submit">Look</Button>
+          <Button type="submit">Search</Button>
         </form>
         {list.items.length === 0 ? <Empty title={input.q ? `No mail matches “${input.q}”.` : "No mail yet."}>What is written when is listed below.</Empty> : (
           <>
