@@ -2,11 +2,12 @@ import type { Metadata } from "next";
 import localFont from "next/font/local";
 import { cookies } from "next/headers";
 import type { ReactNode } from "react";
+import { FocusFollows } from "@/components/shell/focus-follows";
 import "./globals.css";
 
-// Preloaded, with a fallback of the same measures: the page doesn't move when the face arrives.
-const face = localFont({ variable: "--next-face", weight: "200 800", src: "../node_modules/@fontsource-variable/atkinson-hyperlegible-next/files/atkinson-hyperlegible-next-latin-wght-normal.woff2" });
-const mono = localFont({ variable: "--next-mono", weight: "200 800", adjustFontFallback: false, fallback: ["DejaVu Sans Mono", "monospace"], src: "../node_modules/@fontsource-variable/atkinson-hyperlegible-mono/files/atkinson-hyperlegible-mono-latin-wght-normal.woff2" });
+// Preloaded, and never put in the place of another face later on: a page that is there doesn't move when a face comes late.
+const face = localFont({ display: "optional", variable: "--next-face", weight: "200 800", src: "../node_modules/@fontsource-variable/atkinson-hyperlegible-next/files/atkinson-hyperlegible-next-latin-wght-normal.woff2" });
+const mono = localFont({ display: "optional", variable: "--next-mono", weight: "200 800", adjustFontFallback: false, fallback: ["DejaVu Sans Mono", "monospace"], src: "../node_modules/@fontsource-variable/atkinson-hyperlegible-mono/files/atkinson-hyperlegible-mono-latin-wght-normal.woff2" });
 
 export const metadata: Metadata = {
   title: { default: "Twinread", template: "%s, Twinread" },
@@ -21,7 +22,7 @@ export default async function RootLayout({ children }: { children: ReactNode }) 
   const theme = (await cookies()).get("theme")?.value;
   return (
     <html lang="en-GB" className={`${face.variable} ${mono.variable}`} data-theme={theme === "day" || theme === "night" ? theme : undefined} suppressHydrationWarning>
-      <body>{children}</body>
+      <body>{children}<FocusFollows /></body>
     </html>
   );
 }

@@ -1,5 +1,5 @@
 import Link from "next/link";
-import { useId, type ComponentProps, type ReactNode } from "react";
+import { useId, type ComponentProps, type MouseEvent, type ReactNode } from "react";
 
 export type ButtonVariant = "lead" | "plain" | "stop" | "text";
 export type ButtonSize = "normal" | "small";
@@ -29,22 +29,25 @@ export function buttonClass({ variant = "plain", size = "normal", className = ""
   return `${BASE} ${SIZE[size]} ${VARIANT[variant]} ${className}`;
 }
 
+/** Keeps the press, also by Enter in a field, from doing anything. */
+const stop = (event: MouseEvent) => event.preventDefault();
+
 /**
- * A button that cannot be used yet stays in place, dashed, with its `reason` beside it.
- * A name that ends in "…" asks something first.
+ * A button that cannot be used yet stays in place, dashed, with its `reason` beside it; it can be reached by Tab all the
+ * same, and the one just pressed keeps the focus while its work goes on. A name that ends in "…" asks something first.
  */
 export function Button({ variant, size = "normal", className, reason, disabled, type = "button", children, ...rest }: Look & Omit<ComponentProps<"button">, keyof Look> & { reason?: string | null }) {
   const id = useId();
-  if (!reason && !disabled) {
-    return <button type={type} className={buttonClass({ variant, size, className })} {...rest}>{children}</button>;
-  }
+  const waits = Boolean(reason || disabled);
   const button = (
-    <button type={type} {...rest} disabled aria-describedby={reason ? id : undefined} className={`${BASE} ${SIZE[size]} ${WAITING} ${className ?? ""}`}>
+    <button type={type} {...rest} {...(waits ? { "aria-disabled": true } : {})} {...(reason ? { "aria-describedby": id } : {})} {...(waits && (rest.onClick || type === "submit") ? { onClick: stop } : {})}
+      className={waits ? `${BASE} ${SIZE[size]} ${WAITING} ${className ?? ""}` : buttonClass({ variant, size, className })}>
       {children}
     </button>
   );
-  if (!reason) return button;
-  return <span className="inline-flex flex-wrap items-center gap-x-3 gap-y-1">{button}<span id={id} className="text-ink-2">{reason}</span></span>;
+  if (reason === undefined) return button;
+  // around it also while there is none, so that a reason that comes or goes leaves the button and its focus where they are
+  return <span className={reason ? "inline-flex flex-wrap items-center gap-x-3 gap-y-1" : "contents"}>{button}{reason ? <span id={id} className="no-print text-ink-2">{reason}</span> : null}</span>;
 }
 
 export function ButtonLink({ variant, size, className, children, ...rest }: Look & Omit<ComponentProps<typeof Link>, keyof Look>) {
