@@ -14,4 +14,9 @@ export default tseslint.config(
       "@typescript-eslint/no-unused-vars": ["error", { argsIgnorePattern: "^_", ignoreRestSiblings: true }],
     },
   },
+  {
+    // a browser test that forgets to look for troubles is none
+    files: ["tests/e2e/**/*.spec.ts"],
+    rules: { "no-restricted-imports": ["error", { paths: [{ name: "@playwright/test", importNames: ["test", "chromium"], message: "Import test from ./support/test: it fails for troubles in the browser." }] }] },
+  },
 );

@@ -1,7 +1,8 @@
 import { randomUUID } from "node:crypto";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { custodyOf, makeReady, sha256Of } from "./support/bench";
 import { call, expectProblem, tokenOf } from "./support/station";
+import { test } from "./support/test";
 
 test("a hand-out that is asked for again under one key gives the image again, never a note in its place", async () => {
   const [mira, ines] = await Promise.all([tokenOf("mira"), tokenOf("ines")]);

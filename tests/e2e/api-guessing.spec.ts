@@ -1,7 +1,8 @@
 import { randomBytes } from "node:crypto";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { makeNewcomer } from "./support/newcomers";
 import { trySignIn } from "./support/station";
+import { test } from "./support/test";
 
 const newAddress = () => `2001:db8::${randomBytes(2).toString("hex")}:${randomBytes(2).toString("hex")}`;
 const WRONG = "not the password at all";

@@ -1,6 +1,7 @@
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { makeNewcomer } from "./support/newcomers";
 import { call } from "./support/station";
+import { test } from "./support/test";
 
 const bench = (cookie: string) => call("GET", "/api/bench", { cookie });
 const nonceOf = (policy: string | null) => /script-src 'nonce-([^']+)' 'strict-dynamic'(;|$)/.exec(policy ?? "")?.[1];

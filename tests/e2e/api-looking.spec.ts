@@ -1,9 +1,10 @@
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { asAdmin } from "./support/database";
 import { API, PAGES, type Things } from "./authorization-matrix";
 import { emailOf, passwordOf } from "./support/accounts";
 import { custodyOf, makeReady, type Ready } from "./support/bench";
 import { call, expectProblem, sessionOf, tokenOf } from "./support/station";
+import { test } from "./support/test";
 import { loseImage } from "../support/tamper";
 
 /** What changes by itself: when someone was last seen, and mail on its way. */

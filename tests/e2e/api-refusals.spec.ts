@@ -1,9 +1,9 @@
 import { randomBytes } from "node:crypto";
 import { request as httpRequest } from "node:http";
-import { test } from "@playwright/test";
 import { type FileToSend, makePair, type Pair, randomImage, sha256Of, upload, uploadForm } from "./support/bench";
 import { type Answer, appUrl, call, expectProblem, tokenOf } from "./support/station";
 import { expectNothingStored } from "./support/store";
+import { test } from "./support/test";
 
 const SIZE = 4096;
 const MIB = 1024 * 1024;

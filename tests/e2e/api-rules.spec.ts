@@ -1,7 +1,8 @@
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { approve, chipOf, custodyOf, makePair, makeReady, randomImage, type Ready, store, type Stored, upload } from "./support/bench";
 import { changeAccount, makeNewcomerToken } from "./support/newcomers";
 import { appUrl, call, done, expectProblem, fromPage, makeToken, tokenOf } from "./support/station";
+import { test } from "./support/test";
 
 const UNKNOWN = "0badc0de-0000-4000-8000-00000badc0de";
 const CASE = { customer: { name: "API rules", email: "rules@apitests.example" }, damage: "Burnt" };

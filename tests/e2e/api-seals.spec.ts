@@ -2,7 +2,7 @@ import { execFileSync } from "node:child_process";
 import { createHash } from "node:crypto";
 import { existsSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
 import path from "node:path";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import type { CustodyCheckView, DriveProofView, KeyRow, ListView, SealRow, SealView } from "@/lib/views";
 import { dataFolder } from "./support/accounts";
 import { custodyOf, makePair, randomImage, store } from "./support/bench";
@@ -10,6 +10,7 @@ import { newFolder } from "./support/files";
 import { mailsTo } from "./support/mails";
 import { makeNewcomerToken } from "./support/newcomers";
 import { call, done, expectProblem, tokenOf } from "./support/station";
+import { test } from "./support/test";
 
 let mira: string;
 let ines: string;

@@ -1,8 +1,9 @@
 import { randomBytes } from "node:crypto";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { ageSessions, idleMinutes } from "./support/database";
 import { changeAccount, makeAccount, makeNewcomer } from "./support/newcomers";
 import { appUrl, call, done, expectProblem, fromPage, sessionOf, tokenOf, trySignIn } from "./support/station";
+import { expectTrouble, test } from "./support/test";
 
 /** A computer that no other test comes from: refused sign-ins are counted by address too. */
 const newAddress = () => `2001:db8::${randomBytes(2).toString("hex")}:${randomBytes(2).toString("hex")}`;
@@ -63,12 +64,12 @@ test.describe("signing in", () => {
 
     const context = await browser.newContext({ extraHTTPHeaders: { "x-forwarded-for": address } });
     const page = await context.newPage();
+    expectTrouble(/^401 POST \/api\/auth\/callback\/credentials$/);
     await page.goto("/sign-in");
     await page.getByLabel("E-mail address").fill(target.email);
     await page.getByLabel("Password").fill(target.password);
     await page.getByRole("button", { name: "Sign in" }).click();
     await expect(page.getByRole("alert").filter({ hasText: /too many|quarter of an hour|minutes/i })).toBeVisible();
-    await context.close();
     const workshop = await call("GET", "/custody/workshop", { cookie: await sessionOf(colleague.email, colleague.password) });
     expect(workshop.bytes.toString("utf8")).toContain("sign-in.limited");
 

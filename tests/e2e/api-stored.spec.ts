@@ -1,13 +1,14 @@
 import { execFileSync, spawnSync } from "node:child_process";
 import { readdirSync, statSync, writeFileSync } from "node:fs";
 import path from "node:path";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import type { ComparisonView } from "@/lib/views";
 import { dataFolder } from "./support/accounts";
 import { chipOf, custodyOf, makePair, randomImage, sha256Of, store, type Stored, upload } from "./support/bench";
 import { newFolder, sha256sum } from "./support/files";
 import { call, done, tokenOf } from "./support/station";
 import { incoming, storedImages } from "./support/store";
+import { test } from "./support/test";
 
 const MIB = 1024 * 1024;
 

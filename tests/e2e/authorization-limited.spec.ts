@@ -1,4 +1,4 @@
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { AUDIT_LISTS, WORKSHOP_LISTS } from "@/lib/core/audit";
 import { API, type ApiRow, PAGES } from "./authorization-matrix";
 import { randomImage, uploadForm } from "./support/bench";
@@ -6,6 +6,7 @@ import { asAdmin } from "./support/database";
 import { openDesk } from "./support/desk";
 import { changeAccount, type Newcomer } from "./support/newcomers";
 import { type Answer, call, done, expectProblem, fromPage, sessionOf, trySignIn } from "./support/station";
+import { test } from "./support/test";
 import { addressIn, type CaseParts, makeLimitedAuditor, makeParts, neverParts, nounOf } from "./support/two-cases";
 
 /** An auditor with a case list, over every route and page: what they get of a case on it, and of another. */

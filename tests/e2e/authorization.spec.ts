@@ -1,12 +1,13 @@
 import { readdirSync, readFileSync } from "node:fs";
 import path from "node:path";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { NIL } from "@/lib/core/words";
 import { API, type ApiRow, PAGES, type Things, WHO, type Who } from "./authorization-matrix";
 import { emailOf } from "./support/accounts";
 import { makePair, randomImage, store, uploadForm } from "./support/bench";
 import { changeAccount, makeNewcomerToken, type Newcomer } from "./support/newcomers";
 import { type Answer, appUrl, call, done, expectProblem, sessionOf, tokenOf } from "./support/station";
+import { test } from "./support/test";
 
 const APP = path.resolve(import.meta.dirname, "../../app");
 const UNKNOWN = "0badc0de-0000-4000-8000-00000badc0de";

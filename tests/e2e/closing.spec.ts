@@ -1,12 +1,13 @@
 import { execFileSync } from "node:child_process";
 import path from "node:path";
-import { expect, type Page, test } from "@playwright/test";
+import { expect, type Page } from "@playwright/test";
 import { approve, type Pair, randomImage, sha256Of, store } from "./support/bench";
 import { openDesk, signIn } from "./support/desk";
 import { sendSummary, summaryLink } from "./support/end-steps";
 import { newFolder } from "./support/files";
 import { mailsTo } from "./support/mails";
 import { done, tokenOf } from "./support/station";
+import { test } from "./support/test";
 
 const EMAIL = "keys@hollowaychandlers.example";
 const SIZE = 65_536;
@@ -146,7 +147,6 @@ test("a verified drive is tested, sent back and closed; its case then takes no c
       expect(execFileSync("pdfinfo", [file], { encoding: "utf8" }), file).toMatch(/Pages:\s+1\n/);
       if (process.env.CLOSING_PICTURES) execFileSync("pdftoppm", ["-r", "80", "-png", file, path.join(process.env.CLOSING_PICTURES, path.basename(file, ".pdf"))]);
     }
-    expect(customer.troubles).toEqual([]);
   });
 
   await test.step("ines opens it again", async () => {
@@ -158,6 +158,4 @@ test("a verified drive is tested, sent back and closed; its case then takes no c
     await expect(dialog).toBeHidden();
     await expect(ines.page.getByText("Images due for erasure on")).toBeHidden();
   });
-  expect(mira.troubles.filter((one) => !one.startsWith("409"))).toEqual([]);
-  expect(ines.troubles).toEqual([]);
 });

@@ -1,11 +1,12 @@
 import { chmodSync, readFileSync, renameSync, writeFileSync } from "node:fs";
 import path from "node:path";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { dataFolder } from "./support/accounts";
 import { approve, chipOf, custodyOf, makeReady, type Ready, store } from "./support/bench";
 import { asAdmin, rewriteBody } from "./support/database";
 import { checkStore } from "./support/second-server";
 import { call, done, expectProblem, tokenOf } from "./support/station";
+import { test } from "./support/test";
 
 let mira: string;
 let ines: string;

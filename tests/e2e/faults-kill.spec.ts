@@ -1,9 +1,10 @@
 import { request as httpRequest } from "node:http";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { approve, chipOf, custodyOf, makePair, makeReady, randomImage, sha256Of, type Stored, upload } from "./support/bench";
 import { asAdmin } from "./support/database";
 import { checkStore, SecondServer } from "./support/second-server";
 import { type Answer, call, tokenOf } from "./support/station";
+import { test } from "./support/test";
 
 const server = new SecondServer();
 let mira: string;

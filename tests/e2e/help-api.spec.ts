@@ -2,12 +2,13 @@ import { execFileSync, spawnSync } from "node:child_process";
 import { copyFileSync, mkdtempSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import { API_EXAMPLES, type ApiExample } from "@/components/help/api-examples";
 import { OPERATIONS } from "@/lib/http/openapi/document";
 import { randomImage } from "./support/bench";
 import { signIn } from "./support/desk";
 import { appUrl, call, tokenOf } from "./support/station";
+import { expectTrouble, test } from "./support/test";
 
 /** As the page's reader would have them: three equal reads, two of the donor, a read-back. */
 function makeFiles(folder: string): void {
@@ -128,6 +129,8 @@ test("every link of the help leads somewhere, to its very place", async ({ page 
 });
 
 test("an address of the help that there is not is not found", async ({ page }) => {
-  expect((await page.goto("/help/nothing"))?.status()).toBe(404);
-  expect((await page.goto("/help/toString"))?.status()).toBe(404);
+  for (const path of ["/help/nothing", "/help/toString"]) {
+    expectTrouble(new RegExp(`^404 GET ${path}$`));
+    expect((await page.goto(path))?.status()).toBe(404);
+  }
 });

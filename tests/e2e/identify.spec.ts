@@ -1,6 +1,7 @@
-import { expect, type Page, test } from "@playwright/test";
+import { expect, type Page } from "@playwright/test";
 import { recordCase } from "./support/case-steps";
 import { signIn } from "./support/desk";
+import { test } from "./support/test";
 
 /** Every key that is pressed, so that "quick by keyboard" is a number. */
 class Keys {
@@ -36,7 +37,7 @@ async function newCase(page: Page, customer: string): Promise<string> {
 
 test("drive, original board, chip, donor board and donor chip are recorded without a hand on the mouse", async ({ browser }) => {
   test.setTimeout(120_000);
-  const { page, troubles } = await signIn(browser, "mira");
+  const { page } = await signIn(browser, "mira");
   await newCase(page, "Typed Fast Survey");
   const keys = new Keys(page);
   await page.getByRole("button", { name: "Add a drive…" }).focus();
@@ -83,7 +84,6 @@ test("drive, original board, chip, donor board and donor chip are recorded witho
   await expect(page.getByRole("figure")).toHaveCount(2);
   await expect(page.getByRole("link", { name: "Open U12", exact: true })).toBeVisible();
   expect(keys.count).toBeLessThan(MOST_KEYS);
-  expect(troubles).toEqual([]);
 });
 
 test("what this person used last is proposed, the serial never; a duplicate serial is told while it is typed", async ({ browser }) => {

@@ -1,5 +1,5 @@
 import { readFileSync } from "node:fs";
-import { expect, test } from "@playwright/test";
+import { expect } from "@playwright/test";
 import sharp from "sharp";
 import type { PhotoView } from "@/lib/views";
 import { ftyp, pdf, picture, polyglot } from "../support/pictures";
@@ -7,6 +7,7 @@ import { makePair, type Pair, sha256Of } from "./support/bench";
 import { signIn } from "./support/desk";
 import { type Answer, call, expectProblem, tokenOf } from "./support/station";
 import { incoming } from "./support/store";
+import { expectTrouble, test } from "./support/test";
 
 const MIB = 1024 * 1024;
 const RAN = "document.title='ran'";
@@ -91,6 +92,8 @@ test("a page inside a photo runs nowhere: not as the copy, not as the original, 
   const { page, context } = await signIn(browser, "mira");
   const photo = await stored(`boards/${pair.boardId}`, await polyglot(RAN));
   const paper = await stored(`boards/${pair.boardId}`, pdf(`<script>${RAN}</script>`), "papers.pdf");
+  // the browser's own frame around a lone image has styles, which the photo's address allows as little as scripts
+  expectTrouble(/^error: Applying inline style violates .*'default-src 'none''.* \(\/api\/photos\/[\w-]+\?reduced\)$/);
   await page.goto(`/api/photos/${photo.id}?reduced`);
   expect(await page.title()).not.toBe("ran");
   expect(await page.evaluate(() => document.images.length)).toBe(1);
@@ -105,6 +108,7 @@ test("a page inside a photo runs nowhere: not as the copy, not as the original, 
   }
   await page.goto(`/drives/${pair.driveId}`);
   const title = await page.title();
+  expectTrouble(/^error: Refused to execute script from '\S+\/api\/photos\/[\w-]+' because its MIME type/);
   const seen = await page.evaluate(async (address) => {
     const frame = document.createElement("iframe");
     frame.src = address;
@@ -118,11 +122,10 @@ test("a page inside a photo runs nowhere: not as the copy, not as the original, 
   }, `/api/photos/${photo.id}`);
   expect(seen).toEqual({ script: "refused", inside: false });
   expect(await page.title()).toBe(title);
-  await context.close();
 });
 
 test("photos are chosen, told why not, seen larger and walked through by keyboard", async ({ browser }) => {
-  const { page, context, troubles } = await signIn(browser, "mira");
+  const { page } = await signIn(browser, "mira");
   const own = await makePair(mira, { customer: "Photos on screen", sizeBytes: 4096 });
   await page.goto(`/drives/${own.driveId}`);
   const drive = page.getByRole("region", { name: "Photos of Drive A" });
@@ -156,6 +159,4 @@ test("photos are chosen, told why not, seen larger and walked through by keyboar
   expect(sha256Of(readFileSync(await (await saved).path()))).toBe(sha256Of(label));
   await page.getByRole("link", { name: /^Back to/ }).click();
   await expect(page.getByRole("heading", { level: 2, name: "Photos" })).toBeVisible();
-  expect(troubles).toEqual([]);
-  await context.close();
 });

@@ -1,13 +1,14 @@
 import { mkdtempSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
-import { expect, type Page, test } from "@playwright/test";
+import { expect, type Page } from "@playwright/test";
 import { withCheck } from "@/lib/core/case-number";
 import { LABEL_SIZES, type PaperName } from "@/lib/core/paper";
 import { chipOf, makeReady, type Ready } from "./support/bench";
 import { type Desk, signIn } from "./support/desk";
 import { printed, scanned, stickingOut } from "./support/paper";
 import { call, done, tokenOf } from "./support/station";
+import { test } from "./support/test";
 
 const folder = mkdtempSync(path.join(tmpdir(), "printed-"));
 const long = (word: string, length: number) => Array.from({ length }, (_, i) => word[i % word.length]).join("");
@@ -145,4 +146,23 @@ test("every paper is reached from the pages of case, drive and chip", async () =
     for (const href of await menu.getByRole("link").evaluateAll((all) => all.map((one) => one.getAttribute("href")!))) expect((await page.request.get(href)).status(), href).toBe(200);
   }
   for (const odd of ["labels?of=nothing", "labels?of=00000000-0000-4000-8000-000000000000", "passport", `write-ticket?of=${ready.caseId}`]) expect((await page.request.get(`/cases/${longCase}/print/${odd}`)).status(), odd).toBe(404);
+});
+
+test("pages printed from the screen say on each sheet what they are and which of how many, and carry no button", async () => {
+  const { page } = desk;
+  for (const [name, address, what] of [
+    ["chip", `/chips/${ready.chipId}`, `Case ${ref}, Drive A, U7`], ["decision", `/chips/${ready.chipId}/decision`, `Case ${ref}, U7, Decision sheet.`],
+    ["case", `/cases/${ready.caseId}`, `Case ${ref}.`], ["log", `/drives/${ready.driveId}/custody`, `Case ${ref}, Drive A, Custody log.`],
+  ]) {
+    await page.goto(address);
+    const { pages, text } = await printed(page, "a4", folder, `screen-${name}`);
+    const sheets = text.split("\f").slice(0, pages);
+    for (const [i, sheet] of sheets.entries()) {
+      expect(sheet, `${name}, sheet ${i + 1}`).toContain(what);
+      expect(sheet, `${name}, sheet ${i + 1}`).toContain(`Page ${i + 1} of ${pages}`);
+    }
+    await page.emulateMedia({ media: "print" });
+    await expect(page.locator(".btn:visible, main button:visible, header.edge:visible"), name).toHaveCount(0);
+    await page.emulateMedia({ media: null });
+  }
 });

@@ -1,12 +1,12 @@
 import { execFileSync } from "node:child_process";
 import { readdirSync } from "node:fs";
 import path from "node:path";
-import type { Page } from "@playwright/test";
+import type { Locator, Page } from "@playwright/test";
 
 /** The case's bundle, saved as its page saves it. */
-export async function saveBundle(page: Page, folder: string): Promise<string> {
+export async function saveBundle(page: Page, folder: string, press = (button: Locator) => button.click()): Promise<string> {
   const saving = page.waitForEvent("download");
-  await page.getByRole("button", { name: "Case bundle" }).click();
+  await press(page.getByRole("button", { name: "Case bundle" }));
   const zip = path.join(folder, "bundle.zip");
   await (await saving).saveAs(zip);
   return zip;

@@ -1,7 +1,8 @@
 import { expect, type Page } from "@playwright/test";
 
-const CONTENT = { before: "Read", donor: "Own", after: "Back" } as const;
-export type Content = keyof typeof CONTENT;
+export type Content = "before" | "donor" | "after";
+/** What the list of files says of one that is there. */
+export const STORED: Record<Content, RegExp> = { before: /^Stored as Read \d+$/, donor: /^Stored as Own \d+$/, after: /^Stored as Back \d+$/ };
 
 /** Uploads files of one seating at once, through the picker, and waits until each is stored. */
 export async function upload(page: Page, content: Content, seating: number, files: string[], { sendAnyway = false } = {}): Promise<void> {
@@ -11,7 +12,7 @@ export async function upload(page: Page, content: Content, seating: number, file
   await page.getByLabel("Adapter", { exact: true }).fill("SOIC-8 clip C4");
   await page.getByLabel("Supply set in the reader").selectOption("3300");
   const list = page.getByRole("list", { name: "Files" });
-  const stored = list.getByText(new RegExp(`^Stored as ${CONTENT[content]} \\d+$`));
+  const stored = list.getByText(STORED[content]);
   const before = await stored.count();
   const chooser = page.waitForEvent("filechooser");
   await page.getByRole("button", { name: "Choose files" }).click();
