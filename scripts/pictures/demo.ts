@@ -17,8 +17,9 @@ export interface Look {
 }
 
 /** A browser of somebody's own without an account, such as a customer's. */
-export function visitor(browser: Browser, { width = 1440, height = 1000, night = false }: Look = {}): Promise<Page> {
-  return browser.newPage({ baseURL: publicUrl, viewport: { width, height }, colorScheme: night ? "dark" : "light", locale: "en-GB" });
+export async function visitor(browser: Browser, { width = 1440, height = 1000, night = false }: Look = {}): Promise<Page> {
+  const context = await browser.newContext({ baseURL: publicUrl, viewport: { width, height }, colorScheme: night ? "dark" : "light", locale: "en-GB" });
+  return context.newPage();
 }
 
 /** A person's own browser at the bench. */
