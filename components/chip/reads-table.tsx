@@ -47,7 +47,7 @@ export function ReadsTable({ chip, user, timeZone, onChanged }: { chip: ChipView
                     <tr key={read.id} id={`read-${read.id}`} className={read.setAside ? "is-aside" : stands ? "is-odd" : ""}>
                       <th scope="row"><span className="struck">{readTitle(read)}</span></th>
                       {read.derived ? null : <td data-l="Seating">{seatingLetter(read.seating)}</td>}
-                      <td colSpan={read.derived ? 2 : 1} className={read.derived ? "l-full" : ""}><ReadOrigin read={read} /></td>
+                      <td colSpan={read.derived ? 2 : 1} className={read.derived ? "l-full" : "min-w-[9.5rem] phone:min-w-0"}><ReadOrigin read={read} /></td>
                       <td className="whitespace-nowrap print:whitespace-normal">{read.operator.name}</td>
                       <td className="l-top whitespace-nowrap print:whitespace-normal">{momentText(read.takenAt ?? read.storedAt, timeZone)}</td>
                       <td className="num">{sizeText(read.sizeBytes)}</td>

@@ -25,6 +25,8 @@ const chipRef = { chip: z.object({ id: uuid, designator: words }) };
 const donorRef = { donorChip: z.object({ id: uuid, designator: words, boardNumber: words }) };
 
 const name = (f: { read: { stage: (typeof STAGES)[number]; number: number } }) => readName(f.read.stage, f.read.number);
+/** A finding goes on behind a colon or a semicolon: "All FF" becomes "all FF"; a name such as "Read 2" or "SHA-256" stays as it is. */
+const inSentence = (finding: string) => (/^[A-Z][a-z]/.test(finding) && !/^(?:Read|Own|Back)s? \d/.test(finding) ? finding.charAt(0).toLowerCase() + finding.slice(1) : finding);
 const short = (digest: string) => `${digest.slice(0, 8)}…`;
 const kib = (n: number) => (n % 1024 === 0 ? `${(n / 1024).toLocaleString("en")} KiB` : `${n.toLocaleString("en")} bytes`);
 /** "revision from rev C to rev D"; a value that is kept out of the log stands once, and "taken for" is a sentence by itself. */
@@ -63,7 +65,7 @@ export const ACTIONS = {
     (f) => `Recorded the ${f.role} board ${f.boardNumber}${f.revision ? ` ${f.revision}` : ""}${f.dataInController ? "; its unique data lies inside the main controller" : ""}${f.fit?.differences.length ? `; ${f.fit.differences.join("; ")}` : ""}${f.fit?.reason ? `. Reason: ${f.fit.reason}` : ""}`),
   "board.corrected": spec({ changes: z.array(change), reason: words }, (f) => `Corrected the board: ${changes(f.changes)}. Reason: ${f.reason}`),
   "chip.recorded": spec({ ...chipRef, boardRole: z.enum(BOARD_ROLES), bus: z.enum(BUSES), sizeBytes: size, sizeSource: z.enum(SIZE_SOURCES), supplyMillivolts: z.union([z.int(), z.literal("unknown")]), package: optional, marking: optional, holds: optional, idBytes: optional.optional(), sfdp: optional.optional(), needsTransfer: z.boolean() },
-    (f) => `Recorded ${f.chip.designator} on the ${f.boardRole} board, ${kib(f.sizeBytes)} (${f.sizeSource}), supply ${f.supplyMillivolts === "unknown" ? "unknown" : `${f.supplyMillivolts} mV`}`),
+    (f) => `Recorded ${f.chip.designator} on the ${f.boardRole} board, ${kib(f.sizeBytes)} (${f.sizeSource}), supply ${f.supplyMillivolts === "unknown" ? "unknown" : `${f.supplyMillivolts / 1000} V`}`),
   "chip.corrected": spec({ ...chipRef, changes: z.array(change), reason: words }, (f) => placed(f.changes, f.chip.designator) ?? `Corrected ${f.chip.designator}: ${changes(f.changes)}. Reason: ${f.reason}`),
   "chip.paired": spec({ ...chipRef, ...donorRef, before: z.object({ id: uuid, designator: words }).nullable() },
     (f) => `Paired ${f.chip.designator} with donor ${f.donorChip.designator} on ${f.donorChip.boardNumber}${f.before ? ", in place of another donor chip" : ""}`),
@@ -73,7 +75,7 @@ export const ACTIONS = {
     source: z.object({ fileSha256: sha, fileBytes: size, base: z.int(), fill: z.int() }).optional() },
     (f) => `Stored ${name(f)}, seating ${seatingLetter(f.seating)}, ${kib(f.sizeBytes)}, SHA-256 ${short(f.sha256)}`),
   "read.judged": spec({ ...readRef, sha256: sha, engineVersion: words, findings: z.array(z.object({ code: words, severity: z.enum(SEVERITIES), message: words, measured: words.optional(), threshold: words.optional() })), equalTo: z.array(words), differsFrom: z.array(words) },
-    (f) => `Judged ${name(f)}: ${[...f.findings.map((x) => x.message.replace(/\.$/, "")), f.equalTo.length ? `equal to ${f.equalTo.join(", ")}` : "", f.differsFrom.length ? `differs from ${f.differsFrom.join(", ")}` : ""].filter(Boolean).join("; ") || "nothing stands against it"}`,
+    (f) => `Judged ${name(f)}: ${[...f.findings.map((x) => inSentence(x.message.replace(/\.$/, ""))), f.equalTo.length ? `equal to ${f.equalTo.join(", ")}` : "", f.differsFrom.length ? `differs from ${f.differsFrom.join(", ")}` : ""].filter(Boolean).join("; ") || "nothing stands against it"}`,
     (f) => (f.differsFrom.length || f.findings.some((x) => x.severity !== "note") ? "differs" : "entry")),
   "read.set-aside": spec({ ...readRef, sha256: sha, reason: words }, (f) => `Set ${name(f)} aside: ${f.reason}`, "set-aside"),
   "read.counted-again": spec({ ...readRef, sha256: sha, reason: words }, (f) => `Counted ${name(f)} again: ${f.reason}`),
