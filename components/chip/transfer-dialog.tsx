@@ -53,7 +53,7 @@ export function TransferDialog({ onClose, chip, approval, onChanged }: { onClose
         <Input label="Adapter" autoComplete="off" error={errors.adapter?.message} {...register("adapter")} />
         <TextArea label="Note" error={errors.note?.message} {...register("note")} />
         {refusal ? <Note kind="block" role="alert" title="This was not recorded.">{refusal}</Note> : null}
-        <Buttons>
+        <Buttons className="dialog-foot">
           <Button type="submit" variant="lead" disabled={isSubmitting}>Record the transfer</Button>
           <Button onClick={onClose}>Leave it</Button>
         </Buttons>

@@ -45,7 +45,7 @@ export function AddUser() {
           <Select label="Role" options={ROLE_OPTIONS} hint={roleHint(role, role === "auditor" && cases !== null)} error={errorOf("role")} {...register("role")} />
           {role === "auditor" ? <AccountLimits cases={cases} onCases={changeCases} onOpen={onOpen} endsOn={register("endsOn")} errors={{ cases: errorOf("cases"), endsOn: errorOf("endsOn") }} /> : null}
           {refusal ? <Note kind="block" role="alert" title="No account was made.">{refusal}</Note> : null}
-          <Buttons><Button type="submit" variant="lead" disabled={isSubmitting}>Add and show a one-time password</Button><Button onClick={close}>Leave it</Button></Buttons>
+          <Buttons className="dialog-foot"><Button type="submit" variant="lead" disabled={isSubmitting}>Add and show a one-time password</Button><Button onClick={close}>Leave it</Button></Buttons>
         </form>
       </Dialog>
       <OneTimePassword shown={shown} onClose={() => setShown(null)} />

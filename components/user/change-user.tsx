@@ -53,7 +53,7 @@ export function ChangeUser({ user, onClose }: { user: UserView; onClose(): void 
         {role === "auditor" ? <AccountLimits cases={cases} onCases={changeCases} onOpen={onOpen} endsOn={register("endsOn")} errors={{ cases: errorOf("cases"), endsOn: errorOf("endsOn") }} /> : null}
         {takenAway ? <Note kind="caution" title="With this role the limits of the account go.">{`It is ${takenAway}. As ${role} it carries neither a case list nor a last day.`}</Note> : null}
         {refusal ? <Note kind="block" role="alert" title="Nothing was changed.">{refusal}</Note> : null}
-        <Buttons><Button type="submit" variant="lead" disabled={isSubmitting} reason={isDirty ? null : "Nothing differs yet."}>Change</Button><Button onClick={onClose}>Leave it</Button></Buttons>
+        <Buttons className="dialog-foot"><Button type="submit" variant="lead" disabled={isSubmitting} reason={isDirty ? null : "Nothing differs yet."}>Change</Button><Button onClick={onClose}>Leave it</Button></Buttons>
       </form>
     </Dialog>
   );
