@@ -14,7 +14,7 @@ export function RangeList({ ranges, truncated, current, sizeBytes, csv, onGo }: 
     <nav aria-label="Ranges that differ" className="self-start">
       <h2 className="pb-1.5 text-t3 font-bold">Ranges that differ <span className="font-normal text-ink-2">{truncated ? `${withCommas(ranges.length)} and more` : withCommas(ranges.length)}</span></h2>
       {ranges.length === 0 ? <p className="text-t2 text-ink-2">None: the images are equal.</p> : (
-        <ol className="ranges max-h-[70vh] overflow-y-auto print:max-h-none">
+        <ol className="ranges">
           {ranges.slice(0, SHOWN).map((range, i) => (
             <li key={range.start}>
               <button type="button" aria-current={i === current ? "true" : undefined} onClick={() => onGo(range.start)}>

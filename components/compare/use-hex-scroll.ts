@@ -13,8 +13,8 @@ const EDGE_PX = 400_000;
 /** lines that are drawn beyond what is seen, and lines passed before others are drawn */
 const BEYOND = 10;
 const STEP = 6;
-/** lines above the one that was gone to */
-const ABOVE = 2;
+/** lines above the one that was gone to: the row they end in is seen whole */
+const ABOVE = 1.5;
 /** before the box was measured */
 const GUESS: Heights = { line: 22, fold: 34, head: 29 };
 const GUESS_PX = 620;
@@ -60,17 +60,25 @@ export interface Goal {
   still?: true;
 }
 
+/** The row at the upper edge once an address was gone to. */
+function edgeFor(layout: HexLayout, at: number): { at: number; top: number } {
+  const above = Math.max(0, topOf(layout, at) - ABOVE * layout.heights.line);
+  return rowsBetween(layout, above, above + 1)[0] ?? { at: 0, top: 0 };
+}
+
 /** Which rows of a long layout are drawn. */
 export function useHexScroll(boxRef: RefObject<HTMLElement | null>, layout: HexLayout, goal: Goal): HexScroll {
   const { heights, height } = layout;
   const step = STEP * heights.line;
-  const [view, setView] = useState(() => ({ base: 0, top: Math.max(0, topOf(layout, goal.at) - ABOVE * heights.line), high: GUESS_PX }));
+  const [view, setView] = useState(() => ({ base: 0, top: edgeFor(layout, goal.at).top, high: GUESS_PX }));
   const base = useRef(0);
   /** the address at the upper edge and how many px of its row are above it: kept when rows fold or change their height */
-  const place = useRef({ at: goal.at, px: -ABOVE * heights.line });
+  const place = useRef({ at: goal.at, px: 0 });
   const gone = useRef<Goal | null>(null);
 
   const draw = useCallback((y: number, high: number) => {
+    // on paper the box is as high as its rows: what was seen is what is printed
+    if (window.matchMedia("print").matches) return;
     const next = { base: base.current, top: Math.floor(y / step) * step, high };
     setView((before) => (before.base === next.base && before.top === next.top && before.high === next.high ? before : next));
   }, [step]);
@@ -91,10 +99,10 @@ export function useHexScroll(boxRef: RefObject<HTMLElement | null>, layout: HexL
 
   const settle = useCallback(() => moveTo(topOf(layout, place.current.at) + place.current.px), [layout, moveTo]);
   useLayoutEffect(() => {
-    if (gone.current !== goal && !goal.still) place.current = { at: goal.at, px: -ABOVE * heights.line };
+    if (gone.current !== goal && !goal.still) place.current = { at: edgeFor(layout, goal.at).at, px: 0 };
     gone.current = goal;
     settle();
-  }, [goal, settle, heights.line]);
+  }, [goal, layout, settle]);
   useLayoutEffect(() => {
     const element = boxRef.current;
     if (!element) return;

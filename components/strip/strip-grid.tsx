@@ -9,6 +9,8 @@ import { LaneSvg, StripSvg } from "./strip-svg";
 
 const STEP: Record<string, number> = { ArrowLeft: -1, ArrowRight: 1, ArrowDown: -1, ArrowUp: 1, PageUp: -16, PageDown: 16 };
 const TICK = 16;
+/** a count with more digits leaves no room for its word beside the lane, whose ticks say the same */
+const LONGEST = 99_999;
 
 const at = (segment: number, row: number) => ({ "--s": segment, "--r": row }) as CSSProperties;
 
@@ -82,7 +84,7 @@ export function StripGrid({ view, sizeBytes, label, cursor, onCursor, onOpen }: 
         const differs = lane !== null && lane.cells !== null && lane.differingBytes > 0;
         return (
           <Fragment key={row.readId}>
-            {lane ? <div className={`stack-end ${differs ? "stack-end-differ" : "stack-end-equal"}`} style={at(0, r * 2 + 1)}>{differs ? `${withCommas(lane.differingBytes)}\u00a0B ${lane.differingBytes === 1 ? "differs" : "differ"}` : "equal"}</div> : null}
+            {lane ? <div className={`stack-end ${differs ? "stack-end-differ" : "stack-end-equal"}`} style={at(0, r * 2 + 1)}>{differs ? <>{withCommas(lane.differingBytes)}{"\u00a0"}B<span className={lane.differingBytes > LONGEST ? "sr-only" : ""}> {lane.differingBytes === 1 ? "differs" : "differ"}</span></> : "equal"}</div> : null}
             {segments.map((s) => {
               const all = foldAgrees(view, s);
               const rest = all && r > 0 ? "is-rest" : "";
