@@ -140,7 +140,7 @@ test("every paper is reached from the pages of case, drive and chip", async () =
   const { page } = desk;
   for (const [address, links] of [[`/cases/${ready.caseId}`, 6], [`/drives/${ready.driveId}`, 4], [`/chips/${ready.chipId}`, 4], [`/chips/${ready.donorChipId}`, 3]] as const) {
     await page.goto(address);
-    const menu = page.locator("details.print-menu");
+    const menu = page.locator("details.menu").filter({ has: page.locator("summary", { hasText: "Print…" }) });
     await menu.locator("summary").click();
     await expect(menu.getByRole("link")).toHaveCount(links);
     for (const href of await menu.getByRole("link").evaluateAll((all) => all.map((one) => one.getAttribute("href")!))) expect((await page.request.get(href)).status(), href).toBe(200);

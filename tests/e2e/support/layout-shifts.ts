@@ -11,9 +11,12 @@ export function layoutShifts(word: string): void {
   let loading = true;
   let moved: string[] = [];
   for (const kind of ["pointerdown", "keydown", "input", "change", "wheel"]) addEventListener(kind, () => { loading = false; }, { capture: true, passive: true });
-  matchMedia("print").addEventListener("change", () => { loading = false; });
+  // a page laid out for paper tells of it only after it was moved
+  const paper = matchMedia("print");
+  paper.addEventListener("change", () => { loading = false; });
   const named = (node: Node | null) => (node instanceof Element ? node : node?.parentElement)?.outerHTML.slice(0, 120) ?? "a part that is gone";
   new PerformanceObserver((list) => {
+    if (paper.matches) loading = false;
     for (const shift of list.getEntries() as Shift[]) {
       if (!loading || shift.hadRecentInput || shift.startTime > 5000) continue;
       sum += shift.value;
