@@ -79,17 +79,23 @@ function groupsOf(reads: Read[]): GroupView[] {
   return [...groups.values()].map((g) => g.view);
 }
 
-/** Differing bytes between each two counted reads; each pair of distinct images is compared once. */
+/** Differing bytes between each two counted reads; each pair of distinct images is looked up once. */
 async function matrixOf(reads: Read[], unsound: Set<string>): Promise<MatrixView> {
   const refs = reads.map((r) => ({ sha256: r.sha256.toString("hex"), sizeBytes: r.sizeBytes }));
   const cells: MatrixView["cells"] = [];
+  const known = new Map<string, number | "other-size">();
   for (const [i, a] of refs.entries()) {
     const row: MatrixView["cells"][number] = [];
     for (const [j, b] of refs.entries()) {
       if (i === j) row.push(null);
       else if (a.sha256 === b.sha256) row.push(0);
       else if (a.sizeBytes !== b.sizeBytes || unsound.has(a.sha256) || unsound.has(b.sha256)) row.push("other-size");
-      else row.push((await compareIfStored(a, b))?.differingBytes ?? "other-size");
+      else {
+        const pair = [a.sha256, b.sha256].sort().join();
+        const differing = known.get(pair) ?? (await compareIfStored(a, b))?.differingBytes ?? "other-size";
+        known.set(pair, differing);
+        row.push(differing);
+      }
     }
     cells.push(row);
   }
