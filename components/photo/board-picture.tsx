@@ -20,6 +20,8 @@ export interface Placing {
   onMove(at: { x: number; y: number }): void;
 }
 
+/** px; a tall picture would push the chips below the window */
+const HIGHEST = 480;
 const within = (n: number) => Math.min(1000, Math.max(0, Math.round(n)));
 const STEPS: Record<string, [number, number]> = { ArrowLeft: [-1, 0], ArrowRight: [1, 0], ArrowUp: [0, -1], ArrowDown: [0, 1] };
 
@@ -38,6 +40,8 @@ export function BoardPicture({ photo, chips, role, name, placing, fallback }: {
 }) {
   if (!photo || photo.kind !== "photo" || !photo.width || !photo.height) return fallback;
   const scale = Math.min(1, 1600 / Math.max(photo.width, photo.height));
+  // its room is known before its bytes are here: nothing below it moves
+  const room = { width: `min(100%, ${Math.round(Math.min(photo.width * scale, (HIGHEST * photo.width) / photo.height))}px)` };
   function onClick(event: MouseEvent<HTMLDivElement>) {
     const box = event.currentTarget.getBoundingClientRect();
     placing?.onMove({ x: within(((event.clientX - box.left) / box.width) * 1000), y: within(((event.clientY - box.top) / box.height) * 1000) });
@@ -51,7 +55,7 @@ export function BoardPicture({ photo, chips, role, name, placing, fallback }: {
   }
   return (
     <div className="board-photo" role="group" aria-label={`Photo of ${name} with its chips`}>
-      <div className={`board-photo-ground ${placing ? "is-placing" : ""}`} onClick={placing ? onClick : undefined}>
+      <div className={`board-photo-ground ${placing ? "is-placing" : ""}`} style={room} onClick={placing ? onClick : undefined}>
         <Image src={pageSrc(photo)} alt={photo.caption ?? `Photo of ${name}`} width={Math.round(photo.width * scale)} height={Math.round(photo.height * scale)} unoptimized loading="lazy" draggable={false} />
         {chips.map((chip) => {
           const moving = placing?.chipId === chip.id;

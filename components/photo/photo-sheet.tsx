@@ -15,6 +15,8 @@ export function PhotoSheet({ view, timeZone }: { view: PhotoPageView; timeZone: 
   const { photo, prev, next, number, of } = view;
   const [width, height] = [photo.width ?? 4, photo.height ?? 3];
   const scale = Math.min(1, 1600 / Math.max(width, height));
+  // as large as the window lets it be, and known before its bytes are here: nothing below it moves
+  const room = { width: `min(100%, ${Math.round(width * scale)}px, ${((76 * width) / height).toFixed(1)}vh)` };
   const facts: [string, React.ReactNode][] = [
     ["File", <span key="file" className="font-mono text-t2 [overflow-wrap:anywhere]">{photo.fileName || "without a name"}</span>],
     ["Added by", `${adderOf(photo)}, ${exactText(photo.storedAt, timeZone)}`],
@@ -26,7 +28,7 @@ export function PhotoSheet({ view, timeZone }: { view: PhotoPageView; timeZone: 
     <>
       <PhotoKeys prev={prev} next={next} />
       {photo.erased ? <p className="border border-dashed border-rule-2 px-5 py-8 text-ink-2">{photo.erased.text}</p> : photo.kind === "photo" ? (
-        <div className="mat mat-large"><Image src={pageSrc(photo)} alt={titleOf(photo)} width={Math.round(width * scale)} height={Math.round(height * scale)} unoptimized priority /></div>
+        <div className="mat mat-large"><Image src={pageSrc(photo)} alt={titleOf(photo)} width={Math.round(width * scale)} height={Math.round(height * scale)} style={room} unoptimized priority /></div>
       ) : <p className="border border-dashed border-rule-2 px-5 py-8 text-ink-2">A document is not shown here. Download it and open it with a program that you trust.</p>}
       <div className="flex flex-wrap items-start justify-between gap-x-8 gap-y-4 pt-4">
         <dl className="photo-facts">{facts.map(([name, value]) => <div key={name}><dt>{name}</dt><dd>{value}</dd></div>)}</dl>
