@@ -50,9 +50,8 @@ async function run() {
   const browserOnly = option("browser");
   let built = null;
   if (browserOnly === null) {
-    results.push(await steps.typeCheck());
-    // the tests on one database leave a core free for lint and build
-    const beside = async () => [await steps.lint(), (built = await steps.build())];
+    // the tests on one database leave a core free for types, lint and build
+    const beside = async () => [await steps.typeCheck(), await steps.lint(), (built = await steps.build())];
     results.push(...(await Promise.all([steps.vitest(), beside()])).flat());
   } else results.push((built = await steps.build()));
   if (built.failed === 0) results.push(await steps.browser({ filter: browserOnly }));
