@@ -33,6 +33,7 @@ const kib = (n: number) => (n % 1024 === 0 ? `${(n / 1024).toLocaleString("en")}
 const changes = (list: { field: string; from: unknown; to: unknown }[]) =>
   list.map(({ field, from, to }) => {
     if (from === to) return `${field} ${to}`;
+    if (/^(retired|switched off)$/.test(field)) return `${to ? "now" : "no longer"} ${field}`;
     if (/^(taken|reserved) for$/.test(field)) return from === null ? `${field} ${to}` : to === null ? `no longer ${field} ${from}` : `${field} ${to}, no longer ${from}`;
     return `${field} from ${from ?? "nothing"} to ${to ?? "nothing"}`;
   }).join(", ");
