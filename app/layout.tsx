@@ -2,7 +2,7 @@ import type { Metadata } from "next";
 import localFont from "next/font/local";
 import { cookies } from "next/headers";
 import type { ReactNode } from "react";
-import { FocusFollows } from "@/components/shell/focus-follows";
+import { FocusKeeper } from "@/components/shell/focus-keeper";
 import "./globals.css";
 
 // Preloaded, and never put in the place of another face later on: a page that is there doesn't move when a face comes late.
@@ -22,7 +22,9 @@ export default async function RootLayout({ children }: { children: ReactNode }) 
   const theme = (await cookies()).get("theme")?.value;
   return (
     <html lang="en-GB" className={`${face.variable} ${mono.variable}`} data-theme={theme === "day" || theme === "night" ? theme : undefined} suppressHydrationWarning>
-      <body>{children}<FocusFollows /></body>
+      {/* Nothing is drawn before all of the page is there: a long table would move as its rows come. */}
+      <head><link rel="expect" href="#whole" blocking="render" /></head>
+      <body>{children}<FocusKeeper /><span id="whole" hidden /></body>
     </html>
   );
 }

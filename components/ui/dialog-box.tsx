@@ -4,19 +4,6 @@ import { Dialog as Radix } from "radix-ui";
 import { useRef, type ReactNode } from "react";
 import { Icon } from "./icon";
 
-const REFRESH_MS = 10_000;
-
-/** The change that was made may take away the button that asked for it, once the page has been read anew: then the page has the focus. */
-function staysOnPage(target: HTMLElement) {
-  const watch = new MutationObserver(() => {
-    if (target.isConnected && !target.matches(":disabled")) return;
-    watch.disconnect();
-    if (document.activeElement === document.body || document.activeElement === target) document.getElementById("main")?.focus({ preventScroll: true });
-  });
-  watch.observe(document.body, { childList: true, subtree: true, attributeFilter: ["disabled"] });
-  setTimeout(() => watch.disconnect(), REFRESH_MS);
-}
-
 /** What a dialog stands in. It is open as long as it is mounted; dialog.tsx fetches it when one is. */
 export function DialogBox({ onClose, title, description, children }: {
   onClose(): void;
@@ -36,9 +23,7 @@ export function DialogBox({ onClose, title, description, children }: {
   function back(event: Event) {
     event.preventDefault();
     const target = before.current?.isConnected ? before.current : document.getElementById("main");
-    if (!(target instanceof HTMLElement)) return;
-    target.focus({ preventScroll: true });
-    staysOnPage(target);
+    if (target instanceof HTMLElement) target.focus({ preventScroll: true });
   }
   return (
     <Radix.Root open onOpenChange={(next) => { if (!next) onClose(); }}>

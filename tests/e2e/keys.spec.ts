@@ -1,5 +1,7 @@
 import { expect } from "@playwright/test";
+import { makePair } from "./support/api";
 import { signIn } from "./support/desk";
+import { signInByKeys } from "./support/keyboard-steps";
 import { test } from "./support/test";
 
 test("every page is reached without a pointer, and keys of one character can be switched off", async ({ browser }) => {
@@ -36,4 +38,27 @@ test("every page is reached without a pointer, and keys of one character can be 
   await expect(opener).toBeFocused();
   await page.keyboard.press("?");
   await expect(list).toBeVisible();
+
+  // a face that comes late moves nothing
+  await page.route("**/*.woff2", async (route) => {
+    await new Promise((done) => setTimeout(done, 400));
+    await route.continue();
+  });
+  await page.goto("/bench");
+  await page.evaluate(() => document.fonts.ready);
+});
+
+test("a control that its own press takes away leaves the focus in its place", async ({ browser }) => {
+  const keys = await signInByKeys(browser, "mira");
+  const { page } = keys;
+  const { chipId } = await makePair(page, { customer: "Focus kept", sizeBytes: 8192 });
+  await page.goto(`/chips/${chipId}`);
+  const chooser = page.waitForEvent("filechooser");
+  await keys.press(page.getByRole("button", { name: "Choose files" }));
+  await (await chooser).setFiles({ name: "short.bin", mimeType: "application/octet-stream", buffer: Buffer.alloc(100) });
+  const off = page.getByRole("button", { name: "Take off the list" });
+  await keys.press(off);
+  await expect(off).toHaveCount(0);
+  expect(await page.evaluate(() => document.activeElement?.textContent)).toContain("Drop chip images here");
+  await keys.to(page.getByRole("button", { name: "Choose files" }));
 });

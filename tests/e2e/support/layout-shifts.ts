@@ -18,7 +18,7 @@ export function layoutShifts(word: string): void {
   new PerformanceObserver((list) => {
     if (paper.matches) loading = false;
     for (const shift of list.getEntries() as Shift[]) {
-      if (!loading || shift.hadRecentInput || shift.startTime > 5000) continue;
+      if (!loading || paper.matches || shift.hadRecentInput || shift.startTime > 5000) continue;
       sum += shift.value;
       moved.push(...shift.sources.map(({ node, previousRect: from, currentRect: to }) => `${from.x},${from.y} to ${to.x},${to.y}: ${named(node)}`));
     }
