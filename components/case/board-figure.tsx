@@ -48,7 +48,7 @@ export function BoardFigure({ drive, board, spots, rights, photo }: {
       {photo && board.chips.some((chip) => chip.place)
         ? <BoardPicture photo={photo} chips={board.chips} role={board.role} name={`the ${board.role} board ${boardName(board)}`} fallback={<BoardDrawing board={board} spots={spots} />} />
         : <BoardDrawing board={board} spots={spots} />}
-      <div className="grid gap-1 pt-2 text-t2">
+      <div className="grid grid-cols-[minmax(0,1fr)] gap-1 pt-2 text-t2">
         {board.fit ? <FitLine fit={board.fit} /> : null}
         {markings.length > 0 ? <p className="text-ink-2">{listText(markings)}</p> : null}
         {board.condition ? <p className="whitespace-pre-line">{board.condition}</p> : null}

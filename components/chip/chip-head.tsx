@@ -53,7 +53,7 @@ export function ChipHead({ chip, timeZone, today }: { chip: ChipView; timeZone: 
           <Outline />
           <h1 className="font-mono !text-t8 font-semibold tracking-[-0.02em] phone:!text-[2.75rem] phone:!leading-[2.75rem] print:!text-[2.25rem] print:!leading-10">
             {chip.designator}
-            <small className="mt-0.5 block font-face text-t2 font-medium tracking-normal text-silk-2">{chip.holds ?? "chip"}</small>
+            <small className="mt-0.5 block max-w-[24ch] font-face text-t2 font-medium tracking-normal text-silk-2">{chip.holds ?? "chip"}</small>
           </h1>
         </div>
         <dl className="grid grid-cols-[repeat(4,auto)] justify-start gap-x-9 gap-y-2.5 mid:gap-x-6 narrow:col-span-full narrow:row-start-2 phone:grid-cols-[auto_auto] phone:gap-x-7 print:col-span-full print:row-start-2">

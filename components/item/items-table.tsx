@@ -34,7 +34,7 @@ export function ItemsTable({ driveId, items, user, receivers, acts, open: begins
         <tbody>
           {items.map((item) => (
             <tr key={item.id}>
-              <th scope="row" className={item.type === "chip" ? "!pl-5 phone:!pl-0" : ""}>{itemTitle(item.name)}</th>
+              <th scope="row" className={`min-w-[40ch] !whitespace-normal [overflow-wrap:anywhere] phone:min-w-0 print:min-w-0 ${item.type === "chip" ? "!pl-5 phone:!pl-0" : ""}`}>{itemTitle(item.name)}</th>
               <td className="l-full">
                 {itemWords(item)}
                 {item.open ? <span className="flex items-start gap-1.5 text-t2 text-ink-2"><Mark kind="run" />{waitsWords(item.open)}</span> : null}

@@ -36,7 +36,7 @@ export default async function ItemsPage({ searchParams }: { searchParams: Promis
               <tbody>
                 {list.items.map(({ driveId, item, handOver }) => (
                   <tr key={handOver.id}>
-                    <th scope="row"><Link href={`/drives/${driveId}#items`}>{itemTitle(item)}</Link></th>
+                    <th scope="row" className="min-w-[44ch] !whitespace-normal [overflow-wrap:anywhere] phone:min-w-0 print:min-w-0"><Link href={`/drives/${driveId}#items`}>{itemTitle(item)}</Link></th>
                     <td className="l-full">{itemWhere(handOver)}</td>
                     <td data-l="Condition" className="[overflow-wrap:anywhere]">{handOver.condition}</td>
                     <td data-l="Seal" className="min-w-[10ch] font-mono">{handOver.sealNumber ?? <span className="font-face text-ink-3">none</span>}</td>
