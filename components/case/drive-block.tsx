@@ -89,7 +89,7 @@ export function DriveBlock({ drive, policy, user, open, photos, here = false }: 
       <ChipTable drive={drive} policy={policy} corrects={rights.corrects} />
       {donors.length > 1 ? (
         <ul className="grid gap-2 pt-3 text-t2">
-          {donors.filter((board) => board !== donor).map((board) => <li key={board.id} className="flex flex-wrap items-baseline gap-x-3">Also recorded: donor <span className="font-mono">{boardName(board)}</span>{board.fit ? <FitLine fit={board.fit} /> : null}</li>)}
+          {donors.filter((board) => board !== donor).map((board) => <li key={board.id} className="flex flex-wrap items-baseline gap-x-3"><span className="min-w-0 [overflow-wrap:anywhere]">Also recorded: donor <span className="font-mono">{boardName(board)}</span></span>{board.fit ? <FitLine fit={board.fit} /> : null}</li>)}
         </ul>
       ) : null}
       {donor && !inside && records ? <div className={`no-print pt-3 ${here ? "pb-6" : ""}`}><AddBoard role="donor" {...given} /></div> : null}

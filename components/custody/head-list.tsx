@@ -1,11 +1,13 @@
 import Link from "next/link";
 import { Digest } from "@/components/ui/digest";
-import { Pages } from "@/components/ui/pages";
+import { PastTheEnd, Pages } from "@/components/ui/pages";
 import { exactText } from "@/components/ui/times";
 import type { CustodyHeadRow, ListView } from "@/lib/views";
 
 /** Where the chain of every drive stands, the newest case first. */
 export function HeadList({ list, timeZone }: { list: ListView<CustodyHeadRow>; timeZone: string }) {
+  const pages = { total: list.total, page: list.page, pageSize: list.pageSize, href: (page: number) => `/custody?page=${page}` };
+  if (list.items.length === 0) return <PastTheEnd {...pages} />;
   return (
     <>
       <div className="overflow-x-auto phone:overflow-visible">
@@ -26,7 +28,7 @@ export function HeadList({ list, timeZone }: { list: ListView<CustodyHeadRow>; t
           </tbody>
         </table>
       </div>
-      <Pages total={list.total} page={list.page} pageSize={list.pageSize} href={(page) => `/custody?page=${page}`} />
+      <Pages {...pages} />
     </>
   );
 }

@@ -4,7 +4,7 @@ import { createColumnHelper, rowPaginationFeature, rowSortingFeature, tableFeatu
 import { usePathname, useRouter, useSearchParams } from "next/navigation";
 import type { ReactNode } from "react";
 import { Icon } from "./icon";
-import { Pages } from "./pages";
+import { PastTheEnd, Pages } from "./pages";
 
 /** The database sorts and pages; the table only says what it wants through the address (`sort`, `order`, `page`). */
 export const serverFeatures = tableFeatures({ rowSortingFeature, rowPaginationFeature });
@@ -50,7 +50,8 @@ export function DataTable<Row extends RowData>({ caption, columns, list, sort, o
       if (first) router.push(address({ sort: first.id, order: first.desc ? "desc" : "asc", page: "1" }));
     },
   });
-  if (list.items.length === 0) return <>{empty}</>;
+  const pages = { total: list.total, page: list.page, pageSize: list.pageSize, href: (page: number) => address({ page: String(page) }) };
+  if (list.items.length === 0) return list.total > 0 ? <PastTheEnd {...pages} /> : <>{empty}</>;
   return (
     <>
       <div className="overflow-x-auto phone:overflow-visible print:overflow-visible">
@@ -91,7 +92,7 @@ export function DataTable<Row extends RowData>({ caption, columns, list, sort, o
           </tbody>
         </table>
       </div>
-      <Pages total={list.total} page={list.page} pageSize={list.pageSize} href={(page) => address({ page: String(page) })} />
+      <Pages {...pages} />
     </>
   );
 }

@@ -6,7 +6,7 @@ import { PageMain } from "@/components/shell/page-main";
 import { Button, ButtonLink } from "@/components/ui/button";
 import { Empty } from "@/components/ui/empty";
 import { Input } from "@/components/ui/input";
-import { Pages } from "@/components/ui/pages";
+import { PastTheEnd, Pages } from "@/components/ui/pages";
 import { PageTitle } from "@/components/ui/section";
 import { momentText } from "@/components/ui/times";
 import { signedIn } from "@/lib/auth/page";
@@ -20,6 +20,7 @@ export default async function ItemsPage({ searchParams }: { searchParams: Promis
   const asked = listInput.safeParse(await searchParams);
   const input = asked.success ? asked.data : listInput.parse({});
   const list = await placedItems(actor, input);
+  const pages = { total: list.total, page: list.page, pageSize: list.pageSize, href: (page: number) => `/items?${new URLSearchParams({ q: input.q, page: String(page) })}` };
   return (
     <DeskShell session={session} current="custody">
       <PageMain className="pb-8">
@@ -28,7 +29,7 @@ export default async function ItemsPage({ searchParams }: { searchParams: Promis
           <Input key={input.q} className="flex-1" label="Person, place, seal or case number" name="q" defaultValue={input.q} maxLength={200} autoComplete="off" />
           <Button type="submit">Search</Button>
         </form>
-        {list.items.length === 0 ? <Empty title={input.q ? `Nothing matches “${input.q}”.` : "Nothing has changed hands yet."} action={input.q ? <ButtonLink href="/items">Show all</ButtonLink> : null}>An item is listed here from its first hand-over on.</Empty> : (
+        {list.items.length === 0 && list.total > 0 ? <PastTheEnd {...pages} /> : list.items.length === 0 ? <Empty title={input.q ? `Nothing matches “${input.q}”.` : "Nothing has changed hands yet."} action={input.q ? <ButtonLink href="/items">Show all</ButtonLink> : null}>An item is listed here from its first hand-over on.</Empty> : (
           <>
             <table className="ruled lines">
               <caption className="sr-only">Where each item is</caption>
@@ -45,7 +46,7 @@ export default async function ItemsPage({ searchParams }: { searchParams: Promis
                 ))}
               </tbody>
             </table>
-            <Pages total={list.total} page={list.page} pageSize={list.pageSize} href={(page) => `/items?${new URLSearchParams({ q: input.q, page: String(page) })}`} />
+            <Pages {...pages} />
           </>
         )}
       </PageMain>

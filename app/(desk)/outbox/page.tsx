@@ -7,7 +7,7 @@ import { Button } from "@/components/ui/button";
 import { Empty } from "@/components/ui/empty";
 import { Input } from "@/components/ui/input";
 import { Note } from "@/components/ui/note";
-import { Pages } from "@/components/ui/pages";
+import { PastTheEnd, Pages } from "@/components/ui/pages";
 import { PageTitle, Section } from "@/components/ui/section";
 import { signedIn } from "@/lib/auth/page";
 import { orNotFound } from "@/lib/http/page-errors";
@@ -23,6 +23,7 @@ export default async function OutboxPage({ searchParams }: { searchParams: Promi
   const asked = listInput.safeParse({ order: "desc", ...query });
   const input = asked.success ? asked.data : listInput.parse({ order: "desc" });
   const list = await orNotFound(() => mailList(actor, input));
+  const pages = { total: list.total, page: list.page, pageSize: list.pageSize, href: (page: number) => `/outbox?${new URLSearchParams({ q: input.q, page: String(page) })}` };
   return (
     <DeskShell session={session} current="outbox">
       <PageMain className="pb-8">
@@ -32,10 +33,10 @@ export default async function OutboxPage({ searchParams }: { searchParams: Promi
           <Input key={input.q} className="flex-1" label="Address or subject" name="q" defaultValue={input.q} maxLength={200} autoComplete="off" />
           <Button type="submit">Search</Button>
         </form>
-        {list.items.length === 0 ? <Empty title={input.q ? `No mail matches “${input.q}”.` : "No mail yet."}>What is written when is listed below.</Empty> : (
+        {list.items.length === 0 && list.total > 0 ? <PastTheEnd {...pages} /> : list.items.length === 0 ? <Empty title={input.q ? `No mail matches “${input.q}”.` : "No mail yet."}>What is written when is listed below.</Empty> : (
           <>
             <ul className="border-t border-rule-2">{list.items.map((mail) => <MailLine key={mail.id} mail={mail} timeZone={session.timeZone} />)}</ul>
-            <Pages total={list.total} page={list.page} pageSize={list.pageSize} href={(page) => `/outbox?${new URLSearchParams({ q: input.q, page: String(page) })}`} />
+            <Pages {...pages} />
           </>
         )}
         <div className="pt-8"><Section title="What is written when" note="Each kind of mail, with invented facts."><TemplateList templates={templateList(actor)} /></Section></div>
