@@ -4,7 +4,7 @@ import { defineConfig } from "@playwright/test";
 const port = process.env.E2E_PORT ?? "3210";
 const report = process.env.E2E_REPORT;
 
-const PAGES = "access.spec.ts";
+const PAGES = ["access.spec.ts", "help-api.spec.ts", "print.spec.ts", "request.spec.ts", "verify.spec.ts"];
 const ALONE = ["faults-*.spec.ts", "api-looking.spec.ts"];
 
 export default defineConfig({
@@ -15,10 +15,10 @@ export default defineConfig({
   timeout: 60_000,
   expect: { timeout: 10_000 },
   forbidOnly: true,
-  // Pages are looked at while others work, one test at a time each; what stops the app, damages the store or counts every
-  // row of the database comes when nobody else is there.
+  // Two lines of about the same length, one test at a time each: one looks at pages, the other does the bench's work. What
+  // stops the app, damages the store or counts every row of the database comes when nobody else is there.
   projects: [
-    { name: "work", testIgnore: [PAGES, ...ALONE], workers: 1 },
+    { name: "work", testIgnore: [...PAGES, ...ALONE], workers: 1 },
     { name: "pages", testMatch: PAGES, workers: 1 },
     { name: "alone", testMatch: ALONE, workers: 1, dependencies: ["work", "pages"] },
   ],
