@@ -4,7 +4,7 @@ import type { BenchRow, CaseRow, ChipView, ListView } from "@/lib/views";
 import { expectAccessible } from "./support/axe";
 import type { Person } from "./support/accounts";
 import { openDesk, signIn } from "./support/desk";
-import { test } from "./support/test";
+import { expectTrouble, test } from "./support/test";
 
 const AUDIT = ["", "/drives", "/seals", "/images", "/assessments", "/hand-outs", "/refusals", "/sign-ins", "/sign-ins/tokens", "/sign-ins/limits", "/clock"];
 
@@ -38,6 +38,7 @@ async function chipPaths(page: Page, person: Person): Promise<string[]> {
 }
 
 test("the sign-in page and an address that holds nothing", async ({ browser }) => {
+  expectTrouble(/^404 GET \/nothing-here$/);
   const { page } = await openDesk(browser);
   await look(page, ["/sign-in", "/nothing-here"]);
 });

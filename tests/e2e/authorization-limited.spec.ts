@@ -6,7 +6,7 @@ import { asAdmin } from "./support/database";
 import { openDesk } from "./support/desk";
 import { changeAccount, type Newcomer } from "./support/newcomers";
 import { type Answer, call, done, expectProblem, fromPage, sessionOf, trySignIn } from "./support/station";
-import { test } from "./support/test";
+import { expectTrouble, test } from "./support/test";
 import { addressIn, type CaseParts, makeLimitedAuditor, makeParts, neverParts, nounOf } from "./support/two-cases";
 
 /** An auditor with a case list, over every route and page: what they get of a case on it, and of another. */
@@ -133,6 +133,7 @@ test("past the last day sign-in says so, and sessions and tokens end at once", a
   expect((await call("GET", "/bench", { cookie })).status).toBe(307);
   expect((await call("POST", "/api/account/tokens", { ...fromPage(cookie), json: { name: "x" } })).status).toBe(401);
   expect((await trySignIn(someone.email, someone.password)).cookie).toBe("");
+  expectTrouble(/^401 POST \/api\/auth\/callback\/credentials$/);
   const { page } = await openDesk(browser);
   await page.goto("/sign-in");
   await page.getByLabel("E-mail address").fill(someone.email);
