@@ -21,7 +21,12 @@ export async function signInByKeys(browser: Browser, person: Person): Promise<Ke
 /** Gives the case's number. */
 export async function recordCase(keys: Keyboard, { customer, email, damage }: { customer: string; email: string; damage: string }): Promise<string> {
   const { page } = keys;
-  await keys.press(page.getByRole("link", { name: "Record a case" }).first());
+  await keys.key("?");
+  const list = page.getByRole("dialog", { name: "Keys and pages" });
+  await expect(list).toBeVisible();
+  await keys.key(String((await list.getByRole("link").allTextContents()).indexOf("Cases") + 1));
+  await expect(page.getByRole("heading", { level: 1, name: "Cases" })).toBeVisible();
+  await keys.press(page.getByRole("link", { name: "Record a case" }));
   await keys.type(page.getByLabel("Customer"), customer);
   await keys.type(page.getByLabel("E-mail address"), email);
   await keys.type(page.getByLabel("Damage"), damage);
