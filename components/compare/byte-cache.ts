@@ -6,8 +6,9 @@ import type { ReadView } from "@/lib/views";
 export const WINDOW_BYTES = 16 * KIB;
 /** of all reads together: 3 MiB */
 const KEPT = 192;
-/** while answers are awaited the next question waits this long: what is scrolled past meanwhile is never asked for */
-const BETWEEN_MS = 60;
+/** While somebody scrolls on, what is passed is never asked for: only where they rest this long, and every so often on the way. */
+const REST_MS = 80;
+const MOST_MS = 320;
 
 type Source = Pick<ReadView, "id" | "sizeBytes">;
 
@@ -34,6 +35,7 @@ export function createByteCache(): ByteCache {
   const listeners = new Set<() => void>();
   let wanted: { key: string; path: string }[] = [];
   let timer: ReturnType<typeof setTimeout> | null = null;
+  let askedAt = -MOST_MS;
   let error: Error | null = null;
   let version = 0;
   const changed = () => {
@@ -68,6 +70,7 @@ export function createByteCache(): ByteCache {
 
   function fetchWanted(): void {
     timer = null;
+    askedAt = performance.now();
     const keys = new Set(wanted.map(({ key }) => key));
     for (const [key, controller] of asked) if (!keys.has(key)) controller.abort();
     if (error) return;
@@ -81,7 +84,8 @@ export function createByteCache(): ByteCache {
         const offset = number * WINDOW_BYTES;
         return { key: keyOf(read, number), path: `/api/reads/${read.id}/bytes?offset=${offset}&length=${Math.min(WINDOW_BYTES, read.sizeBytes - offset)}` };
       }));
-      timer ??= setTimeout(fetchWanted, asked.size === 0 ? 0 : BETWEEN_MS);
+      if (timer) clearTimeout(timer);
+      timer = setTimeout(fetchWanted, Math.min(REST_MS, Math.max(0, askedAt + MOST_MS - performance.now())));
     },
     error: () => error,
     again() {

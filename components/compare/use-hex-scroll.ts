@@ -72,6 +72,8 @@ export function useHexScroll(boxRef: RefObject<HTMLElement | null>, layout: HexL
   const step = STEP * heights.line;
   const [view, setView] = useState(() => ({ base: 0, top: edgeFor(layout, goal.at).top, high: GUESS_PX }));
   const base = useRef(0);
+  /** px of rows that fit in the box: asked of the browser when it changes, not with every scroll */
+  const fits = useRef(GUESS_PX);
   /** the address at the upper edge and how many px of its row are above it: kept when rows fold or change their height */
   const place = useRef({ at: goal.at, px: 0 });
   const gone = useRef<Goal | null>(null);
@@ -88,6 +90,7 @@ export function useHexScroll(boxRef: RefObject<HTMLElement | null>, layout: HexL
     const element = boxRef.current;
     if (!element) return;
     const high = element.clientHeight - heights.head;
+    fits.current = high;
     const y = Math.min(Math.max(0, px), Math.max(0, height - high));
     const room = Math.max(0, height - PART_PX);
     const above = base.current === 0 || y - base.current > EDGE_PX;
@@ -117,11 +120,11 @@ export function useHexScroll(boxRef: RefObject<HTMLElement | null>, layout: HexL
     const y = base.current + element.scrollTop;
     const [row] = rowsBetween(layout, y, y + 1);
     if (row) place.current = { at: row.at, px: y - row.top };
-    const toEdge = Math.min(element.scrollTop, PART_PX - element.scrollTop - element.clientHeight);
+    const toEdge = Math.min(y - base.current, PART_PX - (y - base.current) - fits.current);
     // the other part must stand there before the box is painted again
     if (height > PART_PX && toEdge < EDGE_PX) flushSync(() => moveTo(y));
-    else draw(y, element.clientHeight - heights.head);
-  }, [boxRef, layout, height, heights.head, moveTo, draw]);
+    else draw(y, fits.current);
+  }, [boxRef, layout, height, moveTo, draw]);
 
   const show = useCallback((at: number) => {
     place.current = { at, px: 0 };
@@ -133,7 +136,7 @@ export function useHexScroll(boxRef: RefObject<HTMLElement | null>, layout: HexL
     if (!element) return;
     const y = base.current + element.scrollTop;
     const top = topOf(layout, at);
-    if (top >= y && top < y + element.clientHeight) place.current = { at, px: y - top };
+    if (top >= y && top < y + fits.current) place.current = { at, px: y - top };
   }, [boxRef, layout]);
 
   const beyond = BEYOND * heights.line;
