@@ -13,7 +13,7 @@ export function CasePhotos({ caseId, caseRef, photos, drives, adds, timeZone }: 
   timeZone: string;
 }) {
   return (
-    <div className="grid gap-4">
+    <div className="grid grid-cols-[minmax(0,1fr)] gap-4">
       <Photos of={{ type: "case", id: caseId }} name={`case ${caseRef}`} photos={photos} adds={adds} timeZone={timeZone} />
       {drives.length > 0 ? (
         <p className="flex flex-wrap gap-x-5 gap-y-1 text-t2">

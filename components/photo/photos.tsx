@@ -21,7 +21,7 @@ export interface PhotosProps {
 /** The photos and documents of one thing, and a place to add more. */
 export function Photos({ of, name, photos, adds, timeZone }: PhotosProps) {
   return (
-    <div className="grid gap-4">
+    <div className="grid grid-cols-[minmax(0,1fr)] gap-4">
       {photos.length > 0 ? (
         <ul className="photo-grid" aria-label={`Photos of ${name}`}>{photos.map((photo) => <PhotoCard key={photo.id} photo={photo} timeZone={timeZone} />)}</ul>
       ) : <p className="text-ink-2">No photo of {name} yet.</p>}
@@ -35,9 +35,9 @@ export function PhotoGroups({ groups, adds, timeZone }: { groups: readonly Photo
   const shown = groups.filter((group) => adds || group.photos.length > 0);
   if (shown.length === 0) return <p className="text-ink-2">No photo yet.</p>;
   return (
-    <div className="grid gap-7">
+    <div className="grid grid-cols-[minmax(0,1fr)] gap-7">
       {shown.map(({ of, name, photos }) => (
-        <section key={of.id} aria-label={`Photos of ${name}`} className="grid gap-2.5">
+        <section key={of.id} aria-label={`Photos of ${name}`} className="grid grid-cols-[minmax(0,1fr)] gap-2.5">
           <h3 className="text-t3 font-bold">{name}</h3>
           <Photos of={of} name={name} photos={photos} adds={adds} timeZone={timeZone} />
         </section>
