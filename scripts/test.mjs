@@ -50,8 +50,8 @@ async function run() {
   const browserOnly = option("browser");
   let built = null;
   if (browserOnly === null) {
-    // the tests on one database leave a core free for everything that needs none
-    const beside = async () => [await steps.typeCheck(), await steps.lint(), (built = await steps.build()), await steps.rules()];
+    // the tests on one database leave a core free for types, lint and build
+    const beside = async () => [await steps.typeCheck(), await steps.lint(), (built = await steps.build())];
     results.push(...(await Promise.all([steps.vitest(), beside()])).flat());
   } else results.push((built = await steps.build()));
   if (built.failed === 0) results.push(await steps.browser({ filter: browserOnly }));

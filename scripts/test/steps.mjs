@@ -68,26 +68,18 @@ async function orFailed(work) {
   }
 }
 
-/** @param report name of the file in which the runner tells what it found */
-async function runVitest(report, args, env) {
-  const file = reportFile(report);
-  mkdirSync(path.dirname(file), { recursive: true });
-  rmSync(file, { force: true });
-  const code = await node(["node_modules/vitest/vitest.mjs", "run", "--reporter=default", "--reporter=json", `--outputFile.json=${file}`, ...args], env);
-  return vitestCounts(file, code);
-}
-
-/** Tests that share the database; some of all files with a `filter`, the long ones with `long`. */
 export function vitest({ filter = null, long = false } = {}) {
-  heading(long ? "Long tests" : filter ? "Some tests" : "Database tests");
-  const args = [...(long ? ["--config", "tests/long/vitest.config.ts"] : filter ? [] : ["--project", "database"]), ...(filter ? [filter] : [])];
-  return orFailed(() => withDatabase(filter !== null, (env) => runVitest("vitest", args, env)));
-}
-
-/** Tests that need no database, in one process: they run beside those that do. */
-export function rules() {
-  heading("Unit tests");
-  return runVitest("rules", ["--project", "rules", "--maxWorkers=1"], { ...process.env, NODE_ENV: "test" });
+  heading(long ? "Long tests" : "Unit and database tests");
+  const config = long ? "tests/long/vitest.config.ts" : "vitest.config.ts";
+  return orFailed(() => withDatabase(filter !== null, async (env) => {
+    const file = reportFile("vitest");
+    mkdirSync(path.dirname(file), { recursive: true });
+    rmSync(file, { force: true });
+    const code = await node([
+      "node_modules/vitest/vitest.mjs", "run", "--config", config, "--reporter=default", "--reporter=json", `--outputFile.json=${file}`, ...(filter ? [filter] : []),
+    ], env);
+    return vitestCounts(file, code);
+  }));
 }
 
 export function build() {
