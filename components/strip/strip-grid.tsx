@@ -84,7 +84,7 @@ export function StripGrid({ view, sizeBytes, label, cursor, onCursor, onOpen }: 
         const differs = lane !== null && lane.cells !== null && lane.differingBytes > 0;
         return (
           <Fragment key={row.readId}>
-            {lane ? <div className={`stack-end ${differs ? "stack-end-differ" : "stack-end-equal"}`} style={at(0, r * 2 + 1)}>{differs ? <>{withCommas(lane.differingBytes)}{"\u00a0"}B<span className={lane.differingBytes > LONGEST ? "sr-only" : ""}> {lane.differingBytes === 1 ? "differs" : "differ"}</span></> : "equal"}</div> : null}
+            {lane ? <div className={`stack-end ${differs ? "stack-end-differ" : "stack-end-equal"}`} style={at(0, r * 2 + 1)}>{differs ? <span>{withCommas(lane.differingBytes)}{"\u00a0"}B<span className={lane.differingBytes > LONGEST ? "sr-only" : ""}> {lane.differingBytes === 1 ? "differs" : "differ"}</span></span> : "equal"}</div> : null}
             {segments.map((s) => {
               const all = foldAgrees(view, s);
               const rest = all && r > 0 ? "is-rest" : "";
