@@ -9,6 +9,8 @@ const KEPT = 192;
 /** While somebody scrolls on, what is passed is never asked for: only where they rest this long, and every so often on the way. */
 const REST_MS = 80;
 const MOST_MS = 320;
+/** as many as a browser sends to one server at a time: more would only be a longer piece of work at once */
+const MOST_AT_ONCE = 6;
 
 type Source = Pick<ReadView, "id" | "sizeBytes">;
 
@@ -38,9 +40,16 @@ export function createByteCache(): ByteCache {
   let askedAt = -MOST_MS;
   let error: Error | null = null;
   let version = 0;
+  let told = true;
+  /** once for all that came within a frame */
   const changed = () => {
-    version += 1;
-    for (const listener of listeners) listener();
+    if (!told) return;
+    told = false;
+    requestAnimationFrame(() => {
+      told = true;
+      version += 1;
+      for (const listener of listeners) listener();
+    });
   };
   const keyOf = (read: Source, number: number) => `${read.id} ${number}`;
 
@@ -66,15 +75,30 @@ export function createByteCache(): ByteCache {
       if (asked.get(key) === controller) asked.delete(key);
     }
     changed();
+    fetchMore();
+  }
+
+  function fetchMore(): void {
+    for (const one of wanted) {
+      if (error || asked.size >= MOST_AT_ONCE) return;
+      if (!kept.has(one.key) && !asked.has(one.key)) void fetchOne(one);
+    }
+  }
+
+  /** what is on its way and none of these is given up, and makes room at once */
+  function giveUpBut(keys: ReadonlySet<string>): void {
+    for (const [key, controller] of asked) {
+      if (keys.has(key)) continue;
+      controller.abort();
+      asked.delete(key);
+    }
   }
 
   function fetchWanted(): void {
     timer = null;
     askedAt = performance.now();
-    const keys = new Set(wanted.map(({ key }) => key));
-    for (const [key, controller] of asked) if (!keys.has(key)) controller.abort();
-    if (error) return;
-    for (const one of wanted) if (!kept.has(one.key) && !asked.has(one.key)) void fetchOne(one);
+    giveUpBut(new Set(wanted.map(({ key }) => key)));
+    fetchMore();
   }
 
   return {
@@ -101,7 +125,7 @@ export function createByteCache(): ByteCache {
     close() {
       if (timer) clearTimeout(timer);
       timer = null;
-      for (const controller of asked.values()) controller.abort();
+      giveUpBut(new Set());
     },
   };
 }
