@@ -35,7 +35,9 @@ export function createByteCache(): ByteCache {
   const kept = new Map<string, Uint8Array>();
   const asked = new Map<string, AbortController>();
   const listeners = new Set<() => void>();
+  /** what is looked at, and what was looked at when bytes were asked for last */
   let wanted: { key: string; path: string }[] = [];
+  let due: typeof wanted = [];
   let timer: ReturnType<typeof setTimeout> | null = null;
   let askedAt = -MOST_MS;
   let error: Error | null = null;
@@ -79,7 +81,7 @@ export function createByteCache(): ByteCache {
   }
 
   function fetchMore(): void {
-    for (const one of wanted) {
+    for (const one of due) {
       if (error || asked.size >= MOST_AT_ONCE) return;
       if (!kept.has(one.key) && !asked.has(one.key)) void fetchOne(one);
     }
@@ -97,7 +99,8 @@ export function createByteCache(): ByteCache {
   function fetchWanted(): void {
     timer = null;
     askedAt = performance.now();
-    giveUpBut(new Set(wanted.map(({ key }) => key)));
+    due = wanted;
+    giveUpBut(new Set(due.map(({ key }) => key)));
     fetchMore();
   }
 
@@ -125,6 +128,7 @@ export function createByteCache(): ByteCache {
     close() {
       if (timer) clearTimeout(timer);
       timer = null;
+      due = [];
       giveUpBut(new Set());
     },
   };
