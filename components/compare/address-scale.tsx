@@ -1,6 +1,6 @@
 "use client";
 
-import { useState, type PointerEvent } from "react";
+import { useMemo, useState, type PointerEvent } from "react";
 import { CELLS, address } from "@/lib/core/strip";
 import type { StripStackView } from "@/lib/views";
 
@@ -15,6 +15,8 @@ function ticks({ lanes }: StripStackView): string {
  */
 export function AddressScale({ stack, seen, onShow }: { stack: StripStackView; seen: { from: number; to: number }; onShow(at: number): void }) {
   const { sizeBytes } = stack;
+  // drawn anew with every few lines scrolled: the ticks stay
+  const drawn = useMemo(() => ticks(stack), [stack]);
   const [held, setHeld] = useState<number | null>(null);
   const part = (at: number) => `${(Math.min(at, sizeBytes) / sizeBytes) * 100}%`;
   function move(event: PointerEvent<HTMLDivElement>) {
@@ -30,7 +32,7 @@ export function AddressScale({ stack, seen, onShow }: { stack: StripStackView; s
         move(event);
       }}
       onPointerMove={(event) => { if (held !== null) move(event); }} onPointerUp={() => setHeld(null)} onPointerCancel={() => setHeld(null)}>
-      <svg viewBox={`0 0 8 ${CELLS}`} preserveAspectRatio="none"><path d={ticks(stack)} /></svg>
+      <svg viewBox={`0 0 8 ${CELLS}`} preserveAspectRatio="none"><path d={drawn} /></svg>
       <i style={{ top: part(seen.from), height: part(seen.to - seen.from) }} />
       {held === null ? null : <b style={{ top: part(held) }}>{address(held, sizeBytes)}</b>}
     </div>

@@ -33,17 +33,25 @@ export function FindBar({ reads, names, at, hit, sizeBytes, onFound }: { reads: 
   const [running, setRunning] = useState<AbortController | null>(null);
   const field = useRef<HTMLInputElement>(null);
 
+  const sides = reads.flatMap((_, side) => (where === "" || where === String(side) ? [side] : []));
+
+  /** Why this can't be looked for; null where it can. */
+  function problemOf(sought: string): string | null {
+    if (as === "text") return sought === "" ? "Type the text to look for." : null;
+    const pairs = hexPairs(sought);
+    if (!pairs) return "Type bytes as pairs of hex digits, such as 5A A5, or choose text.";
+    return pairs.length > MOST_SOUGHT ? `Look for at most ${MOST_SOUGHT} bytes.` : null;
+  }
+
   async function find(way: Way) {
     const sought = field.current?.value ?? "";
-    const pairs = as === "bytes" ? hexPairs(sought) : null;
+    const problem = problemOf(sought);
     setSaid("");
-    setWrong(as === "text" ? (sought === "" ? "Type the text to look for." : null)
-      : !pairs ? "Type bytes as pairs of hex digits, such as 5A A5, or choose text." : pairs.length > MOST_SOUGHT ? `Look for at most ${MOST_SOUGHT} bytes.` : null);
-    if (as === "text" ? sought === "" : !pairs || pairs.length > MOST_SOUGHT) return field.current?.focus();
+    setWrong(problem);
+    if (problem) return field.current?.focus();
     // what was found last stands at the address still: the search goes on behind it
     const from = way === "next" && hit?.at === at ? at + 1 : at;
     const query = new URLSearchParams({ [as]: sought, from: String(Math.min(from, sizeBytes)), way });
-    const sides = reads.flatMap((_, side) => (where === "" || where === String(side) ? [side] : []));
     const controller = new AbortController();
     setRunning(controller);
     try {
@@ -68,7 +76,7 @@ export function FindBar({ reads, names, at, hit, sizeBytes, onFound }: { reads: 
       <Select quiet label="In which read" value={where} onChange={(event) => setWhere(event.target.value)} options={[{ value: "", label: "in any read" }, ...names.map((name, side) => ({ value: String(side), label: `in ${name}` }))]} />
       <Button onClick={() => void find("previous")}><Icon name="prev" />Find previous</Button>
       <Button type="submit">Find next<Icon name="next" /></Button>
-      {running ? <span className="text-t2">Looking through {countOf(reads.length, "read")} of {sizeText(sizeBytes)}. <Button variant="text" onClick={() => running.abort()}>Stop</Button></span> : null}
+      {running ? <span className="text-t2">Looking through {countOf(sides.length, "read")} of {sizeText(sizeBytes)}. <Button variant="text" onClick={() => running.abort()}>Stop</Button></span> : null}
       <span id="sought-says" role="status" className={`text-t2 ${wrong ? "font-medium text-block" : ""}`}>{wrong ?? said}</span>
     </form>
   );
